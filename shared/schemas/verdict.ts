@@ -30,13 +30,33 @@ export const checkSettingsSchema = z.object({
 export type CheckSettings = z.infer<typeof checkSettingsSchema>;
 
 export const noteSchema = z.enum([
-  'given-miscopied', 'domain', 'constant', 'one-way', 'presentation', 'empty', 'meaningless', 'unfinished',
-  'candidates', 'not-rejected', 'remark', 'cases', 'definition', 'continued',
+  'given-miscopied',
+  'domain',
+  'constant',
+  'one-way',
+  'presentation',
+  'empty',
+  'meaningless',
+  'unfinished',
+  'candidates',
+  'not-rejected',
+  'remark',
+  'cases',
+  'definition',
+  'continued',
 ]);
 export type Note = z.infer<typeof noteSchema>;
 
 export const undecidedReasonSchema = z.enum([
-  'not-read', 'not-covered', 'change-of-kind', 'no-unknown', 'no-domain', 'limit', 'time', 'not-settled', 'no-agreed-meaning',
+  'not-read',
+  'not-covered',
+  'change-of-kind',
+  'no-unknown',
+  'no-domain',
+  'limit',
+  'time',
+  'not-settled',
+  'no-agreed-meaning',
 ]);
 export type UndecidedReason = z.infer<typeof undecidedReasonSchema>;
 
