@@ -1,0 +1,69 @@
+import type { Expr, Line } from '../../shared/maths/expression.ts';
+
+/** A function that the derivation introduced, such as f(x)=x^2. */
+export interface OwnFunction {
+  readonly params: readonly string[];
+  readonly value: Expr;
+}
+
+export interface Definitions {
+  readonly letters: ReadonlyMap<string, Expr>;
+  readonly functions: ReadonlyMap<string, OwnFunction>;
+}
+
+/** Everything besides the two lines that a ruling on a step depends on. */
+export interface CheckContext {
+  readonly numbers: 'real' | 'complex';
+  readonly assumptions: readonly Line[];
+  /** Letters that stand for whole numbers. */
+  readonly wholeLetters: ReadonlySet<string>;
+  readonly definitions: Definitions;
+  /** The only source of randomness, so that a ruling can be repeated. */
+  readonly seed: number;
+  readonly budget: Budget;
+  /** Turns a derivative, integral, limit or sum into an ordinary expression, or answers null. */
+  readonly reduceCalculus?: (expr: Expr, context: CheckContext) => Expr | null;
+}
+
+/** Counts operations; a count and never a clock, so that a ruling is the same on every machine. */
+export interface Budget {
+  readonly spend: (operations: number) => void;
+  readonly left: () => number;
+}
+
+/** Thrown by `spend` when nothing is left; caught where a step begins, which is then undecided. */
+export class BudgetSpent extends Error {
+  constructor() {
+    super('the operations allowed for this step are spent');
+    this.name = 'BudgetSpent';
+  }
+}
+
+/** One operation is about the work of one multiplication of two numbers of 192 bits. */
+export function createBudget(operations: number): Budget {
+  let left = operations;
+  return {
+    spend(count) {
+      left -= count;
+      if (left < 0) throw new BudgetSpent();
+    },
+    left: () => left,
+  };
+}
+
+export const operationsPerStep = 400_000;
+
+const noDefinitions: Definitions = { letters: new Map(), functions: new Map() };
+
+/** A context for the real numbers without assumptions, changed by what is given. */
+export function createContext(changes: Partial<CheckContext> = {}): CheckContext {
+  return {
+    numbers: 'real',
+    assumptions: [],
+    wholeLetters: new Set(),
+    definitions: noDefinitions,
+    seed: 1,
+    budget: createBudget(operationsPerStep),
+    ...changes,
+  };
+}

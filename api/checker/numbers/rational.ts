@@ -1,0 +1,141 @@
+/** A fraction in lowest terms with a positive denominator. */
+export interface Rational {
+  readonly num: bigint;
+  readonly den: bigint;
+}
+
+export const zero: Rational = { num: 0n, den: 1n };
+export const one: Rational = { num: 1n, den: 1n };
+export const minusOne: Rational = { num: -1n, den: 1n };
+
+export function gcd(a: bigint, b: bigint): bigint {
+  let x = a < 0n ? -a : a;
+  let y = b < 0n ? -b : b;
+  while (y !== 0n) [x, y] = [y, x % y];
+  return x;
+}
+
+export function lcm(a: bigint, b: bigint): bigint {
+  if (a === 0n || b === 0n) return 0n;
+  const product = (a / gcd(a, b)) * b;
+  return product < 0n ? -product : product;
+}
+
+/** Lowest terms; throws a RangeError for a denominator of zero. */
+export function rational(num: bigint | number, den: bigint | number = 1n): Rational {
+  let n = BigInt(num);
+  let d = BigInt(den);
+  if (d === 0n) throw new RangeError('a denominator of zero');
+  if (d === 1n) return { num: n, den: 1n };
+  if (d < 0n) [n, d] = [-n, -d];
+  const common = gcd(n, d);
+  return common === 1n ? { num: n, den: d } : { num: n / common, den: d / common };
+}
+
+export function add(a: Rational, b: Rational): Rational {
+  if (a.den === 1n && b.den === 1n) return { num: a.num + b.num, den: 1n };
+  return rational(a.num * b.den + b.num * a.den, a.den * b.den);
+}
+
+export function negate(a: Rational): Rational {
+  return { num: -a.num, den: a.den };
+}
+
+export function sub(a: Rational, b: Rational): Rational {
+  return add(a, negate(b));
+}
+
+export function mul(a: Rational, b: Rational): Rational {
+  if (a.den === 1n && b.den === 1n) return { num: a.num * b.num, den: 1n };
+  return rational(a.num * b.num, a.den * b.den);
+}
+
+/** Throws a RangeError when b is zero. */
+export function div(a: Rational, b: Rational): Rational {
+  return rational(a.num * b.den, a.den * b.num);
+}
+
+/** Throws a RangeError for zero to a negative power; 0^0 is 1 here, callers rule on it. */
+export function pow(a: Rational, exponent: number): Rational {
+  if (exponent >= 0) return { num: a.num ** BigInt(exponent), den: a.den ** BigInt(exponent) };
+  return rational(a.den ** BigInt(-exponent), a.num ** BigInt(-exponent));
+}
+
+export function compare(a: Rational, b: Rational): -1 | 0 | 1 {
+  const left = a.num * b.den;
+  const right = b.num * a.den;
+  return left < right ? -1 : left > right ? 1 : 0;
+}
+
+export function equals(a: Rational, b: Rational): boolean {
+  return a.num === b.num && a.den === b.den;
+}
+
+export function isZero(a: Rational): boolean {
+  return a.num === 0n;
+}
+
+export function isWhole(a: Rational): boolean {
+  return a.den === 1n;
+}
+
+export function sign(a: Rational): -1 | 0 | 1 {
+  return a.num < 0n ? -1 : a.num > 0n ? 1 : 0;
+}
+
+export function absolute(a: Rational): Rational {
+  return a.num < 0n ? negate(a) : a;
+}
+
+/** The largest whole number that is not above a. */
+export function floor(a: Rational): bigint {
+  const quotient = a.num / a.den;
+  return a.num < 0n && quotient * a.den !== a.num ? quotient - 1n : quotient;
+}
+
+/** The nearest double; exact for fractions that a double can hold. */
+export function toNumber(a: Rational): number {
+  const direct = Number(a.num) / Number(a.den);
+  if (Number.isFinite(direct) && (direct !== 0 || a.num === 0n)) return direct;
+  const shift = BigInt(bitLength(a.num) - bitLength(a.den) - 64);
+  const scaled = shift >= 0n ? a.num / (a.den << shift) : (a.num << -shift) / a.den;
+  return Number(scaled) * 2 ** Number(shift);
+}
+
+export function bitLength(value: bigint): number {
+  const magnitude = value < 0n ? -value : value;
+  if (magnitude === 0n) return 0;
+  const digits = magnitude.toString(16);
+  return digits.length * 4 - Math.clz32(Number.parseInt(digits[0] ?? '0', 16)) + 28;
+}
+
+/** The largest whole r with r^degree <= value, for value >= 0 and degree >= 1. */
+export function wholeRoot(value: bigint, degree: number): bigint {
+  if (value < 2n || degree === 1) return value;
+  const n = BigInt(degree);
+  let guess = 1n << BigInt(Math.ceil(bitLength(value) / degree));
+  for (;;) {
+    const next = ((n - 1n) * guess + value / guess ** (n - 1n)) / n;
+    if (next >= guess) return guess;
+    guess = next;
+  }
+}
+
+/** The exact real root where it is a fraction, else null. */
+export function exactRoot(a: Rational, degree: number): Rational | null {
+  if (a.num < 0n) {
+    if (degree % 2 === 0) return null;
+    const positive = exactRoot(negate(a), degree);
+    return positive && negate(positive);
+  }
+  const num = wholeRoot(a.num, degree);
+  if (num ** BigInt(degree) !== a.num) return null;
+  const den = wholeRoot(a.den, degree);
+  return den ** BigInt(degree) === a.den ? { num, den } : null;
+}
+
+export function toTex(a: Rational): string {
+  if (a.den === 1n) return a.num.toString();
+  const digits = `\\frac{${a.num < 0n ? -a.num : a.num}}{${a.den}}`;
+  return a.num < 0n ? `-${digits}` : digits;
+}
