@@ -11,20 +11,68 @@ interface Node {
 }
 
 export type FunctionName =
-  | 'sin' | 'cos' | 'tan' | 'cot' | 'sec' | 'csc'
-  | 'arcsin' | 'arccos' | 'arctan' | 'arccot' | 'arcsec' | 'arccsc'
-  | 'sinh' | 'cosh' | 'tanh' | 'coth' | 'sech' | 'csch'
-  | 'arsinh' | 'arcosh' | 'artanh'
-  | 'ln' | 'exp' | 'abs' | 'sign' | 'floor' | 'ceil' | 'gcd' | 'lcm' | 'min' | 'max'
-  | 're' | 'im' | 'conj' | 'arg' | 'det' | 'transpose';
+  | 'sin'
+  | 'cos'
+  | 'tan'
+  | 'cot'
+  | 'sec'
+  | 'csc'
+  | 'arcsin'
+  | 'arccos'
+  | 'arctan'
+  | 'arccot'
+  | 'arcsec'
+  | 'arccsc'
+  | 'sinh'
+  | 'cosh'
+  | 'tanh'
+  | 'coth'
+  | 'sech'
+  | 'csch'
+  | 'arsinh'
+  | 'arcosh'
+  | 'artanh'
+  | 'ln'
+  | 'exp'
+  | 'abs'
+  | 'sign'
+  | 'floor'
+  | 'ceil'
+  | 'gcd'
+  | 'lcm'
+  | 'min'
+  | 'max'
+  | 're'
+  | 'im'
+  | 'conj'
+  | 'arg'
+  | 'det'
+  | 'transpose';
 
 export type TermSign = 'plus' | 'minus' | 'plusminus' | 'minusplus';
 
 /** What was written: never simplified, a span on every node. */
 export type Expr =
-  | NumberExpr | LetterExpr | ConstantExpr | SumExpr | ProductExpr | QuotientExpr | PowerExpr | RootExpr
-  | CallExpr | LogExpr | ApplyExpr | FactorialExpr | BinomialExpr | SeriesExpr | DerivativeExpr | RateExpr
-  | IntegralExpr | EvaluatedExpr | LimitExpr | MatrixExpr;
+  | NumberExpr
+  | LetterExpr
+  | ConstantExpr
+  | SumExpr
+  | ProductExpr
+  | QuotientExpr
+  | PowerExpr
+  | RootExpr
+  | CallExpr
+  | LogExpr
+  | ApplyExpr
+  | FactorialExpr
+  | BinomialExpr
+  | SeriesExpr
+  | DerivativeExpr
+  | RateExpr
+  | IntegralExpr
+  | EvaluatedExpr
+  | LimitExpr
+  | MatrixExpr;
 
 /** A non-negative number as written; the value is numerator / denominator in lowest terms. */
 export interface NumberExpr extends Node {
@@ -129,6 +177,8 @@ export interface RateExpr extends Node {
   readonly of: string;
   readonly by: string;
   readonly order: number;
+  /** Written with the rounded d. */
+  readonly partial?: boolean;
 }
 /** Both bounds null: an indefinite integral. */
 export interface IntegralExpr extends Node {
@@ -179,29 +229,84 @@ export type SetExpr =
 /** What one line says. */
 export type Line =
   | { readonly kind: 'expression'; readonly expr: Expr; readonly span: Span }
-  | { readonly kind: 'relation'; readonly left: Expr; readonly sign: RelationSign; readonly right: Expr; readonly span: Span }
+  | {
+      readonly kind: 'relation';
+      readonly left: Expr;
+      readonly sign: RelationSign;
+      readonly right: Expr;
+      readonly span: Span;
+    }
   /** Three or more members: members[k] signs[k] members[k+1]. */
-  | { readonly kind: 'chain'; readonly members: readonly Expr[]; readonly signs: readonly RelationSign[]; readonly span: Span }
+  | {
+      readonly kind: 'chain';
+      readonly members: readonly Expr[];
+      readonly signs: readonly RelationSign[];
+      readonly span: Span;
+    }
   /** A line that begins with a relation sign: signs[k] stands before members[k]. */
-  | { readonly kind: 'continuation'; readonly members: readonly Expr[]; readonly signs: readonly RelationSign[]; readonly span: Span }
+  | {
+      readonly kind: 'continuation';
+      readonly members: readonly Expr[];
+      readonly signs: readonly RelationSign[];
+      readonly span: Span;
+    }
   | { readonly kind: 'any' | 'all'; readonly parts: readonly Line[]; readonly span: Span }
   /** `letter` null where the line is a bare set. */
-  | { readonly kind: 'membership'; readonly letter: Expr | null; readonly set: SetExpr; readonly negated: boolean; readonly span: Span }
+  | {
+      readonly kind: 'membership';
+      readonly letter: Expr | null;
+      readonly set: SetExpr;
+      readonly negated: boolean;
+      readonly span: Span;
+    }
   /** "no solution" and "all real x". */
   | { readonly kind: 'none'; readonly span: Span }
   | { readonly kind: 'always'; readonly letter: string | null; readonly span: Span }
   /** `let u = ...` (params empty) or `f(x) = ...`. */
-  | { readonly kind: 'definition'; readonly name: string; readonly params: readonly string[]; readonly value: Expr; readonly span: Span };
+  | {
+      readonly kind: 'definition';
+      readonly name: string;
+      readonly params: readonly string[];
+      readonly value: Expr;
+      readonly span: Span;
+    };
 
 /** What the eye might not expect: shown as "reads as" while typing. */
 export type ReadingFlag =
-  | 'mixed-number' | 'slash-product' | 'function-argument' | 'power-digits' | 'inverse-function' | 'letter-product'
-  | 'continues' | 'comma-or' | 'comma-and' | 'percent' | 'imaginary-unit' | 'log-base' | 'unknown-function';
+  | 'mixed-number'
+  | 'slash-product'
+  | 'function-argument'
+  | 'power-digits'
+  | 'inverse-function'
+  | 'letter-product'
+  | 'continues'
+  | 'comma-or'
+  | 'comma-and'
+  | 'percent'
+  | 'imaginary-unit'
+  | 'log-base'
+  | 'unknown-function';
 
 export type ReadErrorCode =
-  | 'empty' | 'too-long' | 'too-deep' | 'too-many-nodes' | 'unknown-command' | 'unknown-character' | 'missing-operand'
-  | 'missing-bracket' | 'extra-bracket' | 'missing-argument' | 'bad-relation' | 'bad-set' | 'bad-number' | 'bad-integral'
-  | 'bad-limit' | 'bad-series' | 'ragged-matrix' | 'mixed-joins' | 'text';
+  | 'empty'
+  | 'too-long'
+  | 'too-deep'
+  | 'too-many-nodes'
+  | 'unknown-command'
+  | 'unknown-character'
+  | 'missing-operand'
+  | 'missing-bracket'
+  | 'extra-bracket'
+  | 'missing-argument'
+  | 'bad-relation'
+  | 'bad-set'
+  | 'bad-number'
+  | 'bad-integral'
+  | 'bad-limit'
+  | 'bad-series'
+  | 'ragged-matrix'
+  | 'mixed-joins'
+  | 'text';
 
 /** What could not be read: where, what stands there and what was expected. Worded by the client. */
 export interface ReadError {
