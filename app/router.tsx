@@ -1,0 +1,40 @@
+import type { ComponentType } from 'react';
+import type { RouteObject } from 'react-router-dom';
+import { createBrowserRouter } from 'react-router-dom';
+import { RequireViewer } from './pages/frame.tsx';
+import { BrokenPage, NotFound } from './pages/not-found.tsx';
+import { Waiting } from './ui/states.tsx';
+
+interface PageRoute {
+  readonly path: string;
+  readonly load: () => Promise<{ readonly Component: ComponentType }>;
+}
+
+/** Whether this is a place to try things out: while developing, or where the server marks the document so. */
+const isTrial = import.meta.env.DEV || document.documentElement.dataset['demo'] !== undefined;
+
+/** Pages for people who have signed in; they stand in the shell. One line a page, in the order of paths.ts. */
+const INSIDE: readonly PageRoute[] = [];
+
+/** Pages for everyone; each draws its own surroundings. */
+const OUTSIDE: readonly PageRoute[] = [];
+
+/** Pages shown only while developing and in the demo. */
+const TRIAL: readonly PageRoute[] = [];
+
+function toRoute({ path, load }: PageRoute): RouteObject {
+  return { path, lazy: load };
+}
+
+/** Every address of the client, each with its page loaded when first needed. */
+export const router = createBrowserRouter([
+  {
+    errorElement: <BrokenPage />,
+    hydrateFallbackElement: <Waiting className="wide" />,
+    children: [
+      ...OUTSIDE.map(toRoute),
+      ...(isTrial ? TRIAL.map(toRoute) : []),
+      { element: <RequireViewer />, children: [...INSIDE.map(toRoute), { path: '*', element: <NotFound /> }] },
+    ],
+  },
+]);

@@ -1,0 +1,94 @@
+import type { ReactNode } from 'react';
+import { useEffect, useRef } from 'react';
+import { Link, NavLink, useLocation } from 'react-router-dom';
+import { paths } from '../lib/paths.ts';
+import { classNames } from './class-names.ts';
+import { Mark } from './mark.tsx';
+import { ThemeToggle } from './theme-toggle.tsx';
+
+export interface NavItem {
+  readonly to: string;
+  readonly label: string;
+  /** How many wait there; 0 is not shown. */
+  readonly count?: number;
+  /** Other addresses that belong to this word. */
+  readonly also?: readonly string[];
+}
+
+export interface ShellProps {
+  readonly nav?: readonly NavItem[];
+  /** Who is signed in and where, at the right of the bar. */
+  readonly who?: { readonly name: string; readonly place?: string };
+  readonly foot?: ReactNode;
+  readonly children: ReactNode;
+}
+
+function isAt(item: NavItem, pathname: string): boolean {
+  if (item.to === pathname) return true;
+  const roots = [...(item.to === '/' ? [] : [item.to]), ...(item.also ?? [])];
+  return roots.some((root) => pathname === root || pathname.startsWith(`${root}/`));
+}
+
+function Nav({ items }: { items: readonly NavItem[] }) {
+  const { pathname } = useLocation();
+  return (
+    <nav aria-label="Main" className={classNames('strokes', items.length <= 4 ? 'nav-few' : 'nav-many')}>
+      {items.map((item) => (
+        <Link key={item.to} to={item.to} className="stroke" aria-current={isAt(item, pathname) ? 'page' : undefined}>
+          {item.label}
+          {item.count ? <span className="count"> {item.count}</span> : null}
+        </Link>
+      ))}
+    </nav>
+  );
+}
+
+/** Moves the focus to the new page's content, so that a screen reader starts there. */
+function useFocusOnArrival() {
+  const main = useRef<HTMLElement>(null);
+  const { pathname } = useLocation();
+  const last = useRef(pathname);
+  useEffect(() => {
+    if (last.current === pathname) return;
+    last.current = pathname;
+    main.current?.focus({ preventScroll: true });
+  }, [pathname]);
+  return main;
+}
+
+/** What stands around every page: skip link, bar, page, foot. Pages say by `<Page wide>` or `<Page work>` how it stands. */
+export function Shell({ nav = [], who, foot, children }: ShellProps) {
+  const main = useFocusOnArrival();
+  return (
+    <div className="shell">
+      <a className="skip" href="#main">
+        Skip to the page
+      </a>
+      <header className="top">
+        <Link to={paths.today()} className="mark">
+          <Mark />
+          Slipstone
+        </Link>
+        {nav.length > 0 ? <Nav items={nav} /> : null}
+        {who ? (
+          <p className="who">
+            <NavLink to={paths.account()} className="who-link">
+              <b>{who.name}</b>
+              {who.place ? ` · ${who.place}` : null}
+            </NavLink>
+          </p>
+        ) : null}
+      </header>
+      <main id="main" ref={main} tabIndex={-1}>
+        {children}
+      </main>
+      <footer className="foot">
+        <p>{foot}</p>
+        <p className="foot-acts no-print">
+          <Link to={paths.help()}>Help</Link>
+        </p>
+        <ThemeToggle />
+      </footer>
+    </div>
+  );
+}
