@@ -1,0 +1,105 @@
+import type { Expr, Line, RelationSign, SetExpr, TermSign } from '../../../shared/maths/expression.ts';
+import { childrenOf, mapChildren } from '../../../shared/maths/walk.ts';
+
+/** What a line claims about its letters. */
+export type Statement =
+  | CompareStatement
+  | { readonly kind: 'all' | 'any'; readonly parts: readonly Statement[] }
+  | MemberStatement
+  | { readonly kind: 'never' }
+  | { readonly kind: 'always' };
+
+export interface CompareStatement {
+  readonly kind: 'compare';
+  readonly left: Expr;
+  readonly sign: RelationSign;
+  readonly right: Expr;
+}
+
+export interface MemberStatement {
+  readonly kind: 'member';
+  /** null: the set of solutions itself was written. */
+  readonly letter: Expr | null;
+  readonly set: SetExpr;
+  readonly negated: boolean;
+}
+
+/** The claim of a line; null for an expression, a continuation or a definition. */
+export function toStatement(line: Line): Statement | null {
+  switch (line.kind) {
+    case 'relation':
+      return withChoices([line.left, line.right], ([left, right]) => ({
+        kind: 'compare',
+        left: left as Expr,
+        sign: line.sign,
+        right: right as Expr,
+      }));
+    case 'chain':
+      return withChoices(line.members, (members) => toLinks(members, line.signs));
+    case 'any':
+    case 'all': {
+      const parts = line.parts.map(toStatement);
+      return parts.includes(null) ? null : { kind: line.kind, parts: parts as Statement[] };
+    }
+    case 'membership':
+      return { kind: 'member', letter: line.letter, set: line.set, negated: line.negated };
+    case 'none':
+      return { kind: 'never' };
+    case 'always':
+      return { kind: 'always' };
+    default:
+      return null;
+  }
+}
+
+function toLinks(members: readonly Expr[], signs: readonly RelationSign[]): Statement {
+  const parts = signs.map((sign, k): Statement => {
+    return { kind: 'compare', left: members[k] as Expr, sign, right: members[k + 1] as Expr };
+  });
+  return parts.length === 1 ? (parts[0] as Statement) : { kind: 'all', parts };
+}
+
+/** A chain that goes on from the last member of the line above. */
+export function continueFrom(first: Expr, members: readonly Expr[], signs: readonly RelationSign[]): Statement {
+  return withChoices([first, ...members], (all) => toLinks(all, signs));
+}
+
+const mostSigns = 4;
+
+/**
+ * One statement for each choice of the plus-or-minus signs, joined by or. A minus-or-plus belongs to the plus-or-minus
+ * of its line; without one, several plus-or-minus signs are chosen apart.
+ */
+function withChoices(exprs: readonly Expr[], build: (chosen: readonly Expr[]) => Statement): Statement {
+  const signs = exprs.flatMap(listChoices);
+  if (signs.length === 0) return build(exprs);
+  const together = signs.includes('minusplus');
+  const count = together ? 1 : Math.min(signs.length, mostSigns);
+  const parts = Array.from({ length: 2 ** count }, (_, choice) => {
+    let seen = 0;
+    const isUpper = (): boolean => {
+      const bit = together ? 0 : Math.min(seen, mostSigns - 1);
+      seen += 1;
+      return ((choice >> bit) & 1) === 0;
+    };
+    return build(exprs.map((expr) => chooseSigns(expr, isUpper)));
+  });
+  return { kind: 'any', parts };
+}
+
+function listChoices(expr: Expr): TermSign[] {
+  const own = expr.kind === 'sum' ? expr.terms.map((t) => t.sign).filter((s) => s === 'plusminus' || s === 'minusplus') : [];
+  return [...own, ...childrenOf(expr).flatMap(listChoices)];
+}
+
+function chooseSigns(expr: Expr, isUpper: () => boolean): Expr {
+  if (expr.kind !== 'sum') return mapChildren(expr, (child) => chooseSigns(child, isUpper));
+  const own = expr.terms.map((term): TermSign => {
+    if (term.sign === 'plus' || term.sign === 'minus') return term.sign;
+    return isUpper() === (term.sign === 'plusminus') ? 'plus' : 'minus';
+  });
+  return {
+    ...expr,
+    terms: expr.terms.map((term, k) => ({ ...term, sign: own[k] as TermSign, expr: chooseSigns(term.expr, isUpper) })),
+  };
+}
