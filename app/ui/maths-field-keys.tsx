@@ -23,7 +23,7 @@ const FACES = KEYS.map(({ face }) => ({ __html: renderToString(face, { throwOnEr
 /** The keys under the field in hand; they never take the focus away from it. */
 export function MathsFieldKeys({ onPress }: { readonly onPress: (inserts: string) => void }) {
   return (
-    <div className="maths-field-keys slate" role="group" aria-label="Maths keys">
+    <fieldset className="maths-field-keys slate" aria-label="Maths keys">
       {KEYS.map((key, i) => (
         <button
           key={key.name}
@@ -36,6 +36,6 @@ export function MathsFieldKeys({ onPress }: { readonly onPress: (inserts: string
           dangerouslySetInnerHTML={FACES[i]}
         />
       ))}
-    </div>
+    </fieldset>
   );
 }

@@ -1,4 +1,4 @@
-import { useEffect, useImperativeHandle, useRef, useState, type Ref } from 'react';
+import { useEffect, useImperativeHandle, useLayoutEffect, useRef, useState, type Ref } from 'react';
 import { renderToString } from 'katex';
 import { MathsFieldKeys } from './maths-field-keys.tsx';
 import {
@@ -55,7 +55,9 @@ export function MathsField(props: MathsFieldProps) {
   const shown = useRef(props.value);
   const [stage, setStage] = useState<Stage>('loading');
   const [inHand, setInHand] = useState(false);
-  latest.current = props;
+  useLayoutEffect(() => {
+    latest.current = props;
+  });
 
   useImperativeHandle(props.handle, () => ({
     focus: () => (field.current ?? plain.current)?.focus(),
@@ -120,7 +122,7 @@ export function MathsField(props: MathsFieldProps) {
         }}
       >
         <div ref={host} className="contents" />
-        {stage === 'loading' && <Preview tex={value} label={label} />}
+        {stage === 'loading' && <Preview tex={value} />}
         {stage === 'plain' && <PlainField {...props} field={plain} />}
       </div>
       {props.keys && inHand && stage === 'ready' && (
@@ -192,9 +194,9 @@ function setOrDrop(element: HTMLElement, name: string, value: string | undefined
   else element.setAttribute(name, value);
 }
 
-function Preview({ tex, label }: { readonly tex: string; readonly label: string }) {
+function Preview({ tex }: { readonly tex: string }) {
   const html = renderToString(`\\displaystyle ${tex}`, { throwOnError: false, output: 'htmlAndMathml' });
-  return <span role="group" aria-label={label} aria-busy="true" dangerouslySetInnerHTML={{ __html: html }} />;
+  return <span aria-busy="true" dangerouslySetInnerHTML={{ __html: html }} />;
 }
 
 function PlainField({ field, ...props }: MathsFieldProps & { readonly field: Ref<HTMLInputElement> }) {
