@@ -2,21 +2,58 @@ import tailwindcss from '@tailwindcss/vite';
 import react from '@vitejs/plugin-react';
 import { defineConfig } from 'vitest/config';
 
-export default defineConfig({
+export default defineConfig(({ isSsrBuild }) => ({
   plugins: [react(), tailwindcss()],
-  build: { outDir: 'dist/app', sourcemap: false },
+  build: isSsrBuild
+    ? {
+        // The server and its worker threads; packages stay in node_modules.
+        outDir: 'dist/api',
+        target: 'node20',
+        copyPublicDir: false,
+        rollupOptions: {
+          input: { main: 'api/main.ts' },
+          output: { entryFileNames: '[name].js' },
+        },
+      }
+    : { outDir: 'dist/app', sourcemap: false },
   test: {
     maxWorkers: 2,
     projects: [
-      { extends: true, test: { name: 'unit', include: ['tests/{shared,checker}/**/*.test.ts'], environment: 'node' } },
       {
         extends: true,
-        test: { name: 'api', include: ['tests/api/**/*.test.ts'], environment: 'node', globalSetup: 'tests/support/database.setup.ts', testTimeout: 30_000 },
+        test: { name: 'unit', include: ['tests/{shared,checker,lib}/**/*.test.ts'], environment: 'node' },
       },
       {
         extends: true,
-        test: { name: 'app', include: ['tests/app/**/*.test.{ts,tsx}'], environment: 'jsdom', setupFiles: ['tests/support/dom.setup.ts'] },
+        test: {
+          name: 'api',
+          include: ['tests/api/**/*.test.ts'],
+          environment: 'node',
+          globalSetup: 'tests/support/database.setup.ts',
+          testTimeout: 30_000,
+          hookTimeout: 60_000,
+        },
+      },
+      {
+        extends: true,
+        // Looks at what the API tests called, so it runs when all of them are done.
+        test: {
+          name: 'routes',
+          include: ['tests/routes/**/*.test.ts'],
+          environment: 'node',
+          sequence: { groupOrder: 1 },
+        },
+      },
+      {
+        extends: true,
+        resolve: { alias: { mathlive: new URL('tests/support/mathlive-stub.ts', import.meta.url).pathname } },
+        test: {
+          name: 'app',
+          include: ['tests/app/**/*.test.{ts,tsx}'],
+          environment: 'jsdom',
+          setupFiles: ['tests/support/dom.setup.ts'],
+        },
       },
     ],
   },
-});
+}));

@@ -1,4 +1,14 @@
-import { Column, Entity, Index, JoinColumn, ManyToOne, PrimaryGeneratedColumn, Unique, type Relation } from 'typeorm';
+import {
+  Column,
+  Entity,
+  Generated,
+  Index,
+  JoinColumn,
+  ManyToOne,
+  PrimaryGeneratedColumn,
+  Unique,
+  type Relation,
+} from 'typeorm';
 import { decimal } from '../../db/decimal.ts';
 import { Derivation, DerivationVersion } from '../derivations/derivations.entity.ts';
 import { User } from '../people/people.entity.ts';
@@ -114,7 +124,8 @@ export class Finding {
   takenBackAt!: Date | null;
 
   /** The id under which the author meets this finding. */
-  @Column({ type: 'uuid', default: () => 'gen_random_uuid()' })
+  @Generated('uuid')
+  @Column({ type: 'uuid' })
   authorKey!: string;
 }
 

@@ -1,0 +1,39 @@
+import { pino, type DestinationStream, type Logger } from 'pino';
+
+export type { Logger };
+
+const SECRET_FIELDS = [
+  'password',
+  'newPassword',
+  'currentPassword',
+  'token',
+  'code',
+  'secret',
+  'cookie',
+  'authorization',
+];
+
+/** JSON lines on standard output; anything that is named like a secret is left out wherever it stands. */
+export function createLogger(level: string, destination?: DestinationStream): Logger {
+  const options = {
+    level,
+    base: { app: 'slipstone' },
+    timestamp: pino.stdTimeFunctions.isoTime,
+    redact: {
+      paths: SECRET_FIELDS.flatMap((field) => [field, `*.${field}`, `*.*.${field}`, `*.*["set-cookie"]`]),
+      censor: '[left out]',
+    },
+  };
+  return destination ? pino(options, destination) : pino(options);
+}
+
+const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
+
+/** The path alone, with link tokens masked: a log must not let its reader use somebody's reset link. */
+export function toLoggedPath(url: string): string {
+  const path = url.split('?', 1)[0] ?? '';
+  return path
+    .split('/')
+    .map((part) => (part.length >= 20 && !UUID.test(part) && !part.includes('.') ? '[token]' : part))
+    .join('/');
+}
