@@ -127,23 +127,34 @@ export class JoinRequest {
   decidedById!: string | null;
 }
 
-/** A single-use link into a class; only the hash of its secret is kept. */
+/** A single-use link into a school, and into a class unless it makes a teacher's or admin's account; only the hash of its secret is kept. */
 @Unique(['tokenHash'])
 @Entity({ name: 'invitation' })
 export class Invitation {
   @PrimaryGeneratedColumn('uuid')
   id!: string;
 
-  @Index()
   @Column({ type: 'uuid' })
-  classId!: string;
+  schoolId!: string;
 
-  @ManyToOne(() => Class, { onDelete: 'CASCADE', nullable: false })
+  @ManyToOne(() => School, { onDelete: 'CASCADE', nullable: false })
+  @JoinColumn()
+  school?: Relation<School>;
+
+  @Index()
+  @Column({ type: 'uuid', nullable: true })
+  classId!: string | null;
+
+  @ManyToOne(() => Class, { onDelete: 'CASCADE' })
   @JoinColumn()
   class?: Relation<Class>;
 
   @Column({ type: 'text' })
-  role!: 'teacher' | 'assistant' | 'student';
+  role!: 'admin' | 'teacher' | 'assistant' | 'student';
+
+  /** true: came from the class code; who accepts it asks to join and the teacher decides. */
+  @Column({ type: 'boolean', default: false })
+  asksToJoin!: boolean;
 
   @Column({ type: 'text' })
   tokenHash!: string;
@@ -154,8 +165,8 @@ export class Invitation {
   @Column({ type: 'text', nullable: true })
   email!: string | null;
 
-  @Column({ type: 'uuid' })
-  createdById!: string;
+  @Column({ type: 'uuid', nullable: true })
+  createdById!: string | null;
 
   @Column({ type: 'timestamptz', default: () => 'now()' })
   createdAt!: Date;
