@@ -34,3 +34,29 @@ export interface FrozenTask extends TaskForm {
   /** Which scoring rule applies to the round. */
   readonly pointsRule: 'quadratic-1';
 }
+
+/** A form sent to change a task names the version it was made from. */
+export const taskChangeSchema = taskFormSchema.extend({ version: z.number().int().min(1) });
+export type TaskChange = z.infer<typeof taskChangeSchema>;
+
+export const taskArchiveSchema = z.object({ archived: z.boolean() });
+
+/** A task in its teacher's collection. */
+export interface TaskListItem {
+  readonly id: string;
+  readonly title: string;
+  readonly given: string;
+  readonly goal: TaskForm['goal'];
+  readonly decimal: TaskSettings['decimal'];
+  readonly rounds: number;
+  readonly archived: boolean;
+  readonly updatedAt: string;
+}
+
+export interface TaskAnswer extends TaskForm {
+  readonly id: string;
+  readonly version: number;
+  readonly rounds: number;
+  readonly archived: boolean;
+  readonly updatedAt: string;
+}
