@@ -1,6 +1,9 @@
 import type { DataSource } from 'typeorm';
 import { z } from 'zod';
 import { healthRoutes } from './features/health/health.routes.ts';
+import { mailJobs } from './features/mail/mail.jobs.ts';
+import { mailRoutes } from './features/mail/mail.routes.ts';
+import { createMailService } from './features/mail/mail.service.ts';
 import { mailboxRoutes } from './features/mail/mailbox.routes.ts';
 import type { UniqueConflicts } from './http/problems.ts';
 import type { Route, Viewer } from './http/route.ts';
@@ -40,13 +43,16 @@ export interface Composed {
  * function to another, because features never import each other.
  */
 export function composeServices(platform: Platform): Composed {
-  const { db, rateLimiter } = platform;
+  const { config, db, now, queue, rateLimiter, mailer } = platform;
+  const mail = createMailService({ db, now, queue, mailer, baseUrl: config.baseUrl, secret: config.secret });
   return {
     routes: [
       ...healthRoutes({ pingDatabase: () => db.query('select 1'), workersHealthy: platform.workersHealthy }),
+      ...mailRoutes(mail),
       ...(platform.mailbox ? mailboxRoutes(platform.mailbox) : []),
     ],
     jobs: [
+      ...mailJobs(mail),
       job({ name: 'sweep-rate-limits', data: z.object({}), cron: '17 3 * * *', handle: () => rateLimiter.sweep() }),
     ],
     conflicts: {},

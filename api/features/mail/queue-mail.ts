@@ -23,6 +23,12 @@ export interface MailDataOf {
   readonly 'email-change': { readonly name: string; readonly token: string };
   readonly 'email-changed': { readonly name: string };
   readonly 'email-in-use': Readonly<Record<string, never>>;
+  /** The link that makes an account for somebody who typed the class code. */
+  readonly 'sign-up': { readonly className: string; readonly token: string };
+  /** To the owner of an address with which somebody tried to sign up again: sign in and join with the code. */
+  readonly 'already-here': { readonly className: string };
+  /** To the teacher: somebody asks to join. */
+  readonly 'join-request': { readonly name: string; readonly className: string; readonly classId: string };
   readonly 'join-accepted': { readonly name: string; readonly className: string };
   readonly 'writing-opened': RoundMailData & { readonly endsAt: Date };
   readonly 'reviewing-opened': RoundMailData & { readonly endsAt: Date };
