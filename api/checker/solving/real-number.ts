@@ -1,8 +1,9 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { ballBetween, ballFromRational, ballToNumber, isApart, type Ball } from '../numbers/ball.ts';
 import { compare, toNumber, type Rational } from '../numbers/rational.ts';
+import type { KnownValue } from '../values/value.ts';
 import { degree, gcdPolynomials, signAt, type Polynomial } from './polynomial.ts';
-import { halveInterval, isolateRealRoots, type RootInterval } from './real-roots.ts';
+import { isolateRealRoots, type RootInterval } from './real-roots.ts';
 
 /** A point of the real line. */
 export type RealNumber =
@@ -15,6 +16,8 @@ export type RealNumber =
 export interface ComputedNumber {
   readonly kind: 'computed';
   readonly expr: Expr | null;
+  /** A multiple of pi, exact. */
+  readonly exact?: KnownValue;
   /** A ball of radius well under 2^-(bits - 24), or wider where the procedure cannot do better. */
   readonly enclose: (bits: number) => Ball;
 }

@@ -115,7 +115,7 @@ function ceiling(num: bigint, den: bigint): bigint {
 }
 
 /** Half of an interval with different signs of p at its ends. */
-export function halveInterval(p: Polynomial, { low, high }: RootInterval): RootInterval {
+function halveInterval(p: Polynomial, { low, high }: RootInterval): RootInterval {
   const middle = rational(low.num * high.den + high.num * low.den, 2n * low.den * high.den);
   const sign = signAt(p, middle);
   if (sign === 0) return { low: middle, high: middle };

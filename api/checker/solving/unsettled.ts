@@ -1,0 +1,12 @@
+import type { UndecidedReason } from '../../../shared/schemas/verdict.ts';
+
+/** Thrown where a statement cannot be solved with certainty; caught where a step begins, which is then undecided. */
+export class Unsettled extends Error {
+  readonly reason: UndecidedReason;
+
+  constructor(reason: UndecidedReason) {
+    super(`not settled: ${reason}`);
+    this.name = 'Unsettled';
+    this.reason = reason;
+  }
+}

@@ -1,0 +1,196 @@
+import type { Expr, NumberExpr, SetExpr } from '../../../shared/maths/expression.ts';
+import { roundingHalf } from './rounding.ts';
+import type { Rational } from '../numbers/rational.ts';
+import type { Sign, SignMap } from '../solving/fraction-signs.ts';
+import type { LineEnv } from '../solving/line-env.ts';
+import { computedNumber } from '../solving/linear.ts';
+import type { RealNumber } from '../solving/real-number.ts';
+import {
+  complement,
+  difference,
+  emptySet,
+  intersection,
+  mapPieces,
+  setOfPoints,
+  union,
+  wholeLine,
+  type RealSet,
+} from '../solving/real-set.ts';
+import { signsOf } from '../solving/sign-map.ts';
+import { surdToNumber, toSurd } from '../solving/surd.ts';
+import { Unsettled } from '../solving/unsettled.ts';
+import { isKnown } from '../values/arithmetic.ts';
+import { evaluatePrepared, prepare } from '../values/evaluate.ts';
+import type { Graph } from '../values/graph.ts';
+import { lowerAll } from '../values/lower.ts';
+import { familyPoints } from './family.ts';
+import type { CompareStatement, MemberStatement, Statement } from './statement.ts';
+
+/** How a statement about one letter is solved, and what its other letters stand for. */
+export interface SolveEnv extends LineEnv {
+  /** Letters that run through all whole numbers, as k in a general solution. */
+  readonly families: ReadonlySet<string>;
+}
+
+/** The values of the letter for which a statement is true; throws Unsettled where that cannot be found. */
+export function solveStatement(statement: Statement, env: SolveEnv): RealSet {
+  switch (statement.kind) {
+    case 'always':
+      return wholeLine;
+    case 'never':
+      return emptySet;
+    case 'all':
+      return statement.parts.map((part) => solveStatement(part, env)).reduce(intersection, wholeLine);
+    case 'any':
+      return statement.parts.map((part) => solveStatement(part, env)).reduce(union, emptySet);
+    case 'member':
+      return solveMember(statement, env);
+    case 'compare':
+      return solveCompare(statement, env);
+  }
+}
+
+/** left - right as one graph. */
+export function differenceGraph(left: Expr, right: Expr, env: LineEnv): Graph {
+  const { builder, roots } = lowerAll([left, right], env.context);
+  const root = builder.add([roots[0] ?? 0, builder.negate(roots[1] ?? 0)]);
+  return { nodes: builder.nodes, root };
+}
+
+function solveCompare(statement: CompareStatement, env: SolveEnv): RealSet {
+  const graph = differenceGraph(statement.left, statement.right, env);
+  const family = graph.nodes.find((node) => node.op === 'letter' && env.families.has(node.name));
+  if (family?.op === 'letter') {
+    if (statement.sign !== '=') throw new Unsettled('not-covered');
+    return familyPoints(graph, family.name, env);
+  }
+  if (statement.sign === 'approx') return solveApproximation(statement, env);
+  return withSign(signsOf(graph, env), statement.sign);
+}
+
+function withSign(signs: SignMap, sign: CompareStatement['sign']): RealSet {
+  return mapPieces(signs, (s) => isTrueFor(s, sign));
+}
+
+function isTrueFor(found: Sign, sign: CompareStatement['sign']): boolean {
+  if (found === null) return false;
+  switch (sign) {
+    case '=':
+    case 'approx':
+      return found === 0;
+    case '<':
+      return found < 0;
+    case '>':
+      return found > 0;
+    case '<=':
+      return found <= 0;
+    case '>=':
+      return found >= 0;
+    case '!=':
+      return found !== 0;
+  }
+}
+
+/** Where both sides of every comparison have a value. */
+export function solveDefined(statement: Statement, env: SolveEnv): RealSet {
+  switch (statement.kind) {
+    case 'all':
+    case 'any':
+      return statement.parts.map((part) => solveDefined(part, env)).reduce(union, emptySet);
+    case 'compare': {
+      const graph = differenceGraph(statement.left, statement.right, env);
+      if (graph.nodes.some((node) => node.op === 'letter' && env.families.has(node.name))) return wholeLine;
+      return mapPieces(signsOf(graph, env), (s) => s !== null);
+    }
+    default:
+      return wholeLine;
+  }
+}
+
+/** A value after an approximation sign stands for all numbers that round to it (rule 9). */
+function solveApproximation(statement: CompareStatement, env: SolveEnv): RealSet {
+  const half = roundingHalf(statement.right) ?? roundingHalf(statement.left);
+  if (!half) throw new Unsettled('not-covered');
+  const above = withSign(signsOf(shifted(statement, half, env), env), '>=');
+  const below = withSign(signsOf(shifted(statement, { num: -half.num, den: half.den }, env), env), '<=');
+  return intersection(above, below);
+}
+
+function shifted(statement: CompareStatement, by: Rational, env: SolveEnv): Graph {
+  const number: NumberExpr = {
+    kind: 'number',
+    numerator: by.num < 0n ? -by.num : by.num,
+    denominator: by.den,
+    written: 'integer',
+    decimals: 0,
+    span: statement.left.span,
+  };
+  const sign = by.num < 0n ? 'minus' : 'plus';
+  const span = statement.left.span;
+  const left: Expr = {
+    kind: 'sum',
+    terms: [
+      { sign: 'plus', expr: statement.left, span },
+      { sign, expr: number, span },
+    ],
+    span,
+  };
+  return differenceGraph(left, statement.right, env);
+}
+
+function solveMember(statement: MemberStatement, env: SolveEnv): RealSet {
+  if (statement.letter && (statement.letter.kind !== 'letter' || statement.letter.name !== env.letter)) {
+    throw new Unsettled('not-covered');
+  }
+  const inside = solveSet(statement.set, env);
+  return statement.negated ? complement(inside) : inside;
+}
+
+function solveSet(set: SetExpr, env: SolveEnv): RealSet {
+  switch (set.kind) {
+    case 'empty':
+      return emptySet;
+    case 'reals':
+    case 'complex':
+      return wholeLine;
+    case 'finite':
+      return setOfPoints(set.items.map((item) => constantNumber(item, env)));
+    case 'interval':
+      return solveInterval(set, env);
+    case 'union':
+      return set.parts.map((part) => solveSet(part, env)).reduce(union, emptySet);
+    case 'intersection':
+      return set.parts.map((part) => solveSet(part, env)).reduce(intersection, wholeLine);
+    case 'without':
+      return difference(solveSet(set.from, env), solveSet(set.removed, env));
+    default:
+      throw new Unsettled('not-covered');
+  }
+}
+
+function solveInterval(set: Extract<SetExpr, { kind: 'interval' }>, env: SolveEnv): RealSet {
+  const from = set.from && constantNumber(set.from, env);
+  const to = set.to && constantNumber(set.to, env);
+  const right = from ? afterPoint(from, set.fromClosed) : wholeLine;
+  const left = to ? complement(afterPoint(to, !set.toClosed)) : wholeLine;
+  return intersection(right, left);
+}
+
+function afterPoint(point: RealNumber, closed: boolean): RealSet {
+  return { points: [point], at: [closed], between: [false, true], reached: 'proved' };
+}
+
+/** The number that an expression without free letters is worth; throws Unsettled where it has none. */
+export function constantNumber(expr: Expr, env: SolveEnv): RealNumber {
+  const graph = prepare(expr, env.context);
+  const surd = toSurd(graph, env.given);
+  if (surd) return surdToNumber(surd);
+  const point = new Map([...env.given].map(([name, value]) => [name, { kind: 'rational' as const, value }]));
+  const number = computedNumber((bits) => {
+    const value = evaluatePrepared(graph, point, bits, env.context);
+    return isKnown(value) ? value : null;
+  });
+  if (!number) throw new Unsettled('not-covered');
+  return number.kind === 'computed' ? { ...number, expr } : number;
+}
+
