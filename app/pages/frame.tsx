@@ -7,6 +7,7 @@ import { Page } from '../ui/page.tsx';
 import type { NavItem } from '../ui/shell.tsx';
 import { Shell } from '../ui/shell.tsx';
 import { ErrorState, Waiting } from '../ui/states.tsx';
+import { ZoneProvider } from '../ui/time.tsx';
 
 /** The words in the bar, by what the person may do. */
 export function navFor(viewer: Viewer): readonly NavItem[] {
@@ -61,7 +62,9 @@ export function RequireViewer() {
       who={{ name: viewer.data.user.name, place: placeOf(viewer.data) }}
       foot={footOf(viewer.data)}
     >
-      <Outlet />
+      <ZoneProvider zone={viewer.data.classes[0]?.timeZone ?? 'UTC'}>
+        <Outlet />
+      </ZoneProvider>
       <ScrollRestoration />
     </Shell>
   );

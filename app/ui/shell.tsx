@@ -5,6 +5,7 @@ import { paths } from '../lib/paths.ts';
 import { classNames } from './class-names.ts';
 import { Mark } from './mark.tsx';
 import { ThemeToggle } from './theme-toggle.tsx';
+import { Toasts } from './toasts.tsx';
 
 export interface NavItem {
   readonly to: string;
@@ -89,6 +90,7 @@ export function Shell({ nav = [], who, foot, children }: ShellProps) {
         </p>
         <ThemeToggle />
       </footer>
+      <Toasts />
     </div>
   );
 }
