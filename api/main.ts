@@ -25,6 +25,11 @@ async function main(): Promise<void> {
   await listen(platform, composed, closers);
   await platform.queue.work();
   logger.info({ url: config.baseUrl }, 'listening');
+  if (config.demo) process.stdout.write(toGreeting(config));
+}
+
+function toGreeting({ baseUrl }: Config): string {
+  return `\nSlipstone is at ${baseUrl}   (Ctrl-C stops it)\nIts mail lands at ${baseUrl}/mailbox\n`;
 }
 
 async function openPlatform(config: Config, logger: Logger, closers: Closer[]): Promise<Platform> {
@@ -97,6 +102,8 @@ function stopOnSignal(closers: Closer[], logger: Logger): void {
   };
   process.on('SIGINT', () => void stop('SIGINT'));
   process.on('SIGTERM', () => void stop('SIGTERM'));
+  // Started by `npm start`, which has been killed: nobody would be left to stop us.
+  process.on('disconnect', () => void stop('disconnect'));
 }
 
 try {
