@@ -1,10 +1,22 @@
 import type { DataSource } from 'typeorm';
 import { z } from 'zod';
+import { adminRoutes } from './features/admin/admin.routes.ts';
+import { createAdminService } from './features/admin/admin.service.ts';
+import { classRoutes } from './features/classes/classes.routes.ts';
+import { createClassesService } from './features/classes/classes.service.ts';
+import { createInvitation, createJoiningService } from './features/classes/joining.service.ts';
+import { createMembersService } from './features/classes/members.service.ts';
 import { healthRoutes } from './features/health/health.routes.ts';
 import { mailJobs } from './features/mail/mail.jobs.ts';
+import type { QueueMail } from './features/mail/queue-mail.ts';
 import { mailRoutes } from './features/mail/mail.routes.ts';
 import { createMailService } from './features/mail/mail.service.ts';
 import { mailboxRoutes } from './features/mail/mailbox.routes.ts';
+import { hashPassword, refuseCommonPassword } from './features/people/passwords.ts';
+import { peopleRoutes } from './features/people/people.routes.ts';
+import { createPeopleService } from './features/people/people.service.ts';
+import { createSessions } from './features/people/sessions.ts';
+import { issueSignInCode } from './features/people/tokens.ts';
 import type { UniqueConflicts } from './http/problems.ts';
 import type { Route, Viewer } from './http/route.ts';
 import type { Now } from './lib/clock.ts';
@@ -45,17 +57,62 @@ export interface Composed {
 export function composeServices(platform: Platform): Composed {
   const { config, db, now, queue, rateLimiter, mailer } = platform;
   const mail = createMailService({ db, now, queue, mailer, baseUrl: config.baseUrl, secret: config.secret });
+  const people = composePeople(platform, mail.queueMail);
   return {
     routes: [
+      ...people.routes,
       ...healthRoutes({ pingDatabase: () => db.query('select 1'), workersHealthy: platform.workersHealthy }),
       ...mailRoutes(mail),
       ...(platform.mailbox ? mailboxRoutes(platform.mailbox) : []),
     ],
     jobs: [
+      ...people.jobs,
       ...mailJobs(mail),
       job({ name: 'sweep-rate-limits', data: z.object({}), cron: '17 3 * * *', handle: () => rateLimiter.sweep() }),
     ],
-    conflicts: {},
-    findViewer: async () => null,
+    conflicts: {
+      uq_person_email: { pointer: '/email', detail: 'There is an account with this address. Sign in instead.' },
+      uq_person_school_id_user_name: {
+        pointer: '/userName',
+        detail: 'This user name is taken in your school. Choose another.',
+      },
+      uq_class_school_id_name: { pointer: '/name', detail: 'Your school has a class of this name. Choose another.' },
+      uq_membership_class_id_alias: { pointer: '/alias', detail: 'Somebody has this alias. Choose another.' },
+    },
+    findViewer: people.findViewer,
+  };
+}
+
+/** Accounts, sessions, classes and the school's own settings. */
+function composePeople({ db, now, rateLimiter }: Platform, queueMail: QueueMail) {
+  const sessions = createSessions(db, now);
+  const people = createPeopleService({ db, now, sessions, rateLimiter, queueMail });
+  const classes = createClassesService({ db, now });
+  const joining = createJoiningService({
+    db,
+    now,
+    rateLimiter,
+    queueMail,
+    beginSession: sessions.begin,
+    hashPassword,
+    refuseCommonPassword,
+  });
+  const members = createMembersService({
+    db,
+    now,
+    queueMail,
+    issueSignInCode: (manager, userId, createdById) => issueSignInCode(manager, userId, createdById, now()),
+  });
+  const admin = createAdminService({
+    db,
+    now,
+    queueMail,
+    endSessions: sessions.endAll,
+    inviteStaff: (manager, order) => createInvitation(manager, { ...order, classId: null, asksToJoin: false }),
+  });
+  return {
+    routes: [...peopleRoutes(people), ...classRoutes({ classes, members, joining }), ...adminRoutes(admin)],
+    jobs: [job({ name: 'sweep-sessions', data: z.object({}), cron: '47 3 * * *', handle: () => sessions.sweep() })],
+    findViewer: sessions.findViewer,
   };
 }

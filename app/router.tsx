@@ -14,13 +14,22 @@ interface PageRoute {
 const isTrial = import.meta.env.DEV || document.documentElement.dataset['demo'] !== undefined;
 
 /** Pages for people who have signed in; they stand in the shell. One line a page, in the order of paths.ts. */
-const INSIDE: readonly PageRoute[] = [];
+const INSIDE: readonly PageRoute[] = [
+  { path: '/account', load: () => import('./pages/account.tsx') },
+  { path: '/classes', load: () => import('./pages/classes.tsx') },
+];
 
 /** Pages for everyone; each draws its own surroundings. */
-const OUTSIDE: readonly PageRoute[] = [];
+const OUTSIDE: readonly PageRoute[] = [
+  { path: '/signin', load: () => import('./pages/signin.tsx') },
+  { path: '/signup', load: () => import('./pages/signup.tsx') },
+  { path: '/join/:token', load: () => import('./pages/join.tsx') },
+  { path: '/reset', load: () => import('./pages/reset.tsx') },
+  { path: '/reset/:token', load: () => import('./pages/reset.tsx') },
+];
 
 /** Pages shown only while developing and in the demo. */
-const TRIAL: readonly PageRoute[] = [];
+const TRIAL: readonly PageRoute[] = [{ path: '/parts', load: () => import('./pages/parts.tsx') }];
 
 function toRoute({ path, load }: PageRoute): RouteObject {
   return { path, lazy: load };

@@ -29,7 +29,6 @@ export interface MembersDeps {
     userId: string,
     createdById: string,
   ) => Promise<{ code: string; expiresAt: Date }>;
-  readonly endSessions: (userId: string) => Promise<void>;
 }
 export type MembersService = ReturnType<typeof createMembersService>;
 

@@ -1,6 +1,6 @@
 import { IsNull, type EntityManager } from 'typeorm';
 import { ProblemError } from '../../http/problem-error.ts';
-import { createToken, sha256 } from '../../lib/secrets.ts';
+import { createCode, createToken, sha256 } from '../../lib/secrets.ts';
 import { AccountToken } from './people.entity.ts';
 
 export interface TokenOrder {
@@ -47,4 +47,20 @@ export async function takeToken(
 
 function gone(): ProblemError {
   return new ProblemError('gone', { detail: 'The link was used already or is too old. Ask for a new one.' });
+}
+
+const CODE_LENGTH = 10;
+const CODE_HOURS = 24;
+
+/** A code that a teacher hands over; the person types it with their name. The earlier one is void. */
+export async function issueSignInCode(
+  manager: EntityManager,
+  userId: string,
+  createdById: string,
+  at: Date,
+): Promise<{ code: string; expiresAt: Date }> {
+  const code = createCode(CODE_LENGTH);
+  const expiresAt = new Date(at.getTime() + CODE_HOURS * 3_600_000);
+  await issueToken(manager, { userId, kind: 'one-day-code', expiresAt, createdById, secret: `${userId}:${code}` });
+  return { code, expiresAt };
 }
