@@ -76,7 +76,7 @@ export function Derivation(props: DerivationProps) {
     <ol
       className={classNames('deriv', layoutClass(lines, layout), reveal && 'reveal', className)}
       aria-label={label}
-      style={isReview ? ({ '--n': lines.length } as CSSProperties) : undefined}
+      style={styleOf(lines, isReview)}
     >
       {lines.map((line, index) => {
         const row = rows[index];
@@ -98,6 +98,15 @@ export function Derivation(props: DerivationProps) {
       {isReview && foot ? <li className="rev-foot">{foot}</li> : null}
     </ol>
   );
+}
+
+/** Custom properties that the stylesheet lays the list out by. */
+function styleOf(lines: readonly EdgeLine[], isReview: boolean): CSSProperties | undefined {
+  const fill = lines.find((line) => typeof line.bracket === 'number')?.bracket;
+  const style: Record<string, string | number> = {};
+  if (isReview) style['--n'] = lines.length;
+  if (typeof fill === 'number') style['--bracket'] = `${(2 + 3 * fill).toFixed(2)}px`;
+  return Object.keys(style).length > 0 ? style : undefined;
 }
 
 function Fold({ children, runsOn }: { children: ReactNode; runsOn: boolean }) {

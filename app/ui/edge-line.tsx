@@ -142,11 +142,6 @@ function Label({ line, number }: { line: EdgeLine; number: number }) {
   );
 }
 
-function bracketStyle(line: EdgeLine): CSSProperties {
-  if (typeof line.bracket !== 'number') return {};
-  return { '--bracket': `${(2 + 3 * line.bracket).toFixed(2)}px` } as CSSProperties;
-}
-
 /** One item of the list: its part of the edge, what is written, and what stands beside it. */
 export function EdgeLineRow({ line, row, number, isFirst, mend, style }: EdgeLineRowProps) {
   const words = line.isWords ? null : wordsFor(line, number);
@@ -161,11 +156,7 @@ export function EdgeLineRow({ line, row, number, isFirst, mend, style }: EdgeLin
     line.isMuted && 'dim',
   );
   return (
-    <li
-      className={className}
-      style={{ ...style, ...bracketStyle(line) }}
-      aria-current={line.isCurrent ? 'step' : undefined}
-    >
+    <li className={className} style={style} aria-current={line.isCurrent ? 'step' : undefined}>
       {line.isWords ? null : <Label line={line} number={number} />}
       {words ? (
         <span className="lab" aria-hidden={spoken ? 'true' : undefined}>

@@ -25,18 +25,11 @@ export function PasswordField({ label, hint, error, className, ...rest }: TextFi
   const wiring = useField({ hint, error }, rest.id);
   return (
     <div className="fld">
-      <div className="beside">
+      <div className="beside-label">
         <label className="flabel" htmlFor={wiring.id}>
           {label}
         </label>
-        <Button
-          kind="quiet"
-          small
-          aria-pressed={shown}
-          aria-controls={wiring.id}
-          onClick={() => setShown(!shown)}
-          className="mb-1.5"
-        >
+        <Button kind="quiet" small aria-pressed={shown} aria-controls={wiring.id} onClick={() => setShown(!shown)}>
           {shown ? 'Hide' : 'Show'}
           <span className="sr-only"> the password</span>
         </Button>
