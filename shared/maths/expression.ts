@@ -47,7 +47,9 @@ export type FunctionName =
   | 'conj'
   | 'arg'
   | 'det'
-  | 'transpose';
+  | 'transpose'
+  /** `x^\circ`: the argument times pi / 180. */
+  | 'degrees';
 
 export type TermSign = 'plus' | 'minus' | 'plusminus' | 'minusplus';
 
@@ -303,6 +305,7 @@ export type ReadErrorCode =
   | 'bad-number'
   | 'bad-integral'
   | 'bad-limit'
+  | 'bad-derivative'
   | 'bad-series'
   | 'ragged-matrix'
   | 'mixed-joins'

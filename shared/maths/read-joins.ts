@@ -1,0 +1,107 @@
+import type { Expr, Line, RelationSign } from './expression.ts';
+import { lettersOf } from './letters.ts';
+import { outer, type Reader } from './reader.ts';
+
+export type Join = 'or' | 'and' | 'comma';
+
+export interface Part {
+  readonly line: Line;
+  /** How it is joined to the part before it. */
+  readonly join: Join;
+}
+
+/** Statements with their joins as one line; says what a comma means, or that it could mean two things. */
+export function joinParts(reader: Reader, parts: readonly Part[], start: number): Line {
+  const [condition, rest] = splitCondition(parts);
+  const kinds = new Set(rest.slice(1).map((part) => part.join));
+  if (kinds.has('or') && kinds.has('and')) reader.fail('mixed-joins', ['(']);
+  const spread = spreadValues(rest.map((part) => part.line));
+  const kind = kinds.has('or') ? 'any' : kinds.has('and') ? 'all' : commaKind(reader, spread);
+  const lines = kind === 'set' ? [bareSet(reader, spread, start)] : spread;
+  const span = reader.span(start);
+  const joined: Line = lines.length === 1 ? lines[0]! : { kind: kind === 'any' ? 'any' : 'all', parts: lines, span };
+  if (!condition) return joined;
+  reader.flags.add('comma-and');
+  if (joined.kind === 'all') return { ...joined, parts: [...joined.parts, condition] };
+  return { kind: 'all', parts: [joined, condition], span };
+}
+
+/** `.. , k in Z` at the end goes with all that stands before it. */
+function splitCondition(parts: readonly Part[]): [Line | null, readonly Part[]] {
+  const last = parts[parts.length - 1];
+  if (!last || last.line.kind !== 'membership' || last.join === 'or' || parts.length < 2) return [null, parts];
+  return [last.line, parts.slice(0, -1)];
+}
+
+/** `x=2 or 3` and `x,y>0`: the letter and sign stand for each value or letter beside them. */
+function spreadValues(lines: readonly Line[]): readonly Line[] {
+  const first = lines[0];
+  if (first?.kind === 'relation' && isLetter(first.left) && lines.slice(1).every((line) => line.kind !== 'relation')) {
+    const { left, sign } = first;
+    if (!lines.slice(1).every((line) => line.kind === 'expression' && !hasLetter(line.expr, left))) return lines;
+    return lines.map((line) => (line.kind === 'expression' ? spreadOver(left, sign, line.expr) : line));
+  }
+  const last = lines[lines.length - 1];
+  const before = lines.slice(0, -1);
+  if (last?.kind !== 'relation' || !isLetter(last.left)) return lines;
+  const { sign, right } = last;
+  if (!before.every((line) => line.kind === 'expression' && isLetter(line.expr) && !hasLetter(last.left, line.expr)))
+    return lines;
+  return lines.map((line) => (line.kind === 'expression' ? spreadOver(line.expr, sign, right) : line));
+}
+
+function spreadOver(left: Expr, sign: RelationSign, right: Expr): Line {
+  const span = {
+    start: Math.min(outer(left).start, outer(right).start),
+    end: Math.max(outer(left).end, outer(right).end),
+  };
+  return { kind: 'relation', left, sign, right, span };
+}
+
+function isLetter(expr: Expr): boolean {
+  return expr.kind === 'letter';
+}
+
+function hasLetter(expr: Expr, letter: Expr): boolean {
+  return letter.kind === 'letter' && lettersOf(expr).includes(letter.name);
+}
+
+/** Rule for commas: values of one letter are alternatives, different letters hold together, all else is asked about. */
+function commaKind(reader: Reader, lines: readonly Line[]): 'any' | 'all' | 'set' {
+  if (lines.every((line) => line.kind === 'expression')) {
+    reader.flags.add('comma-or');
+    return 'set';
+  }
+  const names = new Set(lines.map(valuedLetter));
+  if (!names.has(null) && names.size === 1) return flagged(reader, isUnequal(lines[0]) ? 'all' : 'any');
+  if (!names.has(null) && names.size === lines.length) return flagged(reader, 'all');
+  if (lines.some((line) => line.kind === 'expression' || line.kind === 'definition' || line.kind === 'always')) {
+    return flagged(reader, 'all');
+  }
+  const letters = new Set(lines.flatMap((line) => [...lettersOf(line)]));
+  if (letters.size > 1 && names.has(null)) return flagged(reader, 'all');
+  return flagged(reader, reader.choose('comma') ? 'any' : 'all');
+}
+
+function flagged(reader: Reader, kind: 'any' | 'all'): 'any' | 'all' {
+  reader.flags.add(kind === 'any' ? 'comma-or' : 'comma-and');
+  return kind;
+}
+
+/** The letter of `letter = value` (or not equal, or about), where the value does not hold it. */
+function valuedLetter(line: Line): string | null {
+  if (line.kind !== 'relation' || line.left.kind !== 'letter' || hasLetter(line.right, line.left)) return null;
+  return line.sign === '=' || line.sign === 'approx' || line.sign === '!='
+    ? `${line.left.name}${line.sign === '!=' ? '!' : ''}`
+    : null;
+}
+
+function isUnequal(line: Line | undefined): boolean {
+  return line?.kind === 'relation' && line.sign === '!=';
+}
+
+function bareSet(reader: Reader, lines: readonly Line[], start: number): Line {
+  const items = lines.flatMap((line) => (line.kind === 'expression' ? [line.expr] : []));
+  const span = reader.span(start);
+  return { kind: 'membership', letter: null, set: { kind: 'finite', items, span }, negated: false, span };
+}
