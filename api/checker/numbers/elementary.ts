@@ -38,10 +38,6 @@ export function piBall(bits: number): Ball {
   return { mid: pi >> BigInt(constantBits - bits), rad: 1n };
 }
 
-function ln2Ball(bits: number): Ball {
-  return { mid: ln2 >> BigInt(constantBits - bits), rad: 1n };
-}
-
 /** Null for results beyond 2^40000 or a radius above 1. */
 export function expBall(a: Ball, bits: number): Ball | null {
   const unit = 1n << BigInt(bits);

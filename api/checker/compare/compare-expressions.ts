@@ -1,0 +1,49 @@
+import type { Expr } from '../../../shared/maths/expression.ts';
+import { BudgetSpent } from '../context.ts';
+import type { CheckContext } from '../context.ts';
+import { lowerAll } from '../values/lower.ts';
+import { compareConstants } from './compare-constants.ts';
+import { compareFunctions } from './compare-functions.ts';
+import { compareRationals } from './compare-rationals.ts';
+import type { Comparison } from './comparison.ts';
+import { createPair } from './pair.ts';
+import type { Pair } from './pair.ts';
+import { wholeLettersOf } from './points.ts';
+import { rationalOps } from './rational-identity.ts';
+
+/** Compares two expressions where both have a value, by rule 1 of the checker. Never throws for what a person wrote. */
+export function compareExpressions(above: Expr, below: Expr, context: CheckContext): Comparison {
+  try {
+    return compareWithin(above, below, context);
+  } catch (error) {
+    // A RangeError is a number that grew beyond what the machine holds.
+    if (error instanceof BudgetSpent || error instanceof RangeError) return { kind: 'undecided', reason: 'limit' };
+    throw error;
+  }
+}
+
+function compareWithin(above: Expr, below: Expr, context: CheckContext): Comparison {
+  const { builder, roots } = lowerAll([above, below], context);
+  const [first, second] = roots;
+  if (first === undefined || second === undefined) return { kind: 'undecided', reason: 'not-covered' };
+  const pair = createPair(builder.nodes, first, second, wholeLettersOf(context), context.numbers === 'complex');
+  const missing = opaqueReason(pair);
+  if (missing !== null) return { kind: 'undecided', reason: missing };
+  if (pair.names.length === 0) return compareConstants(pair, context);
+  return isRational(pair) ? compareRationals(pair, context) : compareFunctions(pair, context);
+}
+
+function opaqueReason(pair: Pair): 'not-covered' | 'limit' | null {
+  for (let index = 0; index < pair.nodes.length; index += 1) {
+    const node = pair.nodes[index];
+    if (pair.needed[index] === 1 && node?.op === 'opaque') return node.reason;
+    if (pair.needed[index] === 1 && node?.op === 'constant' && node.name === 'infinity') return 'not-covered';
+  }
+  return null;
+}
+
+function isRational(pair: Pair): boolean {
+  return pair.nodes.every(
+    (node, index) => pair.needed[index] === 0 || rationalOps.has(node.op) || (node.op === 'constant' && node.name === 'i'),
+  );
+}

@@ -1,0 +1,45 @@
+import type { CheckContext } from '../context.ts';
+import type { Comparison } from './comparison.ts';
+import { findConditions } from './find-conditions.ts';
+import { marksOf } from './pair.ts';
+import type { Pair } from './pair.ts';
+import { createRegion, pointsOf } from './points.ts';
+import type { Region } from './points.ts';
+import { takeSamples } from './sampling.ts';
+import type { Samples } from './sampling.ts';
+import { witnessAt } from './witness.ts';
+
+const mostPoints = 220;
+const agreementsAsked = 40;
+const agreementsNeeded = 12;
+
+/** Expressions with roots, exponentials, logarithms, circular functions, bars, factorials and the like. */
+export function compareFunctions(pair: Pair, context: CheckContext): Comparison {
+  const region = createRegion(pair.names, marksOf(pair), usesTurns(pair), context);
+  const samples = takeSamples(pair, pointsOf(region, context.seed, mostPoints), context, { agreements: agreementsAsked });
+  if (samples.apart !== null) {
+    const witness = witnessAt(pair, samples.apart.point, samples.apart.bits, context);
+    return witness === null ? { kind: 'undecided', reason: 'not-settled' } : { kind: 'different', witness };
+  }
+  return rule(pair, samples, region, false, context);
+}
+
+function usesTurns(pair: Pair): boolean {
+  return pair.nodes.some(
+    (node, index) =>
+      pair.needed[index] === 1 && node.op === 'call' && ['sin', 'cos', 'tan', 'cot', 'sec', 'csc'].includes(node.name),
+  );
+}
+
+function rule(pair: Pair, samples: Samples, region: Region, isProved: boolean, context: CheckContext): Comparison {
+  const { counts } = samples;
+  const tried = Object.values(counts).reduce((a, b) => a + b, 0);
+  if (counts['no-agreed-meaning'] * 6 > tried) return { kind: 'undecided', reason: 'no-agreed-meaning' };
+  if (counts['not-covered'] * 2 > tried) return { kind: 'undecided', reason: 'not-covered' };
+  if (counts.same >= (isProved ? 1 : agreementsNeeded) && (samples.inside || pair.names.every((name) => region.whole.has(name)))) {
+    return { kind: 'equal', reached: isProved ? 'proved' : 'sampled', ...findConditions(pair, samples, region, context) };
+  }
+  if (counts.limit > 0 && counts.same === 0) return { kind: 'undecided', reason: 'limit' };
+  if (counts.same === 0 && counts.blurred === 0) return { kind: 'undecided', reason: 'no-domain' };
+  return { kind: 'undecided', reason: 'not-settled' };
+}

@@ -1,0 +1,146 @@
+import type { FunctionName } from '../../../shared/maths/expression.ts';
+import * as Q from '../numbers/rational.ts';
+import type { Rational } from '../numbers/rational.ts';
+
+/** Determinants, transposes and degrees are gone once an expression is a graph. */
+export type CallName = Exclude<FunctionName, 'det' | 'transpose' | 'degrees'> | 'factorial' | 'binomial' | 'log';
+
+/** What an expression means, as a graph in which equal parts are one node; `args` are indices of earlier nodes. */
+export type GraphNode =
+  | { readonly op: 'number'; readonly args: readonly []; readonly value: Rational }
+  | { readonly op: 'letter'; readonly args: readonly []; readonly name: string }
+  | { readonly op: 'constant'; readonly args: readonly []; readonly name: 'pi' | 'e' | 'i' | 'infinity' }
+  | { readonly op: 'add' | 'mul'; readonly args: readonly number[] }
+  | { readonly op: 'negate'; readonly args: readonly [number] }
+  | { readonly op: 'div'; readonly args: readonly [number, number] }
+  /** A whole constant exponent. */
+  | { readonly op: 'power'; readonly args: readonly [number]; readonly exponent: number }
+  /** The radicand to the power times/degree, in lowest terms, degree >= 2. */
+  | {
+      readonly op: 'root';
+      readonly args: readonly [number];
+      readonly degree: number;
+      readonly times: number;
+      /** A decimal exponent, which needs a positive base (rule 13). */
+      readonly positive: boolean;
+    }
+  /** Base and exponent, where the exponent is no constant fraction. */
+  | { readonly op: 'pow'; readonly args: readonly [number, number] }
+  | { readonly op: 'call'; readonly args: readonly number[]; readonly name: CallName }
+  | {
+      readonly op: 'series';
+      /** The bounds. */
+      readonly args: readonly [number, number];
+      readonly operation: 'sum' | 'product';
+      readonly index: string;
+      readonly body: Graph;
+    }
+  /** What cannot be evaluated, and why. */
+  | { readonly op: 'opaque'; readonly args: readonly []; readonly reason: 'not-covered' | 'limit' };
+
+export interface Graph {
+  readonly nodes: readonly GraphNode[];
+  readonly root: number;
+}
+
+/** Adds nodes to a growing graph; an equal node is never added twice. */
+export interface GraphBuilder {
+  readonly nodes: GraphNode[];
+  readonly push: (node: GraphNode) => number;
+  readonly number: (value: Rational) => number;
+  readonly add: (args: readonly number[]) => number;
+  readonly mul: (args: readonly number[]) => number;
+  readonly negate: (arg: number) => number;
+  readonly div: (top: number, bottom: number) => number;
+  readonly power: (base: number, exponent: number) => number;
+  readonly valueOf: (index: number) => Rational | null;
+}
+
+const foldBits = 2_000;
+
+function keyOf(node: GraphNode): string {
+  switch (node.op) {
+    case 'number':
+      return `#${node.value.num}/${node.value.den}`;
+    case 'letter':
+      return `$${node.name}`;
+    case 'constant':
+      return `@${node.name}`;
+    case 'power':
+      return `^${node.args[0]},${node.exponent}`;
+    case 'root':
+      return `r${node.args[0]},${node.degree},${node.times},${node.positive}`;
+    case 'call':
+      return `${node.name}(${node.args.join()})`;
+    default:
+      return `${node.op}(${node.args.join()})`;
+  }
+}
+
+export function createGraphBuilder(onPush: () => void): GraphBuilder {
+  const nodes: GraphNode[] = [];
+  const known = new Map<string, number>();
+
+  function push(node: GraphNode): number {
+    // Two series or two unknowns are never merged: nothing says that they are equal.
+    const key = node.op === 'series' || node.op === 'opaque' ? `${node.op}${nodes.length}` : keyOf(node);
+    const found = known.get(key);
+    if (found !== undefined) return found;
+    onPush();
+    known.set(key, nodes.length);
+    return nodes.push(node) - 1;
+  }
+  function valueOf(index: number): Rational | null {
+    const node = nodes[index];
+    return node?.op === 'number' ? node.value : null;
+  }
+  function number(value: Rational): number {
+    return push({ op: 'number', args: [], value });
+  }
+  /** Numbers among the arguments become one, and what is left is sorted: a sum or product has no order. */
+  function fold(op: 'add' | 'mul', args: readonly number[]): number {
+    const join = op === 'add' ? Q.add : Q.mul;
+    const neutral = op === 'add' ? Q.zero : Q.one;
+    let total = neutral;
+    const rest: number[] = [];
+    for (const arg of args) {
+      const value = valueOf(arg);
+      if (value === null) rest.push(arg);
+      else total = join(total, value);
+    }
+    if (rest.length === 0) return number(total);
+    if (!Q.equals(total, neutral)) rest.push(number(total));
+    if (rest.length === 1) return rest[0] ?? 0;
+    return push({ op, args: rest.sort((a, b) => a - b) });
+  }
+  function negate(arg: number): number {
+    const value = valueOf(arg);
+    return value === null ? push({ op: 'negate', args: [arg] }) : number(Q.negate(value));
+  }
+  function div(top: number, bottom: number): number {
+    const divisor = valueOf(bottom);
+    const value = valueOf(top);
+    if (divisor !== null && value !== null && !Q.isZero(divisor)) return number(Q.div(value, divisor));
+    return push({ op: 'div', args: [top, bottom] });
+  }
+  function power(base: number, exponent: number): number {
+    if (exponent === 1) return base;
+    const value = valueOf(base);
+    if (value !== null && exponent !== 0 && !(exponent < 0 && Q.isZero(value))) {
+      const size = Q.bitLength(value.num) + Q.bitLength(value.den);
+      if (size * Math.abs(exponent) <= foldBits) return number(Q.pow(value, exponent));
+    }
+    return push({ op: 'power', args: [base], exponent });
+  }
+  return {
+    nodes,
+    push,
+    number,
+    valueOf,
+    add: (args) => fold('add', args),
+    mul: (args) => fold('mul', args),
+    negate,
+    div,
+    power,
+  };
+}
