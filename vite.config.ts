@@ -1,3 +1,4 @@
+import { fileURLToPath } from 'node:url';
 import tailwindcss from '@tailwindcss/vite';
 import react from '@vitejs/plugin-react';
 import { defineConfig } from 'vitest/config';
@@ -46,7 +47,14 @@ export default defineConfig(({ isSsrBuild }) => ({
       },
       {
         extends: true,
-        resolve: { alias: { mathlive: new URL('tests/support/mathlive-stub.ts', import.meta.url).pathname } },
+        resolve: {
+          alias: [
+            {
+              find: /^mathlive$/,
+              replacement: fileURLToPath(new URL('tests/support/mathlive-stub.ts', import.meta.url)),
+            },
+          ],
+        },
         test: {
           name: 'app',
           include: ['tests/app/**/*.test.{ts,tsx}'],
