@@ -17,6 +17,9 @@ const isTrial = import.meta.env.DEV || document.documentElement.dataset['demo'] 
 const INSIDE: readonly PageRoute[] = [
   { path: '/account', load: () => import('./pages/account.tsx') },
   { path: '/classes', load: () => import('./pages/classes.tsx') },
+  { path: '/classes/:classId', load: () => import('./pages/class.tsx') },
+  { path: '/admin', load: () => import('./pages/admin.tsx') },
+  { path: '/help', load: () => import('./pages/help.tsx') },
 ];
 
 /** Pages for everyone; each draws its own surroundings. */
@@ -26,10 +29,14 @@ const OUTSIDE: readonly PageRoute[] = [
   { path: '/join/:token', load: () => import('./pages/join.tsx') },
   { path: '/reset', load: () => import('./pages/reset.tsx') },
   { path: '/reset/:token', load: () => import('./pages/reset.tsx') },
+  { path: '/account/email/:token', load: () => import('./pages/confirm-email.tsx') },
 ];
 
 /** Pages shown only while developing and in the demo. */
-const TRIAL: readonly PageRoute[] = [{ path: '/parts', load: () => import('./pages/parts.tsx') }];
+const TRIAL: readonly PageRoute[] = [
+  { path: '/parts', load: () => import('./pages/parts.tsx') },
+  { path: '/mailbox', load: () => import('./pages/mailbox.tsx') },
+];
 
 function toRoute({ path, load }: PageRoute): RouteObject {
   return { path, lazy: load };

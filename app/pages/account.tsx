@@ -9,6 +9,7 @@ import {
 } from '../../shared/schemas/people.ts';
 import { OwnPlaces } from '../features/classes/own-places.tsx';
 import { FormError } from '../features/people/form-error.tsx';
+import { MailPreferences } from '../features/people/mail-preferences.tsx';
 import { people } from '../features/people/people.queries.ts';
 import { useFormSubmit } from '../features/people/use-form-submit.ts';
 import { useSignedIn } from '../features/people/use-signed-in.ts';
@@ -30,6 +31,7 @@ export function Component() {
         <OwnPlaces classes={viewer.data.classes} />
         <JoinForm />
         {viewer.data.user.email ? <EmailForm email={viewer.data.user.email} /> : null}
+        {viewer.data.user.email ? <MailPreferences /> : null}
         <PasswordForm />
         <SignOut />
       </div>
