@@ -14,9 +14,9 @@ export interface Part {
 export function joinParts(reader: Reader, parts: readonly Part[], start: number): Line {
   const [condition, rest] = splitCondition(parts);
   const kinds = new Set(rest.slice(1).map((part) => part.join));
-  if (kinds.has('or') && kinds.has('and')) reader.fail('mixed-joins', ['(']);
+  if (kinds.has('or') && kinds.has('and')) reader.fail('mixed-joins', ['('], { start, end: reader.lastEnd });
   const spread = spreadValues(rest.map((part) => part.line));
-  const kind = kinds.has('or') ? 'any' : kinds.has('and') ? 'all' : commaKind(reader, spread);
+  const kind = kinds.has('or') ? 'any' : kinds.has('and') || rest.length === 1 ? 'all' : commaKind(reader, spread);
   const lines = kind === 'set' ? [bareSet(reader, spread, start)] : spread;
   const span = reader.span(start);
   const joined: Line = lines.length === 1 ? lines[0]! : { kind: kind === 'any' ? 'any' : 'all', parts: lines, span };

@@ -90,3 +90,14 @@ function readPhrase(scanner: Scanner): boolean {
   scanner.push('text', phrase.trimEnd(), start);
   return true;
 }
+
+/** Would these letters, printed side by side, be read as a word? */
+export function hidesWord(letters: string): boolean {
+  for (let from = 0; from < letters.length; from += 1) {
+    for (let to = from + 2; to <= letters.length; to += 1) {
+      const part = letters.slice(from, to);
+      if (wordKind(part) || PHRASES.some((phrase) => phrase.trim() === part)) return true;
+    }
+  }
+  return false;
+}
