@@ -71,6 +71,10 @@ export class Draft {
 
   @Column({ type: 'timestamptz', default: () => 'now()' })
   savedAt!: Date;
+
+  /** When the number of lines last grew: who writes on but gets no further is stuck. */
+  @Column({ type: 'timestamptz', nullable: true })
+  lineAddedAt!: Date | null;
 }
 
 /** What was handed in. Never changed. */

@@ -1,6 +1,6 @@
 import type { EntityManager } from 'typeorm';
 import type { SaveAnswer, SaveSheet } from '../../../shared/schemas/derivation.ts';
-import { EMPTY_SHEET, type SheetDocument } from '../../../shared/schemas/sheet.ts';
+import { EMPTY_SHEET, linesOf, type SheetDocument } from '../../../shared/schemas/sheet.ts';
 import { ProblemError } from '../../http/problem-error.ts';
 import { Derivation, DerivationVersion, Draft } from './derivations.entity.ts';
 import { toSavedDraft } from './sheet.presenter.ts';
@@ -75,7 +75,9 @@ export async function saveDraft(
 ): Promise<SaveAnswer> {
   refuseStale(draft, baseVersion);
   const version = draft.version + 1;
-  await manager.update(Draft, { id: draft.id }, { document: document as object, version, savedAt: now });
+  const grew = linesOf(document, []).length > linesOf(draft.document, []).length;
+  const lineAddedAt = grew ? now : draft.lineAddedAt;
+  await manager.update(Draft, { id: draft.id }, { document: document as object, version, savedAt: now, lineAddedAt });
   return { version, savedAt: now.toISOString() };
 }
 
