@@ -5,6 +5,7 @@ import { createDataSource, migrate } from './db/data-source.ts';
 import { serveBuiltClient, serveClientSources } from './http/client-files.ts';
 import { systemClock } from './lib/clock.ts';
 import { ConfigError, readConfig, type Config } from './lib/config.ts';
+import { createLifetime, type Lifetime } from './lib/lifetime.ts';
 import { createLogger, type Logger } from './lib/logger.ts';
 import { startMailCatcher } from './lib/mail-catcher.ts';
 import { createMailer } from './lib/mailer.ts';
@@ -12,18 +13,12 @@ import { openQueue } from './lib/queue.ts';
 import { createRateLimiter } from './lib/rate-limit.ts';
 import { composeServices, type Composed, type Platform } from './services.ts';
 
-type Closer = () => unknown;
-
-async function main(): Promise<void> {
-  const config = readConfig();
-  const logger = createLogger(config.logLevel);
-  const closers: Closer[] = [];
-  stopOnSignal(closers, logger);
-  const platform = await openPlatform(config, logger, closers);
+async function main(config: Config, logger: Logger, life: Lifetime): Promise<void> {
+  const platform = await openPlatform(config, logger, life);
   const composed = composeServices(platform);
   await platform.queue.prepare(composed.jobs);
-  await listen(platform, composed, closers);
   await platform.queue.work();
+  await listen(platform, composed, life);
   logger.info({ url: config.baseUrl }, 'listening');
   if (config.demo) process.stdout.write(toGreeting(config));
 }
@@ -32,17 +27,17 @@ function toGreeting({ baseUrl }: Config): string {
   return `\nSlipstone is at ${baseUrl}   (Ctrl-C stops it)\nIts mail lands at ${baseUrl}/mailbox\n`;
 }
 
-async function openPlatform(config: Config, logger: Logger, closers: Closer[]): Promise<Platform> {
+async function openPlatform(config: Config, logger: Logger, life: Lifetime): Promise<Platform> {
   const db = createDataSource(config.databaseUrl);
   await db.initialize();
-  closers.push(() => db.destroy());
+  life.onStop(() => db.destroy());
   await migrate(db);
-  const queue = await openQueue(config.databaseUrl, logger);
-  closers.push(() => queue.stop());
   const catcher = config.smtpUrl === null ? await startMailCatcher(config.mailboxFile) : null;
-  if (catcher) closers.push(catcher.close);
+  if (catcher) life.onStop(catcher.close);
   const mailer = createMailer(config.smtpUrl ?? catcher?.url ?? '', config.mailFrom);
-  closers.push(() => mailer.close());
+  life.onStop(() => mailer.close());
+  const queue = await openQueue(config.databaseUrl, logger);
+  life.onStop(() => queue.stop());
   return {
     config,
     db,
@@ -56,7 +51,7 @@ async function openPlatform(config: Config, logger: Logger, closers: Closer[]): 
   };
 }
 
-async function listen(platform: Platform, composed: Composed, closers: Closer[]): Promise<void> {
+async function listen(platform: Platform, composed: Composed, life: Lifetime): Promise<void> {
   const { config, logger } = platform;
   const server = createServer();
   const app = await createApp({
@@ -65,7 +60,7 @@ async function listen(platform: Platform, composed: Composed, closers: Closer[])
     logger,
     rateLimiter: platform.rateLimiter,
     serveClient: async (express) => {
-      if (config.clientFromSources) closers.push(await serveClientSources(express, server));
+      if (config.clientFromSources) life.onStop(await serveClientSources(express, server));
       else serveBuiltClient(express, path.resolve('dist/app'));
     },
   });
@@ -73,8 +68,7 @@ async function listen(platform: Platform, composed: Composed, closers: Closer[])
   await new Promise<void>((resolve, reject) => {
     server.once('error', reject).listen(config.port, config.host, resolve);
   });
-  // Last opened, first closed: no new request meets a closed database.
-  closers.push(() => closeServer(server));
+  life.onStop(() => closeServer(server));
 }
 
 function closeServer(server: Server): Promise<void> {
@@ -85,32 +79,18 @@ function closeServer(server: Server): Promise<void> {
   });
 }
 
-function stopOnSignal(closers: Closer[], logger: Logger): void {
-  let stopping = false;
-  const stop = async (signal: string) => {
-    if (stopping) return;
-    stopping = true;
-    logger.info({ signal }, 'stopping');
-    for (const close of closers.reverse()) {
-      try {
-        await close();
-      } catch (error) {
-        logger.error({ err: error }, 'could not close');
-      }
-    }
-    process.exit(0);
-  };
-  process.on('SIGINT', () => void stop('SIGINT'));
-  process.on('SIGTERM', () => void stop('SIGTERM'));
-  // Started by `npm start`, which has been killed: nobody would be left to stop us.
-  process.on('disconnect', () => void stop('disconnect'));
+function complain(error: unknown): never {
+  const words = error instanceof ConfigError ? error.message : String(error instanceof Error ? error.stack : error);
+  process.stderr.write(`${words}\n`);
+  process.exit(1);
 }
 
 try {
-  await main();
+  const config = readConfig();
+  const logger = createLogger(config.logLevel);
+  const life = createLifetime(logger);
+  // Told to stop while starting: what was half open fails, and that is no news.
+  await main(config, logger, life).catch((error: unknown) => life.isStopping() || complain(error));
 } catch (error) {
-  process.stderr.write(
-    error instanceof ConfigError ? `${error.message}\n` : `${String(error instanceof Error ? error.stack : error)}\n`,
-  );
-  process.exit(1);
+  complain(error);
 }
