@@ -44,6 +44,8 @@ function checkNode() {
 
 /** One start at a time in one folder, and a port that is free, before anything else is touched. */
 async function claimPlace() {
+  if (!Number.isInteger(port) || port < 0 || port > 65_535)
+    throw new Error(`PORT must be a number up to 65535, not ${process.env.PORT}`);
   const other = fs.existsSync(PID_FILE) ? Number(fs.readFileSync(PID_FILE, 'utf8')) : 0;
   if (isAlive(other) && other !== process.pid && commandOf(other).includes('start.mjs')) {
     throw new Error(`Slipstone is already running from this folder (process ${other}).`);
