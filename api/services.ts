@@ -6,6 +6,10 @@ import { classRoutes } from './features/classes/classes.routes.ts';
 import { createClassesService } from './features/classes/classes.service.ts';
 import { createInvitation, createJoiningService } from './features/classes/joining.service.ts';
 import { createMembersService } from './features/classes/members.service.ts';
+import { answersRoutes } from './features/answers/answers.routes.ts';
+import { createAnswersService } from './features/answers/answers.service.ts';
+import { disputesRoutes } from './features/disputes/disputes.routes.ts';
+import { createDisputesService } from './features/disputes/disputes.service.ts';
 import { healthRoutes } from './features/health/health.routes.ts';
 import { mailJobs } from './features/mail/mail.jobs.ts';
 import type { QueueMail } from './features/mail/queue-mail.ts';
@@ -17,6 +21,14 @@ import { peopleRoutes } from './features/people/people.routes.ts';
 import { createPeopleService } from './features/people/people.service.ts';
 import { createSessions } from './features/people/sessions.ts';
 import { issueSignInCode } from './features/people/tokens.ts';
+import { reviewsRoutes } from './features/reviews/reviews.routes.ts';
+import { createReviewsService } from './features/reviews/reviews.service.ts';
+import { createScoringService } from './features/scoring/scoring.service.ts';
+import { createSettlingService } from './features/settling/settling.service.ts';
+import { standingsJobs } from './features/standings/standings.jobs.ts';
+import { standingsRoutes } from './features/standings/standings.routes.ts';
+import { createStandingsService } from './features/standings/standings.service.ts';
+import { isWithinOneTerm } from '../shared/lib/within-one-term.ts';
 import type { UniqueConflicts } from './http/problems.ts';
 import type { Route, Viewer } from './http/route.ts';
 import type { Now } from './lib/clock.ts';
@@ -58,15 +70,18 @@ export function composeServices(platform: Platform): Composed {
   const { config, db, now, queue, rateLimiter, mailer } = platform;
   const mail = createMailService({ db, now, queue, mailer, baseUrl: config.baseUrl, secret: config.secret });
   const people = composePeople(platform, mail.queueMail);
+  const reviewing = composeReviewing(platform, mail.queueMail);
   return {
     routes: [
       ...people.routes,
+      ...reviewing.routes,
       ...healthRoutes({ pingDatabase: () => db.query('select 1'), workersHealthy: platform.workersHealthy }),
       ...mailRoutes(mail),
       ...(platform.mailbox ? mailboxRoutes(platform.mailbox) : []),
     ],
     jobs: [
       ...people.jobs,
+      ...reviewing.jobs,
       ...mailJobs(mail),
       job({ name: 'sweep-rate-limits', data: z.object({}), cron: '17 3 * * *', handle: () => rateLimiter.sweep() }),
     ],
@@ -114,5 +129,32 @@ function composePeople({ db, now, rateLimiter }: Platform, queueMail: QueueMail)
     routes: [...peopleRoutes(people), ...classRoutes({ classes, members, joining }), ...adminRoutes(admin)],
     jobs: [job({ name: 'sweep-sessions', data: z.object({}), cron: '47 3 * * *', handle: () => sessions.sweep() })],
     findViewer: sessions.findViewer,
+  };
+}
+
+/** Findings, answers, disputes, settling and standings. `settling` is for the stage machine of rounds. */
+function composeReviewing({ db, now }: Platform, queueMail: QueueMail) {
+  const scoring = createScoringService({ now, isWithinOneTerm });
+  const { findCurrentVerdicts, findFindingsInForce } = scoring;
+  const reviews = createReviewsService({ db, now, findCurrentVerdicts });
+  const answers = createAnswersService({ db, now, findCurrentVerdicts, findFindingsInForce });
+  const disputes = createDisputesService({ db, now, scoring, findFindingsInForce, queueMail });
+  const standings = createStandingsService({ db, now });
+  const settling = createSettlingService({
+    now,
+    findCurrentVerdicts,
+    judge: scoring.judge,
+    addScores: scoring.add,
+  });
+  return {
+    settling,
+    standings,
+    routes: [
+      ...reviewsRoutes(reviews),
+      ...answersRoutes(answers),
+      ...disputesRoutes(disputes),
+      ...standingsRoutes(standings),
+    ],
+    jobs: standingsJobs(standings),
   };
 }

@@ -40,7 +40,7 @@ export interface ReadRound {
 }
 
 /** How a step stands in a settled verdict. */
-export type StepState = 'holds' | 'first-fault' | 'carried' | 'also-fails' | 'undecided';
+export type StepState = 'holds' | 'fault' | 'carried' | 'also-fails' | 'undecided';
 
 export interface ReadStep {
   readonly step: number;
@@ -64,7 +64,12 @@ export interface ReadVerdict {
 export interface ReadContest {
   /** Until when; null when it is over. */
   readonly openUntil: string | null;
-  readonly mine: { readonly words: string; readonly open: boolean; readonly question: string | null; readonly answer: string | null } | null;
+  readonly mine: {
+    readonly words: string;
+    readonly open: boolean;
+    readonly question: string | null;
+    readonly answer: string | null;
+  } | null;
 }
 
 export interface ReviewResult {
