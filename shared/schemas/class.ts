@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { isAlias } from '../lib/aliases.ts';
 import { emailSchema, userNameSchema } from './people.ts';
 
 function isTimeZone(zone: string): boolean {
@@ -55,7 +56,9 @@ export const conflictPairSchema = z.object({
   secondId: z.uuid(),
   note: z.string().max(300).default(''),
 });
-export const aliasSchema = z.object({ alias: z.string().min(1).max(40) });
+export const aliasSchema = z.object({
+  alias: z.string().refine(isAlias, 'Choose one of the aliases that are offered.'),
+});
 
 /** A line of a class list that could not be read. */
 export interface RosterProblem {

@@ -36,7 +36,7 @@ function joiningRoutes(joining: JoiningService): Route[] {
       path: '/class-code',
       who: 'anyone',
       body: joinByCodeSchema,
-      triesPerMinute: 10,
+      triesPerMinute: 60,
       handle: ({ body }) => joining.findClassOfCode(body.code),
     }),
     route({
@@ -44,7 +44,7 @@ function joiningRoutes(joining: JoiningService): Route[] {
       path: '/sign-up/by-mail',
       who: 'anyone',
       body: signUpByMailSchema,
-      triesPerMinute: 6,
+      triesPerMinute: 60,
       handle: async ({ body }) => {
         await joining.signUpByMail(body.code, body.email);
         return reply({ status: 202 });
@@ -55,7 +55,7 @@ function joiningRoutes(joining: JoiningService): Route[] {
       path: '/sign-up/by-name',
       who: 'anyone',
       body: signUpByNameSchema,
-      triesPerMinute: 10,
+      triesPerMinute: 60,
       handle: async ({ body, userAgent }) =>
         reply({ status: 201, sessionCookie: await joining.signUpByName(body.code, body, userAgent), body: {} }),
     }),
@@ -64,14 +64,14 @@ function joiningRoutes(joining: JoiningService): Route[] {
       path: '/join-requests',
       who: 'signed-in',
       body: joinByCodeSchema,
-      triesPerMinute: 10,
+      triesPerMinute: 60,
       handle: async ({ viewer, body }) => reply({ status: 201, body: await joining.joinByCode(viewer, body.code) }),
     }),
     route({
       method: 'get',
       path: '/invitations/:token',
       who: 'anyone',
-      triesPerMinute: 30,
+      triesPerMinute: 120,
       handle: ({ params }) => joining.findInvitation(params['token'] ?? ''),
     }),
     route({
@@ -79,7 +79,7 @@ function joiningRoutes(joining: JoiningService): Route[] {
       path: '/invitations/:token/account',
       who: 'anyone',
       body: acceptInvitationSchema,
-      triesPerMinute: 10,
+      triesPerMinute: 60,
       handle: async ({ params, body, userAgent }) =>
         reply({
           status: 201,
@@ -91,7 +91,7 @@ function joiningRoutes(joining: JoiningService): Route[] {
       method: 'post',
       path: '/invitations/:token/accept',
       who: 'signed-in',
-      triesPerMinute: 10,
+      triesPerMinute: 60,
       handle: ({ viewer, params }) => joining.acceptSignedIn(viewer, params['token'] ?? ''),
     }),
   ];

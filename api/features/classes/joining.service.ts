@@ -157,9 +157,7 @@ export function createJoiningService(deps: JoiningDeps) {
         const found = await takeInvitation(manager, token, now());
         const user = await manager.findOneByOrFail(User, { id: viewer.userId });
         if (found.schoolId !== user.schoolId || (found.email !== null && found.email !== user.email)) {
-          throw new ProblemError('gone', {
-            detail: 'This invitation is for another person. Sign out and open the link again.',
-          });
+          throw new ProblemError('not-found', { detail: 'This invitation is for another person. Sign out and open the link again.' });
         }
         await enter(manager, found, user, now(), queueMail);
       });

@@ -10,6 +10,7 @@ import {
 import { reply, route, type Route } from '../../http/route.ts';
 import type { PeopleService } from './people.service.ts';
 
+/** A whole class signs in at once from one address, so the tries an address has are wide; the service counts tries a person. */
 export function peopleRoutes(people: PeopleService): Route[] {
   return [...sessionRoutes(people), ...secretRoutes(people), ...accountRoutes(people)];
 }
@@ -22,7 +23,7 @@ function sessionRoutes(people: PeopleService): Route[] {
       path: '/session',
       who: 'anyone',
       body: signInSchema,
-      triesPerMinute: 20,
+      triesPerMinute: 120,
       handle: async ({ body, userAgent }) => signedIn(await people.signIn(body.name, body.password, userAgent)),
     }),
     route({
@@ -53,7 +54,7 @@ function secretRoutes(people: PeopleService): Route[] {
       path: '/resets',
       who: 'anyone',
       body: resetRequestSchema,
-      triesPerMinute: 6,
+      triesPerMinute: 40,
       handle: async ({ body }) => {
         await people.askForReset(body.email);
         return reply({ status: 202 });
@@ -64,7 +65,7 @@ function secretRoutes(people: PeopleService): Route[] {
       path: '/resets/:token',
       who: 'anyone',
       body: newPasswordFormSchema,
-      triesPerMinute: 10,
+      triesPerMinute: 60,
       handle: async ({ params, body, userAgent }) =>
         signedIn(await people.resetPassword(params['token'] ?? '', body.password, userAgent)),
     }),
@@ -73,7 +74,7 @@ function secretRoutes(people: PeopleService): Route[] {
       path: '/session/by-code',
       who: 'anyone',
       body: signInCodeSchema,
-      triesPerMinute: 10,
+      triesPerMinute: 60,
       handle: async ({ body, userAgent }) =>
         signedIn(await people.signInByCode(body.name, body.code, body.password, userAgent)),
     }),
@@ -81,7 +82,7 @@ function secretRoutes(people: PeopleService): Route[] {
       method: 'post',
       path: '/email-changes/:token',
       who: 'anyone',
-      triesPerMinute: 10,
+      triesPerMinute: 60,
       handle: ({ params }) => people.changeEmail(params['token'] ?? ''),
     }),
   ];
