@@ -16,7 +16,12 @@ export default defineConfig(({ isSsrBuild }) => ({
           output: { entryFileNames: '[name].js' },
         },
       }
-    : { outDir: 'dist/app', sourcemap: false },
+    : {
+        outDir: 'dist/app',
+        sourcemap: false,
+        // The maths field is one library of this size, loaded only where something is written.
+        chunkSizeWarningLimit: 1200,
+      },
   test: {
     maxWorkers: 2,
     projects: [

@@ -1,9 +1,14 @@
 import { describe, expect, it } from 'vitest';
+import { createDataSource } from '../../api/db/data-source.ts';
 import { composeServices, type Platform } from '../../api/services.ts';
 import { findMissingCases, readRouteLog, toRouteName } from '../support/route-log.ts';
 
-// Only the declarations are read, so nothing of the platform is ever called.
-const platform = { config: { baseUrl: '' }, mailbox: {} } as unknown as Platform;
+// Only the declarations are read, so nothing of the platform is ever opened or called.
+const platform = {
+  config: { baseUrl: 'http://slipstone.test' },
+  db: createDataSource('postgres://nobody@127.0.0.1:1/none'),
+  mailbox: { list: () => [] },
+} as unknown as Platform;
 const { routes } = composeServices(platform);
 const calls = readRouteLog();
 
