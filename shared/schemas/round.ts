@@ -188,3 +188,53 @@ export interface RoundChoices {
   }[];
   readonly tasks: readonly { readonly id: string; readonly title: string; readonly given: string }[];
 }
+
+/** A student on the board. Ids and names are the staff's; an assistant who sees no names gets neither. */
+export interface BoardPerson {
+  readonly userId: string | null;
+  readonly name: string;
+  readonly state: 'stuck' | 'not-begun' | 'writing' | 'handed-in' | 'excused';
+  /** Lines written or handed in, without the given. */
+  readonly lines: number;
+  readonly hasOpened: boolean;
+  readonly savedAt: string | null;
+  /** When the last line was begun. */
+  readonly lineAddedAt: string | null;
+  readonly handedInAt: string | null;
+  readonly late: boolean;
+  /** Handed in, but with fewer than two steps: it is not dealt. */
+  readonly tooShort: boolean;
+  readonly ownWritingEndsAt: string | null;
+  readonly ownReviewingEndsAt: string | null;
+  readonly reviews: { readonly dealt: number; readonly begun: number; readonly done: number };
+  readonly findings: { readonly received: number; readonly accepted: number; readonly contested: number };
+}
+
+/** Something that waits for the teacher; the client words it and offers the act. */
+export type BoardAlert =
+  | { readonly kind: 'line-stops'; readonly line: number; readonly texts: readonly string[] }
+  | {
+      readonly kind:
+        | 'not-begun'
+        | 'too-short'
+        | 'few-derivations'
+        | 'late-waiting'
+        | 'reviews-not-begun'
+        | 'disputes-open'
+        | 'waiting-for-rulings'
+        | 'names-guessable';
+      readonly count: number;
+    };
+
+export interface BoardAnswer {
+  readonly round: RoundAnswer;
+  /** The server's time, against which the board counts. */
+  readonly now: string;
+  /** When the running stage ends by itself, the grace included. */
+  readonly stageEndsAt: string | null;
+  readonly seesNames: boolean;
+  readonly decimal: 'point' | 'comma';
+  readonly people: readonly BoardPerson[];
+  readonly alerts: readonly BoardAlert[];
+  readonly disputesOpen: number;
+}
