@@ -36,8 +36,8 @@ export function CopyField({ label, value, hint }: CopyFieldProps) {
           value={value}
           onFocus={(event) => event.currentTarget.select()}
         />
-        <Button onClick={() => void copy()}>
-          Copy<span className="sr-only"> {label}</span>
+        <Button aria-label={`Copy: ${label}`} onClick={() => void copy()}>
+          Copy
         </Button>
       </div>
       <p className="msg" aria-live="polite" id={hint ? `${wiring.id}-hint` : undefined}>

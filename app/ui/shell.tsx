@@ -37,7 +37,8 @@ function Nav({ items }: { items: readonly NavItem[] }) {
       {items.map((item) => (
         <Link key={item.to} to={item.to} className="stroke" aria-current={isAt(item, pathname) ? 'page' : undefined}>
           {item.label}
-          {item.count ? <span className="count"> {item.count}</span> : null}
+          {item.count ? ' ' : null}
+          {item.count ? <span className="count">{item.count}</span> : null}
         </Link>
       ))}
     </nav>

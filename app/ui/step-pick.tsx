@@ -44,20 +44,23 @@ export function StepPick(props: StepPickProps) {
     }
   };
   return (
-    <label className="pick">
-      <input
-        type="radio"
-        className="sr-only"
-        name={name}
-        value={step}
-        checked={isPicked}
-        tabIndex={isStop ? 0 : -1}
-        onChange={() => onPick(step)}
-        onKeyDown={onKeyDown}
-      />
-      <span className="sr-only">
-        {label ?? `step ${step}, from ${step === 1 ? 'the given line' : `line ${step - 1}`} to line ${step}`}
-      </span>
-    </label>
+    <>
+      <label className="pick">
+        <input
+          type="radio"
+          className="sr-only"
+          name={name}
+          value={step}
+          checked={isPicked}
+          tabIndex={isStop ? 0 : -1}
+          onChange={() => onPick(step)}
+          onKeyDown={onKeyDown}
+        />
+        <span className="sr-only">
+          {label ?? `step ${step}, from ${step === 1 ? 'the given line' : `line ${step - 1}`} to line ${step}`}
+        </span>
+      </label>
+      <i className="pick-ring" aria-hidden="true" />
+    </>
   );
 }

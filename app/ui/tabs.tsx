@@ -51,7 +51,8 @@ export function Tabs({ label, tabs, value, onChange }: TabsProps) {
             onClick={() => choose(tab.id)}
           >
             {tab.label}
-            {tab.count === undefined ? null : <span className="count"> {tab.count}</span>}
+            {tab.count === undefined ? null : ' '}
+            {tab.count === undefined ? null : <span className="count">{tab.count}</span>}
           </button>
         ))}
       </div>

@@ -1,5 +1,5 @@
 /** What a stretch of TeX is marked as; each has its own rule under it. */
-export type MarkKind = 'wrong' | 'right' | 'marked';
+export type MarkKind = 'wrong' | 'right' | 'marked' | 'bad';
 
 /** A stretch of a TeX string, by character offsets, end not included. */
 export interface MarkedSpan {

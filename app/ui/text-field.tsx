@@ -29,9 +29,14 @@ export function PasswordField({ label, hint, error, className, ...rest }: TextFi
         <label className="flabel" htmlFor={wiring.id}>
           {label}
         </label>
-        <Button kind="quiet" small aria-pressed={shown} aria-controls={wiring.id} onClick={() => setShown(!shown)}>
+        <Button
+          kind="quiet"
+          small
+          aria-controls={wiring.id}
+          aria-label={shown ? 'Hide the password' : 'Show the password'}
+          onClick={() => setShown(!shown)}
+        >
           {shown ? 'Hide' : 'Show'}
-          <span className="sr-only"> the password</span>
         </Button>
       </div>
       <input
