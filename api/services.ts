@@ -23,11 +23,22 @@ import { createSessions } from './features/people/sessions.ts';
 import { issueSignInCode } from './features/people/tokens.ts';
 import { reviewsRoutes } from './features/reviews/reviews.routes.ts';
 import { createReviewsService } from './features/reviews/reviews.service.ts';
+import { createBoardService } from './features/rounds/board.service.ts';
+import { createPeopleInRoundService } from './features/rounds/people-in-round.service.ts';
+import { createRoundMail } from './features/rounds/round-mail.ts';
+import { createRoundStages } from './features/rounds/round-stages.ts';
+import { roundsJobs } from './features/rounds/rounds.jobs.ts';
+import { roundsRoutes } from './features/rounds/rounds.routes.ts';
+import { createRoundsService } from './features/rounds/rounds.service.ts';
+import { createTodayService } from './features/rounds/today.service.ts';
 import { createScoringService } from './features/scoring/scoring.service.ts';
-import { createSettlingService } from './features/settling/settling.service.ts';
+import { createSettlingService, type SettlingService } from './features/settling/settling.service.ts';
 import { standingsJobs } from './features/standings/standings.jobs.ts';
 import { standingsRoutes } from './features/standings/standings.routes.ts';
 import { createStandingsService } from './features/standings/standings.service.ts';
+import { tasksRoutes } from './features/tasks/tasks.routes.ts';
+import { createTasksService } from './features/tasks/tasks.service.ts';
+import { readLine } from '../shared/maths/read.ts';
 import { isWithinOneTerm } from '../shared/lib/within-one-term.ts';
 import type { UniqueConflicts } from './http/problems.ts';
 import type { Route, Viewer } from './http/route.ts';
@@ -71,10 +82,12 @@ export function composeServices(platform: Platform): Composed {
   const mail = createMailService({ db, now, queue, mailer, baseUrl: config.baseUrl, secret: config.secret });
   const people = composePeople(platform, mail.queueMail);
   const reviewing = composeReviewing(platform, mail.queueMail);
+  const rounds = composeRounds(platform, mail.queueMail, reviewing.settling);
   return {
     routes: [
       ...people.routes,
       ...reviewing.routes,
+      ...rounds.routes,
       ...healthRoutes({ pingDatabase: () => db.query('select 1'), workersHealthy: platform.workersHealthy }),
       ...mailRoutes(mail),
       ...(platform.mailbox ? mailboxRoutes(platform.mailbox) : []),
@@ -82,6 +95,7 @@ export function composeServices(platform: Platform): Composed {
     jobs: [
       ...people.jobs,
       ...reviewing.jobs,
+      ...rounds.jobs,
       ...mailJobs(mail),
       job({ name: 'sweep-rate-limits', data: z.object({}), cron: '17 3 * * *', handle: () => rateLimiter.sweep() }),
     ],
@@ -156,5 +170,25 @@ function composeReviewing({ db, now }: Platform, queueMail: QueueMail) {
       ...standingsRoutes(standings),
     ],
     jobs: standingsJobs(standings),
+  };
+}
+
+/** Tasks, rounds and their stages. */
+function composeRounds({ db, now, queue }: Platform, queueMail: QueueMail, settling: SettlingService) {
+  const { openAnswering, settle } = settling;
+  const stages = createRoundStages({ db, now, queue, mail: createRoundMail(queueMail), openAnswering, settle });
+  const tasks = createTasksService({ db, now, readLine });
+  return {
+    stages,
+    routes: [
+      ...tasksRoutes(tasks),
+      ...roundsRoutes({
+        rounds: createRoundsService({ db, now, stages }),
+        people: createPeopleInRoundService({ db, now, stages }),
+        board: createBoardService({ db, now }),
+        today: createTodayService({ db, now, readLine }),
+      }),
+    ],
+    jobs: roundsJobs(stages),
   };
 }
