@@ -9,6 +9,8 @@ type Decimal = ReadSettings['decimal'];
 export interface PrintStyle {
   readonly decimal: Decimal;
   readonly guardsD: boolean;
+  /** An i is the index or variable here, so it needs no mark that it is not the unit. */
+  readonly bindsI?: boolean;
 }
 
 /** An expression as TeX with no more brackets than it needs; read again it is the same expression. */
@@ -30,7 +32,7 @@ function print(expr: Expr, style: PrintStyle): string {
     case 'number':
       return numberText(expr, style.decimal);
     case 'letter':
-      return expr.name;
+      return expr.name === 'i' && !style.bindsI ? '\\mathit{i}' : expr.name;
     case 'constant':
       return CONSTANTS[expr.name];
     case 'sum':
@@ -324,7 +326,7 @@ function printCalculus(
   switch (expr.kind) {
     case 'series': {
       const head = `\\${expr.operation === 'sum' ? 'sum' : 'prod'}_{${expr.index}=${print(expr.from, style)}}^{${print(expr.to, style)}}`;
-      return head + term(expr.body, style);
+      return glue(head, term(expr.body, binding(style, expr.index)));
     }
     case 'derivative':
       return printDerivative(expr, style);
@@ -350,9 +352,13 @@ function printCalculus(
         side && expr.to.kind !== 'number' && expr.to.kind !== 'letter' && expr.to.kind !== 'constant'
           ? bracket(print(expr.to, style))
           : print(expr.to, style);
-      return glue(`\\lim_{${expr.variable}\\to ${to}${side}}`, term(expr.operand, style));
+      return glue(`\\lim_{${expr.variable}\\to ${to}${side}}`, term(expr.operand, binding(style, expr.variable)));
     }
   }
+}
+
+function binding(style: PrintStyle, name: string): PrintStyle {
+  return name === 'i' ? { ...style, bindsI: true } : style;
 }
 
 function printDerivative(expr: Extract<Expr, { kind: 'derivative' }>, style: PrintStyle): string {

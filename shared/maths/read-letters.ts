@@ -30,11 +30,12 @@ export function readLetter(reader: Reader): Expr {
   const span = reader.span(token.start);
   if (name === '\\pi') return { kind: 'constant', name: 'pi', span };
   if (name === 'e') return { kind: 'constant', name: 'e', span };
-  if (name === 'i' && !reader.bound.includes('i') && isUnit(reader)) return { kind: 'constant', name: 'i', span };
+  if (name === 'i' && token.end === token.start + 1 && !reader.bound.includes('i') && isUnit(reader))
+    return { kind: 'constant', name: 'i', span };
   return { kind: 'letter', name, span };
 }
 
-/** A free i is the unit in a task on complex numbers; in a real one the author is asked. */
+/** A free i, not written as `\mathit{i}`, is the unit in a task on complex numbers; in a real one the author is asked. */
 function isUnit(reader: Reader): boolean {
   if (reader.settings.numbers === 'complex') return true;
   reader.flags.add('imaginary-unit');

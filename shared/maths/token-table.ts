@@ -159,10 +159,7 @@ const GREEK =
   'upsilon phi varphi chi psi omega Gamma Delta Theta Lambda Xi Pi Sigma Upsilon Phi Psi Omega ell hbar partial';
 
 export const SKIPPED = new Set(
-  (
-    'displaystyle textstyle scriptstyle limits nolimits big Big bigg Bigg bigl Bigl biggl Biggl bigr Bigr biggr Biggr bigm ' +
-    'Bigm mathstrut strut nonumber'
-  ).split(' '),
+  'displaystyle textstyle scriptstyle limits nolimits mathstrut strut nonumber'.split(' '),
 );
 export const SPACES = new Set(', : ; > quad qquad thinspace enspace enskip medspace thickspace'.split(' '));
 export const LETTER_STYLES = new Set('mathrm operatorname mathit mathsf textup rm'.split(' '));

@@ -87,14 +87,15 @@ const SET_LETTERS = new Map([
 ]);
 const RAISED = new Map([...RAISED_DIGITS].map((char, digit) => [char, String(digit)]));
 
+/** `\left`, `\mright`, `\middle`, `\big`, `\Biggl` and their like. */
+const SIZED = /^(m?(left|right)|middle|(big|Big|bigg|Bigg)[lrm]?)$/;
+
 function readCommand(scanner: Scanner): void {
   const { source, at } = scanner;
   const name = commandName(source, at + 1);
   scanner.at += 1 + name.length;
   if (name === '') return scanner.fail('unknown-command', at, source.length);
-  if (name === 'left' || name === 'right' || name === 'mleft' || name === 'mright' || name === 'middle') {
-    return readSized(scanner, name);
-  }
+  if (SIZED.test(name)) return readSized(scanner, name);
   const kind = COMMANDS.get(name);
   if (kind !== undefined) return pushCommand(scanner, kind, name, at);
   if (SPACES.has(name) || name.trim() === '') {
@@ -102,7 +103,7 @@ function readCommand(scanner: Scanner): void {
     return;
   }
   if (name === '!' || SKIPPED.has(name)) return;
-  if (LETTER_STYLES.has(name)) return readStyled(scanner, at);
+  if (LETTER_STYLES.has(name)) return readStyled(scanner, name, at);
   if (name === 'mathbb') return pushSet(scanner, at);
   if (name === 'differentialD') return scanner.push('letter', 'd', at);
   if (name === 'not') return readNegated(scanner, at);
@@ -176,7 +177,7 @@ function readNegated(scanner: Scanner, start: number): void {
 function readSized(scanner: Scanner, name: string): void {
   const start = scanner.at - 1 - name.length;
   scanner.skipBlanks();
-  const side = name.endsWith('left') ? 'left' : name.endsWith('right') ? 'right' : '';
+  const side = /left|l$/.test(name) ? 'left' : /right|r$/.test(name) ? 'right' : '';
   if (scanner.source[scanner.at] === '.') {
     scanner.at += 1;
     return scanner.push(side === 'left' ? 'open.' : 'close.', '', start);
@@ -207,10 +208,10 @@ const DELIMITERS = new Set<TokenKind>([
 ]);
 
 /** `\mathrm{..}` and `\operatorname{..}`: a function, an upright d, e or i, or one letter. */
-function readStyled(scanner: Scanner, start: number): void {
+function readStyled(scanner: Scanner, style: string, start: number): void {
   if (scanner.source[scanner.at] === '*') scanner.at += 1;
   const word = scanner.rawArgument().replace(/\s|\\[,;:! ]/g, '');
-  if (word === 'e' || word === 'i') return scanner.push(word, word, start);
+  if ((word === 'e' || word === 'i') && style !== 'mathit') return scanner.push(word, word, start);
   if (/^[a-zA-Z]$/.test(word)) return scanner.push('letter', word, start);
   const kind = COMMANDS.get(word);
   if (kind && /^[a-zA-Z]+$/.test(word) && STYLED_KINDS.has(kind)) return pushCommand(scanner, kind, word, start);
