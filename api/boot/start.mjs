@@ -9,7 +9,8 @@ import { buildWhatChanged, installWhatIsMissing } from './prepare.mjs';
 import { isAlive, isFree, startCluster } from './postgres.mjs';
 
 const ROOT = fileURLToPath(new URL('../..', import.meta.url));
-const DATA = path.join(ROOT, '.data');
+// Everything that is kept: the database, its port and password, the caught letters.
+const DATA = path.resolve(ROOT, process.env.SLIPSTONE_DATA || '.data');
 const PID_FILE = path.join(DATA, 'start.pid');
 const dev = process.argv.includes('--dev');
 const production = process.env.NODE_ENV === 'production';
