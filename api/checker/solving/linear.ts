@@ -1,8 +1,8 @@
 import type { CheckContext } from '../context.ts';
 import { rational } from '../numbers/rational.ts';
-import { divKnown, isKnown, negateKnown, subKnown, toBall } from '../values/arithmetic.ts';
-import { evaluatePrepared } from '../values/evaluate.ts';
-import type { Graph } from '../values/graph.ts';
+import { addKnown, divKnown, isExactZero, isKnown, mulKnown, negateKnown, oneValue, subKnown, toBall, zeroValue } from '../values/arithmetic.ts';
+import { evaluateNodes } from '../values/evaluate.ts';
+import type { Graph, GraphNode } from '../values/graph.ts';
 import type { KnownValue } from '../values/value.ts';
 import type { Assignment } from './fraction.ts';
 import { rationalNumber, type RealNumber } from './real-number.ts';
@@ -41,24 +41,50 @@ function degreeOf(node: Graph['nodes'][number], of: readonly number[], letter: s
   }
 }
 
-/** The values of a graph at whole numbers, at a precision. */
-function valueAt(graph: Graph, letter: string, x: number, given: Assignment, bits: number, context: CheckContext): KnownValue | null {
-  const point = new Map<string, KnownValue>([[letter, { kind: 'rational', value: rational(x) }]]);
-  for (const [name, value] of given) point.set(name, { kind: 'rational', value });
-  const value = evaluatePrepared(graph, point, bits, context);
-  return isKnown(value) ? value : null;
-}
-
 export interface LinearForm {
   readonly slope: KnownValue;
   readonly offset: KnownValue;
 }
 
-/** slope * letter + offset for a graph of degree one. */
+/** slope * letter + offset for a graph of degree one, exact where its constants are; null where one has no value. */
 export function linearForm(graph: Graph, letter: string, given: Assignment, bits: number, context: CheckContext): LinearForm | null {
-  const offset = valueAt(graph, letter, 0, given, bits, context);
-  const sum = valueAt(graph, letter, 1, given, bits, context);
-  return offset && sum && { slope: subKnown(sum, offset, bits), offset };
+  const point = new Map<string, KnownValue>([[letter, zeroValue]]);
+  for (const [name, value] of given) point.set(name, { kind: 'rational', value });
+  const nodes = graph.nodes.slice(0, graph.root + 1);
+  const values = evaluateNodes(nodes, point, bits, context);
+  const forms: (LinearForm | null)[] = [];
+  nodes.forEach((node, k) => {
+    const offset = values[k];
+    if (!offset || !isKnown(offset)) forms.push(null);
+    else forms.push({ slope: slopeOf(node, forms, letter, bits), offset });
+  });
+  return forms[graph.root] ?? null;
+}
+
+function slopeOf(node: GraphNode, forms: readonly (LinearForm | null)[], letter: string, bits: number): KnownValue {
+  const of = (arg: number): KnownValue => forms[arg]?.slope ?? zeroValue;
+  switch (node.op) {
+    case 'letter':
+      return node.name === letter ? oneValue : zeroValue;
+    case 'add':
+      return node.args.reduce((sum, arg) => addKnown(sum, of(arg), bits), zeroValue);
+    case 'negate':
+      return negateKnown(of(node.args[0]));
+    case 'mul': {
+      const moving = node.args.find((arg) => !isExactZero(of(arg)));
+      if (moving === undefined) return zeroValue;
+      return node.args.reduce<KnownValue>((product, arg) => {
+        return mulKnown(product, arg === moving ? of(arg) : (forms[arg]?.offset ?? zeroValue), bits);
+      }, oneValue);
+    }
+    case 'div': {
+      const divisor = forms[node.args[1]]?.offset;
+      const quotient = divisor ? divKnown(of(node.args[0]), divisor, bits) : null;
+      return quotient && isKnown(quotient) ? quotient : zeroValue;
+    }
+    default:
+      return zeroValue;
+  }
 }
 
 /** A number that is computed again at each precision asked for. */

@@ -113,9 +113,7 @@ function zerosAt(
 ): RealNumber[] {
   const { at, size } = smallestSize(f, crossing.low, crossing.high);
   const scale = Math.abs(f(crossing.low)) + Math.abs(f(crossing.high));
-  if (crossing.kind === 'touching' && size > 1e-7 * scale) {
-    return [];
-  }
+  if (crossing.kind === 'touching' && (!Number.isFinite(scale) || size > 1e-7 * scale)) return [];
   for (const guess of guessNumbers(at)) {
     if (approximate(guess) >= crossing.low && approximate(guess) <= crossing.high && isZeroAt(graph, guess, env)) return [guess];
   }

@@ -1,4 +1,5 @@
 import type { Expr, NumberExpr, SetExpr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { roundingHalf } from './rounding.ts';
 import type { Rational } from '../numbers/rational.ts';
 import type { Sign, SignMap } from '../solving/fraction-signs.ts';
@@ -24,7 +25,7 @@ import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import type { Graph } from '../values/graph.ts';
 import { lowerAll } from '../values/lower.ts';
 import { familyPoints } from './family.ts';
-import type { CompareStatement, MemberStatement, Statement } from './statement.ts';
+import { isListOfValues, type CompareStatement, type MemberStatement, type Statement } from './statement.ts';
 
 /** How a statement about one letter is solved, and what its other letters stand for. */
 export interface SolveEnv extends LineEnv {
@@ -58,6 +59,10 @@ export function differenceGraph(left: Expr, right: Expr, env: LineEnv): Graph {
 }
 
 function solveCompare(statement: CompareStatement, env: SolveEnv): RealSet {
+  if (statement.sign === '=' && isListOfValues(statement, env.letter)) {
+    const free = lettersOf(statement.right).filter((name) => !env.given.has(name));
+    if (free.length === 0) return solveValue(statement.right, env);
+  }
   const graph = differenceGraph(statement.left, statement.right, env);
   const family = graph.nodes.find((node) => node.op === 'letter' && env.families.has(node.name));
   if (family?.op === 'letter') {
@@ -68,11 +73,19 @@ function solveCompare(statement: CompareStatement, env: SolveEnv): RealSet {
   return withSign(signsOf(graph, env), statement.sign);
 }
 
+/** letter = value: the point keeps the form that the author gave it. */
+function solveValue(expr: Expr, env: SolveEnv): RealSet {
+  const number = findConstant(expr, env);
+  if (number === 'undefined') return emptySet;
+  return setOfPoints([number]);
+}
+
 function withSign(signs: SignMap, sign: CompareStatement['sign']): RealSet {
   return mapPieces(signs, (s) => isTrueFor(s, sign));
 }
 
-function isTrueFor(found: Sign, sign: CompareStatement['sign']): boolean {
+/** Whether a comparison holds for a difference of this sign; without a value none does. */
+export function isTrueFor(found: Sign, sign: CompareStatement['sign']): boolean {
   if (found === null) return false;
   switch (sign) {
     case '=':
@@ -182,10 +195,17 @@ function afterPoint(point: RealNumber, closed: boolean): RealSet {
 
 /** The number that an expression without free letters is worth; throws Unsettled where it has none. */
 export function constantNumber(expr: Expr, env: SolveEnv): RealNumber {
+  const number = findConstant(expr, env);
+  if (number === 'undefined') throw new Unsettled('not-covered');
+  return number;
+}
+
+function findConstant(expr: Expr, env: SolveEnv): RealNumber | 'undefined' {
   const graph = prepare(expr, env.context);
   const surd = toSurd(graph, env.given);
   if (surd) return surdToNumber(surd);
   const point = new Map([...env.given].map(([name, value]) => [name, { kind: 'rational' as const, value }]));
+  if (evaluatePrepared(graph, point, 160, env.context).kind === 'undefined') return 'undefined';
   const number = computedNumber((bits) => {
     const value = evaluatePrepared(graph, point, bits, env.context);
     return isKnown(value) ? value : null;

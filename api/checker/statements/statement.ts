@@ -1,5 +1,6 @@
 import type { Expr, Line, RelationSign, SetExpr, TermSign } from '../../../shared/maths/expression.ts';
-import { childrenOf, mapChildren } from '../../../shared/maths/walk.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { childrenOf, exprsOfSet, mapChildren } from '../../../shared/maths/walk.ts';
 
 /** What a line claims about its letters. */
 export type Statement =
@@ -102,4 +103,44 @@ function chooseSigns(expr: Expr, isUpper: () => boolean): Expr {
     ...expr,
     terms: expr.terms.map((term, k) => ({ ...term, sign: own[k] as TermSign, expr: chooseSigns(term.expr, isUpper) })),
   };
+}
+
+/** The expressions that a statement is written with, sets aside. */
+export function exprsOfStatement(statement: Statement): Expr[] {
+  switch (statement.kind) {
+    case 'compare':
+      return [statement.left, statement.right];
+    case 'all':
+    case 'any':
+      return statement.parts.flatMap(exprsOfStatement);
+    case 'member':
+      return [...(statement.letter ? [statement.letter] : []), ...exprsOfSet(statement.set)];
+    default:
+      return [];
+  }
+}
+
+/** The comparisons of a statement. */
+export function comparesOf(statement: Statement): CompareStatement[] {
+  if (statement.kind === 'compare') return [statement];
+  return statement.kind === 'all' || statement.kind === 'any' ? statement.parts.flatMap(comparesOf) : [];
+}
+
+/** Whether the statement says outright which values the letter has: x=3 or x=-1, x in {3,-1}, no solution. */
+export function isListOfValues(statement: Statement, letter: string): boolean {
+  switch (statement.kind) {
+    case 'compare':
+      return statement.sign === '=' && isLetter(statement.left, letter) && !lettersOf(statement.right).includes(letter);
+    case 'any':
+    case 'all':
+      return statement.parts.every((part) => isListOfValues(part, letter));
+    case 'member':
+      return statement.set.kind === 'finite' && !statement.negated;
+    default:
+      return statement.kind === 'never';
+  }
+}
+
+export function isLetter(expr: Expr, name: string): boolean {
+  return expr.kind === 'letter' && expr.name === name;
 }

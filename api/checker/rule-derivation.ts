@@ -1,0 +1,65 @@
+import type { DerivationInput, StepRuling, Verdict } from '../../shared/schemas/verdict.ts';
+import { addEvidence } from './add-evidence.ts';
+import { readDerivation, type ReadDerivation } from './read-derivation.ts';
+import { applyGoal } from './goals/apply-goal.ts';
+import { joinCases } from './rules/cases.ts';
+import { putBrackets } from './rules/lost-brackets.ts';
+import { noteMiscopied } from './rules/miscopied.ts';
+import { rejectCandidates } from './rules/candidates.ts';
+import { undecided, type StepResult } from './rules/step-result.ts';
+import { judgeLine, planRoute, skipLine, startWalk, type Route, type WalkState } from './walk-derivation.ts';
+
+/** Rules on every step of a derivation. Never throws for what a student wrote. */
+export function checkDerivation(input: DerivationInput): Verdict {
+  const read = readDerivation(input);
+  const route = planRoute(input, read);
+  const { rulings, last } = ruleSteps(route);
+  const noted = noteMiscopied(read, rejectCandidates(rulings, last, route), route);
+  const steps = noted.map((result, k): StepRuling => ({ step: k + 1, ...result }));
+  const verdict = toVerdict(steps);
+  return addEvidence(applyGoal(verdict, last, route), read.lines, route);
+}
+
+/** The outcome and the first fault, by their definitions. */
+export function toVerdict(steps: readonly StepRuling[]): Verdict {
+  const first = steps.find((step) => step.ruling !== 'holds');
+  if (!first) return { outcome: 'sound', firstFault: null, steps: [...steps] };
+  const isFaulty = first.ruling === 'fails';
+  return { outcome: isFaulty ? 'faulty' : 'undecided', firstFault: isFaulty ? first.step : null, steps: [...steps] };
+}
+
+function ruleSteps(route: Route): { rulings: StepResult[]; last: WalkState } {
+  const { lines } = route.read;
+  const rulings: StepResult[] = [];
+  let state = startWalk(route);
+  for (let step = 1; step < lines.length; step += 1) {
+    const result = lines[step];
+    if (!result?.ok) {
+      rulings.push(notReadResult(route.read, step));
+      state = skipLine(state);
+      continue;
+    }
+    const found = judgeLine(route, state, step, result.line);
+    if (found.result.evidence.reason === 'not-read') {
+      rulings.push(notReadResult(route.read, step));
+      state = found.state;
+      continue;
+    }
+    const better = found.result.ruling === 'fails' ? (joinCases(route, state, step, found) ?? putBrackets(route, state, step, found)) : null;
+    rulings.push(...(better ? better.results : [found.result]));
+    state = better ? better.state : found.state;
+    if (better) step += better.results.length - 1;
+  }
+  return { rulings, last: state };
+}
+
+/** The step to a line that was not read, or from one, carries the error with its place. */
+function notReadResult(read: ReadDerivation, step: number): StepResult {
+  const own = read.lines[step];
+  const before = [...read.lines.keys()].reverse().find((line) => line < step && !read.lines[line]?.ok);
+  const line = own?.ok === false ? step : (before ?? step);
+  const failed = read.lines[line];
+  if (!failed || failed.ok) return undecided('not-read');
+  const { code, span, found, expected } = failed.error;
+  return undecided('not-read', [], { error: { line, code, place: span, found, expected: [...expected] } });
+}

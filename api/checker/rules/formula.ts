@@ -1,0 +1,113 @@
+import type { CheckContext } from '../context.ts';
+import { rational, type Rational } from '../numbers/rational.ts';
+import type { Assignment } from '../solving/fraction.ts';
+import { isEmptySet } from '../solving/real-set.ts';
+import { solveDefined, type SolveEnv } from '../statements/solve.ts';
+import { comparesOf, isLetter, type Statement } from '../statements/statement.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { freeLetters } from './meaning.ts';
+import { judgeOneLetter, type OneLetterAnswer, type OneLetterQuestion } from './one-letter.ts';
+import { meetsAssumptions } from './parameters.ts';
+import { sameUpToFactor } from './same-equation.ts';
+import { holds, undecided, type StepResult } from './step-result.ts';
+
+export type FormulaQuestion = Omit<OneLetterQuestion, 'given'>;
+
+/** The letter that a line says outright: letter = expression without it. */
+export function isolatedLetter(statement: Statement): string | null {
+  const compares = comparesOf(statement);
+  const first = compares[0];
+  if (!first || first.left.kind !== 'letter' || compares.length !== countCompares(statement)) return null;
+  const name = first.left.name;
+  const isolates = compares.every((c) => isLetter(c.left, name) && !lettersOf(c.right).includes(name));
+  return isolates ? name : null;
+}
+
+function countCompares(statement: Statement): number {
+  if (statement.kind === 'all' || statement.kind === 'any') return statement.parts.reduce((n, part) => n + countCompares(part), 0);
+  return 1;
+}
+
+/** The same equation up to a constant factor, in any number of letters; null where it is not. */
+export function judgeSameEquation(above: Statement, below: Statement, context: CheckContext): StepResult | null {
+  if (above.kind !== 'compare' || below.kind !== 'compare') return null;
+  if (above.sign !== '=' || below.sign !== '=') return null;
+  const same = sameUpToFactor(above, below, new Map(), context);
+  return same?.sameDomain ? holds(same.reached) : null;
+}
+
+/** Rule 2 on formulas: compared in the unknown, the other letters at fractions where both lines have a value. */
+export function judgeFormula(question: FormulaQuestion): StepResult {
+  const { above, below, letter, context } = question;
+  const same = judgeSameEquation(above, below, context);
+  if (same) return same;
+  const names = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter(
+    (name) => name !== letter && !question.families.has(name),
+  );
+  const seen: OneLetterAnswer[] = [];
+  const excluded: string[] = [];
+  let open = 0;
+  for (const given of listAssignments(names, context)) {
+    const found = judgeAt(question, given);
+    if (found === 'no-value-below') excluded.push(...zeroNames(given));
+    if (typeof found === 'string') continue;
+    if (found.ruling === 'fails') return found;
+    if (found.ruling === 'undecided') open += 1;
+    else seen.push(found);
+  }
+  const informative = seen.filter((answer) => answer.solutions && !isEmptySet(answer.solutions));
+  if (informative.length < 2) return undecided(open > 0 ? 'not-settled' : 'no-domain');
+  return summarise(seen, excluded);
+}
+
+function summarise(seen: readonly OneLetterAnswer[], excluded: readonly string[]): StepResult {
+  const notes = new Set(seen.flatMap((answer) => answer.notes.filter((note) => note !== 'empty')));
+  if (excluded.length > 0) notes.add('domain');
+  const operation = seen.find((answer) => answer.evidence.operation)?.evidence.operation;
+  return holds('sampled', [...notes], {
+    ...(excluded.length > 0 ? { excluded: [...new Set(excluded)].map((name) => `${name}\\ne 0`) } : {}),
+    ...(operation ? { operation } : {}),
+  });
+}
+
+function zeroNames(given: Assignment): string[] {
+  return [...given].flatMap(([name, value]) => (value.num === 0n ? [name] : []));
+}
+
+function judgeAt(question: FormulaQuestion, given: Assignment): OneLetterAnswer | 'no-value-below' | 'no-value' {
+  const env: SolveEnv = {
+    letter: question.letter,
+    given,
+    context: question.context,
+    window: null,
+    hints: [],
+    families: question.families,
+  };
+  const hasValue = (statement: Statement): boolean => !isEmptySet(solveDefined(statement, env));
+  if (!hasValue(question.above)) return 'no-value';
+  if (!hasValue(question.below)) return 'no-value-below';
+  return judgeOneLetter({ ...question, given });
+}
+
+const values: readonly Rational[] = [rational(2), rational(3), rational(5), rational(7, 2), rational(11), rational(4, 3), rational(13), rational(6)];
+
+/** General values first, both signs, then each letter at 0, 1 and equal to another: where formulas lose solutions. */
+function listAssignments(names: readonly string[], context: CheckContext): Assignment[] {
+  const general = (shift: number, signs: number): Assignment =>
+    new Map(
+      names.map((name, k) => {
+        const value = values[(k * 3 + shift) % values.length] as Rational;
+        const whole = context.wholeLetters.has(name) ? rational(BigInt(k + shift + 2)) : value;
+        return [name, (signs >> k) % 2 === 1 ? { num: -whole.num, den: whole.den } : whole];
+      }),
+    );
+  const all = [general(0, 0), general(1, 0), general(2, 1), general(3, 2), general(4, 5), general(5, 10), general(6, 15)];
+  const base = general(0, 0);
+  for (const name of names) {
+    for (const special of [rational(0), rational(1), rational(-1)]) all.push(new Map(base).set(name, special));
+    for (const other of names) {
+      if (other !== name) all.push(new Map(base).set(name, base.get(other) as Rational));
+    }
+  }
+  return all.filter((given) => meetsAssumptions(given, context)).slice(0, 40);
+}

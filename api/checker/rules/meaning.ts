@@ -1,0 +1,32 @@
+import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import type { CheckContext } from '../context.ts';
+import { exprsOfStatement, toStatement, type Statement } from '../statements/statement.ts';
+import { lowerAll } from '../values/lower.ts';
+
+/** What a line leaves for the step that starts from it. */
+export type Meaning =
+  | { readonly kind: 'expression'; readonly expr: Expr }
+  | {
+      readonly kind: 'statement';
+      readonly statement: Statement;
+      /** What a line that begins with a relation sign goes on from. */
+      readonly last: Expr | null;
+    };
+
+/** The meaning of a line by itself; null for a definition and for a line that continues another. */
+export function meaningOf(line: Line): Meaning | null {
+  if (line.kind === 'expression') return { kind: 'expression', expr: line.expr };
+  const statement = toStatement(line);
+  return statement && { kind: 'statement', statement, last: lastMember(line) };
+}
+
+function lastMember(line: Line): Expr | null {
+  if (line.kind === 'relation') return line.right;
+  return line.kind === 'chain' ? (line.members[line.members.length - 1] ?? null) : null;
+}
+
+/** The letters that a statement depends on once definitions are put in, in order of appearance. */
+export function freeLetters(statement: Statement, context: CheckContext): string[] {
+  const { builder } = lowerAll(exprsOfStatement(statement), context);
+  return [...new Set(builder.nodes.flatMap((node) => (node.op === 'letter' ? [node.name] : [])))];
+}

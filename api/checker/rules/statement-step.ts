@@ -1,0 +1,79 @@
+import type { CheckSettings } from '../../../shared/schemas/verdict.ts';
+import type { CheckContext } from '../context.ts';
+import type { RealNumber } from '../solving/real-number.ts';
+import { comparesOf, isListOfValues, type Statement } from '../statements/statement.ts';
+import { judgeApproximation } from './approximation.ts';
+import { judgeComplexStep } from './complex-step.ts';
+import { isolatedLetter, judgeFormula, judgeSameEquation } from './formula.ts';
+import { freeLetters } from './meaning.ts';
+import { judgeOneLetter } from './one-letter.ts';
+import { undecided, type StepResult } from './step-result.ts';
+import { isSystem, judgeSystemStep } from './system-step.ts';
+
+export interface StatementQuestion {
+  readonly above: Statement;
+  readonly below: Statement;
+  readonly reference: Statement;
+  /** Everything that earlier lines established, for systems. */
+  readonly known: readonly Statement[];
+  /** Letters of the given. */
+  readonly givenLetters: readonly string[];
+  /** The letter that the derivation is about, where settings or a later line name it. */
+  readonly unknown: string | null;
+  readonly isLast: boolean;
+  readonly settings: CheckSettings;
+  readonly context: CheckContext;
+}
+
+export interface StatementAnswer extends StepResult {
+  readonly candidates: readonly RealNumber[];
+}
+
+/** Rules 2 to 4, 6 and 9 on two statements; throws Unsettled. */
+export function judgeStatements(question: StatementQuestion): StatementAnswer {
+  const { above, below, context } = question;
+  const families = findFamilies(question);
+  const letters = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter((n) => !families.has(n));
+  if (context.numbers === 'complex') return withoutCandidates(judgeComplexStep(question, letters));
+  if (isSystem(question, letters)) return withoutCandidates(judgeSystemStep(question));
+  const letter = letters.length === 1 ? (letters[0] as string) : chooseUnknown(question, letters);
+  if (letter === null) return withoutCandidates(judgeSameEquation(above, below, context) ?? undecided('no-unknown'));
+  const shared = { above, below, letter, reference: question.reference, families, settings: question.settings, context };
+  if (letters.length > 1) return withoutCandidates(judgeFormula(shared));
+  if (isApproximate(above) || isApproximate(below)) {
+    return withoutCandidates(judgeApproximation({ ...shared, given: new Map() }));
+  }
+  return judgeOneLetter({ ...shared, given: new Map() });
+}
+
+function withoutCandidates(result: StepResult): StatementAnswer {
+  return { ...result, candidates: [] };
+}
+
+function isApproximate(statement: Statement): boolean {
+  return comparesOf(statement).some((compare) => compare.sign === 'approx');
+}
+
+/** Letters that the given does not have, stand for whole numbers by custom, and occur in what a letter is said to be. */
+function findFamilies({ above, below, givenLetters, context }: StatementQuestion): ReadonlySet<string> {
+  const found = new Set<string>();
+  for (const statement of [above, below]) {
+    for (const name of freeLetters(statement, context)) {
+      if (givenLetters.includes(name)) continue;
+      const isWhole = context.wholeLetters.has(name) || ['k', 'n', 'm'].includes(name);
+      if (isWhole && hasOtherLetter(statement, name, context)) found.add(name);
+    }
+  }
+  return found;
+}
+
+function hasOtherLetter(statement: Statement, name: string, context: CheckContext): boolean {
+  return freeLetters(statement, context).some((other) => other !== name);
+}
+
+function chooseUnknown(question: StatementQuestion, letters: readonly string[]): string | null {
+  const { unknown, below, above } = question;
+  if (unknown !== null && letters.includes(unknown)) return unknown;
+  if (letters.length === 0) return 'x';
+  return isolatedLetter(below) ?? isolatedLetter(above) ?? letters.find((name) => isListOfValues(below, name)) ?? null;
+}

@@ -1,0 +1,176 @@
+import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import type { CheckSettings, Note } from '../../../shared/schemas/verdict.ts';
+import type { CheckContext, Definitions } from '../context.ts';
+import type { RealNumber } from '../solving/real-number.ts';
+import { isEmptySet, isWholeLine } from '../solving/real-set.ts';
+import { continueFrom, toStatement, type Statement } from '../statements/statement.ts';
+import { solveStatement } from '../statements/solve.ts';
+import { judgeExpressions, judgeLinks } from './expression-step.ts';
+import { freeLetters, meaningOf, type Meaning } from './meaning.ts';
+import { judgeRunningEquals } from './running-equals.ts';
+import { judgeStatements } from './statement-step.ts';
+import { fails, holds, undecided, type StepResult } from './step-result.ts';
+
+/** One step: the line, what it starts from, and what the derivation knows so far. */
+export interface StepQuestion {
+  readonly line: Line;
+  /** null where the lines before this one were definitions only. */
+  readonly from: Meaning | null;
+  readonly reference: Statement | null;
+  readonly known: readonly Statement[];
+  readonly givenLetters: readonly string[];
+  readonly unknown: string | null;
+  readonly isLast: boolean;
+  readonly settings: CheckSettings;
+  readonly context: CheckContext;
+}
+
+export interface StepAnswer {
+  readonly result: StepResult;
+  /** What the next step starts from; null: from where this one started (a remark or a definition). */
+  readonly meaning: Meaning | null;
+  readonly candidates: readonly RealNumber[];
+  /** Conditions that later steps stand under. */
+  readonly shrunk: readonly Line[];
+  readonly defines: Definitions | null;
+}
+
+function answer(result: StepResult, meaning: Meaning | null, rest: Partial<StepAnswer> = {}): StepAnswer {
+  return { result, meaning, candidates: [], shrunk: [], defines: null, ...rest };
+}
+
+/** Rules on one step; throws Unsettled and BudgetSpent. */
+export function judgeStep(question: StepQuestion): StepAnswer {
+  const { line, from, context } = question;
+  if (line.kind === 'definition') return define(line, context);
+  if (line.kind === 'continuation') return judgeContinuation(line, question);
+  const meaning = meaningOf(line);
+  if (!meaning) return answer(undecided('not-covered'), null);
+  if (meaning.kind === 'expression') {
+    if (from?.kind !== 'expression') return answer(undecided('change-of-kind'), meaning);
+    const found = judgeExpressions(from.expr, meaning.expr, context);
+    return answer(found, meaning, { shrunk: found.shrunk });
+  }
+  const fresh = freshDefinition(line, question);
+  if (fresh) return define(fresh, context);
+  if (freeLetters(meaning.statement, context).length === 0) {
+    const remark = judgeRemark(meaning.statement, question);
+    if (remark) return remark;
+  }
+  if (from?.kind === 'statement') return judgeFromStatement(meaning, from.statement, question);
+  return judgeAfterExpression(line, meaning, question);
+}
+
+function define(line: Extract<Line, { kind: 'definition' }>, context: CheckContext): StepAnswer {
+  const letters = new Map(context.definitions.letters);
+  const functions = new Map(context.definitions.functions);
+  if (line.params.length === 0) letters.set(line.name, line.value);
+  else functions.set(line.name, { params: line.params, value: line.value });
+  return answer(holds('proved', ['definition']), null, { defines: { letters, functions } });
+}
+
+/** A letter that occurs for the first time, said to be an expression in the known ones: as good as "let u = ...". */
+function freshDefinition(line: Line, question: StepQuestion): Extract<Line, { kind: 'definition' }> | null {
+  if (line.kind !== 'relation' || line.sign !== '=' || line.left.kind !== 'letter') return null;
+  const { name } = line.left;
+  const { context, givenLetters, from, known } = question;
+  const used = [...givenLetters, ...known.flatMap((statement) => freeLetters(statement, context))];
+  if (from?.kind !== 'statement' || used.includes(name) || context.definitions.letters.has(name)) return null;
+  const right = toStatement({ kind: 'relation', left: line.right, sign: '=', right: line.right, span: line.span });
+  const letters = right ? freeLetters(right, context) : [];
+  const isKnown = letters.length > 0 && letters.every((letter) => used.includes(letter));
+  return isKnown && !letters.includes(name) ? { kind: 'definition', name, params: [], value: line.right, span: line.span } : null;
+}
+
+/** A statement without letters: a true one is a remark (rule 6c), a false one is judged as what it claims. */
+function judgeRemark(statement: Statement, question: StepQuestion): StepAnswer | null {
+  if (statement.kind !== 'compare' && statement.kind !== 'all') return null;
+  const { from, context } = question;
+  const env = { letter: '', given: new Map(), context, window: null, hints: [], families: new Set<string>() };
+  const truth = solveStatement(statement, env);
+  if (isWholeLine(truth)) {
+    const isFirst = from === null || (from.kind === 'statement' && freeLetters(from.statement, context).length === 0);
+    return answer(holds(truth.reached, isFirst ? [] : ['remark']), null);
+  }
+  if (from?.kind === 'statement' && freeLetters(from.statement, context).length > 0) return null;
+  if (!isEmptySet(truth)) return null;
+  return answer(fails(truth.reached, { witness: { at: {}, above: 'true', below: 'false' } }), { kind: 'statement', statement, last: null });
+}
+
+function judgeFromStatement(meaning: Extract<Meaning, { kind: 'statement' }>, above: Statement, question: StepQuestion): StepAnswer {
+  const found = judgeStatements({
+    above,
+    below: meaning.statement,
+    reference: question.reference ?? above,
+    known: question.known,
+    givenLetters: question.givenLetters,
+    unknown: question.unknown,
+    isLast: question.isLast,
+    settings: question.settings,
+    context: question.context,
+  });
+  return answer(found, meaning, { candidates: found.candidates });
+}
+
+/** A relation after an expression is a chain of identities (rule 5), else a change of kind (rule 6d). */
+function judgeAfterExpression(line: Line, meaning: Meaning, question: StepQuestion): StepAnswer {
+  const { from, context } = question;
+  const members = line.kind === 'relation' ? [line.left, line.right] : line.kind === 'chain' ? line.members : [];
+  const signs = line.kind === 'relation' ? [line.sign] : line.kind === 'chain' ? line.signs : [];
+  if (members.length === 0 || signs.some((sign) => sign !== '=')) return answer(undecided('change-of-kind'), meaning);
+  const last: Meaning = { kind: 'expression', expr: members[members.length - 1] as Expr };
+  const start = from?.kind === 'expression' ? from.expr : (members[0] as Expr);
+  const found = judgeLinks(start, from?.kind === 'expression' ? members : members.slice(1), context);
+  if (found.ruling === 'holds') return answer(found, from === null ? meaning : last, { shrunk: found.shrunk });
+  return answer(from === null ? found : undecided('change-of-kind'), from === null ? meaning : last);
+}
+
+function judgeContinuation(line: Extract<Line, { kind: 'continuation' }>, question: StepQuestion): StepAnswer {
+  const { from, context } = question;
+  if (from === null) return answer(undecided('not-covered'), null);
+  if (from.kind === 'expression') return continueExpression(line, from.expr, question);
+  if (!from.last) return answer(undecided('not-covered'), null);
+  const links = continueFrom(from.last, line.members, line.signs);
+  const last = line.members[line.members.length - 1] as Expr;
+  const statement: Statement = { kind: 'all', parts: [from.statement, links] };
+  if (line.signs.every((sign) => sign === '=')) {
+    const found = judgeLinks(from.last, line.members, context);
+    if (found.ruling === 'holds') {
+      const replaced = replaceLast(from.statement, last) ?? statement;
+      return answer(withNote(found, 'continued'), { kind: 'statement', statement: replaced, last }, { shrunk: found.shrunk });
+    }
+  }
+  const found = judgeFromStatement({ kind: 'statement', statement, last }, from.statement, question);
+  return { ...found, result: withNote(found.result, 'continued') };
+}
+
+/** left = old becomes left = new, where the statement is one equation. */
+function replaceLast(statement: Statement, last: Expr): Statement | null {
+  return statement.kind === 'compare' ? { ...statement, right: last } : null;
+}
+
+function withNote(result: StepResult, note: Note): StepResult {
+  return { ...result, notes: [...result.notes, note] };
+}
+
+function continueExpression(
+  line: Extract<Line, { kind: 'continuation' }>,
+  above: Expr,
+  question: StepQuestion,
+): StepAnswer {
+  const { context, settings } = question;
+  const last: Meaning = { kind: 'expression', expr: line.members[line.members.length - 1] as Expr };
+  if (line.signs.every((sign) => sign === '=')) {
+    const found = judgeLinks(above, line.members, context);
+    const running = found.ruling === 'fails' && settings.presentation === 'note' ? judgeRunningEquals(above, line.members, context) : null;
+    return answer(withNote(running ?? found, 'continued'), last, { shrunk: (running ? [] : found.shrunk) });
+  }
+  const statement = continueFrom(above, line.members, line.signs);
+  const letters = freeLetters(statement, context);
+  if (letters.length > 1) return answer(undecided('change-of-kind'), last);
+  const env = { letter: letters[0] ?? '', given: new Map(), context, window: null, hints: [], families: new Set<string>() };
+  const truth = solveStatement(statement, env);
+  if (isWholeLine(truth)) return answer(holds(truth.reached, ['continued']), last);
+  if (letters.length === 0) return answer(fails(truth.reached, { witness: { at: {}, above: 'true', below: 'false' } }, ['continued']), last);
+  return answer(undecided('change-of-kind'), last);
+}

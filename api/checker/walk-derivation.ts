@@ -1,0 +1,179 @@
+import { lettersOf } from '../../shared/maths/letters.ts';
+import type { Line } from '../../shared/maths/expression.ts';
+import type { DerivationInput, UndecidedReason } from '../../shared/schemas/verdict.ts';
+import { BudgetSpent, createBudget, createContext, operationsPerStep, type CheckContext, type Definitions } from './context.ts';
+import type { ReadDerivation } from './read-derivation.ts';
+import { isolatedLetter } from './rules/formula.ts';
+import { meaningOf, type Meaning } from './rules/meaning.ts';
+import { judgeStep, type StepAnswer } from './rules/step.ts';
+import { undecided, type StepResult } from './rules/step-result.ts';
+import type { RealNumber } from './solving/real-number.ts';
+import { Unsettled } from './solving/unsettled.ts';
+import { toStatement, type Statement } from './statements/statement.ts';
+
+/** What does not change along a derivation. */
+export interface Route {
+  readonly input: DerivationInput;
+  readonly read: ReadDerivation;
+  readonly givenLetters: readonly string[];
+  readonly unknown: string | null;
+}
+
+/** What a derivation has come to know before a step. */
+export interface WalkState {
+  /** By line; null where a line was not read or leaves nothing to start from. */
+  readonly meanings: readonly (Meaning | null)[];
+  readonly from: Meaning | null;
+  /** False after a line that could not be read. */
+  readonly isReadable: boolean;
+  readonly reference: Statement | null;
+  readonly known: readonly Statement[];
+  readonly assumptions: readonly Line[];
+  readonly definitions: Definitions;
+  /** Values that a step listed though they do not satisfy the reference. */
+  readonly candidates: readonly { readonly step: number; readonly values: readonly RealNumber[] }[];
+}
+
+export function planRoute(input: DerivationInput, read: ReadDerivation): Route {
+  const first = read.lines[0];
+  return {
+    input,
+    read,
+    givenLetters: first?.ok ? [...lettersOf(first.line)] : [],
+    unknown: findUnknown(input, read),
+  };
+}
+
+/** The letter that the settings or the goal name, else the one that the last line to isolate a letter isolates. */
+function findUnknown(input: DerivationInput, read: ReadDerivation): string | null {
+  if (input.settings.unknown) return input.settings.unknown;
+  if (input.settings.goal?.kind === 'solved') return input.settings.goal.letter;
+  for (let k = read.lines.length - 1; k > 0; k -= 1) {
+    const result = read.lines[k];
+    const statement = result?.ok ? toStatement(result.line) : null;
+    const letter = statement && isolatedLetter(statement);
+    if (letter) return letter;
+  }
+  return null;
+}
+
+export function startWalk(route: Route): WalkState {
+  const { read } = route;
+  const empty: WalkState = {
+    meanings: [null],
+    from: null,
+    isReadable: true,
+    reference: null,
+    known: [],
+    assumptions: read.assumptions,
+    definitions: { letters: new Map(), functions: new Map() },
+    candidates: [],
+  };
+  const first = read.lines[0];
+  if (!first?.ok) return { ...empty, isReadable: false };
+  if (first.line.kind === 'definition') {
+    const { state } = judgeLine(route, empty, 0, first.line);
+    return state;
+  }
+  return startAgain(empty, meaningOf(first.line));
+}
+
+/** The line becomes what later values have to satisfy. */
+function startAgain(state: WalkState, meaning: Meaning | null): WalkState {
+  const statement = meaning?.kind === 'statement' ? meaning.statement : null;
+  return { ...state, meanings: [...state.meanings.slice(0, -1), meaning], from: meaning, reference: statement, known: statement ? [statement] : [] };
+}
+
+export interface WalkStep {
+  readonly result: StepResult;
+  readonly state: WalkState;
+}
+
+/** Rules on the line of one step and goes on to the next. */
+export function judgeLine(route: Route, state: WalkState, step: number, line: Line): WalkStep {
+  const context = contextOf(route, state);
+  const start = startOf(route, state, step);
+  const answer = start === 'not-read' ? notRead(line) : attempt(route, state, step, line, start, context);
+  return { result: answer.result, state: advance(route, state, step, answer) };
+}
+
+function notRead(line: Line): StepAnswer {
+  return { result: undecided('not-read'), meaning: meaningOf(line), candidates: [], shrunk: [], defines: null };
+}
+
+export function contextOf(route: Route, state: WalkState): CheckContext {
+  return createContext({
+    numbers: route.read.numbers,
+    assumptions: state.assumptions,
+    wholeLetters: route.read.wholeLetters,
+    definitions: state.definitions,
+    budget: createBudget(operationsPerStep),
+  });
+}
+
+/** The line above, or the lines that the author named. */
+function startOf(route: Route, state: WalkState, step: number): Meaning | null | 'not-read' {
+  const uses = route.input.uses?.[step];
+  if (!uses || uses.length === 0) return state.isReadable ? state.from : 'not-read';
+  const named = [...new Set(uses)].filter((line) => line >= 0 && line < step).map((line) => state.meanings[line] ?? null);
+  const found = named.filter((meaning) => meaning !== null);
+  if (found.length === 0) return state.isReadable ? state.from : 'not-read';
+  if (found.length < named.length && uses.some((line) => route.read.lines[line]?.ok === false)) return 'not-read';
+  if (found.length === 1) return found[0] as Meaning;
+  const parts = found.flatMap((meaning) => (meaning.kind === 'statement' ? [meaning.statement] : []));
+  if (parts.length < found.length) return found[found.length - 1] as Meaning;
+  return { kind: 'statement', statement: { kind: 'all', parts }, last: null };
+}
+
+function attempt(
+  route: Route,
+  state: WalkState,
+  step: number,
+  line: Line,
+  from: Meaning | null,
+  context: CheckContext,
+): StepAnswer {
+  try {
+    return judgeStep({
+      line,
+      from,
+      reference: state.reference,
+      known: state.known,
+      givenLetters: route.givenLetters,
+      unknown: route.unknown,
+      isLast: step === route.read.lines.length - 1,
+      settings: route.input.settings,
+      context,
+    });
+  } catch (cause) {
+    return { result: undecided(reasonOf(cause)), meaning: meaningOf(line), candidates: [], shrunk: [], defines: null };
+  }
+}
+
+/** Only what the work on a step is known to end with; anything else is a broken invariant and goes on up. */
+function reasonOf(cause: unknown): UndecidedReason {
+  if (cause instanceof Unsettled) return cause.reason;
+  if (cause instanceof BudgetSpent || cause instanceof RangeError) return 'limit';
+  throw cause;
+}
+
+function advance(route: Route, state: WalkState, step: number, answer: StepAnswer): WalkState {
+  const { result, meaning } = answer;
+  const moved: WalkState = {
+    ...state,
+    meanings: [...state.meanings.slice(0, step), meaning],
+    from: meaning ?? state.from,
+    isReadable: true,
+    definitions: answer.defines ?? state.definitions,
+    candidates: answer.candidates.length > 0 ? [...state.candidates, { step, values: answer.candidates }] : state.candidates,
+  };
+  if (result.ruling !== 'holds') return startAgain({ ...moved, assumptions: route.read.assumptions }, meaning ?? state.from);
+  const known = meaning?.kind === 'statement' ? [...state.known, meaning.statement] : state.known;
+  const reference = state.reference ?? (meaning?.kind === 'statement' ? meaning.statement : null);
+  return { ...moved, known, reference, assumptions: [...state.assumptions, ...answer.shrunk] };
+}
+
+/** Goes past a line that could not be read. */
+export function skipLine(state: WalkState): WalkState {
+  return { ...state, meanings: [...state.meanings, null], from: null, isReadable: false, reference: null, known: [] };
+}
