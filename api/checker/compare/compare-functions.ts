@@ -1,6 +1,7 @@
 import type { CheckContext } from '../context.ts';
 import type { Comparison } from './comparison.ts';
 import { findConditions } from './find-conditions.ts';
+import { provesIdentity } from './kernel-identity.ts';
 import { marksOf } from './pair.ts';
 import type { Pair } from './pair.ts';
 import { createRegion, pointsOf } from './points.ts';
@@ -12,16 +13,19 @@ import { witnessAt } from './witness.ts';
 const mostPoints = 220;
 const agreementsAsked = 40;
 const agreementsNeeded = 12;
+const agreementsWhenProved = 6;
 
 /** Expressions with roots, exponentials, logarithms, circular functions, bars, factorials and the like. */
 export function compareFunctions(pair: Pair, context: CheckContext): Comparison {
   const region = createRegion(pair.names, marksOf(pair), usesTurns(pair), context);
-  const samples = takeSamples(pair, pointsOf(region, context.seed, mostPoints), context, { agreements: agreementsAsked });
+  const isProved = provesIdentity(pair, [], context);
+  const agreements = isProved ? agreementsWhenProved : agreementsAsked;
+  const samples = takeSamples(pair, pointsOf(region, context.seed, mostPoints), context, { agreements });
   if (samples.apart !== null) {
     const witness = witnessAt(pair, samples.apart.point, samples.apart.bits, context);
     return witness === null ? { kind: 'undecided', reason: 'not-settled' } : { kind: 'different', witness };
   }
-  return rule(pair, samples, region, false, context);
+  return rule(pair, samples, region, isProved, context);
 }
 
 function usesTurns(pair: Pair): boolean {

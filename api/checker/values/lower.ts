@@ -156,7 +156,33 @@ function lowerCall(name: Extract<Expr, { kind: 'call' }>['name'], args: readonly
     const pi = at.builder.push({ op: 'constant', args: [], name: 'pi' });
     return at.builder.mul([...lowered, pi, at.builder.number(Q.rational(1, 180))]);
   }
-  return at.builder.push({ op: 'call', name, args: lowered });
+  const [a] = lowered;
+  const written = a === undefined || lowered.length !== 1 ? null : lowerInverseHyperbolic(name, a, at);
+  return written ?? at.builder.push({ op: 'call', name, args: lowered });
+}
+
+/** By logarithms, so that they meet the logarithms that people write for them: DLMF 4.37. */
+function lowerInverseHyperbolic(name: string, a: number, at: Lowering): number | null {
+  const { builder } = at;
+  const one = builder.number(Q.one);
+  const log = (arg: number): number => builder.push({ op: 'call', name: 'ln', args: [arg] });
+  const root = (arg: number): number => pushRoot(arg, 2, 1, false, at);
+  const square = (): number => builder.power(a, 2);
+  switch (name) {
+    case 'arsinh':
+      return log(builder.add([a, root(builder.add([square(), one]))]));
+    case 'arcosh': {
+      if (at.context.numbers === 'real') return log(builder.add([a, root(builder.add([square(), builder.number(Q.minusOne)]))]));
+      const parts = [root(builder.add([a, one])), root(builder.add([a, builder.number(Q.minusOne)]))];
+      return log(builder.add([a, builder.mul(parts)]));
+    }
+    case 'artanh': {
+      const difference = builder.add([log(builder.add([one, a])), builder.negate(log(builder.add([one, builder.negate(a)])))]);
+      return builder.mul([builder.number(Q.rational(1, 2)), difference]);
+    }
+    default:
+      return null;
+  }
 }
 
 function lowerApply(name: string, expr: Extract<Expr, { kind: 'apply' }>, at: Lowering): number {

@@ -1,0 +1,92 @@
+import type { CheckContext } from '../context.ts';
+import { cyclotomicPrimes, primes } from '../numbers/modular.ts';
+import { createRandom } from '../numbers/random.ts';
+import type { Random } from '../numbers/random.ts';
+import { createKernelPlan } from './kernel-plan.ts';
+import type { KernelPlan } from './kernel-plan.ts';
+import { createKernelValues } from './kernel-values.ts';
+import { evaluateModular, noResidue } from './modular-values.ts';
+import type { Pair } from './pair.ts';
+import { findSigns } from './signs.ts';
+import { boundDifference, boundSizes, evaluationsNeeded } from './size-bounds.ts';
+
+const mostEvaluations = 40;
+const mostAttempts = 60;
+const evaluationCost = 12;
+
+/**
+ * Whether two expressions are the same combination of independent quantities (powers of e, logarithms of the sizes of
+ * factors, roots): then they are equal wherever both have a value. False says nothing.
+ */
+export function provesIdentity(pair: Pair, positive: readonly number[], context: CheckContext): boolean {
+  const complex = context.numbers === 'complex';
+  const needs = [...pair.needsAbove, ...pair.needsBelow];
+  const plan = createKernelPlan(pair.nodes, pair.needed, complex, (forms) => findSigns(pair.nodes, forms, complex ? [] : needs, positive));
+  if (plan === null) return false;
+  const count = countEvaluations(pair, plan);
+  if (count === null) return false;
+  const random = createRandom(context.seed ^ 0x2545f491);
+  const table = primesFor(plan);
+  for (const choice of combinations(plan.choices)) {
+    for (let k = 0; k < count; k += 1) {
+      if (!agrees(pair, plan, choice, table, random, context)) return false;
+    }
+  }
+  return true;
+}
+
+/** Roots multiply the degree of what has to vanish: by their norms, at most by the product of the degrees. */
+function countEvaluations(pair: Pair, plan: KernelPlan): number | null {
+  let norm = 1;
+  for (const count of plan.choices.values()) norm *= count;
+  const size = 4 * plan.exponentBound * plan.oddPart + 8;
+  const bounds = boundSizes(pair.nodes, pair.needed, () => ({ topDegree: size, bottomDegree: size, topBits: size, bottomBits: size }));
+  const a = bounds[pair.above];
+  const b = bounds[pair.below];
+  if (a === undefined || b === undefined) return null;
+  const { degree, bits } = boundDifference(a, b);
+  return evaluationsNeeded(degree * norm, bits * norm, 24, 6_000, mostEvaluations);
+}
+
+function primesFor(plan: KernelPlan): Float64Array {
+  const table = plan.turns ? cyclotomicPrimes : primes;
+  if (plan.oddPart === 1 && !plan.quarters) return table;
+  return table.filter((p) => (!plan.quarters || p % 16 === 1) && isCoprime(plan.oddPart, p - 1));
+}
+
+function isCoprime(a: number, b: number): boolean {
+  let [x, y] = [a, b];
+  while (y !== 0) [x, y] = [y, x % y];
+  return x === 1;
+}
+
+function* combinations(choices: ReadonlyMap<string, number>): Generator<ReadonlyMap<string, number>> {
+  const keys = [...choices];
+  const total = keys.reduce((product, [, count]) => product * count, 1);
+  for (let k = 0; k < total; k += 1) {
+    const choice = new Map<string, number>();
+    let rest = k;
+    for (const [key, count] of keys) {
+      choice.set(key, rest % count);
+      rest = Math.floor(rest / count);
+    }
+    yield choice;
+  }
+}
+
+/** One evaluation at a random prime and point; tried again where a root or a quotient does not exist there. */
+function agrees(
+  pair: Pair, plan: KernelPlan, choice: ReadonlyMap<string, number>, table: Float64Array, random: Random, context: CheckContext,
+): boolean {
+  for (let attempt = 0; attempt < mostAttempts && table.length > 0; attempt += 1) {
+    context.budget.spend(evaluationCost);
+    const p = table[random(table.length)] ?? 0;
+    const values = createKernelValues(pair.nodes, plan, pair.names, context.numbers === 'complex', p, random, choice);
+    const residues = evaluateModular(pair.nodes, pair.needed, p, values.letters, values.kernel);
+    const x = residues[pair.above] ?? noResidue;
+    const y = residues[pair.below] ?? noResidue;
+    if (values.failed() || x === noResidue || y === noResidue) continue;
+    return x === y;
+  }
+  return false;
+}
