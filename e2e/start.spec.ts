@@ -22,9 +22,14 @@ test.afterAll(async () => {
 
 async function start(): Promise<ChildProcess> {
   const env = { ...process.env, NODE_ENV: 'development', PORT: String(port), SLIPSTONE_DATA: folder };
-  started = spawn(process.execPath, ['api/boot/start.mjs'], { env, stdio: 'ignore' });
-  await expect.poll(() => health(), { timeout: 60_000, intervals: [200] }).toBe(200);
-  return started;
+  const child = spawn(process.execPath, ['api/boot/start.mjs'], { env, stdio: ['ignore', 'pipe', 'pipe'] });
+  started = child;
+  // Its own word, because the server of a killed start still answers for a moment.
+  let said = '';
+  for (const stream of [child.stdout, child.stderr]) stream.on('data', (chunk) => (said += String(chunk)));
+  await expect.poll(() => said, { timeout: 60_000, intervals: [100] }).toContain(`http://127.0.0.1:${port}`);
+  expect(await health()).toBe(200);
+  return child;
 }
 
 async function health(): Promise<number> {
