@@ -31,8 +31,8 @@ export interface MathsFieldProps {
   readonly onMoveOut?: (direction: MoveOutDirection) => void;
   readonly onFocus?: () => void;
   readonly onBlur?: () => void;
-  readonly autoFocus?: boolean;
-  /** Where the caret stands after `autoFocus`. Default: the end. */
+  readonly focusOnMount?: boolean;
+  /** Where the caret stands after `focusOnMount`. Default: the end. */
   readonly caret?: 'start' | 'end';
   readonly readOnly?: boolean;
   readonly invalid?: boolean;
@@ -85,7 +85,7 @@ export function MathsField(props: MathsFieldProps) {
   }, []);
 
   useEffect(() => {
-    if (stage === 'plain' && latest.current.autoFocus) plain.current?.focus();
+    if (stage === 'plain' && latest.current.focusOnMount) plain.current?.focus();
   }, [stage]);
 
   const { value, label, describedBy, readOnly, invalid, decimal } = props;
@@ -162,18 +162,28 @@ function connect(
     latest.current.onFocus?.();
   });
   field.addEventListener('focusout', () => latest.current.onBlur?.());
+  let key = '';
   field.addEventListener('move-out', (event) => {
+    // Tab leaves as it does anywhere; an arrow leaves only where somebody says where to.
+    if (key === 'Tab') return;
     event.preventDefault();
     latest.current.onMoveOut?.(event.detail.direction);
   });
-  field.addEventListener('keydown', (event) => onKey(event, field, latest), { capture: true });
+  field.addEventListener(
+    'keydown',
+    (event) => {
+      key = event.key;
+      onKey(event, field, latest);
+    },
+    { capture: true },
+  );
   // The on-screen return key ends the line as Enter does, without a key press.
   field.addEventListener('change', () => {
     if (field.hasFocus() && window.mathVirtualKeyboard.visible) latest.current.onEnter?.();
   });
   host.append(field);
   settleMathsField(field);
-  if (latest.current.autoFocus) {
+  if (latest.current.focusOnMount) {
     field.focus();
     field.executeCommand(latest.current.caret === 'start' ? 'moveToMathfieldStart' : 'moveToMathfieldEnd');
   }

@@ -8,6 +8,21 @@ export interface MarkedSpan {
   readonly as: MarkKind;
 }
 
+/** A stretch with the class names that it is set with. */
+interface ClassedSpan {
+  readonly start: number;
+  readonly end: number;
+  readonly as: string;
+}
+
+/** Terms of a line that can be picked, in reading order. */
+export interface TermChoice {
+  readonly spans: readonly { readonly start: number; readonly end: number }[];
+  /** The index of the one that is picked. */
+  readonly picked: number | null;
+  readonly onPick: (index: number) => void;
+}
+
 /** An equation in its two columns, so that the signs of many stand under each other. */
 export interface Sides {
   readonly lhs: string;
@@ -32,7 +47,7 @@ function isBalanced(piece: string): boolean {
 }
 
 /** Puts classes around the marked stretches. A stretch that cuts through a group of TeX, or through another, is left unmarked. */
-export function markSpans(tex: string, spans: readonly MarkedSpan[] = []): string {
+export function markSpans(tex: string, spans: readonly ClassedSpan[] = []): string {
   const fromTheEnd = [...spans].sort((one, other) => other.start - one.start);
   let marked = tex;
   let free = tex.length;
@@ -41,10 +56,21 @@ export function markSpans(tex: string, spans: readonly MarkedSpan[] = []): strin
     if (start < 0 || start >= end || end > free || !isBalanced(piece)) continue;
     // An empty group keeps the space of a sign that now begins a group of its own.
     const lead = CLOSED_UP.has(piece.trimStart()[0] ?? '') ? '{}' : '';
-    marked = `${marked.slice(0, start)}\\htmlClass{${as}}{${lead}${piece}}${marked.slice(end)}`;
+    const set = `\\htmlClass{${as}}{${lead}${piece}}`;
+    const isScript = /[\^_]\s*$/.test(tex.slice(0, start));
+    marked = marked.slice(0, start) + (isScript ? `{${set}}` : set) + marked.slice(end);
     free = start;
   }
   return marked;
+}
+
+/** The terms as stretches that can be found again in what was set, the picked one marked. */
+export function termSpans({ spans, picked }: Omit<TermChoice, 'onPick'>): readonly ClassedSpan[] {
+  return spans.map(({ start, end }, index) => ({
+    start,
+    end,
+    as: `term term-${index}${index === picked ? ' marked' : ''}`,
+  }));
 }
 
 function wordAt(tex: string, at: number): string {
@@ -91,6 +117,7 @@ export function widthEm(tex: string): number {
   }
   const signs = plain.match(/\\?(?:cdot|times|pm|mp|le|ge|ne|leq|geq|neq)(?![a-z])|[+\-=<>]/g)?.length ?? 0;
   const small = plain.match(/[\^_](?:\{[^{}]*\}|.)/g)?.join('').length ?? 0;
-  const glyphs = plain.replace(/\\[a-zA-Z]+/g, 'x').replace(/[{}^_\s]/g, '').length;
+  const names = plain.replace(/\\(sin|cos|tan|cot|log|ln|exp|lim|arcsin|arccos|arctan)(?![a-z])/g, '$1');
+  const glyphs = names.replace(/\\[a-zA-Z]+/g, 'x').replace(/[{}^_\s]/g, '').length;
   return glyphs * 0.52 + signs * 0.7 - small * 0.15;
 }
