@@ -13,7 +13,7 @@ export function answerProblems(logger: Logger, conflicts: UniqueConflicts): Erro
   return (error: unknown, req, res, next) => {
     if (res.headersSent) return next(error);
     const problem = toProblemError(error, conflicts);
-    if (problem.type === 'unexpected') logger.error({ err: error, reqId: req.id }, 'request failed');
+    if (PROBLEMS[problem.type].status >= 500) logger.error({ err: error, reqId: req.id }, 'request failed');
     sendProblem(req, res, problem);
   };
 }
@@ -22,6 +22,7 @@ export function answerProblems(logger: Logger, conflicts: UniqueConflicts): Erro
 export function toProblemError(error: unknown, conflicts: UniqueConflicts): ProblemError {
   if (error instanceof ProblemError) return error;
   if (error instanceof ZodError) return new ProblemError('invalid-fields', { errors: toFieldErrors(error) });
+  if (isConnectionLost(error)) return new ProblemError('unavailable', { cause: error });
   if (error instanceof QueryFailedError) return fromDatabase(error, conflicts);
   return fromExpress(error) ?? new ProblemError('unexpected', { cause: error });
 }
@@ -58,6 +59,17 @@ function fromDatabase(error: QueryFailedError, conflicts: UniqueConflicts): Prob
   if (code === '22021' || code === '22P05') return new ProblemError('bad-request', { cause: error });
   return new ProblemError('unexpected', { cause: error });
 }
+
+/** The database is not there: refused, cut off, shutting down, starting up, or all connections in use. */
+function isConnectionLost(error: unknown): boolean {
+  const cause: unknown = error instanceof QueryFailedError ? error.driverError : error;
+  if (!(cause instanceof Error)) return false;
+  const code = 'code' in cause ? String(cause.code) : '';
+  return /^(ECONNREFUSED|ECONNRESET|EPIPE|ETIMEDOUT|57P0[1-3]|53300|08...)$/.test(code) || LOST.test(cause.message);
+}
+
+const LOST =
+  /^(Connection terminated|timeout exceeded when trying to connect|Client has encountered a connection error)/;
 
 /** Errors of Express and body-parser carry `status`, and `type` when a body could not be read. */
 function fromExpress(error: unknown): ProblemError | null {

@@ -3,6 +3,7 @@ import request from 'supertest';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { z } from 'zod';
 import { createApp } from '../../api/app.ts';
+import { createDataSource } from '../../api/db/data-source.ts';
 import { ProblemError } from '../../api/http/problem-error.ts';
 import { reply, route, type Role, type Route } from '../../api/http/route.ts';
 import { School } from '../../api/features/people/people.entity.ts';
@@ -167,6 +168,22 @@ describe('what comes back', () => {
     const response = await request(app).get('/api/broken').expect(500);
     expect(response.text).not.toContain('hunter2');
     expect(response.body.type).toBe('unexpected');
+  });
+
+  it('answers 503 when the database is away', async () => {
+    const { config, logger, rateLimiter } = server.platform;
+    const away = await createDataSource('postgres://nobody@127.0.0.1:1/none')
+      .initialize()
+      .catch((error: unknown) => error);
+    const app = await createApp({
+      config,
+      logger,
+      rateLimiter,
+      conflicts: {},
+      routes: [route({ method: 'get', path: '/away', who: 'anyone', handle: () => Promise.reject(away) })],
+      findViewer: async () => null,
+    });
+    expect((await request(app).get('/api/away').expect(503)).body.type).toBe('unavailable');
   });
 
   it('words a problem', async () => {
