@@ -29,7 +29,7 @@ export interface DerivationProps {
 }
 
 /** Two columns of lines beside each other must fit in about this much. */
-const BESIDE_EM = 33;
+const BESIDE_EM = 25;
 
 function mendPlaces(lines: readonly EdgeLine[]): readonly (MendPlace | null)[] {
   const mended = lines.flatMap((line, index) => (line.mended ? [index] : []));

@@ -3,9 +3,9 @@ import { classNames } from './class-names.ts';
 import { EdgeColumn, MendColumn } from './edge-pieces.tsx';
 import type { EdgeRow, StepState } from './edge-strokes.ts';
 import { SPOKEN_STATES, STEP_WORDS } from './edge-strokes.ts';
-import { Maths } from './maths.tsx';
-import type { MarkedSpan, Sides } from './tex-pieces.ts';
-import { markSpans, splitRelation, widthEm } from './tex-pieces.ts';
+import { markedOrPlain, Maths } from './maths.tsx';
+import type { MarkedSpan, Sides, TermChoice } from './tex-pieces.ts';
+import { splitRelation, termSpans, widthEm } from './tex-pieces.ts';
 
 /** The same place in the derivation, mended. */
 export interface MendedLine {
@@ -20,6 +20,8 @@ export interface EdgeLine {
   readonly tex?: string;
   /** Stretches of `tex` to be marked. */
   readonly spans?: readonly MarkedSpan[];
+  /** Terms of `tex` that can be picked with the pointer. */
+  readonly terms?: TermChoice;
   /** An editor, choices, words: anything in place of set maths. */
   readonly content?: ReactNode;
   /** Words between two lines: no tick, no number, no step. */
@@ -51,27 +53,26 @@ export interface EdgeLine {
   readonly control?: ReactNode;
 }
 
-const WIDE_EM = 14.5;
-const VERY_WIDE_EM = 27;
-
-/** The two sides of a line, or null where it is an expression. */
-export function sidesOf(tex: string, spans: readonly MarkedSpan[] | undefined): Sides | null {
-  return splitRelation(markSpans(tex, spans));
-}
+/** Widths from which the sides of an equation no longer stand in two columns: on phones, on tablets and in reviews, anywhere. */
+const UNSPLIT_FROM_EM = { phone: 14.5, tablet: 18, anywhere: 27 } as const;
 
 function widthClass(tex: string): string | undefined {
   const width = widthEm(tex);
-  return width > VERY_WIDE_EM ? 'vwide' : width > WIDE_EM ? 'wide-line' : undefined;
+  if (width > UNSPLIT_FROM_EM.anywhere) return 'unsplit';
+  if (width > UNSPLIT_FROM_EM.tablet) return 'unsplit-tablet';
+  return width > UNSPLIT_FROM_EM.phone ? 'unsplit-phone' : undefined;
 }
 
 /** Maths in its columns: the sides of an equation left and right of the sign, an expression across both. */
-export function LineMaths({ tex, spans }: { tex: string; spans?: readonly MarkedSpan[] }) {
-  const sides = sidesOf(tex, spans);
-  if (!sides) return <Maths tex={tex} spans={spans} display className="mx" />;
+export function LineMaths({ tex, spans, terms }: { tex: string; spans?: readonly MarkedSpan[]; terms?: TermChoice }) {
+  const marked = markedOrPlain(tex, terms ? termSpans(terms) : spans);
+  const sides = splitRelation(marked);
+  const onTerm = terms?.onPick;
+  if (!sides) return <Maths tex={marked} display className="mx" onTerm={onTerm} />;
   return (
     <span className={classNames('mx-pair', widthClass(tex))}>
-      {sides.lhs ? <Maths tex={sides.lhs} display className="mx l" /> : null}
-      <Maths tex={`{}${sides.rhs}`} display className="mx r" />
+      {sides.lhs ? <Maths tex={sides.lhs} display className="mx l" onTerm={onTerm} /> : null}
+      <Maths tex={`{}${sides.rhs}`} display className="mx r" onTerm={onTerm} />
     </span>
   );
 }
@@ -92,7 +93,7 @@ function Mend({ line, place }: { line: MendedLine; place: MendPlace }) {
 }
 
 function MendMaths({ line }: { line: MendedLine }) {
-  const sides = sidesOf(line.tex, line.spans);
+  const sides: Sides | null = splitRelation(markedOrPlain(line.tex, line.spans));
   if (!sides) return <Maths tex={line.tex} spans={line.spans} display className="mm" />;
   return (
     <span className="mm-pair">
@@ -167,7 +168,9 @@ export function EdgeLineRow({ line, row, number, isFirst, mend, style }: EdgeLin
       <EdgeColumn row={row} />
       {line.control}
       {line.content !== undefined ? <div className={line.isWords ? 'wordsln' : 'mx own'}>{line.content}</div> : null}
-      {line.content === undefined && line.tex !== undefined ? <LineMaths tex={line.tex} spans={line.spans} /> : null}
+      {line.content === undefined && line.tex !== undefined ? (
+        <LineMaths tex={line.tex} spans={line.spans} terms={line.terms} />
+      ) : null}
       {line.under ? <div className="under">{line.under}</div> : null}
       {mend?.isFirst ? <i className="branch" aria-hidden="true" /> : null}
       {mend && line.mended ? <Mend line={line.mended} place={mend} /> : null}

@@ -104,6 +104,15 @@ const REVIEWED: readonly EdgeLine[] = [
   { id: 'r5', tex: 'x=-17', reason: 'times −1' },
 ];
 
+/** The terms of line 2 of the review. */
+const TERMS = [
+  { start: 0, end: 2 },
+  { start: 2, end: 5 },
+  { start: 5, end: 8 },
+  { start: 8, end: 10 },
+  { start: 11, end: 13 },
+];
+
 const RULED: readonly EdgeLine[] = [
   { id: 'q2', tex: 'L=\\sqrt{(2y-6)^2}+5-y' },
   { id: 'q3', tex: 'L=2y-6+5-y', state: 'fault', words: 'step 3 fails' },
@@ -121,6 +130,7 @@ function Review() {
   const [picked, setPicked] = useState(2);
   const [inView, setInView] = useState(2);
   const [sure, setSure] = useState(5);
+  const [term, setTerm] = useState<number | null>(3);
   const [kind, setKind] = useState<string | null>('sign');
   const lines = REVIEWED.map((line, index) => {
     const isShown = index === inView || index === inView - 1;
@@ -131,7 +141,7 @@ function Review() {
       isMuted: !isShown,
       isCurrent: index === inView,
       bracket: index === picked ? sure / 8 : undefined,
-      spans: index === 2 && picked === 2 ? [{ start: 8, end: 10, as: 'marked' as const }] : [],
+      terms: index === 2 ? { spans: TERMS, picked: term, onPick: setTerm } : undefined,
       control: (
         <StepPick
           name="example"
@@ -139,6 +149,7 @@ function Review() {
           isPicked={index === picked}
           isStop={index === inView}
           onPick={setPicked}
+          onSideways={(by) => setTerm(Math.min(4, Math.max(0, (term ?? 0) + by)))}
           onWalk={setInView}
         />
       ),

@@ -8,6 +8,7 @@ import { Table } from './table.tsx';
 import { Tabs } from './tabs.tsx';
 import { Tally } from './tally.tsx';
 import { Time, TimeLeft } from './time.tsx';
+import { TimeEdge } from './time-edge.tsx';
 import { showToast } from './toast-store.ts';
 import { ApiProblem } from '../lib/api.ts';
 
@@ -63,6 +64,37 @@ export function TableGallery() {
           { id: 'history', label: 'History', panel: <EmptyState /> },
         ]}
       />
+      <div className="mt-8">
+        <TimeEdge
+          label="Stages"
+          now="2026-10-13T15:50:00Z"
+          nowWords="now 17:50"
+          stretches={[
+            {
+              id: 'w',
+              name: 'writing',
+              from: '2026-10-12T08:00:00Z',
+              to: '2026-10-13T19:00:00Z',
+              words: 'Mon 10:00 to today 21:00',
+            },
+            {
+              id: 'r',
+              name: 'reviewing',
+              from: '2026-10-13T19:00:00Z',
+              to: '2026-10-15T10:00:00Z',
+              words: 'to Thu 12:00',
+            },
+            {
+              id: 'a',
+              name: 'answering',
+              from: '2026-10-15T10:00:00Z',
+              to: '2026-10-16T10:00:00Z',
+              words: 'to Fri 12:00',
+            },
+          ]}
+          end={{ name: 'settled', words: 'Fri 18:00' }}
+        />
+      </div>
       <div className="mt-6">
         <BigFigure>7 of 10</BigFigure>
         <p className="small">

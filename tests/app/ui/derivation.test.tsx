@@ -124,6 +124,23 @@ describe('picking a step', () => {
   });
 });
 
+it('tells which term of a line was clicked', async () => {
+  const onPick = vi.fn<(index: number) => void>();
+  const spans = [
+    { start: 0, end: 2 },
+    { start: 2, end: 4 },
+    { start: 5, end: 6 },
+  ];
+  const { container } = render(
+    <Derivation lines={[{ id: 'a', tex: '2x+3=7', terms: { spans, picked: 1, onPick } }]} />,
+  );
+  const terms = container.querySelectorAll('.katex-html .term');
+  expect(terms).toHaveLength(3);
+  expect(terms[1]).toHaveClass('marked');
+  await userEvent.click(terms[2]!);
+  expect(onPick).toHaveBeenCalledWith(2);
+});
+
 it('names the small edge by its states, or as told', () => {
   const { rerender } = render(<SmallEdge states={['holds', 'fault', 'carried']} />);
   expect(screen.getByRole('img', { name: 'holds, first fault, carried' })).toBeInTheDocument();

@@ -6,6 +6,10 @@ describe('marking stretches of TeX', () => {
     expect(markSpans('2x+8-3', [{ start: 2, end: 4, as: 'wrong' }])).toBe('2x\\htmlClass{wrong}{{}+8}-3');
   });
 
+  it('keeps an exponent an exponent', () => {
+    expect(markSpans('x^2', [{ start: 2, end: 3, as: 'wrong' }])).toBe('x^{\\htmlClass{wrong}{2}}');
+  });
+
   it('marks several stretches without moving their places', () => {
     const marked = markSpans('a+b+c', [
       { start: 0, end: 1, as: 'wrong' },
