@@ -7,13 +7,19 @@ import { putBrackets } from './rules/lost-brackets.ts';
 import { noteMiscopied } from './rules/miscopied.ts';
 import { rejectCandidates } from './rules/candidates.ts';
 import { undecided, type StepResult } from './rules/step-result.ts';
-import { judgeLine, planRoute, skipLine, startWalk, type Route, type WalkState } from './walk-derivation.ts';
+import { judgeLine, passStep, planRoute, skipLine, startWalk, type Route, type WalkState } from './walk-derivation.ts';
+
+/** How a worker that is watched rules: without the steps that ran out of time before, telling where it is. */
+export interface Watch {
+  readonly timedOut?: readonly number[];
+  readonly onStep?: (step: number) => void;
+}
 
 /** Rules on every step of a derivation. Never throws for what a student wrote. */
-export function checkDerivation(input: DerivationInput): Verdict {
+export function checkDerivation(input: DerivationInput, watch: Watch = {}): Verdict {
   const read = readDerivation(input);
   const route = planRoute(input, read);
-  const { rulings, last } = ruleSteps(route);
+  const { rulings, last } = ruleSteps(route, watch);
   const noted = noteMiscopied(read, rejectCandidates(rulings, last, route), route);
   const steps = noted.map((result, k): StepRuling => ({ step: k + 1, ...result }));
   const verdict = toVerdict(steps);
@@ -28,12 +34,18 @@ export function toVerdict(steps: readonly StepRuling[]): Verdict {
   return { outcome: isFaulty ? 'faulty' : 'undecided', firstFault: isFaulty ? first.step : null, steps: [...steps] };
 }
 
-function ruleSteps(route: Route): { rulings: StepResult[]; last: WalkState } {
+function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: WalkState } {
   const { lines } = route.read;
   const rulings: StepResult[] = [];
   let state = startWalk(route);
   for (let step = 1; step < lines.length; step += 1) {
     const result = lines[step];
+    watch.onStep?.(step);
+    if (result?.ok && watch.timedOut?.includes(step)) {
+      rulings.push(undecided('time'));
+      state = passStep(state, result.line);
+      continue;
+    }
     if (!result?.ok) {
       rulings.push(notReadResult(route.read, step));
       state = skipLine(state);

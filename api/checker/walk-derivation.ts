@@ -94,7 +94,8 @@ export function judgeLine(route: Route, state: WalkState, step: number, line: Li
   const context = contextOf(route, state);
   const start = startOf(route, state, step);
   const answer = start === 'not-read' ? notRead(line) : attempt(route, state, step, line, start, context);
-  return { result: answer.result, state: advance(route, state, step, answer) };
+  const { ruling, reached, notes, evidence } = answer.result;
+  return { result: { ruling, reached, notes: [...new Set(notes)], evidence }, state: advance(route, state, step, answer) };
 }
 
 function notRead(line: Line): StepAnswer {
@@ -176,4 +177,10 @@ function advance(route: Route, state: WalkState, step: number, answer: StepAnswe
 /** Goes past a line that could not be read. */
 export function skipLine(state: WalkState): WalkState {
   return { ...state, meanings: [...state.meanings, null], from: null, isReadable: false, reference: null, known: [] };
+}
+
+/** Goes past a step that took too long: the next one starts from its line. */
+export function passStep(state: WalkState, line: Line): WalkState {
+  const meaning = meaningOf(line);
+  return startAgain({ ...state, meanings: [...state.meanings, meaning], isReadable: true }, meaning ?? state.from);
 }

@@ -1,0 +1,34 @@
+import { createInterface } from 'node:readline';
+import type { Verdict } from '../../../shared/schemas/verdict.ts';
+import { createCheckPool, type CheckPool } from '../pool.ts';
+import { parseDerivationLine, type DerivationLine } from './derivation-line.ts';
+import { explainVerdict } from './explain.ts';
+
+/**
+ * Reads derivations as JSON lines from standard input and writes one JSON line each, in order; `--explain` words them for
+ * people instead. Checks run in a worker with limits, so that no input stops the rest.
+ */
+async function main(): Promise<void> {
+  const explain = process.argv.includes('--explain');
+  const pool = createCheckPool({ threads: 1, stepMs: 250, derivationMs: 2000 });
+  for await (const text of createInterface({ input: process.stdin, crlfDelay: Infinity })) {
+    if (text.trim() === '') continue;
+    const parsed = parseDerivationLine(text);
+    const output = parsed.ok ? await toOutput(parsed, pool, explain) : toError(parsed, explain);
+    if (!process.stdout.write(`${output}\n`)) await new Promise((resolve) => process.stdout.once('drain', resolve));
+  }
+  await pool.close();
+}
+
+async function toOutput(parsed: Extract<DerivationLine, { ok: true }>, pool: CheckPool, explain: boolean): Promise<string> {
+  const { outcome, firstFault, steps, ms } = await pool.check(parsed.input);
+  const verdict: Verdict = { outcome, firstFault, steps };
+  if (explain) return `${parsed.id ?? '-'}: ${explainVerdict(parsed.input, verdict)}\n`;
+  return JSON.stringify({ id: parsed.id, ...verdict, ms: Math.round(ms * 1000) / 1000 });
+}
+
+function toError({ id, message }: Extract<DerivationLine, { ok: false }>, explain: boolean): string {
+  return explain ? `${id ?? '-'}: cannot be read: ${message}\n` : JSON.stringify({ id, error: { message } });
+}
+
+await main();

@@ -1,0 +1,131 @@
+import { createRequire } from 'node:module';
+import { pathToFileURL } from 'node:url';
+import { Piscina } from 'piscina';
+import type { DerivationInput, StepRuling, Verdict } from '../../shared/schemas/verdict.ts';
+import type { CheckAnswer, CheckTask } from './check.worker.ts';
+
+export interface CheckPoolOptions {
+  /** The worker's file: the source under tsx, or its own bundle. */
+  readonly workerUrl?: URL;
+  readonly threads?: number;
+  /** Wall time for one step and for a whole derivation; counts of operations end a step long before. */
+  readonly stepMs?: number;
+  readonly derivationMs?: number;
+  readonly memoryMb?: number;
+  /** Told of each worker that was ended, so that it can be logged. */
+  readonly onEnded?: (event: { readonly step: number; readonly reason: 'time' | 'memory'; readonly input: DerivationInput }) => void;
+}
+
+export interface CheckPool {
+  readonly check: (input: DerivationInput) => Promise<Verdict & { readonly ms: number }>;
+  /** Whether a small derivation gets its answer; false once closed. */
+  readonly healthy: () => Promise<boolean>;
+  readonly close: () => Promise<void>;
+}
+
+const watchMs = 20;
+
+/** Checks run in workers that are ended and replaced at their limit; what they had left is then ruled by another. */
+export function createCheckPool(options: CheckPoolOptions = {}): CheckPool {
+  const { stepMs = 250, derivationMs = 2000, memoryMb = 192, threads = 2 } = options;
+  const workerUrl = options.workerUrl ?? new URL('./check.worker.ts', import.meta.url);
+  const piscina = new Piscina({
+    filename: workerUrl.href,
+    minThreads: 1,
+    maxThreads: threads,
+    idleTimeout: 60_000,
+    resourceLimits: { maxOldGenerationSizeMb: memoryMb },
+    // A worker of TypeScript source needs the loader that its parent may not have.
+    ...(workerUrl.pathname.endsWith('.ts') ? { execArgv: ['--import', loaderUrl()] } : {}),
+  });
+  // A worker that runs out of memory is also reported to the run that it was on.
+  piscina.on('error', () => {});
+  let isClosed = false;
+
+  async function check(input: DerivationInput): Promise<Verdict & { ms: number }> {
+    const timedOut: number[] = [];
+    const slow = new Set<number>();
+    const deadline = performance.now() + derivationMs;
+    for (;;) {
+      const run = await runOnce(piscina, { input, timedOut: [...timedOut] }, { stepMs, deadline });
+      if (run.kind === 'done') return { ...run.answer.verdict, ms: run.answer.ms };
+      options.onEnded?.({ step: run.step, reason: run.kind, input });
+      if (performance.now() > deadline) {
+        // No time is left for the rest: every step from here on stays open.
+        for (let step = run.step; step < input.lines.length; step += 1) timedOut.push(step);
+        if (timedOut.includes(0) || timedOut.length > input.lines.length) return givenUp(input, derivationMs);
+      } else if (run.kind === 'time' && !slow.has(run.step)) slow.add(run.step);
+      else timedOut.push(run.step);
+      if (run.step === 0) return givenUp(input, derivationMs);
+    }
+  }
+
+  return {
+    check,
+    healthy: async () => {
+      if (isClosed) return false;
+      try {
+        return (await check({ lines: ['x+x', '2x'], assume: [], settings: {} })).outcome === 'sound';
+      } catch {
+        return false;
+      }
+    },
+    close: async () => {
+      isClosed = true;
+      await piscina.destroy();
+    },
+  };
+}
+
+function loaderUrl(): string {
+  return pathToFileURL(createRequire(import.meta.url).resolve('tsx')).href;
+}
+
+type Run =
+  | { readonly kind: 'done'; readonly answer: CheckAnswer }
+  /** The worker was ended at this step, 0 while it was still reading. */
+  | { readonly kind: 'time' | 'memory'; readonly step: number };
+
+interface Limits {
+  readonly stepMs: number;
+  readonly deadline: number;
+}
+
+async function runOnce(piscina: Piscina, task: Omit<CheckTask, 'progress'>, limits: Limits): Promise<Run> {
+  const progress = new SharedArrayBuffer(4);
+  const at = new Int32Array(progress);
+  Atomics.store(at, 0, -1);
+  const ending = new AbortController();
+  let seen = -1;
+  let since = performance.now();
+  const watch = setInterval(() => {
+    const step = Atomics.load(at, 0);
+    const now = performance.now();
+    if (step !== seen) [seen, since] = [step, now];
+    // Before its first step a task may only be waiting for a worker.
+    const isLate = step >= 0 && (now - since > limits.stepMs || (now > limits.deadline && now - since > limits.stepMs / 2));
+    if (isLate) ending.abort();
+  }, watchMs);
+  try {
+    const answer = (await piscina.run({ ...task, progress } satisfies CheckTask, { signal: ending.signal })) as CheckAnswer;
+    return { kind: 'done', answer };
+  } catch (cause) {
+    if (ending.signal.aborted) return { kind: 'time', step: Math.max(0, Atomics.load(at, 0)) };
+    if (isOutOfMemory(cause)) return { kind: 'memory', step: Math.max(0, Atomics.load(at, 0)) };
+    throw cause;
+  } finally {
+    clearInterval(watch);
+  }
+}
+
+function isOutOfMemory(cause: unknown): boolean {
+  return cause instanceof Error && 'code' in cause && cause.code === 'ERR_WORKER_OUT_OF_MEMORY';
+}
+
+/** Nothing could be read within the limits. */
+function givenUp(input: DerivationInput, derivationMs: number): Verdict & { ms: number } {
+  const steps = input.lines.slice(1).map((_, k): StepRuling => {
+    return { step: k + 1, ruling: 'undecided', reached: null, notes: [], evidence: { reason: 'time' } };
+  });
+  return { outcome: steps.length === 0 ? 'sound' : 'undecided', firstFault: null, steps, ms: derivationMs };
+}

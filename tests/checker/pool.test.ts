@@ -1,0 +1,33 @@
+import { afterAll, describe, expect, it } from 'vitest';
+import { createCheckPool } from '../../api/checker/pool.ts';
+
+const pool = createCheckPool({ threads: 1, stepMs: 5000, derivationMs: 20_000 });
+afterAll(() => pool.close());
+
+describe('the pool of checks', () => {
+  it('rules on a derivation in a worker and says how long it took', async () => {
+    const verdict = await pool.check({ lines: ['x^2=7x', 'x=7'], assume: [], settings: {} });
+    expect(verdict).toMatchObject({ outcome: 'faulty', firstFault: 1 });
+    expect(verdict.steps[0]?.evidence.lost).toEqual(['0']);
+    expect(verdict.ms).toBeGreaterThan(0);
+  }, 30_000);
+
+  it('is healthy until it is closed', async () => {
+    const other = createCheckPool({ threads: 1, stepMs: 5000 });
+    expect(await other.healthy()).toBe(true);
+    await other.close();
+    expect(await other.healthy()).toBe(false);
+  }, 30_000);
+
+  it('ends a worker whose step takes too long, leaves that step undecided and rules on the rest', async () => {
+    const worker = new URL('./data/slow.worker.ts', import.meta.url);
+    const ended: number[] = [];
+    const slow = createCheckPool({ threads: 1, stepMs: 150, derivationMs: 20_000, workerUrl: worker, onEnded: ({ step }) => ended.push(step) });
+    const verdict = await slow.check({ lines: ['x+x', '2x', '2x', 'x'], assume: [], settings: {} });
+    expect(ended).toEqual([2, 2]);
+    expect(verdict.steps.map((step) => step.ruling)).toEqual(['holds', 'undecided', 'fails']);
+    expect(verdict.steps[1]?.evidence.reason).toBe('time');
+    expect(verdict.outcome).toBe('undecided');
+    await slow.close();
+  }, 30_000);
+});
