@@ -12,7 +12,7 @@ export default defineConfig(({ isSsrBuild }) => ({
         target: 'node20',
         copyPublicDir: false,
         rollupOptions: {
-          input: { main: 'api/main.ts' },
+          input: { main: 'api/main.ts', 'check.worker': 'api/checker/check.worker.ts' },
           output: { entryFileNames: '[name].js' },
         },
       }

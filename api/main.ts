@@ -1,6 +1,8 @@
 import { createServer, type Server } from 'node:http';
+import { availableParallelism } from 'node:os';
 import path from 'node:path';
 import { createApp } from './app.ts';
+import { createCheckPool, type CheckPool } from './checker/pool.ts';
 import { createDataSource, migrate } from './db/data-source.ts';
 import { serveBuiltClient, serveClientSources } from './http/client-files.ts';
 import { systemClock } from './lib/clock.ts';
@@ -47,8 +49,20 @@ async function openPlatform(config: Config, logger: Logger, life: Lifetime): Pro
     rateLimiter: createRateLimiter(db, systemClock),
     mailer,
     mailbox: config.demo ? catcher : null,
-    workersHealthy: () => true,
+    checks: openChecks(config, logger, life),
   };
+}
+
+function openChecks(config: Config, logger: Logger, life: Lifetime): CheckPool {
+  // Beside this file: its own bundle in the built server, the source under tsx.
+  const name = import.meta.url.endsWith('.ts') ? './checker/check.worker.ts' : './check.worker.js';
+  const pool = createCheckPool({
+    workerUrl: new URL(name, import.meta.url),
+    threads: config.checkWorkers ?? Math.max(1, Math.min(4, availableParallelism() - 1)),
+    onEnded: ({ step, reason }) => logger.warn({ step, reason }, 'a check was ended at its limit'),
+  });
+  life.onStop(() => pool.close());
+  return pool;
 }
 
 async function listen(platform: Platform, composed: Composed, life: Lifetime): Promise<void> {

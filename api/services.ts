@@ -1,5 +1,6 @@
 import type { DataSource } from 'typeorm';
 import { z } from 'zod';
+import type { CheckPool } from './checker/pool.ts';
 import { adminRoutes } from './features/admin/admin.routes.ts';
 import { createAdminService } from './features/admin/admin.service.ts';
 import { classRoutes } from './features/classes/classes.routes.ts';
@@ -61,7 +62,8 @@ export interface Platform {
   readonly mailer: Mailer;
   /** The demo's letters; null in production. */
   readonly mailbox: Pick<MailCatcher, 'list'> | null;
-  readonly workersHealthy: () => boolean;
+  /** Rules on derivations in worker threads. */
+  readonly checks: Pick<CheckPool, 'check' | 'healthy'>;
 }
 
 /** Everything the application is made of: what createApp and the job queue need. */
@@ -88,7 +90,7 @@ export function composeServices(platform: Platform): Composed {
       ...people.routes,
       ...reviewing.routes,
       ...rounds.routes,
-      ...healthRoutes({ pingDatabase: () => db.query('select 1'), workersHealthy: platform.workersHealthy }),
+      ...healthRoutes({ pingDatabase: () => db.query('select 1'), workersHealthy: () => platform.checks.healthy() }),
       ...mailRoutes(mail),
       ...(platform.mailbox ? mailboxRoutes(platform.mailbox) : []),
     ],
