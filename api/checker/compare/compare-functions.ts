@@ -1,4 +1,6 @@
 import type { CheckContext } from '../context.ts';
+import type { Point } from '../values/value.ts';
+import { breakPointsOf } from './break-points.ts';
 import type { Comparison } from './comparison.ts';
 import { findConditions } from './find-conditions.ts';
 import { provesIdentity } from './kernel-identity.ts';
@@ -11,6 +13,7 @@ import type { Samples } from './sampling.ts';
 import { witnessAt } from './witness.ts';
 
 const mostPoints = 220;
+const firstPoints = 14;
 const agreementsAsked = 40;
 const agreementsNeeded = 12;
 const agreementsWhenProved = 6;
@@ -20,12 +23,22 @@ export function compareFunctions(pair: Pair, context: CheckContext): Comparison 
   const region = createRegion(pair.names, marksOf(pair), usesTurns(pair), context);
   const isProved = provesIdentity(pair, [], context);
   const agreements = isProved ? agreementsWhenProved : agreementsAsked;
-  const samples = takeSamples(pair, pointsOf(region, context.seed, mostPoints), context, { agreements });
+  const progress = { mustGoOn: true };
+  const points = pointsFor(pair, region, isProved, progress, context);
+  const samples = takeSamples(pair, points, context, { agreements, mayStop: () => isProved || !progress.mustGoOn });
   if (samples.apart !== null) {
     const witness = witnessAt(pair, samples.apart.point, samples.apart.bits, context);
     return witness === null ? { kind: 'undecided', reason: 'not-settled' } : { kind: 'different', witness };
   }
   return rule(pair, samples, region, isProved, context);
+}
+
+/** Small numbers first; then, unless an identity covers them, both sides of every break; then the rest. */
+function* pointsFor(pair: Pair, region: Region, isProved: boolean, progress: { mustGoOn: boolean }, context: CheckContext): Generator<Point> {
+  yield* pointsOf(region, context.seed, firstPoints);
+  if (!isProved && context.numbers === 'real') yield* breakPointsOf(pair, region);
+  progress.mustGoOn = false;
+  yield* pointsOf(region, context.seed, mostPoints, firstPoints);
 }
 
 function usesTurns(pair: Pair): boolean {

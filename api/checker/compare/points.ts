@@ -114,13 +114,13 @@ const friendlyWhole = [1, 2, 3, 4, 5, 6, 0, 7, 8, 10, -1, -2].map((n) => Q.ratio
 const scales = [1, 1, 3, 1, 30, 300, 3_000, 30_000];
 
 /** Points of a region, small whole numbers first, then fractions, near the marks and at several scales. */
-export function* pointsOf(region: Region, seed: number, most: number): Generator<Point> {
+export function* pointsOf(region: Region, seed: number, most: number, from = 0): Generator<Point> {
   const random = createRandom(seed ^ 0x5bd1e995);
   if (region.names.length === 0) {
-    yield new Map();
+    if (from === 0) yield new Map();
     return;
   }
-  for (let k = 0; k < most; k += 1) {
+  for (let k = from; k < most; k += 1) {
     const point = new Map<string, KnownValue>();
     region.names.forEach((name, position) => {
       point.set(name, pickValue(k, position, region, region.whole.has(name), random));

@@ -30,7 +30,8 @@ const kept = 8;
 export interface SampleLimits {
   /** Stop after so many agreements. */
   readonly agreements: number;
-  readonly isEnough?: (samples: Samples) => boolean;
+  /** False as long as points remain that must be tried. */
+  readonly mayStop?: () => boolean;
 }
 
 /** Tries points until the lines are apart at one or agree at enough of them. */
@@ -57,7 +58,7 @@ export function takeSamples(pair: Pair, points: Iterable<Point>, context: CheckC
     if (agreement !== 'same') continue;
     if (common.length < kept) common.push({ point, result });
     inside ||= isInside(pair.needsAbove, pair, values.all, bits) && isInside(pair.needsBelow, pair, values.all, bits);
-    if (counts.same >= limits.agreements && inside) return samples(null);
+    if (counts.same >= limits.agreements && inside && (limits.mayStop?.() ?? true)) return samples(null);
   }
   return samples(null);
 }
