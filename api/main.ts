@@ -25,8 +25,12 @@ async function main(config: Config, logger: Logger, life: Lifetime): Promise<voi
   if (config.demo) process.stdout.write(toGreeting(config));
 }
 
-function toGreeting({ baseUrl }: Config): string {
-  return `\nSlipstone is at ${baseUrl}   (Ctrl-C stops it)\nIts mail lands at ${baseUrl}/mailbox\n`;
+function toGreeting({ baseUrl, host }: Config): string {
+  const lines = [`Slipstone is at ${baseUrl}   (Ctrl-C stops it)`, `Its mail lands at ${baseUrl}/mailbox`];
+  if (!['127.0.0.1', '::1', 'localhost'].includes(host)) {
+    lines.push(`This is the demo: whoever reaches ${host} can read its mail. Set NODE_ENV=production for a school.`);
+  }
+  return `\n${lines.join('\n')}\n`;
 }
 
 async function openPlatform(config: Config, logger: Logger, life: Lifetime): Promise<Platform> {

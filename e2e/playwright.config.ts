@@ -16,6 +16,7 @@ export default defineConfig({
   forbidOnly: true,
   retries: 0,
   timeout: 120_000,
+  globalTimeout: 19 * 60_000,
   expect: { timeout: 10_000 },
   reporter: [['list'], ['json', { outputFile: path.join(root, 'test-results/e2e.json') }]],
   use: {

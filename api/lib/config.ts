@@ -107,7 +107,10 @@ function readDemo(given: object): Config {
     ...common(env),
     production: false,
     demo: env.NODE_ENV === 'development',
-    baseUrl: (env.BASE_URL ?? `http://${env.HOST}:${env.PORT}`).replace(/\/+$/, ''),
+    baseUrl: (env.BASE_URL ?? `http://${env.HOST === '0.0.0.0' ? '127.0.0.1' : env.HOST}:${env.PORT}`).replace(
+      /\/+$/,
+      '',
+    ),
     smtpUrl: env.SMTP_URL ?? null,
     mailboxFile: env.MAILBOX_FILE,
     clientFromSources: env.SLIPSTONE_DEV === '1',
