@@ -28,6 +28,7 @@ import { createBoardService } from './features/rounds/board.service.ts';
 import { createPeopleInRoundService } from './features/rounds/people-in-round.service.ts';
 import { createRoundMail } from './features/rounds/round-mail.ts';
 import { createRoundStages } from './features/rounds/round-stages.ts';
+import { createRoundTimeService } from './features/rounds/round-time.service.ts';
 import { roundsJobs } from './features/rounds/rounds.jobs.ts';
 import { roundsRoutes } from './features/rounds/rounds.routes.ts';
 import { createRoundsService } from './features/rounds/rounds.service.ts';
@@ -186,7 +187,8 @@ function composeRounds({ db, now, queue }: Platform, queueMail: QueueMail, settl
       ...tasksRoutes(tasks),
       ...roundsRoutes({
         rounds: createRoundsService({ db, now, stages }),
-        people: createPeopleInRoundService({ db, now, stages }),
+        people: createPeopleInRoundService({ db, now }),
+        time: createRoundTimeService({ db, now, stages }),
         board: createBoardService({ db, now }),
         today: createTodayService({ db, now, readLine }),
       }),

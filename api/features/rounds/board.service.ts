@@ -7,8 +7,8 @@ import { findAlerts } from './board-alerts.ts';
 import { getStaffRound } from './round-access.ts';
 import { toRoundAnswer } from './round-answer.ts';
 import { FEWEST_STEPS, listRoundPeople, type RoundPerson } from './round-people.ts';
-import { findStageEnd } from './round-stages.ts';
 import type { Round } from './rounds.entity.ts';
+import { findStageEnd } from './stage-order.ts';
 
 /** Somebody who was at work lately, and added no line for this long, is stuck. */
 const STUCK_MS = 15 * 60_000;

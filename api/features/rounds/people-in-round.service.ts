@@ -1,70 +1,26 @@
 import { IsNull, type DataSource, type EntityManager } from 'typeorm';
 import type { z } from 'zod';
-import type { excuseSchema, ExtensionForm, InstantName, MoreTime } from '../../../shared/schemas/round.ts';
+import type { excuseSchema, ExtensionForm } from '../../../shared/schemas/round.ts';
 import { notFound, ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
 import type { Now } from '../../lib/clock.ts';
-import { recordAudit } from '../audit/record.ts';
 import { Membership } from '../classes/classes.entity.ts';
 import { releaseReviews } from './dealing.ts';
 import { getStaffRound } from './round-access.ts';
-import type { RoundStages } from './round-stages.ts';
+import { createRoundRecord } from './round-record.ts';
 import { Excuse, Extension, Round } from './rounds.entity.ts';
 
 export interface PeopleInRoundDeps {
   readonly db: DataSource;
   readonly now: Now;
-  readonly stages: RoundStages;
 }
 export type PeopleInRoundService = ReturnType<typeof createPeopleInRoundService>;
 
-const LATER: Record<Round['stage'], readonly InstantName[]> = {
-  planned: ['opensAt', 'writingEndsAt', 'reviewingEndsAt', 'answeringEndsAt', 'settlesAt'],
-  writing: ['writingEndsAt', 'reviewingEndsAt', 'answeringEndsAt', 'settlesAt'],
-  reviewing: ['reviewingEndsAt', 'answeringEndsAt', 'settlesAt'],
-  answering: ['answeringEndsAt', 'settlesAt'],
-  settled: [],
-};
-
-/** More time for all or for one, and people who are excused. */
-export function createPeopleInRoundService({ db, now, stages }: PeopleInRoundDeps) {
-  async function record(manager: EntityManager, viewer: Viewer, round: Round, action: string, facts: AuditFacts) {
-    const { reason, ...rest } = facts;
-    await recordAudit(manager, {
-      schoolId: round.schoolId,
-      actorId: viewer.userId,
-      at: now(),
-      action,
-      objectKind: 'round',
-      objectId: round.id,
-      reason,
-      ...rest,
-    });
-  }
+/** More time for one person, and people who are excused. */
+export function createPeopleInRoundService({ db, now }: PeopleInRoundDeps) {
+  const record = createRoundRecord(now);
 
   return {
-    /** Moves the end of the running stage and everything after it. */
-    async giveMoreTime(viewer: Viewer, roundId: string, { minutes, reason }: MoreTime): Promise<void> {
-      await db.transaction(async (manager) => {
-        const { round } = await getStaffRound(manager, viewer, roundId, { teacherOnly: true, lock: true });
-        const names = LATER[round.stage];
-        const [first] = names;
-        if (!first) throw new ProblemError('wrong-stage', { detail: 'A settled round has no time left to give.' });
-        const before = Object.fromEntries(names.map((name) => [name, round[name].toISOString()]));
-        for (const name of names) round[name] = new Date(round[name].getTime() + minutes * 60_000);
-        if (round[first] <= now()) {
-          throw new ProblemError('invalid-fields', {
-            errors: [{ pointer: '/minutes', detail: 'That would be over already. Give more.' }],
-          });
-        }
-        round.version += 1;
-        await manager.save(round);
-        await stages.schedule(manager, round);
-        const after = Object.fromEntries(names.map((name) => [name, round[name].toISOString()]));
-        await record(manager, viewer, round, 'round.more-time', { before, after, reason });
-      });
-    },
-
     /** One person's own time; whoever gets more time to write gives back reviews that were dealt and not begun. */
     async extend(viewer: Viewer, roundId: string, userId: string, form: ExtensionForm): Promise<void> {
       await db.transaction(async (manager) => {
@@ -127,24 +83,7 @@ export function createPeopleInRoundService({ db, now, stages }: PeopleInRoundDep
         });
       });
     },
-
-    /** Deals what came late now. */
-    async dealLateNow(viewer: Viewer, roundId: string): Promise<{ reviews: number }> {
-      return await db.transaction(async (manager) => {
-        const { round } = await getStaffRound(manager, viewer, roundId, { teacherOnly: true, lock: true });
-        if (round.stage !== 'reviewing') {
-          throw new ProblemError('wrong-stage', { detail: 'Late derivations are dealt while reviewing is open.' });
-        }
-        return { reviews: await stages.dealLateNow(manager, round) };
-      });
-    },
   };
-}
-
-interface AuditFacts {
-  readonly before: unknown;
-  readonly after: unknown;
-  readonly reason: string;
 }
 
 async function getStudent(manager: EntityManager, round: Round, userId: string): Promise<void> {
@@ -178,15 +117,19 @@ function refuseExtension(
   if (errors.length > 0) throw new ProblemError('invalid-fields', { errors });
 }
 
-/** Whoever has read a classmate's derivation cannot go on writing their own. */
+/** While others review, more time to write is for people who have neither handed in nor read a classmate's derivation. */
 async function refuseReader(manager: EntityManager, roundId: string, userId: string): Promise<void> {
-  const [row]: { begun: number }[] = await manager.query(
-    `select count(*)::int as begun from review
-      where round_id = $1 and reviewer_id = $2 and (opened_at is not null or draft is not null)`,
+  const [row]: { handed_in: boolean; has_read: boolean }[] = await manager.query(
+    `select exists (select 1 from derivation where round_id = $1 and author_id = $2
+                     and current_version_id is not null) as handed_in,
+            exists (select 1 from review where round_id = $1 and reviewer_id = $2
+                     and (opened_at is not null or draft is not null)) as has_read`,
     [roundId, userId],
   );
-  if (!row?.begun) return;
-  throw new ProblemError('conflict', {
-    detail: 'This person has opened a review already, so writing is over for them.',
-  });
+  if (row?.handed_in) throw new ProblemError('conflict', { detail: 'This person has handed in already.' });
+  if (row?.has_read) {
+    throw new ProblemError('conflict', {
+      detail: 'This person has opened a review already, so writing is over for them.',
+    });
+  }
 }

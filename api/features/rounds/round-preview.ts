@@ -2,8 +2,8 @@ import type { EntityManager } from 'typeorm';
 import type { RoundWarning, StageEffect, StagePreview } from '../../../shared/schemas/round.ts';
 import { planDeal } from './dealing.ts';
 import { isDealable, listRoundPeople, type RoundPerson } from './round-people.ts';
-import { findStageEnd, nextStage } from './round-stages.ts';
 import type { Round } from './rounds.entity.ts';
+import { findStageEnd, nextStage } from './stage-order.ts';
 
 /** Below this many people a reader can guess whose work it is. */
 export const FEWEST_PEOPLE = 5;

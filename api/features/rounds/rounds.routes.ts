@@ -10,21 +10,24 @@ import {
 import { reply, route, type Call, type Route } from '../../http/route.ts';
 import type { BoardService } from './board.service.ts';
 import type { PeopleInRoundService } from './people-in-round.service.ts';
+import type { RoundTimeService } from './round-time.service.ts';
 import type { RoundsService } from './rounds.service.ts';
 import type { TodayService } from './today.service.ts';
 
 export interface RoundServices {
   readonly rounds: RoundsService;
   readonly people: PeopleInRoundService;
+  readonly time: RoundTimeService;
   readonly board: BoardService;
   readonly today: TodayService;
 }
 
-export function roundsRoutes({ rounds, people, board, today }: RoundServices): Route[] {
+export function roundsRoutes({ rounds, people, time, board, today }: RoundServices): Route[] {
   return [
     route({ method: 'get', path: '/today', who: 'signed-in', handle: ({ viewer }) => today.getToday(viewer) }),
     ...planningRoutes(rounds),
     ...runningRoutes(rounds, board),
+    ...timeRoutes(time),
     ...peopleRoutes(people),
   ];
 }
@@ -100,21 +103,26 @@ function runningRoutes(rounds: RoundsService, board: BoardService): Route[] {
   ];
 }
 
-function peopleRoutes(people: PeopleInRoundService): Route[] {
+function timeRoutes(time: RoundTimeService): Route[] {
   return [
     route({
       method: 'post',
       path: '/rounds/:roundId/more-time',
       who: 'teacher',
       body: moreTimeSchema,
-      handle: (call) => people.giveMoreTime(call.viewer, roundId(call), call.body),
+      handle: (call) => time.giveMoreTime(call.viewer, roundId(call), call.body),
     }),
     route({
       method: 'post',
       path: '/rounds/:roundId/late-batch',
       who: 'teacher',
-      handle: (call) => people.dealLateNow(call.viewer, roundId(call)),
+      handle: (call) => time.dealLateNow(call.viewer, roundId(call)),
     }),
+  ];
+}
+
+function peopleRoutes(people: PeopleInRoundService): Route[] {
+  return [
     route({
       method: 'put',
       path: '/rounds/:roundId/people/:userId/extension',

@@ -66,7 +66,11 @@ export function createTasksService({ db, now, readLine }: TasksDeps) {
         schoolId: viewer.schoolId,
         ownerId: viewer.userId,
         title: `${title.slice(0, 110)}, copy`,
-        ...{ instructions, given, goal, assumptions, settings },
+        instructions,
+        given,
+        goal,
+        assumptions,
+        settings,
       });
       const made = await db.manager.save(Object.assign(copy, { createdAt: at, updatedAt: at }));
       return { id: made.id };
