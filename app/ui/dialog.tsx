@@ -1,19 +1,11 @@
 import type { ReactNode } from 'react';
 import { lazy, Suspense } from 'react';
 import { Button } from './button.tsx';
+import type { DialogProps } from './dialog-modal.tsx';
+
+export type { DialogProps };
 
 const DialogModal = lazy(async () => ({ default: (await import('./dialog-modal.tsx')).DialogModal }));
-
-export interface DialogProps {
-  readonly isOpen: boolean;
-  readonly onClose: () => void;
-  readonly title: string;
-  /** What cannot be undone is framed in ink. */
-  readonly grave?: boolean;
-  /** Cannot be left while something is under way. */
-  readonly isLocked?: boolean;
-  readonly children: ReactNode;
-}
 
 /** A dialog over the page: holds the focus, closes with Escape, gives the focus back. */
 export function Dialog({ isOpen, ...rest }: DialogProps) {

@@ -89,6 +89,13 @@ const VERDICT_EQUATION: readonly EdgeLine[] = [
     tex: '2y+2=3(y-1)',
     spans: [{ start: 3, end: 4, as: 'wrong' }],
     state: 'fault',
+    reason: 'times 6',
+    isEvidence: true,
+    note: (
+      <p className="ev">
+        The line above has the solution <b>15</b>, this one does not.
+      </p>
+    ),
     mended: { tex: '2y+12=3(y-1)', spans: [{ start: 3, end: 5, as: 'right' }] },
   },
   { id: 'e2', tex: '2y+2=3y-3', state: 'carried', mended: { tex: '2y+12=3y-3' } },

@@ -85,7 +85,7 @@ export function Shell({ nav = [], who, foot, children }: ShellProps) {
         {children}
       </main>
       <footer className="foot">
-        <p>{foot}</p>
+        {foot ? <p>{foot}</p> : null}
         <p className="foot-acts no-print">
           <Link to={paths.help()}>Help</Link>
         </p>

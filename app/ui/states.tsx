@@ -17,7 +17,7 @@ export function Waiting({
 }) {
   return (
     <output className={classNames('waiting', className)}>
-      <span className="aside-words">{children}</span>
+      <span className="aside-words text-ink">{children}</span>
       {Array.from({ length: lines }, (_, index) => (
         <i key={index} style={{ width: WIDTHS[index % WIDTHS.length] }} aria-hidden="true" />
       ))}
@@ -37,7 +37,7 @@ export function EmptyState({
 }) {
   return (
     <div>
-      <p className="aside-words">{title}</p>
+      <p className="aside-words text-ink">{title}</p>
       {children ? <div className="small muted mt-1">{children}</div> : null}
       {acts ? <div className="acts mt-3">{acts}</div> : null}
     </div>
@@ -58,7 +58,7 @@ export function ErrorState({ error, onRetry, acts }: { error: unknown; onRetry?:
   const requestId = error instanceof ApiProblem ? error.requestId : undefined;
   return (
     <div role="alert">
-      <p className="aside-words">{title}</p>
+      <p className="aside-words text-ink">{title}</p>
       {detail ? <p className="small mt-1">{detail}</p> : null}
       {requestId ? <p className="fine muted mt-1">Number of the request: {requestId}</p> : null}
       {onRetry || acts ? (
