@@ -9,11 +9,11 @@ const LAYOUTS =
 export function linesFromPaste(text: string): readonly string[] {
   const source = text
     .replaceAll('\r', '')
-    .replaceAll('\\[', '\n')
-    .replaceAll('\\]', '\n')
-    .replace(/\\[()]/g, ' ')
-    .replaceAll('$$', '\n');
-  const lines = splitRows(source.replace(LAYOUTS, '\n'));
+    .replace(/\\\\\s*\[-?[\d.]+ *[a-z]{2}\]/g, '\\\\')
+    .replace(/(?<!\\)\\[[\]]|\$\$/g, '\n$$')
+    .replace(/(?<!\\)\\[()]/g, '$$')
+    .replace(LAYOUTS, '\n$$');
+  const lines = splitRows(source);
   return lines.map(cleanLine).filter((line) => line !== '');
 }
 
@@ -37,13 +37,12 @@ function splitRows(source: string): string[] {
 
 function cleanLine(raw: string): string {
   const line = raw
-    .replace(/^\s*\[-?[\d.]+ *[a-z]{2}\]/, '')
     .replace(/\\(?:nonumber|notag|label\{[^}]*\}|tag\*?\{[^}]*\})/g, '')
     .replaceAll('$', '')
     .replace(/^\s*(?:\d{1,2}[.)]\s|•)/, '')
     .replace(/\s+/g, ' ')
     .trim();
-  return line.includes('\\') ? line : plainToTex(line);
+  return raw.includes('$') || line.includes('\\') ? line : plainToTex(line);
 }
 
 /** Typed maths without a backslash: a power takes all its digits, its sign and its bracket, as the typist meant. */
@@ -57,7 +56,8 @@ export function plainToTex(line: string): string {
     }
     if (line[at] === '*') at += 1;
     const exponent = takeExponent(line.slice(at + 1));
-    text += exponent.length === 0 ? '^' : `^{${stripBrackets(plainToTex(exponent.trim()))}}`;
+    const raised = stripBrackets(plainToTex(exponent.trim()));
+    text += raised.length < 2 ? `^${raised}` : `^{${raised}}`;
     at += exponent.length;
   }
   return text;

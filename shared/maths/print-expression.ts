@@ -22,9 +22,10 @@ export function bracket(text: string): string {
   return `\\left(${text}\\right)`;
 }
 
-/** Joins two pieces, with a blank where a command would run into a letter. */
+/** Joins two pieces, with a blank where a command would run into a letter, or `!=` would come about. */
 export function glue(left: string, right: string): string {
-  return /\\[a-zA-Z]+$/.test(left) && /^[a-zA-Z]/.test(right) ? `${left} ${right}` : left + right;
+  const runsOn = /\\[a-zA-Z]+$/.test(left) && /^[a-zA-Z]/.test(right);
+  return runsOn || (left.endsWith('!') && right.startsWith('=')) ? `${left} ${right}` : left + right;
 }
 
 function print(expr: Expr, style: PrintStyle): string {
@@ -52,7 +53,7 @@ function print(expr: Expr, style: PrintStyle): string {
     case 'apply':
       return expr.name + "'".repeat(expr.primes) + (expr.args.length > 0 ? bracket(list(expr.args, style)) : '');
     case 'factorial':
-      return `${base(expr.operand, style, expr.operand.kind !== 'power' && expr.operand.kind !== 'factorial')}!`;
+      return `${base(expr.operand, style, true)}!`;
     case 'binomial':
       return `\\binom{${print(expr.top, style)}}{${print(expr.bottom, style)}}`;
     case 'matrix':
@@ -102,7 +103,7 @@ function printProduct(product: ProductExpr, style: PrintStyle): string {
     const after = at < joins.length ? (joins[at] ?? 'implicit') : null;
     const next = factors[at + 1];
     let piece = printFactor(factor, style, next ?? null, after);
-    if (join === 'implicit' && needsBracket(factor, factors[at - 1]!)) piece = bracket(piece);
+    if (join === 'implicit' && needsBracket(piece, factor, factors[at - 1]!)) piece = bracket(piece);
     else if (style.guardsD && factor.kind === 'letter' && factor.name === 'd' && after !== null) piece = bracket(piece);
     const sign = join === 'dot' ? '\\cdot' : join === 'times' ? '\\times' : '';
     return glue(glue(text, sign) + (spaced && join === 'implicit' ? ' ' : ''), piece);
@@ -110,11 +111,8 @@ function printProduct(product: ProductExpr, style: PrintStyle): string {
 }
 
 /** Beside another factor: digits would join its digits, and a fraction of digits would make a mixed number. */
-function needsBracket(factor: Expr, before: Expr): boolean {
-  if (factor.kind === 'number') return true;
-  if (factor.kind === 'power' && factor.base.kind === 'number') return true;
-  if (factor.kind === 'factorial' && factor.operand.kind === 'number') return true;
-  return factor.kind === 'quotient' && factor.written === 'fraction' && before.kind === 'number';
+function needsBracket(piece: string, factor: Expr, before: Expr): boolean {
+  return /^\d/.test(piece) || (factor.kind === 'quotient' && factor.written === 'fraction' && before.kind === 'number');
 }
 
 function runHidesWord(product: ProductExpr): boolean {
@@ -227,7 +225,7 @@ function script(expr: Expr, style: PrintStyle): string {
 }
 
 /** What a power or factorial is put on. */
-function base(expr: Expr, style: PrintStyle, barePower: boolean): string {
+function base(expr: Expr, style: PrintStyle, isFactorial: boolean): string {
   const text = print(expr, style);
   switch (expr.kind) {
     case 'number':
@@ -241,7 +239,7 @@ function base(expr: Expr, style: PrintStyle, barePower: boolean): string {
     case 'apply':
       return expr.args.length > 0 ? text : bracket(text);
     case 'factorial':
-      return barePower ? bracket(text) : text;
+      return isFactorial ? bracket(text) : text;
     case 'call':
       return FENCES[expr.name] || expr.name === 'conj' ? text : bracket(text);
     default:
@@ -250,7 +248,9 @@ function base(expr: Expr, style: PrintStyle, barePower: boolean): string {
 }
 
 function printRoot(expr: Extract<Expr, { kind: 'root' }>, style: PrintStyle): string {
-  return `\\sqrt${expr.degree ? `[${print(expr.degree, style)}]` : ''}{${print(expr.radicand, style)}}`;
+  const degree = expr.degree ? print(expr.degree, style) : null;
+  const index = degree === null ? '' : degree.includes(']') ? `[{${degree}}]` : `[${degree}]`;
+  return `\\sqrt${index}{${print(expr.radicand, style)}}`;
 }
 
 const FENCES: Partial<Record<string, readonly [string, string]>> = {

@@ -22,7 +22,7 @@ export function printLine(line: Line, decimal: Decimal = 'point'): string {
     case 'expression':
       return show(line.expr);
     case 'relation':
-      return glue(show(line.left) + SIGNS[line.sign], show(line.right));
+      return relate(show(line.left), line.sign, show(line.right));
     case 'chain':
       return line.members
         .slice(1)
@@ -51,7 +51,7 @@ export function printLine(line: Line, decimal: Decimal = 'point'): string {
 }
 
 function relate(text: string, sign: RelationSign, member: string): string {
-  return glue(text + SIGNS[sign], member);
+  return glue(glue(text, SIGNS[sign]), member);
 }
 
 function statement(part: Line, decimal: Decimal): string {

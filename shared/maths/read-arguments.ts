@@ -1,6 +1,7 @@
 import type { Expr } from './expression.ts';
 import { numberFrom } from './read-numbers.ts';
 import { type Context, numberOf, type Reader } from './reader.ts';
+import { isDigit } from './scanner.ts';
 
 /** An argument as TeX takes it: a braced group, or the next single digit, letter or command. */
 export function readArgument(reader: Reader, change?: Partial<Context>): Expr {
@@ -37,7 +38,8 @@ function readGroup(reader: Reader, change?: Partial<Context>): Expr {
 
 /** The exponent or bound after `^` or `_`. */
 export function readExponent(reader: Reader): Expr {
-  if (reader.is('number') && reader.token.text.length > 1) reader.flags.add('power-digits');
+  if (reader.is('number') && isDigit(reader.source.charCodeAt(reader.token.start + 1)))
+    reader.flags.add('power-digits');
   if (reader.is('-') || reader.is('+')) reader.fail('missing-bracket', ['{']);
   return readArgument(reader);
 }

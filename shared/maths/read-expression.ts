@@ -114,7 +114,6 @@ export function readProduct(reader: Reader, first?: Expr): Expr {
         break;
       case '/':
       case 'div':
-        reader.next();
         run.divide(token.kind === '/' ? 'slash' : 'divide');
         break;
       default:
@@ -216,6 +215,7 @@ class ProductRun {
     this.divisions += 1;
     if (this.divisions + reader.depth > READ_LIMITS.levels) reader.fail('too-deep', []);
     const numerator = this.finish();
+    reader.next();
     const first = readSignedFactor(reader);
     const denominator = this.takesMore(first) ? this.juxtaposed(first) : first;
     const quotient: QuotientExpr = { kind: 'quotient', numerator, denominator, written, span: reader.span(this.start) };

@@ -132,8 +132,10 @@ function readRelations(reader: Reader, left: Expr, start: number): Line {
 function readMembers(reader: Reader, members: Expr[]): RelationSign[] {
   const signs: RelationSign[] = [];
   for (;;) {
-    const sign = RELATIONS[reader.token.kind];
+    const isTyped = reader.is('!') && reader.flip === 'unequal' && reader.peek(1).kind === '=';
+    const sign = isTyped ? '!=' : RELATIONS[reader.token.kind];
     if (!sign) return signs;
+    if (isTyped) reader.next();
     reader.next();
     if (RELATIONS[reader.token.kind]) reader.fail('bad-relation', ['number', 'letter']);
     signs.push(sign);

@@ -16,6 +16,7 @@ export function readPower(reader: Reader): Expr {
     const { kind } = reader.token;
     if (kind !== '^' && kind !== '!' && kind !== 'degree' && kind !== "'" && kind !== 'raised') return base;
     if (kind === '^' && reader.context.side === 'limit' && readSide(reader)) return base;
+    if (kind === '!' && asksUnequal(reader)) return base;
     if (isOpen(base, token.kind)) reader.fail('missing-bracket', ['('], outer(base));
     if (kind === '^' || kind === 'raised') {
       if (powers++ > 0) reader.fail('missing-bracket', ['('], reader.token);
@@ -26,6 +27,12 @@ export function readPower(reader: Reader): Expr {
       base = { kind: 'call', name: 'degrees', args: [base], span: reader.span(token.start) };
     } else base = readPrimed(reader, base, token.start);
   }
+}
+
+/** `x!=3` is displayed as a factorial and typed by some for "not equal": the author is asked. */
+function asksUnequal(reader: Reader): boolean {
+  const after = reader.peek(1);
+  return after.kind === '=' && after.start === reader.token.end && reader.choose('unequal');
 }
 
 function missingOperand(reader: Reader): never {

@@ -87,8 +87,10 @@ function readNumberSet(reader: Reader): SetExpr {
       decimals: 0,
       span: { start: sign.start, end: sign.end },
     };
-    const open = { kind: 'interval', fromClosed: false, toClosed: false, span: reader.span(start) } as const;
-    return sign.kind === '+' ? { ...open, from: zero, to: null } : { ...open, from: null, to: zero };
+    const open = { fromClosed: false, toClosed: false, span: reader.span(start) } as const;
+    return sign.kind === '+'
+      ? { kind: 'interval', from: zero, to: null, ...open }
+      : { kind: 'interval', from: null, to: zero, ...open };
   }
   return { kind: NUMBER_SETS[text] ?? 'reals', span: reader.span(start) };
 }
@@ -150,8 +152,7 @@ const CLOSING = new Set<TokenKind>([')', ']', '}', 'set)', 'floor)', 'ceil)']);
 /** `[1,2)`, `(-1,3]`, `]a,b[` or a number set at the start of a line: a bare set. */
 export function startsSet(reader: Reader): boolean {
   const { kind } = reader.token;
-  if (kind === 'set(') return reader.peek(1).kind !== 'begin';
-  if (kind === 'empty' || kind === 'number-set' || kind === ']') return true;
+  if (kind === 'set(' || kind === 'empty' || kind === 'number-set' || kind === ']') return true;
   if (kind !== '(' && kind !== '[') return false;
   let depth = 0;
   let commas = 0;

@@ -17,7 +17,8 @@ export type Choice =
   | 'evaluated'
   | 'interval'
   | 'definition'
-  | 'factorial';
+  | 'factorial'
+  | 'unequal';
 
 /** What depends on where the reader stands; kept and put back around every bracket and group. */
 export interface Context {
@@ -159,7 +160,7 @@ export class Reader {
       case '|':
         return side === 'left' || (side === '' && this.context.bars === 0 && !this.barIsScripted());
       case '[':
-        return !this.context.reversed;
+        return !this.context.reversed || side === 'left';
       case '{':
         return this.peek(1).kind !== '}';
       case 'letter':

@@ -81,6 +81,6 @@ function repeating(scanner: Scanner): string {
       period += between + scanner.rawArgument().trim();
     } else if (between !== '') scanner.fail('bad-number', start, scanner.at, ['\\dot']);
   }
-  if (!/^\d+$/.test(period)) scanner.fail('bad-number', start, scanner.at, ['\\overline{3}']);
+  if (!/^\d{1,200}$/.test(period)) scanner.fail('bad-number', start, scanner.at, ['\\overline{3}']);
   return `(${period})`;
 }

@@ -94,7 +94,7 @@ function readPhrase(scanner: Scanner): boolean {
 /** Would these letters, printed side by side, be read as a word? */
 export function hidesWord(letters: string): boolean {
   for (let from = 0; from < letters.length; from += 1) {
-    for (let to = from + 2; to <= letters.length; to += 1) {
+    for (let to = from + 2; to <= Math.min(letters.length, from + 8); to += 1) {
       const part = letters.slice(from, to);
       if (wordKind(part) || PHRASES.some((phrase) => phrase.trim() === part)) return true;
     }

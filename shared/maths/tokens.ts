@@ -71,7 +71,6 @@ function readCharacter(scanner: Scanner): void {
 const PAIRS = new Map<string, TokenKind>([
   ['<=', '<='],
   ['>=', '>='],
-  ['!=', '!='],
   [':=', ':='],
   ['**', '^'],
   ['->', 'to'],
