@@ -9,6 +9,9 @@ import { createInvitation, createJoiningService } from './features/classes/joini
 import { createMembersService } from './features/classes/members.service.ts';
 import { answersRoutes } from './features/answers/answers.routes.ts';
 import { createAnswersService } from './features/answers/answers.service.ts';
+import { derivationsRoutes } from './features/derivations/derivations.routes.ts';
+import { createDerivationsService } from './features/derivations/derivations.service.ts';
+import { createMendService } from './features/derivations/mend.service.ts';
 import { disputesRoutes } from './features/disputes/disputes.routes.ts';
 import { createDisputesService } from './features/disputes/disputes.service.ts';
 import { healthRoutes } from './features/health/health.routes.ts';
@@ -40,6 +43,10 @@ import { standingsRoutes } from './features/standings/standings.routes.ts';
 import { createStandingsService } from './features/standings/standings.service.ts';
 import { tasksRoutes } from './features/tasks/tasks.routes.ts';
 import { createTasksService } from './features/tasks/tasks.service.ts';
+import { CHECKER_VERSION } from './features/verdicts/checker-version.ts';
+import { verdictsJobs } from './features/verdicts/verdicts.jobs.ts';
+import { verdictsRoutes } from './features/verdicts/verdicts.routes.ts';
+import { createVerdictsService } from './features/verdicts/verdicts.service.ts';
 import { readLine } from '../shared/maths/read.ts';
 import { isWithinOneTerm } from '../shared/lib/within-one-term.ts';
 import type { UniqueConflicts } from './http/problems.ts';
@@ -85,11 +92,13 @@ export function composeServices(platform: Platform): Composed {
   const mail = createMailService({ db, now, queue, mailer, baseUrl: config.baseUrl, secret: config.secret });
   const people = composePeople(platform, mail.queueMail);
   const reviewing = composeReviewing(platform, mail.queueMail);
+  const writing = composeWriting(platform);
   const rounds = composeRounds(platform, mail.queueMail, reviewing.settling);
   return {
     routes: [
       ...people.routes,
       ...reviewing.routes,
+      ...writing.routes,
       ...rounds.routes,
       ...healthRoutes({ pingDatabase: () => db.query('select 1'), workersHealthy: () => platform.checks.healthy() }),
       ...mailRoutes(mail),
@@ -98,6 +107,7 @@ export function composeServices(platform: Platform): Composed {
     jobs: [
       ...people.jobs,
       ...reviewing.jobs,
+      ...writing.jobs,
       ...rounds.jobs,
       ...mailJobs(mail),
       job({ name: 'sweep-rate-limits', data: z.object({}), cron: '17 3 * * *', handle: () => rateLimiter.sweep() }),
@@ -173,6 +183,18 @@ function composeReviewing({ db, now }: Platform, queueMail: QueueMail) {
       ...standingsRoutes(standings),
     ],
     jobs: standingsJobs(standings),
+  };
+}
+
+/** Sheets, what is handed in, its verdicts, and mends. */
+function composeWriting({ db, now, queue, checks }: Platform) {
+  const verdicts = createVerdictsService({ db, now, queue, check: checks.check, checkerVersion: CHECKER_VERSION });
+  const { queueCheck, currentVerdict } = verdicts;
+  const sheets = createDerivationsService({ db, now, queueCheck });
+  const mends = createMendService({ db, now, queueCheck, currentVerdict });
+  return {
+    routes: [...verdictsRoutes(verdicts), ...derivationsRoutes(sheets, mends)],
+    jobs: verdictsJobs(verdicts),
   };
 }
 

@@ -18,6 +18,7 @@ const INSIDE: readonly PageRoute[] = [
   { path: '/account', load: () => import('./pages/account.tsx') },
   { path: '/classes', load: () => import('./pages/classes.tsx') },
   { path: '/classes/:classId', load: () => import('./pages/class.tsx') },
+  { path: '/rounds/:roundId/write', load: () => import('./pages/write.tsx') },
   { path: '/admin', load: () => import('./pages/admin.tsx') },
   { path: '/help', load: () => import('./pages/help.tsx') },
 ];

@@ -15,7 +15,7 @@ export interface VerdictsDeps {
   readonly now: Now;
   readonly queue: Pick<Queue, 'enqueueInTransaction'>;
   /** Checks in a worker, within its limits. */
-  readonly check: (input: DerivationInput) => Promise<Verdict>;
+  readonly check: (input: DerivationInput) => Promise<Verdict & { readonly ms: number }>;
   /** Names the rules that a verdict was found by. */
   readonly checkerVersion: string;
 }
@@ -43,7 +43,7 @@ export function createVerdictsService({ db, now, queue, check, checkerVersion }:
 
     /** Checks without keeping anything. */
     async checkNow(input: DerivationInput): Promise<Verdict> {
-      return await check(input);
+      return toVerdict(await check(input));
     },
 
     /** A teacher's model derivation on a task that may not be saved yet. */
@@ -61,9 +61,7 @@ export function createVerdictsService({ db, now, queue, check, checkerVersion }:
       const input = await findInput(db.manager, versionId);
       // A version whose round has been deleted in the meantime needs no verdict.
       if (!input || (await isChecked(db.manager, versionId, checkerVersion))) return;
-      const startedAt = performance.now();
       const verdict = await check(input);
-      const ms = performance.now() - startedAt;
       await db.transaction(async (manager) => {
         // Two runs of one job at once would both have found nothing: the row's lock lets one of them write.
         await manager.findOne(DerivationVersion, { where: { id: versionId }, lock: { mode: 'pessimistic_write' } });
@@ -76,12 +74,16 @@ export function createVerdictsService({ db, now, queue, check, checkerVersion }:
           firstFault: verdict.firstFault,
           steps: verdict.steps as object[],
           checkerVersion,
-          ms,
+          ms: verdict.ms,
           createdAt: now(),
         });
       });
     },
   };
+}
+
+function toVerdict({ outcome, firstFault, steps }: Verdict): Verdict {
+  return { outcome, firstFault, steps };
 }
 
 async function isChecked(manager: EntityManager, versionId: string, checkerVersion: string): Promise<boolean> {

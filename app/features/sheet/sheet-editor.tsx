@@ -1,7 +1,6 @@
 import { EditorContent, useEditor, type Editor, type JSONContent } from '@tiptap/react';
 import StarterKit from '@tiptap/starter-kit';
 import { useEffect, useMemo, useState } from 'react';
-import type { ReadSettings } from '../../../shared/maths/expression.ts';
 import { EMPTY_SHEET, type HandedInLine, type SheetDocument } from '../../../shared/schemas/sheet.ts';
 import { Button } from '../../ui/button.tsx';
 import { Kbd } from '../../ui/kbd.tsx';
@@ -11,7 +10,13 @@ import { LineAnnouncer } from './line-announcer.tsx';
 import { LineTools } from './line-tools.tsx';
 import { atEnd, findStep, insertWords, nextLine, stepAttributes } from './sheet-commands.ts';
 import { run } from './sheet-keys.ts';
-import { createSheetStore, SheetStoreProvider, useSheetFacts, type SheetStore } from './sheet-store.ts';
+import {
+  createSheetStore,
+  SheetStoreProvider,
+  useSheetFacts,
+  type LineSettings,
+  type SheetStore,
+} from './sheet-store.ts';
 import { newStepId } from './step-id.ts';
 import { StepNode } from './step-node.ts';
 import './sheet.css';
@@ -21,7 +26,6 @@ export interface SheetEditorProps {
   readonly document: SheetDocument;
   /** The given, and for a mend the lines before the fault. */
   readonly fixed: readonly HandedInLine[];
-  readonly settings: ReadSettings;
   readonly editable: boolean;
   readonly store: SheetStore;
   readonly onChange: (document: SheetDocument) => void;
@@ -59,7 +63,7 @@ export function toWritable(document: SheetDocument): SheetDocument {
 }
 
 /** The store that a sheet's lines read their facts from; one for each sheet. */
-export function useNewSheetStore(settings: ReadSettings, fixed: readonly HandedInLine[]): SheetStore {
+export function useNewSheetStore(settings: LineSettings, fixed: readonly HandedInLine[]): SheetStore {
   const [store] = useState(() =>
     createSheetStore(
       settings,

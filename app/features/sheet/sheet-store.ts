@@ -3,6 +3,7 @@ import { NodeSelection, type EditorState } from '@tiptap/pm/state';
 import { createContext, useContext, useSyncExternalStore } from 'react';
 import type { Reading, ReadSettings } from '../../../shared/maths/expression.ts';
 import { readLine } from '../../../shared/maths/read.ts';
+import { introducedBy } from './read-lines.ts';
 import { LINE_PART, placesOf, stepAttributes, type LinePart } from './sheet-commands.ts';
 
 /** What a line shows beside its own attributes; the same object as long as nothing of it changes. */
@@ -29,8 +30,10 @@ export interface SheetFacts {
   readonly written: number;
 }
 
+export type LineSettings = Omit<ReadSettings, 'functions'>;
+
 export interface SheetStore {
-  readonly settings: ReadSettings;
+  readonly settings: LineSettings;
   readonly facts: SheetFacts;
   follow(editor: Editor): () => void;
   subscribe(listener: () => void): () => void;
@@ -42,7 +45,7 @@ const NONE: SheetFacts = { lines: new Map(), activeId: null, numbers: new Map(),
  * What the lines show, derived from the editor's state after every change. Only lines whose facts change are drawn
  * again, so that a long sheet stays as quick as a short one. `fixed`: how many lines stand before the first.
  */
-export function createSheetStore(settings: ReadSettings, fixed: readonly string[]): SheetStore {
+export function createSheetStore(settings: LineSettings, fixed: readonly string[]): SheetStore {
   const listeners = new Set<() => void>();
   const readings = new Map<string, Reading>();
   let facts = NONE;
@@ -103,7 +106,7 @@ function factsOf(
   read: Read,
 ): SheetFacts {
   const functions = new Set<string>();
-  for (const tex of fixed) introduce(read(tex, [...functions]), functions);
+  for (const tex of fixed) for (const name of introducedBy(read(tex, [...functions]))) functions.add(name);
   const lines = new Map<string, LineFacts>();
   const numbers = new Map<string, number>([['given', 0]]);
   const unread: number[] = [];
@@ -120,7 +123,7 @@ function factsOf(
     const reading = tex.trim() === '' ? null : read(tex, [...functions]);
     if (reading) {
       written += 1;
-      introduce(reading, functions);
+      for (const name of introducedBy(reading)) functions.add(name);
       if (!reading.ok) unread.push(number);
       else if (reading.alternatives.length > 0) twoWays.push(number);
     }
@@ -142,12 +145,6 @@ function usesOf(uses: readonly string[] | null, above: ReadonlyMap<string, numbe
   if (!uses) return null;
   const named = uses.flatMap((id) => above.get(id) ?? []).sort((one, other) => one - other);
   return named.length === 0 ? null : named;
-}
-
-/** Letters that a line introduces as functions; later lines read them so. */
-function introduce(reading: Reading, functions: Set<string>): void {
-  if (reading.ok && reading.line.kind === 'definition' && reading.line.params.length > 0)
-    functions.add(reading.line.name);
 }
 
 function sameLineFacts(one: LineFacts, other: LineFacts): boolean {

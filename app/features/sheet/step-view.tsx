@@ -1,15 +1,17 @@
 import { NodeViewWrapper, type NodeViewProps } from '@tiptap/react';
-import { memo, useEffect, useId, useRef, type KeyboardEvent } from 'react';
+import { memo, useEffect, useId, useRef, useState, type KeyboardEvent, type RefObject } from 'react';
 import { EdgeColumn } from '../../ui/edge-pieces.tsx';
 import type { EdgeRow } from '../../ui/edge-strokes.ts';
 import { Maths } from '../../ui/maths.tsx';
+import { MathsFieldKeys } from '../../ui/maths-field-keys.tsx';
+import { MathsReading } from '../../ui/maths-reading.tsx';
 import { MathsField, type MathsFieldHandle } from '../../ui/maths-field.tsx';
-import { LineNotes } from './line-notes.tsx';
 import { pasteInto } from './paste-steps.ts';
 import { deleteBlock, enterLine, leaveLine, nextLine, stepAttributes, writeStep } from './sheet-commands.ts';
 import { pressKey, run } from './sheet-keys.ts';
 import { useLineFacts, useSheetStore, type LineFacts } from './sheet-store.ts';
 import type { StepOptions } from './step-node.ts';
+import { useSettled } from './use-settled.ts';
 
 const PLAIN: EdgeRow = {
   step: { above: 'plain', knot: null, below: 'plain' },
@@ -26,8 +28,11 @@ export const StepView = memo(function StepView({ editor, node, extension }: Node
   const facts = useLineFacts(stepId);
   const { settings } = useSheetStore();
   const notesId = useId();
+  const field = useRef<MathsFieldHandle>(null);
+  const [isInHand, setInHand] = useState(false);
   const number = facts?.number ?? 0;
   const isLive = editor.isEditable && facts?.part != null && facts.part !== 'reason';
+  const isSettled = useSettled(tex, isLive && isInHand);
   const write = (next: string) => run(editor, writeStep(stepId, { tex: next }));
   const beforeNumber = wordBefore(facts);
   return (
@@ -40,7 +45,7 @@ export const StepView = memo(function StepView({ editor, node, extension }: Node
       <EdgeColumn row={PLAIN} />
       <div className={isLive ? 'mx sheet-live' : 'mx'}>
         {isLive && facts ? (
-          <LiveLine {...{ editor, tex, facts, above, notesId }} decimal={settings.decimal} write={write} />
+          <LiveLine {...{ editor, tex, facts, above, notesId, field, setInHand, write }} decimal={settings.decimal} />
         ) : (
           <WrittenLine tex={tex} facts={facts} />
         )}
@@ -51,14 +56,9 @@ export const StepView = memo(function StepView({ editor, node, extension }: Node
         )}
       </div>
       <div className="under">
-        {facts?.reading ? (
-          <LineNotes
-            id={notesId}
-            reading={facts.reading}
-            decimal={settings.decimal}
-            onChange={write}
-            {...{ stepId, tex }}
-          />
+        {isLive && isInHand ? <MathsFieldKeys onPress={(piece) => field.current?.insert(piece)} /> : null}
+        {facts?.reading && isSettled ? (
+          <MathsReading id={notesId} tex={tex} reading={facts.reading} decimal={settings.decimal} onChange={write} />
         ) : null}
         {facts?.uses ? <p className="small muted">{usesWords(facts.uses)}</p> : null}
         {isLive && tex === '' ? <p className="small muted">Enter once more copies the line above.</p> : null}
@@ -75,13 +75,14 @@ interface LiveLineProps {
   readonly above: string;
   readonly notesId: string;
   readonly decimal: 'point' | 'comma';
+  readonly field: RefObject<MathsFieldHandle | null>;
+  readonly setInHand: (isInHand: boolean) => void;
   readonly write: (tex: string) => void;
 }
 
-function LiveLine({ editor, tex, facts, above, notesId, decimal, write }: LiveLineProps) {
-  const field = useRef<MathsFieldHandle>(null);
+function LiveLine({ editor, tex, facts, above, notesId, decimal, field, setInHand, write }: LiveLineProps) {
   const { sent } = facts;
-  useEffect(() => field.current?.focus(), [sent]);
+  useEffect(() => field.current?.focus(), [field, sent]);
   const onKeyDownCapture = (event: KeyboardEvent) => {
     const isDelete = event.key === 'Backspace' && tex === '' && !event.ctrlKey && !event.metaKey && !event.altKey;
     if (isDelete) run(editor, deleteBlock);
@@ -108,7 +109,8 @@ function LiveLine({ editor, tex, facts, above, notesId, decimal, write }: LiveLi
         decimal={decimal}
         focusOnMount
         caret={facts.part === 'start' ? 'start' : 'end'}
-        keys
+        onFocus={() => setInHand(true)}
+        onBlur={() => setInHand(false)}
         onEnter={() => run(editor, nextLine)}
         onMoveOut={(direction) => run(editor, leaveLine(direction))}
       />
@@ -116,13 +118,18 @@ function LiveLine({ editor, tex, facts, above, notesId, decimal, write }: LiveLi
   );
 }
 
+const GAP_LENGTH = '{\\phantom{x}}'.length;
+
 /** The line as it will look; what could not be read is ruled twice. */
 function WrittenLine({ tex, facts }: { readonly tex: string; readonly facts: LineFacts | null }) {
   if (tex.trim() === '') return <span className="sheet-empty">nothing yet</span>;
   const reading = facts?.reading;
   if (!reading || reading.ok) return <Maths tex={tex} display />;
   const { start, end } = reading.error.span;
-  return <Maths tex={tex} display spans={[{ start, end: Math.max(end, start + 1), as: 'bad' }]} />;
+  if (start < end) return <Maths tex={tex} display spans={[{ start, end, as: 'bad' }]} />;
+  // What is missing has no width: a gap stands for it.
+  const shown = `${tex.slice(0, start)}{\\phantom{x}}${tex.slice(start)}`;
+  return <Maths tex={shown} display spans={[{ start, end: start + GAP_LENGTH, as: 'bad' }]} />;
 }
 
 interface ReasonProps {
