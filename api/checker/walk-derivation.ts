@@ -17,6 +17,7 @@ export interface Route {
   readonly read: ReadDerivation;
   readonly givenLetters: readonly string[];
   readonly unknown: string | null;
+  readonly given: Statement | null;
 }
 
 /** What a derivation has come to know before a step. */
@@ -28,6 +29,7 @@ export interface WalkState {
   readonly isReadable: boolean;
   readonly reference: Statement | null;
   readonly known: readonly Statement[];
+  readonly afterFault: boolean;
   readonly assumptions: readonly Line[];
   readonly definitions: Definitions;
   /** Values that a step listed though they do not satisfy the reference. */
@@ -41,6 +43,7 @@ export function planRoute(input: DerivationInput, read: ReadDerivation): Route {
     read,
     givenLetters: first?.ok ? [...lettersOf(first.line)] : [],
     unknown: findUnknown(input, read),
+    given: first?.ok ? toStatement(first.line) : null,
   };
 }
 
@@ -65,6 +68,7 @@ export function startWalk(route: Route): WalkState {
     isReadable: true,
     reference: null,
     known: [],
+    afterFault: false,
     assumptions: read.assumptions,
     definitions: { letters: new Map(), functions: new Map() },
     candidates: [],
@@ -139,9 +143,11 @@ function attempt(
       line,
       from,
       reference: state.reference,
-      known: state.known,
+      known: route.input.uses?.[step]?.length && from?.kind === 'statement' ? [from.statement] : state.known,
       givenLetters: route.givenLetters,
       unknown: route.unknown,
+      given: route.given,
+      afterFault: state.afterFault,
       isLast: step === route.read.lines.length - 1,
       settings: route.input.settings,
       context,
@@ -168,7 +174,10 @@ function advance(route: Route, state: WalkState, step: number, answer: StepAnswe
     definitions: answer.defines ?? state.definitions,
     candidates: answer.candidates.length > 0 ? [...state.candidates, { step, values: answer.candidates }] : state.candidates,
   };
-  if (result.ruling !== 'holds') return startAgain({ ...moved, assumptions: route.read.assumptions }, meaning ?? state.from);
+  if (result.ruling !== 'holds') {
+    const afterFault = state.afterFault || result.ruling === 'fails';
+    return startAgain({ ...moved, afterFault, assumptions: route.read.assumptions }, meaning ?? state.from);
+  }
   const known = meaning?.kind === 'statement' ? [...state.known, meaning.statement] : state.known;
   const reference = state.reference ?? (meaning?.kind === 'statement' ? meaning.statement : null);
   return { ...moved, known, reference, assumptions: [...state.assumptions, ...answer.shrunk] };

@@ -21,6 +21,9 @@ export interface StatementQuestion {
   /** The letter that the derivation is about, where settings or a later line name it. */
   readonly unknown: string | null;
   readonly isLast: boolean;
+  /** The line that the task gave, and whether a step before this one failed. */
+  readonly given: Statement | null;
+  readonly afterFault: boolean;
   readonly settings: CheckSettings;
   readonly context: CheckContext;
 }
@@ -35,7 +38,7 @@ export function judgeStatements(question: StatementQuestion): StatementAnswer {
   const families = findFamilies(question);
   const letters = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter((n) => !families.has(n));
   if (context.numbers === 'complex') return withoutCandidates(judgeComplexStep(question, letters));
-  if (isSystem(question, letters)) return withoutCandidates(judgeSystemStep(question));
+  if (isSystem(question)) return withoutCandidates(judgeSystemStep(question));
   const letter = letters.length === 1 ? (letters[0] as string) : chooseUnknown(question, letters);
   if (letter === null) return withoutCandidates(judgeSameEquation(above, below, context) ?? undecided('no-unknown'));
   const shared = { above, below, letter, reference: question.reference, families, settings: question.settings, context };

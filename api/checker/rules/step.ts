@@ -21,6 +21,8 @@ export interface StepQuestion {
   readonly givenLetters: readonly string[];
   readonly unknown: string | null;
   readonly isLast: boolean;
+  readonly given: Statement | null;
+  readonly afterFault: boolean;
   readonly settings: CheckSettings;
   readonly context: CheckContext;
 }
@@ -106,6 +108,8 @@ function judgeFromStatement(meaning: Extract<Meaning, { kind: 'statement' }>, ab
     givenLetters: question.givenLetters,
     unknown: question.unknown,
     isLast: question.isLast,
+    given: question.given,
+    afterFault: question.afterFault,
     settings: question.settings,
     context: question.context,
   });

@@ -1,17 +1,152 @@
-import { comparesOf, type Statement } from '../statements/statement.ts';
+import type { CheckContext } from '../context.ts';
+import { compareExpressions } from '../compare/compare-expressions.ts';
+import { printExpr } from '../../../shared/maths/print.ts';
+import { rational } from '../numbers/rational.ts';
+import { nameNumber } from '../solving/naming.ts';
+import { constantNumber } from '../statements/solve.ts';
+import { Unsettled } from '../solving/unsettled.ts';
+import { comparesOf, type CompareStatement, type Statement } from '../statements/statement.ts';
+import { numberExpr } from './build-expr.ts';
+import { freeLetters } from './meaning.ts';
+import { isTrueStatement, solveSystem, substituteIn, type Solution } from './solve-system.ts';
 import type { StatementQuestion } from './statement-step.ts';
-import { undecided, type StepResult } from './step-result.ts';
+import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
 /** Whether the step is about several equations that hold together for several letters. */
-export function isSystem({ above, below, known }: StatementQuestion, letters: readonly string[]): boolean {
-  if (letters.length < 2) return known.some((statement) => isJoint(statement));
-  return [above, below, ...known].some(isJoint);
+export function isSystem({ above, below, known, context }: StatementQuestion): boolean {
+  return [above, below, ...known].some((statement) => isJoint(statement, context));
 }
 
-function isJoint(statement: Statement): boolean {
-  return statement.kind === 'all' && comparesOf(statement).filter((compare) => compare.sign === '=').length > 1;
+function isJoint(statement: Statement, context: CheckContext): boolean {
+  if (statement.kind === 'any') return statement.parts.some((part) => isJoint(part, context));
+  if (statement.kind !== 'all') return false;
+  const equations = comparesOf(statement).filter((compare) => compare.sign === '=');
+  return equations.length > 1 && new Set(equations.flatMap((equation) => freeLetters(equation, context))).size > 1;
 }
 
-export function judgeSystemStep(_question: StatementQuestion): StepResult {
-  return undecided('not-covered');
+/** Rule 6a: a line holds when every solution of what is known satisfies it; values listed are solutions, all of them. */
+export function judgeSystemStep(question: StatementQuestion): StepResult {
+  const { below, context, known } = question;
+  const first = judgeKnown(known, below, context);
+  if (first.ruling !== 'fails' || !question.afterFault || !question.given) return first;
+  // After a fault the author goes on from the wrong line, and still has the given.
+  const wider = judgeKnown([...known, question.given], below, context);
+  return wider.ruling === 'holds' ? wider : undecided('not-settled');
+}
+
+function judgeKnown(known: readonly Statement[], below: Statement, context: CheckContext): StepResult {
+  const solutions = branchesOf({ kind: 'all', parts: known }).flatMap((branch) => solveSystem(branch, context));
+  if (below.kind === 'never') return solutions.length === 0 ? holds('proved') : failAt(solutions[0] as Solution, context, 'lost');
+  if (solutions.length === 0) return undecided('not-settled', ['empty']);
+  let sampled = false;
+  for (const solution of solutions) {
+    const truth = isTrueOn(solution, below, context);
+    if (truth === null) return undecided('not-settled');
+    if (truth !== true && truth !== 'sampled') return failAt(truth, context, 'lost');
+    sampled ||= truth === 'sampled';
+  }
+  const extra = listedPoints(below, context).find((point) => !satisfies(known, point, context));
+  if (extra) return failAt(extra, context, 'gained');
+  return holds(sampled ? 'sampled' : 'proved', [], solutionsEvidence(solutions, context));
+}
+
+/** Each way to choose one case of every "or": lists of equations that hold together. */
+function branchesOf(statement: Statement): CompareStatement[][] {
+  switch (statement.kind) {
+    case 'compare':
+      return statement.sign === '=' ? [[statement]] : [[]];
+    case 'all':
+      return statement.parts.reduce<CompareStatement[][]>((branches, part) => {
+        const next = branchesOf(part);
+        const joined = branches.flatMap((branch) => next.map((more) => [...branch, ...more]));
+        if (joined.length > 16) throw new Unsettled('limit');
+        return joined;
+      }, [[]]);
+    case 'any':
+      return statement.parts.flatMap(branchesOf);
+    case 'always':
+      return [[]];
+    default:
+      throw new Unsettled('not-covered');
+  }
+}
+
+/** true or 'sampled' where the statement holds on the solution, a point of it where it does not, null where unknown. */
+function isTrueOn(solution: Solution, below: Statement, context: CheckContext): true | 'sampled' | Solution | null {
+  const put = substituteIn(below, solution);
+  const letters = freeLetters(put, context);
+  if (letters.length === 0) {
+    const truth = isTrueStatement(put, context);
+    return truth === false ? solution : truth;
+  }
+  const identity = isIdentity(put, context);
+  if (identity !== null) return identity;
+  for (const [p, q] of [[1, 2], [2, 5], [3, 1], [0, 7]] as const) {
+    const free = new Map(letters.map((name, k) => [name, numberExpr(rational(k === 0 ? p : q + k))] as const));
+    const at = new Map([...[...solution].map(([name, expr]) => [name, substituteExpr(expr, free)] as const), ...free]);
+    if (isTrueStatement(substituteIn(below, at), context) === false) return at;
+  }
+  return null;
+}
+
+function substituteExpr(expr: CompareStatement['left'], values: Solution): CompareStatement['left'] {
+  return (substituteIn({ kind: 'compare', left: expr, sign: '=', right: expr }, values) as CompareStatement).left;
+}
+
+function isIdentity(statement: Statement, context: CheckContext): true | 'sampled' | null {
+  if (statement.kind === 'compare' && statement.sign === '=') {
+    const found = compareExpressions(statement.left, statement.right, context);
+    if (found.kind !== 'equal') return null;
+    return found.reached === 'proved' ? true : 'sampled';
+  }
+  if (statement.kind === 'all') {
+    const parts = statement.parts.map((part) => isIdentity(part, context));
+    if (parts.includes(null)) return null;
+    return parts.includes('sampled') ? 'sampled' : true;
+  }
+  return statement.kind === 'any' ? (statement.parts.map((part) => isIdentity(part, context)).find(Boolean) ?? null) : null;
+}
+
+/** The points that a line lists outright: letter = number for several letters, joined by and, cases by or. */
+function listedPoints(statement: Statement, context: CheckContext): Solution[] {
+  if (statement.kind === 'any') return statement.parts.flatMap((part) => listedPoints(part, context));
+  if (statement.kind !== 'all') return [];
+  const values = new Map<string, CompareStatement['right']>();
+  for (const part of statement.parts) {
+    if (part.kind !== 'compare' || part.sign !== '=' || part.left.kind !== 'letter') return [];
+    if (freeLetters({ ...part, left: part.right }, context).length > 0) return [];
+    values.set(part.left.name, part.right);
+  }
+  return [values];
+}
+
+function satisfies(known: readonly Statement[], point: Solution, context: CheckContext): boolean {
+  const put = substituteIn({ kind: 'all', parts: known }, point);
+  if (freeLetters(put, context).length > 0) return true;
+  return isTrueStatement(put, context) !== false;
+}
+
+function failAt(point: Solution, context: CheckContext, side: 'lost' | 'gained'): StepResult {
+  const at: Record<string, string> = {};
+  for (const [name, expr] of point) at[name] = nameValue(expr, context);
+  const [above, below] = side === 'lost' ? ['true', 'false'] : ['false', 'true'];
+  const named = Object.entries(at).map(([name, value]) => `${name}=${value}`).join(',\\ ');
+  return fails('proved', { [side]: [named], witness: { at, above, below } });
+}
+
+function nameValue(expr: CompareStatement['left'], context: CheckContext): string {
+  if (freeLetters({ kind: 'compare', left: expr, sign: '=', right: expr }, context).length > 0) return printExpr(expr);
+  const env = { letter: '', given: new Map(), context, window: null, hints: [], families: new Set<string>() };
+  return nameNumber(constantNumber(expr, env), () => printExpr(expr));
+}
+
+function solutionsEvidence(solutions: readonly Solution[], context: CheckContext): { solutions?: string } {
+  const isPoint = (solution: Solution): boolean =>
+    [...solution.values()].every((expr) => freeLetters({ kind: 'compare', left: expr, sign: '=', right: expr }, context).length === 0);
+  if (!solutions.every(isPoint) || solutions.length > 8) return {};
+  const names = solutions.map((solution) => {
+    const letters = [...solution.keys()].sort();
+    return letters.map((name) => `${name}=${nameValue(solution.get(name) as CompareStatement['left'], context)}`).join(',\\ ');
+  });
+  return { solutions: names.join('\\text{ or }') };
 }

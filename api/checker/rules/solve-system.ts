@@ -1,0 +1,214 @@
+import type { Expr } from '../../../shared/maths/expression.ts';
+import { mapExpr } from '../../../shared/maths/walk.ts';
+import type { CheckContext } from '../context.ts';
+import { rational, type Rational } from '../numbers/rational.ts';
+import { toFraction } from '../solving/fraction.ts';
+import { degreeIn } from '../solving/linear.ts';
+import type { RealNumber } from '../solving/real-number.ts';
+import { isEmptySet, isFiniteSet, isWholeLine } from '../solving/real-set.ts';
+import { quadraticRoots, toSurd } from '../solving/surd.ts';
+import { approximate } from '../solving/real-number.ts';
+import { Unsettled } from '../solving/unsettled.ts';
+import { differenceGraph, solveStatement, type SolveEnv } from '../statements/solve.ts';
+import type { CompareStatement, Statement } from '../statements/statement.ts';
+import { differenceExpr, minusExpr, numberExpr, powerExpr, productExpr, quotientExpr, sumExpr } from './build-expr.ts';
+import { freeLetters } from './meaning.ts';
+
+/** What each letter is worth, by letters that stay free; letters that are not named are free themselves. */
+export type Solution = ReadonlyMap<string, Expr>;
+
+const mostSolutions = 32;
+
+/** Puts expressions in the place of letters. */
+export function substitute(expr: Expr, values: Solution): Expr {
+  if (values.size === 0) return expr;
+  return mapExpr(expr, (node) => (node.kind === 'letter' ? (values.get(node.name) ?? node) : node));
+}
+
+export function substituteIn(statement: Statement, values: Solution): Statement {
+  switch (statement.kind) {
+    case 'compare':
+      return { ...statement, left: substitute(statement.left, values), right: substitute(statement.right, values) };
+    case 'all':
+    case 'any':
+      return { ...statement, parts: statement.parts.map((part) => substituteIn(part, values)) };
+    default:
+      return statement;
+  }
+}
+
+/** Whether a statement without letters is true; null where that cannot be told. */
+export function isTrueStatement(statement: Statement, context: CheckContext): boolean | null {
+  const truth = solveStatement(statement, envFor('', context));
+  if (isWholeLine(truth)) return true;
+  return isEmptySet(truth) ? false : null;
+}
+
+function envFor(letter: string, context: CheckContext): SolveEnv {
+  return { letter, given: new Map(), context, window: null, hints: [], families: new Set() };
+}
+
+/** All that satisfies several equations together; throws Unsettled where elimination does not get there. */
+export function solveSystem(equations: readonly CompareStatement[], context: CheckContext): Solution[] {
+  const found = eliminate(equations, new Map(), context, 0);
+  const solutions = found.filter((solution) => isSolution(equations, solution, context));
+  if (solutions.length > mostSolutions) throw new Unsettled('limit');
+  return solutions;
+}
+
+function isSolution(equations: readonly CompareStatement[], solution: Solution, context: CheckContext): boolean {
+  return equations.every((equation) => {
+    const put = substituteIn(equation, solution);
+    if (freeLetters(put, context).length > 0) return true;
+    const truth = isTrueStatement(put, context);
+    if (truth === null) throw new Unsettled('not-settled');
+    return truth;
+  });
+}
+
+function eliminate(equations: readonly CompareStatement[], values: Solution, context: CheckContext, depth: number): Solution[] {
+  if (depth > 12) throw new Unsettled('limit');
+  context.budget.spend(500);
+  const open: { equation: CompareStatement; letters: string[] }[] = [];
+  for (const equation of equations) {
+    const letters = freeLetters(equation, context);
+    if (letters.length > 0) open.push({ equation, letters });
+    else if (isTrueStatement(equation, context) === false) return [];
+  }
+  if (open.length === 0) return [values];
+  const single = open.find(({ letters }) => letters.length === 1);
+  if (single) return fromOneLetter(single.equation, single.letters[0] as string, open.map((o) => o.equation), values, context, depth);
+  const way = open.flatMap(({ equation, letters }) => letters.flatMap((letter) => waysOut(equation, letter, context)));
+  const best = way.find((w) => w.slope !== null) ?? way[0];
+  if (!best) return eliminate(combine(open.map((o) => o.equation), context), values, context, depth + 1);
+  return fromLinear(best, open.map((o) => o.equation), values, context, depth);
+}
+
+function fromOneLetter(
+  equation: CompareStatement,
+  letter: string,
+  equations: readonly CompareStatement[],
+  values: Solution,
+  context: CheckContext,
+  depth: number,
+): Solution[] {
+  const set = solveStatement(equation, envFor(letter, context));
+  const rest = equations.filter((other) => other !== equation);
+  if (isWholeLine(set)) return eliminate(rest, values, context, depth + 1);
+  if (!isFiniteSet(set)) throw new Unsettled('not-covered');
+  return set.points.flatMap((point) => bind(letter, toExpr(point), rest, values, context, depth));
+}
+
+function bind(letter: string, value: Expr, rest: readonly CompareStatement[], values: Solution, context: CheckContext, depth: number): Solution[] {
+  const one = new Map([[letter, value]]);
+  const next = new Map([...values].map(([name, expr]) => [name, substitute(expr, one)] as const));
+  next.set(letter, value);
+  return eliminate(rest.map((equation) => substituteIn(equation, one) as CompareStatement), next, context, depth + 1);
+}
+
+/** A number as an expression: a fraction, a surd or what the author wrote. */
+function toExpr(point: RealNumber): Expr {
+  if (point.kind === 'rational') return numberExpr(point.value);
+  if (point.kind === 'computed') {
+    if (point.expr) return point.expr;
+    throw new Unsettled('not-covered');
+  }
+  const [c0, c1, c2] = point.polynomial;
+  const roots = point.polynomial.length === 3 ? quadraticRoots(c0 ?? 0n, c1 ?? 0n, c2 ?? 1n) : null;
+  if (!roots) throw new Unsettled('not-covered');
+  const surd = roots[approximate(point) > -Number(c1) / (2 * Number(c2)) ? 1 : 0];
+  const root = powerExpr(numberExpr(rational(surd.radicand)), rational(1, 2));
+  return sumExpr([numberExpr(surd.whole), productExpr([numberExpr(surd.part), root])]);
+}
+
+/** An equation that is linear in a letter: slope * letter + offset = 0; the number is null where the slope has letters. */
+interface WayOut {
+  readonly equation: CompareStatement;
+  readonly letter: string;
+  readonly slopeExpr: Expr;
+  readonly offset: Expr;
+  readonly slope: Rational | null;
+}
+
+function waysOut(equation: CompareStatement, letter: string, context: CheckContext): WayOut[] {
+  const graph = differenceGraph(equation.left, equation.right, envFor(letter, context));
+  const f = differenceExpr(equation.left, equation.right);
+  if (degreeIn(graph, letter) !== 1) return [];
+  const at = (value: number): Expr => substitute(f, new Map([[letter, numberExpr(rational(value))]]));
+  const slopeExpr = differenceExpr(at(1), at(0));
+  return [{ equation, letter, slopeExpr, offset: at(0), slope: constantSlope(slopeExpr, context) }];
+}
+
+function constantSlope(slope: Expr, context: CheckContext): Rational | null {
+  const env = envFor('', context);
+  const zero = numberExpr(rational(0));
+  const names = freeLetters({ kind: 'compare', left: slope, sign: '=', right: zero }, context);
+  const graph = differenceGraph(slope, zero, env);
+  const values = [2, 5, 11].map((base) => {
+    const given = new Map(names.map((name, k) => [name, rational(base + 3 * k, 1 + k)] as const));
+    const fraction = toFraction(graph, '', given);
+    if (fraction) return rational(fraction.num[0] ?? 0n, fraction.den[0] ?? 1n);
+    const surd = toSurd(graph, given);
+    return surd?.radicand === 1n ? surd.whole : null;
+  });
+  const [first] = values;
+  if (!first || first.num === 0n) return null;
+  return values.every((value) => value && value.num === first.num && value.den === first.den) ? first : null;
+}
+
+function fromLinear(way: WayOut, equations: readonly CompareStatement[], values: Solution, context: CheckContext, depth: number): Solution[] {
+  const { equation, letter, slope, slopeExpr, offset } = way;
+  const rest = equations.filter((other) => other !== equation);
+  const divisor = slope ? numberExpr(slope) : slopeExpr;
+  const solved = bind(letter, quotientExpr(minusExpr(offset), divisor), rest, values, context, depth);
+  if (slope) return solved;
+  // Where the slope is zero the letter drops out of this equation.
+  const zero = numberExpr(rational(0));
+  const equate = (left: Expr): CompareStatement => ({ kind: 'compare', left, sign: '=', right: zero });
+  return [...solved, ...eliminate([equate(slopeExpr), equate(offset), ...rest], values, context, depth + 1)];
+}
+
+/** Two equations of one degree in a letter, added so that its highest power goes away. */
+function combine(equations: readonly CompareStatement[], context: CheckContext): CompareStatement[] {
+  const [first, second, ...rest] = equations;
+  if (!first || !second) throw new Unsettled('not-covered');
+  for (const letter of freeLetters(first, context)) {
+    const [a, b] = [first, second].map((equation) => leadingIn(equation, letter, context));
+    if (!a || !b) continue;
+    const f = (equation: CompareStatement): Expr => differenceExpr(equation.left, equation.right);
+    const left = differenceExpr(productExpr([numberExpr(b), f(first)]), productExpr([numberExpr(a), f(second)]));
+    const joined: CompareStatement = { kind: 'compare', left, sign: '=', right: numberExpr(rational(0)) };
+    if (freeLetters(joined, context).length === 0) continue;
+    if (isFreeOf(joined, letter, context)) return [dropLetter(joined, letter), first, ...rest];
+  }
+  throw new Unsettled('not-covered');
+}
+
+/** The constant coefficient of the square of a letter. */
+function leadingIn(equation: CompareStatement, letter: string, context: CheckContext): Rational | null {
+  const graph = differenceGraph(equation.left, equation.right, envFor(letter, context));
+  if (degreeIn(graph, letter) !== 2) return null;
+  const names = freeLetters(equation, context).filter((name) => name !== letter);
+  const coefficients = [3, 7].map((base) => {
+    const given = new Map(names.map((name, k) => [name, rational(base + k)] as const));
+    const fraction = toFraction(graph, letter, given);
+    return fraction && fraction.num.length === 3 ? rational(fraction.num[2] ?? 0n, fraction.den[0] ?? 1n) : null;
+  });
+  const [p, q] = coefficients;
+  return p && q && p.num === q.num && p.den === q.den ? p : null;
+}
+
+/** The value does not change with the letter, tried at several places. */
+function isFreeOf(equation: CompareStatement, letter: string, context: CheckContext): boolean {
+  const graph = differenceGraph(equation.left, equation.right, envFor(letter, context));
+  const names = freeLetters(equation, context).filter((name) => name !== letter);
+  return [2, 5, 9].every((base) => {
+    const given = new Map(names.map((name, k) => [name, rational(base + k)] as const));
+    const fraction = toFraction(graph, letter, given);
+    return fraction !== null && fraction.num.length <= 1;
+  });
+}
+
+function dropLetter(equation: CompareStatement, letter: string): CompareStatement {
+  return substituteIn(equation, new Map([[letter, numberExpr(rational(0))]])) as CompareStatement;
+}
