@@ -48,7 +48,7 @@ export function createFactories(dataSource: DataSource, clock: TestClock): Facto
       const made = await save(Class, {
         name: `Class ${next()}`,
         timeZone: 'Europe/Lisbon',
-        joinCode: `JN${String(next()).padStart(8, '2')}`,
+        joinCode: `JN${String(next()).padStart(8, 'Z')}`,
         aliasTermStartsAt: clock.now(),
         ...values,
         schoolId,

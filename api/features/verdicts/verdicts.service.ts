@@ -48,12 +48,8 @@ export function createVerdictsService({ db, now, queue, check, checkerVersion }:
 
     /** A teacher's model derivation on a task that may not be saved yet. */
     async tryTask({ given, lines, ...terms }: TryTask): Promise<Verdict> {
-      return await check(
-        toCheckInput(
-          terms,
-          [given, ...lines].map((tex) => ({ tex, uses: null })),
-        ),
-      );
+      const written = [given, ...lines].map((tex) => ({ tex, uses: null }));
+      return toVerdict(await check(toCheckInput(terms, written)));
     },
 
     /** Checks a version unless this checker has done so already. */
