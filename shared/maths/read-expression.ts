@@ -114,6 +114,7 @@ export function readProduct(reader: Reader, first?: Expr): Expr {
         break;
       case '/':
       case 'div':
+      case ':':
         run.divide(token.kind === '/' ? 'slash' : 'divide');
         break;
       default:

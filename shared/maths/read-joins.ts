@@ -1,4 +1,4 @@
-import type { Expr, Line, RelationSign } from './expression.ts';
+import type { Expr, Line, RelationSign, Span } from './expression.ts';
 import { lettersOf } from './letters.ts';
 import { outer, type Reader } from './reader.ts';
 
@@ -13,17 +13,71 @@ export interface Part {
 /** Statements with their joins as one line; says what a comma means, or that it could mean two things. */
 export function joinParts(reader: Reader, parts: readonly Part[], start: number): Line {
   const [condition, rest] = splitCondition(parts);
-  const kinds = new Set(rest.slice(1).map((part) => part.join));
-  if (kinds.has('or') && kinds.has('and')) reader.fail('mixed-joins', ['('], { start, end: reader.lastEnd });
-  const spread = spreadValues(rest.map((part) => part.line));
-  const kind = kinds.has('or') ? 'any' : kinds.has('and') || rest.length === 1 ? 'all' : commaKind(reader, spread);
-  const lines = kind === 'set' ? [bareSet(reader, spread, start)] : spread;
-  const span = reader.span(start);
-  const joined: Line = lines.length === 1 ? lines[0]! : { kind: kind === 'any' ? 'any' : 'all', parts: lines, span };
+  const lines = spreadValues(rest.map((part) => part.line));
+  const spread = rest.map((part, at) => ({ line: lines[at]!, join: part.join }));
+  const joined = joinByOr(reader, spread, start);
   if (!condition) return joined;
   reader.flags.add('comma-and');
-  if (joined.kind === 'all') return { ...joined, parts: [...joined.parts, condition] };
-  return { kind: 'all', parts: [joined, condition], span };
+  return combine(reader, 'all', joined.kind === 'all' ? [...joined.parts, condition] : [joined, condition], start);
+}
+
+function combine(reader: Reader, kind: 'any' | 'all', parts: readonly Line[], start: number): Line {
+  return parts.length === 1 ? parts[0]! : { kind, parts, span: reader.span(start) };
+}
+
+/** "and" and commas hold tighter than "or", unless the letters leave it open: then the author is asked. */
+function joinByOr(reader: Reader, parts: readonly Part[], start: number): Line {
+  const groups = splitAt(parts, (join) => join === 'or');
+  if (groups.length === 1) return joinTightly(reader, parts);
+  const isOpen = parts.slice(1).some((part) => part.join === 'and') && new Set(groups.map(lettersIn)).size > 1;
+  if (isOpen && reader.choose('joins')) {
+    const wide = splitAt(parts, (join) => join !== 'or').map((group) =>
+      combine(
+        reader,
+        'any',
+        group.map((part) => part.line),
+        spanOf(group).start,
+      ),
+    );
+    return combine(reader, 'all', wide, start);
+  }
+  const lines = groups.map((group) => joinTightly(reader, group));
+  return combine(
+    reader,
+    'any',
+    lines.flatMap((line) => (line.kind === 'any' ? line.parts : [line])),
+    start,
+  );
+}
+
+function splitAt(parts: readonly Part[], splits: (join: Join) => boolean): readonly (readonly Part[])[] {
+  const groups: Part[][] = [];
+  for (const part of parts) {
+    const last = groups[groups.length - 1];
+    if (last && !splits(part.join)) last.push(part);
+    else groups.push([part]);
+  }
+  return groups;
+}
+
+function lettersIn(parts: readonly Part[]): string {
+  return [...new Set(parts.flatMap((part) => [...lettersOf(part.line)]))].sort().join(' ');
+}
+
+function spanOf(parts: readonly Part[]): Span {
+  return { start: parts[0]!.line.span.start, end: parts[parts.length - 1]!.line.span.end };
+}
+
+function joinTightly(reader: Reader, parts: readonly Part[]): Line {
+  const lines = parts.map((part) => part.line);
+  const { start } = spanOf(parts);
+  if (lines.length === 1) return lines[0]!;
+  if (parts.slice(1).some((part) => part.join === 'and')) {
+    const isOdd = lines.every((line) => isValueOf(line, lines[0]!));
+    return combine(reader, isOdd && reader.choose('comma') ? 'any' : 'all', lines, start);
+  }
+  const kind = commaKind(reader, lines);
+  return kind === 'set' ? bareSet(reader, lines, start) : combine(reader, kind, lines, start);
 }
 
 /** `.. , k in Z` at the end goes with all that stands before it. */
@@ -75,7 +129,15 @@ function commaKind(reader: Reader, lines: readonly Line[]): 'any' | 'all' | 'set
   const names = new Set(lines.map(valuedLetter));
   if (!names.has(null) && names.size === 1) return flagged(reader, isUnequal(lines[0]) ? 'all' : 'any');
   if (!names.has(null) && names.size === lines.length) return flagged(reader, 'all');
-  if (lines.some((line) => line.kind === 'expression' || line.kind === 'definition' || line.kind === 'always')) {
+  if (
+    lines.some(
+      (line) =>
+        line.kind === 'expression' ||
+        line.kind === 'definition' ||
+        line.kind === 'always' ||
+        line.kind === 'membership',
+    )
+  ) {
     return flagged(reader, 'all');
   }
   const letters = new Set(lines.flatMap((line) => [...lettersOf(line)]));
@@ -86,6 +148,12 @@ function commaKind(reader: Reader, lines: readonly Line[]): 'any' | 'all' | 'set
 function flagged(reader: Reader, kind: 'any' | 'all'): 'any' | 'all' {
   reader.flags.add(kind === 'any' ? 'comma-or' : 'comma-and');
   return kind;
+}
+
+/** `x=2 and x=3`: hardly meant as it stands. */
+function isValueOf(line: Line, first: Line): boolean {
+  const letter = valuedLetter(line);
+  return letter !== null && !isUnequal(line) && letter === valuedLetter(first);
 }
 
 /** The letter of `letter = value` (or not equal, or about), where the value does not hold it. */

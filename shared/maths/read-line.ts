@@ -94,6 +94,8 @@ function readStatement(reader: Reader): Line {
   if (sentence) return sentence;
   if (startsBlock(reader)) return readBlock(reader);
   if (startsGroup(reader)) return readGroup(reader);
+  if (startsSetBuilder(reader)) return readSetBuilder(reader);
+  if (namesSolutions(reader)) skipTwo(reader);
   if (startsSet(reader)) return readBareSet(reader);
   const name = startsDefinition(reader);
   const before = reader.functions;
@@ -102,6 +104,35 @@ function readStatement(reader: Reader): Line {
   reader.functions = before;
   const line = readRelations(reader, left, start);
   return name ? asDefinition(line) : line;
+}
+
+/** `S=\{2\}`: the set of solutions under the name that some give it. */
+function namesSolutions(reader: Reader): boolean {
+  const after = reader.peek(2).kind;
+  return (
+    'SL'.includes(reader.token.text || '-') && reader.peek(1).kind === '=' && (after === 'set(' || after === 'empty')
+  );
+}
+
+/** `\{x\in\R\mid x>2\}` says what its condition says. */
+function startsSetBuilder(reader: Reader): boolean {
+  if (!reader.is('set(') || reader.peek(1).kind !== 'letter') return false;
+  const bar = reader.peek(reader.peek(2).kind === 'in' && reader.peek(3).kind === 'number-set' ? 4 : 2).kind;
+  return bar === '|' || bar === ':';
+}
+
+function readSetBuilder(reader: Reader): Line {
+  const { start } = reader.next();
+  while (!reader.is('|') && !reader.is(':')) reader.next();
+  reader.next();
+  const line = reader.inside(readStatements);
+  reader.expect('set)', 'missing-bracket', '\\}');
+  return { ...line, span: reader.span(start) };
+}
+
+function skipTwo(reader: Reader): void {
+  reader.next();
+  reader.next();
 }
 
 /** `f(x) = ..` introduces f; a chain is left as it is. */

@@ -18,7 +18,8 @@ export type Choice =
   | 'interval'
   | 'definition'
   | 'factorial'
-  | 'unequal';
+  | 'unequal'
+  | 'joins';
 
 /** What depends on where the reader stands; kept and put back around every bracket and group. */
 export interface Context {

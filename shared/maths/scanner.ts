@@ -32,6 +32,8 @@ export class Scanner {
   side: '' | 'left' | 'right' = '';
   /** A run of four letters or more that names no function. */
   longRun = false;
+  /** Closing braces that group nothing. */
+  readonly passedOver = new Set<number>();
   readonly tokens: Token[] = [];
 
   constructor(

@@ -46,6 +46,7 @@ function readCharacter(scanner: Scanner): void {
     return scanner.push(double, pair, at);
   }
   scanner.at += 1;
+  if (char === '}' && scanner.passedOver.has(at)) return;
   if (char === '~' || char === '\u00a0' || char === '\u2009') {
     scanner.gap = true;
     return;
@@ -103,11 +104,22 @@ function readCommand(scanner: Scanner): void {
   }
   if (name === '!' || SKIPPED.has(name)) return;
   if (LETTER_STYLES.has(name)) return readStyled(scanner, name, at);
+  if (TRANSPARENT.has(name)) return openTransparent(scanner);
   if (name === 'mathbb') return pushSet(scanner, at);
   if (name === 'differentialD') return scanner.push('letter', 'd', at);
   if (name === 'not') return readNegated(scanner, at);
   if (name === 'hspace' || name === 'mspace') return void scanner.rawArgument();
   scanner.fail('unknown-command', at, scanner.at);
+}
+
+const TRANSPARENT = new Set(['boxed', 'fbox', 'cancel', 'bcancel', 'xcancel', 'underline']);
+
+/** `\boxed{..}` and `\cancel{..}` only adorn what they hold: their braces are passed over. */
+function openTransparent(scanner: Scanner): void {
+  const from = scanner.at;
+  scanner.rawArgument();
+  if (scanner.source[scanner.at - 1] === '}') scanner.passedOver.add(scanner.at - 1);
+  scanner.at = scanner.source[from] === '{' ? from + 1 : from;
 }
 
 function pushCommand(scanner: Scanner, kind: TokenKind, name: string, start: number): void {

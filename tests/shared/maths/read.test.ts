@@ -47,6 +47,11 @@ describe('reading a line', () => {
     expect(outlineOfReading('x! = 3')).toBe('(relation (factorial x) = 3)');
   });
 
+  it('looks through what only adorns', () => {
+    expect(outlineOfReading('\\frac{\\cancel{(x-2)}(x+1)}{\\cancel{(x-2)}}')).toBe('(/ (* (+x -2) (+x +1)) (+x -2))');
+    expect(outlineOfReading('\\boxed{x=3}')).toBe('(relation x = 3)');
+  });
+
   it('gives the value of each way to write a number', () => {
     expect(outlineOfReading('0.1\\overline{6}')).toBe('1/6:repeating');
     expect(outlineOfReading('0.\\dot1 4285\\dot7')).toBe('1/7:repeating');
