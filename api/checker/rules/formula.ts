@@ -109,5 +109,5 @@ function listAssignments(names: readonly string[], context: CheckContext): Assig
       if (other !== name) all.push(new Map(base).set(name, base.get(other) as Rational));
     }
   }
-  return all.filter((given) => meetsAssumptions(given, context)).slice(0, 40);
+  return all.filter((given) => meetsAssumptions(given, context)).slice(0, 24);
 }
