@@ -19,6 +19,10 @@ const INSIDE: readonly PageRoute[] = [
   { path: '/classes', load: () => import('./pages/classes.tsx') },
   { path: '/classes/:classId', load: () => import('./pages/class.tsx') },
   { path: '/rounds/:roundId/write', load: () => import('./pages/write.tsx') },
+  { path: '/reviews/:reviewId', load: () => import('./pages/review.tsx') },
+  { path: '/derivations/:derivationId', load: () => import('./pages/derivation.tsx') },
+  { path: '/disputes', load: () => import('./pages/disputes.tsx') },
+  { path: '/standings', load: () => import('./pages/standings.tsx') },
   { path: '/admin', load: () => import('./pages/admin.tsx') },
   { path: '/help', load: () => import('./pages/help.tsx') },
 ];
