@@ -194,6 +194,8 @@ export interface BoardPerson {
   readonly userId: string | null;
   readonly name: string;
   readonly state: 'stuck' | 'not-begun' | 'writing' | 'handed-in' | 'excused';
+  /** Only of what was handed in. */
+  readonly derivationId: string | null;
   /** Lines written or handed in, without the given. */
   readonly lines: number;
   readonly hasOpened: boolean;

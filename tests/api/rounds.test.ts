@@ -118,7 +118,7 @@ describe('a planned round', () => {
 
   it('changes from its current version', async () => {
     const id = await planRound();
-    const { classId: _, ...change } = { ...plan({ lateRule: 'late-batch', reviewsPerDerivation: 3 }), version: 1 };
+    const change = { ...plan({ lateRule: 'late-batch', reviewsPerDerivation: 3 }), version: 1 };
     await server.visitor().put(`/rounds/${id}`, change).expect(401);
     await student.put(`/rounds/${id}`, change).expect(403);
     await stranger.put(`/rounds/${id}`, change).expect(404);

@@ -68,7 +68,7 @@ export function createBoardService({ db, now }: BoardDeps) {
 /** Numbers instead of names, in an order that has nothing to do with the alphabet and stays the same. */
 function hideNames(board: readonly BoardPerson[], roundId: string): BoardPerson[] {
   const mixed = shuffled(board, seededRandom(`board ${roundId}`));
-  return mixed.map((person, i) => ({ ...person, userId: null, name: `Student ${i + 1}` }));
+  return mixed.map((person, i) => ({ ...person, userId: null, derivationId: null, name: `Student ${i + 1}` }));
 }
 
 function toBoardPerson(round: Round, person: RoundPerson, work: WorkRow | undefined, now: Date): BoardPerson {
@@ -77,6 +77,7 @@ function toBoardPerson(round: Round, person: RoundPerson, work: WorkRow | undefi
     userId: person.userId,
     name: person.name,
     state: toState(round, person, work, now),
+    derivationId: handedIn ? (person.derivation?.id ?? null) : null,
     lines: handedIn ? handedIn.steps : (work?.lines ?? 0),
     hasOpened: Boolean(person.derivation?.openedAt),
     savedAt: work?.saved_at?.toISOString() ?? null,
