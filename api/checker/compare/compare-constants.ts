@@ -20,7 +20,7 @@ export function compareConstants(pair: Pair, context: CheckContext): Comparison 
     }
     case 'same': {
       const exact = pair.above === pair.below || (above.kind !== 'ball' && below.kind !== 'ball');
-      if (exact || provesIdentity(pair, [], context) || provesEqualConstants(pair, context)) return equal('proved');
+      if (exact || provesIdentity(pair, context) || provesEqualConstants(pair, context)) return equal('proved');
       return confirmSampled(pair, context);
     }
     case 'above-only':
@@ -30,7 +30,7 @@ export function compareConstants(pair: Pair, context: CheckContext): Comparison 
       return { kind: 'undecided', reason: 'no-domain' };
     case 'blurred':
       // Two numbers around zero that no precision tells apart from it.
-      return provesIdentity(pair, [], context) || provesEqualConstants(pair, context) ? equal('proved') : { kind: 'undecided', reason: 'not-settled' };
+      return provesIdentity(pair, context) || provesEqualConstants(pair, context) ? equal('proved') : { kind: 'undecided', reason: 'not-settled' };
     default:
       return { kind: 'undecided', reason: result.agreement };
   }

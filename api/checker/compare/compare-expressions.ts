@@ -1,14 +1,16 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { BudgetSpent } from '../context.ts';
 import type { CheckContext } from '../context.ts';
-import { lowerAll } from '../values/lower.ts';
+import { lettersBelow } from '../values/graph.ts';
+import type { GraphBuilder, GraphNode } from '../values/graph.ts';
+import { lowerAll, lowerInto, usuallyWhole } from '../values/lower.ts';
 import { compareConstants } from './compare-constants.ts';
 import { compareFunctions } from './compare-functions.ts';
 import { compareRationals } from './compare-rationals.ts';
 import type { Comparison } from './comparison.ts';
 import { createPair } from './pair.ts';
-import type { Pair } from './pair.ts';
-import { wholeLettersOf } from './points.ts';
+import type { Fact, Pair } from './pair.ts';
+import { flattenLines, wholeLettersOf } from './points.ts';
 import { rationalOps } from './rational-identity.ts';
 
 /** Compares two expressions where both have a value, by rule 1 of the checker. Never throws for what a person wrote. */
@@ -26,11 +28,35 @@ function compareWithin(above: Expr, below: Expr, context: CheckContext): Compari
   const { builder, roots } = lowerAll([above, below], context);
   const [first, second] = roots;
   if (first === undefined || second === undefined) return { kind: 'undecided', reason: 'not-covered' };
-  const pair = createPair(builder.nodes, first, second, wholeLettersOf(context), context.numbers === 'complex');
+  const complex = context.numbers === 'complex';
+  const facts = complex ? [] : lowerFacts(builder, context);
+  const whole = new Set([...wholeLettersOf(context), ...wholeByUse(builder.nodes)]);
+  const pair = createPair(builder.nodes, first, second, whole, complex, facts);
   const missing = opaqueReason(pair);
   if (missing !== null) return { kind: 'undecided', reason: missing };
   if (pair.names.length === 0) return compareConstants(pair, context);
   return isRational(pair) ? compareRationals(pair, context) : compareFunctions(pair, context);
+}
+
+/** Letters under factorials, in binomials and in bounds of sums; n, m and k in exponents. */
+function wholeByUse(nodes: readonly GraphNode[]): string[] {
+  return nodes.flatMap((node) => {
+    if (node.op === 'pow') return [...lettersBelow(nodes, node.args[1])].filter((name) => usuallyWhole.has(name));
+    const isCounting = node.op === 'series' || (node.op === 'call' && (node.name === 'factorial' || node.name === 'binomial'));
+    return isCounting ? node.args.flatMap((arg) => [...lettersBelow(nodes, arg)]) : [];
+  });
+}
+
+/** Assumed order relations as nodes that are not negative. */
+function lowerFacts(builder: GraphBuilder, context: CheckContext): Fact[] {
+  return flattenLines(context.assumptions).flatMap((line) => {
+    if (line.kind !== 'relation' || !['<', '>', '<=', '>='].includes(line.sign)) return [];
+    const isLarger = line.sign === '>' || line.sign === '>=';
+    const high = lowerInto(builder, isLarger ? line.left : line.right, context);
+    const low = lowerInto(builder, isLarger ? line.right : line.left, context);
+    const node = builder.valueOf(low)?.num === 0n ? high : builder.add([high, builder.negate(low)]);
+    return [{ node, strict: line.sign === '>' || line.sign === '<' }];
+  });
 }
 
 function opaqueReason(pair: Pair): 'not-covered' | 'limit' | null {

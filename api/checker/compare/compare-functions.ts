@@ -1,13 +1,15 @@
 import type { CheckContext } from '../context.ts';
-import type { Point } from '../values/value.ts';
+import { isReal } from '../values/arithmetic.ts';
+import type { KnownValue, Point } from '../values/value.ts';
 import { breakPointsOf } from './break-points.ts';
 import type { Comparison } from './comparison.ts';
 import { findConditions } from './find-conditions.ts';
 import { provesIdentity } from './kernel-identity.ts';
-import { marksOf } from './pair.ts';
+import { leavesNoInterval } from './no-interior.ts';
+import { createPair, marksOf } from './pair.ts';
 import type { Pair } from './pair.ts';
 import { createRegion, pointsOf } from './points.ts';
-import type { Region } from './points.ts';
+import type { Region, Traits } from './points.ts';
 import { takeSamples } from './sampling.ts';
 import type { Samples } from './sampling.ts';
 import { witnessAt } from './witness.ts';
@@ -20,18 +22,28 @@ const agreementsWhenProved = 6;
 
 /** Expressions with roots, exponentials, logarithms, circular functions, bars, factorials and the like. */
 export function compareFunctions(pair: Pair, context: CheckContext): Comparison {
-  const region = createRegion(pair.names, marksOf(pair), usesTurns(pair), context);
-  const isProved = provesIdentity(pair, [], context);
+  const region = createRegion(pair.names, pair.whole, marksOf(pair), traitsOf(pair), context);
+  const isProved = provesIdentity(pair, context);
   const agreements = isProved ? agreementsWhenProved : agreementsAsked;
   const progress = { mustGoOn: true };
   const points = pointsFor(pair, region, isProved, progress, context);
   const samples = takeSamples(pair, points, context, { agreements, mayStop: () => isProved || !progress.mustGoOn });
   if (samples.apart !== null) {
     const witness = witnessAt(pair, samples.apart.point, samples.apart.bits, context);
+    if (witness !== null && mayBeMeantReal(samples, region)) return { kind: 'undecided', reason: 'no-agreed-meaning' };
     return witness === null ? { kind: 'undecided', reason: 'not-settled' } : { kind: 'different', witness };
   }
   return rule(pair, samples, region, isProved, context);
 }
+
+/** Apart only where a letter that people use for real numbers is not real, such as a and b in |a+bi|. */
+function mayBeMeantReal(samples: Samples, region: Region): boolean {
+  if (region.context.numbers === 'real' || samples.counts.same < agreementsNeeded) return false;
+  const point = samples.apart?.point ?? new Map<string, KnownValue>();
+  return [...point].some(([name, value]) => !isReal(value) && !complexLetters.has(name.charAt(0)));
+}
+
+const complexLetters: ReadonlySet<string> = new Set(['z', 'w', 'Z', 'W']);
 
 /** Small numbers first; then, unless an identity covers them, both sides of every break; then the rest. */
 function* pointsFor(pair: Pair, region: Region, isProved: boolean, progress: { mustGoOn: boolean }, context: CheckContext): Generator<Point> {
@@ -41,11 +53,21 @@ function* pointsFor(pair: Pair, region: Region, isProved: boolean, progress: { m
   yield* pointsOf(region, context.seed, mostPoints, firstPoints);
 }
 
-function usesTurns(pair: Pair): boolean {
-  return pair.nodes.some(
-    (node, index) =>
-      pair.needed[index] === 1 && node.op === 'call' && ['sin', 'cos', 'tan', 'cot', 'sec', 'csc'].includes(node.name),
-  );
+const circularNames: ReadonlySet<string> = new Set(['sin', 'cos', 'tan', 'cot', 'sec', 'csc']);
+const steepNames: ReadonlySet<string> = new Set(['exp', 'sinh', 'cosh', 'tanh', 'coth', 'sech', 'csch', 'factorial']);
+
+function traitsOf(pair: Pair): Traits {
+  let turns = false;
+  let gentle = false;
+  pair.nodes.forEach((node, index) => {
+    if (pair.needed[index] !== 1) return;
+    if (node.op === 'pow') gentle = true;
+    if (node.op === 'call') {
+      turns ||= circularNames.has(node.name);
+      gentle ||= steepNames.has(node.name);
+    }
+  });
+  return { turns, gentle };
 }
 
 function rule(pair: Pair, samples: Samples, region: Region, isProved: boolean, context: CheckContext): Comparison {
@@ -53,10 +75,30 @@ function rule(pair: Pair, samples: Samples, region: Region, isProved: boolean, c
   const tried = Object.values(counts).reduce((a, b) => a + b, 0);
   if (counts['no-agreed-meaning'] * 6 > tried) return { kind: 'undecided', reason: 'no-agreed-meaning' };
   if (counts['not-covered'] * 2 > tried) return { kind: 'undecided', reason: 'not-covered' };
-  if (counts.same >= (isProved ? 1 : agreementsNeeded) && (samples.inside || pair.names.every((name) => region.whole.has(name)))) {
+  if (counts.same >= (isProved ? 1 : agreementsNeeded) && (samples.inside || pair.names.every((name) => pair.whole.has(name)))) {
     return { kind: 'equal', reached: isProved ? 'proved' : 'sampled', ...findConditions(pair, samples, region, context) };
   }
+  const without = ruleWithoutValues(pair, samples, context);
+  if (without !== null) return without;
   if (counts.limit > 0 && counts.same === 0) return { kind: 'undecided', reason: 'limit' };
-  if (counts.same === 0 && counts.blurred === 0) return { kind: 'undecided', reason: 'no-domain' };
+  if (counts.blurred === 0 && (counts.same === 0 || !samples.inside)) return { kind: 'undecided', reason: 'no-domain' };
   return { kind: 'undecided', reason: 'not-settled' };
+}
+
+/** No interval on which both have a value, where that is certain. */
+function ruleWithoutValues(pair: Pair, samples: Samples, context: CheckContext): Comparison | null {
+  if (samples.inside || !samples.insideAbove) return null;
+  if (dividesByZero(pair, context)) return { kind: 'meaningless' };
+  if (context.numbers === 'complex') return null;
+  if (leavesNoInterval(pair, pair.needsBelow)) return { kind: samples.counts.same === 0 ? 'meaningless' : 'nothing-in-common' };
+  return leavesNoInterval(pair, [...pair.needsAbove, ...pair.needsBelow]) ? { kind: 'nothing-in-common' } : null;
+}
+
+/** Whether the line below divides by something that is proved to be zero wherever it has a value. */
+function dividesByZero(pair: Pair, context: CheckContext): boolean {
+  const nodes = [...pair.nodes];
+  const zero = nodes.push({ op: 'number', args: [], value: { num: 0n, den: 1n } }) - 1;
+  return pair.needsBelow.some(
+    ({ arg, kind }) => kind === 'nonzero' && provesIdentity(createPair(nodes, arg, zero, pair.whole, context.numbers === 'complex', pair.facts), context),
+  );
 }

@@ -5,13 +5,14 @@ import { findConditions } from './find-conditions.ts';
 import { marksOf } from './pair.ts';
 import type { Pair } from './pair.ts';
 import { createRegion, pointsOf } from './points.ts';
-import type { Region } from './points.ts';
+import type { Region, Traits } from './points.ts';
 import { compareRational } from './rational-identity.ts';
 import { takeSamples } from './sampling.ts';
 import type { Samples } from './sampling.ts';
 import { witnessAt } from './witness.ts';
 
 const mostPoints = 400;
+const plain: Traits = { turns: false, gentle: false };
 const exactLadder = [160] as const;
 
 /** Quotients of polynomials in any number of letters: decided by modular evaluation, shown by exact values. */
@@ -21,11 +22,11 @@ export function compareRationals(pair: Pair, context: CheckContext): Comparison 
       ? 'identical'
       : compareRational(pair.nodes, pair.needed, pair.above, pair.below, pair.names, context.seed);
   if (identity === 'first-undefined' || identity === 'second-undefined') return withoutValue(identity, pair, context);
-  if (identity === 'different') return findDifference(pair, createRegion(pair.names, marksOf(pair), false, context), context);
+  if (identity === 'different') return findDifference(pair, createRegion(pair.names, pair.whole, marksOf(pair), plain, context), context);
   const reached = identity === 'identical' ? 'proved' : 'sampled';
   const isPolynomial = pair.needsAbove.length === 0 && pair.needsBelow.length === 0;
   if (isPolynomial && context.assumptions.length === 0) return { kind: 'equal', reached, excluded: [], cancelled: [] };
-  const region = createRegion(pair.names, marksOf(pair), false, context);
+  const region = createRegion(pair.names, pair.whole, marksOf(pair), plain, context);
   const samples = takeSamples(pair, pointsOf(region, context.seed, mostPoints), context, { agreements: 2 });
   if (samples.apart !== null) return { kind: 'undecided', reason: 'not-settled' };
   if (!samples.inside) return { kind: 'undecided', reason: samples.counts.limit > 0 ? 'limit' : 'no-domain' };
@@ -35,7 +36,7 @@ export function compareRationals(pair: Pair, context: CheckContext): Comparison 
 /** A denominator that is zero everywhere is confirmed at points before anything is said. */
 function withoutValue(identity: 'first-undefined' | 'second-undefined', pair: Pair, context: CheckContext): Comparison {
   if (identity === 'first-undefined') return { kind: 'undecided', reason: 'no-domain' };
-  const region = createRegion(pair.names, [], false, context);
+  const region = createRegion(pair.names, pair.whole, [], plain, context);
   const samples = takeSamples(pair, pointsOf(region, context.seed, 40), context, { agreements: 1 });
   if (samples.counts['no-agreed-meaning'] > 0) return { kind: 'undecided', reason: 'no-agreed-meaning' };
   const onlyAbove = samples.counts['above-only'] > 0 && samples.counts.same === 0 && samples.counts['below-only'] === 0;

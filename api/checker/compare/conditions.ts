@@ -29,6 +29,7 @@ export function needsOf(nodes: readonly GraphNode[], needed: Uint8Array, complex
     if (needed[index] !== 1) return;
     if (node.op === 'div') askNonzero(node.args[1]);
     else if (node.op === 'power' && node.exponent < 0) askNonzero(node.args[0]);
+    else if (node.op === 'pow' && node.positive) ask(node.args[0], 'positive');
     else if (node.op === 'root') askOfRoot(node, complex, ask, askNonzero);
     else if (node.op === 'call') askOfCall(node.name, node.args, complex, ask, askNonzero);
   });

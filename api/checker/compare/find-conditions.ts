@@ -5,6 +5,7 @@ import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
 import { toFraction } from '../solving/fraction.ts';
 import { fromPi, fromRational } from '../values/arithmetic.ts';
+import { lettersBelow } from '../values/graph.ts';
 import { callExpr, letterExpr, nodeToExpr, numberExpr } from '../values/node-expr.ts';
 import type { KnownValue, Point } from '../values/value.ts';
 import { relationLine } from '../values/truth.ts';
@@ -76,7 +77,7 @@ function* pointsToTry(
 
 function candidates(pair: Pair, needs: readonly Need[], letter: string, given: ReadonlyMap<string, Rational>, region: Region): KnownValue[] {
   const { gaps, exact } = breakUp(pair, letter, given);
-  const turns = region.turns || needs.some(({ kind }) => kind === 'sine' || kind === 'cosine');
+  const turns = region.traits.turns || needs.some(({ kind }) => kind === 'sine' || kind === 'cosine');
   const multiples = turns ? Array.from({ length: 25 }, (_, k) => fromPi(Q.rational(k - 12, 12))) : [];
   const halves = turns ? Array.from({ length: 9 }, (_, k) => fromPi(Q.rational(k - 4, 2))) : [];
   return [...exact.map(fromRational), ...gaps.map(fromRational), ...halves, ...multiples];
@@ -104,7 +105,7 @@ const nowhere: Span = { start: 0, end: 0 };
 /** A need as short lines: linear ones solved for the letter, zeros of one letter named when they are fractions. */
 function linesOf(need: Need, pair: Pair, failing: readonly Sample[]): Line[] {
   const relation = relationOf(need);
-  const names = lettersBelow(pair, need.arg);
+  const names = [...lettersBelow(pair.nodes, need.arg)];
   const [letter] = names;
   if (relation !== null && letter !== undefined && names.length === 1) {
     const solved = solvedFor(letter, need, relation, pair, failing);
@@ -112,20 +113,6 @@ function linesOf(need: Need, pair: Pair, failing: readonly Sample[]): Line[] {
   }
   const expr = nodeToExpr(pair.nodes, need.arg);
   return expr === null ? [] : [plainLine(need, expr)];
-}
-
-function lettersBelow(pair: Pair, root: number): string[] {
-  const names = new Set<string>();
-  const seen = new Set<number>();
-  const visit = (index: number): void => {
-    if (seen.has(index)) return;
-    seen.add(index);
-    const node = pair.nodes[index];
-    if (node?.op === 'letter') names.add(node.name);
-    node?.args.forEach(visit);
-  };
-  visit(root);
-  return [...names];
 }
 
 function solvedFor(

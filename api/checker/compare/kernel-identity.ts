@@ -18,10 +18,10 @@ const evaluationCost = 12;
  * Whether two expressions are the same combination of independent quantities (powers of e, logarithms of the sizes of
  * factors, roots): then they are equal wherever both have a value. False says nothing.
  */
-export function provesIdentity(pair: Pair, positive: readonly number[], context: CheckContext): boolean {
+export function provesIdentity(pair: Pair, context: CheckContext): boolean {
   const complex = context.numbers === 'complex';
   const needs = [...pair.needsAbove, ...pair.needsBelow];
-  const plan = createKernelPlan(pair.nodes, pair.needed, complex, (forms) => findSigns(pair.nodes, forms, complex ? [] : needs, positive));
+  const plan = createKernelPlan(pair.nodes, pair.needed, complex, (forms) => findSigns(pair.nodes, forms, complex ? [] : needs, pair.facts.map(({ node }) => node)));
   if (plan === null) return false;
   const count = countEvaluations(pair, plan);
   if (count === null) return false;

@@ -8,6 +8,12 @@ import { meetsOpenly, needsOf } from './conditions.ts';
 import type { Need } from './conditions.ts';
 import { markNeeded } from './modular-values.ts';
 
+/** A node that is assumed to be at least zero, or above it. */
+export interface Fact {
+  readonly node: number;
+  readonly strict: boolean;
+}
+
 /** Two expressions in one graph, with what their comparison asks about them. */
 export interface Pair {
   readonly nodes: readonly GraphNode[];
@@ -22,9 +28,13 @@ export interface Pair {
   readonly needsBelow: readonly Need[];
   /** Nodes that depend on a letter that is not a whole number. */
   readonly moving: Uint8Array;
+  readonly facts: readonly Fact[];
+  readonly whole: ReadonlySet<string>;
 }
 
-export function createPair(nodes: readonly GraphNode[], above: number, below: number, whole: ReadonlySet<string>, complex: boolean): Pair {
+export function createPair(
+  nodes: readonly GraphNode[], above: number, below: number, whole: ReadonlySet<string>, complex: boolean, facts: readonly Fact[] = [],
+): Pair {
   const neededAbove = markNeeded(nodes, [above]);
   const neededBelow = markNeeded(nodes, [below]);
   const needed = neededAbove.map((mark, index) => mark | (neededBelow[index] ?? 0));
@@ -39,6 +49,8 @@ export function createPair(nodes: readonly GraphNode[], above: number, below: nu
     needsAbove: needsOf(nodes, neededAbove, complex),
     needsBelow: needsOf(nodes, neededBelow, complex),
     moving: markMoving(nodes, whole),
+    facts,
+    whole,
   };
 }
 
@@ -104,11 +116,5 @@ export function evaluatePair(pair: Pair, point: Point, bits: number, context: Ch
 
 /** Whether every need that moves with a letter stays met around the point, so that it lies inside the domain. */
 export function isInside(needs: readonly Need[], pair: Pair, values: readonly Value[], bits: number): boolean {
-  return (
-    needs.every((need) => pair.moving[need.arg] === 0 || meetsOpenly(need, values[need.arg], bits)) &&
-    pair.nodes.every((node, index) => {
-      if (node.op !== 'pow' || pair.needed[index] !== 1 || pair.moving[node.args[1]] === 0) return true;
-      return meetsOpenly({ arg: node.args[0], kind: 'positive' }, values[node.args[0]], bits);
-    })
-  );
+  return needs.every((need) => pair.moving[need.arg] === 0 || meetsOpenly(need, values[need.arg], bits));
 }

@@ -21,9 +21,15 @@ export interface Region {
   readonly equations: readonly Equation[];
   /** Numbers near which the lines may change their behaviour. */
   readonly marks: readonly Rational[];
+  readonly traits: Traits;
+  readonly context: CheckContext;
+}
+
+export interface Traits {
   /** Multiples of pi are tried as well. */
   readonly turns: boolean;
-  readonly context: CheckContext;
+  /** Exponentials: large numbers would only cost. */
+  readonly gentle: boolean;
 }
 
 interface Equation {
@@ -36,7 +42,7 @@ interface Equation {
 const assumptionBits = 128;
 
 export function createRegion(
-  names: readonly string[], marks: readonly Rational[], turns: boolean, context: CheckContext,
+  names: readonly string[], whole: ReadonlySet<string>, marks: readonly Rational[], traits: Traits, context: CheckContext,
 ): Region {
   const tests: PreparedLine[] = [];
   const equations: Equation[] = [];
@@ -46,7 +52,7 @@ export function createRegion(
     if (!letters.some((letter) => all.includes(letter))) continue;
     for (const letter of letters) if (!all.includes(letter)) all.push(letter);
   }
-  for (const line of flatten(context.assumptions)) {
+  for (const line of flattenLines(context.assumptions)) {
     const letters = lettersOf(line);
     if (letters.length === 0 || !letters.every((letter) => all.includes(letter))) continue;
     tests.push(prepareLine(line, context));
@@ -56,18 +62,19 @@ export function createRegion(
   const numbers = marksOfLines(context.assumptions);
   return {
     names: all,
-    whole: wholeLettersOf(context),
+    whole,
     admits: (point) => tests.every((test) => test(point, assumptionBits) === true),
     equations,
     marks: [...marks, ...numbers],
-    turns,
+    traits,
     context,
   };
 }
 
-function flatten(lines: readonly Line[]): Line[] {
+/** Conditions joined by *and* one by one. */
+export function flattenLines(lines: readonly Line[]): Line[] {
   return lines.flatMap((line) => {
-    if (line.kind === 'all') return flatten(line.parts);
+    if (line.kind === 'all') return flattenLines(line.parts);
     return [line];
   });
 }
@@ -81,7 +88,7 @@ function inOrder(left: Expr, letters: readonly string[]): string[] {
 /** Letters that the context or an assumption makes whole numbers. */
 export function wholeLettersOf(context: CheckContext): ReadonlySet<string> {
   const whole = new Set(context.wholeLetters);
-  for (const line of flatten(context.assumptions)) {
+  for (const line of flattenLines(context.assumptions)) {
     if (line.kind !== 'membership' || line.negated || line.letter?.kind !== 'letter') continue;
     if (line.set.kind === 'integers' || line.set.kind === 'naturals') whole.add(line.letter.name);
   }
@@ -109,9 +116,12 @@ function marksOfLines(tree: unknown, found: Rational[] = []): Rational[] {
   return found;
 }
 
+/** The first points of a complex comparison are real all the same. */
+export const firstComplex = 30;
 const friendly = [1, 2, 3, -1, -2, 0, 4, 5, -3, 6, 7, -4, 10].map((n) => Q.rational(n));
 const friendlyWhole = [1, 2, 3, 4, 5, 6, 0, 7, 8, 10, -1, -2].map((n) => Q.rational(n));
 const scales = [1, 1, 3, 1, 30, 300, 3_000, 30_000];
+const gentleScales = [1, 1, 3, 1, 6, 10, 10, 30];
 
 /** Points of a region, small whole numbers first, then fractions, near the marks and at several scales. */
 export function* pointsOf(region: Region, seed: number, most: number, from = 0): Generator<Point> {
@@ -138,12 +148,13 @@ function pickValue(k: number, position: number, region: Region, whole: boolean, 
   if (k < 3 && several) return fromRational(Q.rational(((k + position) % 3) + 1));
   if (k < 14 && several) return fromRational(list[random(list.length)] ?? Q.one);
   if (whole) return fromRational(Q.rational(k % 5 === 0 ? random(30) : k % 5 === 1 ? -random(8) : random(12)));
-  if (region.context.numbers === 'complex' && k % 2 === 0) {
+  if (region.context.numbers === 'complex' && k % 2 === 0 && k >= firstComplex) {
     return fromParts(Q.rational(random(15) - 7, 1 + random(3)), Q.rational(random(15) - 7, 1 + random(3)));
   }
-  if (region.turns && k % 4 === 1) return fromPi(Q.rational(random(49) - 24, [12, 6, 4, 3, 1][random(5)] ?? 1));
+  if (region.traits.turns && k % 4 === 1) return fromPi(Q.rational(random(49) - 24, [12, 6, 4, 3, 1][random(5)] ?? 1));
   if (region.marks.length > 0 && k % 4 === 3) return nearMark(region.marks[random(region.marks.length)] ?? Q.one, random);
-  return fromRational(scattered(scales[random(scales.length)] ?? 1, random));
+  const range = region.traits.gentle ? gentleScales : scales;
+  return fromRational(scattered(range[random(range.length)] ?? 1, random));
 }
 
 function nearMark(mark: Rational, random: Random): KnownValue {

@@ -1,6 +1,6 @@
 import type { CheckContext } from '../context.ts';
 import type { Point } from '../values/value.ts';
-import { compareAt } from './agreement.ts';
+import { compareAt, precisions } from './agreement.ts';
 import type { Agreement, PointResult } from './agreement.ts';
 import { isInside } from './pair.ts';
 import type { Pair } from './pair.ts';
@@ -26,6 +26,8 @@ export interface Sample {
 }
 
 const kept = 8;
+const mostBlurred = 4;
+const coarse = [160] as const;
 
 export interface SampleLimits {
   /** Stop after so many agreements. */
@@ -46,7 +48,9 @@ export function takeSamples(pair: Pair, points: Iterable<Point>, context: CheckC
   let insideAbove = false;
   const samples = (apart: Samples['apart']): Samples => ({ counts, apart, aboveOnly, belowOnly, common, inside, insideAbove });
   for (const point of points) {
-    const result = compareAt(pair, point, context);
+    // Where many points stay blurred at every precision, more of them tell nothing.
+    const result = compareAt(pair, point, context, counts.blurred < mostBlurred ? precisions : coarse);
+    if (counts.blurred > 6 * mostBlurred && counts.same === 0) return samples(null);
     const { agreement, values, bits } = result;
     counts[agreement] += 1;
     if (agreement === 'apart') return samples({ point, bits });

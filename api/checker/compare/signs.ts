@@ -88,7 +88,7 @@ export function signInFront(index: number, nodes: readonly GraphNode[], forms: F
     case 'root':
       return node.degree % 2 === 0 || node.times % 2 === 0 ? 1 : signInFront(node.args[0], nodes, forms);
     case 'pow':
-      return 1;
+      return node.positive ? 1 : null;
     default:
       return leadingSign(forms.formOf(index));
   }
@@ -121,6 +121,7 @@ export function isPositiveNode(index: number, nodes: readonly GraphNode[], forms
   const node = nodes[index];
   if (node?.op === 'number') return node.value.num > 0n;
   if (node?.op === 'call' && node.name === 'exp') return true;
+  if (node?.op === 'pow' && (node.positive || isPositiveNode(node.args[0], nodes, forms, signs))) return true;
   const parts = oddFactors(index, nodes, forms);
   if (parts === null) return false;
   let sign = parts.sign;

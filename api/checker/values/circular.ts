@@ -135,12 +135,8 @@ export function arccotOf(a: KnownValue, field: Field): Value {
   return isKnown(arctan) ? subKnown(fromPi(half), arctan, field.bits) : arctan;
 }
 
-/** arccsc and arcsec by the inverse argument; for arguments below -1 more than one range is in use. */
+/** arccsc and arcsec by the inverse argument, DLMF 4.23.7 and 4.23.8. */
 export function ofInverse(a: KnownValue, of: (inverse: KnownValue, field: Field) => Value, field: Field): Value {
   const inverse = divKnown(oneValue, a, field.bits);
-  if (!isKnown(inverse)) return inverse;
-  const result = of(inverse, field);
-  if (result.kind === 'undefined' || field.complex) return result;
-  const negative = inverse.kind === 'rational' ? inverse.value.num < 0n : ballSign(toBall(inverse, field.bits).re) <= 0;
-  return negative ? unknown('no-agreed-meaning') : result;
+  return isKnown(inverse) ? of(inverse, field) : inverse;
 }

@@ -124,7 +124,7 @@ function applyNode(node: AppliedNode, values: readonly Value[], field: Field): V
     case 'root':
       return rootOf(a, node.degree, node.times, node.positive, field);
     case 'pow':
-      return b === undefined ? undefinedValue : powOf(a, b, field);
+      return b === undefined ? undefinedValue : powOf(a, b, node.positive, field);
     case 'call':
       return callFunction(node.name, known, field);
   }

@@ -25,7 +25,12 @@ export type GraphNode =
       readonly positive: boolean;
     }
   /** Base and exponent, where the exponent is no constant fraction. */
-  | { readonly op: 'pow'; readonly args: readonly [number, number] }
+  | {
+      readonly op: 'pow';
+      readonly args: readonly [number, number];
+      /** The exponent varies over the real numbers and the base varies too: only a positive base has such powers. */
+      readonly positive: boolean;
+    }
   | { readonly op: 'call'; readonly args: readonly number[]; readonly name: CallName }
   | {
       readonly op: 'series';
@@ -68,6 +73,8 @@ function keyOf(node: GraphNode): string {
       return `@${node.name}`;
     case 'power':
       return `^${node.args[0]},${node.exponent}`;
+    case 'pow':
+      return `p${node.args.join()},${node.positive}`;
     case 'root':
       return `r${node.args[0]},${node.degree},${node.times},${node.positive}`;
     case 'call':
@@ -143,4 +150,22 @@ export function createGraphBuilder(onPush: () => void): GraphBuilder {
     div,
     power,
   };
+}
+
+/** The free letters that a node depends on. */
+export function lettersBelow(nodes: readonly GraphNode[], root: number): Set<string> {
+  const names = new Set<string>();
+  const seen = new Set<number>();
+  const open = [root];
+  for (let index = open.pop(); index !== undefined; index = open.pop()) {
+    const node = nodes[index];
+    if (node === undefined || seen.has(index)) continue;
+    seen.add(index);
+    if (node.op === 'letter') names.add(node.name);
+    if (node.op === 'series') {
+      for (const name of lettersBelow(node.body.nodes, node.body.root)) if (name !== node.index) names.add(name);
+    }
+    open.push(...node.args);
+  }
+  return names;
 }

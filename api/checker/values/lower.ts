@@ -1,13 +1,15 @@
 import type { Expr, ProductExpr, SeriesExpr, SumExpr } from '../../../shared/maths/expression.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
-import { createGraphBuilder } from './graph.ts';
+import { createGraphBuilder, lettersBelow } from './graph.ts';
 import type { Graph, GraphBuilder } from './graph.ts';
 
 const maximumDepth = 400;
 const maximumNodes = 60_000;
 const maximumTerms = 2_000;
 const rationalExponentLimit = 1_000_000;
+/** Letters that are read as whole numbers where they stand in an exponent. */
+export const usuallyWhole: ReadonlySet<string> = new Set(['k', 'm', 'n']);
 
 interface Lowering {
   readonly builder: GraphBuilder;
@@ -28,6 +30,11 @@ export function lowerAll(exprs: readonly Expr[], context: CheckContext): { build
   });
   const lowering: Lowering = { builder, context, bound: new Map(), open: new Set(), depth: 0 };
   return { builder, roots: exprs.map((expr) => lower(expr, lowering)) };
+}
+
+/** Adds one more expression to a graph that is being built. */
+export function lowerInto(builder: GraphBuilder, expr: Expr, context: CheckContext): number {
+  return lower(expr, { builder, context, bound: new Map(), open: new Set(), depth: 0 });
 }
 
 export function lowerOne(expr: Expr, context: CheckContext): Graph {
@@ -121,11 +128,17 @@ function lowerPower(base: number, exponent: number, decimal: boolean, at: Loweri
   const value = builder.valueOf(exponent);
   const node = builder.nodes[base];
   if (node?.op === 'constant' && node.name === 'e') return builder.push({ op: 'call', name: 'exp', args: [exponent] });
-  if (value === null) return builder.push({ op: 'pow', args: [base, exponent] });
+  if (value === null) return builder.push({ op: 'pow', args: [base, exponent], positive: needsPositiveBase(base, exponent, at) });
   const limit = BigInt(rationalExponentLimit);
   if (value.num > limit || value.num < -limit || value.den > 1000n) return opaque(at, 'limit');
   if (value.den === 1n) return builder.power(base, Number(value.num));
   return pushRoot(base, Number(value.den), Number(value.num), decimal, at);
+}
+
+function needsPositiveBase(base: number, exponent: number, at: Lowering): boolean {
+  if (at.context.numbers === 'complex') return false;
+  const isWhole = (name: string): boolean => at.context.wholeLetters.has(name) || usuallyWhole.has(name);
+  return lettersBelow(at.builder.nodes, base).size > 0 && ![...lettersBelow(at.builder.nodes, exponent)].every(isWhole);
 }
 
 function lowerRoot(radicand: number, degree: number, isSquare: boolean, at: Lowering): number {
@@ -133,7 +146,7 @@ function lowerRoot(radicand: number, degree: number, isSquare: boolean, at: Lowe
   const value = at.builder.valueOf(degree);
   if (value === null) {
     const inverse = at.builder.div(at.builder.number(Q.one), degree);
-    return at.builder.push({ op: 'pow', args: [radicand, inverse] });
+    return at.builder.push({ op: 'pow', args: [radicand, inverse], positive: needsPositiveBase(radicand, inverse, at) });
   }
   if (value.den !== 1n || value.num < 1n) return opaque(at, 'not-covered');
   if (value.num > 1000n) return opaque(at, 'limit');

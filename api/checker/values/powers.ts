@@ -69,8 +69,9 @@ function principalSquareRoot(a: KnownValue, field: Field): Value {
   return isKnown(log) ? expOf(mulKnown(log, fromRational(Q.rational(1, 2)), field.bits), field) : log;
 }
 
-/** A power with an exponent that may vary: a negative base has one at whole exponents only. */
-export function powOf(a: KnownValue, b: KnownValue, field: Field): Value {
+/** A power with an exponent that may vary: a negative base has one at whole exponents only, if at all. */
+export function powOf(a: KnownValue, b: KnownValue, positive: boolean, field: Field): Value {
+  if (positive && isReal(a) && signOf(a) !== 1) return signOf(a) === null ? unknown('precision') : undefinedValue;
   if (b.kind === 'rational' && Q.isWhole(b.value)) return wholePower(a, b.value.num, field);
   if (isExactZero(a)) return zeroToPower(b);
   if (!isReal(a) || !isReal(b)) {
