@@ -1,5 +1,6 @@
 import type { Expr, NumberExpr, ProductExpr, ReadSettings, SumExpr } from './expression.ts';
 import { numberText } from './print-number.ts';
+import { isLetter } from './scanner.ts';
 import { functionOf } from './token-table.ts';
 import { hidesWord } from './token-words.ts';
 
@@ -24,8 +25,15 @@ export function bracket(text: string): string {
 
 /** Joins two pieces, with a blank where a command would run into a letter, or `!=` would come about. */
 export function glue(left: string, right: string): string {
-  const runsOn = /\\[a-zA-Z]+$/.test(left) && /^[a-zA-Z]/.test(right);
+  const runsOn = isLetter(right.charCodeAt(0)) && endsInCommand(left);
   return runsOn || (left.endsWith('!') && right.startsWith('=')) ? `${left} ${right}` : left + right;
+}
+
+/** Looked at from the end, so that building a long text stays linear. */
+function endsInCommand(text: string): boolean {
+  let at = text.length - 1;
+  while (isLetter(text.charCodeAt(at))) at -= 1;
+  return at < text.length - 1 && text[at] === '\\';
 }
 
 function print(expr: Expr, style: PrintStyle): string {

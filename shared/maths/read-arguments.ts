@@ -73,9 +73,13 @@ export function readSubscript(reader: Reader): string {
   return reader.fail('missing-argument', ['letter', 'number']);
 }
 
+/** Styles, braces and blanks go; a blank that ends a command stays. */
+const SUBSCRIPT_LAYOUT =
+  /\\(?:text|mathrm|mathit|operatorname|textrm|mbox)(?![a-zA-Z]) *|(\\[a-zA-Z]+)\s+(?=[a-zA-Z])|[{}\s]|\\[,;:! ]/g;
+
 function subscript(reader: Reader, raw: string): string {
-  const text = raw.replace(/\\(text|mathrm|mathit|operatorname|textrm|mbox) *|[{}\s]|\\[,;:! ]/g, '');
-  if (text === '') reader.fail('missing-operand', ['letter', 'number']);
+  const text = raw.replace(SUBSCRIPT_LAYOUT, (_, command: string | undefined) => (command ? `${command} ` : ''));
+  if (!/^(?:[\w,+\-' ]|\\[a-zA-Z])+$/.test(text)) reader.fail('missing-argument', ['letter', 'number']);
   return text.length === 1 ? `_${text}` : `_{${text}}`;
 }
 

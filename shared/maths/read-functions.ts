@@ -1,4 +1,5 @@
 import type { Expr, FunctionName } from './expression.ts';
+import { namesIn } from './names-in.ts';
 import { readArgument, readExponent } from './read-arguments.ts';
 import { readItems } from './read-atoms.ts';
 import { mixedNumber } from './read-numbers.ts';
@@ -112,7 +113,10 @@ function readBeside(reader: Reader): Expr {
   while (!isFunction && reader.startsFactor() && !reader.token.gap && !differentialFollows(reader)) {
     if (!joinsArgument(reader, factors)) break;
     const factor = reader.grammar.power(reader);
-    const mixed = mixedNumber(reader, factors[factors.length - 1]!, factor);
+    const last = factors[factors.length - 1]!;
+    if (last.kind === 'number' && factor.kind === 'number' && !factor.bracketed)
+      reader.fail('bad-number', ['*'], factor.span);
+    const mixed = mixedNumber(reader, last, factor);
     if (mixed) factors[factors.length - 1] = mixed;
     else factors.push(factor);
   }
@@ -164,23 +168,7 @@ function isSymbol(expr: Expr): boolean {
 }
 
 function holdsLetter(expr: Expr): boolean {
-  switch (expr.kind) {
-    case 'number':
-    case 'constant':
-      return false;
-    case 'power':
-      return holdsLetter(expr.base) || holdsLetter(expr.exponent);
-    case 'root':
-      return holdsLetter(expr.radicand);
-    case 'quotient':
-      return holdsLetter(expr.numerator) || holdsLetter(expr.denominator);
-    case 'product':
-      return expr.factors.some(holdsLetter);
-    case 'sum':
-      return expr.terms.some((term) => holdsLetter(term.expr));
-    default:
-      return true;
-  }
+  return namesIn(expr).size > 0;
 }
 
 /** `\sin x/2` is half the sine of x; the other way to read it is asked about. */

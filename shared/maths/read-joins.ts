@@ -1,5 +1,5 @@
 import type { Expr, Line, RelationSign, Span } from './expression.ts';
-import { lettersOf } from './letters.ts';
+import { namesIn } from './names-in.ts';
 import { outer, type Reader } from './reader.ts';
 
 export type Join = 'or' | 'and' | 'comma';
@@ -13,9 +13,8 @@ export interface Part {
 /** Statements with their joins as one line; says what a comma means, or that it could mean two things. */
 export function joinParts(reader: Reader, parts: readonly Part[], start: number): Line {
   const [condition, rest] = splitCondition(parts);
-  const lines = spreadValues(rest.map((part) => part.line));
-  const spread = rest.map((part, at) => ({ line: lines[at]!, join: part.join }));
-  const joined = joinByOr(reader, spread, start);
+  const saysAnd = rest.slice(1).some((part) => part.join === 'and');
+  const joined = joinByOr(reader, saysAnd ? rest : spreadValues(rest), start);
   if (!condition) return joined;
   reader.flags.add('comma-and');
   return combine(reader, 'all', joined.kind === 'all' ? [...joined.parts, condition] : [joined, condition], start);
@@ -61,7 +60,7 @@ function splitAt(parts: readonly Part[], splits: (join: Join) => boolean): reado
 }
 
 function lettersIn(parts: readonly Part[]): string {
-  return [...new Set(parts.flatMap((part) => [...lettersOf(part.line)]))].sort().join(' ');
+  return [...namesIn(parts)].sort().join(' ');
 }
 
 function spanOf(parts: readonly Part[]): Span {
@@ -69,11 +68,12 @@ function spanOf(parts: readonly Part[]): Span {
 }
 
 function joinTightly(reader: Reader, parts: readonly Part[]): Line {
-  const lines = parts.map((part) => part.line);
   const { start } = spanOf(parts);
-  if (lines.length === 1) return lines[0]!;
+  if (parts.length === 1) return parts[0]!.line;
+  const spread = spreadValues(parts);
+  const lines = spread.map((part) => part.line);
   if (parts.slice(1).some((part) => part.join === 'and')) {
-    const isOdd = lines.every((line) => isValueOf(line, lines[0]!));
+    const isOdd = spread !== parts && valuedLetter(lines[0]!) === valuedLetter(lines[1]!);
     return combine(reader, isOdd && reader.choose('comma') ? 'any' : 'all', lines, start);
   }
   const kind = commaKind(reader, lines);
@@ -88,27 +88,39 @@ function splitCondition(parts: readonly Part[]): [Line | null, readonly Part[]] 
 }
 
 /** `x=2 or 3` and `x,y>0`: the letter and sign stand for each value or letter beside them. */
-function spreadValues(lines: readonly Line[]): readonly Line[] {
-  const first = lines[0];
-  if (first?.kind === 'relation' && isLetter(first.left) && lines.slice(1).every((line) => line.kind !== 'relation')) {
+function spreadValues(parts: readonly Part[]): readonly Part[] {
+  const first = parts[0]!.line;
+  const last = parts[parts.length - 1]!.line;
+  if (first.kind === 'relation' && isLetter(first.left)) {
     const { left, sign } = first;
-    if (!lines.slice(1).every((line) => line.kind === 'expression' && !hasLetter(line.expr, left))) return lines;
-    return lines.map((line) => (line.kind === 'expression' ? spreadOver(left, sign, line.expr) : line));
+    return spreadOver(parts, parts.slice(1), (expr) => (hasLetter(expr, left) ? null : [left, sign, expr]));
   }
-  const last = lines[lines.length - 1];
-  const before = lines.slice(0, -1);
-  if (last?.kind !== 'relation' || !isLetter(last.left)) return lines;
-  const { sign, right } = last;
-  if (!before.every((line) => line.kind === 'expression' && isLetter(line.expr) && !hasLetter(last.left, line.expr)))
-    return lines;
-  return lines.map((line) => (line.kind === 'expression' ? spreadOver(line.expr, sign, right) : line));
+  if (last.kind !== 'relation' || !isLetter(last.left)) return parts;
+  const { left, sign, right } = last;
+  return spreadOver(parts, parts.slice(0, -1), (expr) =>
+    isLetter(expr) && !hasLetter(left, expr) ? [expr, sign, right] : null,
+  );
 }
 
-function spreadOver(left: Expr, sign: RelationSign, right: Expr): Line {
-  const span = {
-    start: Math.min(outer(left).start, outer(right).start),
-    end: Math.max(outer(left).end, outer(right).end),
-  };
+type Sides = readonly [left: Expr, sign: RelationSign, right: Expr];
+
+function spreadOver(
+  parts: readonly Part[],
+  bare: readonly Part[],
+  sidesOf: (expr: Expr) => Sides | null,
+): readonly Part[] {
+  const changed: Part[] = [];
+  for (const part of parts) {
+    const sides = part.line.kind === 'expression' && bare.includes(part) ? sidesOf(part.line.expr) : null;
+    if (!sides && bare.includes(part)) return parts;
+    changed.push(sides ? { line: relationOf(sides), join: part.join } : part);
+  }
+  return changed;
+}
+
+function relationOf([left, sign, right]: Sides): Line {
+  const [one, other] = [outer(left), outer(right)];
+  const span = { start: Math.min(one.start, other.start), end: Math.max(one.end, other.end) };
   return { kind: 'relation', left, sign, right, span };
 }
 
@@ -117,7 +129,7 @@ function isLetter(expr: Expr): boolean {
 }
 
 function hasLetter(expr: Expr, letter: Expr): boolean {
-  return letter.kind === 'letter' && lettersOf(expr).includes(letter.name);
+  return letter.kind === 'letter' && namesIn(expr).has(letter.name);
 }
 
 /** Rule for commas: values of one letter are alternatives, different letters hold together, all else is asked about. */
@@ -140,20 +152,13 @@ function commaKind(reader: Reader, lines: readonly Line[]): 'any' | 'all' | 'set
   ) {
     return flagged(reader, 'all');
   }
-  const letters = new Set(lines.flatMap((line) => [...lettersOf(line)]));
-  if (letters.size > 1 && names.has(null)) return flagged(reader, 'all');
+  if (namesIn(lines).size > 1 && names.has(null)) return flagged(reader, 'all');
   return flagged(reader, reader.choose('comma') ? 'any' : 'all');
 }
 
 function flagged(reader: Reader, kind: 'any' | 'all'): 'any' | 'all' {
   reader.flags.add(kind === 'any' ? 'comma-or' : 'comma-and');
   return kind;
-}
-
-/** `x=2 and x=3`: hardly meant as it stands. */
-function isValueOf(line: Line, first: Line): boolean {
-  const letter = valuedLetter(line);
-  return letter !== null && !isUnequal(line) && letter === valuedLetter(first);
 }
 
 /** The letter of `letter = value` (or not equal, or about), where the value does not hold it. */

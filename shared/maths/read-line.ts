@@ -95,7 +95,10 @@ function readStatement(reader: Reader): Line {
   if (startsBlock(reader)) return readBlock(reader);
   if (startsGroup(reader)) return readGroup(reader);
   if (startsSetBuilder(reader)) return readSetBuilder(reader);
-  if (namesSolutions(reader)) skipTwo(reader);
+  if (namesSolutions(reader)) {
+    reader.next();
+    reader.next();
+  }
   if (startsSet(reader)) return readBareSet(reader);
   const name = startsDefinition(reader);
   const before = reader.functions;
@@ -110,7 +113,9 @@ function readStatement(reader: Reader): Line {
 function namesSolutions(reader: Reader): boolean {
   const after = reader.peek(2).kind;
   return (
-    'SL'.includes(reader.token.text || '-') && reader.peek(1).kind === '=' && (after === 'set(' || after === 'empty')
+    (reader.token.text === 'S' || reader.token.text === 'L') &&
+    reader.peek(1).kind === '=' &&
+    (after === 'set(' || after === 'empty')
   );
 }
 
@@ -128,11 +133,6 @@ function readSetBuilder(reader: Reader): Line {
   const line = reader.inside(readStatements);
   reader.expect('set)', 'missing-bracket', '\\}');
   return { ...line, span: reader.span(start) };
-}
-
-function skipTwo(reader: Reader): void {
-  reader.next();
-  reader.next();
 }
 
 /** `f(x) = ..` introduces f; a chain is left as it is. */
@@ -252,10 +252,7 @@ function readBareSet(reader: Reader): Line {
   const { token } = reader;
   const isPoint = token.kind === '(' && reader.choose('interval');
   if (isPoint) return readRelations(reader, reader.grammar.sum(reader), token.start);
-  if (token.kind === 'empty' && reader.peek(1).kind === 'end-of-line') {
-    reader.next();
-    return { kind: 'none', span: reader.span(token.start) };
-  }
   const set = token.kind === '[' && !reader.choose('interval') ? readInterval(reader) : readSet(reader);
+  if (set.kind === 'empty') return { kind: 'none', span: set.span };
   return { kind: 'membership', letter: null, set, negated: false, span: reader.span(token.start) };
 }

@@ -1,4 +1,5 @@
 import type { Expr } from './expression.ts';
+import { namesIn } from './names-in.ts';
 import { readExponent } from './read-arguments.ts';
 import { readItems } from './read-atoms.ts';
 import { readPrimes } from './read-letters.ts';
@@ -142,16 +143,8 @@ function readPrimed(reader: Reader, base: Expr, start: number): Expr {
 }
 
 function soleLetter(expr: Expr): string | null {
-  const letters = new Set<string>();
-  collectLetters(expr, letters);
+  const letters = namesIn(expr);
   if (letters.has('x')) return 'x';
   const [only = null] = letters;
   return letters.size === 1 ? only : null;
-}
-
-function collectLetters(value: unknown, into: Set<string>): void {
-  if (typeof value !== 'object' || value === null) return;
-  if ('kind' in value && value.kind === 'letter' && 'name' in value && typeof value.name === 'string')
-    into.add(value.name);
-  for (const part of Object.values(value)) collectLetters(part, into);
 }
