@@ -5,6 +5,10 @@ export interface Span {
 }
 
 interface Node {
+  /**
+   * Exactly the text that was read. What has no text of its own takes that of its neighbours: the sine in `\sin^2 x` has the
+   * span of the power, the 1 in `\int dx` that of dx.
+   */
   readonly span: Span;
   /** The span with the brackets that the author wrote around this node, where there are any. */
   readonly bracketed?: Span;

@@ -148,6 +148,10 @@ function readRelations(reader: Reader, left: Expr, start: number): Line {
     const set = readSet(reader);
     return { kind: 'membership', letter: left, set, negated, span: reader.span(start) };
   }
+  if (reader.is('=') && left.kind === 'letter' && reader.peek(1).kind === 'set(' && reader.peek(2).kind !== 'begin') {
+    reader.next();
+    return { kind: 'membership', letter: left, set: readSet(reader), negated: false, span: reader.span(start) };
+  }
   if (reader.take(':=')) {
     const value = reader.grammar.sum(reader);
     if (left.kind !== 'letter') return reader.fail('bad-relation', ['='], left.span);

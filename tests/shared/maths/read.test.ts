@@ -47,6 +47,13 @@ describe('reading a line', () => {
     expect(outlineOfReading('x! = 3')).toBe('(relation (factorial x) = 3)');
   });
 
+  it('takes a letter set equal to a set as the solutions for it', () => {
+    expect(outlineOfReading('x=\\{2,3\\}')).toBe('(membership x (finite [2 3]) false)');
+    expect(outlineOfReading('x=2\\text{ and }3')).toBe(
+      '(all [(relation x = 2) (relation x = 3)]) ? x=2\\text{ or }x=3',
+    );
+  });
+
   it('looks through what only adorns', () => {
     expect(outlineOfReading('\\frac{\\cancel{(x-2)}(x+1)}{\\cancel{(x-2)}}')).toBe('(/ (* (+x -2) (+x +1)) (+x -2))');
     expect(outlineOfReading('\\boxed{x=3}')).toBe('(relation x = 3)');
