@@ -5,6 +5,7 @@ import { lettersBelow } from '../values/graph.ts';
 import type { GraphBuilder, GraphNode } from '../values/graph.ts';
 import { lowerAll, lowerInto, usuallyWhole } from '../values/lower.ts';
 import { compareConstants } from './compare-constants.ts';
+import { compareMatrices, concernsMatrices } from './compare-matrices.ts';
 import { compareFunctions } from './compare-functions.ts';
 import { compareRationals } from './compare-rationals.ts';
 import type { Comparison } from './comparison.ts';
@@ -33,6 +34,7 @@ function compareWithin(above: Expr, below: Expr, context: CheckContext): Compari
   const whole = new Set([...wholeLettersOf(context), ...wholeByUse(builder.nodes)]);
   const pair = createPair(builder.nodes, first, second, whole, complex, facts);
   const missing = opaqueReason(pair);
+  if (missing === 'not-covered' && (concernsMatrices(above, context) || concernsMatrices(below, context))) return compareMatrices(above, below, context, compareWithin);
   if (missing !== null) return { kind: 'undecided', reason: missing };
   if (pair.names.length === 0) return compareConstants(pair, context);
   return isRational(pair) ? compareRationals(pair, context) : compareFunctions(pair, context);

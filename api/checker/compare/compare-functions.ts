@@ -29,6 +29,8 @@ export function compareFunctions(pair: Pair, context: CheckContext): Comparison 
   const points = pointsFor(pair, region, isProved, progress, context);
   const samples = takeSamples(pair, points, context, { agreements, mayStop: () => isProved || !progress.mustGoOn });
   if (samples.apart !== null) {
+    // A proof and a witness cannot both be right.
+    if (isProved) return { kind: 'undecided', reason: 'not-settled' };
     const witness = witnessAt(pair, samples.apart.point, samples.apart.bits, context);
     if (witness !== null && mayBeMeantReal(samples, region)) return { kind: 'undecided', reason: 'no-agreed-meaning' };
     return witness === null ? { kind: 'undecided', reason: 'not-settled' } : { kind: 'different', witness };

@@ -1,6 +1,6 @@
 import type { Line } from '../../../shared/maths/expression.ts';
 import type { UndecidedReason } from '../../../shared/schemas/verdict.ts';
-import type { Value } from '../values/value.ts';
+import type { KnownValue } from '../values/value.ts';
 
 /** A condition that a line needs: as TeX for people, and as a line that can join the assumptions. */
 export interface Condition {
@@ -10,7 +10,7 @@ export interface Condition {
 
 export interface Witness {
   /** Values of the letters, exact. */
-  readonly at: ReadonlyMap<string, Value>;
+  readonly at: ReadonlyMap<string, KnownValue>;
   readonly atTex: Readonly<Record<string, string>>;
   /** What each line is worth there, exact or in decimals, as TeX. */
   readonly above: string;

@@ -1,6 +1,6 @@
 import type { CheckContext } from '../context.ts';
-import { valueTex } from '../values/value-tex.ts';
-import type { Point } from '../values/value.ts';
+import { usualDigits, valueTex } from '../values/value-tex.ts';
+import type { Point, Value } from '../values/value.ts';
 import { agreementOf } from './agreement.ts';
 import type { Witness } from './comparison.ts';
 import { evaluatePair } from './pair.ts';
@@ -14,5 +14,19 @@ export function witnessAt(pair: Pair, point: Point, bits: number, context: Check
   const at = new Map([...point].filter(([name]) => pair.names.includes(name)));
   const atTex: Record<string, string> = {};
   for (const [name, value] of at) atTex[name] = valueTex(value, finer);
-  return { at, atTex, above: valueTex(above, finer), below: valueTex(below, finer) };
+  return { at, atTex, ...shownApart(above, below, finer) };
 }
+
+/** As few digits as show that the values differ. */
+function shownApart(above: Value, below: Value, bits: number): { above: string; below: string } {
+  let shown = { above: valueTex(above, bits), below: valueTex(below, bits) };
+  for (let digits = usualDigits; digits <= mostDigits; digits += 4) {
+    shown = { above: valueTex(above, bits, digits), below: valueTex(below, bits, digits) };
+    const isScientific = shown.above.includes('10^') !== shown.below.includes('10^') && digits < plainDigits;
+    if (shown.above !== shown.below && !isScientific) return shown;
+  }
+  return shown;
+}
+
+const mostDigits = 60;
+const plainDigits = 22;
