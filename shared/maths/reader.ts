@@ -191,7 +191,8 @@ export class Reader {
     const digit: Token = { ...token, text: token.text[0] ?? '', end: token.start + 1 };
     let rest = token.start + 1;
     while (isBlank(this.source.charCodeAt(rest))) rest += 1;
-    if (!isDigit(this.source.charCodeAt(rest))) this.fail('bad-number', ['{'], token);
+    const isSplit = isDigit(this.source.charCodeAt(token.start)) && isDigit(this.source.charCodeAt(rest));
+    if (!isSplit) this.fail('bad-number', ['{'], token);
     token.text = token.text.slice(1);
     token.start = rest;
     this.lastEnd = digit.end;

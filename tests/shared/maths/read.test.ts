@@ -54,6 +54,11 @@ describe('reading a line', () => {
     );
   });
 
+  it('does not split a decimal as an argument', () => {
+    expect(outlineOfReading('\\frac.67')).toBe('bad-number 5-8 {');
+    expect(outlineOfReading('x^2.5')).toBe('bad-number 2-5 {');
+  });
+
   it('looks through what only adorns', () => {
     expect(outlineOfReading('\\frac{\\cancel{(x-2)}(x+1)}{\\cancel{(x-2)}}')).toBe('(/ (* (+x -2) (+x +1)) (+x -2))');
     expect(outlineOfReading('\\boxed{x=3}')).toBe('(relation x = 3)');
