@@ -15,9 +15,14 @@ const isTrial = import.meta.env.DEV || document.documentElement.dataset['demo'] 
 
 /** Pages for people who have signed in; they stand in the shell. One line a page, in the order of paths.ts. */
 const INSIDE: readonly PageRoute[] = [
+  { path: '/', load: () => import('./pages/today.tsx') },
   { path: '/account', load: () => import('./pages/account.tsx') },
   { path: '/classes', load: () => import('./pages/classes.tsx') },
   { path: '/classes/:classId', load: () => import('./pages/class.tsx') },
+  { path: '/tasks', load: () => import('./pages/tasks.tsx') },
+  { path: '/tasks/:taskId', load: () => import('./pages/task.tsx') },
+  { path: '/rounds/new', load: () => import('./pages/round-new.tsx') },
+  { path: '/rounds/:roundId', load: () => import('./pages/round.tsx') },
   { path: '/rounds/:roundId/write', load: () => import('./pages/write.tsx') },
   { path: '/reviews/:reviewId', load: () => import('./pages/review.tsx') },
   { path: '/derivations/:derivationId', load: () => import('./pages/derivation.tsx') },

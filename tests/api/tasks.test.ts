@@ -76,7 +76,7 @@ describe('the collection', () => {
       body.errors.map((error: { pointer: string; detail: string }) => [error.pointer, error.detail]),
     );
     expect([...said.keys()]).toEqual(['/given', '/assumptions/0', '/goal/target']);
-    expect(said.get('/given')).toContain('cannot be read after “(x+2”');
+    expect(said.get('/given')).toContain('A bracket is missing at the end of the line');
     expect(said.get('/assumptions/0')).toContain('such as x > 0');
   });
 

@@ -1,5 +1,6 @@
 import type { DataSource, EntityManager } from 'typeorm';
-import type { Reading, ReadError, ReadSettings } from '../../../shared/maths/expression.ts';
+import type { Reading, ReadSettings } from '../../../shared/maths/expression.ts';
+import { wordReadError } from '../../../shared/maths/reads-as.ts';
 import type { FieldError } from '../../../shared/schemas/problem.ts';
 import type { TaskAnswer, TaskChange, TaskForm, TaskListItem } from '../../../shared/schemas/task.ts';
 import { notFound, ProblemError } from '../../http/problem-error.ts';
@@ -145,20 +146,11 @@ function refuseUnread(form: TaskForm, readLine: TasksDeps['readLine']): void {
   ];
   const errors = lines.flatMap(({ pointer, tex }): FieldError[] => {
     const reading = readLine(tex, settings);
-    if (!reading.ok) return [{ pointer, detail: sayReadError(tex, reading.error) }];
+    if (!reading.ok) return [{ pointer, detail: wordReadError(reading.error) }];
     if (pointer.startsWith('/assumptions') && reading.line.kind === 'expression') {
       return [{ pointer, detail: 'An assumption says something, such as x > 0.' }];
     }
     return [];
   });
   if (errors.length > 0) throw new ProblemError('invalid-fields', { errors });
-}
-
-/** Where it stops being readable and what was expected there. */
-function sayReadError(tex: string, { span, found, expected }: ReadError): string {
-  const before = tex.slice(Math.max(0, span.start - 16), span.start).trim();
-  const place = before === '' ? 'at the beginning' : `after “${before}”`;
-  const stands = found === '' ? '' : `: “${found}” stands there`;
-  const wanted = expected.length > 0 ? `${stands === '' ? ': ' : ', '}expected is ${expected.join(' or ')}` : '';
-  return `This cannot be read ${place}${stands}${wanted}.`;
 }

@@ -1,6 +1,6 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useState, type ReactNode } from 'react';
-import { Controller, useForm, useWatch, type Control } from 'react-hook-form';
+import { Controller, useForm, useWatch, type Control, type Resolver } from 'react-hook-form';
 import {
   INSTANTS,
   roundFormSchema,
@@ -33,6 +33,9 @@ export interface RoundFormProps {
   readonly acts?: ReactNode;
 }
 
+// The schema's defaults make its input looser than the fields, which are always all there.
+const resolver = zodResolver(roundFormSchema) as unknown as Resolver<Values>;
+
 const LABELS: Record<InstantName, string> = {
   opensAt: 'Opens',
   writingEndsAt: 'Writing ends',
@@ -55,7 +58,7 @@ const PASSED: Record<Stage, number> = { planned: 0, writing: 1, reviewing: 2, an
 
 /** Plans a round, or changes one as far as it has not happened yet. */
 export function RoundForm({ choices, initial, stage, isNew, submitLabel, onSubmit, acts }: RoundFormProps) {
-  const form = useForm<Values>({ resolver: zodResolver(roundFormSchema) as never, defaultValues: initial });
+  const form = useForm<Values>({ resolver, defaultValues: initial });
   const { control, formState, register, setError, handleSubmit } = form;
   const { errors, isSubmitting } = formState;
   const classId = useWatch({ control, name: 'classId' });
