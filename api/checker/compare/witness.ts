@@ -1,4 +1,5 @@
 import type { CheckContext } from '../context.ts';
+import { isKnown, toBall } from '../values/arithmetic.ts';
 import { usualDigits, valueTex } from '../values/value-tex.ts';
 import type { Point, Value } from '../values/value.ts';
 import { agreementOf } from './agreement.ts';
@@ -19,14 +20,13 @@ export function witnessAt(pair: Pair, point: Point, bits: number, context: Check
 
 /** As few digits as show that the values differ. */
 function shownApart(above: Value, below: Value, bits: number): { above: string; below: string } {
-  let shown = { above: valueTex(above, bits), below: valueTex(below, bits) };
-  for (let digits = usualDigits; digits <= mostDigits; digits += 4) {
-    shown = { above: valueTex(above, bits, digits), below: valueTex(below, bits, digits) };
-    const isScientific = shown.above.includes('10^') !== shown.below.includes('10^') && digits < plainDigits;
-    if (shown.above !== shown.below && !isScientific) return shown;
-  }
-  return shown;
+  let digits = usualDigits;
+  while (digits < mostDigits && decimals(above, bits, digits) === decimals(below, bits, digits)) digits += 3;
+  return { above: valueTex(above, bits, digits), below: valueTex(below, bits, digits) };
+}
+
+function decimals(value: Value, bits: number, digits: number): string {
+  return isKnown(value) ? valueTex(toBall(value, bits), bits, digits) : '';
 }
 
 const mostDigits = 60;
-const plainDigits = 22;
