@@ -1,7 +1,6 @@
 import { IsNull, type DataSource, type EntityManager } from 'typeorm';
 import type { AnswerForm } from '../../../shared/schemas/finding.ts';
 import type { AuthorDerivation, TeacherDerivation } from '../../../shared/schemas/review.ts';
-import type { Verdict } from '../../../shared/schemas/verdict.ts';
 import { GRACE_MS } from '../../../shared/lib/round-times.ts';
 import { notFound, ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
@@ -11,7 +10,8 @@ import { Membership } from '../classes/classes.entity.ts';
 import { Derivation, DerivationVersion } from '../derivations/derivations.entity.ts';
 import { Dispute } from '../disputes/disputes.entity.ts';
 import type { Round } from '../rounds/rounds.entity.ts';
-import { Answer, Finding, Review } from '../reviews/reviews.entity.ts';
+import { Finding, type Review } from '../reviews/reviews.entity.ts';
+import { saveAnswer, syncDispute } from './contested-findings.ts';
 import { findAuthorView, findTeacherView, type ViewDeps } from './derivation-views.ts';
 
 export interface AnswersDeps extends ViewDeps {
@@ -50,8 +50,8 @@ export function createAnswersService(deps: AnswersDeps) {
     await db.transaction(async (manager) => {
       const { finding, review } = await getOwnFinding(manager, authorKey, viewer);
       requireAnswering(await lockRound(manager, review.roundId, 'read'));
-      await saveAnswer(manager, finding.id, form);
-      await syncDispute(manager, finding, review, viewer, form);
+      await saveAnswer(manager, finding.id, form, now());
+      await syncDispute(deps, manager, { finding, review }, form, viewer.userId);
     });
   }
 
@@ -105,61 +105,7 @@ export function createAnswersService(deps: AnswersDeps) {
       throw new ProblemError('too-late', { detail: 'Answering has ended.' });
   }
 
-  async function saveAnswer(manager: EntityManager, findingId: string, form: AnswerForm): Promise<void> {
-    const at = now();
-    const known = await manager.findOneBy(Answer, { findingId });
-    if (known) await manager.update(Answer, known.id, { ...form, updatedAt: at });
-    else await manager.insert(Answer, { findingId, ...form, createdAt: at, updatedAt: at });
-  }
-
-  /**
-   * A contested finding goes to the desk only where the verdict is undecided or the finding agrees with it; otherwise
-   * the verdict answers it at settling. The author is answered the same in every case.
-   */
-  async function syncDispute(
-    manager: EntityManager,
-    finding: Finding,
-    review: Review,
-    viewer: Viewer,
-    form: AnswerForm,
-  ): Promise<void> {
-    const open = await manager.findOneBy(Dispute, {
-      findingId: finding.id,
-      kind: 'contested-finding',
-      closedAt: IsNull(),
-    });
-    if (form.kind === 'accept') {
-      if (open) await manager.update(Dispute, open.id, { closedAt: now(), closedBy: 'withdrawn' });
-      return;
-    }
-    if (open) {
-      await manager.update(Dispute, open.id, { words: form.reason });
-      return;
-    }
-    const verdict = (await deps.findCurrentVerdicts(manager, [review.versionId])).get(review.versionId) ?? null;
-    if (!isForTheDesk(finding, verdict)) return;
-    await manager.insert(Dispute, {
-      roundId: review.roundId,
-      versionId: review.versionId,
-      kind: 'contested-finding',
-      step: finding.pick ?? verdict?.steps.find((step) => step.ruling === 'undecided')?.step ?? 1,
-      findingId: finding.id,
-      raisedById: viewer.userId,
-      words: form.reason,
-      openedAt: now(),
-    });
-  }
-
   return { read, answer, contestVerdict, answerQuestion };
-}
-
-/** Whether a contested finding needs a ruling: nothing is decided yet, or the finding says what the verdict says. */
-export function isForTheDesk(
-  finding: Pick<Finding, 'pick' | 'noFault'>,
-  verdict: Pick<Verdict, 'outcome' | 'firstFault'> | null,
-): boolean {
-  if (!verdict || verdict.outcome === 'undecided') return true;
-  return verdict.firstFault === null ? finding.noFault : finding.pick === verdict.firstFault;
 }
 
 async function getOwn(manager: EntityManager, derivationId: string, viewer: Viewer): Promise<Derivation> {

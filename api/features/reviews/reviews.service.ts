@@ -1,14 +1,13 @@
 import { IsNull, type DataSource, type EntityManager } from 'typeorm';
-import { GRACE_MS, ownReviewingEnd } from '../../../shared/lib/round-times.ts';
 import { EMPTY_DRAFT, type FindingDraft } from '../../../shared/schemas/finding.ts';
 import type { DraftSaved, ReviewAnswer } from '../../../shared/schemas/review.ts';
 import { namesInText } from '../../../shared/lib/names-in-text.ts';
-import { notFound, ProblemError } from '../../http/problem-error.ts';
+import { ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
 import { laterThan } from '../../lib/later-than.ts';
 import { lockRound } from '../../lib/lock-round.ts';
 import { Membership } from '../classes/classes.entity.ts';
-import { Extension, type Round } from '../rounds/rounds.entity.ts';
+import { findEnd, findInForce, getReview, isOpen, loaded, lockOpenReview, requireOpen } from './open-review.ts';
 import { Finding, Review } from './reviews.entity.ts';
 import { toFinding, toReviewAnswer } from './reviews.presenter.ts';
 import { contestPoints, findReviewResult, type ResultDeps } from './review-result.ts';
@@ -28,7 +27,7 @@ export function createReviewsService(deps: ReviewsDeps) {
     const { manager } = db;
     const review = await getReview(manager, reviewId, viewer);
     const round = loaded(review.round);
-    const canEdit = isOpen(review, round, await findEnd(manager, review, round));
+    const canEdit = isOpen(review, round, await findEnd(manager, review, round), now());
     if (canEdit && review.openedAt === null)
       await manager.update(Review, { id: reviewId, openedAt: IsNull() }, { openedAt: now() });
     const total = await manager.countBy(Review, { roundId: review.roundId, reviewerId: viewer.userId });
@@ -46,22 +45,15 @@ export function createReviewsService(deps: ReviewsDeps) {
     const { manager } = db;
     const review = await getReview(manager, reviewId, viewer);
     const round = loaded(review.round);
-    requireOpen(review, round, await findEnd(manager, review, round));
+    requireOpen(review, round, await findEnd(manager, review, round), now());
     requireWithin(draft, review);
-    const saved = await manager
-      .createQueryBuilder()
-      .update(Review)
-      .set({ draft: () => ':draft::jsonb', draftVersion: version + 1, draftSavedAt: now() })
-      .where('id = :reviewId and draft_version = :version', { reviewId, version })
-      .setParameter('draft', JSON.stringify(draft))
-      .execute();
-    if (saved.affected === 0) throw await toConflict(manager, reviewId);
+    await writeDraft(manager, reviewId, { draft, version, at: now() });
     return { version: version + 1, names: namesInText(draft.why, await findClassNames(manager, round.classId)) };
   }
 
   async function handIn(viewer: Viewer, reviewId: string, given: FindingDraft): Promise<ReviewAnswer> {
     await db.transaction(async (manager) => {
-      const review = await lockOpenReview(manager, reviewId, viewer);
+      const review = await lockOpenReview(manager, reviewId, viewer, now());
       requireWithin(given, review);
       const before = await findInForce(manager, reviewId);
       await manager.insert(Finding, {
@@ -80,7 +72,7 @@ export function createReviewsService(deps: ReviewsDeps) {
 
   async function takeBack(viewer: Viewer, reviewId: string): Promise<ReviewAnswer> {
     await db.transaction(async (manager) => {
-      await lockOpenReview(manager, reviewId, viewer);
+      await lockOpenReview(manager, reviewId, viewer, now());
       // All of them: an earlier one must not come back into force because the last was taken back.
       await manager.update(Finding, { reviewId, takenBackAt: IsNull() }, { takenBackAt: now() });
     });
@@ -93,7 +85,7 @@ export function createReviewsService(deps: ReviewsDeps) {
     reason: NonNullable<Review['setAside']>,
   ): Promise<ReviewAnswer> {
     await db.transaction(async (manager) => {
-      await lockOpenReview(manager, reviewId, viewer);
+      await lockOpenReview(manager, reviewId, viewer, now());
       if (await findInForce(manager, reviewId)) {
         throw new ProblemError('conflict', { detail: 'Take your finding back first.' });
       }
@@ -112,48 +104,23 @@ export function createReviewsService(deps: ReviewsDeps) {
     return await read(viewer, reviewId);
   }
 
-  /** Locks round and review, so that no finding lands after the stage has changed. */
-  async function lockOpenReview(manager: EntityManager, reviewId: string, viewer: Viewer): Promise<Review> {
-    const found = await getReview(manager, reviewId, viewer);
-    const round = await lockRound(manager, found.roundId, 'read');
-    await manager.findOneOrFail(Review, { where: { id: reviewId }, lock: { mode: 'pessimistic_write' } });
-    const review = await getReview(manager, reviewId, viewer);
-    requireOpen(review, round, await findEnd(manager, review, round));
-    return review;
-  }
-
-  function isOpen(review: Review, round: Round, endsAt: Date): boolean {
-    return round.stage === 'reviewing' && review.setAside === null && now().getTime() <= endsAt.getTime() + GRACE_MS;
-  }
-
-  function requireOpen(review: Review, round: Round, endsAt: Date): void {
-    if (round.stage !== 'reviewing') throw new ProblemError('wrong-stage', { detail: 'Reviewing is over.' });
-    if (review.setAside !== null) throw new ProblemError('conflict', { detail: 'You have set this review aside.' });
-    if (!isOpen(review, round, endsAt)) throw new ProblemError('too-late', { detail: 'Reviewing has ended.' });
-  }
-
   return { read, saveDraft, handIn, takeBack, setAside, contest };
 }
 
-async function getReview(manager: EntityManager, reviewId: string, viewer: Viewer): Promise<Review> {
-  const review = await manager.findOne(Review, {
-    where: { id: reviewId, reviewerId: viewer.userId },
-    relations: { round: { class: true }, version: true },
-  });
-  if (!review) throw notFound();
-  return review;
-}
-
-async function findInForce(manager: EntityManager, reviewId: string): Promise<Finding | null> {
-  return await manager.findOne(Finding, {
-    where: { reviewId, takenBackAt: IsNull() },
-    order: { handedInAt: 'DESC', id: 'DESC' },
-  });
-}
-
-async function findEnd(manager: EntityManager, review: Review, round: Round): Promise<Date> {
-  const extension = await manager.findOneBy(Extension, { roundId: round.id, userId: review.reviewerId });
-  return ownReviewingEnd(round, extension);
+/** @throws {ProblemError} conflict, with what stands there, when the draft is no longer at this version. */
+async function writeDraft(
+  manager: EntityManager,
+  reviewId: string,
+  { draft, version, at }: { draft: FindingDraft; version: number; at: Date },
+): Promise<void> {
+  const saved = await manager
+    .createQueryBuilder()
+    .update(Review)
+    .set({ draft: () => ':draft::jsonb', draftVersion: version + 1, draftSavedAt: at })
+    .where('id = :reviewId and draft_version = :version', { reviewId, version })
+    .setParameter('draft', JSON.stringify(draft))
+    .execute();
+  if (saved.affected === 0) throw await toConflict(manager, reviewId);
 }
 
 async function findClassNames(manager: EntityManager, classId: string): Promise<string[]> {
@@ -183,9 +150,4 @@ function requireWithin({ pick, markedSpan }: FindingDraft, review: Review): void
       errors: [{ pointer: '/markedSpan', detail: 'The marked part is not in this line.' }],
     });
   }
-}
-
-function loaded<T>(relation: T | undefined): T {
-  if (relation === undefined) throw new Error('A relation was not loaded');
-  return relation;
 }

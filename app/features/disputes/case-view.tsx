@@ -264,7 +264,7 @@ function Said({ sentence }: { sentence: Sentence }) {
 }
 
 function wordsOf(step: ReadStep, wordStep: WordStep) {
-  const { mended: _mended, difference: _difference, ...evidence } = step.evidence;
+  const { mended: _mended, difference: _difference, solutions: _solutions, ...evidence } = step.evidence;
   const ruling =
     step.state === 'undecided' ? 'undecided' : step.state === 'holds' || step.state === 'carried' ? 'holds' : 'fails';
   return wordStep({ step: step.step, ruling, reached: step.reached, notes: [...step.notes], evidence }, step.state);

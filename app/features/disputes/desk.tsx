@@ -1,6 +1,6 @@
 import './disputes.css';
 import { useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
-import { useEffect, useRef, useState } from 'react';
+import { useEffect, useId, useRef, useState } from 'react';
 import type { DisputeCase, DisputeItem, DisputeNames } from '../../../shared/schemas/dispute.ts';
 import { ErrorState, problemWords, Waiting } from '../../ui/states.tsx';
 import { showToast } from '../../ui/toast-store.ts';
@@ -63,7 +63,7 @@ function OpenCase({ dispute, wordStep, isLast, onDone }: OpenCaseProps) {
   const [reason, setReason] = useState('');
   const [along, setAlong] = useState(dispute.sameStep > 0);
   const [names, setNames] = useState<DisputeNames | null>(null);
-  const reasonRef = useRef<HTMLTextAreaElement>(null);
+  const reasonId = useId();
   const reveal = useMutation({ mutationFn: () => revealNames(dispute.disputeId), onSuccess: setNames });
   const act = useMutation({
     mutationFn: async () => {
@@ -81,13 +81,12 @@ function OpenCase({ dispute, wordStep, isLast, onDone }: OpenCaseProps) {
   const choose = (chosen: Choice) => {
     if (chosen === 'ask' && !dispute.mayAsk) return;
     setChoice(chosen);
-    reasonRef.current?.focus();
+    document.getElementById(reasonId)?.focus();
   };
   useKeys({
     ...Object.fromEntries(CHOICES.map((each, i) => [String(i + 1), () => choose(each)])),
     Enter: () => isReady && act.mutate(),
   });
-  useReasonEnter(reasonRef, () => isReady && act.mutate());
   const refused = act.error ?? reveal.error;
   return (
     <>
@@ -104,7 +103,8 @@ function OpenCase({ dispute, wordStep, isLast, onDone }: OpenCaseProps) {
         isBusy={act.isPending}
         error={refused ? problemWords(refused).detail || problemWords(refused).title : undefined}
         isLast={isLast}
-        reasonRef={reasonRef}
+        reasonId={reasonId}
+        onReasonEnter={() => isReady && act.mutate()}
       />
     </>
   );
@@ -125,8 +125,7 @@ function useKeys(keys: Readonly<Record<string, () => unknown>>): void {
     const onKeyDown = (event: KeyboardEvent) => {
       const act = latest.current[event.key];
       const { target } = event;
-      const isTaken =
-        target instanceof Element && target.closest('input, textarea, select, [role="dialog"], math-field');
+      const isTaken = isTyping(target) || (event.key.startsWith('Arrow') && target instanceof HTMLInputElement);
       const isPressed = event.key === 'Enter' && target instanceof Element && target.closest('button, a, summary');
       if (!act || isTaken || isPressed || event.ctrlKey || event.metaKey || event.altKey) return;
       event.preventDefault();
@@ -137,20 +136,7 @@ function useKeys(keys: Readonly<Record<string, () => unknown>>): void {
   }, []);
 }
 
-/** Enter in the reason rules; with Shift it makes a new line. */
-function useReasonEnter(field: React.RefObject<HTMLTextAreaElement | null>, onEnter: () => unknown): void {
-  const latest = useRef(onEnter);
-  useEffect(() => {
-    latest.current = onEnter;
-  });
-  useEffect(() => {
-    const element = field.current;
-    const onKeyDown = (event: KeyboardEvent) => {
-      if (event.key !== 'Enter' || event.shiftKey || event.isComposing) return;
-      event.preventDefault();
-      latest.current();
-    };
-    element?.addEventListener('keydown', onKeyDown);
-    return () => element?.removeEventListener('keydown', onKeyDown);
-  }, [field]);
+function isTyping(target: EventTarget | null): boolean {
+  if (target instanceof HTMLInputElement) return target.type !== 'radio' && target.type !== 'checkbox';
+  return target instanceof Element && target.closest('textarea, select, [role="dialog"], math-field') !== null;
 }

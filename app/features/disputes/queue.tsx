@@ -1,3 +1,4 @@
+import { useState } from 'react';
 import { Link } from 'react-router-dom';
 import type { DisputeItem } from '../../../shared/schemas/dispute.ts';
 import { sayDuration } from '../../lib/dates.ts';
@@ -16,6 +17,7 @@ export interface QueueProps {
 
 /** What waits, most people first; the figure of people leads each entry. */
 export function Queue({ items, openId, isUnfolded, onUnfold }: QueueProps) {
+  const [now] = useState(() => Date.now());
   const people = items.reduce((sum, item) => sum + item.people, 0);
   return (
     <nav className="queue" aria-label="Disputes, most people first" data-unfolded={isUnfolded || undefined}>
@@ -42,7 +44,7 @@ export function Queue({ items, openId, isUnfolded, onUnfold }: QueueProps) {
                 </span>
                 <SmallEdge states={item.states} step={16} />
               </span>
-              <i>{sayDuration(Date.now() - Date.parse(item.openedAt))}</i>
+              <i>{ageWords(item.openedAt, now)}</i>
             </Link>
           </li>
         ))}
@@ -59,4 +61,9 @@ export function Queue({ items, openId, isUnfolded, onUnfold }: QueueProps) {
       </p>
     </nav>
   );
+}
+
+function ageWords(openedAt: string, now: number): string {
+  const ms = now - Date.parse(openedAt);
+  return ms < 60_000 ? 'now' : sayDuration(ms);
 }

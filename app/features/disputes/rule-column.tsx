@@ -1,5 +1,4 @@
 import { useQuery } from '@tanstack/react-query';
-import type { RefObject } from 'react';
 import type { DisputeCase } from '../../../shared/schemas/dispute.ts';
 import { countWord } from '../../lib/finding-words.ts';
 import { Button } from '../../ui/button.tsx';
@@ -25,7 +24,9 @@ export interface RuleColumnProps {
   readonly isBusy: boolean;
   readonly error: string | undefined;
   readonly isLast: boolean;
-  readonly reasonRef: RefObject<HTMLTextAreaElement | null>;
+  /** Enter in the reason. */
+  readonly onReasonEnter: () => void;
+  readonly reasonId: string;
 }
 
 /** The rulings by number, the reason, and what it will change before the button. */
@@ -37,20 +38,24 @@ export function RuleColumn(props: RuleColumnProps) {
       <h3 id="rule-head">Rule</h3>
       <div className="rulings" role="radiogroup" aria-labelledby="rule-head">
         {CHOICES.map((each, i) => (
-          <button
+          <label
             key={each}
-            type="button"
-            role="radio"
-            aria-checked={choice === each}
             className={choice === each ? 'rk sel' : 'rk'}
-            disabled={each === 'ask' && !dispute.mayAsk}
-            onClick={() => onChoose(each)}
+            data-off={(each === 'ask' && !dispute.mayAsk) || undefined}
           >
+            <input
+              type="radio"
+              className="sr-only"
+              name="ruling"
+              checked={choice === each}
+              disabled={each === 'ask' && !dispute.mayAsk}
+              onChange={() => onChoose(each)}
+            />
             <Kbd>{i + 1}</Kbd>
             <span>
               {wordsOf(each, dispute).label} <em>{wordsOf(each, dispute).hint}</em>
             </span>
-          </button>
+          </label>
         ))}
       </div>
       {dispute.sameStep > 0 && !isAsking ? (
@@ -61,7 +66,12 @@ export function RuleColumn(props: RuleColumnProps) {
         />
       ) : null}
       <TextArea
-        ref={props.reasonRef}
+        id={props.reasonId}
+        onKeyDown={(event) => {
+          if (event.key !== 'Enter' || event.shiftKey || event.nativeEvent.isComposing) return;
+          event.preventDefault();
+          props.onReasonEnter();
+        }}
         label={isAsking ? 'Question to the author' : reasonLabel(dispute, along)}
         rows={3}
         maxLength={2000}

@@ -37,7 +37,7 @@ export function FindingForm({ review, keeper, view, markedTex, canMark }: Findin
   const act = useActs(review, keeper);
   return (
     <form
-      className="finding ui stack"
+      className="finding stack"
       onSubmit={(event) => {
         event.preventDefault();
         act.handIn.mutate(draft);

@@ -29,7 +29,7 @@ export function ReviewDone({ review }: { readonly review: ReviewAnswer }) {
 function HandedIn({ review }: { review: ReviewAnswer }) {
   const { finding, round, setAside } = review;
   return (
-    <div className="finding ui stack">
+    <div className="finding stack">
       <h2>{setAside ? 'Set aside' : finding ? 'Your finding' : 'Nothing handed in'}</h2>
       {setAside ? (
         <p className="small">

@@ -6,7 +6,7 @@ const HEIGHT = 190;
 const LEFT = 46;
 const RIGHT = 478;
 const TOP = 26;
-const BOTTOM = 150;
+const BOTTOM = 138;
 
 /** Mean points by round: the own line with its ticks, the class dotted behind it. */
 export function ProgressChart({ rounds }: { readonly rounds: OwnStanding['rounds'] }) {

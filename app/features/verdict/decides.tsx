@@ -37,8 +37,7 @@ export function Decides({ what, contest, steps, onContest, children }: DecidesPr
             <>
               You can contest {what} until <Time iso={openUntil} />.
             </>
-          ) : null}{' '}
-          <span className="muted">School rules and local law on pupils’ data and marks stand above this.</span>
+          ) : null}
         </p>
         {openUntil && !isWaiting ? (
           <Button kind="quiet" small onClick={() => setOpen(true)}>
@@ -46,6 +45,7 @@ export function Decides({ what, contest, steps, onContest, children }: DecidesPr
           </Button>
         ) : null}
       </div>
+      <p className="fine muted">School rules and local law on pupils’ data and marks stand above this.</p>
       {isOpen ? <ContestDialog what={what} steps={steps} onContest={onContest} onClose={() => setOpen(false)} /> : null}
     </div>
   );
