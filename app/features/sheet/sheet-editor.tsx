@@ -1,6 +1,6 @@
 import { EditorContent, useEditor, type Editor, type JSONContent } from '@tiptap/react';
 import StarterKit from '@tiptap/starter-kit';
-import { useEffect, useMemo, useState } from 'react';
+import { useEffect, useMemo, useRef, useState } from 'react';
 import { EMPTY_SHEET, type HandedInLine, type SheetDocument } from '../../../shared/schemas/sheet.ts';
 import { Button } from '../../ui/button.tsx';
 import { Kbd } from '../../ui/kbd.tsx';
@@ -86,13 +86,17 @@ export function SheetEditor({ document, fixed, editable, store, onChange, onRead
     editorProps: {
       attributes: { class: 'deriv sheet-lines', role: 'list', 'aria-label': 'Your lines' },
     },
-    onCreate: ({ editor: made }) => {
-      onReady(made);
-      if (editable && matchMedia('(pointer: fine)').matches) made.view.dispatch(atEnd(made.state));
-    },
     onUpdate: ({ editor: changed }) => onChange(changed.getJSON() as SheetDocument),
   });
-  useEffect(() => store.follow(editor), [store, editor]);
+  const ready = useRef(onReady);
+  useEffect(() => {
+    const stop = store.follow(editor);
+    ready.current(editor);
+    return stop;
+  }, [store, editor]);
+  useEffect(() => {
+    if (editable && matchMedia('(pointer: fine)').matches) editor.view.dispatch(atEnd(editor.state));
+  }, [editor, editable]);
   useEffect(() => editor.setEditable(editable, false), [editor, editable]);
   useEffect(() => {
     // Asked for before the first line is entered, so that it can be typed on at once.

@@ -141,7 +141,8 @@ function Foot({ sheet, store, running }: FootProps) {
             {openWords(facts)}
             {sheet.lateNow ? null : (
               <>
-                You may hand in and come back until <Time iso={sheet.writingEndsAt} style="time" />.
+                You may {facts.unread.length + facts.twoWays.length > 0 ? 'still ' : ''}hand in and come back until{' '}
+                <Time iso={sheet.writingEndsAt} style="time" />.
               </>
             )}
           </p>

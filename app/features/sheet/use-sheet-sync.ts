@@ -24,13 +24,14 @@ export interface RunningSync {
 /** Keeps the editor, this browser and the server in step for as long as the page is open. */
 export function useSheetSync({ scope, draft, save }: SheetSyncOptions): RunningSync {
   const [sync, setSync] = useState<SheetSync | null>(null);
+  const running = useRef<SheetSync | null>(null);
   const editor = useRef<Editor | null>(null);
   const latest = useRef({ draft, save });
   useEffect(() => {
     latest.current = { draft, save };
   });
   useEffect(() => {
-    const running = createSheetSync({
+    const made = createSheetSync({
       draft: latest.current.draft,
       copies: openLocalCopies({
         scope,
@@ -44,15 +45,16 @@ export function useSheetSync({ scope, draft, save }: SheetSyncOptions): RunningS
       onReplace: (document) => editor.current && replaceContent(editor.current, document),
       now: Date.now,
     });
-    setSync(running);
-    void running.recover();
-    const retry = () => running.retry();
+    running.current = made;
+    setSync(made);
+    void made.recover();
+    const retry = () => made.retry();
     window.addEventListener('online', retry);
     window.addEventListener('focus', retry);
     return () => {
       window.removeEventListener('online', retry);
       window.removeEventListener('focus', retry);
-      running.close();
+      made.close();
     };
   }, [scope]);
   useEffect(() => sync?.serverHas(draft), [sync, draft]);
@@ -63,11 +65,12 @@ export function useSheetSync({ scope, draft, save }: SheetSyncOptions): RunningS
   return {
     sync,
     state: state ?? { kind: 'saved', at: draft.savedAt },
-    onChange: (document) => sync?.edit(document),
+    onChange: (document) => running.current?.edit(document),
     onReady: (made) => {
       editor.current = made;
       // What a crashed page left may have been found before the editor stood.
-      if (sync && sync.document !== draft.document) replaceContent(made, sync.document);
+      const known = running.current?.document;
+      if (known && known !== latest.current.draft.document) replaceContent(made, known);
     },
   };
 }
