@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react';
 import type { BoardAnswer, BoardPerson } from '../../../shared/schemas/round.ts';
 import { sayDuration } from '../../lib/dates.ts';
+import { classNames } from '../../ui/class-names.ts';
 import { SmallEdge, type SmallStep } from '../../ui/small-edge.tsx';
 import { shortInstant } from './round-words.ts';
 
@@ -28,6 +29,8 @@ interface Row {
   readonly edgeWords: string;
   readonly words: string;
   readonly isLive?: boolean;
+  /** Times and figures stand in the text face. */
+  readonly isTime?: boolean;
 }
 
 const NOW_MS = 60_000;
@@ -48,8 +51,15 @@ interface ListsProps {
   readonly onChoose?: (person: BoardPerson) => void;
 }
 
+/** So many more people on one side leave a hole on the other: then the long list goes below, in two columns. */
+const UNEVEN = 8;
+
 function Lists({ figures, left, right, below, onChoose }: ListsProps) {
   const filled = (groups: readonly Group[]) => groups.filter(({ people }) => people.length > 0);
+  const size = (groups: readonly Group[]) => groups.reduce((sum, { people }) => sum + people.length, 0);
+  const isUneven = Math.abs(size(left) - size(right)) > UNEVEN;
+  const columns = isUneven ? [] : [filled(left), filled(right)];
+  const wide = isUneven ? [...filled(left), ...filled(right), ...filled(below)] : filled(below);
   return (
     <section aria-label="How everyone stands">
       <ul className="figures">
@@ -60,18 +70,15 @@ function Lists({ figures, left, right, below, onChoose }: ListsProps) {
         ))}
       </ul>
       <div className="lists">
-        <div>
-          {filled(left).map((group) => (
-            <PeopleGroup key={group.title} group={group} onChoose={onChoose} />
-          ))}
-        </div>
-        <div>
-          {filled(right).map((group) => (
-            <PeopleGroup key={group.title} group={group} onChoose={onChoose} />
-          ))}
-        </div>
+        {columns.map((groups, i) => (
+          <div key={i}>
+            {groups.map((group) => (
+              <PeopleGroup key={group.title} group={group} onChoose={onChoose} />
+            ))}
+          </div>
+        ))}
       </div>
-      {filled(below).map((group) => (
+      {wide.map((group) => (
         <PeopleGroup key={group.title} group={group} onChoose={onChoose} isWide />
       ))}
     </section>
@@ -103,7 +110,7 @@ function PeopleGroup({
               ) : (
                 <span className="fine muted">–</span>
               )}
-              <span className={row.isLive ? 'now live' : 'now'}>{row.words}</span>
+              <span className={classNames('now', row.isLive && 'live', row.isTime && 'num')}>{row.words}</span>
             </li>
           );
         })}
@@ -178,7 +185,10 @@ function writingLists({ people, round, now }: BoardAnswer): Omit<ListsProps, 'on
         people: handedIn,
         row: (person) => {
           const at = shortInstant(person.handedInAt ?? now, round.timeZone, now);
-          return lines(person, `${at}${person.late ? ', late' : ''}${person.tooShort ? ', too short' : ''}`);
+          return {
+            ...lines(person, `${at}${person.late ? ', late' : ''}${person.tooShort ? ', too short' : ''}`),
+            isTime: true,
+          };
         },
       },
       { title: 'Excused', people: of('excused'), row: (person) => lines(person, 'excused') },
@@ -186,7 +196,7 @@ function writingLists({ people, round, now }: BoardAnswer): Omit<ListsProps, 'on
   };
 }
 
-function reviewingLists({ people }: BoardAnswer): Omit<ListsProps, 'onChoose'> {
+function reviewingLists({ people, alerts }: BoardAnswer): Omit<ListsProps, 'onChoose'> {
   const dealt = people.filter(({ state, reviews }) => state !== 'excused' && reviews.dealt > 0);
   const done = dealt.filter(({ reviews }) => reviews.done === reviews.dealt);
   const open = dealt.filter(({ reviews }) => reviews.done < reviews.dealt);
@@ -195,7 +205,8 @@ function reviewingLists({ people }: BoardAnswer): Omit<ListsProps, 'onChoose'> {
   const row = ({ reviews }: BoardPerson): Row => ({
     edge: Array.from({ length: reviews.dealt }, (_, i): SmallStep => (i < reviews.done ? 'walked' : 'plain')),
     edgeWords: `${reviews.done} of ${reviews.dealt} reviews handed in`,
-    words: `${reviews.done} of ${reviews.dealt}${reviews.begun > 0 ? ', one begun' : ''}`,
+    words: `${reviews.done} of ${reviews.dealt}${reviews.begun > 0 ? `, ${reviews.begun} begun` : ''}`,
+    isTime: true,
   });
   const total = (count: (person: BoardPerson) => number) => dealt.reduce((sum, person) => sum + count(person), 0);
   const waiting = people.filter(({ state, reviews }) => state !== 'excused' && reviews.dealt === 0);
@@ -210,7 +221,7 @@ function reviewingLists({ people }: BoardAnswer): Omit<ListsProps, 'onChoose'> {
       { count: idle.length, words: 'not begun' },
     ],
     left: [
-      { title: 'Not begun', people: idle, isPressing: true, row },
+      { title: 'Not begun', people: idle, isPressing: alerts.some(({ kind }) => kind === 'reviews-not-begun'), row },
       {
         title: 'Has nothing to review yet',
         people: waiting,
@@ -242,7 +253,8 @@ function answeringLists({ people, disputesOpen, round }: BoardAnswer): Omit<List
     return {
       edge: Array.from({ length: received }, (_, i): SmallStep => (i < answered ? 'walked' : 'plain')),
       edgeWords: `${answered} of ${received} findings answered`,
-      words: `${answered} of ${received} answered`,
+      words: `${answered} of ${received}`,
+      isTime: true,
     };
   };
   const sum = (count: (person: BoardPerson) => number) => authors.reduce((all, person) => all + count(person), 0);

@@ -41,7 +41,7 @@ export function PersonDialog({ round, person, now, onClose }: PersonDialogProps)
         ) : null}
         {mayExtend ? <Extend round={round} person={person} onClose={onClose} /> : null}
         {round.stage === 'settled' ? null : (
-          <section className="border-t border-rule pt-4">
+          <section className="stack border-t border-rule pt-4">
             <p className="small">
               {isExcused
                 ? 'Missing work counts for nothing while excused.'
@@ -60,7 +60,7 @@ export function PersonDialog({ round, person, now, onClose }: PersonDialogProps)
                 {refusalOf(excuse.error)}
               </p>
             ) : null}
-            <div className="acts mt-3">
+            <div className="acts">
               <Button busy={excuse.isPending} onClick={() => excuse.mutate()}>
                 {isExcused ? 'End the excuse' : 'Excuse from this round'}
               </Button>

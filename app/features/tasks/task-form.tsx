@@ -124,13 +124,23 @@ export function TaskForm({ initial, submitLabel, onSubmit, onTerms, acts }: Task
       <fieldset>
         <legend className="flabel">How steps are judged</legend>
         <Checkbox
-          label="Every step must be reversible"
-          hint="A step that gains a solution is then a fault where it happens, not where the solution is kept."
+          label={
+            <>
+              Every step must be reversible
+              <span className="msg">
+                A step that gains a solution is then a fault where it happens, not where the solution is kept.
+              </span>
+            </>
+          }
           {...register('settings.reversible')}
         />
         <Checkbox
-          label="Faults of presentation count"
-          hint="A running equals sign or lost brackets are then faults, not notes."
+          label={
+            <>
+              Faults of presentation count
+              <span className="msg">A running equals sign or lost brackets are then faults, not notes.</span>
+            </>
+          }
           {...register('settings.presentationCounts')}
         />
         <Checkbox label="A constant of integration is needed" {...register('settings.constantNeeded')} />

@@ -1,5 +1,5 @@
 import type { OwnProgress as Progress } from '../../../shared/schemas/today.ts';
-import { plural } from './today-words.ts';
+import { countWord, plural } from './today-words.ts';
 
 const LAST = 5;
 
@@ -30,8 +30,11 @@ export function OwnProgress({ progress }: { readonly progress: Progress }) {
         <span className="num">{now.right}</span> of <span className="num">{now.total}</span>
       </p>
       <p className="small">
-        {now.total === 1 ? 'finding' : 'findings'} right in the last {plural(last.length, 'round')}.
-        {then.total > 0 ? ` In the ${plural(before.length, 'round')} before: ${then.right} of ${then.total}.` : null}
+        {now.total === 1 ? 'finding' : 'findings'} right in the last{' '}
+        {last.length === 1 ? 'round' : `${countWord(last.length).toLowerCase()} rounds`}.
+        {then.total > 0
+          ? ` In the ${countWord(before.length).toLowerCase()} before: ${then.right} of ${then.total}.`
+          : null}
       </p>
       <Spark rounds={last} />
       {nearlyCertain.total > 0 ? (

@@ -53,10 +53,16 @@ function sayNow({ stage, people, handedIn, reviewsDealt, reviewsDone, waitingFor
   return waitingForRulings ? 'Waiting for rulings' : 'Authors answer their findings';
 }
 
-const NEXT = { planned: 'opens', writing: 'writing ends', reviewing: 'reviewing ends', answering: 'settles' } as const;
+/** How the instant in the gutter belongs to the round. */
+const NEXT = {
+  planned: 'planned, opens then',
+  writing: 'writing until then',
+  reviewing: 'reviewing until then',
+  answering: 'answering, settles then',
+  settled: 'settled',
+} as const;
 
 function RoundEntry({ round }: { readonly round: RoundListItem }) {
-  const next = round.stage === 'settled' ? 'settled' : NEXT[round.stage];
   return (
     <article className="it">
       <When iso={nextOf(round)} zone={round.timeZone} />
@@ -65,7 +71,7 @@ function RoundEntry({ round }: { readonly round: RoundListItem }) {
           <Link to={paths.round(round.id)}>{round.title}</Link>
         </h2>
         <p className="ctx">
-          {round.className} · round {round.number}, {round.stage} · {next} then
+          {round.className} · round {round.number}, {NEXT[round.stage]}
         </p>
         <p className="mt-2">{sayNow(round)}.</p>
         {round.disputesOpen > 0 ? (

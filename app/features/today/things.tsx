@@ -1,7 +1,7 @@
 import type { ReactNode } from 'react';
 import { Link } from 'react-router-dom';
 import type { AnswerThing, LookThing, ReviewThing, TodayThing, WriteThing } from '../../../shared/schemas/today.ts';
-import { formatInstant } from '../../lib/dates.ts';
+import { formatInstant, sayDay } from '../../lib/dates.ts';
 import { paths } from '../../lib/paths.ts';
 import { LinkButton } from '../../ui/button.tsx';
 import { Derivation } from '../../ui/derivation.tsx';
@@ -242,7 +242,10 @@ function Look({ thing, isFirst }: ThingProps<LookThing>) {
         ) : null}
         <p className="fine muted mt-2">
           The checker advises, your teacher decides. You can contest until{' '}
-          <time dateTime={thing.contestUntil}>{formatInstant(thing.contestUntil, thing.timeZone, 'date-time')}</time>.
+          <time dateTime={thing.contestUntil} title={formatInstant(thing.contestUntil, thing.timeZone, 'date-time')}>
+            {sayDay(thing.contestUntil, thing.timeZone)}
+          </time>
+          .
         </p>
       </div>
     </article>
