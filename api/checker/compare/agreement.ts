@@ -32,7 +32,12 @@ export interface PointResult {
 }
 
 /** Compares at a point, with more and more bits until they tell. */
-export function compareAt(pair: Pair, point: Point, context: CheckContext, ladder: readonly number[] = precisions): PointResult {
+export function compareAt(
+  pair: Pair,
+  point: Point,
+  context: CheckContext,
+  ladder: readonly number[] = precisions,
+): PointResult {
   let result: PointResult | null = null;
   for (const bits of ladder) {
     const values = evaluatePair(pair, point, bits, context);

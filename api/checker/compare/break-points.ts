@@ -50,7 +50,9 @@ function breaksOfNode(node: GraphNode): Break[] {
 }
 
 function breaksOfCall(
-  name: string, at: (index: number | undefined, ...shifts: Break['shift'][]) => Break[], args: readonly number[],
+  name: string,
+  at: (index: number | undefined, ...shifts: Break['shift'][]) => Break[],
+  args: readonly number[],
 ): Break[] {
   const [a] = args;
   switch (name) {
@@ -74,7 +76,12 @@ function breaksOfCall(
 }
 
 /** The real numbers at which one letter, the others given, makes a part vanish; smallest first. */
-function rootsAlong(pair: Pair, breaks: readonly Break[], letter: string, given: ReadonlyMap<string, Rational>): RealNumber[] {
+function rootsAlong(
+  pair: Pair,
+  breaks: readonly Break[],
+  letter: string,
+  given: ReadonlyMap<string, Rational>,
+): RealNumber[] {
   const roots: RealNumber[] = [];
   for (const { node, shift } of breaks) {
     if (roots.length > mostRoots) break;
@@ -113,14 +120,29 @@ function multiply(a: readonly bigint[], b: readonly bigint[]): bigint[] {
   return product;
 }
 
-const grid = [0, 0.01, 0.1, 0.3, 0.6, 1, 1.5, 2, 2.5, 3, 4, 5, 7, 10, 15, 20, 30, 50, 100, 300, 1_000, 3_000, 10_000, 30_000, 100_000, 1_000_000];
+const grid = [
+  0, 0.01, 0.1, 0.3, 0.6, 1, 1.5, 2, 2.5, 3, 4, 5, 7, 10, 15, 20, 30, 50, 100, 300, 1_000, 3_000, 10_000, 30_000,
+  100_000, 1_000_000,
+];
 
 /** Sign changes of a part that is no quotient of polynomials, by doubles: places to look at, nothing more. */
-function scannedRoots(pair: Pair, node: number, shift: number, letter: string, given: ReadonlyMap<string, Rational>): RealNumber[] {
+function scannedRoots(
+  pair: Pair,
+  node: number,
+  shift: number,
+  letter: string,
+  given: ReadonlyMap<string, Rational>,
+): RealNumber[] {
   const numbers = new Map([...given].map(([name, value]) => [name, Q.toNumber(value)]));
   const f = toDoubleFunction({ nodes: pair.nodes, root: node }, letter, numbers);
   const at = (x: number): number => f(x) + shift;
-  const points = [...grid.slice(1).map((x) => -x).reverse(), ...grid];
+  const points = [
+    ...grid
+      .slice(1)
+      .map((x) => -x)
+      .reverse(),
+    ...grid,
+  ];
   const roots: RealNumber[] = [];
   for (let k = 1; k < points.length && roots.length < 6; k += 1) {
     const root = bisect(at, points[k - 1] ?? 0, points[k] ?? 0);
@@ -168,7 +190,10 @@ export function breakUp(pair: Pair, letter: string, given: ReadonlyMap<string, R
   return { gaps, exact: roots.flatMap((root) => (root.kind === 'rational' ? [root.value] : [])) };
 }
 
-const bases: readonly (readonly number[])[] = [[2, 3, 5, 7], [-3, 1, -2, 4]];
+const bases: readonly (readonly number[])[] = [
+  [2, 3, 5, 7],
+  [-3, 1, -2, 4],
+];
 
 /** Points on both sides of every break and on it, for each letter in turn. */
 export function* breakPointsOf(pair: Pair, region: Region): Generator<Point> {
@@ -179,7 +204,8 @@ export function* breakPointsOf(pair: Pair, region: Region): Generator<Point> {
       const given = new Map(
         region.names.filter((name) => name !== letter).map((name, k) => [name, Q.rational(Math.abs(base[k % 4] ?? 1))]),
       );
-      for (const [name, value] of given) if (!region.whole.has(name) && base[0] === -3) given.set(name, Q.negate(value));
+      for (const [name, value] of given)
+        if (!region.whole.has(name) && base[0] === -3) given.set(name, Q.negate(value));
       const { gaps, exact } = breakUp(pair, letter, given);
       for (const value of [...gaps, ...exact]) {
         const point = new Map<string, KnownValue>([...given].map(([name, known]) => [name, fromRational(known)]));

@@ -30,7 +30,9 @@ export function compareConstants(pair: Pair, context: CheckContext): Comparison 
       return { kind: 'undecided', reason: 'no-domain' };
     case 'blurred':
       // Two numbers around zero that no precision tells apart from it.
-      return provesIdentity(pair, context) || provesEqualConstants(pair, context) ? equal('proved') : { kind: 'undecided', reason: 'not-settled' };
+      return provesIdentity(pair, context) || provesEqualConstants(pair, context)
+        ? equal('proved')
+        : { kind: 'undecided', reason: 'not-settled' };
     default:
       return { kind: 'undecided', reason: result.agreement };
   }

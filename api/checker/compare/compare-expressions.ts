@@ -34,7 +34,8 @@ function compareWithin(above: Expr, below: Expr, context: CheckContext): Compari
   const whole = new Set([...wholeLettersOf(context), ...wholeByUse(builder.nodes)]);
   const pair = createPair(builder.nodes, first, second, whole, complex, facts);
   const missing = opaqueReason(pair);
-  if (missing === 'not-covered' && (concernsMatrices(above, context) || concernsMatrices(below, context))) return compareMatrices(above, below, context, compareWithin);
+  if (missing === 'not-covered' && (concernsMatrices(above, context) || concernsMatrices(below, context)))
+    return compareMatrices(above, below, context, compareWithin);
   if (missing !== null) return { kind: 'undecided', reason: missing };
   if (pair.names.length === 0) return compareConstants(pair, context);
   return isRational(pair) ? compareRationals(pair, context) : compareFunctions(pair, context);
@@ -44,7 +45,8 @@ function compareWithin(above: Expr, below: Expr, context: CheckContext): Compari
 function wholeByUse(nodes: readonly GraphNode[]): string[] {
   return nodes.flatMap((node) => {
     if (node.op === 'pow') return [...lettersBelow(nodes, node.args[1])].filter((name) => usuallyWhole.has(name));
-    const isCounting = node.op === 'series' || (node.op === 'call' && (node.name === 'factorial' || node.name === 'binomial'));
+    const isCounting =
+      node.op === 'series' || (node.op === 'call' && (node.name === 'factorial' || node.name === 'binomial'));
     return isCounting ? node.args.flatMap((arg) => [...lettersBelow(nodes, arg)]) : [];
   });
 }
@@ -72,6 +74,7 @@ function opaqueReason(pair: Pair): 'not-covered' | 'limit' | null {
 
 function isRational(pair: Pair): boolean {
   return pair.nodes.every(
-    (node, index) => pair.needed[index] === 0 || rationalOps.has(node.op) || (node.op === 'constant' && node.name === 'i'),
+    (node, index) =>
+      pair.needed[index] === 0 || rationalOps.has(node.op) || (node.op === 'constant' && node.name === 'i'),
   );
 }

@@ -48,7 +48,13 @@ function mayBeMeantReal(samples: Samples, region: Region): boolean {
 const complexLetters: ReadonlySet<string> = new Set(['z', 'w', 'Z', 'W']);
 
 /** Small numbers first; then, unless an identity covers them, both sides of every break; then the rest. */
-function* pointsFor(pair: Pair, region: Region, isProved: boolean, progress: { mustGoOn: boolean }, context: CheckContext): Generator<Point> {
+function* pointsFor(
+  pair: Pair,
+  region: Region,
+  isProved: boolean,
+  progress: { mustGoOn: boolean },
+  context: CheckContext,
+): Generator<Point> {
   yield* pointsOf(region, context.seed, firstPoints);
   if (!isProved && context.numbers === 'real') yield* breakPointsOf(pair, region);
   progress.mustGoOn = false;
@@ -77,8 +83,15 @@ function rule(pair: Pair, samples: Samples, region: Region, isProved: boolean, c
   const tried = Object.values(counts).reduce((a, b) => a + b, 0);
   if (counts['no-agreed-meaning'] * 6 > tried) return { kind: 'undecided', reason: 'no-agreed-meaning' };
   if (counts['not-covered'] * 2 > tried) return { kind: 'undecided', reason: 'not-covered' };
-  if (counts.same >= (isProved ? 1 : agreementsNeeded) && (samples.inside || pair.names.every((name) => pair.whole.has(name)))) {
-    return { kind: 'equal', reached: isProved ? 'proved' : 'sampled', ...findConditions(pair, samples, region, context) };
+  if (
+    counts.same >= (isProved ? 1 : agreementsNeeded) &&
+    (samples.inside || pair.names.every((name) => pair.whole.has(name)))
+  ) {
+    return {
+      kind: 'equal',
+      reached: isProved ? 'proved' : 'sampled',
+      ...findConditions(pair, samples, region, context),
+    };
   }
   const without = ruleWithoutValues(pair, samples, context);
   if (without !== null) return without;
@@ -92,7 +105,8 @@ function ruleWithoutValues(pair: Pair, samples: Samples, context: CheckContext):
   if (samples.inside || !samples.insideAbove) return null;
   if (dividesByZero(pair, context)) return { kind: 'meaningless' };
   if (context.numbers === 'complex') return null;
-  if (leavesNoInterval(pair, pair.needsBelow)) return { kind: samples.counts.same === 0 ? 'meaningless' : 'nothing-in-common' };
+  if (leavesNoInterval(pair, pair.needsBelow))
+    return { kind: samples.counts.same === 0 ? 'meaningless' : 'nothing-in-common' };
   return leavesNoInterval(pair, [...pair.needsAbove, ...pair.needsBelow]) ? { kind: 'nothing-in-common' } : null;
 }
 
@@ -101,6 +115,8 @@ function dividesByZero(pair: Pair, context: CheckContext): boolean {
   const nodes = [...pair.nodes];
   const zero = nodes.push({ op: 'number', args: [], value: { num: 0n, den: 1n } }) - 1;
   return pair.needsBelow.some(
-    ({ arg, kind }) => kind === 'nonzero' && provesIdentity(createPair(nodes, arg, zero, pair.whole, context.numbers === 'complex', pair.facts), context),
+    ({ arg, kind }) =>
+      kind === 'nonzero' &&
+      provesIdentity(createPair(nodes, arg, zero, pair.whole, context.numbers === 'complex', pair.facts), context),
   );
 }

@@ -20,7 +20,8 @@ export function compareMatrices(above: Expr, below: Expr, context: CheckContext,
   if (second === null) return { kind: 'undecided', reason: 'not-covered' };
   if (first.kind === 'scalar' && second.kind === 'scalar') return compare(first.expr, second.expr, context);
   if (first.kind === 'scalar' || second.kind === 'scalar') return { kind: 'undecided', reason: 'change-of-kind' };
-  if (!sameSize(first.rows, second.rows)) return { kind: 'different', witness: witnessOfSizes(first.rows, second.rows) };
+  if (!sameSize(first.rows, second.rows))
+    return { kind: 'different', witness: witnessOfSizes(first.rows, second.rows) };
   return compareEntries(first.rows, second.rows, context, compare);
 }
 
@@ -47,7 +48,8 @@ function compareEntries(above: Entries, below: Entries, context: CheckContext, c
       const other = below[i]?.[j];
       if (other === undefined) continue;
       const comparison = compare(entry, other, context);
-      if (comparison.kind === 'different') return { kind: 'different', witness: widen(comparison.witness, above, below, context) };
+      if (comparison.kind === 'different')
+        return { kind: 'different', witness: widen(comparison.witness, above, below, context) };
       if (comparison.kind !== 'equal') {
         open ??= comparison;
         continue;
@@ -65,7 +67,11 @@ function widen(witness: Witness, above: Entries, below: Entries, context: CheckC
   const point: Point = witness.at;
   const isComplete = [above, below].every((rows) => valuesTex(rows, point, context) !== null);
   if (!isComplete) return witness;
-  return { ...witness, above: valuesTex(above, point, context) ?? witness.above, below: valuesTex(below, point, context) ?? witness.below };
+  return {
+    ...witness,
+    above: valuesTex(above, point, context) ?? witness.above,
+    below: valuesTex(below, point, context) ?? witness.below,
+  };
 }
 
 /** Null where an entry has a letter that the point does not give. */

@@ -22,7 +22,8 @@ export function compareRationals(pair: Pair, context: CheckContext): Comparison 
       ? 'identical'
       : compareRational(pair.nodes, pair.needed, pair.above, pair.below, pair.names, context.seed);
   if (identity === 'first-undefined' || identity === 'second-undefined') return withoutValue(identity, pair, context);
-  if (identity === 'different') return findDifference(pair, createRegion(pair.names, pair.whole, marksOf(pair), plain, context), context);
+  if (identity === 'different')
+    return findDifference(pair, createRegion(pair.names, pair.whole, marksOf(pair), plain, context), context);
   const reached = identity === 'identical' ? 'proved' : 'sampled';
   const isPolynomial = pair.needsAbove.length === 0 && pair.needsBelow.length === 0;
   if (isPolynomial && context.assumptions.length === 0) return { kind: 'equal', reached, excluded: [], cancelled: [] };
@@ -62,7 +63,9 @@ function findDifference(pair: Pair, region: Region, context: CheckContext): Comp
 }
 
 function settledByEquations(pair: Pair, region: Region, context: CheckContext): Comparison {
-  const samples: Samples = takeSamples(pair, pointsOf(region, context.seed + 1, mostPoints), context, { agreements: 40 });
+  const samples: Samples = takeSamples(pair, pointsOf(region, context.seed + 1, mostPoints), context, {
+    agreements: 40,
+  });
   if (samples.apart !== null) return { kind: 'undecided', reason: 'not-settled' };
   if (!samples.inside || samples.counts.same < 40) return { kind: 'undecided', reason: 'no-domain' };
   return { kind: 'equal', reached: 'sampled', ...findConditions(pair, samples, region, context) };

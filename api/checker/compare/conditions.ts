@@ -9,7 +9,17 @@ import type { KnownValue, Value } from '../values/value.ts';
 /** What a node needs of one of its arguments to have a value. */
 export interface Need {
   readonly arg: number;
-  readonly kind: 'nonzero' | 'positive' | 'nonnegative' | 'within-one' | 'inside-one' | 'from-one' | 'beyond-one' | 'cosine' | 'sine' | 'whole';
+  readonly kind:
+    | 'nonzero'
+    | 'positive'
+    | 'nonnegative'
+    | 'within-one'
+    | 'inside-one'
+    | 'from-one'
+    | 'beyond-one'
+    | 'cosine'
+    | 'sine'
+    | 'whole';
 }
 
 /** What the needed nodes ask for. Denominators that are products ask of each factor. */
@@ -37,8 +47,10 @@ export function needsOf(nodes: readonly GraphNode[], needed: Uint8Array, complex
 }
 
 function askOfRoot(
-  node: Extract<GraphNode, { op: 'root' }>, complex: boolean,
-  ask: (arg: number, kind: Need['kind']) => void, askNonzero: (arg: number) => void,
+  node: Extract<GraphNode, { op: 'root' }>,
+  complex: boolean,
+  ask: (arg: number, kind: Need['kind']) => void,
+  askNonzero: (arg: number) => void,
 ): void {
   const arg = node.args[0];
   if (node.times < 0) askNonzero(arg);
@@ -48,8 +60,11 @@ function askOfRoot(
 }
 
 function askOfCall(
-  name: string, args: readonly number[], complex: boolean,
-  ask: (arg: number, kind: Need['kind']) => void, askNonzero: (arg: number) => void,
+  name: string,
+  args: readonly number[],
+  complex: boolean,
+  ask: (arg: number, kind: Need['kind']) => void,
+  askNonzero: (arg: number) => void,
 ): void {
   const [a, b] = args;
   if (a === undefined) return;
@@ -104,7 +119,9 @@ export function meets(need: Need, value: Value | undefined, bits: number): boole
     case 'nonnegative':
       return compareToZero(value, true);
     case 'cosine':
-      return value.kind === 'pi' ? !Q.equals(Q.sub(value.value, { num: Q.floor(value.value), den: 1n }), Q.rational(1, 2)) : true;
+      return value.kind === 'pi'
+        ? !Q.equals(Q.sub(value.value, { num: Q.floor(value.value), den: 1n }), Q.rational(1, 2))
+        : true;
     case 'sine':
       return value.kind === 'pi' ? !Q.isWhole(value.value) : !isExactZero(value);
     case 'whole':

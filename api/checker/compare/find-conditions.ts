@@ -56,7 +56,11 @@ function unshared(own: readonly Need[], other: readonly Need[]): Need[] {
 
 /** Both sides of the zeros of what is needed, and the zeros themselves where they are exact. */
 function* pointsToTry(
-  pair: Pair, needs: readonly Need[], samples: Samples, region: Region, context: CheckContext,
+  pair: Pair,
+  needs: readonly Need[],
+  samples: Samples,
+  region: Region,
+  context: CheckContext,
 ): Generator<Point> {
   yield* pointsOf(region, context.seed, 6);
   const moving = pair.names.filter((name) => !region.whole.has(name));
@@ -75,7 +79,13 @@ function* pointsToTry(
   }
 }
 
-function candidates(pair: Pair, needs: readonly Need[], letter: string, given: ReadonlyMap<string, Rational>, region: Region): KnownValue[] {
+function candidates(
+  pair: Pair,
+  needs: readonly Need[],
+  letter: string,
+  given: ReadonlyMap<string, Rational>,
+  region: Region,
+): KnownValue[] {
   const { gaps, exact } = breakUp(pair, letter, given);
   const turns = region.traits.turns || needs.some(({ kind }) => kind === 'sine' || kind === 'cosine');
   const multiples = turns ? Array.from({ length: 25 }, (_, k) => fromPi(Q.rational(k - 12, 12))) : [];
@@ -84,7 +94,10 @@ function candidates(pair: Pair, needs: readonly Need[], letter: string, given: R
 }
 
 function conditionsFrom(
-  pair: Pair, needs: readonly Need[], tried: readonly Sample[], agreement: PointResult['agreement'],
+  pair: Pair,
+  needs: readonly Need[],
+  tried: readonly Sample[],
+  agreement: PointResult['agreement'],
 ): Condition[] {
   const found = new Map<string, Condition>();
   for (const need of needs) {
@@ -116,7 +129,11 @@ function linesOf(need: Need, pair: Pair, failing: readonly Sample[]): Line[] {
 }
 
 function solvedFor(
-  letter: string, need: Need, relation: { sign: RelationSign; to: number }, pair: Pair, failing: readonly Sample[],
+  letter: string,
+  need: Need,
+  relation: { sign: RelationSign; to: number },
+  pair: Pair,
+  failing: readonly Sample[],
 ): Line[] | null {
   const fraction = toFraction({ nodes: pair.nodes, root: need.arg }, letter);
   if (fraction === null || fraction.den.length !== 1) return null;
@@ -181,6 +198,12 @@ function plainLine(need: Need, expr: Expr): Line {
     case 'sine':
       return relationLine(callExpr('sin', [expr]), '!=', zero);
     case 'whole':
-      return { kind: 'membership', letter: expr, set: { kind: 'integers', span: nowhere }, negated: false, span: nowhere };
+      return {
+        kind: 'membership',
+        letter: expr,
+        set: { kind: 'integers', span: nowhere },
+        negated: false,
+        span: nowhere,
+      };
   }
 }

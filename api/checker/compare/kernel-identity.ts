@@ -21,7 +21,14 @@ const evaluationCost = 12;
 export function provesIdentity(pair: Pair, context: CheckContext): boolean {
   const complex = context.numbers === 'complex';
   const needs = [...pair.needsAbove, ...pair.needsBelow];
-  const plan = createKernelPlan(pair.nodes, pair.needed, complex, (forms) => findSigns(pair.nodes, forms, complex ? [] : needs, pair.facts.map(({ node }) => node)));
+  const plan = createKernelPlan(pair.nodes, pair.needed, complex, (forms) =>
+    findSigns(
+      pair.nodes,
+      forms,
+      complex ? [] : needs,
+      pair.facts.map(({ node }) => node),
+    ),
+  );
   if (plan === null) return false;
   const count = countEvaluations(pair, plan);
   if (count === null) return false;
@@ -40,7 +47,12 @@ function countEvaluations(pair: Pair, plan: KernelPlan): number | null {
   let norm = 1;
   for (const count of plan.choices.values()) norm *= count;
   const size = 4 * plan.exponentBound * plan.oddPart + 8;
-  const bounds = boundSizes(pair.nodes, pair.needed, () => ({ topDegree: size, bottomDegree: size, topBits: size, bottomBits: size }));
+  const bounds = boundSizes(pair.nodes, pair.needed, () => ({
+    topDegree: size,
+    bottomDegree: size,
+    topBits: size,
+    bottomBits: size,
+  }));
   const a = bounds[pair.above];
   const b = bounds[pair.below];
   if (a === undefined || b === undefined) return null;
@@ -76,7 +88,12 @@ function* combinations(choices: ReadonlyMap<string, number>): Generator<Readonly
 
 /** One evaluation at a random prime and point; tried again where a root or a quotient does not exist there. */
 function agrees(
-  pair: Pair, plan: KernelPlan, choice: ReadonlyMap<string, number>, table: Float64Array, random: Random, context: CheckContext,
+  pair: Pair,
+  plan: KernelPlan,
+  choice: ReadonlyMap<string, number>,
+  table: Float64Array,
+  random: Random,
+  context: CheckContext,
 ): boolean {
   for (let attempt = 0; attempt < mostAttempts && table.length > 0; attempt += 1) {
     context.budget.spend(evaluationCost);

@@ -39,7 +39,12 @@ const hyperbolicNames = new Set(['exp', 'sinh', 'cosh', 'tanh', 'coth', 'sech', 
 export const imaginaryForm: Form = atomForm(imaginaryAtom);
 
 /** The exponents of e by which a node is written; null where it is not, an empty list where it needs none. */
-function exponentsOf(node: GraphNode, forms: Forms, positive: ReadonlySet<number>, complex: boolean): readonly Form[] | null {
+function exponentsOf(
+  node: GraphNode,
+  forms: Forms,
+  positive: ReadonlySet<number>,
+  complex: boolean,
+): readonly Form[] | null {
   switch (node.op) {
     case 'constant':
       return node.name === 'e' ? [atomlessOne] : [];
@@ -64,8 +69,12 @@ function exponentsOf(node: GraphNode, forms: Forms, positive: ReadonlySet<number
   }
 }
 
-
-function exponentsOfCall(name: string, args: readonly number[], forms: Forms, complex: boolean): readonly Form[] | null {
+function exponentsOfCall(
+  name: string,
+  args: readonly number[],
+  forms: Forms,
+  complex: boolean,
+): readonly Form[] | null {
   const [a] = args;
   if (a === undefined) return null;
   if (name === 'abs' && !complex) {
@@ -81,7 +90,10 @@ function exponentsOfCall(name: string, args: readonly number[], forms: Forms, co
 }
 
 export function createKernelPlan(
-  nodes: readonly GraphNode[], needed: Uint8Array, complex: boolean, findSignsOf: (forms: Forms) => Signs,
+  nodes: readonly GraphNode[],
+  needed: Uint8Array,
+  complex: boolean,
+  findSignsOf: (forms: Forms) => Signs,
 ): KernelPlan | null {
   const forms = createForms(nodes, complex);
   const signs = findSignsOf(forms);
@@ -152,7 +164,12 @@ function positiveBases(nodes: readonly GraphNode[], needed: Uint8Array, forms: F
 }
 
 function finishPlan(
-  forms: Forms, signs: Signs, positive: ReadonlySet<number>, denominators: Map<string, number>, monomials: Map<string, Monomial>, exponentBound: number,
+  forms: Forms,
+  signs: Signs,
+  positive: ReadonlySet<number>,
+  denominators: Map<string, number>,
+  monomials: Map<string, Monomial>,
+  exponentBound: number,
 ): KernelPlan | null {
   const choices = new Map<string, number>();
   let turns = false;
@@ -161,7 +178,8 @@ function finishPlan(
   for (const [key, { powers }] of monomials) {
     const degree = denominators.get(key) ?? 1;
     const kinds = powers.map(([id]) => forms.atoms[id]);
-    if (powers.length === 2 && kinds[0]?.kind === 'imaginary' && kinds[1]?.kind === 'pi' && powers[1]?.[1] === 1) turns ||= degree > 2;
+    if (powers.length === 2 && kinds[0]?.kind === 'imaginary' && kinds[1]?.kind === 'pi' && powers[1]?.[1] === 1)
+      turns ||= degree > 2;
     const [first] = powers;
     const log = powers.length === 1 && first?.[1] === 1 ? kinds[0] : undefined;
     if (log?.kind !== 'log') continue;
@@ -180,10 +198,17 @@ function finishPlan(
 }
 
 /** i times an inverse circular function of something: e to it is algebraic. */
-export function isArc(powers: Monomial['powers'], kinds: readonly ({ readonly kind: string } | undefined)[], degree: number): boolean {
+export function isArc(
+  powers: Monomial['powers'],
+  kinds: readonly ({ readonly kind: string } | undefined)[],
+  degree: number,
+): boolean {
   const inner = kinds[1]?.kind;
   return (
-    degree === 1 && powers.length === 2 && kinds[0]?.kind === 'imaginary' && powers[1]?.[1] === 1 &&
+    degree === 1 &&
+    powers.length === 2 &&
+    kinds[0]?.kind === 'imaginary' &&
+    powers[1]?.[1] === 1 &&
     (inner === 'arcsine' || inner === 'arctangent')
   );
 }

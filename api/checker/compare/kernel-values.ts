@@ -20,7 +20,12 @@ export interface KernelValues {
 }
 
 export function createKernelValues(
-  nodes: readonly GraphNode[], plan: KernelPlan, names: readonly string[], complex: boolean, p: number, random: Random,
+  nodes: readonly GraphNode[],
+  plan: KernelPlan,
+  names: readonly string[],
+  complex: boolean,
+  p: number,
+  random: Random,
   choice: ReadonlyMap<string, number>,
 ): KernelValues {
   const { forms } = plan;
@@ -102,7 +107,8 @@ export function createKernelValues(
   function makeGenerator(key: string, { powers }: Monomial, degree: number): number {
     const kinds = powers.map(([id]) => forms.atoms[id]);
     const [first, second] = powers;
-    if (powers.length === 1 && first?.[1] === 1 && kinds[0]?.kind === 'log') return rootOfSize(kinds[0].of, degree, key);
+    if (powers.length === 1 && first?.[1] === 1 && kinds[0]?.kind === 'log')
+      return rootOfSize(kinds[0].of, degree, key);
     if (powers.length === 2 && kinds[0]?.kind === 'imaginary' && kinds[1]?.kind === 'pi' && second?.[1] === 1) {
       return unityRoot(2 * degree);
     }
@@ -181,7 +187,11 @@ export function createKernelValues(
   function hyperbolic(name: string, w: number): number {
     const v = inverse(w);
     const half = inverseMod(2, p);
-    return ratioByName(name.replace('h', ''), mulMod(addMod(w, negateMod(v, p), p), half, p), mulMod(addMod(w, v, p), half, p));
+    return ratioByName(
+      name.replace('h', ''),
+      mulMod(addMod(w, negateMod(v, p), p), half, p),
+      mulMod(addMod(w, v, p), half, p),
+    );
   }
   function ratioByName(name: string, sine: number, cosine: number): number {
     switch (name) {
@@ -322,7 +332,9 @@ function isWritten(node: GraphNode, complex: boolean): boolean {
   if (node.op === 'root' || node.op === 'pow') return !complex;
   if (node.op !== 'call') return false;
   if (node.name === 'abs' || node.name === 'log') return !complex;
-  return node.name === 'exp' || node.name === 'factorial' || circularNames.has(node.name) || hyperbolicNames.has(node.name);
+  return (
+    node.name === 'exp' || node.name === 'factorial' || circularNames.has(node.name) || hyperbolicNames.has(node.name)
+  );
 }
 
 function primitiveRoot(p: number): number {

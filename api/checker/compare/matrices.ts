@@ -5,7 +5,8 @@ import { childrenOf, mapChildren } from '../../../shared/maths/walk.ts';
 export type Entries = readonly (readonly Expr[])[];
 
 /** An expression with every operation on matrices carried out: an ordinary expression, or a matrix of them. */
-export type Resolved = { readonly kind: 'scalar'; readonly expr: Expr } | { readonly kind: 'matrix'; readonly rows: Entries };
+export type Resolved =
+  { readonly kind: 'scalar'; readonly expr: Expr } | { readonly kind: 'matrix'; readonly rows: Entries };
 
 const nowhere: Span = { start: 0, end: 0 };
 const largestInverse = 4;
@@ -77,10 +78,15 @@ function resolveSum(terms: readonly Term[]): Resolved | null {
   const matrices = parts.flatMap(({ sign, value }) => (value.kind === 'matrix' ? [{ sign, rows: value.rows }] : []));
   const [first] = matrices;
   if (first === undefined) {
-    return { kind: 'scalar', expr: sumOf(parts.flatMap(({ sign, value }) => (value.kind === 'scalar' ? [signed(sign, value.expr)] : []))) };
+    return {
+      kind: 'scalar',
+      expr: sumOf(parts.flatMap(({ sign, value }) => (value.kind === 'scalar' ? [signed(sign, value.expr)] : []))),
+    };
   }
   if (matrices.length !== parts.length || !matrices.every(({ rows }) => sameSize(rows, first.rows))) return null;
-  const rows = first.rows.map((row, i) => row.map((entry, j) => sumOf(matrices.map((m) => signed(m.sign, m.rows[i]?.[j] ?? entry)))));
+  const rows = first.rows.map((row, i) =>
+    row.map((entry, j) => sumOf(matrices.map((m) => signed(m.sign, m.rows[i]?.[j] ?? entry)))),
+  );
   return { kind: 'matrix', rows };
 }
 
@@ -123,7 +129,8 @@ function cross(u: readonly Expr[], v: readonly Expr[], asRow: boolean): Resolved
   const [a, b, c] = u;
   const [d, e, f] = v;
   if (u.length !== 3 || !a || !b || !c || !d || !e || !f) return null;
-  const minor = (p: Expr, q: Expr, r: Expr, s: Expr): Expr => sumOf([signed('plus', productOf([p, s])), signed('minus', productOf([q, r]))]);
+  const minor = (p: Expr, q: Expr, r: Expr, s: Expr): Expr =>
+    sumOf([signed('plus', productOf([p, s])), signed('minus', productOf([q, r]))]);
   const entries = [minor(b, c, e, f), minor(c, a, f, d), minor(a, b, d, e)];
   return { kind: 'matrix', rows: asRow ? [entries] : entries.map((entry) => [entry]) };
 }
@@ -141,18 +148,21 @@ export function transposed(rows: Entries): Entries {
 function resolvePower(base: Expr, exponent: Expr): Resolved | null {
   const value = resolveMatrices(base);
   if (value === null) return null;
-  if (value.kind === 'scalar') return { kind: 'scalar', expr: { kind: 'power', base: value.expr, exponent, span: nowhere } };
+  if (value.kind === 'scalar')
+    return { kind: 'scalar', expr: { kind: 'power', base: value.expr, exponent, span: nowhere } };
   if (exponent.kind === 'letter' && exponent.name === 'T') return { kind: 'matrix', rows: transposed(value.rows) };
   const n = wholeExponent(exponent);
   if (n === null || value.rows.length !== value.rows[0]?.length || Math.abs(n) > largestPower) return null;
   let result: Resolved | null = n < 0 ? inverse(value.rows) : n === 0 ? identity(value.rows.length) : value;
   const step = result;
-  for (let k = 1; k < Math.abs(n) && result !== null && step !== null; k += 1) result = multiply(result, step, 'implicit');
+  for (let k = 1; k < Math.abs(n) && result !== null && step !== null; k += 1)
+    result = multiply(result, step, 'implicit');
   return result;
 }
 
 function wholeExponent(exponent: Expr): number | null {
-  if (exponent.kind === 'number' && exponent.denominator === 1n && exponent.numerator < 1000n) return Number(exponent.numerator);
+  if (exponent.kind === 'number' && exponent.denominator === 1n && exponent.numerator < 1000n)
+    return Number(exponent.numerator);
   if (exponent.kind !== 'sum' || exponent.terms.length !== 1) return null;
   const [term] = exponent.terms;
   const size = term === undefined ? null : wholeExponent(term.expr);
@@ -164,7 +174,10 @@ function whole(value: number): Expr {
 }
 
 function identity(size: number): Resolved {
-  return { kind: 'matrix', rows: Array.from({ length: size }, (_, i) => Array.from({ length: size }, (__, j) => whole(i === j ? 1 : 0))) };
+  return {
+    kind: 'matrix',
+    rows: Array.from({ length: size }, (_, i) => Array.from({ length: size }, (__, j) => whole(i === j ? 1 : 0))),
+  };
 }
 
 /** The adjugate over the determinant. */
@@ -189,7 +202,11 @@ function without(rows: Entries, i: number, j: number): Entries {
 function determinantOf(rows: Entries): Expr {
   const [first = []] = rows;
   if (rows.length === 1) return first[0] ?? whole(0);
-  return sumOf(first.map((entry, j) => signed(j % 2 === 0 ? 'plus' : 'minus', productOf([entry, determinantOf(without(rows, 0, j))]))));
+  return sumOf(
+    first.map((entry, j) =>
+      signed(j % 2 === 0 ? 'plus' : 'minus', productOf([entry, determinantOf(without(rows, 0, j))])),
+    ),
+  );
 }
 
 function resolveCall(expr: Extract<Expr, { kind: 'call' }>): Resolved | null {
@@ -198,7 +215,8 @@ function resolveCall(expr: Extract<Expr, { kind: 'call' }>): Resolved | null {
   if (value?.kind !== 'matrix' || expr.args.length !== 1) return resolveInside(expr);
   if (expr.name === 'transpose') return { kind: 'matrix', rows: transposed(value.rows) };
   const isSquare = value.rows.length === value.rows[0]?.length;
-  if (expr.name === 'det') return isSquare && value.rows.length <= 5 ? { kind: 'scalar', expr: determinantOf(value.rows) } : null;
+  if (expr.name === 'det')
+    return isSquare && value.rows.length <= 5 ? { kind: 'scalar', expr: determinantOf(value.rows) } : null;
   const vector = vectorOf(value.rows);
   if (expr.name !== 'abs' || vector === null) return null;
   // The length of a vector.

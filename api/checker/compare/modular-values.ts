@@ -10,7 +10,11 @@ export type Kernel = (index: number, residues: Float64Array, p: number) => numbe
 
 /** The value modulo p of each wanted node at the given residues of the letters. */
 export function evaluateModular(
-  nodes: readonly GraphNode[], wanted: Uint8Array, p: number, letters: ReadonlyMap<string, number>, kernel: Kernel | null,
+  nodes: readonly GraphNode[],
+  wanted: Uint8Array,
+  p: number,
+  letters: ReadonlyMap<string, number>,
+  kernel: Kernel | null,
 ): Float64Array {
   const residues = new Float64Array(nodes.length);
   nodes.forEach((node, index) => {
@@ -20,7 +24,12 @@ export function evaluateModular(
 }
 
 function residueOf(
-  node: GraphNode, index: number, residues: Float64Array, p: number, letters: ReadonlyMap<string, number>, kernel: Kernel | null,
+  node: GraphNode,
+  index: number,
+  residues: Float64Array,
+  p: number,
+  letters: ReadonlyMap<string, number>,
+  kernel: Kernel | null,
 ): number {
   switch (node.op) {
     case 'number': {

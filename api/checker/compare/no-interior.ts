@@ -40,7 +40,8 @@ function needOfFact(fact: Fact): Need {
 }
 
 function conditionOf(need: Need, nodes: readonly GraphNode[], letter: string): Condition[] {
-  if (!['positive', 'nonnegative', 'within-one', 'inside-one', 'beyond-one', 'from-one', 'nonzero'].includes(need.kind)) return [];
+  if (!['positive', 'nonnegative', 'within-one', 'inside-one', 'beyond-one', 'from-one', 'nonzero'].includes(need.kind))
+    return [];
   const fraction = toFraction({ nodes, root: need.arg }, letter);
   if (fraction === null || fraction.num.length > 40 || fraction.den.length > 40) return [];
   return [{ need, num: fraction.num, den: fraction.den }];
@@ -65,5 +66,8 @@ function failsAt({ need, num, den }: Condition, at: Rational): boolean {
 }
 
 function valueOf(polynomial: readonly bigint[], at: Rational): Rational {
-  return polynomial.reduceRight<Rational>((sum, coefficient) => Q.add(Q.mul(sum, at), { num: coefficient, den: 1n }), Q.zero);
+  return polynomial.reduceRight<Rational>(
+    (sum, coefficient) => Q.add(Q.mul(sum, at), { num: coefficient, den: 1n }),
+    Q.zero,
+  );
 }

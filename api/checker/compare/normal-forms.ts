@@ -1,5 +1,14 @@
 import {
-  addForms, atomForm, constantForm, constantOf, imaginaryAtom, keyOfForm, mulForms, powForm, scaleForm, splitForm,
+  addForms,
+  atomForm,
+  constantForm,
+  constantOf,
+  imaginaryAtom,
+  keyOfForm,
+  mulForms,
+  powForm,
+  scaleForm,
+  splitForm,
 } from '../numbers/form.ts';
 import type { Form } from '../numbers/form.ts';
 import * as Q from '../numbers/rational.ts';
@@ -118,7 +127,11 @@ export function createForms(nodes: readonly GraphNode[], complex: boolean): Form
   function factorAtom(form: Form): number {
     return atom(`factor ${keyOfForm(form)}`, () => ({ kind: 'factor', form }));
   }
-  function callForm(name: Extract<GraphNode, { op: 'call' }>['name'], args: readonly number[], index: number): Form | null {
+  function callForm(
+    name: Extract<GraphNode, { op: 'call' }>['name'],
+    args: readonly number[],
+    index: number,
+  ): Form | null {
     const [a] = args;
     const form = a === undefined ? null : formOf(a);
     if (a === undefined || form === null) return null;

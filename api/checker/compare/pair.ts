@@ -33,7 +33,12 @@ export interface Pair {
 }
 
 export function createPair(
-  nodes: readonly GraphNode[], above: number, below: number, whole: ReadonlySet<string>, complex: boolean, facts: readonly Fact[] = [],
+  nodes: readonly GraphNode[],
+  above: number,
+  below: number,
+  whole: ReadonlySet<string>,
+  complex: boolean,
+  facts: readonly Fact[] = [],
 ): Pair {
   const neededAbove = markNeeded(nodes, [above]);
   const neededBelow = markNeeded(nodes, [below]);

@@ -42,7 +42,11 @@ interface Equation {
 const assumptionBits = 128;
 
 export function createRegion(
-  names: readonly string[], whole: ReadonlySet<string>, marks: readonly Rational[], traits: Traits, context: CheckContext,
+  names: readonly string[],
+  whole: ReadonlySet<string>,
+  marks: readonly Rational[],
+  traits: Traits,
+  context: CheckContext,
 ): Region {
   const tests: PreparedLine[] = [];
   const equations: Equation[] = [];
@@ -57,7 +61,11 @@ export function createRegion(
     if (letters.length === 0 || !letters.every((letter) => all.includes(letter))) continue;
     tests.push(prepareLine(line, context));
     if (line.kind !== 'relation' || line.sign !== '=') continue;
-    equations.push({ letters: inOrder(line.left, letters), left: prepare(line.left, context), right: prepare(line.right, context) });
+    equations.push({
+      letters: inOrder(line.left, letters),
+      left: prepare(line.left, context),
+      right: prepare(line.right, context),
+    });
   }
   const numbers = marksOfLines(context.assumptions);
   return {
@@ -109,7 +117,12 @@ export function lettersOf(tree: unknown, found: string[] = []): string[] {
 function marksOfLines(tree: unknown, found: Rational[] = []): Rational[] {
   if (Array.isArray(tree)) for (const part of tree) marksOfLines(part, found);
   else if (typeof tree === 'object' && tree !== null) {
-    if ('numerator' in tree && typeof tree.numerator === 'bigint' && 'denominator' in tree && typeof tree.denominator === 'bigint') {
+    if (
+      'numerator' in tree &&
+      typeof tree.numerator === 'bigint' &&
+      'denominator' in tree &&
+      typeof tree.denominator === 'bigint'
+    ) {
       found.push({ num: tree.numerator, den: tree.denominator });
     } else for (const part of Object.values(tree)) marksOfLines(part, found);
   }
@@ -152,14 +165,23 @@ function pickValue(k: number, position: number, region: Region, whole: boolean, 
     return fromParts(Q.rational(random(15) - 7, 1 + random(3)), Q.rational(random(15) - 7, 1 + random(3)));
   }
   if (region.traits.turns && k % 4 === 1) return fromPi(Q.rational(random(49) - 24, [12, 6, 4, 3, 1][random(5)] ?? 1));
-  if (region.marks.length > 0 && k % 4 === 3) return nearMark(region.marks[random(region.marks.length)] ?? Q.one, random);
+  if (region.marks.length > 0 && k % 4 === 3)
+    return nearMark(region.marks[random(region.marks.length)] ?? Q.one, random);
   const range = region.traits.gentle ? gentleScales : scales;
   return fromRational(scattered(range[random(range.length)] ?? 1, random));
 }
 
 function nearMark(mark: Rational, random: Random): KnownValue {
   const signed = random(2) === 0 ? mark : Q.negate(mark);
-  const steps = [Q.zero, Q.rational(1), Q.rational(-1), Q.rational(1, 2), Q.rational(-1, 2), Q.rational(1, 7), Q.rational(-1, 9)];
+  const steps = [
+    Q.zero,
+    Q.rational(1),
+    Q.rational(-1),
+    Q.rational(1, 2),
+    Q.rational(-1, 2),
+    Q.rational(1, 7),
+    Q.rational(-1, 9),
+  ];
   return fromRational(Q.add(signed, steps[random(steps.length)] ?? Q.zero));
 }
 

@@ -18,12 +18,23 @@ const primeBits = 25.97;
 const mostEvaluations = 80;
 
 export const rationalOps: ReadonlySet<GraphNode['op']> = new Set([
-  'number', 'letter', 'add', 'mul', 'negate', 'div', 'power',
+  'number',
+  'letter',
+  'add',
+  'mul',
+  'negate',
+  'div',
+  'power',
 ] as const);
 
 /** Compares two nodes built from numbers, letters and i by the four operations and whole powers. */
 export function compareRational(
-  nodes: readonly GraphNode[], needed: Uint8Array, first: number, second: number, names: readonly string[], seed: number,
+  nodes: readonly GraphNode[],
+  needed: Uint8Array,
+  first: number,
+  second: number,
+  names: readonly string[],
+  seed: number,
 ): Identity {
   const bounds = boundSizes(nodes, needed, () => ({ topDegree: 0, bottomDegree: 0, topBits: 1, bottomBits: 0 }));
   const a = bounds[first];
@@ -36,7 +47,7 @@ export function compareRational(
   const used = new Set<number>();
   let missingFirst = 0;
   let missingSecond = 0;
-  for (let done = 0; done < count; ) {
+  for (let done = 0; done < count;) {
     const choice = random(primes.length);
     if (used.has(choice)) continue;
     used.add(choice);

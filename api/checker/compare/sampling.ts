@@ -39,14 +39,30 @@ export interface SampleLimits {
 /** Tries points until the lines are apart at one or agree at enough of them. */
 export function takeSamples(pair: Pair, points: Iterable<Point>, context: CheckContext, limits: SampleLimits): Samples {
   const counts: Record<Agreement, number> = {
-    same: 0, apart: 0, 'above-only': 0, 'below-only': 0, neither: 0, blurred: 0, 'not-covered': 0, 'no-agreed-meaning': 0, limit: 0,
+    same: 0,
+    apart: 0,
+    'above-only': 0,
+    'below-only': 0,
+    neither: 0,
+    blurred: 0,
+    'not-covered': 0,
+    'no-agreed-meaning': 0,
+    limit: 0,
   };
   const aboveOnly: Sample[] = [];
   const belowOnly: Sample[] = [];
   const common: Sample[] = [];
   let inside = false;
   let insideAbove = false;
-  const samples = (apart: Samples['apart']): Samples => ({ counts, apart, aboveOnly, belowOnly, common, inside, insideAbove });
+  const samples = (apart: Samples['apart']): Samples => ({
+    counts,
+    apart,
+    aboveOnly,
+    belowOnly,
+    common,
+    inside,
+    insideAbove,
+  });
   for (const point of points) {
     // Where many points stay blurred at every precision, more of them tell nothing.
     const result = compareAt(pair, point, context, counts.blurred < mostBlurred ? precisions : coarse);

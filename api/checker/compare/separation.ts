@@ -100,5 +100,7 @@ function boundPower(a: Bound, exponent: number): Bound {
 
 /** u and l swap roles by which of them is larger; taking both in full is the weaker bound that always holds. */
 function boundRoot(a: Bound, degree: number): Bound {
-  return a.u >= a.l ? { u: (a.u + (degree - 1) * a.l) / degree, l: a.l } : { u: a.u, l: (a.l + (degree - 1) * a.u) / degree };
+  return a.u >= a.l
+    ? { u: (a.u + (degree - 1) * a.l) / degree, l: a.l }
+    : { u: a.u, l: (a.l + (degree - 1) * a.u) / degree };
 }

@@ -7,9 +7,17 @@ import type { Atom, Forms } from './normal-forms.ts';
 export type Signs = Map<number, 1 | -1>;
 
 /** What the needs of both lines and the assumed positive nodes say about the signs of atoms. */
-export function findSigns(nodes: readonly GraphNode[], forms: Forms, needs: readonly Need[], positive: readonly number[]): Signs {
+export function findSigns(
+  nodes: readonly GraphNode[],
+  forms: Forms,
+  needs: readonly Need[],
+  positive: readonly number[],
+): Signs {
   const signs = new Map<number, 1 | -1>();
-  const sources = [...positive, ...needs.filter(({ kind }) => kind === 'positive' || kind === 'nonnegative').map(({ arg }) => arg)];
+  const sources = [
+    ...positive,
+    ...needs.filter(({ kind }) => kind === 'positive' || kind === 'nonnegative').map(({ arg }) => arg),
+  ];
   for (let round = 0; round < 3; round += 1) {
     for (const index of sources) learnFrom(index, nodes, forms, signs);
   }
@@ -42,7 +50,11 @@ function learn(parts: { sign: number; atoms: Set<number> }, forms: Forms, signs:
 }
 
 /** The sign in front and the atoms to an odd power of a product; null where the node is not one. */
-function oddFactors(index: number, nodes: readonly GraphNode[], forms: Forms): { sign: number; atoms: Set<number> } | null {
+function oddFactors(
+  index: number,
+  nodes: readonly GraphNode[],
+  forms: Forms,
+): { sign: number; atoms: Set<number> } | null {
   const atoms = oddAtoms(forms.formOf(index) && forms.logOf(index), forms);
   const sign = signInFront(index, nodes, forms);
   return atoms === null || sign === null ? null : { sign, atoms };
@@ -111,7 +123,9 @@ export function signOfAtom(id: number, atoms: readonly Atom[], signs: Signs): 1 
   const isPositive = [...atom.form.values()].every(
     ({ coefficient, powers }) =>
       coefficient.num > 0n &&
-      powers.every(([part, exponent]) => part !== id && part !== 0 && (exponent % 2 === 0 || signOfAtom(part, atoms, signs) === 1)),
+      powers.every(
+        ([part, exponent]) => part !== id && part !== 0 && (exponent % 2 === 0 || signOfAtom(part, atoms, signs) === 1),
+      ),
   );
   return isPositive ? 1 : null;
 }

@@ -12,7 +12,11 @@ export interface SizeBound {
 const constant: SizeBound = { topDegree: 0, bottomDegree: 0, topBits: 1, bottomBits: 0 };
 
 /** Bounds of every needed node; `kernel` answers for nodes that stand for an independent quantity. */
-export function boundSizes(nodes: readonly GraphNode[], needed: Uint8Array, kernel: (index: number) => SizeBound): SizeBound[] {
+export function boundSizes(
+  nodes: readonly GraphNode[],
+  needed: Uint8Array,
+  kernel: (index: number) => SizeBound,
+): SizeBound[] {
   const bounds: SizeBound[] = [];
   nodes.forEach((node, index) => {
     bounds.push(needed[index] === 1 ? boundOf(node, index, bounds, kernel) : constant);
@@ -20,11 +24,20 @@ export function boundSizes(nodes: readonly GraphNode[], needed: Uint8Array, kern
   return bounds;
 }
 
-function boundOf(node: GraphNode, index: number, bounds: readonly SizeBound[], kernel: (index: number) => SizeBound): SizeBound {
+function boundOf(
+  node: GraphNode,
+  index: number,
+  bounds: readonly SizeBound[],
+  kernel: (index: number) => SizeBound,
+): SizeBound {
   const of = (arg: number): SizeBound => bounds[arg] ?? constant;
   switch (node.op) {
     case 'number':
-      return { ...constant, topBits: bitLength(node.value.num), bottomBits: node.value.den === 1n ? 0 : bitLength(node.value.den) };
+      return {
+        ...constant,
+        topBits: bitLength(node.value.num),
+        bottomBits: node.value.den === 1n ? 0 : bitLength(node.value.den),
+      };
     case 'letter':
       return { topDegree: 1, bottomDegree: 0, topBits: 0, bottomBits: 0 };
     case 'add':
@@ -50,7 +63,12 @@ export function inverted(a: SizeBound): SizeBound {
 }
 
 function scaled(a: SizeBound, n: number): SizeBound {
-  return { topDegree: a.topDegree * n, bottomDegree: a.bottomDegree * n, topBits: a.topBits * n, bottomBits: a.bottomBits * n };
+  return {
+    topDegree: a.topDegree * n,
+    bottomDegree: a.bottomDegree * n,
+    topBits: a.topBits * n,
+    bottomBits: a.bottomBits * n,
+  };
 }
 
 export function boundProduct(a: SizeBound, b: SizeBound): SizeBound {
@@ -94,7 +112,13 @@ const targetBits = 100;
  * needed. A non-zero polynomial vanishes modulo at most bits/primeBits primes altogether; modulo any other prime it is
  * zero at a random point with a chance of at most degree/p (Schwartz 1980, Zippel 1979).
  */
-export function evaluationsNeeded(degree: number, bits: number, primeBits: number, primeCount: number, most: number): number | null {
+export function evaluationsNeeded(
+  degree: number,
+  bits: number,
+  primeBits: number,
+  primeCount: number,
+  most: number,
+): number | null {
   const bad = Math.floor(bits / primeBits);
   const perPoint = Math.log2(Math.max(1, degree)) - primeBits;
   if (perPoint > -1) return null;

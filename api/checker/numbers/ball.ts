@@ -92,7 +92,7 @@ export function powBall(a: Ball, exponent: number, bits: number): Ball | null {
   }
   let result: Ball | null = null;
   let square = a;
-  for (let rest = exponent; ; ) {
+  for (let rest = exponent; ;) {
     if (rest % 2 === 1) result = result === null ? square : mulBalls(result, square, bits);
     rest = Math.floor(rest / 2);
     if (rest === 0) break;

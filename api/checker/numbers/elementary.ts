@@ -1,4 +1,14 @@
-import { addBalls, ballToNumber, divBalls, magnitude, mulBalls, negateBall, rescale, sqrtBall, subBalls } from './ball.ts';
+import {
+  addBalls,
+  ballToNumber,
+  divBalls,
+  magnitude,
+  mulBalls,
+  negateBall,
+  rescale,
+  sqrtBall,
+  subBalls,
+} from './ball.ts';
 import type { Ball } from './ball.ts';
 import { bitLength } from './rational.ts';
 
@@ -103,7 +113,8 @@ export function lnBall(a: Ball, bits: number): Ball | null {
   const k = length - bits;
   const wide = bits + 24;
   const mantissa = shiftBy(a.mid, wide - length);
-  const guess = BigInt(Math.round(Math.log(Number(mantissa >> BigInt(wide - 52)) / 2 ** 52) * 2 ** 52)) << BigInt(wide - 52);
+  const guess =
+    BigInt(Math.round(Math.log(Number(mantissa >> BigInt(wide - 52)) / 2 ** 52) * 2 ** 52)) << BigInt(wide - 52);
   const exp = expBall({ mid: -guess, rad: 0n }, wide);
   if (exp === null) return null;
   const unit = 1n << BigInt(wide);
@@ -136,7 +147,8 @@ export function sinCosBall(a: Ball, bits: number): SineCosine | null {
   const size = Math.max(0, bitLength(a.mid) - bits);
   const wide = bits + size + 24;
   if (wide > maximumBits || size > 2000) return null;
-  if (a.rad >> BigInt(bits) > 0n) return { sin: { mid: 0n, rad: 1n << BigInt(bits) }, cos: { mid: 0n, rad: 1n << BigInt(bits) } };
+  if (a.rad >> BigInt(bits) > 0n)
+    return { sin: { mid: 0n, rad: 1n << BigInt(bits) }, cos: { mid: 0n, rad: 1n << BigInt(bits) } };
   const half = pi >> BigInt(constantBits - wide + 1);
   const x = a.mid << BigInt(wide - bits);
   const turns = (2n * x + half) / (2n * half) - (2n * x + half < 0n ? 1n : 0n);

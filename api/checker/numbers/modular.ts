@@ -91,7 +91,7 @@ export function sqrtMod(a: number, p: number): number | null {
   let c = powMod(nonResidue(p), odd, p);
   let t = powMod(a, odd, p);
   let root = powMod(a, (odd + 1) / 2, p);
-  for (let m = twos; t !== 1; ) {
+  for (let m = twos; t !== 1;) {
     let k = 0;
     for (let s = t; s !== 1; k += 1) s = mulMod(s, s, p);
     const b = powMod(c, 2 ** (m - k - 1), p);

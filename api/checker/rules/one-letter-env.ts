@@ -57,7 +57,8 @@ export function windowFor(
     reach = Math.max(reach, Number.isInteger(turns * 12) ? 2 * period : 60);
   }
   if (reach > 400) throw new Unsettled('limit');
-  return { low: -reach, high: reach };
+  // The ends are no multiples of pi: nothing of interest lies on them.
+  return { low: -reach - 0.317, high: reach + 0.317 };
 }
 
 function boundsOf(universe: RealSet): Window | null {

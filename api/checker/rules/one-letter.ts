@@ -83,9 +83,9 @@ function solveAll(question: OneLetterQuestion): Solved {
   const universe = universeOf(letter, given, context);
   const window = windowFor([question.above, question.below, question.reference], universe, letter, given, families, context);
   const inside = window && isWholeLine(universe) ? intersection(universe, windowSet(window)) : universe;
-  const env: SolveEnv = { letter, given, context, window, hints: [], families };
+  const env: SolveEnv = { letter, given, context, window, hints: universe.points, families };
   const solve = (statement: Statement, hints: readonly RealNumber[]): RealSet =>
-    isWholeLine(inside) ? solveStatement(statement, { ...env, hints }) : intersection(solveStatement(statement, { ...env, hints }), inside);
+    isWholeLine(inside) ? solveStatement(statement, { ...env, hints }) : intersection(solveStatement(statement, { ...env, hints: [...universe.points, ...hints] }), inside);
   const first = solve(question.below, []);
   const above = solve(question.above, first.points);
   const below = needsHints(first) ? solve(question.below, above.points) : first;

@@ -3,6 +3,7 @@ import { ballSign, magnitude } from '../numbers/ball.ts';
 import { sign } from '../numbers/rational.ts';
 import { evaluateNodes } from '../values/evaluate.ts';
 import type { Graph, GraphNode } from '../values/graph.ts';
+import { toBall } from '../values/arithmetic.ts';
 import type { KnownValue, Value } from '../values/value.ts';
 import type { Assignment } from './fraction.ts';
 import type { Sign } from './fraction-signs.ts';
@@ -21,13 +22,14 @@ export interface SignAtPoint {
   readonly certain: boolean;
 }
 
-/** Bits at which values are looked at, and the size below which such a value is taken for zero. */
+/** Bits at which values are looked at. */
 const wideBits = 288;
-const zeroBits = 200;
+/** A sum that cancels to less than 2^-180 of its largest part is zero: more than 50 digits agree. */
+const cancelledBits = 180n;
 
 /**
- * The sign of a graph's value at a point. A part whose value is zero to 60 digits is zero: so that a root or a
- * denominator at the very edge of its domain gets its meaning. Null sign: no value there; null answer: not known.
+ * The sign of a graph's value at a point. A sum that cancels to 50 digits is zero: so that a root or a denominator at the
+ * very edge of its domain gets its meaning. Null sign: no value there; null answer: not known.
  */
 export function signAtPoint(
   graph: Graph,
@@ -37,17 +39,14 @@ export function signAtPoint(
   context: CheckContext,
 ): SignAtPoint | null {
   let nodes: readonly GraphNode[] = graph.nodes.slice(0, graph.root + 1);
+  const point = new Map<string, KnownValue>([[letter, toKnownValue(at, wideBits)]]);
+  for (const [name, value] of given) point.set(name, { kind: 'rational', value });
   let certain = true;
   for (let tries = 0; tries < 12; tries += 1) {
-    const point = new Map<string, KnownValue>([[letter, toKnownValue(at, wideBits)]]);
-    for (const [name, value] of given) point.set(name, { kind: 'rational', value });
     const values = evaluateNodes(nodes, point, wideBits, context);
-    const value = values[graph.root];
-    if (value && value.kind !== 'unknown') {
-      const found = signOfValue(value);
-      if (found !== undefined && found !== 'near-zero') return { sign: found, certain };
-    }
-    const zero = values.findIndex((v) => signOfValue(v) === 'near-zero');
+    const found = signOfValue(values[graph.root]);
+    if (found !== undefined) return { sign: found, certain };
+    const zero = nodes.findIndex((node, k) => isCancelled(node, values, k));
     if (zero < 0) return null;
     certain = false;
     if (zero === graph.root) return { sign: 0, certain };
@@ -56,20 +55,40 @@ export function signAtPoint(
   return null;
 }
 
-function signOfValue(value: Value): Sign | 'near-zero' | undefined {
-  switch (value.kind) {
+/** The sign where it is certain, null for no value, undefined where it cannot be told. */
+function signOfValue(value: Value | undefined): Sign | undefined {
+  switch (value?.kind) {
     case 'rational':
     case 'pi':
       return sign(value.value);
     case 'undefined':
       return null;
-    case 'ball': {
-      if (value.im !== null) return undefined;
-      const known = ballSign(value.re);
-      if (known !== 0) return known;
-      return magnitude(value.re.mid) + value.re.rad < 1n << BigInt(wideBits - zeroBits) ? 'near-zero' : undefined;
-    }
+    case 'ball':
+      return value.im === null ? ballSign(value.re) || undefined : undefined;
     default:
       return undefined;
   }
+}
+
+/** Functions that have zeros where their argument has none; their values near a zero are small beside 1. */
+const vanishing: ReadonlySet<string> = new Set(['sin', 'cos', 'tan', 'cot', 'ln', 'log', 'arccos', 'arcosh']);
+
+function isCancelled(node: GraphNode, values: readonly Value[], index: number): boolean {
+  const value = values[index];
+  if (value?.kind !== 'ball' || value.im !== null || ballSign(value.re) !== 0) return false;
+  const size = magnitude(value.re.mid) + value.re.rad;
+  if (node.op === 'add') {
+    const parts = node.args.map((arg) => sizeOf(values[arg]));
+    const largest = parts.reduce((most, part) => (part > most ? part : most), 0n);
+    return size << cancelledBits < largest;
+  }
+  return node.op === 'call' && vanishing.has(node.name) && size << cancelledBits < 1n << BigInt(wideBits);
+}
+
+/** A lower bound of the size of a value, as a multiple of 2^-wideBits. */
+function sizeOf(value: Value | undefined): bigint {
+  if (!value || value.kind === 'undefined' || value.kind === 'unknown') return 0n;
+  const { re } = toBall(value, wideBits);
+  const size = magnitude(re.mid) - re.rad;
+  return size > 0n ? size : 0n;
 }

@@ -1,9 +1,12 @@
-import { rational } from '../numbers/rational.ts';
+import type { Expr } from '../../../shared/maths/expression.ts';
+import { ballFromRational } from '../numbers/ball.ts';
+import { lnBall } from '../numbers/elementary.ts';
+import { rational, type Rational } from '../numbers/rational.ts';
 import { computedNumber } from './linear.ts';
 import { rationalNumber, type RealNumber } from './real-number.ts';
 import { surdToNumber } from './surd.ts';
 
-/** Short exact numbers near a double: fractions, multiples of pi, square roots. Each is a guess to be tried. */
+/** Short exact numbers near a double: fractions, multiples of pi, square roots, logarithms. Each is a guess to be tried. */
 export function guessNumbers(near: number): RealNumber[] {
   const guesses: RealNumber[] = [];
   const fraction = shortFraction(near, 5000);
@@ -19,10 +22,25 @@ export function guessNumbers(near: number): RealNumber[] {
     const part = rational(near < 0 ? -1 : 1, BigInt(square.den));
     guesses.push(surdOf(part, BigInt(square.num) * BigInt(square.den)));
   }
+  const power = Math.abs(near) < 40 ? shortFraction(Math.exp(near), 60) : null;
+  if (power && power.num > 0 && power.num < 100_000 && power.num !== power.den) {
+    guesses.push(logarithmOf(rational(BigInt(power.num), BigInt(power.den))));
+  }
   return guesses;
 }
 
-function surdOf(part: ReturnType<typeof rational>, radicand: bigint): RealNumber {
+/** ln of a fraction. */
+function logarithmOf(value: Rational): RealNumber {
+  const span = { start: 0, end: 0 };
+  const argument: Expr = { kind: 'number', numerator: value.num, denominator: value.den, written: 'integer', decimals: 0, span };
+  return {
+    kind: 'computed',
+    expr: { kind: 'call', name: 'ln', args: [argument], span },
+    enclose: (bits) => lnBall(ballFromRational(value, bits), bits) ?? { mid: 0n, rad: 1n << BigInt(bits + 8) },
+  };
+}
+
+function surdOf(part: Rational, radicand: bigint): RealNumber {
   let inside = radicand;
   let outside = 1n;
   for (let p = 2n; p * p <= inside && p < 3000n; p += 1n) {

@@ -19,7 +19,8 @@ function insideFinite(low: number, high: number, waves: number): number[] {
 function insideInfinite(low: number, high: number): number[] {
   const positions: number[] = [];
   for (let k = -12; k <= 15; k += 0.25) {
-    const far = 2 ** k;
+    // No power of two times a short root: those are where zeros lie in school work.
+    const far = 2 ** k * 1.0137;
     if (Number.isFinite(low)) positions.push(low + far);
     else if (Number.isFinite(high)) positions.push(high - far);
     else positions.push(far, -far);

@@ -118,10 +118,14 @@ function zerosAt(
     if (approximate(guess) >= crossing.low && approximate(guess) <= crossing.high && isZeroAt(graph, guess, env)) return [guess];
   }
   const ball = { graph, letter: env.letter, given: env.given, context: env.context };
-  const zero = crossing.kind === 'crossing' ? zeroBetween(ball, crossing.low, crossing.high) : null;
-  if (zero) return [zero];
   if (crossing.kind === 'touching') return touchingZeros(graph, f, crossing, at, env);
-  return [];
+  const wider = 1e-9 * (1 + Math.abs(at));
+  const zero = zeroBetween(ball, crossing.low, crossing.high) ?? zeroBetween(ball, crossing.low - wider, crossing.high + wider);
+  if (zero) return [zero];
+  // Signs that are noise: the function is zero all along, or the zero is not to be pinned down.
+  const middle = rationalNumber(rational(BigInt(Math.round(at * 2 ** 40)), 1n << 40n));
+  if (signAtPoint(graph, env.letter, middle, env.given, env.context)?.sign === 0) return [];
+  throw new Unsettled('not-settled');
 }
 
 /** Two zeros close together, or a zero without change of sign, or neither. */

@@ -1,4 +1,13 @@
-import { addBalls, ballFromRational, ballSign, divBalls, mulBalls, negateBall, powBall, subBalls } from '../numbers/ball.ts';
+import {
+  addBalls,
+  ballFromRational,
+  ballSign,
+  divBalls,
+  mulBalls,
+  negateBall,
+  powBall,
+  subBalls,
+} from '../numbers/ball.ts';
 import type { Ball } from '../numbers/ball.ts';
 import { piBall } from '../numbers/elementary.ts';
 import * as Q from '../numbers/rational.ts';

@@ -3,8 +3,22 @@ import { arcsinBall, arctanBall, sinCosBall } from '../numbers/elementary.ts';
 import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
 import {
-  addKnown, divKnown, fromBall, fromPi, fromRational, isExactZero, isKnown, isReal, mulKnown, negateKnown, oneValue,
-  subKnown, toBall, undefinedValue, unknown, zeroValue,
+  addKnown,
+  divKnown,
+  fromBall,
+  fromPi,
+  fromRational,
+  isExactZero,
+  isKnown,
+  isReal,
+  mulKnown,
+  negateKnown,
+  oneValue,
+  subKnown,
+  toBall,
+  undefinedValue,
+  unknown,
+  zeroValue,
 } from './arithmetic.ts';
 import type { Field } from './field.ts';
 import { halfSum, imaginaryUnit, logOf } from './logarithms.ts';
@@ -73,7 +87,11 @@ export function ratioOf(top: Value, bottom: Value, field: Field): Value {
 }
 
 const exactArcsines: readonly (readonly [Rational, Rational])[] = [
-  [Q.zero, Q.zero], [half, Q.rational(1, 6)], [Q.one, half], [Q.negate(half), Q.rational(-1, 6)], [Q.minusOne, Q.negate(half)],
+  [Q.zero, Q.zero],
+  [half, Q.rational(1, 6)],
+  [Q.one, half],
+  [Q.negate(half), Q.rational(-1, 6)],
+  [Q.minusOne, Q.negate(half)],
 ];
 
 /** Principal value in [-pi/2, pi/2]; over the complex numbers -i ln(iz + sqrt(1-z^2)), DLMF 4.23.19. */
@@ -128,7 +146,11 @@ export function arctanOf(a: KnownValue, field: Field): Value {
 /** Positive arguments only: for negative ones two ranges are in use, (-pi/2, 0) and (pi/2, pi). */
 export function arccotOf(a: KnownValue, field: Field): Value {
   if (isExactZero(a)) return fromPi(half);
-  const positive = isReal(a) ? (a.kind === 'ball' ? ballSign(a.re) : Q.sign(a.kind === 'gaussian' ? Q.zero : a.value)) : -1;
+  const positive = isReal(a)
+    ? a.kind === 'ball'
+      ? ballSign(a.re)
+      : Q.sign(a.kind === 'gaussian' ? Q.zero : a.value)
+    : -1;
   if (positive === 0) return unknown('precision');
   if (positive < 0) return unknown('no-agreed-meaning');
   const arctan = arctanOf(a, field);

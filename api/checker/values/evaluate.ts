@@ -2,8 +2,19 @@ import type { Expr } from '../../../shared/maths/expression.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import {
-  addKnown, divKnown, firstMissing, fromPi, fromRational, isKnown, mulKnown, negateKnown, oneValue, powKnown,
-  undefinedValue, unknown, zeroValue,
+  addKnown,
+  divKnown,
+  firstMissing,
+  fromPi,
+  fromRational,
+  isKnown,
+  mulKnown,
+  negateKnown,
+  oneValue,
+  powKnown,
+  undefinedValue,
+  unknown,
+  zeroValue,
 } from './arithmetic.ts';
 import type { Field } from './field.ts';
 import { callFunction } from './functions.ts';
@@ -59,7 +70,13 @@ function costOf(node: GraphNode): number {
   }
 }
 
-function evaluateNode(node: GraphNode, values: readonly Value[], point: Point, field: Field, context: CheckContext): Value {
+function evaluateNode(
+  node: GraphNode,
+  values: readonly Value[],
+  point: Point,
+  field: Field,
+  context: CheckContext,
+): Value {
   switch (node.op) {
     case 'number':
       return fromRational(node.value);
@@ -132,7 +149,11 @@ function applyNode(node: AppliedNode, values: readonly Value[], field: Field): V
 
 /** An empty sum is 0 and an empty product 1 when the upper bound is one below the lower one. */
 function seriesValue(
-  node: Extract<GraphNode, { op: 'series' }>, values: readonly Value[], point: Point, field: Field, context: CheckContext,
+  node: Extract<GraphNode, { op: 'series' }>,
+  values: readonly Value[],
+  point: Point,
+  field: Field,
+  context: CheckContext,
 ): Value {
   const from = values[node.args[0]] ?? undefinedValue;
   const to = values[node.args[1]] ?? undefinedValue;
@@ -153,4 +174,3 @@ function seriesValue(
   }
   return total;
 }
-

@@ -1,8 +1,21 @@
 import { absBall, addBalls, ballBetween, mulBalls, negateBall, sqrtBall } from '../numbers/ball.ts';
 import * as Q from '../numbers/rational.ts';
 import {
-  addKnown, divKnown, fromBall, fromRational, isExactZero, isKnown, isReal, mulKnown, negateKnown, oneValue, subKnown,
-  toBall, undefinedValue, unknown, zeroValue,
+  addKnown,
+  divKnown,
+  fromBall,
+  fromRational,
+  isExactZero,
+  isKnown,
+  isReal,
+  mulKnown,
+  negateKnown,
+  oneValue,
+  subKnown,
+  toBall,
+  undefinedValue,
+  unknown,
+  zeroValue,
 } from './arithmetic.ts';
 import { arccosOf, arccotOf, arcsinOf, arctanOf, comparedToOne, cosOf, ofInverse, ratioOf, sinOf } from './circular.ts';
 import type { Field } from './field.ts';
@@ -87,8 +100,29 @@ function callOne(name: OneArgument, a: KnownValue, field: Field): Value {
 
 type PartName = Exclude<
   OneArgument,
-  | 'sin' | 'cos' | 'tan' | 'cot' | 'sec' | 'csc' | 'arcsin' | 'arccos' | 'arctan' | 'arccot' | 'arcsec' | 'arccsc'
-  | 'ln' | 'exp' | 'sinh' | 'cosh' | 'tanh' | 'coth' | 'sech' | 'csch' | 'arsinh' | 'arcosh' | 'artanh'
+  | 'sin'
+  | 'cos'
+  | 'tan'
+  | 'cot'
+  | 'sec'
+  | 'csc'
+  | 'arcsin'
+  | 'arccos'
+  | 'arctan'
+  | 'arccot'
+  | 'arcsec'
+  | 'arccsc'
+  | 'ln'
+  | 'exp'
+  | 'sinh'
+  | 'cosh'
+  | 'tanh'
+  | 'coth'
+  | 'sech'
+  | 'csch'
+  | 'arsinh'
+  | 'arcosh'
+  | 'artanh'
 >;
 
 function callPart(name: PartName, a: KnownValue, field: Field): Value {

@@ -2,7 +2,19 @@ import { addBalls, ballBetween, ballSign, mulBalls, negateBall } from '../number
 import type { Ball } from '../numbers/ball.ts';
 import { arctanBall, expBall, lnBall, piBall, sinCosBall } from '../numbers/elementary.ts';
 import { divBalls } from '../numbers/ball.ts';
-import { addKnown, fromBall, fromPi, isExactZero, isKnown, mulKnown, oneValue, toBall, undefinedValue, unknown, zeroValue } from './arithmetic.ts';
+import {
+  addKnown,
+  fromBall,
+  fromPi,
+  isExactZero,
+  isKnown,
+  mulKnown,
+  oneValue,
+  toBall,
+  undefinedValue,
+  unknown,
+  zeroValue,
+} from './arithmetic.ts';
 import * as Q from '../numbers/rational.ts';
 import type { Field } from './field.ts';
 import type { BallValue, KnownValue, Value } from './value.ts';

@@ -66,7 +66,12 @@ function lower(expr: Expr, outer: Lowering): number {
     case 'power':
       return lowerPower(lower(expr.base, at), lower(expr.exponent, at), hasDecimal(expr.exponent), at);
     case 'root':
-      return lowerRoot(lower(expr.radicand, at), expr.degree === null ? 2 : lower(expr.degree, at), expr.degree === null, at);
+      return lowerRoot(
+        lower(expr.radicand, at),
+        expr.degree === null ? 2 : lower(expr.degree, at),
+        expr.degree === null,
+        at,
+      );
     case 'call':
       return lowerCall(expr.name, expr.args, at);
     case 'log': {
@@ -128,7 +133,8 @@ function lowerPower(base: number, exponent: number, decimal: boolean, at: Loweri
   const value = builder.valueOf(exponent);
   const node = builder.nodes[base];
   if (node?.op === 'constant' && node.name === 'e') return builder.push({ op: 'call', name: 'exp', args: [exponent] });
-  if (value === null) return builder.push({ op: 'pow', args: [base, exponent], positive: needsPositiveBase(base, exponent, at) });
+  if (value === null)
+    return builder.push({ op: 'pow', args: [base, exponent], positive: needsPositiveBase(base, exponent, at) });
   const limit = BigInt(rationalExponentLimit);
   if (value.num > limit || value.num < -limit || value.den > 1000n) return opaque(at, 'limit');
   if (value.den === 1n) return builder.power(base, Number(value.num));
@@ -146,7 +152,11 @@ function lowerRoot(radicand: number, degree: number, isSquare: boolean, at: Lowe
   const value = at.builder.valueOf(degree);
   if (value === null) {
     const inverse = at.builder.div(at.builder.number(Q.one), degree);
-    return at.builder.push({ op: 'pow', args: [radicand, inverse], positive: needsPositiveBase(radicand, inverse, at) });
+    return at.builder.push({
+      op: 'pow',
+      args: [radicand, inverse],
+      positive: needsPositiveBase(radicand, inverse, at),
+    });
   }
   if (value.den !== 1n || value.num < 1n) return opaque(at, 'not-covered');
   if (value.num > 1000n) return opaque(at, 'limit');
@@ -163,7 +173,8 @@ function pushRoot(radicand: number, degree: number, times: number, positive: boo
 }
 
 function lowerCall(name: Extract<Expr, { kind: 'call' }>['name'], args: readonly Expr[], at: Lowering): number {
-  if (name === 'det' || name === 'transpose') return lowerReduced({ kind: 'call', name, args, span: { start: 0, end: 0 } }, at);
+  if (name === 'det' || name === 'transpose')
+    return lowerReduced({ kind: 'call', name, args, span: { start: 0, end: 0 } }, at);
   const lowered = args.map((arg) => lower(arg, at));
   if (name === 'degrees') {
     const pi = at.builder.push({ op: 'constant', args: [], name: 'pi' });
@@ -185,12 +196,16 @@ function lowerInverseHyperbolic(name: string, a: number, at: Lowering): number |
     case 'arsinh':
       return log(builder.add([a, root(builder.add([square(), one]))]));
     case 'arcosh': {
-      if (at.context.numbers === 'real') return log(builder.add([a, root(builder.add([square(), builder.number(Q.minusOne)]))]));
+      if (at.context.numbers === 'real')
+        return log(builder.add([a, root(builder.add([square(), builder.number(Q.minusOne)]))]));
       const parts = [root(builder.add([a, one])), root(builder.add([a, builder.number(Q.minusOne)]))];
       return log(builder.add([a, builder.mul(parts)]));
     }
     case 'artanh': {
-      const difference = builder.add([log(builder.add([one, a])), builder.negate(log(builder.add([one, builder.negate(a)])))]);
+      const difference = builder.add([
+        log(builder.add([one, a])),
+        builder.negate(log(builder.add([one, builder.negate(a)]))),
+      ]);
       return builder.mul([builder.number(Q.rational(1, 2)), difference]);
     }
     default:

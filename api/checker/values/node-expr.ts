@@ -6,14 +6,29 @@ const nowhere: Span = { start: 0, end: 0 };
 
 export function numberExpr(value: Rational): Expr {
   const whole: Expr = {
-    kind: 'number', numerator: value.num < 0n ? -value.num : value.num, denominator: 1n, written: 'integer', decimals: 0, span: nowhere,
+    kind: 'number',
+    numerator: value.num < 0n ? -value.num : value.num,
+    denominator: 1n,
+    written: 'integer',
+    decimals: 0,
+    span: nowhere,
   };
   const size: Expr =
     value.den === 1n
       ? whole
       : {
-          kind: 'quotient', numerator: whole, written: 'fraction', span: nowhere,
-          denominator: { kind: 'number', numerator: value.den, denominator: 1n, written: 'integer', decimals: 0, span: nowhere },
+          kind: 'quotient',
+          numerator: whole,
+          written: 'fraction',
+          span: nowhere,
+          denominator: {
+            kind: 'number',
+            numerator: value.den,
+            denominator: 1n,
+            written: 'integer',
+            decimals: 0,
+            span: nowhere,
+          },
         };
   return value.num < 0n ? negated(size) : size;
 }
@@ -32,10 +47,14 @@ function negated(expr: Expr): Expr {
 
 function fractionPower(base: Expr, times: number, degree: number): Expr {
   const root: Expr = {
-    kind: 'root', radicand: base, span: nowhere,
+    kind: 'root',
+    radicand: base,
+    span: nowhere,
     degree: degree === 2 ? null : numberExpr({ num: BigInt(degree), den: 1n }),
   };
-  return times === 1 ? root : { kind: 'power', base: root, exponent: numberExpr({ num: BigInt(times), den: 1n }), span: nowhere };
+  return times === 1
+    ? root
+    : { kind: 'power', base: root, exponent: numberExpr({ num: BigInt(times), den: 1n }), span: nowhere };
 }
 
 /** A node as an expression again; null for what has no written form, such as a sum with open bounds. */
@@ -69,7 +88,9 @@ function build(node: GraphNode, args: readonly Expr[]): Expr | null {
     case 'div':
       return a && b ? { kind: 'quotient', numerator: a, denominator: b, written: 'fraction', span: nowhere } : null;
     case 'power':
-      return a ? { kind: 'power', base: a, exponent: numberExpr({ num: BigInt(node.exponent), den: 1n }), span: nowhere } : null;
+      return a
+        ? { kind: 'power', base: a, exponent: numberExpr({ num: BigInt(node.exponent), den: 1n }), span: nowhere }
+        : null;
     case 'root':
       return a ? fractionPower(a, node.times, node.degree) : null;
     case 'pow':
@@ -89,7 +110,8 @@ function toTerm(expr: Expr): Term {
 
 /** Numbers first, as people write products. */
 function productExpr(args: readonly Expr[]): Expr {
-  const isNumber = (expr: Expr) => expr.kind === 'number' || (expr.kind === 'quotient' && expr.numerator.kind === 'number');
+  const isNumber = (expr: Expr) =>
+    expr.kind === 'number' || (expr.kind === 'quotient' && expr.numerator.kind === 'number');
   const factors = [...args.filter(isNumber), ...args.filter((arg) => !isNumber(arg))];
   return { kind: 'product', factors, joins: factors.slice(1).map(() => 'implicit' as const), span: nowhere };
 }

@@ -1,8 +1,20 @@
 import { ballSign, rootBall } from '../numbers/ball.ts';
 import * as Q from '../numbers/rational.ts';
 import {
-  divKnown, fromBall, fromRational, isExactZero, isKnown, isReal, mulKnown, negateKnown, oneValue, powKnown,
-  toBall, undefinedValue, unknown, zeroValue,
+  divKnown,
+  fromBall,
+  fromRational,
+  isExactZero,
+  isKnown,
+  isReal,
+  mulKnown,
+  negateKnown,
+  oneValue,
+  powKnown,
+  toBall,
+  undefinedValue,
+  unknown,
+  zeroValue,
 } from './arithmetic.ts';
 import type { Field } from './field.ts';
 import { expOf, logOf } from './logarithms.ts';
@@ -105,7 +117,12 @@ function zeroToPower(b: KnownValue): Value {
 
 function wholePower(a: KnownValue, exponent: bigint, field: Field): Value {
   if (exponent > 1_000_000n || exponent < -1_000_000n) {
-    if (a.kind === 'rational' && Q.isWhole(Q.absolute(a.value)) && Q.absolute(a.value).num <= 1n && !Q.isZero(a.value)) {
+    if (
+      a.kind === 'rational' &&
+      Q.isWhole(Q.absolute(a.value)) &&
+      Q.absolute(a.value).num <= 1n &&
+      !Q.isZero(a.value)
+    ) {
       return exponent % 2n === 0n ? oneValue : a;
     }
     return unknown('limit');
@@ -140,4 +157,3 @@ function exactLog(base: Q.Rational, a: Q.Rational): Q.Rational | null {
   }
   return null;
 }
-

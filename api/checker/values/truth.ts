@@ -21,7 +21,9 @@ export function prepareLine(line: Line, context: CheckContext): PreparedLine {
       return prepareRelation(line.left, line.sign, line.right, context);
     case 'chain':
       return prepareEvery(
-        line.signs.map((sign, k) => prepareRelation(memberAt(line.members, k), sign, memberAt(line.members, k + 1), context)),
+        line.signs.map((sign, k) =>
+          prepareRelation(memberAt(line.members, k), sign, memberAt(line.members, k + 1), context),
+        ),
       );
     case 'all':
       return prepareEvery(line.parts.map((part) => prepareLine(part, context)));
@@ -148,7 +150,9 @@ function prepareInside(letter: Expr, set: SetExpr, context: CheckContext): Prepa
 }
 
 function prepareNumberSet(
-  letter: Expr, set: 'reals' | 'integers' | 'naturals' | 'rationals' | 'complex', context: CheckContext,
+  letter: Expr,
+  set: 'reals' | 'integers' | 'naturals' | 'rationals' | 'complex',
+  context: CheckContext,
 ): PreparedLine {
   const prepared = prepare(letter, context);
   return (point, bits) => {

@@ -63,7 +63,9 @@ function decimalTex(ball: Ball, bits: number, digits: number): string {
   const exponent = Math.floor((Q.bitLength(size) - 1 - bits) * Math.log10(2));
   if (exponent > Math.max(9, digits - 1) || exponent < -5) return sign + scientificTex(size, bits, exponent, digits);
   const places = Math.max(0, digits - 1 - exponent);
-  const scaled = roundShift(size * 10n ** BigInt(places), bits).toString().padStart(places + 1, '0');
+  const scaled = roundShift(size * 10n ** BigInt(places), bits)
+    .toString()
+    .padStart(places + 1, '0');
   const whole = scaled.slice(0, scaled.length - places);
   const rest = scaled.slice(scaled.length - places).replace(/0+$/, '');
   return sign + (rest === '' ? whole : `${whole}.${rest}`);
@@ -75,7 +77,8 @@ function roundShift(value: bigint, bits: number): bigint {
 
 function scientificTex(size: bigint, bits: number, exponent: number, shown: number): string {
   const places = shown - 1 - exponent;
-  const scaled = places >= 0 ? roundShift(size * 10n ** BigInt(places), bits) : roundShift(size, bits) / 10n ** BigInt(-places);
+  const unit = places >= 0 ? 1n << BigInt(bits) : (10n ** BigInt(-places)) << BigInt(bits);
+  const scaled = (2n * size * 10n ** BigInt(Math.max(0, places)) + unit) / (2n * unit);
   const digits = scaled.toString();
   const shift = digits.length - shown;
   const rest = digits.slice(1, shown).replace(/0+$/, '');

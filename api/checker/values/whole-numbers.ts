@@ -15,7 +15,8 @@ function wholeOf(value: KnownValue, field: Field): bigint | null | 'unknown' {
   const scale = BigInt(field.bits);
   const low = (value.re.mid - value.re.rad) >> scale;
   const high = (value.re.mid + value.re.rad) >> scale;
-  const isBetween = low === high && (magnitude(value.re.mid) >> scale << scale) + value.re.rad < magnitude(value.re.mid);
+  const isBetween =
+    low === high && ((magnitude(value.re.mid) >> scale) << scale) + value.re.rad < magnitude(value.re.mid);
   return isBetween ? null : 'unknown';
 }
 
@@ -55,7 +56,7 @@ export function floorOf(a: KnownValue, up: boolean, field: Field): Value {
   const scale = BigInt(field.bits);
   const low = (ball.mid - ball.rad) >> scale;
   const high = (ball.mid + ball.rad) >> scale;
-  const touches = ((ball.mid - ball.rad - 1n) >> scale) !== low;
+  const touches = (ball.mid - ball.rad - 1n) >> scale !== low;
   if (low !== high || touches) return unknown('precision');
   return fromRational({ num: up ? low + 1n : low, den: 1n });
 }

@@ -1,0 +1,88 @@
+import type { Expr, SumExpr } from '../../../shared/maths/expression.ts';
+import { readLine } from '../../../shared/maths/read.ts';
+import { childrenOf, mapChildren } from '../../../shared/maths/walk.ts';
+import { neg, product, sum } from '../evidence/build.ts';
+import { factorsOf, fill, matchExpr, matchFactors, matchTerms, type Bindings } from './match.ts';
+
+/** A wrong rule: what a part of a line becomes under it, in all the ways in which it applies there. */
+export type Rewrite = (part: Expr) => Iterable<Expr>;
+
+/** A rule written as two pieces of TeX; letters stand for anything, k, m, n, p and q for numbers. */
+export function rule(from: string, to: string, accepts: (bound: Bindings) => boolean = () => true): Rewrite {
+  const pattern = toExpr(from);
+  const result = toExpr(to);
+  return function* rewrite(part) {
+    for (const { bound, rebuild } of instances(pattern, part)) {
+      if (accepts(bound)) yield rebuild(fill(result, bound));
+    }
+  };
+}
+
+function toExpr(tex: string): Expr {
+  const reading = readLine(tex);
+  if (!reading.ok || reading.line.kind !== 'expression') throw new Error(`not a pattern: ${tex}`);
+  return reading.line.expr;
+}
+
+interface Instance {
+  readonly bound: Bindings;
+  readonly rebuild: (replaced: Expr) => Expr;
+}
+
+const mostTerms = 9;
+
+/** A pattern that is a sum or a product may also be found among the terms or factors, the others staying. */
+function* instances(pattern: Expr, part: Expr): Generator<Instance> {
+  if (pattern.kind === 'sum' && part.kind === 'sum') yield* amongTerms(pattern, part);
+  else for (const bound of matchExpr(pattern, part)) yield { bound, rebuild: (replaced) => replaced };
+  if (pattern.kind === 'product' && part.kind === 'product') yield* amongFactors(pattern.factors, part);
+}
+
+function* amongTerms(pattern: SumExpr, part: SumExpr): Generator<Instance> {
+  const { terms } = part;
+  if (terms.length > mostTerms || terms.length < pattern.terms.length) return;
+  for (const picked of tuples(terms.length, pattern.terms.length)) {
+    const groups = picked.map((k) => [terms[k] as SumExpr['terms'][number]]);
+    const place = Math.min(...picked);
+    for (const bound of matchTerms(pattern.terms, groups, new Map())) {
+      const rebuild = (replaced: Expr): Expr =>
+        sum(...terms.flatMap((term, k) => (k === place ? [replaced] : picked.includes(k) ? [] : [term.sign === 'minus' ? neg(term.expr) : term.expr])));
+      yield { bound, rebuild };
+    }
+  }
+}
+
+function* amongFactors(pattern: readonly Expr[], part: Expr): Generator<Instance> {
+  const factors = factorsOf(part);
+  if (factors.length > mostTerms || factors.length <= pattern.length) return;
+  for (const picked of tuples(factors.length, pattern.length)) {
+    const place = Math.min(...picked);
+    for (const bound of matchFactors(pattern, picked.map((k) => [factors[k] as Expr]), new Map())) {
+      const rebuild = (replaced: Expr): Expr => product(...factors.flatMap((f, k) => (k === place ? [replaced] : picked.includes(k) ? [] : [f])));
+      yield { bound, rebuild };
+    }
+  }
+}
+
+/** Ordered choices of `size` different indices below `count`. */
+function tuples(count: number, size: number): number[][] {
+  if (size === 0) return [[]];
+  const shorter = tuples(count, size - 1);
+  return shorter.flatMap((picked) => Array.from({ length: count }, (_, k) => k).filter((k) => !picked.includes(k)).map((k) => [...picked, k]));
+}
+
+/** The whole expression under a rule used once, at any of its parts. */
+export function* everywhere(expr: Expr, rewrite: Rewrite): Generator<Expr> {
+  yield* rewrite(expr);
+  for (const [place, part] of childrenOf(expr).entries()) {
+    for (const changed of everywhere(part, rewrite)) yield withChild(expr, place, changed);
+  }
+}
+
+function withChild(expr: Expr, place: number, changed: Expr): Expr {
+  let at = -1;
+  return mapChildren(expr, (part) => {
+    at += 1;
+    return at === place ? changed : part;
+  });
+}
