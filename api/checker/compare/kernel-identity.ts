@@ -95,10 +95,11 @@ function agrees(
   random: Random,
   context: CheckContext,
 ): boolean {
+  const setting = { nodes: pair.nodes, plan, names: pair.names, complex: context.numbers === 'complex' };
   for (let attempt = 0; attempt < mostAttempts && table.length > 0; attempt += 1) {
     context.budget.spend(evaluationCost);
     const p = table[random(table.length)] ?? 0;
-    const values = createKernelValues(pair.nodes, plan, pair.names, context.numbers === 'complex', p, random, choice);
+    const values = createKernelValues(setting, p, random, choice);
     const residues = evaluateModular(pair.nodes, pair.needed, p, values.letters, values.kernel);
     const x = residues[pair.above] ?? noResidue;
     const y = residues[pair.below] ?? noResidue;

@@ -136,7 +136,7 @@ function register(form: Form, denominators: Map<string, number>, monomials: Map<
 /** e^(i arcsin f) = sqrt(1-f^2) + i f and e^(i arctan f) = (1 + i f) / sqrt(1+f^2): the halved logarithms of the radicands. */
 function rootsOfArcs(forms: Forms, signs: Signs, monomials: ReadonlyMap<string, Monomial>): Form[] {
   const found: Form[] = [];
-  for (const { powers } of [...monomials.values()]) {
+  for (const { powers } of monomials.values()) {
     const kinds = powers.map(([id]) => forms.atoms[id]);
     if (!isArc(powers, kinds, 1)) continue;
     const radicand = radicandOfArc(kinds[1]);

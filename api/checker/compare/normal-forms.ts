@@ -39,191 +39,219 @@ export interface Forms {
 const largestPrime = 2_000n;
 
 export function createForms(nodes: readonly GraphNode[], complex: boolean): Forms {
-  const atoms: Atom[] = [{ kind: 'imaginary' }];
-  const ids = new Map<string, number>([['imaginary', imaginaryAtom]]);
-  const forms = new Map<number, Form | null>();
-  const logs = new Map<number, Form | null>();
+  return new FormTable(nodes, complex);
+}
 
-  function atom(key: string, make: () => Atom): number {
-    const found = ids.get(key);
-    if (found !== undefined) return found;
-    ids.set(key, atoms.length);
-    return atoms.push(make()) - 1;
+/** Builds forms as they are asked for; an equal quantity is always the same atom. */
+class FormTable implements Forms {
+  readonly atoms: Atom[] = [{ kind: 'imaginary' }];
+  private readonly ids = new Map<string, number>([['imaginary', imaginaryAtom]]);
+  private readonly forms = new Map<number, Form | null>();
+  private readonly logs = new Map<number, Form | null>();
+  private readonly nodes: readonly GraphNode[];
+  private readonly complex: boolean;
+
+  constructor(nodes: readonly GraphNode[], complex: boolean) {
+    this.nodes = nodes;
+    this.complex = complex;
   }
-  function formOf(index: number): Form | null {
-    const found = forms.get(index);
+
+  private atom(key: string, make: () => Atom): number {
+    const found = this.ids.get(key);
     if (found !== undefined) return found;
-    const node = nodes[index];
-    const form = node === undefined ? null : buildForm(node, index);
-    forms.set(index, form);
+    this.ids.set(key, this.atoms.length);
+    return this.atoms.push(make()) - 1;
+  }
+
+  formOf(index: number): Form | null {
+    const found = this.forms.get(index);
+    if (found !== undefined) return found;
+    const node = this.nodes[index];
+    const form = node === undefined ? null : this.buildForm(node, index);
+    this.forms.set(index, form);
     return form;
   }
-  function opaque(name: string, args: readonly number[], node: number): Form | null {
+
+  private opaque(name: string, args: readonly number[], node: number): Form | null {
     const keys: string[] = [];
     for (const arg of args) {
-      const form = formOf(arg);
+      const form = this.formOf(arg);
       if (form === null) return null;
       keys.push(keyOfForm(form));
     }
-    return atomForm(atom(`${name}(${keys.join(';')})`, () => ({ kind: 'other', node })));
+    return atomForm(this.atom(`${name}(${keys.join(';')})`, () => ({ kind: 'other', node })));
   }
-  function buildForm(node: GraphNode, index: number): Form | null {
+
+  private buildForm(node: GraphNode, index: number): Form | null {
     switch (node.op) {
       case 'number':
         return constantForm(node.value);
       case 'letter':
-        return atomForm(atom(`letter ${node.name}`, () => ({ kind: 'letter', name: node.name })));
+        return atomForm(this.atom(`letter ${node.name}`, () => ({ kind: 'letter', name: node.name })));
       case 'constant':
-        return constantAtom(node.name);
+        return this.constantAtom(node.name);
       case 'add':
-        return joined(node.args, addForms, Q.zero);
+        return this.joined(node.args, addForms, Q.zero);
       case 'mul':
-        return joined(node.args, mulForms, Q.one);
+        return this.joined(node.args, mulForms, Q.one);
       case 'negate': {
-        const form = formOf(node.args[0]);
+        const form = this.formOf(node.args[0]);
         return form && scaleForm(form, Q.minusOne);
       }
       case 'div':
-        return quotient(formOf(node.args[0]), formOf(node.args[1]));
+        return this.quotient(this.formOf(node.args[0]), this.formOf(node.args[1]));
       case 'power':
-        return powered(formOf(node.args[0]), node.exponent);
+        return this.powered(this.formOf(node.args[0]), node.exponent);
       case 'call':
-        return callForm(node.name, node.args, index);
+        return this.callForm(node.name, node.args, index);
       case 'root':
-        return opaque(`root ${node.degree} ${node.times}`, node.args, index);
+        return this.opaque(`root ${node.degree} ${node.times}`, node.args, index);
       case 'pow':
-        return opaque('pow', node.args, index);
+        return this.opaque('pow', node.args, index);
       default:
-        return atomForm(atom(`node ${index}`, () => ({ kind: 'other', node: index })));
+        return atomForm(this.atom(`node ${index}`, () => ({ kind: 'other', node: index })));
     }
   }
-  function constantAtom(name: 'pi' | 'e' | 'i' | 'infinity'): Form | null {
+
+  private constantAtom(name: 'pi' | 'e' | 'i' | 'infinity'): Form | null {
     if (name === 'i') return atomForm(imaginaryAtom);
-    return name === 'infinity' ? null : atomForm(atom(name, () => ({ kind: name })));
+    return name === 'infinity' ? null : atomForm(this.atom(name, () => ({ kind: name })));
   }
-  function joined(args: readonly number[], join: (a: Form, b: Form) => Form | null, start: Rational): Form | null {
+
+  private joined(args: readonly number[], join: (a: Form, b: Form) => Form | null, start: Rational): Form | null {
     let total: Form | null = constantForm(start);
     for (const arg of args) {
-      const form = formOf(arg);
+      const form = this.formOf(arg);
       if (form === null || total === null) return null;
       total = join(total, form);
     }
     return total;
   }
-  function quotient(top: Form | null, bottom: Form | null): Form | null {
-    const inverse = powered(bottom, -1);
+
+  private quotient(top: Form | null, bottom: Form | null): Form | null {
+    const inverse = this.powered(bottom, -1);
     return top && inverse && mulForms(top, inverse);
   }
   /** A sum that divides becomes an atom of its own, without its content. */
-  function powered(form: Form | null, exponent: number): Form | null {
+
+  private powered(form: Form | null, exponent: number): Form | null {
     if (form === null || (form.size === 0 && exponent <= 0)) return null;
     const direct = powForm(form, exponent);
     if (direct !== null) return direct;
     const split = splitForm(form);
     if (split === null) return null;
     const base = powForm(monomial(split.content, split.shared), exponent);
-    return base && mulForms(base, atomForm(factorAtom(split.rest), exponent));
+    return base && mulForms(base, atomForm(this.factorAtom(split.rest), exponent));
   }
-  function factorAtom(form: Form): number {
-    return atom(`factor ${keyOfForm(form)}`, () => ({ kind: 'factor', form }));
+
+  private factorAtom(form: Form): number {
+    return this.atom(`factor ${keyOfForm(form)}`, () => ({ kind: 'factor', form }));
   }
-  function callForm(
+
+  private callForm(
     name: Extract<GraphNode, { op: 'call' }>['name'],
     args: readonly number[],
     index: number,
   ): Form | null {
     const [a] = args;
-    const form = a === undefined ? null : formOf(a);
+    const form = a === undefined ? null : this.formOf(a);
     if (a === undefined || form === null) return null;
     switch (name) {
       case 'ln':
-        return complex ? opaque('ln', args, index) : logOf(a);
+        return this.complex ? this.opaque('ln', args, index) : this.logOf(a);
       case 'arcsin':
-        return oddAtom('arcsine', form);
+        return this.oddAtom('arcsine', form);
       case 'arctan':
-        return oddAtom('arctangent', form);
+        return this.oddAtom('arctangent', form);
       case 'arccos': {
-        const arcsine = oddAtom('arcsine', form);
-        const half = scaleForm(atomForm(atom('pi', () => ({ kind: 'pi' }))), Q.rational(1, 2));
+        const arcsine = this.oddAtom('arcsine', form);
+        const half = scaleForm(atomForm(this.atom('pi', () => ({ kind: 'pi' }))), Q.rational(1, 2));
         return arcsine && addForms(half, scaleForm(arcsine, Q.minusOne));
       }
       default:
-        return opaque(name, args, index);
+        return this.opaque(name, args, index);
     }
   }
   /** Odd functions: the sign of the argument goes in front. */
-  function oddAtom(kind: 'arcsine' | 'arctangent', form: Form): Form | null {
+
+  private oddAtom(kind: 'arcsine' | 'arctangent', form: Form): Form | null {
     const split = splitForm(form);
     if (split === null) return constantForm(Q.zero);
     const negative = split.content.num < 0n;
     const positive = negative ? scaleForm(form, Q.minusOne) : form;
-    const found = atomForm(atom(`${kind} ${keyOfForm(positive)}`, () => ({ kind, form: positive })));
+    const found = atomForm(this.atom(`${kind} ${keyOfForm(positive)}`, () => ({ kind, form: positive })));
     return negative ? scaleForm(found, Q.minusOne) : found;
   }
-  function logAtom(of: number | bigint): Form {
-    return atomForm(atom(`log ${typeof of} ${of}`, () => ({ kind: 'log', of })));
+
+  private logAtom(of: number | bigint): Form {
+    return atomForm(this.atom(`log ${typeof of} ${of}`, () => ({ kind: 'log', of })));
   }
-  function logOf(index: number): Form | null {
-    const found = logs.get(index);
+
+  logOf(index: number): Form | null {
+    const found = this.logs.get(index);
     if (found !== undefined) return found;
-    const node = nodes[index];
-    const form = node === undefined ? null : buildLog(node, index);
-    logs.set(index, form);
+    const node = this.nodes[index];
+    const form = node === undefined ? null : this.buildLog(node, index);
+    this.logs.set(index, form);
     return form;
   }
-  function buildLog(node: GraphNode, index: number): Form | null {
+
+  private buildLog(node: GraphNode, index: number): Form | null {
     switch (node.op) {
       case 'mul':
-        return node.args.reduce<Form | null>((sum, arg) => combine(sum, logOf(arg), Q.one), constantForm(Q.zero));
+        return node.args.reduce<Form | null>((sum, arg) => combine(sum, this.logOf(arg), Q.one), constantForm(Q.zero));
       case 'div':
-        return combine(logOf(node.args[0]), logOf(node.args[1]), Q.minusOne);
+        return combine(this.logOf(node.args[0]), this.logOf(node.args[1]), Q.minusOne);
       case 'negate':
-        return logOf(node.args[0]);
+        return this.logOf(node.args[0]);
       case 'power':
-        return scaled(logOf(node.args[0]), Q.rational(node.exponent));
+        return scaled(this.logOf(node.args[0]), Q.rational(node.exponent));
       case 'root':
-        return scaled(logOf(node.args[0]), Q.rational(node.times, node.degree));
+        return scaled(this.logOf(node.args[0]), Q.rational(node.times, node.degree));
       case 'pow': {
-        const log = logOf(node.args[0]);
-        const exponent = formOf(node.args[1]);
+        const log = this.logOf(node.args[0]);
+        const exponent = this.formOf(node.args[1]);
         return log && exponent && mulForms(log, exponent);
       }
       case 'call': {
         const [a] = node.args;
-        if (node.name === 'exp' && a !== undefined) return formOf(a);
-        if (node.name === 'abs' && a !== undefined) return logOf(a);
-        return logOfForm(formOf(index));
+        if (node.name === 'exp' && a !== undefined) return this.formOf(a);
+        if (node.name === 'abs' && a !== undefined) return this.logOf(a);
+        return this.logOfForm(this.formOf(index));
       }
       case 'constant':
-        return node.name === 'e' ? constantForm(Q.one) : logOfForm(formOf(index));
+        return node.name === 'e' ? constantForm(Q.one) : this.logOfForm(this.formOf(index));
       default:
-        return logOfForm(formOf(index));
+        return this.logOfForm(this.formOf(index));
     }
   }
-  function logOfForm(form: Form | null): Form | null {
+
+  logOfForm(form: Form | null): Form | null {
     const split = form && splitForm(form);
     if (split === null) return null;
-    let total: Form | null = logOfRational(Q.absolute(split.content));
-    for (const [id, exponent] of split.shared) total = combine(total, logOfAtom(id), Q.rational(exponent));
+    let total: Form | null = this.logOfRational(Q.absolute(split.content));
+    for (const [id, exponent] of split.shared) total = combine(total, this.logOfAtom(id), Q.rational(exponent));
     if (constantOf(split.rest) !== null) return total;
     const [only] = split.rest.values();
     // A lone atom with coefficient 1 is not a sum.
     if (split.rest.size === 1 && only?.powers.length === 1 && only.powers[0]?.[1] === 1) {
-      return combine(total, logOfAtom(only.powers[0][0]), Q.one);
+      return combine(total, this.logOfAtom(only.powers[0][0]), Q.one);
     }
-    return combine(total, logAtom(factorAtom(split.rest)), Q.one);
+    return combine(total, this.logAtom(this.factorAtom(split.rest)), Q.one);
   }
-  function logOfAtom(id: number): Form | null {
-    const known = atoms[id];
+
+  private logOfAtom(id: number): Form | null {
+    const known = this.atoms[id];
     if (known?.kind === 'imaginary') return null;
-    return known?.kind === 'e' ? constantForm(Q.one) : logAtom(id);
+    return known?.kind === 'e' ? constantForm(Q.one) : this.logAtom(id);
   }
-  function logOfRational(value: Rational): Form | null {
+
+  private logOfRational(value: Rational): Form | null {
     let total: Form | null = constantForm(Q.zero);
-    for (const [prime, exponent] of factorRational(value)) total = combine(total, logAtom(prime), Q.rational(exponent));
+    for (const [prime, exponent] of factorRational(value))
+      total = combine(total, this.logAtom(prime), Q.rational(exponent));
     return total;
   }
-  return { atoms, formOf, logOf, logOfForm };
 }
 
 function monomial(coefficient: Rational, powers: readonly (readonly [number, number])[]): Form {

@@ -143,7 +143,7 @@ function sharedPowers(terms: readonly Monomial[]): Monomial['powers'] {
   const shared = new Map(first?.powers ?? []);
   for (const { powers } of others) {
     const own = new Map(powers);
-    for (const [atom, exponent] of [...shared]) {
+    for (const [atom, exponent] of shared) {
       const common = exponent > 0 ? Math.min(exponent, own.get(atom) ?? 0) : Math.max(exponent, own.get(atom) ?? 0);
       const sameSign = common !== 0 && common > 0 === exponent > 0;
       if (sameSign) shared.set(atom, common);

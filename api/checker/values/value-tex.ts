@@ -60,7 +60,7 @@ function decimalTex(ball: Ball, bits: number, digits: number): string {
   if (ball.mid === 0n || certainBits(ball) < 4) return '0';
   const sign = ball.mid < 0n ? '-' : '';
   const size = magnitude(ball.mid);
-  const exponent = Math.floor((Q.bitLength(size) - 1 - bits) * Math.log10(2));
+  const exponent = decimalExponent(size, bits);
   if (exponent > Math.max(9, digits - 1) || exponent < -5) return sign + scientificTex(size, bits, exponent, digits);
   const places = Math.max(0, digits - 1 - exponent);
   const scaled = roundShift(size * 10n ** BigInt(places), bits)
@@ -69,6 +69,14 @@ function decimalTex(ball: Ball, bits: number, digits: number): string {
   const whole = scaled.slice(0, scaled.length - places);
   const rest = scaled.slice(scaled.length - places).replace(/0+$/, '');
   return sign + (rest === '' ? whole : `${whole}.${rest}`);
+}
+
+/** The largest k with 10^k at most the number. */
+function decimalExponent(size: bigint, bits: number): number {
+  const guess = Math.floor((Q.bitLength(size) - 1 - bits) * Math.log10(2));
+  const next = 10n ** BigInt(Math.abs(guess + 1));
+  const reaches = guess + 1 >= 0 ? size >= next << BigInt(bits) : size * next >= 1n << BigInt(bits);
+  return reaches ? guess + 1 : guess;
 }
 
 function roundShift(value: bigint, bits: number): bigint {

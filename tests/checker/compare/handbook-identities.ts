@@ -8,8 +8,16 @@ export interface HandbookIdentity {
   readonly assume?: readonly string[];
 }
 
-const identity = (left: string, right: string, source: string, more: Partial<HandbookIdentity> = {}): HandbookIdentity => ({
-  left, right, source: `${source} (from memory)`, ...more,
+const identity = (
+  left: string,
+  right: string,
+  source: string,
+  more: Partial<HandbookIdentity> = {},
+): HandbookIdentity => ({
+  left,
+  right,
+  source: `${source} (from memory)`,
+  ...more,
 });
 
 export const handbookIdentities: readonly HandbookIdentity[] = [
@@ -25,7 +33,11 @@ export const handbookIdentities: readonly HandbookIdentity[] = [
   identity(String.raw`\cos 4x`, String.raw`8\cos^4 x-8\cos^2 x+1`, 'Abramowitz & Stegun 4.3.30'),
   identity(String.raw`\sin^3 x`, String.raw`\frac{3\sin x-\sin 3x}{4}`, 'Abramowitz & Stegun 4.3'),
   identity(String.raw`1+\tan^2 x`, String.raw`\sec^2 x`, 'NIST DLMF 4.21.13'),
-  identity(String.raw`\sin x`, String.raw`\frac{2\tan\frac{x}{2}}{1+\tan^2\frac{x}{2}}`, 'half-angle tangent, handbooks'),
+  identity(
+    String.raw`\sin x`,
+    String.raw`\frac{2\tan\frac{x}{2}}{1+\tan^2\frac{x}{2}}`,
+    'half-angle tangent, handbooks',
+  ),
   identity(String.raw`\sin(\arccos x)`, String.raw`\sqrt{1-x^2}`, 'NIST DLMF 4.24'),
   identity(String.raw`\tan(\arcsin x)`, String.raw`\frac{x}{\sqrt{1-x^2}}`, 'NIST DLMF 4.24'),
   identity(String.raw`\cos(\arctan x)`, String.raw`\frac{1}{\sqrt{1+x^2}}`, 'NIST DLMF 4.24'),
@@ -37,7 +49,9 @@ export const handbookIdentities: readonly HandbookIdentity[] = [
   identity(String.raw`\sinh(x+y)`, String.raw`\sinh x\cosh y+\cosh x\sinh y`, 'NIST DLMF 4.35.1'),
   identity(String.raw`\cosh 2x`, String.raw`2\sinh^2 x+1`, 'NIST DLMF 4.35.27'),
   identity(String.raw`\tanh x`, String.raw`\frac{e^{2x}-1}{e^{2x}+1}`, 'NIST DLMF 4.28.4'),
-  identity(String.raw`\operatorname{arcosh}x`, String.raw`\ln\left(x+\sqrt{x^2-1}\right)`, 'NIST DLMF 4.37.19', { assume: ['x>1'] }),
+  identity(String.raw`\operatorname{arcosh}x`, String.raw`\ln\left(x+\sqrt{x^2-1}\right)`, 'NIST DLMF 4.37.19', {
+    assume: ['x>1'],
+  }),
   identity(String.raw`\operatorname{artanh}x`, String.raw`\frac12\ln\frac{1+x}{1-x}`, 'NIST DLMF 4.37.24'),
   identity(String.raw`\ln(xy)`, String.raw`\ln x+\ln y`, 'NIST DLMF 4.8.2', { assume: ['x>0', 'y>0'] }),
   identity(String.raw`\ln\frac{x}{y}`, String.raw`\ln x-\ln y`, 'NIST DLMF 4.8.4', { assume: ['x>0', 'y>0'] }),
@@ -54,7 +68,10 @@ export const handbookIdentities: readonly HandbookIdentity[] = [
   identity(String.raw`\max(x,y)`, String.raw`\frac{x+y+|x-y|}{2}`, 'handbooks'),
   identity(String.raw`\lceil x\rceil`, String.raw`-\lfloor-x\rfloor`, 'handbooks'),
   identity(String.raw`\binom{n}{k}`, String.raw`\frac{n!}{k!(n-k)!}`, 'NIST DLMF 1.2.1', { whole: ['n', 'k'] }),
-  identity(String.raw`\binom{n}{k}+\binom{n}{k+1}`, String.raw`\binom{n+1}{k+1}`, 'NIST DLMF 1.2.7', { whole: ['n', 'k'], assume: [String.raw`k\ge0`, String.raw`n\ge0`] }),
+  identity(String.raw`\binom{n}{k}+\binom{n}{k+1}`, String.raw`\binom{n+1}{k+1}`, 'NIST DLMF 1.2.7', {
+    whole: ['n', 'k'],
+    assume: [String.raw`k\ge0`, String.raw`n\ge0`],
+  }),
   identity(String.raw`\binom{n}{3}`, String.raw`\frac{n(n-1)(n-2)}{6}`, 'NIST DLMF 1.2.6', { whole: ['n'] }),
   identity(String.raw`(n+1)!`, String.raw`(n+1)\cdot n!`, 'NIST DLMF 5.5.1', { whole: ['n'] }),
   identity(String.raw`\frac{(n+2)!}{n!}`, String.raw`n^2+3n+2`, 'NIST DLMF 5.5.1', { whole: ['n'] }),

@@ -18,7 +18,14 @@ const nowhere = { start: 0, end: 0 };
 
 /** The same with the sign lost, one more, and twice as much. */
 export function roughEdits(expr: Expr): Expr[] {
-  const number = (value: bigint): Expr => ({ kind: 'number', numerator: value, denominator: 1n, written: 'integer', decimals: 0, span: nowhere });
+  const number = (value: bigint): Expr => ({
+    kind: 'number',
+    numerator: value,
+    denominator: 1n,
+    written: 'integer',
+    decimals: 0,
+    span: nowhere,
+  });
   const term = (part: Expr, sign: 'plus' | 'minus') => ({ sign, expr: part, span: nowhere });
   return [
     { kind: 'sum', terms: [term(expr, 'minus')], span: nowhere },
@@ -34,7 +41,9 @@ function editsHere(expr: Expr): Expr[] {
     case 'sum':
       return expr.terms.map((_, k) => ({
         ...expr,
-        terms: expr.terms.map((term, j) => (j === k ? { ...term, sign: term.sign === 'plus' ? ('minus' as const) : ('plus' as const) } : term)),
+        terms: expr.terms.map((term, j) =>
+          j === k ? { ...term, sign: term.sign === 'plus' ? ('minus' as const) : ('plus' as const) } : term,
+        ),
       }));
     case 'call': {
       const swap = { sin: 'cos', cos: 'sin', tan: 'sin', sinh: 'cosh', cosh: 'sinh' } as const;
@@ -51,7 +60,9 @@ const trials = [0.7, 1.3, 2.6, 0.31, 3.9, 1.9, 5.2, -0.6, -1.7, 0.45];
 /** Whether doubles show two expressions clearly apart at some point. */
 export function areClearlyApart(a: Expr, b: Expr, names: readonly string[], whole: boolean): boolean {
   return trials.some((start, k) => {
-    const at = Object.fromEntries(names.map((name, j) => [name, whole ? ((k + 2 * j) % 5) + 1 : (trials[(k + 3 * j) % trials.length] ?? start)]));
+    const at = Object.fromEntries(
+      names.map((name, j) => [name, whole ? ((k + 2 * j) % 5) + 1 : (trials[(k + 3 * j) % trials.length] ?? start)]),
+    );
     const [x, y] = [plainValue(a, at), plainValue(b, at)];
     return Number.isFinite(x) && Number.isFinite(y) && Math.abs(x - y) > 1e-4 * Math.max(1, Math.abs(x), Math.abs(y));
   });

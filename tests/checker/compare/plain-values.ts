@@ -41,7 +41,10 @@ export function plainValue(expr: Expr, at: Readonly<Record<string, number>>): nu
 }
 
 function plainPower(base: number, exponent: Expr, value: number): number {
-  const odd = exponent.kind === 'quotient' && exponent.denominator.kind === 'number' && exponent.denominator.numerator % 2n === 1n;
+  const odd =
+    exponent.kind === 'quotient' &&
+    exponent.denominator.kind === 'number' &&
+    exponent.denominator.numerator % 2n === 1n;
   if (base >= 0 || Number.isInteger(value) || !odd) return base ** value;
   const top = exponent.numerator.kind === 'number' && exponent.numerator.numerator % 2n === 0n ? 1 : -1;
   return top * (-base) ** value;
@@ -59,10 +62,28 @@ function factorial(n: number): number {
 function plainCall(name: string, args: readonly number[]): number {
   const [a = Number.NaN] = args;
   const known: Readonly<Record<string, (x: number) => number>> = {
-    sin: Math.sin, cos: Math.cos, tan: Math.tan, exp: Math.exp, ln: Math.log, abs: Math.abs, floor: Math.floor, ceil: Math.ceil,
-    cot: (x) => 1 / Math.tan(x), sec: (x) => 1 / Math.cos(x), csc: (x) => 1 / Math.sin(x),
-    arcsin: Math.asin, arccos: Math.acos, arctan: Math.atan, sinh: Math.sinh, cosh: Math.cosh, tanh: Math.tanh,
-    arsinh: Math.asinh, arcosh: Math.acosh, artanh: Math.atanh, degrees: (x) => (x * Math.PI) / 180, sign: Math.sign,
+    sin: Math.sin,
+    cos: Math.cos,
+    tan: Math.tan,
+    exp: Math.exp,
+    ln: Math.log,
+    abs: Math.abs,
+    floor: Math.floor,
+    ceil: Math.ceil,
+    cot: (x) => 1 / Math.tan(x),
+    sec: (x) => 1 / Math.cos(x),
+    csc: (x) => 1 / Math.sin(x),
+    arcsin: Math.asin,
+    arccos: Math.acos,
+    arctan: Math.atan,
+    sinh: Math.sinh,
+    cosh: Math.cosh,
+    tanh: Math.tanh,
+    arsinh: Math.asinh,
+    arcosh: Math.acosh,
+    artanh: Math.atanh,
+    degrees: (x) => (x * Math.PI) / 180,
+    sign: Math.sign,
   };
   if (name === 'max') return Math.max(...args);
   if (name === 'min') return Math.min(...args);

@@ -2,7 +2,14 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { ballFromRational, ballToNumber, magnitude } from '../../../api/checker/numbers/ball.ts';
 import type { Ball } from '../../../api/checker/numbers/ball.ts';
-import { arcsinBall, arctanBall, expBall, lnBall, piBall, sinCosBall } from '../../../api/checker/numbers/elementary.ts';
+import {
+  arcsinBall,
+  arctanBall,
+  expBall,
+  lnBall,
+  piBall,
+  sinCosBall,
+} from '../../../api/checker/numbers/elementary.ts';
 import { rational } from '../../../api/checker/numbers/rational.ts';
 import type { Rational } from '../../../api/checker/numbers/rational.ts';
 
@@ -51,7 +58,9 @@ describe('balls of elementary functions', () => {
     expect(digits(piBall(200), 200)).toBe('3141592653589793238462643383279');
     const one = ballFromRational(rational(1), 200);
     expect(digits(expBall(one, 200) ?? one, 200)).toBe('2718281828459045235360287471352');
-    expect(digits(lnBall(ballFromRational(rational(10), 200), 200) ?? one, 200)).toBe('2302585092994045684017991454684');
+    expect(digits(lnBall(ballFromRational(rational(10), 200), 200) ?? one, 200)).toBe(
+      '2302585092994045684017991454684',
+    );
   });
 
   it('keep a known number of radius when the argument has one', () => {
@@ -63,6 +72,8 @@ describe('balls of elementary functions', () => {
 
   it('give up on results beyond reach instead of working for ever', () => {
     expect(expBall(ballFromRational(rational(10n ** 12n), 192), 192)).toBeNull();
-    expect(ballToNumber(expBall(ballFromRational(rational(-(10n ** 12n)), 192), 192) ?? { mid: 1n, rad: 0n }, 192)).toBe(0);
+    expect(
+      ballToNumber(expBall(ballFromRational(rational(-(10n ** 12n)), 192), 192) ?? { mid: 1n, rad: 0n }, 192),
+    ).toBe(0);
   });
 });

@@ -1,13 +1,25 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { cyclotomicPrimes, imaginaryMod, inverseMod, mulMod, powMod, primes, sqrtMod } from '../../../api/checker/numbers/modular.ts';
+import {
+  cyclotomicPrimes,
+  imaginaryMod,
+  inverseMod,
+  mulMod,
+  powMod,
+  primes,
+  sqrtMod,
+} from '../../../api/checker/numbers/modular.ts';
 
 const prime = fc.nat({ max: primes.length - 1 }).map((k) => primes[k] ?? 5);
 const residue = fc.nat({ max: 66_000_000 });
 
 describe('residues', () => {
   it('multiply exactly', () => {
-    fc.assert(fc.property(prime, residue, residue, (p, a, b) => expect(mulMod(a, b, p)).toBe(Number((BigInt(a) * BigInt(b)) % BigInt(p)))));
+    fc.assert(
+      fc.property(prime, residue, residue, (p, a, b) => {
+        expect(mulMod(a, b, p)).toBe(Number((BigInt(a) * BigInt(b)) % BigInt(p)));
+      }),
+    );
   });
 
   it('have inverses, powers and square roots', () => {
