@@ -79,7 +79,7 @@ export function FindingForm({ review, keeper, view, markedTex, canMark }: Findin
       <div className="acts">
         {isHandedIn ? null : (
           <Button
-            kind="primary"
+            kind={draft.sureness === 0 ? 'second' : 'primary'}
             type="submit"
             wide
             busy={act.handIn.isPending}

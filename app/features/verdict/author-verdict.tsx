@@ -1,5 +1,7 @@
 import type { ReactNode } from 'react';
 import type { AuthorDerivation } from '../../../shared/schemas/review.ts';
+import { paths } from '../../lib/paths.ts';
+import { LinkButton } from '../../ui/button.tsx';
 import { Both, Head } from '../../ui/page.tsx';
 import { Time } from '../../ui/time.tsx';
 import { Decides } from './decides.tsx';
@@ -59,6 +61,9 @@ export function AuthorVerdict({ derivation, wordStep, findings, mend, onContest,
         </Decides>
       </Both>
       {mend}
+      <Both className="mt-6">
+        <LinkButton to={paths.today()}>Back to today</LinkButton>
+      </Both>
     </>
   );
 }

@@ -1,5 +1,7 @@
 import type { ReviewAnswer, ReviewResult } from '../../../shared/schemas/review.ts';
 import { slipKindLabel } from '../../lib/finding-words.ts';
+import { paths } from '../../lib/paths.ts';
+import { LinkButton } from '../../ui/button.tsx';
 import { SURE_WORDS } from '../../ui/how-sure.tsx';
 import { Maths } from '../../ui/maths.tsx';
 import { signed } from '../../ui/num.tsx';
@@ -28,8 +30,8 @@ export function ReviewerResult({ review, result, wordStep, onContest }: Reviewer
             Round {round.number} · {review.task.title} · your review
           </>
         }
-        h1={resultHeadline(result)}
-        lead={resultLead(result, finding)}
+        h1={resultHeadline(result, pick ?? null)}
+        lead={resultLead(result, pick ?? null)}
       />
       <VerdictEdge
         lines={lines}
@@ -61,6 +63,7 @@ export function ReviewerResult({ review, result, wordStep, onContest }: Reviewer
             </div>
           ) : null}
           <Decides what="these points" contest={result.contest} onContest={onContest} />
+          <LinkButton to={paths.today()}>Back to today</LinkButton>
         </div>
       </Both>
     </>

@@ -55,19 +55,22 @@ export function VerdictEdge({ lines, verdict, wordStep, reveal, beside }: Verdic
 function StepNote({ step, wordStep }: { step: ReadStep; wordStep: WordStep }) {
   const { evidence, notes, reached } = wordsOf(step, wordStep);
   const [first, ...rest] = evidence;
+  const said = [...rest, ...notes];
+  const how = evidence.length > 0 && reached ? <span className="muted"> {reached}</span> : null;
   return (
     <>
       {first ? (
         <p className="ev">
           <Said sentence={first} />
+          {said.length === 0 ? how : null}
         </p>
       ) : null}
-      {[...rest, ...notes].map((sentence, i) => (
+      {said.map((sentence, i) => (
         <p key={i}>
           <Said sentence={sentence} />
+          {i === said.length - 1 ? how : null}
         </p>
       ))}
-      {evidence.length > 0 && reached ? <p className="muted">{reached}</p> : null}
     </>
   );
 }
@@ -84,9 +87,9 @@ function hasWords(step: ReadStep, wordStep: WordStep): boolean {
   return evidence.length + notes.length > 0;
 }
 
-/** Evidence of steps that do not hold; of the others the notes alone. The mended line is drawn, so it is not said again. */
+/** Evidence of steps that do not hold; of the others the notes alone. */
 function wordsOf(step: ReadStep, wordStep: WordStep) {
-  const { mended: _mended, ...evidence } = step.evidence;
+  const evidence = undrawn(step.evidence);
   const isFine = step.state === 'holds' || step.state === 'carried';
   const ruling = isFine ? 'holds' : step.state === 'undecided' ? 'undecided' : 'fails';
   const words = wordStep(
@@ -94,6 +97,13 @@ function wordsOf(step: ReadStep, wordStep: WordStep) {
     step.state,
   );
   return isFine ? { ...words, evidence: [] } : words;
+}
+
+/** Without what stands in the picture already: the mended line, and with it the part that was wrong. */
+function undrawn({ mended, ...evidence }: ReadStep['evidence']): ReadStep['evidence'] {
+  if (!mended) return evidence;
+  const { wrongPart: _wrongPart, ...rest } = evidence;
+  return rest;
 }
 
 function wrongSpans({ state, evidence }: ReadStep): MarkedSpan[] | undefined {

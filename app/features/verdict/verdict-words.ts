@@ -29,52 +29,49 @@ export function leadOf({ outcome, firstFault, steps }: ReadVerdict): string {
 }
 
 /** The reviewer's own pick against the verdict. */
-export function resultHeadline(result: ReviewResult): string {
-  switch (result.outcome) {
+export function resultHeadline({ outcome, verdict }: ReviewResult, pick: FindingDraft['pick']): string {
+  const { firstFault } = verdict;
+  const truth = firstFault === null ? 'there is no fault' : `the first fault is step ${firstFault}`;
+  switch (outcome) {
     case 'right':
-      return result.verdict.firstFault === null ? 'You saw that every step follows.' : 'You found the first fault.';
+      return firstFault === null
+        ? 'You saw that every step follows.'
+        : `You found the first fault: step ${firstFault}.`;
     case 'carried':
-      return 'You marked a carried step.';
+      return `You marked a carried step; ${truth}.`;
     case 'not-first':
-      return 'You marked another step.';
-    case 'missed':
-      return 'There is a fault in this one.';
     case 'false-alarm':
-      return 'Every step of this one follows.';
+      return `You marked step ${pick}; ${truth}.`;
+    case 'missed':
+      return `You said there is no fault; ${truth}.`;
     case 'no-pick':
-      return 'You could not tell.';
+      return `You could not tell; ${truth}.`;
     case 'void':
-      return 'This finding is void.';
+      return 'This finding counts neither for nor against you.';
     case 'not-handed-in':
-      return 'You handed in nothing here.';
+      return `You handed in nothing; ${truth}.`;
     case 'excused':
-      return 'You were excused here.';
+      return `You were excused; ${truth}.`;
   }
 }
 
-export function resultLead({ outcome, verdict }: ReviewResult, finding: FindingDraft | null): string {
-  const { firstFault } = verdict;
-  const truth = firstFault === null ? 'there is no fault' : `the first fault is step ${firstFault}`;
-  const pick = finding?.pick;
+/** What is to be said about the picked step itself. */
+export function resultLead({ outcome, verdict }: ReviewResult, pick: FindingDraft['pick']): string | null {
   switch (outcome) {
-    case 'right':
-      return firstFault === null ? 'There is no fault, as you said.' : `It is step ${firstFault}, as you said.`;
     case 'carried':
-      return `You marked a carried step; ${truth}. Step ${pick} is right for the line it was given.`;
+      return `Step ${pick} is right for the line it was given.`;
     case 'not-first':
-      return typeof pick === 'number' && firstFault !== null && pick < firstFault
-        ? `Step ${pick} follows; ${truth}.`
-        : `Step ${pick} fails as well, but ${truth}.`;
-    case 'missed':
-      return `You said there is no fault; ${truth}.`;
+      return typeof pick === 'number' && verdict.firstFault !== null && pick < verdict.firstFault
+        ? `Step ${pick} follows from the line above it.`
+        : `Step ${pick} fails as well, but something went wrong before it.`;
     case 'false-alarm':
-      return `You marked step ${pick}; ${truth}.`;
+      return 'Every step of this one follows.';
     case 'void':
       return verdict.outcome === 'undecided'
-        ? 'The derivation stayed undecided when the round settled.'
-        : `What you marked is worth a note and no fault; it counts neither for nor against you.`;
+        ? 'The derivation was still undecided when the round settled.'
+        : 'What you marked is worth a note, and no fault.';
     default:
-      return `${truth.charAt(0).toUpperCase()}${truth.slice(1)}.`;
+      return null;
   }
 }
 
