@@ -4,6 +4,7 @@ import path from 'node:path';
 import { createApp } from './app.ts';
 import { createCheckPool, type CheckPool } from './checker/pool.ts';
 import { createDataSource, migrate } from './db/data-source.ts';
+import type { DemoAccount } from './features/demo/demo.service.ts';
 import { serveBuiltClient, serveClientSources } from './http/client-files.ts';
 import { systemClock } from './lib/clock.ts';
 import { ConfigError, readConfig, type Config } from './lib/config.ts';
@@ -19,18 +20,34 @@ async function main(config: Config, logger: Logger, life: Lifetime): Promise<voi
   const platform = await openPlatform(config, logger, life);
   const composed = composeServices(platform);
   await platform.queue.prepare(composed.jobs);
+  if (config.demo) await prepareDemo(platform);
   await platform.queue.work();
   await listen(platform, composed, life);
   logger.info({ url: config.baseUrl }, 'listening');
-  if (config.demo) process.stdout.write(toGreeting(config));
+  if (composed.demo) process.stdout.write(toGreeting(config, await composed.demo.listAccounts()));
 }
 
-function toGreeting({ baseUrl, host }: Config): string {
-  const lines = [`Slipstone is at ${baseUrl}   (Ctrl-C stops it)`, `Its mail lands at ${baseUrl}/mailbox`];
+async function prepareDemo(platform: Platform): Promise<void> {
+  // Loaded here only: a school's server never reads it.
+  const { seedDemo } = await import('./db/seed.ts');
+  const begun = Date.now();
+  if (await seedDemo(platform)) platform.logger.info({ ms: Date.now() - begun }, 'the demo is ready');
+}
+
+function toGreeting({ baseUrl, host, smtpUrl }: Config, accounts: readonly DemoAccount[]): string {
+  const lines = [`Slipstone is at ${baseUrl}   (Ctrl-C stops it)`];
+  if (smtpUrl === null) lines.push(`Its mail lands at ${baseUrl}/mailbox`);
+  const [first] = accounts;
+  if (first) lines.push('', `Sign in as one of these, with the password “${first.password}”:`, ...toTable(accounts), '');
   if (!['127.0.0.1', '::1', 'localhost'].includes(host)) {
     lines.push(`This is the demo: whoever reaches ${host} can read its mail. Set NODE_ENV=production for a school.`);
   }
   return `\n${lines.join('\n')}\n`;
+}
+
+function toTable(accounts: readonly DemoAccount[]): string[] {
+  const width = Math.max(...accounts.map(({ signInName }) => signInName.length));
+  return accounts.map(({ signInName, name, what }) => `  ${signInName.padEnd(width)}  ${name}, ${what}`);
 }
 
 async function openPlatform(config: Config, logger: Logger, life: Lifetime): Promise<Platform> {
@@ -78,8 +95,8 @@ async function listen(platform: Platform, composed: Composed, life: Lifetime): P
     logger,
     rateLimiter: platform.rateLimiter,
     serveClient: async (express) => {
-      if (config.clientFromSources) life.onStop(await serveClientSources(express, server));
-      else serveBuiltClient(express, path.resolve('dist/app'));
+      if (config.clientFromSources) life.onStop(await serveClientSources(express, server, config.demo));
+      else serveBuiltClient(express, path.resolve('dist/app'), config.demo);
     },
   });
   server.on('request', app);

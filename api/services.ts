@@ -12,6 +12,8 @@ import { createAnswersService } from './features/answers/answers.service.ts';
 import { derivationsRoutes } from './features/derivations/derivations.routes.ts';
 import { createDerivationsService } from './features/derivations/derivations.service.ts';
 import { createMendService } from './features/derivations/mend.service.ts';
+import { demoRoutes } from './features/demo/demo.routes.ts';
+import { createDemoService, type DemoService } from './features/demo/demo.service.ts';
 import { disputesRoutes } from './features/disputes/disputes.routes.ts';
 import { createDisputesService } from './features/disputes/disputes.service.ts';
 import { healthRoutes } from './features/health/health.routes.ts';
@@ -29,6 +31,7 @@ import { reviewsRoutes } from './features/reviews/reviews.routes.ts';
 import { createReviewsService } from './features/reviews/reviews.service.ts';
 import { createBoardService } from './features/rounds/board.service.ts';
 import { createPeopleInRoundService } from './features/rounds/people-in-round.service.ts';
+import type { Round } from './features/rounds/rounds.entity.ts';
 import { createRoundMail } from './features/rounds/round-mail.ts';
 import { createRoundStages } from './features/rounds/round-stages.ts';
 import { createRoundTimeService } from './features/rounds/round-time.service.ts';
@@ -72,6 +75,8 @@ export interface Platform {
   readonly mailbox: Pick<MailCatcher, 'list'> | null;
   /** Rules on derivations in worker threads. */
   readonly checks: Pick<CheckPool, 'check' | 'healthy'>;
+  /** Names what a round's dealing is drawn from; absent: chance. The demo is dealt alike each time. */
+  readonly drawSeed?: (round: Round) => string;
 }
 
 /** Everything the application is made of: what createApp and the job queue need. */
@@ -81,6 +86,8 @@ export interface Composed {
   /** What to say when a named unique constraint stops a write. */
   readonly conflicts: UniqueConflicts;
   readonly findViewer: (sessionToken: string) => Promise<Viewer | null>;
+  /** The people whom anybody may try; null outside the demo. */
+  readonly demo: DemoService | null;
 }
 
 /**
@@ -94,6 +101,7 @@ export function composeServices(platform: Platform): Composed {
   const reviewing = composeReviewing(platform, mail.queueMail);
   const writing = composeWriting(platform);
   const rounds = composeRounds(platform, mail.queueMail, reviewing.settling);
+  const demo = config.demo ? createDemoService({ db, getToday: rounds.getToday }) : null;
   return {
     routes: [
       ...people.routes,
@@ -103,6 +111,7 @@ export function composeServices(platform: Platform): Composed {
       ...healthRoutes({ pingDatabase: () => db.query('select 1'), workersHealthy: () => platform.checks.healthy() }),
       ...mailRoutes(mail),
       ...(platform.mailbox ? mailboxRoutes(platform.mailbox) : []),
+      ...(demo ? demoRoutes(demo) : []),
     ],
     jobs: [
       ...people.jobs,
@@ -122,6 +131,7 @@ export function composeServices(platform: Platform): Composed {
       uq_membership_class_id_alias: { pointer: '/alias', detail: 'Somebody has this alias. Choose another.' },
     },
     findViewer: people.findViewer,
+    demo,
   };
 }
 
@@ -199,12 +209,14 @@ function composeWriting({ db, now, queue, checks }: Platform) {
 }
 
 /** Tasks, rounds and their stages. */
-function composeRounds({ db, now, queue }: Platform, queueMail: QueueMail, settling: SettlingService) {
+function composeRounds({ db, now, queue, drawSeed }: Platform, queueMail: QueueMail, settling: SettlingService) {
   const { openAnswering, settle } = settling;
-  const stages = createRoundStages({ db, now, queue, mail: createRoundMail(queueMail), openAnswering, settle });
+  const stages = createRoundStages({ db, now, queue, mail: createRoundMail(queueMail), drawSeed, openAnswering, settle });
+  const today = createTodayService({ db, now, readLine });
   const tasks = createTasksService({ db, now, readLine });
   return {
     stages,
+    getToday: today.getToday,
     routes: [
       ...tasksRoutes(tasks),
       ...roundsRoutes({
@@ -212,7 +224,7 @@ function composeRounds({ db, now, queue }: Platform, queueMail: QueueMail, settl
         people: createPeopleInRoundService({ db, now }),
         time: createRoundTimeService({ db, now, stages }),
         board: createBoardService({ db, now }),
-        today: createTodayService({ db, now, readLine }),
+        today,
       }),
     ],
     jobs: roundsJobs(stages),

@@ -1,4 +1,3 @@
-import { randomBytes } from 'node:crypto';
 import type { EntityManager } from 'typeorm';
 import { allocate, type Allocation, type Couple, type DealtPair } from '../../../shared/lib/allocation.ts';
 import { allocateLater } from '../../../shared/lib/later-allocation.ts';
@@ -30,10 +29,9 @@ export async function planDeal(
   return { ...plan, authors, reviewers };
 }
 
-/** Deals when reviewing opens, in the caller's transaction and under the round's lock. */
-export async function deal(manager: EntityManager, round: Round, at: Date): Promise<DealPlan> {
+/** Deals when reviewing opens, in the caller's transaction and under the round's lock; the seed is kept. */
+export async function deal(manager: EntityManager, round: Round, at: Date, seed: string): Promise<DealPlan> {
   const people = await listRoundPeople(manager, round);
-  const seed = randomBytes(16).toString('hex');
   const plan = await planDeal(manager, round, people, at, seed);
   await insertReviews(manager, round, people, plan.pairs, 'main', seed, at);
   round.dealSeed = seed;

@@ -1,3 +1,4 @@
+import { randomBytes } from 'node:crypto';
 import type { EntityManager, QueryDeepPartialEntity } from 'typeorm';
 import type { FrozenTask } from '../../../shared/schemas/task.ts';
 import { ProblemError } from '../../http/problem-error.ts';
@@ -19,6 +20,8 @@ export interface MoveOrder {
 export interface EnterDeps {
   readonly now: Now;
   readonly mail: RoundMail;
+  /** Names what a dealing is drawn from; absent: chance. */
+  readonly drawSeed?: ((round: Round) => string) | undefined;
   /** Sends what answering needs to the teacher's desk. */
   readonly openAnswering: (manager: EntityManager, round: Round) => Promise<unknown>;
   /** Scores and publishes; `waiting` when disputes are open and were not forced. */
@@ -47,7 +50,7 @@ export function createStageEntries(deps: EnterDeps) {
     }
     if (round.writingEndsAt > now()) round.writingEndsAt = now();
     await keep(manager, round, 'reviewing', { writingEndsAt: round.writingEndsAt });
-    await deal(manager, round, now());
+    await deal(manager, round, now(), deps.drawSeed?.(round) ?? randomBytes(16).toString('hex'));
     await mail.reviewingOpened(manager, round);
   }
 

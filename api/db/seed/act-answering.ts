@@ -1,0 +1,49 @@
+import type { AuthorDerivation } from '../../../shared/schemas/review.ts';
+import type { DemoStudent } from './cast.ts';
+import type { PlayedRound } from './play-round.ts';
+import { between } from './seed-times.ts';
+import { chanceOf, choose, forEach, type Actor } from './seed-world.ts';
+
+const THANKS = ['Yes, that is it.', 'You are right, I see it now.', 'Thank you, I had read it three times.', ''];
+const CONTESTS = [
+  'I tested this line with a number and it agrees with the one above.',
+  'This step is what the rule says. Please look again.',
+  'The lines before and after agree, so it cannot be here.',
+];
+
+/** Authors answer what was said about their derivations: right findings are mostly accepted, wrong ones contested. */
+export async function answerFindings(round: PlayedRound): Promise<void> {
+  const { world, id, of, plan } = round;
+  const rows: { id: string; author: string }[] = await world.db.query(
+    'select id, author_id as author from derivation where round_id = $1 and current_version_id is not null',
+    [id],
+  );
+  await forEach(of.students, async (student) => {
+    const own = rows.find(({ author }) => author === student.viewer.userId);
+    if (own && !plan.silent?.includes(student.person.name)) await answerAll(round, student, own.id);
+  });
+}
+
+async function answerAll(round: PlayedRound, { viewer, person }: Actor<DemoStudent>, derivationId: string): Promise<void> {
+  const { world, plan, sheets, reviewingEndsAt, answeringEndsAt } = round;
+  const random = chanceOf('answer', plan.task.form.title, person.name);
+  const until = answeringEndsAt < world.present ? answeringEndsAt : world.present;
+  const at = between(new Date(reviewingEndsAt.getTime() + 5 * 60_000), until, 0.1 + 0.8 * random());
+  const fault = sheets.get(viewer.userId)?.slip?.step ?? null;
+  await world.clock.at(at, async () => {
+    const { findings } = await world.call<AuthorDerivation>(viewer, 'get', `/derivations/${derivationId}`);
+    // Their keys are random; the words are not.
+    for (const finding of findings.toSorted((a, b) => (a.why < b.why ? -1 : 1))) {
+      if (finding.pick === null) continue;
+      const isRight = finding.pick === fault;
+      const stubborn = isRight ? plan.stubborn?.[person.name] : undefined;
+      const roll = random();
+      if (!isRight && roll > 0.85) continue;
+      const answer =
+        stubborn !== undefined || (!isRight && roll < 0.65)
+          ? { kind: 'contest', reason: stubborn ?? choose(CONTESTS, random) }
+          : { kind: 'accept', reason: isRight ? choose(THANKS, random) : '' };
+      await world.call(viewer, 'put', `/findings/${finding.key}/answer`, answer);
+    }
+  });
+}
