@@ -38,7 +38,7 @@ const brackets: readonly Slip[] = [
   ruled('the middle term was not doubled', 'brackets', memory, ['(a+b)^2 -> a^2+ab+b^2', '(a-b)^2 -> a^2-ab+b^2'], 6),
   ruled('the last sign of a squared difference was wrong', 'sign', memory, ['(a-b)^2 -> a^2-2ab-b^2'], 6),
   ruled('the pythagorean identity was rooted term by term', 'functions', memory, ['\\sqrt{1-\\cos^2 a} -> 1-\\cos a', '\\sqrt{1-\\sin^2 a} -> 1-\\sin a'], 8),
-  ruled('the root of a sum was taken term by term', 'powers-and-roots', pitfalls, ['\\sqrt{a+b} -> \\sqrt{a}+\\sqrt{b}', '\\sqrt{a-b} -> \\sqrt{a}-\\sqrt{b}'], 6),
+  ruled('the root of a sum was taken term by term', 'powers-and-roots', pitfalls, ['\\sqrt{a+b} -> \\sqrt{a}+\\sqrt{b}', '\\sqrt{a-b} -> \\sqrt{a}-\\sqrt{b}', '\\sqrt{a^2+b^2} -> a+b', '\\sqrt{a^2+b} -> a+\\sqrt{b}', '\\sqrt{a^2-b} -> a-\\sqrt{b}', '\\sqrt{a^2-b^2} -> a-b'], 6),
   ruled('a sum of roots was put under one root', 'powers-and-roots', portland, ['\\sqrt{a}+\\sqrt{b} -> \\sqrt{a+b}', '\\sqrt{a}-\\sqrt{b} -> \\sqrt{a-b}'], 6),
   ruled('the reciprocal of a sum was taken term by term', 'fractions', `${matz}; ${schechter} (everything is additive)`, ['\\frac{1}{a+b} -> \\frac{1}{a}+\\frac{1}{b}'], 7),
   ruled('a denominator was split', 'fractions', matz, ['\\frac{a}{b+c} -> \\frac{a}{b}+\\frac{a}{c}'], 6),

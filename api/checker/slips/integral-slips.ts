@@ -65,7 +65,7 @@ function onLimits(join: (upper: Expr, lower: Expr) => Expr): readonly Rewrite[] 
 }
 
 function* productOfIntegrals(integrand: Expr, by: string): Generator<Expr> {
-  if (integrand.kind !== 'product') return;
+  if (integrand.kind !== 'product' || integrand.factors.filter((factor) => lettersOf(factor).includes(by)).length < 2) return;
   const factors = integrand.factors.map((factor) => (lettersOf(factor).includes(by) ? integrate(factor, by) : factor));
   if (!factors.includes(null)) yield product(...(factors as Expr[]));
 }
@@ -148,7 +148,7 @@ export const integralSlips: readonly Slip[] = [
   slip('the inner derivative was not divided out', 'calculus', memory, { rank: 6, rewrites: onIntegrals(innerNotDivided) }),
   slip('an inner derivative that is not constant was divided out', 'calculus', memory, { rank: 7, rewrites: onIntegrals(dividedByInner) }),
   slip('the integrand was differentiated instead of integrated', 'calculus', orton, { rank: 7, rewrites: onIntegrals(differentiated) }),
-  slip('a sign was wrong in the integral of a function', 'calculus', memory, { rank: 7, rewrites: onIntegrals(wrongSign) }),
+  slip('a sign was wrong in the integral of a function', 'calculus', memory, { rank: 7.5, rewrites: onIntegrals(wrongSign) }),
   slip('the exponent was raised without dividing by it', 'calculus', memory, { rank: 5, rewrites: onIntegrals(raisedOnly) }),
   slip('the constant of integration was left out', 'calculus', 'Schechter, The Most Common Errors in Undergraduate Mathematics (loss of constants of integration)', {
     rank: 6,

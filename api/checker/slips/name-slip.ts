@@ -1,0 +1,101 @@
+import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { exprsOf } from '../../../shared/maths/walk.ts';
+import { compareExpressions } from '../compare/compare-expressions.ts';
+import type { CheckContext } from '../context.ts';
+import { sum } from '../evidence/build.ts';
+import { estimate } from '../evidence/estimate.ts';
+import { choosePlaces, mayBeEqual } from '../evidence/places.ts';
+import { allSlips } from './catalogue.ts';
+import { mayFollow } from './may-follow.ts';
+import { everywhere } from './rewrite.ts';
+import type { Slip } from './slip.ts';
+import { signedTerm } from './relations.ts';
+
+/** How a candidate is confirmed: whether the line follows from the other by the rules on statements. */
+export type Follows = (from: Line, to: Line) => boolean;
+
+/**
+ * The mistake that turns the line above into the line below: a wrong rule used once, at any place, whose result is worth
+ * what the line below is worth. Null where none of the catalogue does, for none is better than a wrong one.
+ */
+export function nameSlip(above: Line, below: Line, context: CheckContext, follows: Follows): Slip | null {
+  const pair = expressionsOf(above, below);
+  return pair ? nameBetween(pair[0], pair[1], isWorkedOn(below), context) : nameBetweenStatements(above, below, context, follows);
+}
+
+/** What the two lines say of the same quantity; a line that goes on with an equals sign starts with it. */
+function expressionsOf(above: Line, below: Line): readonly [Expr, Expr] | null {
+  if (above.kind !== 'expression') return null;
+  if (below.kind === 'expression') return [above.expr, below.expr];
+  const first = isWorkedOn(below) || below.kind === 'continuation' ? exprsOf(below)[0] : null;
+  return first ? [above.expr, first] : null;
+}
+
+function isWorkedOn(below: Line): boolean {
+  return below.kind === 'relation' || below.kind === 'chain';
+}
+
+const mostConfirmed = 12;
+
+/** `worksOn`: the line goes on after its first member, which is what tells a lost bracket from a lost sign. */
+export function nameBetween(above: Expr, wholeBelow: Expr, worksOn: boolean, context: CheckContext): Slip | null {
+  const below = withoutConstant(above, wholeBelow);
+  const places = choosePlaces([above, below], 4, context);
+  const values = places.map((place) => estimate(below, place));
+  if (mayBeEqual(above, values, places)) return null;
+  let confirmed = 0;
+  for (const slip of inOrder(worksOn)) {
+    for (const candidate of candidatesOf(slip, above, below, context)) {
+      if (candidate === below) return slip;
+      if (!mayBeEqual(candidate, values, places)) continue;
+      confirmed += 1;
+      if (confirmed > mostConfirmed) return null;
+      if (compareExpressions(candidate, below, context).kind === 'equal') return slip;
+    }
+  }
+  return null;
+}
+
+function inOrder(worksOn: boolean): readonly Slip[] {
+  if (!worksOn) return allSlips;
+  const lost = allSlips.filter(({ id }) => id.startsWith('brackets-were-lost'));
+  return [...lost, ...allSlips];
+}
+
+function* candidatesOf(slip: Slip, above: Expr, below: Expr, context: CheckContext): Generator<Expr> {
+  if (slip.whole) yield* slip.whole(above, below, context);
+  for (const rewrite of slip.rewrites ?? []) yield* everywhere(above, rewrite);
+}
+
+/** The free constant of an antiderivative is left out of the comparison. */
+function withoutConstant(above: Expr, below: Expr): Expr {
+  if (above.kind !== 'integral' || above.from || below.kind !== 'sum') return below;
+  const known = lettersOf(above);
+  const kept = below.terms.filter(({ expr }) => !(expr.kind === 'letter' && /^[cCkK]$/.test(expr.name) && !known.includes(expr.name)));
+  return kept.length === below.terms.length || kept.length === 0 ? below : sum(...kept.map(signedTerm));
+}
+
+function nameBetweenStatements(above: Line, below: Line, context: CheckContext, follows: Follows): Slip | null {
+  const filter = mayFollow(below, above, context);
+  let confirmed = 0;
+  for (const slip of allSlips) {
+    for (const candidate of statementsOf(slip, above, below, context)) {
+      if (candidate === below) return slip;
+      if (!filter(candidate)) continue;
+      confirmed += 1;
+      if (confirmed > mostConfirmed) return null;
+      if (follows(candidate, below)) return slip;
+    }
+  }
+  return null;
+}
+
+function* statementsOf(slip: Slip, above: Line, below: Line, context: CheckContext): Generator<Line> {
+  if (slip.lines) yield* slip.lines(above, below, context);
+  if (!slip.rewrites || above.kind !== 'relation') return;
+  for (const rewrite of slip.rewrites) {
+    for (const left of everywhere(above.left, rewrite)) yield { ...above, left };
+    for (const right of everywhere(above.right, rewrite)) yield { ...above, right };
+  }
+}

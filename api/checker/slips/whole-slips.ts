@@ -1,0 +1,124 @@
+import type { Expr, Line, NumberExpr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { sameExpr } from '../../../shared/maths/same.ts';
+import { childrenOf, mapChildren, mapLine, exprsOf } from '../../../shared/maths/walk.ts';
+import { letter, product, sum, whole } from '../evidence/build.ts';
+import { real } from '../evidence/complex-double.ts';
+import { estimate } from '../evidence/estimate.ts';
+import { everywhere, rule } from './rewrite.ts';
+import { memory, ruled, slip, type Slip } from './slip.ts';
+
+const noDefinitions = { letters: new Map(), functions: new Map() };
+const largestConstant = 400;
+
+/** (x+p)(x+q) with pq = c, where the middle term is another one. */
+function* wrongPairs(above: Expr): Generator<Expr> {
+  const [name, ...others] = lettersOf(above);
+  if (!name || others.length > 0) return;
+  const at = (x: number): number => estimate(above, { letters: new Map([[name, real(x)]]), definitions: noDefinitions }).re;
+  const [c, one, two, three] = [at(0), at(1), at(2), at(3)];
+  const lead = (two - 2 * one + c) / 2;
+  const isQuadratic = lead === 1 && three - 3 * two + 3 * one - c === 0;
+  if (!isQuadratic || !Number.isInteger(c) || c === 0 || Math.abs(c) > largestConstant) return;
+  const factor = (p: number): Expr => sum(letter(name), whole(p));
+  for (let p = -Math.abs(c); p <= Math.abs(c); p += 1) {
+    if (p !== 0 && c % p === 0 && p <= c / p) yield product(factor(p), factor(c / p));
+  }
+}
+
+/** x^2 + px + qx + c with pq = c or -c, where p + q is not the middle coefficient. */
+function* wrongSplits(above: Expr, below: Expr): Generator<Expr> {
+  if (below.kind !== 'sum' || above.kind !== 'sum') return;
+  const kept = above.terms.filter((term) => below.terms.some((other) => other.sign === term.sign && sameExpr(other.expr, term.expr)));
+  const rest = below.terms.filter((term) => !above.terms.some((other) => other.sign === term.sign && sameExpr(other.expr, term.expr)));
+  if (kept.length === above.terms.length - 1 && rest.length === 2) yield below;
+}
+
+/** One number written as another; everything else is the same. */
+export function isMiscopied(above: Line, below: Line): boolean {
+  const [before, after] = [exprsOf(above), exprsOf(below)];
+  if (above.kind !== below.kind || before.length !== after.length) return false;
+  const marked = mapLine(above, (expr) => expr);
+  if (marked.kind === 'relation' && below.kind === 'relation' && marked.sign !== below.sign) return false;
+  const changes = before.map((expr, k) => countChanges(expr, after[k] as Expr));
+  return changes.reduce((total, count) => total + count, 0) === 1;
+}
+
+/** How many leaves differ in kind or value; infinite where the shapes differ. */
+function countChanges(a: Expr, b: Expr): number {
+  if (sameExpr(a, b)) return 0;
+  if (a.kind === 'number' && b.kind === 'number') return looksAlike(a, b) ? 1 : Infinity;
+  const [before, after] = [childrenOf(a), childrenOf(b)];
+  if (a.kind !== b.kind || before.length === 0 || before.length !== after.length) return Infinity;
+  let place = -1;
+  const emptied = mapChildren(a, () => {
+    place += 1;
+    return after[place] as Expr;
+  });
+  if (!sameExpr(emptied, b)) return Infinity;
+  return before.reduce((total, part, k) => total + countChanges(part, after[k] as Expr), 0);
+}
+
+/** The same digits but for one, or in another order: 17 and 11, 17 and 71. */
+function looksAlike(a: NumberExpr, b: NumberExpr): boolean {
+  const [before, after] = [String(a.numerator), String(b.numerator)];
+  if (a.denominator !== b.denominator || before.length !== after.length || before.length < 2) return false;
+  const differing = [...before].filter((digit, k) => digit !== after[k]).length;
+  return differing === 1 || [...before].sort().join('') === [...after].sort().join('');
+}
+
+/** A part of the line above replaced by a decimal of the line below that it rounds to. */
+function* roundings(above: Expr, below: Expr): Generator<Expr> {
+  const decimals = decimalsIn(below);
+  for (const decimal of decimals) {
+    const value = Number(decimal.numerator) / Number(decimal.denominator);
+    const half = 0.5 * 10 ** -decimal.decimals;
+    yield* everywhere(above, function* round(part) {
+      if (part.kind === 'number' || lettersOf(part).length > 0) return;
+      const exact = estimate(part, { letters: new Map(), definitions: noDefinitions });
+      if (exact.im === 0 && Math.abs(exact.re - value) <= half * 1.0001 && exact.re !== value) yield decimal;
+    });
+  }
+}
+
+function decimalsIn(expr: Expr): NumberExpr[] {
+  if (expr.kind === 'number') return expr.written === 'decimal' ? [expr] : [];
+  return childrenOf(expr).flatMap(decimalsIn);
+}
+
+const withoutBrackets = [rule('-(a+b)', '-a+b'), rule('-(a-b)', '-a-b'), rule('a(b+c)', 'ab+c'), rule('a(b-c)', 'ab-c')];
+
+export const wholeSlips: readonly Slip[] = [
+  ruled('a sum of squares was factorised like a difference', 'brackets', memory, ['a^2+b^2 -> (a+b)(a-b)', 'a^2+k -> (a+\\sqrt{k})(a-\\sqrt{k})'], 6),
+  ruled('the square was completed without compensating', 'brackets', memory, ['a^2+ka -> (a+\\frac{k}{2})^2', 'a^2-ka -> (a-\\frac{k}{2})^2'], 6),
+  slip('the factor pair had the right product and the wrong sum', 'brackets', memory, { rank: 6, whole: wrongPairs }),
+  slip('the middle term was split with the wrong sum', 'sign', memory, { rank: 4, whole: wrongSplits }),
+  slip('a root was given both signs', 'powers-and-roots', 'Portland State University, Common Errors in Algebra and Calculus', {
+    rank: 8,
+    *whole(above, below) {
+      const [only] = below.kind === 'sum' && below.terms.length === 1 ? below.terms : [];
+      if (only?.sign === 'plusminus' && hasRoot(above)) yield below;
+    },
+  }),
+  slip('a rounded value was carried on', 'copying', memory, { rank: 6, whole: roundings }),
+  slip('brackets were lost and the work went on without them', 'brackets', 'Schechter, The Most Common Errors in Undergraduate Mathematics (loss of invisible parentheses)', {
+    rank: 3,
+    *whole(above) {
+      for (const rewrite of withoutBrackets) yield* everywhere(above, rewrite);
+    },
+  }),
+  slip('a number was copied wrongly from one line to the next', 'copying', 'Sleeman 1984, Cognitive Science 8:387-412 (clerical errors class seen in abstract)', {
+    rank: 1,
+    *whole(above, below) {
+      const span = above.span;
+      if (isMiscopied({ kind: 'expression', expr: above, span }, { kind: 'expression', expr: below, span })) yield below;
+    },
+    *lines(above, below) {
+      if (isMiscopied(above, below)) yield below;
+    },
+  }),
+];
+
+function hasRoot(expr: Expr): boolean {
+  return expr.kind === 'root' || childrenOf(expr).some(hasRoot);
+}
