@@ -15,6 +15,10 @@ function sumOf(rounds: readonly Sum[]): Sum {
   });
 }
 
+function sayBefore(count: number): string {
+  return count === 1 ? 'In the round before' : `In the ${countWord(count).toLowerCase()} before`;
+}
+
 /** How one's own findings fared over the last settled rounds. */
 export function OwnProgress({ progress }: { readonly progress: Progress }) {
   const last = progress.rounds.slice(-LAST);
@@ -32,9 +36,7 @@ export function OwnProgress({ progress }: { readonly progress: Progress }) {
       <p className="small">
         {now.total === 1 ? 'finding' : 'findings'} right in the last{' '}
         {last.length === 1 ? 'round' : `${countWord(last.length).toLowerCase()} rounds`}.
-        {then.total > 0
-          ? ` In the ${countWord(before.length).toLowerCase()} before: ${then.right} of ${then.total}.`
-          : null}
+        {then.total > 0 ? ` ${sayBefore(before.length)}: ${then.right} of ${then.total}.` : null}
       </p>
       <Spark rounds={last} />
       {nearlyCertain.total > 0 ? (
