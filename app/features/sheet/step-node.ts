@@ -4,6 +4,7 @@ import { ReactNodeViewRenderer } from '@tiptap/react';
 import { StepView } from './step-view.tsx';
 import { blocksFromPaste } from './paste-steps.ts';
 import { insertBlocks, mendIds, nextLine } from './sheet-commands.ts';
+import { sheetDecorations } from './sheet-decorations.ts';
 import { run, sheetKeys } from './sheet-keys.ts';
 
 export interface StepOptions {
@@ -61,6 +62,7 @@ export const StepNode = Node.create<StepOptions>({
   addProseMirrorPlugins() {
     const { editor } = this;
     return [
+      sheetDecorations(),
       new Plugin({
         appendTransaction: (transactions, _before, state) =>
           transactions.some(({ docChanged }) => docChanged) ? mendIds(state) : null,

@@ -55,7 +55,7 @@ export const StepView = memo(function StepView({ editor, node, extension }: Node
           </button>
         )}
       </div>
-      <div className="under">
+      <div className={isLive && isInHand ? 'under has-keys' : 'under'}>
         {isLive && isInHand ? <MathsFieldKeys onPress={(piece) => field.current?.insert(piece)} /> : null}
         {facts?.reading && isSettled ? (
           <MathsReading id={notesId} tex={tex} reading={facts.reading} decimal={settings.decimal} onChange={write} />
