@@ -185,15 +185,13 @@ describe('by hand', () => {
     await server.dataSource
       .getRepository(Dispute)
       .update({ roundId: round.id }, { closedAt: server.clock.now(), closedBy: 'withdrawn' });
-    await server.dataSource
-      .getRepository(Dispute)
-      .save({
-        roundId: round.id,
-        versionId: review?.versionId,
-        kind: 'undecided',
-        step: 1,
-        openedAt: server.clock.now(),
-      });
+    await server.dataSource.getRepository(Dispute).save({
+      roundId: round.id,
+      versionId: review?.versionId,
+      kind: 'undecided',
+      step: 1,
+      openedAt: server.clock.now(),
+    });
     const { body } = await desk.get(`/rounds/${round.id}/next`).expect(200);
     expect(body.needsForce).toBe(true);
     await desk.post(`/rounds/${round.id}/stage`, { to: 'settled' }).expect(409);
@@ -301,6 +299,22 @@ describe('dealing', () => {
     const reviews = await listReviews(server.dataSource, round.id);
     expect(reviews.filter(({ derivation }) => derivation.authorId === late.id)).toHaveLength(2);
     expect(reviews.filter(({ reviewerId }) => reviewerId === late.id)).toHaveLength(2);
+  });
+
+  it('keeps a derivation handed in once its author has been dealt others', async () => {
+    await move('writing');
+    const [late, ...others] = school.students as [User, ...User[]];
+    const until = new Date(round.writingEndsAt.getTime() + 12 * 3_600_000);
+    const path = `/rounds/${round.id}/people/${late.id}/extension`;
+    await desk.put(path, { writingEndsAt: until.toISOString() }).expect(204);
+    await allHandIn(others);
+    await move('reviewing');
+    await allHandIn([late]);
+    const author = await server.signIn(late);
+    expect((await author.get(`/rounds/${round.id}/sheet`).expect(200)).body.canTakeBack).toBe(true);
+    const sweep = server.features.jobs.find(({ name }) => name === 'rounds-sweep');
+    await sweep?.handle({} as never);
+    expect((await author.get(`/rounds/${round.id}/sheet`).expect(200)).body.canTakeBack).toBe(false);
   });
 
   it('finds another derivation for whoever gives one back unread', async () => {

@@ -90,8 +90,8 @@ export function createDerivationsService({ db, now, queueCheck }: DerivationsDep
       return await change(roundId, viewer, async (manager, held) => {
         const { derivation, window } = held;
         if (!window.open) throw tooLate();
-        if (await isDealt(manager, derivation.id)) {
-          throw new ProblemError('wrong-stage', { detail: 'Somebody is already reviewing this derivation.' });
+        if (await isDealt(manager, derivation)) {
+          throw new ProblemError('wrong-stage', { detail: 'Reviewing has begun, so this derivation stays handed in.' });
         }
         const takenBack = { currentVersionId: null, handedInAt: null, late: false };
         await manager.update(Derivation, { id: derivation.id }, takenBack);
@@ -155,13 +155,15 @@ async function present(
     draft,
     version,
     window: writingWindow(round, extendedTo, at),
-    dealt: await isDealt(manager, derivation.id),
+    dealt: await isDealt(manager, derivation),
     now: at,
   });
 }
 
-async function isDealt(manager: EntityManager, derivationId: string): Promise<boolean> {
-  return await manager.existsBy(Review, { derivationId });
+/** Whether others review it, or its author has been dealt others' derivations and may have read them. */
+async function isDealt(manager: EntityManager, { id, roundId, authorId }: Derivation): Promise<boolean> {
+  const own = authorId === null ? [] : [{ roundId, reviewerId: authorId }];
+  return await manager.existsBy(Review, [{ derivationId: id }, ...own]);
 }
 
 async function namesOfClass(manager: EntityManager, classId: string): Promise<string[]> {

@@ -52,6 +52,8 @@ interface DealtRow {
 export interface LaterWish {
   /** true: derivations handed in since the dealing get their reviews too (the late batch). */
   readonly lateDerivations: boolean;
+  /** true: nobody can hand in any more, so everybody may be dealt something. */
+  readonly isLast?: boolean;
   /** Further reviews that single derivations want, such as after a reviewer fell away. */
   readonly lost?: ReadonlyMap<string, number>;
 }
@@ -70,7 +72,7 @@ export async function dealLater(manager: EntityManager, round: Round, at: Date, 
   const each = Math.max(0, Math.min(round.reviewsPerDerivation, authors.length - 1));
   const isLate = ({ derivation }: RoundPerson) =>
     wish.lateDerivations && (derivation?.handedIn?.at ?? dealtAt) > dealtAt && !wasDealt(derivation?.id, rows);
-  const takesLate = round.lateRule === 'late-batch' && !round.lateDealtAt && !wish.lateDerivations;
+  const takesLate = round.lateRule === 'late-batch' && !round.lateDealtAt && !wish.isLast;
   const derivations = authors
     .map((person) => ({ person, lost: wish.lost?.get(person.derivation?.id ?? '') ?? 0 }))
     .filter(({ person, lost }) => wish.lateDerivations || lost > 0 || wasDealt(person.derivation?.id, rows))

@@ -48,7 +48,7 @@ export function createRoundStages(deps: StagesDeps) {
   async function catchUp(manager: EntityManager, round: Round): Promise<void> {
     if (round.stage !== 'reviewing') return;
     const isLateDue = !round.lateDealtAt && lateBatchInstant(round, await listRoundPeople(manager, round)) <= now();
-    const added = await dealLater(manager, round, now(), { lateDerivations: isLateDue });
+    const added = await dealLater(manager, round, now(), { lateDerivations: isLateDue, isLast: isLateDue });
     if (isLateDue) {
       round.lateDealtAt = now();
       await manager.update(Round, { id: round.id }, { lateDealtAt: now() });
@@ -89,10 +89,10 @@ export function createRoundStages(deps: StagesDeps) {
 
     /** Deals late work now instead of at its instant. */
     async dealLateNow(manager: EntityManager, round: Round): Promise<number> {
-      const added = await dealLater(manager, round, now(), { lateDerivations: true });
       const people = await listRoundPeople(manager, round);
       // Whoever still has time to write gets a batch of their own later.
       const isLast = !people.some((person) => mayStillHandIn(person, now(), false));
+      const added = await dealLater(manager, round, now(), { lateDerivations: true, isLast });
       if (isLast) await manager.update(Round, { id: round.id }, { lateDealtAt: now() });
       if (added > 0) await mail.reviewingOpened(manager, round);
       return added;
