@@ -25,6 +25,8 @@ async function load(): Promise<MathsFieldClass> {
   element.plonkSound = null;
   element.keypressSound = null;
   element.keypressVibration = false;
+  // A caret at the end of its line would otherwise open the device's sound, to play nothing.
+  element.playSound = () => Promise.resolve();
   const keyboard = window.mathVirtualKeyboard;
   keyboard.layouts = algebraKeyboard;
   keyboard.editToolbar = 'none';
