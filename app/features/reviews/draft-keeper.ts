@@ -48,6 +48,8 @@ class Keeper implements DraftKeeper {
   view: DraftView;
   private version: number;
   private waiting = false;
+  /** What this page has put into the browser's store, or found there. */
+  private kept: string | null = null;
   private timer: ReturnType<typeof setTimeout> | undefined;
   private sending: Promise<void> | null = null;
   private readonly listeners = new Set<() => void>();
@@ -63,7 +65,8 @@ class Keeper implements DraftKeeper {
   edit(change: Partial<FindingDraft>): void {
     const draft = { ...this.view.draft, ...change };
     this.waiting = true;
-    this.options.storage.setItem(this.options.key, JSON.stringify({ draft, version: this.version }));
+    this.kept = JSON.stringify({ draft, version: this.version });
+    this.options.storage.setItem(this.options.key, this.kept);
     this.show({ draft, state: this.view.state.kind === 'conflict' ? this.view.state : { kind: 'saving' } });
     this.sendIn(SEND_AFTER_MS);
   }
@@ -88,7 +91,7 @@ class Keeper implements DraftKeeper {
     clearTimeout(this.timer);
     this.waiting = false;
     this.version = version;
-    this.options.storage.removeItem(this.options.key);
+    this.forget();
     this.show({ draft, state: { kind: 'saved' } });
   }
 
@@ -104,7 +107,8 @@ class Keeper implements DraftKeeper {
 
   /** What a closed or crashed page left behind: taken up where the server has not moved on, else asked about. */
   private recover(): void {
-    const left = parse(this.options.storage.getItem(this.options.key));
+    this.kept = this.options.storage.getItem(this.options.key);
+    const left = parse(this.kept);
     if (!left) return;
     this.waiting = true;
     if (left.version === this.version) {
@@ -117,6 +121,13 @@ class Keeper implements DraftKeeper {
       state: { kind: 'conflict', theirs: this.options.draft, version: this.version },
       names: [],
     };
+  }
+
+  /** The server has it. What another window has typed since stays. */
+  private forget(): void {
+    const { storage, key } = this.options;
+    if (this.kept !== null && storage.getItem(key) === this.kept) storage.removeItem(key);
+    this.kept = null;
   }
 
   private sendIn(ms: number): void {
@@ -139,7 +150,7 @@ class Keeper implements DraftKeeper {
       this.version = saved.version;
       if (draft === this.view.draft) {
         this.waiting = false;
-        this.options.storage.removeItem(this.options.key);
+        this.forget();
         this.show({ state: { kind: 'saved' }, names: saved.names });
       } else {
         this.show({ names: saved.names });
