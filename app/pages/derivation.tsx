@@ -1,11 +1,16 @@
 import { useQuery, useQueryClient } from '@tanstack/react-query';
+import { lazy, Suspense } from 'react';
 import { useParams } from 'react-router-dom';
 import type { AuthorDerivation, TeacherDerivation } from '../../shared/schemas/review.ts';
 import { stepWords } from '../features/derivations/verdict-words.ts';
 import { AnswerDesk } from '../features/findings/answer-desk.tsx';
 import { derivationQuery } from '../features/findings/findings.queries.ts';
 import { FoundList } from '../features/findings/found-list.tsx';
+import { viewerQuery } from '../features/people/viewer.queries.ts';
+import { mendQuery } from '../features/sheet/sheet.queries.ts';
 import { AuthorVerdict } from '../features/verdict/author-verdict.tsx';
+import { MendSection } from '../features/verdict/mend-section.tsx';
+import { MendVerdict } from '../features/verdict/mend-verdict.tsx';
 import { TeacherDerivationView } from '../features/verdict/teacher-derivation.tsx';
 import { answerQuestion, contestVerdict, overrule } from '../features/verdict/verdict.queries.ts';
 import { Page } from '../ui/page.tsx';
@@ -47,10 +52,31 @@ function AsAuthor({ derivation }: { derivation: AuthorDerivation }) {
       derivation={derivation}
       wordStep={stepWords}
       findings={<FoundList derivation={derivation} />}
-      mend={null}
+      mend={derivation.settled.verdict.firstFault === null ? null : <Mend derivationId={derivationId} />}
       onContest={async (words, step) => keep(await contestVerdict(derivationId, step, words))}
       onAnswer={async (answer) => keep(await answerQuestion(derivationId, answer))}
     />
+  );
+}
+
+const MendSheet = lazy(async () => ({ default: (await import('../features/sheet/mend-sheet.tsx')).MendSheet }));
+
+function Mend({ derivationId }: { derivationId: string }) {
+  const viewer = useQuery(viewerQuery);
+  const mend = useQuery(mendQuery(derivationId));
+  if (!viewer.data) return null;
+  return (
+    <MendSection isBegun={mend.data?.handedIn != null}>
+      <Suspense fallback={<Waiting>Your mend…</Waiting>}>
+        <MendSheet
+          derivationId={derivationId}
+          userId={viewer.data.user.id}
+          showVerdict={({ lines, verdict }) => (
+            <MendVerdict lines={lines} verdict={{ ...verdict, steps: [...verdict.steps] }} wordStep={stepWords} />
+          )}
+        />
+      </Suspense>
+    </MendSection>
   );
 }
 

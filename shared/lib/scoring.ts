@@ -54,7 +54,11 @@ export interface Stakes {
 /** The rows under the scale: what would be earned and what it could cost. */
 export function stakesOf(pick: number | 'none', tenths: number, steps: number): Stakes {
   if (pick === 'none') {
-    return { right: pointsOf('none', tenths, 'none', steps), anotherStep: pointsOf('none', tenths, 1, steps), noFault: null };
+    return {
+      right: pointsOf('none', tenths, 'none', steps),
+      anotherStep: pointsOf('none', tenths, 1, steps),
+      noFault: null,
+    };
   }
   const other = pick === 1 ? 2 : 1;
   return {
@@ -94,5 +98,6 @@ export function roundedDivision(a: number, b: number): number {
 
 function requireScale(tenths: number, steps: number): void {
   if (!Number.isInteger(steps) || steps < LEAST_STEPS) throw new RangeError(`Not dealt: ${steps} steps`);
-  if (!Number.isInteger(tenths) || tenths < 0 || tenths > MAX_SURENESS) throw new RangeError(`No such sureness: ${tenths}`);
+  if (!Number.isInteger(tenths) || tenths < 0 || tenths > MAX_SURENESS)
+    throw new RangeError(`No such sureness: ${tenths}`);
 }

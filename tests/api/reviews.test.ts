@@ -123,7 +123,9 @@ describe('handing in', () => {
     const late = await reviewer.post(`/reviews/${review.id}/finding`, finding()).expect(409);
     expect(late.body.type).toBe('too-late');
     await server.dataSource.getRepository(Extension).save({
-      ...{ roundId: round.round.id, userId: round.students[1]!.id, createdById: round.teacher.id },
+      roundId: round.round.id,
+      userId: round.students[1]!.id,
+      createdById: round.teacher.id,
       reviewingEndsAt: new Date(server.clock.now().getTime() + 3_600_000),
     });
     await reviewer.post(`/reviews/${review.id}/finding`, finding()).expect(200);

@@ -72,7 +72,11 @@ export async function reviewedRound(server: TestServer, options: RoundOptions = 
     answeringEndsAt: new Date(at + 4 * day),
     settlesAt: new Date(at + 5 * day),
     frozen: {
-      ...{ title: task.title, instructions: '', given: LINES[0], goal: { kind: 'expanded' }, assumptions: [] },
+      title: task.title,
+      instructions: '',
+      given: LINES[0],
+      goal: { kind: 'expanded' },
+      assumptions: [],
       settings: {
         numbers: 'real',
         reversible: false,
@@ -80,11 +84,13 @@ export async function reviewedRound(server: TestServer, options: RoundOptions = 
         constantNeeded: false,
         decimal: 'point',
       },
-      ...{ taskId: task.id, taskVersion: 1, pointsRule: 'quadratic-1' },
+      taskId: task.id,
+      taskVersion: 1,
+      pointsRule: 'quadratic-1',
     },
   });
   const verdicts = options.verdicts ?? [FAULTY];
-  const derivations = [];
+  const derivations: { derivation: Derivation; version: DerivationVersion }[] = [];
   for (const [i, verdict] of verdicts.entries()) {
     derivations.push(await handIn(server, round, people.students[i], options.lines?.[i] ?? LINES, verdict));
   }

@@ -40,10 +40,7 @@ describe('reviewing', () => {
     expect(screen.getByText(/Step 2, from line 1 to line 2/)).toBeInTheDocument();
     await user.keyboard('{ArrowRight}{ArrowRight}{ArrowRight}{ArrowRight}');
     await waitFor(() => expect(calls.at(-1)?.what).toBe('PUT /api/reviews/v/draft'), { timeout: 3_000 });
-    expect((calls.at(-1)?.body as { draft: FindingDraft }).draft).toMatchObject({
-      pick: 2,
-      markedSpan: { start: 8, end: 10 },
-    });
+    expect(calls.at(-1)?.body).toMatchObject({ draft: { pick: 2, markedSpan: { start: 8, end: 10 } } });
   });
 
   it('asks for kind, line, why and sureness in that order, the kinds always the same ten', async () => {

@@ -19,14 +19,12 @@ const own: OwnStanding = {
   sureness: [{ sure: 'half', right: 4, of: 7, expected: 0.6 }],
 };
 const answer: StandingsAnswer = {
-  ...{
-    classId: 'c',
-    className: '10C',
-    withheld: null,
-    madeAt: '2031-03-03T09:00:00.000Z',
-    timeZone: 'Europe/Vienna',
-    own,
-  },
+  classId: 'c',
+  className: '10C',
+  withheld: null,
+  madeAt: '2031-03-03T09:00:00.000Z',
+  timeZone: 'Europe/Vienna',
+  own,
   listed: [
     { place: 1, alias: 'Lapwing', standing: 58 },
     { place: 2, alias: 'Feldspar', standing: 55 },
