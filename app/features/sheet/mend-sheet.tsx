@@ -49,28 +49,30 @@ function Mend({ mend, userId, showVerdict }: MendProps) {
   });
   return (
     <ZoneProvider zone={mend.timeZone}>
-      {state.kind === 'conflict' && sync ? <Conflict state={state} onKeep={(keep) => sync.resolve(keep)} /> : null}
-      <SheetEditor document={mend.draft.document} editable {...{ fixed, store, onChange, onReady }} />
-      <div className="sheet-foot">
-        <div className="acts">
-          <Button
-            kind="primary"
-            wide
-            busy={post.isPending}
-            disabled={facts.written === 0 || state.kind === 'conflict'}
-            onClick={() => post.mutate()}
-          >
-            Have the mend checked
-          </Button>
-          <SavedState state={state} />
+      <div className="page-in-page">
+        {state.kind === 'conflict' && sync ? <Conflict state={state} onKeep={(keep) => sync.resolve(keep)} /> : null}
+        <SheetEditor document={mend.draft.document} editable {...{ fixed, store, onChange, onReady }} />
+        <div className="sheet-foot">
+          <div className="acts">
+            <Button
+              kind="primary"
+              wide
+              busy={post.isPending}
+              disabled={facts.written === 0 || state.kind === 'conflict'}
+              onClick={() => post.mutate()}
+            >
+              Have the mend checked
+            </Button>
+            <SavedState state={state} />
+          </div>
+          {post.isError ? (
+            <p className="msg err" role="alert">
+              {problemWords(post.error).detail || 'It could not be handed in. Nothing you typed is lost.'}
+            </p>
+          ) : null}
         </div>
-        {post.isError ? (
-          <p className="msg err" role="alert">
-            {problemWords(post.error).detail || 'It could not be handed in. Nothing you typed is lost.'}
-          </p>
-        ) : null}
+        {mend.handedIn ? <Checked handedIn={mend.handedIn} showVerdict={showVerdict} /> : null}
       </div>
-      {mend.handedIn ? <Checked handedIn={mend.handedIn} showVerdict={showVerdict} /> : null}
     </ZoneProvider>
   );
 }

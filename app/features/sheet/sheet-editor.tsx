@@ -81,6 +81,7 @@ export function SheetEditor({ document, fixed, editable, store, onChange, onRead
     extensions,
     content: toWritable(document) as JSONContent,
     editable,
+    injectCSS: false,
     immediatelyRender: true,
     shouldRerenderOnTransaction: false,
     editorProps: {

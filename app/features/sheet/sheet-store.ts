@@ -66,7 +66,8 @@ export function createSheetStore(settings: LineSettings, fixed: readonly string[
       return facts;
     },
     follow(editor) {
-      let caret: Caret = { part: 'end', sent: 0 };
+      // Nobody has entered a line yet: on a touch screen the keys would come up unasked.
+      let caret: Caret = { part: null, sent: 0 };
       facts = factsOf(editor.state, facts, caret, fixed, read);
       const onTransaction = ({ transaction }: { transaction: { getMeta(key: string): unknown } }) => {
         const meta = transaction.getMeta(LINE_PART) as LinePart | undefined;
@@ -92,7 +93,7 @@ export function createSheetStore(settings: LineSettings, fixed: readonly string[
 }
 
 interface Caret {
-  readonly part: LinePart;
+  readonly part: LinePart | null;
   readonly sent: number;
 }
 

@@ -57,7 +57,8 @@ class Sync implements SheetSync {
   private base: number;
   private waiting = false;
   private sending: Promise<void> | null = null;
-  private lastSent: SheetDocument | null = null;
+  /** Sent without an answer: the server may hold any of these. */
+  private unanswered: SheetDocument[] = [];
   private timer: ReturnType<typeof setTimeout> | null = null;
   private closed = false;
   private readonly listeners = new Set<() => void>();
@@ -180,10 +181,11 @@ class Sync implements SheetSync {
 
   private async send(): Promise<void> {
     const { document } = this;
-    this.lastSent = document;
+    this.unanswered = [...this.unanswered.slice(-20), document];
     try {
       const answer = await this.options.send(document, this.base);
       this.base = answer.version;
+      this.unanswered = [];
       if (this.document === document) this.settle(answer.savedAt);
       else this.keepHere();
       if (this.state.kind !== 'saved') this.set({ kind: 'saving' });
@@ -215,7 +217,8 @@ class Sync implements SheetSync {
 
   /** Another page saved in between; or it was this one, and only the answer went astray. */
   private meet(theirs: SavedDraft): void {
-    const isOwn = this.lastSent !== null && saysTheSame(theirs.document, this.lastSent);
+    const isOwn = this.unanswered.some((sent) => saysTheSame(theirs.document, sent));
+    this.unanswered = [];
     if (!isOwn && !saysTheSame(theirs.document, this.document)) {
       this.set({ kind: 'conflict', mine: this.document, theirs });
       return;
