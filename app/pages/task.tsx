@@ -2,6 +2,7 @@ import { useQuery, useQueryClient } from '@tanstack/react-query';
 import { useCallback, useState } from 'react';
 import { useNavigate, useParams } from 'react-router-dom';
 import type { TaskAnswer, TaskForm as Terms } from '../../shared/schemas/task.ts';
+import { TryIt, type TryItProps } from '../features/derivations/try-it.tsx';
 import { TaskForm } from '../features/tasks/task-form.tsx';
 import { EMPTY_TASK } from '../features/tasks/task-words.ts';
 import { changeTask, createTask, taskQuery } from '../features/tasks/tasks.queries.ts';
@@ -9,7 +10,7 @@ import { ApiProblem } from '../lib/api.ts';
 import { paths } from '../lib/paths.ts';
 import { LinkButton } from '../ui/button.tsx';
 import { Head, Page } from '../ui/page.tsx';
-import { ErrorState, Waiting } from '../ui/states.tsx';
+import { EmptyState, ErrorState, Waiting } from '../ui/states.tsx';
 import { showToast } from '../ui/toast-store.ts';
 import { NotFound } from './not-found.tsx';
 
@@ -74,6 +75,17 @@ function Edit({ task }: { readonly task: TaskAnswer }) {
   );
 }
 
+/** The terms as far as they are complete: a half-written goal or assumption does not stop anybody from trying. */
+function toTried({ given, goal, assumptions, settings }: Terms): TryItProps['task'] {
+  const isOpen = (goal.kind === 'solved' && goal.letter === '') || (goal.kind === 'target' && goal.target === '');
+  return {
+    given,
+    goal: isOpen ? { kind: 'free' } : goal,
+    assumptions: assumptions.filter((tex) => tex.trim() !== ''),
+    settings,
+  };
+}
+
 interface DeskProps {
   readonly h1: string;
   readonly lead?: string;
@@ -103,7 +115,17 @@ function Desk({ h1, lead, initial, submitLabel, taskId, onSubmit }: DeskProps) {
             ) : null
           }
         />
-        <div className="beside-task" data-given={terms.given} />
+        <aside className="beside-task" aria-labelledby="try-it">
+          <h2 id="try-it">Try it</h2>
+          <p className="small muted mt-1 mb-4">
+            Write a model derivation and see how each line is read and ruled. Nothing of it is kept.
+          </p>
+          {terms.given.trim() === '' ? (
+            <EmptyState title="Write the given line first">Line 1 then follows from it.</EmptyState>
+          ) : (
+            <TryIt task={toTried(terms)} />
+          )}
+        </aside>
       </div>
     </Page>
   );

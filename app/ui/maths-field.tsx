@@ -8,6 +8,7 @@ import {
   type MathsFieldClass,
   type MathsFieldElement,
 } from './maths-field-library.ts';
+import { useLinger } from './use-linger.ts';
 import './maths-field.css';
 
 export type MoveOutDirection = 'forward' | 'backward' | 'upward' | 'downward';
@@ -55,6 +56,7 @@ export function MathsField(props: MathsFieldProps) {
   const shown = useRef(props.value);
   const [stage, setStage] = useState<Stage>('loading');
   const [inHand, setInHand] = useState(false);
+  const hasKeys = useLinger(inHand);
   useLayoutEffect(() => {
     latest.current = props;
   });
@@ -125,7 +127,7 @@ export function MathsField(props: MathsFieldProps) {
         {stage === 'loading' && <Preview tex={value} />}
         {stage === 'plain' && <PlainField {...props} field={plain} />}
       </div>
-      {props.keys && inHand && stage === 'ready' && (
+      {props.keys && hasKeys && stage === 'ready' && (
         <MathsFieldKeys
           onPress={(tex) =>
             field.current?.insert(tex, { focus: true, scrollIntoView: true, selectionMode: 'placeholder' })

@@ -96,9 +96,9 @@ function PeopleGroup({
 }) {
   return (
     <>
-      <h3 className="list-head">
+      <h2 className="list-head">
         {group.title} {group.note ? <span className="muted">{group.note}</span> : null}
-      </h3>
+      </h2>
       <ol className={isWide ? 'rows two-wide' : 'rows'}>
         {group.people.map((person, i) => {
           const row = group.row(person);

@@ -43,9 +43,9 @@ function TaskRow({ task }: { readonly task: TaskListItem }) {
   return (
     <li>
       <div>
-        <h3>
+        <h2>
           <Link to={paths.task(task.id)}>{task.title}</Link>
-        </h3>
+        </h2>
         <p className="small muted">
           {sayGoal(task.goal)} · {rounds}
         </p>
