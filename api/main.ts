@@ -38,7 +38,8 @@ function toGreeting({ baseUrl, host, smtpUrl }: Config, accounts: readonly DemoA
   const lines = [`Slipstone is at ${baseUrl}   (Ctrl-C stops it)`];
   if (smtpUrl === null) lines.push(`Its mail lands at ${baseUrl}/mailbox`);
   const [first] = accounts;
-  if (first) lines.push('', `Sign in as one of these, with the password “${first.password}”:`, ...toTable(accounts), '');
+  if (first)
+    lines.push('', `Sign in as one of these, with the password “${first.password}”:`, ...toTable(accounts), '');
   if (!['127.0.0.1', '::1', 'localhost'].includes(host)) {
     lines.push(`This is the demo: whoever reaches ${host} can read its mail. Set NODE_ENV=production for a school.`);
   }

@@ -211,7 +211,15 @@ function composeWriting({ db, now, queue, checks }: Platform) {
 /** Tasks, rounds and their stages. */
 function composeRounds({ db, now, queue, drawSeed }: Platform, queueMail: QueueMail, settling: SettlingService) {
   const { openAnswering, settle } = settling;
-  const stages = createRoundStages({ db, now, queue, mail: createRoundMail(queueMail), drawSeed, openAnswering, settle });
+  const stages = createRoundStages({
+    db,
+    now,
+    queue,
+    mail: createRoundMail(queueMail),
+    drawSeed,
+    openAnswering,
+    settle,
+  });
   const today = createTodayService({ db, now, readLine });
   const tasks = createTasksService({ db, now, readLine });
   return {

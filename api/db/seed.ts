@@ -3,8 +3,9 @@ import type { Platform } from '../services.ts';
 import { recordAudit } from '../features/audit/record.ts';
 import { School } from '../features/people/people.entity.ts';
 import { ADMIN, DEMO_ACCOUNTS, DEMO_SCHOOL, ILSE, MIRA, STUDENTS_10C, STUDENTS_9A, TOBIAS } from './seed/cast.ts';
-import { ROUNDS_10C, ROUNDS_9A } from './seed/class-plans.ts';
+import { ROUNDS_10C, ROUNDS_9A, SPARE_TASKS_10C, SPARE_TASKS_9A } from './seed/class-plans.ts';
 import { playRound } from './seed/play-round.ts';
+import type { DemoTask } from './seed/demo-task.ts';
 import type { RoundPlan } from './seed/round-plan.ts';
 import { openClass, type ClassPlan } from './seed/seed-class.ts';
 import { postLetters } from './seed/seed-mail.ts';
@@ -57,11 +58,13 @@ async function seed(platform: Platform): Promise<void> {
       platform,
       { name: '10C', hasEmail: true, teacher: mira, assistants: [tobias], students: older, optedOut: ['Vy Truong'] },
       ROUNDS_10C,
+      SPARE_TASKS_10C,
     ),
     playClass(
       platform,
       { name: '9A', hasEmail: false, teacher: ilse, assistants: [], students: younger, optedOut: [] },
       ROUNDS_9A,
+      SPARE_TASKS_9A,
     ),
   ]);
   await makeStandings(platform);
@@ -81,14 +84,20 @@ async function seed(platform: Platform): Promise<void> {
   });
 }
 
-async function playClass(platform: Platform, plan: ClassPlan, rounds: readonly RoundPlan[]): Promise<void> {
+async function playClass(
+  platform: Platform,
+  plan: ClassPlan,
+  rounds: readonly RoundPlan[],
+  spareTasks: readonly DemoTask[],
+): Promise<void> {
   const world = await createSeedWorld(platform, platform.now());
   const time = (day: number, hour: number) => instantOf(world.present, DEMO_SCHOOL.timeZone, { day, hour });
   const of = await world.clock.at(time(-58, 11), () => openClass(world, plan));
+  const write = async ({ form }: DemoTask, at: Date) =>
+    await world.clock.at(at, () => world.call<{ id: string }>(plan.teacher.viewer, 'post', '/tasks', form));
+  for (const [i, task] of spareTasks.entries()) await write(task, time(-56 + i, 16));
   for (const [i, round] of rounds.entries()) {
-    const { id } = await world.clock.at(time(-57 + i, 16), () =>
-      world.call<{ id: string }>(plan.teacher.viewer, 'post', '/tasks', round.task.form),
-    );
+    const { id } = await write(round.task, time(-54 + i, 16));
     await playRound(world, of, round, id);
   }
   await world.clock.at(time(-2, 15), () => world.call(plan.teacher.viewer, 'post', `/classes/${of.id}/term`));

@@ -24,26 +24,33 @@ export async function answerFindings(round: PlayedRound): Promise<void> {
   });
 }
 
-async function answerAll(round: PlayedRound, { viewer, person }: Actor<DemoStudent>, derivationId: string): Promise<void> {
+async function answerAll(
+  round: PlayedRound,
+  { viewer, person }: Actor<DemoStudent>,
+  derivationId: string,
+): Promise<void> {
   const { world, plan, sheets, reviewingEndsAt, answeringEndsAt } = round;
   const random = chanceOf('answer', plan.task.form.title, person.name);
   const until = answeringEndsAt < world.present ? answeringEndsAt : world.present;
   const at = between(new Date(reviewingEndsAt.getTime() + 5 * 60_000), until, 0.1 + 0.8 * random());
   const fault = sheets.get(viewer.userId)?.slip?.step ?? null;
+  let stubborn = plan.stubborn?.[person.name];
   await world.clock.at(at, async () => {
     const { findings } = await world.call<AuthorDerivation>(viewer, 'get', `/derivations/${derivationId}`);
     // Their keys are random; the words are not.
     for (const finding of findings.toSorted((a, b) => (a.why < b.why ? -1 : 1))) {
       if (finding.pick === null) continue;
       const isRight = finding.pick === fault;
-      const stubborn = isRight ? plan.stubborn?.[person.name] : undefined;
       const roll = random();
       if (!isRight && roll > 0.85) continue;
+      const contest = isRight ? stubborn : roll < 0.65 ? choose(CONTESTS, random) : undefined;
       const answer =
-        stubborn !== undefined || (!isRight && roll < 0.65)
-          ? { kind: 'contest', reason: stubborn ?? choose(CONTESTS, random) }
-          : { kind: 'accept', reason: isRight ? choose(THANKS, random) : '' };
+        contest === undefined
+          ? { kind: 'accept', reason: isRight ? choose(THANKS, random) : '' }
+          : { kind: 'contest', reason: contest };
       await world.call(viewer, 'put', `/findings/${finding.key}/answer`, answer);
+      // Said once; the next one who finds the same is believed.
+      if (isRight) stubborn = undefined;
     }
   });
 }

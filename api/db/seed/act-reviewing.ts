@@ -46,8 +46,8 @@ async function reviewOne(
   const progress = mayBeUndone ? random() : 1;
   await world.clock.at(at, async () => {
     if (progress < 0.3) return;
-    await world.call(viewer, 'get', `/reviews/${id}`);
     if (progress < 0.6) {
+      await world.call(viewer, 'get', `/reviews/${id}`);
       const draft = { ...finding, sureness: 0, why: '' };
       await world.call(viewer, 'put', `/reviews/${id}/draft`, { draft, version: 0 });
       return;
@@ -78,7 +78,11 @@ const FURTHER_ON = [
 ];
 
 /** What this person says about a derivation: often what is so, by their eye; else what people say who do not see it. */
-function findFault({ lines, slip }: DemoSheet, { eye, sureness: [from, to] }: DemoStudent, random: Random): FindingDraft {
+function findFault(
+  { lines, slip }: DemoSheet,
+  { eye, sureness: [from, to] }: DemoStudent,
+  random: Random,
+): FindingDraft {
   const sees = random() < eye;
   const sureness = Math.min(MAX_SURENESS, from + Math.floor(random() * (to - from + 1)));
   const say = (pick: FindingDraft['pick'], why: string, sure = sureness): FindingDraft => ({

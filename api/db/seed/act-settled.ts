@@ -29,7 +29,10 @@ export async function writeMends(round: PlayedRound): Promise<void> {
       const { draft } = await world.call<MendView>(viewer, 'get', path);
       const lines = slip.shouldBe === end ? [end] : [slip.shouldBe, end];
       const document = toDocument(lines, `mend/${form.title}/${person.name}`);
-      const saved = await world.call<{ version: number }>(viewer, 'put', path, { document, baseVersion: draft.version });
+      const saved = await world.call<{ version: number }>(viewer, 'put', path, {
+        document,
+        baseVersion: draft.version,
+      });
       await world.call(viewer, 'post', `${path}/hand-in`, { draftVersion: saved.version });
     });
   });

@@ -9,7 +9,11 @@ import { chanceOf, choose, forEach, idOf, type Actor } from './seed-world.ts';
 /** Everybody who takes part writes and hands in; while writing is open, people are as far as the plan says. */
 export async function writeDerivations(round: PlayedRound): Promise<void> {
   const { of, plan, world } = round;
-  const away = new Set([...(plan.absent ?? []), ...(plan.excused ?? []), ...(plan.extended ? [plan.extended.name] : [])]);
+  const away = new Set([
+    ...(plan.absent ?? []),
+    ...(plan.excused ?? []),
+    ...(plan.extended ? [plan.extended.name] : []),
+  ]);
   if (round.writingEndsAt > world.present) {
     await forEach(plan.atWork ?? [], (work) => workOn(round, work));
     return;
@@ -66,13 +70,10 @@ async function save(
 ): Promise<void> {
   const { world, id, sheets } = round;
   sheets.set(viewer.userId, sheet);
-  await world.clock.at(at, async () => {
-    const { draft } = await world.call<{ draft: { version: number } }>(viewer, 'get', `/rounds/${id}/sheet`);
-    await world.call(viewer, 'put', `/rounds/${id}/sheet`, {
-      baseVersion: draft.version,
-      document: toDocument(sheet.lines, `${round.plan.task.form.title}/${person.name}`, lastReason),
-    });
-  });
+  const document = toDocument(sheet.lines, `${round.plan.task.form.title}/${person.name}`, lastReason);
+  // A sheet begins with version 1; whoever saves again saves over 2.
+  const body = { document, baseVersion: lastReason === '' ? 1 : 2 };
+  await world.clock.at(at, () => world.call(viewer, 'put', `/rounds/${id}/sheet`, body));
 }
 
 async function handIn({ world, id }: PlayedRound, { viewer }: Actor<DemoStudent>, at: Date): Promise<void> {
@@ -86,7 +87,10 @@ export function toDocument(lines: readonly string[], seed: string, lastReason = 
     content: lines.map((line, i) => {
       const { tex, reason } = toLine(line);
       const stepId = idOf('step', seed, i);
-      return { type: 'step', attrs: { stepId, tex, reason: i === lines.length - 1 ? lastReason || reason : reason, uses: null } };
+      return {
+        type: 'step',
+        attrs: { stepId, tex, reason: i === lines.length - 1 ? lastReason || reason : reason, uses: null },
+      };
     }),
   };
 }

@@ -11,20 +11,20 @@ import {
 import { productTakenAway, slopeOfProduct, squareAndProduct } from './tasks/products.ts';
 import { day, type RoundPlan } from './round-plan.ts';
 
-/** Class 10C: four rounds settled, and one in every other stage. */
+/** Tasks that wait in their teachers' collections. */
+export const SPARE_TASKS_10C = [productTakenAway];
+export const SPARE_TASKS_9A = [twoBrackets];
+
+/** Class 10C: three rounds settled, and one in every other stage. */
 export const ROUNDS_10C: readonly RoundPlan[] = [
-  {
-    task: productTakenAway,
-    times: [day(-46, 8), day(-43, 20), day(-40, 20), day(-38, 20), day(-37, 18)],
-    absent: ['Mateo Larrondo'],
-    stubborn: { 'Rafael Quintanilha': 'I did turn the sign. The minus belongs to the first term, that is how I read it.' },
-    writes: { 'Rafael Quintanilha': 2 },
-    ruled: true,
-  },
   {
     task: sumOfFractions,
     times: [day(-35, 8), day(-32, 20), day(-29, 20), day(-27, 20), day(-26, 18)],
     excused: ['Hana Mizukoshi'],
+    writes: { 'Rafael Quintanilha': 6 },
+    stubborn: {
+      'Rafael Quintanilha': 'x + 2 is on top and below, and so is x - 1. What is the same may be cancelled.',
+    },
     ruled: true,
   },
   {
@@ -38,7 +38,7 @@ export const ROUNDS_10C: readonly RoundPlan[] = [
     times: [day(-12, 8), day(-10, 20), day(-7, 20), day(-5, 20), day(-4, 18)],
     writes: { 'Amelie Rouvray': 2, 'Tomasz Wierzba': 7, 'Oskar Lindqvell': 6, 'Noor Haddadin': 3, 'Kwabena Dartey': 1 },
     ruled: true,
-    noMend: ['Amelie Rouvray', 'Noor Haddadin'],
+    noMend: ['Amelie Rouvray', 'Noor Haddadin', 'Tomasz Wierzba'],
     contestsVerdict: {
       name: 'Oskar Lindqvell',
       words: 'With 7 on the right I tried 7 times 1, and x = 7 comes out. So the step did lead to a solution.',
@@ -48,7 +48,10 @@ export const ROUNDS_10C: readonly RoundPlan[] = [
     task: rootEquation,
     times: [day(-10, 8), day(-7, 20), day(-4, 20), day(-2, 20), day(-1, 17)],
     writes: { 'Saskia Overbeek': 6, 'Deniz Karahan': 2, 'Priya Anantharam': 4 },
-    stubborn: { 'Deniz Karahan': 'The task says to solve, and both come out of the quadratic. I did not think that I had to test.' },
+    stubborn: {
+      'Deniz Karahan':
+        'The task says to solve, and both come out of the quadratic. I did not think that I had to test.',
+    },
   },
   {
     task: cancelFactors,
@@ -89,21 +92,11 @@ export const ROUNDS_10C: readonly RoundPlan[] = [
   },
 ];
 
-/** Class 9A: four rounds settled, one each in reviewing and writing, one planned. */
+/** Class 9A: two rounds settled, one each in reviewing and writing, one planned. */
 export const ROUNDS_9A: readonly RoundPlan[] = [
   {
-    task: twoBrackets,
-    times: [day(-44, 9), day(-41, 19), day(-38, 19), day(-36, 19), day(-35, 17)],
-    ruled: true,
-  },
-  {
-    task: lettersOnBothSides,
-    times: [day(-33, 9), day(-30, 19), day(-27, 19), day(-25, 19), day(-24, 17)],
-    absent: ['Callum Strathairn'],
-    ruled: true,
-  },
-  {
     task: squaresThatVanish,
+    absent: ['Callum Strathairn'],
     times: [day(-22, 9), day(-19, 19), day(-16, 19), day(-14, 19), day(-13, 17)],
     stubborn: { 'Luca Bertagnoli': 'First times first and last times last is what we did in the lesson.' },
     writes: { 'Luca Bertagnoli': 2 },
@@ -131,7 +124,7 @@ export const ROUNDS_9A: readonly RoundPlan[] = [
     ],
   },
   {
-    task: equationWithHalves,
+    task: lettersOnBothSides,
     times: [day(5, 9), day(8, 19), day(11, 19), day(13, 19), day(14, 17)],
   },
 ];

@@ -35,7 +35,9 @@ export function createSeedQueue({ real, present, clock, leftOut }: SeedQueueOpti
       // Jobs of one kind that may run side by side do so here too.
       const batch = (first.kind.parallel ?? 1) > 1 ? due.filter(({ kind }) => kind === first.kind) : [first];
       waiting = waiting.filter((job) => !batch.includes(job));
-      await Promise.all(batch.map((job) => clock.at(job.at, () => job.kind.handle(job.kind.data.parse(job.data) as never))));
+      await Promise.all(
+        batch.map((job) => clock.at(job.at, () => job.kind.handle(job.kind.data.parse(job.data) as never))),
+      );
     }
   }
 

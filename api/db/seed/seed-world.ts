@@ -66,7 +66,9 @@ export function choose<T>(items: readonly T[], random: Random): T {
 /** An id that is the same each time for the same words. */
 export function idOf(...words: readonly (string | number)[]): string {
   const hex = createHash('sha256').update(words.join('/')).digest('hex');
-  return [hex.slice(0, 8), hex.slice(8, 12), `4${hex.slice(13, 16)}`, `8${hex.slice(17, 20)}`, hex.slice(20, 32)].join('-');
+  return [hex.slice(0, 8), hex.slice(8, 12), `4${hex.slice(13, 16)}`, `8${hex.slice(17, 20)}`, hex.slice(20, 32)].join(
+    '-',
+  );
 }
 
 /** Does something for each, several side by side. */

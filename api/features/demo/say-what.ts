@@ -9,20 +9,19 @@ export function sayWhat(role: User['role'], places: readonly Membership[], today
   const [place] = places;
   const inClass = place?.class ? ` ${place.role === 'student' ? 'in' : 'of'} ${place.class.name}` : '';
   const who = `${place?.role ?? role}${inClass}`;
-  const waits = place?.role === 'student' ? today.things.map(sayThing) : sayRounds(today.rounds);
+  const waits = place?.role === 'student' ? today.things.flatMap(sayThing) : sayRounds(today.rounds);
   return waits.length === 0 ? `${who}: nothing waits just now` : `${who}: ${joined(waits)}`;
 }
 
-function sayThing(thing: TodayThing): string {
-  if (thing.kind === 'write') return thing.begun ? 'a derivation to finish' : 'a derivation to write';
-  if (thing.kind === 'answer') return `${counted(thing.count, 'finding')} to answer`;
+function sayThing(thing: TodayThing): string[] {
+  if (thing.kind === 'write') return [thing.begun ? 'a derivation to finish' : 'a derivation to write'];
+  if (thing.kind === 'answer') return [`${counted(thing.count, 'finding')} to answer`];
   if (thing.kind === 'review') {
     const open = thing.reviews.filter(({ state }) => state === 'begun' || state === 'not-begun');
-    return `${counted(open.length, 'review')} to do`;
+    return [`${counted(open.length, 'review')} to do`];
   }
-  return thing.own?.firstFault != null && thing.own.mend === 'none'
-    ? 'a verdict to read, and a mend to write'
-    : 'a verdict to read';
+  const mends = thing.own?.firstFault != null && thing.own.mend !== 'handed-in';
+  return ['a verdict to read', ...(mends ? ['a mend to write'] : [])];
 }
 
 function sayRounds(rounds: readonly RoundListItem[]): string[] {

@@ -13,12 +13,7 @@ export const equationWithHalves: DemoTask = {
       lines: ['5(x+3)-2(x-1)=35 | times 10', '5x+15-2x+2=35', '3x+17=35', '3x=18 | minus 17', 'x=6 | divided by 3'],
     },
     {
-      lines: [
-        '\\frac{5(x+3)-2(x-1)}{10}=\\frac{7}{2}',
-        '\\frac{3x+17}{10}=\\frac{7}{2}',
-        '3x+17=35 | times 10',
-        'x=6',
-      ],
+      lines: ['\\frac{5(x+3)-2(x-1)}{10}=\\frac{7}{2}', '\\frac{3x+17}{10}=\\frac{7}{2}', '3x+17=35 | times 10', 'x=6'],
     },
     {
       lines: ['5(x+3)-2(x-1)=35 | times 10', '5x+15-2x-2=35 | brackets', '3x+13=35', '3x=22', 'x=\\frac{22}{3}'],
@@ -31,13 +26,22 @@ export const equationWithHalves: DemoTask = {
       },
     },
     {
-      lines: ['5(x+3)-2(x-1)=\\frac{7}{2} | times 10', '5x+15-2x+2=\\frac{7}{2}', '3x+17=\\frac{7}{2}', '3x=-\\frac{27}{2}', 'x=-\\frac{9}{2}'],
+      lines: [
+        '5(x+3)-2(x-1)=\\frac{7}{2} | times 10',
+        '5x+15-2x+2=\\frac{7}{2}',
+        '3x+17=\\frac{7}{2}',
+        '3x=-\\frac{27}{2}',
+        'x=-\\frac{9}{2}',
+      ],
       slip: {
         step: 1,
         kind: 'both-sides',
         mark: '\\frac{7}{2}',
         shouldBe: '5(x+3)-2(x-1)=35',
-        why: ['The right side has to be multiplied by 10 as well.', 'Only the left side was multiplied. 10 times 7/2 is 35.'],
+        why: [
+          'The right side has to be multiplied by 10 as well.',
+          'Only the left side was multiplied. 10 times 7/2 is 35.',
+        ],
       },
     },
     {
@@ -57,7 +61,10 @@ export const equationWithHalves: DemoTask = {
         kind: 'both-sides',
         mark: '52',
         shouldBe: '3x=18',
-        why: ['17 must be taken away on both sides: 35 - 17 = 18.', 'It was added on the right but taken away on the left.'],
+        why: [
+          '17 must be taken away on both sides: 35 - 17 = 18.',
+          'It was added on the right but taken away on the left.',
+        ],
       },
     },
     {
@@ -76,7 +83,10 @@ export const equationWithHalves: DemoTask = {
         step: 1,
         kind: 'fractions',
         shouldBe: '\\frac{5(x+3)-2(x-1)}{10}=\\frac{7}{2}',
-        why: ['Fractions with 2 and 5 below need 10 as denominator, 5 - 2 = 3 is not it.', 'Denominators cannot be subtracted.'],
+        why: [
+          'Fractions with 2 and 5 below need 10 as denominator, 5 - 2 = 3 is not it.',
+          'Denominators cannot be subtracted.',
+        ],
       },
     },
   ],
@@ -104,7 +114,10 @@ export const quadraticByFactors: DemoTask = {
         kind: 'solutions',
         mark: '4',
         shouldBe: 'x-3=\\pm4',
-        why: ['A square is 16 for 4 and for -4. One solution got lost.', 'x = -1 also fits the line above: (-4)^2 = 16.'],
+        why: [
+          'A square is 16 for 4 and for -4. One solution got lost.',
+          'x = -1 also fits the line above: (-4)^2 = 16.',
+        ],
       },
     },
     {
@@ -133,7 +146,10 @@ export const quadraticByFactors: DemoTask = {
         step: 3,
         kind: 'solutions',
         shouldBe: 'x=7 \\text{ or } x=-1',
-        why: ['x - 7 is zero for x = 7, not for -7.', 'The brackets are right but the signs were read off the wrong way.'],
+        why: [
+          'x - 7 is zero for x = 7, not for -7.',
+          'The brackets are right but the signs were read off the wrong way.',
+        ],
       },
     },
     {
@@ -142,7 +158,10 @@ export const quadraticByFactors: DemoTask = {
         step: 3,
         kind: 'solutions',
         shouldBe: 'x^2-6x-7=0',
-        why: ['That only works with zero on the right. 13 times 7 is not 7.', 'A product is 7 in many ways. First bring the 7 over.'],
+        why: [
+          'That only works with zero on the right. 13 times 7 is not 7.',
+          'A product is 7 in many ways. First bring the 7 over.',
+        ],
       },
     },
     {
@@ -155,13 +174,17 @@ export const quadraticByFactors: DemoTask = {
         step: 3,
         kind: 'solutions',
         shouldBe: 'x=7 \\text{ or } x=-1',
-        why: ['Nothing in the task says that x is a length, so -1 counts too.', 'The second solution was thrown away without a reason in the task.'],
+        why: [
+          'Nothing in the task says that x is a length, so -1 counts too.',
+          'The second solution was thrown away without a reason in the task.',
+        ],
       },
       rulings: [
         {
           step: 2,
           decision: 'holds',
-          reason: 'The sentence says which numbers are looked for, and it is right: they are 7 and -1. I count it as a step.',
+          reason:
+            'The sentence says which numbers are looked for, and it is right: they are 7 and -1. I count it as a step.',
         },
         {
           step: 3,
@@ -192,7 +215,14 @@ export const rootEquation: DemoTask = {
       ],
     },
     {
-      lines: ['2x+7=(x-4)^2 | square', '2x+7=x^2-8x+16', 'x^2-10x+9=0', '(x-5)^2=16', 'x=1 \\text{ or } x=9', 'x=9 | test both'],
+      lines: [
+        '2x+7=(x-4)^2 | square',
+        '2x+7=x^2-8x+16',
+        'x^2-10x+9=0',
+        '(x-5)^2=16',
+        'x=1 \\text{ or } x=9',
+        'x=9 | test both',
+      ],
     },
     {
       lines: ['2x+7=x^2-8x+16', 'x^2-10x+9=0', '(x-1)(x-9)=0', 'x=1 \\text{ or } x=9 | both brackets'],
@@ -200,7 +230,10 @@ export const rootEquation: DemoTask = {
         step: 4,
         kind: 'solutions',
         shouldBe: 'x=9',
-        why: ['1 does not solve the equation with the root: 3 is not -3. It came in by squaring.', 'After squaring you have to test. x = 1 must go.'],
+        why: [
+          '1 does not solve the equation with the root: 3 is not -3. It came in by squaring.',
+          'After squaring you have to test. x = 1 must go.',
+        ],
       },
     },
     {
@@ -220,7 +253,10 @@ export const rootEquation: DemoTask = {
         kind: 'powers-and-roots',
         mark: '\\sqrt{2x}+\\sqrt{7}',
         shouldBe: '2x+7=(x-4)^2',
-        why: ['The root of a sum is not the sum of the roots.', 'Take x = 9: the root of 25 is 5, but the two roots together are almost 7.'],
+        why: [
+          'The root of a sum is not the sum of the roots.',
+          'Take x = 9: the root of 25 is 5, but the two roots together are almost 7.',
+        ],
       },
     },
     {

@@ -92,7 +92,10 @@ export const lettersOnBothSides: DemoTask = {
         kind: 'both-sides',
         mark: '-2',
         shouldBe: '2y=22',
-        why: ['To get rid of -12 you add 12: 10 + 12 = 22.', 'On the left 12 was added, on the right it was taken away.'],
+        why: [
+          'To get rid of -12 you add 12: 10 + 12 = 22.',
+          'On the left 12 was added, on the right it was taken away.',
+        ],
       },
     },
     {
@@ -126,7 +129,10 @@ export const squaresThatVanish: DemoTask = {
         kind: 'brackets',
         mark: 'a^2-8',
         shouldBe: 'a^2-2a+4a-8+a(3-a)',
-        why: ['Each term meets each other term: -2a and 4a are missing.', 'Four products belong there and only two were made.'],
+        why: [
+          'Each term meets each other term: -2a and 4a are missing.',
+          'Four products belong there and only two were made.',
+        ],
       },
     },
     {
@@ -200,7 +206,10 @@ export const minusBeforeBracket: DemoTask = {
         kind: 'both-sides',
         mark: '-10+8',
         shouldBe: '6t-t=3+10-8',
-        why: ['What goes to the other side changes its sign.', '-10 + 8 stands on the left; on the right it must be +10 - 8.'],
+        why: [
+          'What goes to the other side changes its sign.',
+          '-10 + 8 stands on the left; on the right it must be +10 - 8.',
+        ],
       },
     },
     {

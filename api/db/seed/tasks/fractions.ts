@@ -18,11 +18,7 @@ export const sumOfFractions: DemoTask = {
       ],
     },
     {
-      lines: [
-        '\\frac{2(x+2)+3(x-1)}{(x-1)(x+2)} | cross over',
-        '\\frac{2x+4+3x-3}{x^2+x-2}',
-        '\\frac{5x+1}{x^2+x-2}',
-      ],
+      lines: ['\\frac{2(x+2)+3(x-1)}{(x-1)(x+2)} | cross over', '\\frac{2x+4+3x-3}{x^2+x-2}', '\\frac{5x+1}{x^2+x-2}'],
     },
     {
       lines: ['\\frac{2+3}{x-1+x+2} | add', '\\frac{5}{2x+1}'],
@@ -47,7 +43,10 @@ export const sumOfFractions: DemoTask = {
         kind: 'brackets',
         mark: '3x-1',
         shouldBe: '\\frac{2x+4+3x-3}{(x-1)(x+2)}',
-        why: ['3 times -1 is -3. The 3 did not reach the second term.', 'The bracket (x - 1) has two terms, both get the 3.'],
+        why: [
+          '3 times -1 is -3. The 3 did not reach the second term.',
+          'The bracket (x - 1) has two terms, both get the 3.',
+        ],
       },
     },
     {
@@ -61,42 +60,39 @@ export const sumOfFractions: DemoTask = {
         kind: 'fractions',
         mark: '2(x-1)',
         shouldBe: '\\frac{2(x+2)}{(x-1)(x+2)}+\\frac{3(x-1)}{(x-1)(x+2)}',
-        why: ['Each top must be multiplied by the other denominator. They are swapped.', 'The first fraction was extended by x - 1, but it had that already; x + 2 was missing.'],
+        why: [
+          'Each top must be multiplied by the other denominator. They are swapped.',
+          'The first fraction was extended by x - 1, but it had that already; x + 2 was missing.',
+        ],
       },
     },
     {
-      lines: [
-        '\\frac{2(x+2)+3(x-1)}{(x-1)(x+2)}',
-        '\\frac{2x+4+3x-3}{x^2-2}',
-        '\\frac{5x+1}{x^2-2}',
-      ],
+      lines: ['\\frac{2(x+2)+3(x-1)}{(x-1)(x+2)}', '\\frac{2x+4+3x-3}{x^2-2}', '\\frac{5x+1}{x^2-2}'],
       slip: {
         step: 2,
         kind: 'brackets',
         mark: 'x^2-2',
         shouldBe: '\\frac{2x+4+3x-3}{x^2+x-2}',
-        why: ['In the denominator the middle products 2x - x are missing.', 'x times 2 and -1 times x were left out below.'],
+        why: [
+          'In the denominator the middle products 2x - x are missing.',
+          'x times 2 and -1 times x were left out below.',
+        ],
       },
     },
     {
-      lines: [
-        '\\frac{2(x+2)+3(x-1)}{(x-1)(x+2)}',
-        '2+3 | cancel what is on top and below',
-        '5',
-      ],
+      lines: ['\\frac{2(x+2)+3(x-1)}{(x-1)(x+2)}', '2+3 | cancel what is on top and below', '5'],
       slip: {
         step: 2,
         kind: 'fractions',
         shouldBe: '\\frac{2x+4+3x-3}{(x-1)(x+2)}',
-        why: ['You can only cancel factors of the whole top, these are parts of a sum.', 'Cancelling out of a sum does not work; try x = 2.'],
+        why: [
+          'You can only cancel factors of the whole top, these are parts of a sum.',
+          'Cancelling out of a sum does not work; try x = 2.',
+        ],
       },
     },
     {
-      lines: [
-        '\\frac{2(x+2)+3(x-1)}{(x-1)(x+2)}',
-        '\\frac{2x+4+3x-3}{(x-1)(x+2)}',
-        '\\frac{5x+7}{(x-1)(x+2)}',
-      ],
+      lines: ['\\frac{2(x+2)+3(x-1)}{(x-1)(x+2)}', '\\frac{2x+4+3x-3}{(x-1)(x+2)}', '\\frac{5x+7}{(x-1)(x+2)}'],
       slip: {
         step: 3,
         kind: 'like-terms',
@@ -138,7 +134,10 @@ export const cancelFactors: DemoTask = {
         step: 1,
         kind: 'fractions',
         shouldBe: '\\frac{(x-3)(x+3)}{x^2+x-6}',
-        why: ['x^2 is a term here and not a factor, it cannot be cancelled.', 'Put x = 0: above it is 3/2 and here too, but with x = 1 it is 2 against 9/5.'],
+        why: [
+          'x^2 is a term here and not a factor, it cannot be cancelled.',
+          'Put x = 0: above it is 3/2 and here too, but with x = 1 it is 2 against 9/5.',
+        ],
       },
     },
     {
@@ -148,7 +147,10 @@ export const cancelFactors: DemoTask = {
         kind: 'powers-and-roots',
         mark: '(x-3)^2',
         shouldBe: '\\frac{(x-3)(x+3)}{x^2+x-6}',
-        why: ['x^2 - 9 is (x - 3)(x + 3), the square would have -6x in it.', 'A difference of squares is not the square of a difference.'],
+        why: [
+          'x^2 - 9 is (x - 3)(x + 3), the square would have -6x in it.',
+          'A difference of squares is not the square of a difference.',
+        ],
       },
     },
     {
@@ -158,7 +160,10 @@ export const cancelFactors: DemoTask = {
         kind: 'sign',
         mark: '(x+2)(x-3)',
         shouldBe: '\\frac{(x-3)(x+3)}{(x-2)(x+3)}',
-        why: ['2 - 3 is -1, but the middle term is +x.', 'Multiplied out it gives x^2 - x - 6. The signs are the wrong way round.'],
+        why: [
+          '2 - 3 is -1, but the middle term is +x.',
+          'Multiplied out it gives x^2 - x - 6. The signs are the wrong way round.',
+        ],
       },
     },
     {
@@ -167,7 +172,10 @@ export const cancelFactors: DemoTask = {
         step: 3,
         kind: 'fractions',
         shouldBe: '\\frac{x-3}{x-2}',
-        why: ['The x is part of a difference on both sides of the bar, it does not cancel.', 'It was done already on the line before. x = 0 gives 3/2, but x = 1 gives 2.'],
+        why: [
+          'The x is part of a difference on both sides of the bar, it does not cancel.',
+          'It was done already on the line before. x = 0 gives 3/2, but x = 1 gives 2.',
+        ],
       },
     },
     {
@@ -186,10 +194,7 @@ export const cancelFactors: DemoTask = {
       },
     },
     {
-      lines: [
-        '\\frac{(x-3)(x+3)}{(x-2)(x+3)}',
-        '\\frac{x-3}{x-2} | x is not -3',
-      ],
+      lines: ['\\frac{(x-3)(x+3)}{(x-2)(x+3)}', '\\frac{x-3}{x-2} | x is not -3'],
     },
   ],
 };

@@ -4,7 +4,8 @@ import { taskForm, type DemoTask } from '../demo-task.ts';
 export const productTakenAway: DemoTask = {
   form: taskForm({
     title: 'One product taken away from another',
-    instructions: 'Write it as a sum of powers of x. Go one small step at a time; the minus is where it gets interesting.',
+    instructions:
+      'Write it as a sum of powers of x. Go one small step at a time; the minus is where it gets interesting.',
     given: '3x(x-4)-(x-2)(x+5)',
     goal: { kind: 'expanded' },
   }),
@@ -19,11 +20,7 @@ export const productTakenAway: DemoTask = {
       ],
     },
     {
-      lines: [
-        '3x^2-12x-(x^2+3x-10) | multiply both out',
-        '3x^2-x^2-12x-3x+10',
-        '2x^2-15x+10',
-      ],
+      lines: ['3x^2-12x-(x^2+3x-10) | multiply both out', '3x^2-x^2-12x-3x+10', '2x^2-15x+10'],
     },
     {
       lines: [
@@ -56,37 +53,36 @@ export const productTakenAway: DemoTask = {
         kind: 'sign',
         mark: '+10',
         shouldBe: '3x^2-12x-(x^2+5x-2x-10)',
-        why: ['-2 times 5 is -10, a minus times a plus.', 'The last product has one minus in it, so it must be negative.'],
+        why: [
+          '-2 times 5 is -10, a minus times a plus.',
+          'The last product has one minus in it, so it must be negative.',
+        ],
       },
     },
     {
-      lines: [
-        '3x^2-4-(x-2)(x+5) | multiply by 3x',
-        '3x^2-4-(x^2+3x-10)',
-        '3x^2-4-x^2-3x+10',
-        '2x^2-3x+6',
-      ],
+      lines: ['3x^2-4-(x-2)(x+5) | multiply by 3x', '3x^2-4-(x^2+3x-10)', '3x^2-4-x^2-3x+10', '2x^2-3x+6'],
       slip: {
         step: 1,
         kind: 'brackets',
         mark: '-4',
         shouldBe: '3x^2-12x-(x-2)(x+5)',
-        why: ['3x has to multiply the 4 as well.', 'Only the first term in the bracket was multiplied. 3x times -4 is -12x.'],
+        why: [
+          '3x has to multiply the 4 as well.',
+          'Only the first term in the bracket was multiplied. 3x times -4 is -12x.',
+        ],
       },
     },
     {
-      lines: [
-        '3x^2-12x-(x^2+3x-10)',
-        '3x^2-12x-x^2-3x+10',
-        '3x^2-x^2-12x-3x+10 | sort',
-        '2x^2-9x+10',
-      ],
+      lines: ['3x^2-12x-(x^2+3x-10)', '3x^2-12x-x^2-3x+10', '3x^2-x^2-12x-3x+10 | sort', '2x^2-9x+10'],
       slip: {
         step: 4,
         kind: 'like-terms',
         mark: '-9x',
         shouldBe: '2x^2-15x+10',
-        why: ['-12x and -3x are both taken away, together -15x.', 'Twelve away and three more away is fifteen away, not nine.'],
+        why: [
+          '-12x and -3x are both taken away, together -15x.',
+          'Twelve away and three more away is fifteen away, not nine.',
+        ],
       },
     },
     {
@@ -96,16 +92,14 @@ export const productTakenAway: DemoTask = {
         kind: 'like-terms',
         mark: '2x^4',
         shouldBe: '2x^2-15x+10',
-        why: ['3x^2 - x^2 is 2x^2. Nothing is multiplied, so the power stays.', 'Powers only add up when you multiply. Here you subtract.'],
+        why: [
+          '3x^2 - x^2 is 2x^2. Nothing is multiplied, so the power stays.',
+          'Powers only add up when you multiply. Here you subtract.',
+        ],
       },
     },
     {
-      lines: [
-        '3x^2-12x-(x+2)(x+5)',
-        '3x^2-12x-(x^2+7x+10)',
-        '3x^2-12x-x^2-7x-10',
-        '2x^2-19x-10',
-      ],
+      lines: ['3x^2-12x-(x+2)(x+5)', '3x^2-12x-(x^2+7x+10)', '3x^2-12x-x^2-7x-10', '2x^2-19x-10'],
       slip: {
         step: 1,
         kind: 'copying',
@@ -166,21 +160,23 @@ export const squareAndProduct: DemoTask = {
         kind: 'powers-and-roots',
         mark: '2x^2',
         shouldBe: '4x^2-12x+9-(x+1)(x-6)',
-        why: ['The 2 has to be squared too: (2x)^2 = 4x^2.', 'At x = 1 the square is 1, this gives -1. The factor 2 was not squared.'],
+        why: [
+          'The 2 has to be squared too: (2x)^2 = 4x^2.',
+          'At x = 1 the square is 1, this gives -1. The factor 2 was not squared.',
+        ],
       },
     },
     {
-      lines: [
-        '4x^2-12x+9-(x+1)(x-6)',
-        '4x^2-12x+9-x^2-5x-6 | multiply out',
-        '3x^2-17x+3',
-      ],
+      lines: ['4x^2-12x+9-(x+1)(x-6)', '4x^2-12x+9-x^2-5x-6 | multiply out', '3x^2-17x+3'],
       slip: {
         step: 2,
         kind: 'brackets',
         mark: '-5x-6',
         shouldBe: '4x^2-12x+9-(x^2-5x-6)',
-        why: ['The brackets are gone but the minus only reached the first term.', 'It should be +5x + 6 after taking the bracket away.'],
+        why: [
+          'The brackets are gone but the minus only reached the first term.',
+          'It should be +5x + 6 after taking the bracket away.',
+        ],
       },
     },
     {
@@ -194,11 +190,7 @@ export const squareAndProduct: DemoTask = {
       },
     },
     {
-      lines: [
-        '4x^2-12x+9-(x^2-5x-6)',
-        '4x^2-12x+9-x^2+5x+6',
-        '3x^2+17x+15 | put together',
-      ],
+      lines: ['4x^2-12x+9-(x^2-5x-6)', '4x^2-12x+9-x^2+5x+6', '3x^2+17x+15 | put together'],
       slip: {
         step: 3,
         kind: 'like-terms',
