@@ -19,6 +19,7 @@ const evaluationCost = 12;
  * factors, roots): then they are equal wherever both have a value. False says nothing.
  */
 export function provesIdentity(pair: Pair, context: CheckContext): boolean {
+  if (pair.above === pair.below) return true;
   const complex = context.numbers === 'complex';
   const needs = [...pair.needsAbove, ...pair.needsBelow];
   const plan = createKernelPlan(pair.nodes, pair.needed, complex, (forms) =>
@@ -33,10 +34,9 @@ export function provesIdentity(pair: Pair, context: CheckContext): boolean {
   const count = countEvaluations(pair, plan);
   if (count === null) return false;
   const random = createRandom(context.seed ^ 0x2545f491);
-  const table = primesFor(plan);
   for (const choice of combinations(plan.choices)) {
     for (let k = 0; k < count; k += 1) {
-      if (!agrees(pair, plan, choice, table, random, context)) return false;
+      if (!agrees(pair, plan, choice, random, context)) return false;
     }
   }
   return true;
@@ -60,10 +60,14 @@ function countEvaluations(pair: Pair, plan: KernelPlan): number | null {
   return evaluationsNeeded(degree * norm, bits * norm, 24, 6_000, mostEvaluations);
 }
 
-function primesFor(plan: KernelPlan): Float64Array {
+/** A random prime modulo which the roots of the plan can be taken. */
+function drawPrime(plan: KernelPlan, random: Random): number | null {
   const table = plan.turns ? cyclotomicPrimes : primes;
-  if (plan.oddPart === 1 && !plan.quarters) return table;
-  return table.filter((p) => (!plan.quarters || p % 16 === 1) && isCoprime(plan.oddPart, p - 1));
+  for (let attempt = 0; attempt < mostAttempts; attempt += 1) {
+    const p = table[random(table.length)] ?? 0;
+    if ((!plan.quarters || p % 16 === 1) && isCoprime(plan.oddPart, p - 1)) return p;
+  }
+  return null;
 }
 
 function isCoprime(a: number, b: number): boolean {
@@ -91,14 +95,14 @@ function agrees(
   pair: Pair,
   plan: KernelPlan,
   choice: ReadonlyMap<string, number>,
-  table: Float64Array,
   random: Random,
   context: CheckContext,
 ): boolean {
   const setting = { nodes: pair.nodes, plan, names: pair.names, complex: context.numbers === 'complex' };
-  for (let attempt = 0; attempt < mostAttempts && table.length > 0; attempt += 1) {
+  for (let attempt = 0; attempt < mostAttempts; attempt += 1) {
     context.budget.spend(evaluationCost);
-    const p = table[random(table.length)] ?? 0;
+    const p = drawPrime(plan, random);
+    if (p === null) return false;
     const values = createKernelValues(setting, p, random, choice);
     const residues = evaluateModular(pair.nodes, pair.needed, p, values.letters, values.kernel);
     const x = residues[pair.above] ?? noResidue;

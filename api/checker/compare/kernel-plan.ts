@@ -100,6 +100,7 @@ export function createKernelPlan(
   const positive = positiveBases(nodes, needed, forms, signs);
   const denominators = new Map<string, number>();
   const monomials = new Map<string, Monomial>();
+  const sized = new Set<number>();
   let exponentBound = 1;
   for (let index = 0; index < nodes.length; index += 1) {
     const node = nodes[index];
@@ -108,15 +109,18 @@ export function createKernelPlan(
     const exponents = exponentsOf(node, forms, positive, complex);
     if (exponents === null) return null;
     const sizes = exponents.map((form) => register(form, denominators, monomials));
+    // An odd root is the same whichever sign its radicand is given along with its size.
+    if (node.op !== 'root' || node.degree % 2 === 0) for (const form of exponents) addSized(form, forms, sized);
     if (sizes.includes(null)) return null;
     exponentBound = Math.max(exponentBound, ...sizes.map((size) => size ?? 0));
   }
   for (const root of rootsOfArcs(forms, signs, monomials)) {
+    addSized(root, forms, sized);
     const size = register(root, denominators, monomials);
     if (size === null) return null;
     exponentBound = Math.max(exponentBound, size);
   }
-  return finishPlan(forms, signs, positive, denominators, monomials, exponentBound);
+  return finishPlan(forms, signs, positive, denominators, monomials, sized, exponentBound);
 }
 
 /** Adds the monomials of a form; the answer bounds their exponents, null where they are out of reach. */
@@ -169,6 +173,7 @@ function finishPlan(
   positive: ReadonlySet<number>,
   denominators: Map<string, number>,
   monomials: Map<string, Monomial>,
+  sized: ReadonlySet<number>,
   exponentBound: number,
 ): KernelPlan | null {
   const choices = new Map<string, number>();
@@ -184,10 +189,13 @@ function finishPlan(
     const log = powers.length === 1 && first?.[1] === 1 ? kinds[0] : undefined;
     if (log?.kind !== 'log') continue;
     const twos = degree & -degree;
-    if (typeof log.of === 'number' && signOfAtom(log.of, forms.atoms, signs) === null) choices.set(`sign ${log.of}`, 2);
+    if (typeof log.of === 'number' && sized.has(log.of) && signOfAtom(log.of, forms.atoms, signs) === null) {
+      choices.set(`sign ${log.of}`, 2);
+    }
     const isLetter = typeof log.of === 'number' && forms.atoms[log.of]?.kind === 'letter';
     if (isLetter) continue;
-    if (typeof log.of === 'number' && twos > 1) choices.set(`root ${key}`, twos);
+    if (typeof log.of === 'number' && twos > 1 && !isLinear(forms.atoms[log.of], forms.atoms))
+      choices.set(`root ${key}`, twos);
     oddPart = Number(lcm(BigInt(oddPart), BigInt(degree / twos)));
     quarters ||= twos > 2;
   }
@@ -195,6 +203,32 @@ function finishPlan(
   for (const count of choices.values()) product *= count;
   if (product > mostChoices) return null;
   return { forms, signs, positive, denominators, monomials, choices, turns, oddPart, quarters, exponentBound };
+}
+
+function addSized(form: Form, forms: Forms, sized: Set<number>): void {
+  for (const { powers } of form.values()) {
+    for (const [id] of powers) {
+      const atom = forms.atoms[id];
+      if (atom?.kind === 'log' && typeof atom.of === 'number') sized.add(atom.of);
+    }
+  }
+}
+
+/**
+ * A sum of letters' powers in which one letter stands alone is irreducible; the roots of different ones are independent,
+ * so that one choice of each stands for all.
+ */
+function isLinear(atom: Atom | undefined, atoms: readonly Atom[]): boolean {
+  if (atom?.kind !== 'factor') return false;
+  const terms = [...atom.form.values()];
+  const isPlain = terms.every(({ powers }) => powers.every(([id, n]) => n > 0 && atoms[id]?.kind === 'letter'));
+  return (
+    isPlain &&
+    terms.some(({ powers: [only, ...others] }) => {
+      if (only === undefined || only[1] !== 1 || others.length > 0) return false;
+      return terms.filter(({ powers }) => powers.some(([id]) => id === only[0])).length === 1;
+    })
+  );
 }
 
 /** i times an inverse circular function of something: e to it is algebraic. */

@@ -178,6 +178,8 @@ class KernelResidues implements KernelValues {
   }
 
   private unityRoot(order: number): number {
+    if (order === 2) return this.p - 1;
+    if (order === 4) return this.unit;
     if ((this.p - 1) % order !== 0) return this.fail();
     const g = primitiveRoot(this.p);
     // The root of order 4 has to be the same i as everywhere else.

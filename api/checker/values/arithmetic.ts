@@ -16,7 +16,9 @@ import type { BallValue, KnownValue, UnknownValue, Value } from './value.ts';
 
 /** Sums, products, quotients and whole powers: exact where both are exact, else balls of `bits` bits. */
 
-const exactBits = 60_000;
+const exactBits = 20_000;
+const fractionBits = 800;
+const largestPowerBits = 120_000;
 
 export const undefinedValue: Value = { kind: 'undefined' };
 export const zeroValue: KnownValue = { kind: 'rational', value: Q.zero };
@@ -79,8 +81,10 @@ function parts(value: KnownValue): { re: Rational; im: Rational } | null {
   return value.kind === 'gaussian' ? value : null;
 }
 
+/** Long fractions cost more than they tell; whole numbers may be longer. */
 function isLarge(value: Rational): boolean {
-  return value.num.toString(16).length * 4 > exactBits || value.den.toString(16).length * 4 > exactBits;
+  const size = value.num.toString(16).length * 4;
+  return value.den === 1n ? size > exactBits : size > fractionBits || value.den.toString(16).length * 4 > fractionBits;
 }
 
 function bounded(value: Rational, bits: number): KnownValue {
@@ -185,9 +189,9 @@ export function powKnown(a: KnownValue, exponent: number, bits: number): Value {
   if (a.kind === 'gaussian' && Math.abs(exponent) <= 64) return powBySquares(a, exponent, bits);
   const ball = toBall(a, bits);
   if (ball.im !== null) return powBySquares(ball, exponent, bits);
-  // A number beyond 2^100000 is of no use to anybody and costs much to hold.
+  // A number beyond that is of no use to anybody and costs much to hold.
   const size = Q.bitLength(ball.re.mid) - bits;
-  if (Math.abs(size * exponent) > 400_000) return unknown('limit');
+  if (Math.abs(size * exponent) > largestPowerBits) return unknown('limit');
   const result = powBall(ball.re, exponent, bits);
   return result === null ? unknown('precision') : fromBall(result);
 }

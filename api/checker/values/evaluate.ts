@@ -49,12 +49,25 @@ export function evaluateNodes(nodes: readonly GraphNode[], point: Point, bits: n
   const values: Value[] = [];
   let cost = 0;
   for (const node of nodes) {
-    values.push(evaluateNode(node, values, point, field, context));
-    cost += costOf(node);
+    const value = evaluateNode(node, values, point, field, context);
+    values.push(value);
+    cost += costOf(node) + costOfSize(value);
   }
   context.budget.spend(Math.ceil((cost * bits * bits) / 2_000_000) + (nodes.length >> 4));
   return values;
 }
+
+/** Long exact numbers and large balls cost by their length. */
+function costOfSize(value: Value): number {
+  const size = value.kind === 'rational' ? value.value.num : value.kind === 'ball' ? value.re.mid : 0n;
+  if (size < long && size > -long) return 0;
+  if (size < veryLong && size > -veryLong) return 1_000;
+  return size < hugelyLong && size > -hugelyLong ? 20_000 : 200_000;
+}
+
+const long = 1n << 1_500n;
+const veryLong = 1n << 8_000n;
+const hugelyLong = 1n << 40_000n;
 
 /** In fiftieths of a multiplication. */
 function costOf(node: GraphNode): number {

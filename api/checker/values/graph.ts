@@ -62,17 +62,35 @@ export interface GraphBuilder {
 }
 
 const foldBits = 2_000;
+/** Longer fractions are left in parts: their common denominators would cost more than they tell. */
+const longest = 1n << 600n;
+const largestExponent = 1_000_000;
 
-function keyOf(node: GraphNode): string {
+/** Room for 2^17 nodes and exponents up to 2^21 in a double. */
+const nodeSpan = 131_072;
+const exponentSpan = 4_194_304;
+
+/** A number for the kinds of nodes that are frequent and small, a text for the others. */
+function keyOf(node: GraphNode): string | number {
   switch (node.op) {
     case 'number':
-      return `#${node.value.num}/${node.value.den}`;
+      return node.value.den === 1n ? `#${node.value.num}` : `#${node.value.num}/${node.value.den}`;
     case 'letter':
       return `$${node.name}`;
     case 'constant':
       return `@${node.name}`;
+    case 'negate':
+      return 8 * node.args[0];
+    case 'div':
+      return 8 * (node.args[0] * nodeSpan + node.args[1]) + 1;
     case 'power':
-      return `^${node.args[0]},${node.exponent}`;
+      return 8 * (node.args[0] * exponentSpan + node.exponent + exponentSpan / 2) + 2;
+    case 'add':
+    case 'mul': {
+      const [a, b] = node.args;
+      if (node.args.length !== 2 || a === undefined || b === undefined) return `${node.op}${node.args.join()}`;
+      return 8 * (a * nodeSpan + b) + (node.op === 'add' ? 3 : 4);
+    }
     case 'pow':
       return `p${node.args.join()},${node.positive}`;
     case 'root':
@@ -86,7 +104,8 @@ function keyOf(node: GraphNode): string {
 
 export function createGraphBuilder(onPush: () => void): GraphBuilder {
   const nodes: GraphNode[] = [];
-  const known = new Map<string, number>();
+  const known = new Map<string | number, number>();
+  const smallNumbers = new Map<bigint, number>();
 
   function push(node: GraphNode): number {
     // Two series or two unknowns are never merged: nothing says that they are equal.
@@ -102,7 +121,13 @@ export function createGraphBuilder(onPush: () => void): GraphBuilder {
     return node?.op === 'number' ? node.value : null;
   }
   function number(value: Rational): number {
-    return push({ op: 'number', args: [], value });
+    if (value.den !== 1n) return push({ op: 'number', args: [], value });
+    let found = smallNumbers.get(value.num);
+    if (found === undefined) {
+      found = push({ op: 'number', args: [], value });
+      smallNumbers.set(value.num, found);
+    }
+    return found;
   }
   /** Numbers among the arguments become one, and what is left is sorted: a sum or product has no order. */
   function fold(op: 'add' | 'mul', args: readonly number[]): number {
@@ -114,6 +139,10 @@ export function createGraphBuilder(onPush: () => void): GraphBuilder {
       const value = valueOf(arg);
       if (value === null) rest.push(arg);
       else total = join(total, value);
+      if (total.den > longest || total.num > longest || total.num < -longest) {
+        rest.push(push({ op: 'number', args: [], value: total }));
+        total = neutral;
+      }
     }
     if (rest.length === 0) return number(total);
     if (!Q.equals(total, neutral)) rest.push(number(total));
@@ -132,6 +161,11 @@ export function createGraphBuilder(onPush: () => void): GraphBuilder {
   }
   function power(base: number, exponent: number): number {
     if (exponent === 1) return base;
+    const inner = nodes[base];
+    // (a^m)^n for m > 0: nothing is lost where a is zero.
+    if (inner?.op === 'power' && inner.exponent > 0 && exponent !== 0 && Math.abs(inner.exponent * exponent) <= largestExponent) {
+      return power(inner.args[0], inner.exponent * exponent);
+    }
     const value = valueOf(base);
     if (value !== null && exponent !== 0 && !(exponent < 0 && Q.isZero(value))) {
       const size = Q.bitLength(value.num) + Q.bitLength(value.den);

@@ -18,7 +18,8 @@ interface Lowering {
   readonly bound: ReadonlyMap<string, number>;
   /** Definitions being replaced, so that a definition by itself ends. */
   readonly open: ReadonlySet<string>;
-  readonly depth: number;
+  /** Shared by all lowerings of one graph. */
+  readonly nesting: { depth: number };
 }
 
 /** Adds the meaning of expressions to one graph; the answer holds the index of each. */
@@ -28,13 +29,13 @@ export function lowerAll(exprs: readonly Expr[], context: CheckContext): { build
     pushed += 1;
     if ((pushed & 63) === 0) context.budget.spend(8);
   });
-  const lowering: Lowering = { builder, context, bound: new Map(), open: new Set(), depth: 0 };
+  const lowering: Lowering = { builder, context, bound: nothingBound, open: noNames, nesting: { depth: 0 } };
   return { builder, roots: exprs.map((expr) => lower(expr, lowering)) };
 }
 
 /** Adds one more expression to a graph that is being built. */
 export function lowerInto(builder: GraphBuilder, expr: Expr, context: CheckContext): number {
-  return lower(expr, { builder, context, bound: new Map(), open: new Set(), depth: 0 });
+  return lower(expr, { builder, context, bound: nothingBound, open: noNames, nesting: { depth: 0 } });
 }
 
 export function lowerOne(expr: Expr, context: CheckContext): Graph {
@@ -42,14 +43,23 @@ export function lowerOne(expr: Expr, context: CheckContext): Graph {
   return { nodes: builder.nodes, root: roots[0] ?? 0 };
 }
 
+const nothingBound: ReadonlyMap<string, number> = new Map();
+const noNames: ReadonlySet<string> = new Set();
+
 function opaque(lowering: Lowering, reason: 'not-covered' | 'limit'): number {
   return lowering.builder.push({ op: 'opaque', args: [], reason });
 }
 
-function lower(expr: Expr, outer: Lowering): number {
-  if (outer.depth > maximumDepth || outer.builder.nodes.length > maximumNodes) return opaque(outer, 'limit');
-  const at = { ...outer, depth: outer.depth + 1 };
-  const { builder } = at;
+function lower(expr: Expr, at: Lowering): number {
+  const { builder, nesting } = at;
+  if (nesting.depth > maximumDepth || builder.nodes.length > maximumNodes) return opaque(at, 'limit');
+  nesting.depth += 1;
+  const index = lowerKind(expr, at, builder);
+  nesting.depth -= 1;
+  return index;
+}
+
+function lowerKind(expr: Expr, at: Lowering, builder: GraphBuilder): number {
   switch (expr.kind) {
     case 'number':
       return builder.number({ num: expr.numerator, den: expr.denominator });
