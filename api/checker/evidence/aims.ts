@@ -1,0 +1,79 @@
+import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { exprsOf } from '../../../shared/maths/walk.ts';
+import * as Q from '../numbers/rational.ts';
+import { neg, sum } from './build.ts';
+import { isFiniteNumber, isNear, minus, over, plus, real, sizeOf, times, type Complex } from './complex-double.ts';
+import { estimate, type Place } from './estimate.ts';
+import { differenceAt, type Aim, type MendQuestion } from './mend-question.ts';
+import { collect, keyOf, spread } from './monomials.ts';
+import { choosePlaces } from './places.ts';
+import { workOut } from './worked-out.ts';
+
+type Relation = Extract<Line, { kind: 'relation' }>;
+
+const placeCount = 3;
+
+/** The expression that the line above says of a line's expression, and that expression; null for statements. */
+export function expressionsIn({ above, line, link }: MendQuestion): { readonly above: Expr; readonly focus: Expr } | null {
+  if (above.kind !== 'expression') return null;
+  if (line.kind === 'expression') return { above: above.expr, focus: line.expr };
+  if (line.kind !== 'relation' && line.kind !== 'chain' && line.kind !== 'continuation') return null;
+  const members = exprsOf(line);
+  const focus = members[link - 1];
+  const from = link > 1 ? members[link - 2] : above.expr;
+  return focus && from ? { above: from, focus } : null;
+}
+
+/** What a line's parts have to come to. */
+export function aimsOf(question: MendQuestion): Aim[] {
+  const { above, line, context } = question;
+  const pair = expressionsIn(question);
+  if (pair) {
+    const wanted = workOut(pair.above, pair.focus);
+    const places = choosePlaces([wanted, pair.focus], placeCount, context);
+    return [{ roots: [pair.focus], tree: pair.focus, wanted, places, targets: [places.map((place) => estimate(wanted, place))] }];
+  }
+  if (above.kind !== 'relation' || line.kind !== 'relation') return [];
+  const places = choosePlaces([above, line], placeCount, context);
+  const isolated = aimAtSolution(above, line, places);
+  return isolated ? [isolated] : [aimAtMultiple(above, line, places)];
+}
+
+/** letter = expression: the right side must be what the line above says of the letter, where that is of first degree in it. */
+function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]): Aim | null {
+  const { left, right } = line;
+  if (left.kind !== 'letter' || lettersOf(right).includes(left.name)) return null;
+  const { name } = left;
+  const target = places.map((place): Complex => {
+    const at = (x: number): Complex => differenceAt(above, { ...place, letters: new Map(place.letters).set(name, real(x)) });
+    const [f2, f3, f5] = [at(2), at(3), at(5)];
+    const slope = minus(f3, f2);
+    const isLinear = isNear(f5, plus(f2, times(real(3), slope))) && sizeOf(slope) > 1e-9;
+    return isLinear ? minus(real(2), over(f2, slope)) : { re: NaN, im: NaN };
+  });
+  if (!target.every(isFiniteNumber)) return null;
+  return { roots: [right], tree: right, wanted: null, places, targets: [target] };
+}
+
+/** Left minus right must be a multiple of what it is above: by 1, by -1, or as some of the like terms have it. */
+function aimAtMultiple(above: Relation, line: Relation, places: readonly Place[]): Aim {
+  const tree = sum(line.left, neg(line.right));
+  const whole: Expr = tree.kind === 'sum' ? { ...tree, terms: [{ sign: 'plus', expr: line.left, span: line.left.span }, { sign: 'minus', expr: line.right, span: line.right.span }] } : tree;
+  const values = places.map((place) => differenceAt(above, place));
+  const scales = scalesOf(sum(above.left, neg(above.right)), tree);
+  return { roots: [line.left, line.right], tree: whole, wanted: null, places, targets: scales.map((scale) => values.map((value) => times(real(scale), value))) };
+}
+
+const mostScales = 4;
+
+function scalesOf(above: Expr, below: Expr): number[] {
+  const [before, after] = [spread(above), spread(below)];
+  const found = new Set([1, -1]);
+  const own = new Map(collect(after ?? []).map((term) => [keyOf(term), term.coefficient]));
+  for (const term of collect(before ?? [])) {
+    const other = own.get(keyOf(term));
+    if (other && found.size < mostScales) found.add(Q.toNumber(Q.div(other, term.coefficient)));
+  }
+  return [...found];
+}

@@ -1,0 +1,146 @@
+import type { Expr, TermSign } from '../../../shared/maths/expression.ts';
+import { printExpr } from '../../../shared/maths/print.ts';
+import * as Q from '../numbers/rational.ts';
+import type { Rational } from '../numbers/rational.ts';
+import { fraction, letter, neg, power, product, whole } from './build.ts';
+import type { Complex } from './complex-double.ts';
+import type { Candidate, Edit } from './edits.ts';
+import { hole, replaceNode, solveHole } from './holes.ts';
+import { isWholeNumber, leavesOf, nodesOf, signSpan, type PlacedNode, type PlacedTerm } from './line-parts.ts';
+import { hits, outer, type Aim } from './mend-question.ts';
+
+/** What one change costs: a sign least, then a number, then what is put in. */
+const costs = { sign: 1, number: 1.1, signedNumber: 1.2, exponent: 1.15, factor: 1.15, letter: 1.1, drop: 1.25 } as const;
+/** Fractions where none was written are rarely what was meant. */
+const fractionCost = 1.5;
+
+/** Changes of one number, sign, exponent, coefficient or letter after which the tree has the wanted values. */
+export function* leafEdits(aim: Aim, letters: readonly string[], tex: string, isRight: (node: Expr) => boolean): Generator<Candidate> {
+  const nodes = aim.roots.flatMap(nodesOf);
+  for (const target of aim.targets) {
+    for (const place of nodes) {
+      for (const found of editsAt(place, aim, target, letters, tex)) yield { ...found, touchesRight: isRight(place.node) };
+    }
+  }
+}
+
+type Found = Omit<Candidate, 'touchesRight'>;
+
+function* editsAt(place: PlacedNode, aim: Aim, target: readonly Complex[], letters: readonly string[], tex: string): Generator<Found> {
+  const { node } = place;
+  if (node.kind === 'number') {
+    const value = solveHole(replaceNode(aim.tree, node, hole), Number(node.numerator) / Number(node.denominator), aim, target);
+    if (value) yield* changedNumber(place, value, tex);
+    return;
+  }
+  if (place.leads && place.leads.term.expr === node) yield* changedTerm(place, place.leads, aim, target, tex);
+  if (node.kind === 'letter') yield* changedLetter(place, aim, target, letters);
+}
+
+function* changedNumber(place: PlacedNode, value: Rational, tex: string): Generator<Found> {
+  const { node, leads, isExponent, isFactor } = place;
+  if (node.kind !== 'number') return;
+  const before = { num: node.numerator, den: node.denominator };
+  if (Q.equals(value, before)) return;
+  const extra = value.den !== 1n && isWholeNumber(node) ? fractionCost : 0;
+  const span = outer(node);
+  if (Q.isZero(value) && leads && !leads.isOnly) {
+    yield { edits: [{ ...leads.term.span, text: '' }], cost: costs.drop + 0.1 * leavesOf(leads.term.expr).length };
+    return;
+  }
+  if (isExponent && Q.equals(value, Q.one)) {
+    const start = tex.lastIndexOf('^', span.start);
+    const end = tex[span.end] === '}' ? span.end + 1 : span.end;
+    if (start >= 0) yield { edits: [{ start, end, text: '' }], cost: costs.drop };
+    return;
+  }
+  if (value.num >= 0n) {
+    const isUnit = isFactor && leads !== null && Q.equals(value, Q.one) && !/^\s*(\\cdot|\\times|[0-9])/.test(tex.slice(span.end));
+    yield { edits: [{ ...span, text: isUnit ? '' : numberText(value) }], cost: costs.number + extra };
+    return;
+  }
+  const size = Q.negate(value);
+  const turned = leads && turnedSign(leads, tex);
+  if (turned && Q.equals(size, before)) yield { edits: [turned], cost: costs.sign };
+  else if (turned) yield { edits: [turned, { ...span, text: numberText(size) }], cost: costs.signedNumber + extra };
+  else if (!isFactor) yield { edits: [{ ...span, text: isExponent ? `{-${numberText(size)}}` : `-${numberText(size)}` }], cost: costs.signedNumber + extra };
+}
+
+export function numberText(value: Rational): string {
+  return printExpr(fraction(value));
+}
+
+/** The edit that turns the sign of a term; null for a plus-or-minus. */
+export function turnedSign(placed: PlacedTerm, tex: string): Edit | null {
+  const span = signSpan(placed);
+  const opposite: Partial<Record<TermSign, string>> = { plus: '-', minus: placed.isFirst ? '' : '+' };
+  const text = opposite[placed.term.sign];
+  if (text === undefined) return null;
+  const isBlank = tex.slice(span.start, span.end).trim() === '' && placed.term.sign === 'minus';
+  return isBlank ? null : { ...span, text };
+}
+
+/** A coefficient put in front of a term that has none; with it its sign, or the whole term taken out. */
+function* changedTerm(place: PlacedNode, leads: PlacedTerm, aim: Aim, target: readonly Complex[], tex: string): Generator<Found> {
+  const { node } = place;
+  if (startsWithNumber(node)) return;
+  const value = solveHole(replaceNode(aim.tree, node, product(hole, node)), 1, aim, target);
+  if (!value) return;
+  if (Q.isZero(value)) {
+    if (!leads.isOnly) yield { edits: [{ ...leads.term.span, text: '' }], cost: costs.drop + 0.1 * leavesOf(node).length };
+    return;
+  }
+  const size = Q.absolute(value);
+  const turned = value.num < 0n ? turnedSign(leads, tex) : null;
+  if (value.num < 0n && !turned) return;
+  const front: Edit[] = turned ? [turned] : [];
+  if (Q.equals(size, Q.one)) {
+    if (turned) yield { edits: front, cost: costs.sign };
+    return;
+  }
+  const at = outer(node).start;
+  const extra = size.den === 1n ? 0 : fractionCost / 2;
+  const bracketed = node.kind === 'sum' && !node.bracketed;
+  if (!bracketed) yield { edits: [...front, { start: at, end: at, text: numberText(size) }], cost: costs.factor + (turned ? 0.1 : 0) + extra };
+}
+
+function startsWithNumber(node: Expr): boolean {
+  if (node.kind === 'product') return startsWithNumber(node.factors[0] as Expr);
+  if (node.kind === 'quotient') return startsWithNumber(node.numerator);
+  return node.kind === 'number';
+}
+
+/** Another letter, or another power of it. */
+function* changedLetter(place: PlacedNode, aim: Aim, target: readonly Complex[], letters: readonly string[]): Generator<Found> {
+  const { node, isBase } = place;
+  if (node.kind !== 'letter') return;
+  const span = outer(node);
+  for (const name of letters) {
+    if (name !== node.name && hits(replaceNode(aim.tree, node, letter(name)), target, aim.places)) {
+      yield { edits: [{ ...span, text: name }], cost: costs.letter };
+    }
+  }
+  if (isBase) return;
+  const value = solveHole(replaceNode(aim.tree, node, power(node, hole)), 1, aim, target);
+  if (!value || value.den !== 1n || value.num < 2n) return;
+  yield { edits: [{ start: span.end, end: span.end, text: `^${exponentText(value)}` }], cost: costs.exponent };
+}
+
+function exponentText({ num }: Rational): string {
+  return num < 10n && num >= 0n ? String(num) : `{${num}}`;
+}
+
+/** Small changes of which two together may mend a line: signs, squares put in and taken out. */
+export function smallChanges(aim: Aim, tex: string): { readonly node: Expr; readonly by: Expr; readonly edit: Edit }[] {
+  const found: { node: Expr; by: Expr; edit: Edit }[] = [];
+  for (const { node, leads, isBase } of aim.roots.flatMap(nodesOf)) {
+    const turned = leads && leads.term.expr === node ? turnedSign(leads, tex) : null;
+    if (turned) found.push({ node, by: neg(node), edit: turned });
+    const end = outer(node).end;
+    if (node.kind === 'letter' && !isBase) found.push({ node, by: power(node, whole(2)), edit: { start: end, end, text: '^2' } });
+    if (node.kind === 'power' && node.exponent.kind === 'number') {
+      found.push({ node, by: node.base, edit: { start: outer(node.base).end, end, text: '' } });
+    }
+  }
+  return found;
+}

@@ -1,0 +1,133 @@
+import type { Expr, Line, RelationSign, Span } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { readLine } from '../../../shared/maths/read.ts';
+import { aimsOf, expressionsIn } from './aims.ts';
+import { splice, type Candidate, type Edit } from './edits.ts';
+import { replaceNode } from './holes.ts';
+import { leafEdits, numberText, smallChanges } from './leaf-edits.ts';
+import { hits, outer, type Aim, type MendQuestion } from './mend-question.ts';
+import { missingTerms } from './missing-terms.ts';
+import { findRightParts, findRightTerms } from './right-parts.ts';
+import { shapeEdits } from './shape-edits.ts';
+import { signChoices, valueListEdits } from './value-lists.ts';
+import { rewritten } from './worked-out.ts';
+import { simpleFraction } from './holes.ts';
+
+/** The author's line changed as little as makes it follow, as the checker itself has ruled. */
+export interface MendedLine {
+  readonly tex: string;
+  readonly line: Line;
+  readonly changed: readonly Span[];
+  /** In the author's own text. */
+  readonly edits: readonly Edit[];
+  /** Written anew as a whole: nothing of the author's is left. */
+  readonly isRewritten: boolean;
+}
+
+const mostRuled = 14;
+const rightCost = 1.2;
+const rewrittenCost = 4;
+
+/** The mended line of a step that fails; null where none was found. */
+export function mendLine(question: MendQuestion): MendedLine | null {
+  const aims = aimsOf(question);
+  const isRight = rightParts(question);
+  const single = [...singleChanges(question, aims, isRight)];
+  const first = firstThatHolds(single.filter((candidate) => weight(candidate) < rewrittenCost), question);
+  if (first) return first;
+  const pairs = aims.flatMap((aim) => [...pairsOfChanges(aim, question, isRight)]);
+  return firstThatHolds(pairs, question) ?? firstThatHolds(single.filter((candidate) => weight(candidate) >= rewrittenCost), question);
+}
+
+function* singleChanges(question: MendQuestion, aims: readonly Aim[], isRight: (node: Expr) => boolean): Generator<Candidate> {
+  const { line, above, tex } = question;
+  yield* signChoices(question);
+  yield* valueListEdits(question);
+  yield* relationSigns(line);
+  const letters = [...new Set([...lettersOf(above), ...lettersOf(line)])];
+  for (const aim of aims) {
+    yield* leafEdits(aim, letters, tex, isRight);
+    yield* shapeEdits(aim, tex, isRight);
+    yield* missingTerms(aim);
+    yield* valueItself(aim);
+  }
+  const pair = expressionsIn(question);
+  const [aim] = aims;
+  if (pair && aim) yield* rewritten(aim, pair.above, question.link === 1 ? question.aboveTex : null);
+}
+
+function rightParts(question: MendQuestion): (node: Expr) => boolean {
+  const pair = expressionsIn(question);
+  const { above, line } = question;
+  const found = pair
+    ? findRightParts(pair.above, pair.focus)
+    : above.kind === 'relation' && line.kind === 'relation'
+      ? findRightTerms([above.left, above.right], [line.left, line.right])
+      : new Set<Expr>();
+  return (node) => found.has(node);
+}
+
+const signTex: Partial<Record<RelationSign, string>> = { '<': '<', '>': '>', '<=': '\\le', '>=': '\\ge' };
+
+/** Another sign of order. */
+function* relationSigns(line: Line): Generator<Candidate> {
+  if (line.kind === 'any' || line.kind === 'all') {
+    for (const part of line.parts) yield* relationSigns(part);
+  }
+  if (line.kind !== 'relation' || !signTex[line.sign]) return;
+  const place = { start: outer(line.left).end, end: outer(line.right).start };
+  const turned: Partial<Record<RelationSign, RelationSign>> = { '<': '>', '>': '<', '<=': '>=', '>=': '<=' };
+  for (const [sign, text] of Object.entries(signTex)) {
+    if (sign !== line.sign) yield { edits: [{ ...place, text }], cost: sign === turned[line.sign] ? 1 : 1.05, touchesRight: false };
+  }
+}
+
+/** letter = number: the number itself in place of what is written. */
+function* valueItself(aim: Aim): Generator<Candidate> {
+  const [focus] = aim.roots;
+  const value = aim.targets[0]?.[0];
+  if (!focus || !value || aim.wanted || aim.roots.length > 1 || lettersOf(focus).length > 0) return;
+  const found = simpleFraction(value);
+  if (found && aim.targets[0]?.every((other) => other.re === value.re)) yield { edits: [{ ...outer(focus), text: numberText(found) }], cost: 1.9, touchesRight: false };
+}
+
+const mostSmall = 18;
+
+/** Two changes, the first of them small. */
+function* pairsOfChanges(aim: Aim, { tex }: MendQuestion, isRight: (node: Expr) => boolean): Generator<Candidate> {
+  const small = smallChanges(aim, tex).filter(({ node }) => !isRight(node)).slice(0, mostSmall);
+  for (const [k, one] of small.entries()) {
+    const changed: Aim = { ...aim, tree: replaceNode(aim.tree, one.node, one.by) };
+    for (const other of small.slice(k + 1)) {
+      const both = replaceNode(changed.tree, other.node, other.by);
+      if (aim.targets.some((target) => hits(both, target, aim.places))) yield { edits: [one.edit, other.edit], cost: 2.1, touchesRight: false };
+    }
+    for (const found of leafEdits(changed, [], tex, isRight)) {
+      yield { ...found, edits: [one.edit, ...found.edits], cost: 1 + found.cost };
+    }
+  }
+}
+
+function weight(candidate: Candidate): number {
+  return candidate.cost + (candidate.touchesRight ? rightCost : 0);
+}
+
+function placeOf(candidate: Candidate): number {
+  return Math.min(...candidate.edits.map((edit) => edit.start));
+}
+
+/** In the order of their costs, leftmost on ties. */
+function firstThatHolds(candidates: readonly Candidate[], question: MendQuestion): MendedLine | null {
+  const ordered = [...candidates].sort((a, b) => weight(a) - weight(b) || placeOf(a) - placeOf(b));
+  const seen = new Set<string>([question.tex]);
+  for (const candidate of ordered) {
+    const spliced = splice(question.tex, candidate.edits);
+    if (!spliced || seen.has(spliced.tex)) continue;
+    seen.add(spliced.tex);
+    if (seen.size > mostRuled) return null;
+    const reading = readLine(spliced.tex, question.settings);
+    if (!reading.ok || reading.alternatives.length > 0 || !question.holds(reading.line)) continue;
+    return { ...spliced, line: reading.line, edits: candidate.edits, isRewritten: candidate.cost >= rewrittenCost };
+  }
+  return null;
+}

@@ -1,0 +1,40 @@
+import type { Expr } from '../../../shared/maths/expression.ts';
+import { printExpr } from '../../../shared/maths/print.ts';
+import type { Candidate, Edit } from './edits.ts';
+import { leavesOf } from './line-parts.ts';
+import { collect, keyOf, monomialExpr, negated, spread, type Monomial } from './monomials.ts';
+import { outer, type Aim } from './mend-question.ts';
+
+const mostMissing = 2;
+
+/** Terms that are not there at all, put in where the work would have them. */
+export function* missingTerms(aim: Aim): Generator<Candidate> {
+  const [focus] = aim.roots;
+  const above = aim.wanted && spread(aim.wanted);
+  if (!focus || !above || aim.roots.length !== 1) return;
+  const own = spread(focus);
+  const missing = own && collect([...above, ...own.map(negated)]);
+  if (!missing || missing.length === 0 || missing.length > mostMissing) return;
+  const order = collect(above).map(keyOf);
+  const edits = missing.map((term) => insertion(term, focus, order));
+  const leaves = missing.reduce((count, term) => count + leavesOf(monomialExpr(term)).length, 0);
+  yield { edits, cost: 1.3 + 0.1 * leaves, touchesRight: false };
+}
+
+/** Behind the last term that comes before it in the work, else in front. */
+function insertion(term: Monomial, focus: Expr, order: readonly string[]): Edit {
+  const place = order.indexOf(keyOf(term));
+  const text = printExpr(monomialExpr(term));
+  const signed = text.startsWith('-') ? text : `+${text}`;
+  const terms = focus.kind === 'sum' ? focus.terms.map(({ expr, span }) => ({ expr, end: span.end })) : [{ expr: focus, end: outer(focus).end }];
+  let at: number | null = null;
+  for (const { expr, end } of terms) {
+    const parts = spread(expr);
+    const own = parts?.[0] ? order.indexOf(keyOf(parts[0])) : -1;
+    if (own >= 0 && own < place) at = end;
+  }
+  if (at !== null) return { start: at, end: at, text: signed };
+  const last = terms[terms.length - 1];
+  const end = last?.end ?? focus.span.end;
+  return { start: end, end, text: signed };
+}

@@ -1,0 +1,128 @@
+import type { Expr, FunctionName } from '../../../shared/maths/expression.ts';
+import { call, neg, power, product, quotient, sum } from './build.ts';
+import type { Candidate, Edit } from './edits.ts';
+import { replaceNode } from './holes.ts';
+import { nodesOf } from './line-parts.ts';
+import { hits, outer, type Aim } from './mend-question.ts';
+
+interface Shape {
+  readonly by: Expr;
+  readonly edits: readonly Edit[];
+  readonly cost: number;
+}
+
+/** Changes of how parts are joined after which the tree has the wanted values. */
+export function* shapeEdits(aim: Aim, tex: string, isRight: (node: Expr) => boolean): Generator<Candidate> {
+  for (const { node } of aim.roots.flatMap(nodesOf)) {
+    for (const { by, edits, cost } of shapesOf(node, tex)) {
+      const changed = replaceNode(aim.tree, node, by);
+      if (aim.targets.some((target) => hits(changed, target, aim.places))) yield { edits, cost, touchesRight: isRight(node) };
+    }
+  }
+}
+
+function* shapesOf(node: Expr, tex: string): Generator<Shape> {
+  switch (node.kind) {
+    case 'product':
+      yield* productAsSum(node);
+      return;
+    case 'quotient':
+      yield* turnedOver(node, tex);
+      return;
+    case 'sum':
+      yield* lastTermBelow(node);
+      return;
+    case 'call':
+    case 'log':
+      yield* factorMoved(node, tex);
+      yield* otherFunction(node, tex);
+      return;
+    default:
+  }
+}
+
+/** f(a) f(b) for f(a) + f(b), and the like. */
+function* productAsSum(node: Extract<Expr, { kind: 'product' }>): Generator<Shape> {
+  for (const k of node.joins.keys()) {
+    const [before, after] = [node.factors.slice(0, k + 1), node.factors.slice(k + 1)];
+    const [left, right] = [before[before.length - 1], after[0]];
+    if (!left || !right) continue;
+    const place = { start: outer(left).end, end: outer(right).start };
+    yield { by: sum(product(...before), product(...after)), edits: [{ ...place, text: '+' }], cost: 1.3 };
+    yield { by: sum(product(...before), neg(product(...after))), edits: [{ ...place, text: '-' }], cost: 1.35 };
+  }
+}
+
+/** Numerator and denominator exchanged. */
+function* turnedOver(node: Extract<Expr, { kind: 'quotient' }>, tex: string): Generator<Shape> {
+  const { numerator, denominator } = node;
+  if (node.written !== 'fraction') return;
+  const [above, below] = [outer(numerator), outer(denominator)];
+  const edits: Edit[] = [
+    { ...above, text: tex.slice(below.start, below.end) },
+    { ...below, text: tex.slice(above.start, above.end) },
+  ];
+  yield { by: { ...node, numerator: denominator, denominator: numerator }, edits, cost: 1.4 };
+}
+
+/** A - B for A over B: subtracted where it should have been divided by. */
+function* lastTermBelow(node: Extract<Expr, { kind: 'sum' }>): Generator<Shape> {
+  const last = node.terms[node.terms.length - 1];
+  if (!last || node.terms.length < 2 || last.sign !== 'minus') return;
+  const rest: Expr = { ...node, terms: node.terms.slice(0, -1) };
+  const edits: Edit[] = [
+    { start: node.span.start, end: node.span.start, text: '\\frac{' },
+    { start: last.span.start, end: outer(last.expr).start, text: '}{' },
+    { start: outer(last.expr).end, end: outer(last.expr).end, text: '}' },
+  ];
+  yield { by: quotient(rest, last.expr), edits, cost: 1.6 };
+}
+
+type FunctionExpr = Extract<Expr, { kind: 'call' | 'log' }>;
+
+function argumentOf(node: FunctionExpr): Expr | null {
+  if (node.kind === 'log') return node.argument;
+  return node.args.length === 1 ? (node.args[0] ?? null) : null;
+}
+
+function withArgument(node: FunctionExpr, argument: Expr): Expr {
+  return node.kind === 'log' ? { ...node, argument } : { ...node, args: [argument] };
+}
+
+/** f(5z) for 5 f(z) or f(z^5). */
+function* factorMoved(node: FunctionExpr, tex: string): Generator<Shape> {
+  const argument = argumentOf(node);
+  const [first, second, ...others] = argument?.kind === 'product' ? argument.factors : [];
+  if (!argument || !first || !second || others.length > 0 || first.kind !== 'number') return;
+  const factor = outer(first);
+  const digits = tex.slice(factor.start, factor.end);
+  const removed: Edit = { start: factor.start, end: outer(second).start, text: '' };
+  const start = node.span.start;
+  const bare = second.kind === 'letter' && /\\left\($|\($/.test(tex.slice(0, factor.start));
+  const unbracketed: Edit[] = bare ? [{ start: tex.slice(0, factor.start).replace(/(\\left)?\($/, '').length, end: node.span.end, text: ` ${tex.slice(outer(second).start, outer(second).end)}` }] : [removed];
+  yield { by: product(first, withArgument(node, second)), edits: [{ start, end: start, text: digits }, ...unbracketed], cost: 1.5 };
+  const end = outer(second).end;
+  yield { by: withArgument(node, power(second, first)), edits: [removed, { start: end, end, text: `^{${digits}}` }], cost: 1.55 };
+}
+
+const partners: Partial<Record<FunctionName, readonly FunctionName[]>> = {
+  sin: ['cos'],
+  cos: ['sin'],
+  tan: ['cot'],
+  cot: ['tan'],
+  sec: ['csc', 'cos'],
+  csc: ['sec', 'sin'],
+  sinh: ['cosh'],
+  cosh: ['sinh'],
+};
+
+/** The partner function in its place. */
+function* otherFunction(node: FunctionExpr, tex: string): Generator<Shape> {
+  if (node.kind !== 'call') return;
+  const start = node.span.start;
+  const command = `\\${node.name}`;
+  if (!tex.startsWith(command, start)) return;
+  for (const name of partners[node.name] ?? []) {
+    yield { by: call(name, ...node.args), edits: [{ start, end: start + command.length, text: `\\${name}` }], cost: 1.2 };
+  }
+}
