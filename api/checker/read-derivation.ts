@@ -31,12 +31,16 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
   const assumed = input.assume.map(read);
   const lines = input.lines.map(read);
   const assumptions = assumed.flatMap((result) => (result.ok ? [result.line] : []));
-  const all = [...assumptions, ...lines.flatMap((result) => (result.ok ? [result.line] : []))];
+  const wholeLetters = new Set(assumptions.flatMap(wholeByAssumption));
+  // Only these forms make a letter whole: most derivations have none of them, and are not walked for it.
+  if (input.lines.some((tex) => /!|binom|choose|\\sum|\\prod/.test(tex))) {
+    for (const result of lines) if (result.ok) for (const expr of exprsOf(result.line)) addWholeByUse(expr, wholeLetters);
+  }
   return {
     lines,
     assumptions,
     numbers,
-    wholeLetters: new Set([...assumptions.flatMap(wholeByAssumption), ...all.flatMap(exprsOf).flatMap(wholeByUse)]),
+    wholeLetters,
     settings: { numbers, decimal, functions },
   };
 }
@@ -65,16 +69,10 @@ function wholeByAssumption(line: Line): readonly string[] {
 }
 
 /** Letters under a factorial, in binomials and in the bounds of sums are whole numbers. */
-function wholeByUse(expr: Expr): readonly string[] {
-  const inside = childrenOf(expr).flatMap(wholeByUse);
-  switch (expr.kind) {
-    case 'factorial':
-      return [...inside, ...lettersOf(expr.operand)];
-    case 'binomial':
-      return [...inside, ...lettersOf(expr.top), ...lettersOf(expr.bottom)];
-    case 'series':
-      return [...inside, ...lettersOf(expr.from), ...lettersOf(expr.to)];
-    default:
-      return inside;
-  }
+function addWholeByUse(expr: Expr, found: Set<string>): void {
+  const add = (inside: Expr): void => lettersOf(inside).forEach((name) => found.add(name));
+  if (expr.kind === 'factorial') add(expr.operand);
+  if (expr.kind === 'binomial') [expr.top, expr.bottom].forEach(add);
+  if (expr.kind === 'series') [expr.from, expr.to].forEach(add);
+  for (const child of childrenOf(expr)) addWholeByUse(child, found);
 }

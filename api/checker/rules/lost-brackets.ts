@@ -2,10 +2,12 @@ import { readLine } from '../../../shared/maths/read.ts';
 import { sameLine } from '../../../shared/maths/same.ts';
 import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
-import { judgeLine, type Route, type WalkState, type WalkStep } from '../walk-derivation.ts';
+import { contextOf, judgeLine, type Route, type WalkState, type WalkStep } from '../walk-derivation.ts';
 import type { Regrouped } from './cases.ts';
+import { plausibleAfter } from './plausible.ts';
 
 const mostReadings = 160;
+const mostJudged = 5;
 
 /**
  * Rule 11: one pair of brackets put into a line that fails makes it follow, and the next line follows from that
@@ -19,9 +21,13 @@ export function putBrackets(route: Route, state: WalkState, step: number, failed
   // The author who goes on from what is written lost the brackets in earnest.
   if (judgeLine(route, failed.state, step + 1, next.line).result.ruling === 'holds') return null;
   const seen: Line[] = [own.line];
+  const isPlausible = plausibleAfter(state.from, contextOf(route, state));
+  let judged = 0;
   for (const { tex, line } of bracketings(own.tex, own.line, route)) {
-    if (seen.some((other) => sameLine(other, line))) continue;
+    if (!isPlausible(line) || seen.some((other) => sameLine(other, line))) continue;
     seen.push(line);
+    judged += 1;
+    if (judged > mostJudged) return null;
     const meant = judgeLine(route, state, step, line);
     if (meant.result.ruling !== 'holds') continue;
     if (judgeLine(route, meant.state, step + 1, next.line).result.ruling !== 'holds') continue;

@@ -7,7 +7,11 @@ export type DoubleFunction = (x: number) => number;
 export function toDoubleFunction(graph: Graph, letter: string, given: ReadonlyMap<string, number>): DoubleFunction {
   const needed = reachable(graph);
   const values = new Float64Array(graph.nodes.length);
-  const steps = graph.nodes.flatMap((node, index) => (needed.has(index) ? [{ node, index }] : []));
+  const steps: { readonly node: GraphNode; readonly index: number }[] = [];
+  graph.nodes.forEach((node, index) => {
+    if (node.op === 'number') values[index] = toNumber(node.value);
+    else if (needed.has(index)) steps.push({ node, index });
+  });
   return (x) => {
     for (const { node, index } of steps) values[index] = valueOf(node, values, letter, given, x);
     return values[graph.root] ?? Number.NaN;
