@@ -63,7 +63,8 @@ function knownAgreement(above: KnownValue, below: KnownValue, bits: number): Agr
   if (isNonZero(difference)) return 'apart';
   const size = Math.max(sizeOf(toBall(above, bits)), sizeOf(toBall(below, bits)));
   const doubt = Math.max(bitLength(difference.re.rad), difference.im === null ? 0 : bitLength(difference.im.rad));
-  return size - doubt >= agreeingBits ? 'same' : 'blurred';
+  // At high precision most of the bits have to agree, not only the first few.
+  return size - doubt >= Math.max(agreeingBits, bits / 2) ? 'same' : 'blurred';
 }
 
 /** Bits of the larger part. */

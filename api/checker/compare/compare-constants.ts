@@ -1,6 +1,7 @@
 import type { CheckContext } from '../context.ts';
 import { compareAt } from './agreement.ts';
 import type { Comparison } from './comparison.ts';
+import { confirmAt } from './confirm.ts';
 import { provesIdentity } from './kernel-identity.ts';
 import type { Pair } from './pair.ts';
 import { provesEqualConstants } from './separation.ts';
@@ -49,8 +50,8 @@ function equal(reached: 'proved' | 'sampled'): Comparison {
 
 /** Numbers without a proof have to agree to several hundred digits. */
 function confirmSampled(pair: Pair, context: CheckContext): Comparison {
-  const fine = compareAt(pair, nowhere, context, [3_000]);
-  if (fine.agreement === 'same') return equal('sampled');
-  const witness = fine.agreement === 'apart' ? witnessAt(pair, nowhere, fine.bits, context) : null;
+  const fine = confirmAt(pair, nowhere, context);
+  if (fine?.agreement === 'same') return equal('sampled');
+  const witness = fine?.agreement === 'apart' ? witnessAt(pair, nowhere, fine.bits, context) : null;
   return witness === null ? { kind: 'undecided', reason: 'not-settled' } : { kind: 'different', witness };
 }

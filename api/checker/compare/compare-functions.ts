@@ -3,6 +3,7 @@ import { isReal } from '../values/arithmetic.ts';
 import type { KnownValue, Point } from '../values/value.ts';
 import { breakPointsOf } from './break-points.ts';
 import type { Comparison } from './comparison.ts';
+import { confirmAt } from './confirm.ts';
 import { findConditions } from './find-conditions.ts';
 import { provesIdentity } from './kernel-identity.ts';
 import { leavesNoInterval } from './no-interior.ts';
@@ -83,21 +84,26 @@ function rule(pair: Pair, samples: Samples, region: Region, isProved: boolean, c
   const tried = Object.values(counts).reduce((a, b) => a + b, 0);
   if (counts['no-agreed-meaning'] * 6 > tried) return { kind: 'undecided', reason: 'no-agreed-meaning' };
   if (counts['not-covered'] * 2 > tried) return { kind: 'undecided', reason: 'not-covered' };
-  if (
-    counts.same >= (isProved ? 1 : agreementsNeeded) &&
-    (samples.inside || pair.names.every((name) => pair.whole.has(name)))
-  ) {
-    return {
-      kind: 'equal',
-      reached: isProved ? 'proved' : 'sampled',
-      ...findConditions(pair, samples, region, context),
-    };
-  }
+  const isInside = samples.inside || pair.names.every((name) => pair.whole.has(name));
+  if (isInside && isProved)
+    return { kind: 'equal', reached: 'proved', ...findConditions(pair, samples, region, context) };
+  if (isInside && counts.same >= agreementsNeeded) return ruleSampled(pair, samples, region, context);
   const without = ruleWithoutValues(pair, samples, context);
   if (without !== null) return without;
   if (counts.limit > 0 && counts.same === 0) return { kind: 'undecided', reason: 'limit' };
   if (counts.blurred === 0 && (counts.same === 0 || !samples.inside)) return { kind: 'undecided', reason: 'no-domain' };
   return { kind: 'undecided', reason: 'not-settled' };
+}
+
+/** Agreement at many points counts once two of them agree to as many bits as the written numbers ask for. */
+function ruleSampled(pair: Pair, samples: Samples, region: Region, context: CheckContext): Comparison {
+  for (const { point } of samples.common.slice(0, 2)) {
+    const fine = confirmAt(pair, point, context);
+    const witness = fine?.agreement === 'apart' ? witnessAt(pair, point, fine.bits, context) : null;
+    if (witness !== null) return { kind: 'different', witness };
+    if (fine?.agreement !== 'same') return { kind: 'undecided', reason: 'not-settled' };
+  }
+  return { kind: 'equal', reached: 'sampled', ...findConditions(pair, samples, region, context) };
 }
 
 /** No interval on which both have a value, where that is certain. */

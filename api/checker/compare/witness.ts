@@ -1,5 +1,5 @@
 import type { CheckContext } from '../context.ts';
-import { isKnown, toBall } from '../values/arithmetic.ts';
+import { isKnown, subKnown, toBall } from '../values/arithmetic.ts';
 import { usualDigits, valueTex } from '../values/value-tex.ts';
 import type { Point, Value } from '../values/value.ts';
 import { agreementOf } from './agreement.ts';
@@ -22,7 +22,12 @@ export function witnessAt(pair: Pair, point: Point, bits: number, context: Check
 function shownApart(above: Value, below: Value, bits: number): { above: string; below: string } {
   let digits = usualDigits;
   while (digits < mostDigits && decimals(above, bits, digits) === decimals(below, bits, digits)) digits += 3;
-  return { above: valueTex(above, bits, digits), below: valueTex(below, bits, digits) };
+  const shown = { above: valueTex(above, bits, digits), below: valueTex(below, bits, digits) };
+  if (digits < mostDigits || !isKnown(above) || !isKnown(below)) return shown;
+  // Closer than anybody wants to read: the one as the other and the difference.
+  const difference = valueTex(subKnown(above, below, bits), bits);
+  const usual = valueTex(below, bits);
+  return { above: `${usual}${difference.startsWith('-') ? '' : '+'}${difference}`, below: usual };
 }
 
 function decimals(value: Value, bits: number, digits: number): string {
