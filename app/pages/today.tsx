@@ -34,7 +34,7 @@ export function Component() {
       <Page>
         <Head
           where={where}
-          h1={running === 1 ? 'One round is running.' : `${countWord(running)} rounds are running.`}
+          h1={`${countWord(running)} ${running < 2 ? 'round is' : 'rounds are'} running.`}
           title="Rounds"
           both
           acts={

@@ -1,10 +1,13 @@
+import { useQuery } from '@tanstack/react-query';
+import { useState } from 'react';
 import { Link } from 'react-router-dom';
 import type { RoundListItem } from '../../../shared/schemas/round.ts';
 import type { TodayAnswer } from '../../../shared/schemas/today.ts';
 import { paths } from '../../lib/paths.ts';
-import { LinkButton } from '../../ui/button.tsx';
-import { EmptyState } from '../../ui/states.tsx';
+import { Button, LinkButton } from '../../ui/button.tsx';
+import { EmptyState, ErrorState, Waiting } from '../../ui/states.tsx';
 import { plural } from './today-words.ts';
+import { allRoundsQuery } from './today.queries.ts';
 import { When } from './when.tsx';
 import './today.css';
 
@@ -23,13 +26,13 @@ export function StaffToday({ today }: { readonly today: TodayAnswer }) {
         {open.length === 0 ? (
           <div className="it">
             <div className="what">
-              <EmptyState title="No round is running or planned">
+              <EmptyState title="Nothing is planned either">
                 A round takes a task and five times; it then runs by itself.
               </EmptyState>
             </div>
           </div>
         ) : null}
-        {settled.length > 0 ? <Settled rounds={settled} /> : null}
+        {open.length + settled.length > 0 ? <Settled rounds={settled} /> : null}
       </div>
       {today.joinRequests.length > 0 ? <JoinRequests requests={today.joinRequests} /> : null}
     </>
@@ -88,31 +91,61 @@ function RoundEntry({ round }: { readonly round: RoundListItem }) {
 }
 
 function Settled({ rounds }: { readonly rounds: readonly RoundListItem[] }) {
+  const [showsAll, setShowsAll] = useState(false);
   return (
     <section className="it" aria-labelledby="settled-lately">
       <div className="what">
-        <h3 id="settled-lately">Settled lately</h3>
-        <ul className="quiet-rounds">
-          {rounds.map((round) => (
-            <li key={round.id}>
-              <Link to={paths.round(round.id)}>{round.title}</Link>
-              <span className="small muted">
-                {' · '}
-                {round.className} · round {round.number} · {round.reviewsDone} of {plural(round.reviewsDealt, 'review')}{' '}
-                handed in
-              </span>
-            </li>
-          ))}
-        </ul>
+        <h2 id="settled-lately">{showsAll ? 'Settled rounds' : 'Settled lately'}</h2>
+        {showsAll ? <AllSettled /> : <SettledList rounds={rounds} />}
+        {showsAll ? null : (
+          <p className="mt-3">
+            <Button kind="quiet" small onClick={() => setShowsAll(true)}>
+              Show all settled rounds
+            </Button>
+          </p>
+        )}
       </div>
     </section>
   );
 }
 
+function SettledList({ rounds }: { readonly rounds: readonly RoundListItem[] }) {
+  if (rounds.length === 0) return <p className="small muted mt-2">None in the last two weeks.</p>;
+  return (
+    <ul className="quiet-rounds">
+      {rounds.map((round) => (
+        <li key={round.id}>
+          <Link to={paths.round(round.id)}>{round.title}</Link>
+          <span className="small muted">
+            {' · '}
+            {round.className} · round {round.number} · {round.reviewsDone} of {plural(round.reviewsDealt, 'review')}{' '}
+            handed in
+          </span>
+        </li>
+      ))}
+    </ul>
+  );
+}
+
+/** All of them, class by class. */
+function AllSettled() {
+  const all = useQuery(allRoundsQuery);
+  if (all.isError) return <ErrorState error={all.error} onRetry={() => void all.refetch()} />;
+  if (!all.data) return <Waiting />;
+  const settled = all.data.filter(({ stage }) => stage === 'settled');
+  const classes = [...new Set(settled.map(({ className }) => className))].sort();
+  return classes.map((name) => (
+    <section key={name} className="mt-4">
+      <h3>{name}</h3>
+      <SettledList rounds={settled.filter(({ className }) => className === name)} />
+    </section>
+  ));
+}
+
 function JoinRequests({ requests }: { readonly requests: TodayAnswer['joinRequests'] }) {
   return (
     <aside className="side own-eye" aria-label="People who ask to join">
-      <h3>Asking to join</h3>
+      <h2>Asking to join</h2>
       <ul className="quiet-rounds">
         {requests.map(({ classId, className, count }) => (
           <li key={classId}>

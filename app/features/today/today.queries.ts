@@ -1,4 +1,5 @@
 import { queryOptions } from '@tanstack/react-query';
+import type { RoundListItem } from '../../../shared/schemas/round.ts';
 import type { TodayAnswer } from '../../../shared/schemas/today.ts';
 import { api } from '../../lib/api.ts';
 
@@ -7,4 +8,10 @@ export const todayQuery = queryOptions({
   queryKey: ['today'],
   queryFn: ({ signal }) => api.get<TodayAnswer>('/api/today', { signal }),
   refetchInterval: 60_000,
+});
+
+/** Every round of the reader's classes, for looking back. */
+export const allRoundsQuery = queryOptions({
+  queryKey: ['rounds', 'all'],
+  queryFn: ({ signal }) => api.get<readonly RoundListItem[]>('/api/rounds', { signal }),
 });
