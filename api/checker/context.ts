@@ -11,6 +11,21 @@ export interface Definitions {
   readonly functions: ReadonlyMap<string, OwnFunction>;
 }
 
+/** What the whole derivation says about its calculus. */
+export interface CalculusScope {
+  /** Letters that it takes derivatives of, as dy/dx, by the letter that they depend on. */
+  readonly dependents: ReadonlyMap<string, string>;
+  /** Letters that it integrates by. */
+  readonly variables: ReadonlySet<string>;
+  /** Letters that play the constant of integration. */
+  readonly constants: ReadonlySet<string>;
+  readonly hasIntegral: boolean;
+  /** Whether a missing constant is a fault. */
+  readonly constantNeeded: boolean;
+  /** What was carried out before in the same step. */
+  readonly known: WeakMap<Definitions, WeakMap<Expr, Expr | null>>;
+}
+
 /** Everything besides the two lines that a ruling on a step depends on. */
 export interface CheckContext {
   readonly numbers: 'real' | 'complex';
@@ -22,6 +37,7 @@ export interface CheckContext {
   readonly seed: number;
   readonly budget: Budget;
   /** Turns a derivative, integral, limit or sum into an ordinary expression, or answers null. */
+  readonly calculus?: CalculusScope;
   readonly reduceCalculus?: (expr: Expr, context: CheckContext) => Expr | null;
 }
 

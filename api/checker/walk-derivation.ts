@@ -1,7 +1,9 @@
 import { lettersOf } from '../../shared/maths/letters.ts';
 import type { Line } from '../../shared/maths/expression.ts';
 import type { DerivationInput, UndecidedReason } from '../../shared/schemas/verdict.ts';
-import { BudgetSpent, createBudget, createContext, operationsPerStep, type CheckContext, type Definitions } from './context.ts';
+import { reduceCalculus } from './calculus/reduce.ts';
+import { scopeOf } from './calculus/scope.ts';
+import { BudgetSpent, createBudget, createContext, operationsPerStep, type CalculusScope, type CheckContext, type Definitions } from './context.ts';
 import type { ReadDerivation } from './read-derivation.ts';
 import { isolatedLetter } from './rules/formula.ts';
 import { meaningOf, type Meaning } from './rules/meaning.ts';
@@ -18,6 +20,7 @@ export interface Route {
   readonly givenLetters: readonly string[];
   readonly unknown: string | null;
   readonly given: Statement | null;
+  readonly calculus: CalculusScope;
 }
 
 /** What a derivation has come to know before a step. */
@@ -44,6 +47,7 @@ export function planRoute(input: DerivationInput, read: ReadDerivation): Route {
     givenLetters: first?.ok ? [...lettersOf(first.line)] : [],
     unknown: findUnknown(input, read),
     given: first?.ok ? toStatement(first.line) : null,
+    calculus: scopeOf(read.lines.map((result) => (result.ok ? result.line : null)), input.settings.constant ?? false),
   };
 }
 
@@ -94,8 +98,7 @@ export interface WalkStep {
 }
 
 /** Rules on the line of one step and goes on to the next. */
-export function judgeLine(route: Route, state: WalkState, step: number, line: Line): WalkStep {
-  const context = contextOf(route, state);
+export function judgeLine(route: Route, state: WalkState, step: number, line: Line, context = contextOf(route, state)): WalkStep {
   const start = startOf(route, state, step);
   const answer = start === 'not-read' ? notRead(line) : attempt(route, state, step, line, start, context);
   const { ruling, reached, notes, evidence } = answer.result;
@@ -112,6 +115,8 @@ export function contextOf(route: Route, state: WalkState): CheckContext {
     assumptions: state.assumptions,
     wholeLetters: route.read.wholeLetters,
     definitions: state.definitions,
+    calculus: route.calculus,
+    reduceCalculus,
     budget: createBudget(operationsPerStep),
   });
 }

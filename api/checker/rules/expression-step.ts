@@ -1,6 +1,7 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import type { Evidence } from '../../../shared/schemas/verdict.ts';
-import { compareExpressions } from '../compare/compare-expressions.ts';
+import { compareWithCalculus } from '../calculus/judge.ts';
+import type { Comparison } from '../compare/comparison.ts';
 import type { CheckContext } from '../context.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
@@ -9,9 +10,14 @@ export interface ExpressionAnswer extends StepResult {
   readonly shrunk: readonly Line[];
 }
 
-/** Rule 1 on two expressions. */
+/** Rules 1 and 8 on two expressions. */
 export function judgeExpressions(above: Expr, below: Expr, context: CheckContext): ExpressionAnswer {
-  const found = compareExpressions(above, below, context);
+  const { found, notes, evidence } = compareWithCalculus(above, below, context);
+  const answer = toAnswer(found);
+  return { ...answer, notes: [...answer.notes, ...notes], evidence: { ...answer.evidence, ...evidence } };
+}
+
+function toAnswer(found: Comparison): ExpressionAnswer {
   switch (found.kind) {
     case 'equal': {
       const conditions = [...found.excluded, ...found.cancelled].map((c) => c.tex);

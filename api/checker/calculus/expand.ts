@@ -1,0 +1,207 @@
+import type { Expr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import type { CheckContext } from '../context.ts';
+import * as Q from '../numbers/rational.ts';
+import { Unsettled } from '../solving/unsettled.ts';
+import { addExprs, callOf, divExprs, mulExprs, numberOf, oneExpr, piExpr, rationalOf, subExprs, zeroExpr } from './build.ts';
+import { bodyOf, differentiateTimes } from './differentiate.ts';
+import {
+  addSeries, boundedSeries, composeSeries, constantSeries, expSeries, inverseSeries, lnSeries, mulSeries, negateSeries, rationalPower,
+  scaleSeries, signOfCoefficient, splitBySize, unitScale, type Series,
+} from './series-ring.ts';
+import { substitute } from './substitute.ts';
+
+/** The expansion of an expression once the letter is a series; throws Unsettled. */
+export function expand(expr: Expr, variable: string, at: Series, context: CheckContext): Series {
+  const visit = (node: Expr): Series => {
+    context.budget.spend(4);
+    return expandNode(node, { variable, at, context, visit });
+  };
+  return visit(expr);
+}
+
+interface Expansion {
+  readonly variable: string;
+  readonly at: Series;
+  readonly context: CheckContext;
+  readonly visit: (node: Expr) => Series;
+}
+
+function expandNode(node: Expr, job: Expansion): Series {
+  const { variable, at, context, visit } = job;
+  switch (node.kind) {
+    case 'letter': {
+      if (node.name === variable) return at;
+      const definition = context.definitions.letters.get(node.name);
+      return definition ? visit(definition) : constantSeries(node);
+    }
+    case 'number':
+      return constantSeries(node);
+    case 'constant':
+      if (node.name === 'infinity') throw new Unsettled('not-covered');
+      return constantSeries(node);
+    case 'sum':
+      return node.terms.reduce((total, term) => {
+        if (term.sign !== 'plus' && term.sign !== 'minus') throw new Unsettled('not-covered');
+        const next = visit(term.expr);
+        return addSeries(total, term.sign === 'plus' ? next : negateSeries(next), context);
+      }, constantSeries(zeroExpr));
+    case 'product':
+      return node.factors.map(visit).reduce((total, next) => mulSeries(total, next, context));
+    case 'quotient':
+      return mulSeries(visit(node.numerator), inverseSeries(visit(node.denominator), context), context);
+    case 'power':
+      return expandPower(node.base, node.exponent, job);
+    case 'root':
+      return expandPower(node.radicand, node.degree ? divExprs(oneExpr, node.degree) : numberOf(1, 2), job);
+    case 'log':
+      return visit(divExprs(callOf('ln', node.argument), callOf('ln', node.base ?? numberOf(10))));
+    case 'call':
+      return expandCall(node, job);
+    case 'apply':
+      return visit(bodyOf(node, context));
+    default: {
+      if (!lettersOf(node).includes(variable)) return constantSeries(node);
+      const reduced = context.reduceCalculus?.(node, context);
+      if (!reduced || reduced.kind === node.kind) throw new Unsettled('not-covered');
+      return visit(reduced);
+    }
+  }
+}
+
+function expandPower(base: Expr, exponent: Expr, { context, visit, variable }: Expansion): Series {
+  const r = rationalOf(exponent);
+  if (r) return rationalPower(visit(base), r, context);
+  if (!lettersOf(base).includes(variable) && !lettersOf(exponent).includes(variable)) return constantSeries({ kind: 'power', base, exponent, span: base.span });
+  if (base.kind === 'constant' && base.name === 'e') return expSeries(visit(exponent), context);
+  return expSeries(mulSeries(visit(exponent), lnSeries(visit(base), context), context), context);
+}
+
+function expandCall(node: Extract<Expr, { kind: 'call' }>, job: Expansion): Series {
+  const { context, visit } = job;
+  const [u] = node.args;
+  if (u === undefined || node.args.length !== 1) throw new Unsettled('not-covered');
+  if (!lettersOf(node).includes(job.variable) && context.definitions.letters.size === 0) return constantSeries(node);
+  switch (node.name) {
+    case 'exp':
+      return expSeries(visit(u), context);
+    case 'ln':
+      return lnSeries(visit(u), context);
+    case 'sin':
+    case 'cos':
+      return expandCircular(node.name, visit(u), context);
+    case 'abs':
+    case 'sign':
+      return expandBars(node.name, visit(u), context);
+    case 'arctan':
+      return expandArctan(visit(u), context);
+    default: {
+      const other = rewritten(node.name, u);
+      return other ? visit(other) : expandTaylor(node.name, visit(u), context);
+    }
+  }
+}
+
+const half = numberOf(1, 2);
+
+/** Functions by way of those that are expanded directly. */
+function rewritten(name: Extract<Expr, { kind: 'call' }>['name'], u: Expr): Expr | null {
+  const exp = (sign: 1 | -1): Expr => callOf('exp', mulExprs(numberOf(sign), u));
+  const of = (other: 'sin' | 'cos' | 'sinh' | 'cosh'): Expr => callOf(other, u);
+  switch (name) {
+    case 'tan':
+      return divExprs(of('sin'), of('cos'));
+    case 'cot':
+      return divExprs(of('cos'), of('sin'));
+    case 'sec':
+      return divExprs(oneExpr, of('cos'));
+    case 'csc':
+      return divExprs(oneExpr, of('sin'));
+    case 'sinh':
+      return mulExprs(half, subExprs(exp(1), exp(-1)));
+    case 'cosh':
+      return mulExprs(half, addExprs(exp(1), exp(-1)));
+    case 'tanh':
+      return divExprs(of('sinh'), of('cosh'));
+    case 'coth':
+      return divExprs(of('cosh'), of('sinh'));
+    case 'sech':
+      return divExprs(oneExpr, of('cosh'));
+    case 'csch':
+      return divExprs(oneExpr, of('sinh'));
+    case 'arccos':
+      return subExprs(divExprs(piExpr, numberOf(2)), callOf('arcsin', u));
+    case 'degrees':
+      return mulExprs(u, divExprs(piExpr, numberOf(180)));
+    default:
+      return null;
+  }
+}
+
+/** A sine or cosine of what grows is bounded, and no more is known. */
+function expandCircular(name: 'sin' | 'cos', a: Series, context: CheckContext): Series {
+  const { large, constant, small } = splitBySize(a, context);
+  if (large.length > 0) {
+    if (context.numbers === 'complex') throw new Unsettled('not-covered');
+    return boundedSeries(unitScale);
+  }
+  const sine = composeSeries((k) => (k % 2 === 0 ? zeroExpr : numberOf(k % 4 === 1 ? 1 : -1, factorial(k))), small, context);
+  const cosine = composeSeries((k) => (k % 2 === 1 ? zeroExpr : numberOf(k % 4 === 0 ? 1 : -1, factorial(k))), small, context);
+  if (constant === null) return name === 'sin' ? sine : cosine;
+  const [s, c] = [callOf('sin', constant), callOf('cos', constant)];
+  if (name === 'sin') return addSeries(scaleSeries(cosine, s, context), scaleSeries(sine, c, context), context);
+  return addSeries(scaleSeries(cosine, c, context), negateSeries(scaleSeries(sine, s, context)), context);
+}
+
+function factorial(k: number): bigint {
+  let product = 1n;
+  for (let j = 2; j <= k; j += 1) product *= BigInt(j);
+  return product;
+}
+
+function expandBars(name: 'abs' | 'sign', a: Series, context: CheckContext): Series {
+  if (context.numbers === 'complex') throw new Unsettled('not-covered');
+  const [lead] = a.terms;
+  if (!lead) throw new Unsettled('not-settled');
+  const known = signOfCoefficient(lead.coef, context);
+  if (name === 'sign') return constantSeries(numberOf(known));
+  return known < 0 ? negateSeries(a) : a;
+}
+
+/** arctan(c + d) = arctan c + arctan(d / (1 + c^2 + c d)); beyond all bounds it is pi/2 less that of the inverse. */
+function expandArctan(a: Series, context: CheckContext): Series {
+  const { large, constant, small } = splitBySize(a, context);
+  if (large[0]) {
+    const known = signOfCoefficient(large[0].coef, context);
+    const rest = negateSeries(expandArctan(inverseSeries(a, context), context));
+    return addSeries(constantSeries(mulExprs(numberOf(known, 2), piExpr)), rest, context);
+  }
+  const tail = (z: Series): Series => composeSeries((k) => (k % 2 === 0 ? zeroExpr : numberOf(k % 4 === 1 ? 1 : -1, k)), z, context);
+  if (constant === null) return tail(small);
+  const bottom = addSeries(constantSeries(addExprs(oneExpr, mulExprs(constant, constant))), scaleSeries(small, constant, context), context);
+  const z = mulSeries(small, inverseSeries(bottom, context), context);
+  return addSeries(constantSeries(callOf('arctan', constant)), tail(z), context);
+}
+
+const taylorOrder = 5;
+const smooth: ReadonlySet<string> = new Set(['arcsin', 'arsinh', 'artanh', 'arccot', 'arcsec', 'arccsc', 'arcosh']);
+
+/** Taylor's series at an inner point of the domain, as far as its derivatives have values. */
+function expandTaylor(name: Extract<Expr, { kind: 'call' }>['name'], a: Series, context: CheckContext): Series {
+  const { large, constant, small } = splitBySize(a, context);
+  if (!smooth.has(name) || large.length > 0) throw new Unsettled('not-covered');
+  const letter = 'z_{0}';
+  const call = callOf(name, { kind: 'letter', name: letter, span: { start: 0, end: 0 } });
+  const at = constant ?? zeroExpr;
+  const size = small.terms[0]?.scale ?? small.error;
+  let total = constantSeries(callOf(name, at));
+  let power = constantSeries(oneExpr);
+  for (let k = 1; k <= taylorOrder; k += 1) {
+    power = mulSeries(power, small, context);
+    const slope = substitute(differentiateTimes(call, letter, k, context), letter, at);
+    total = addSeries(total, scaleSeries(power, divExprs(slope, numberOf(factorial(k))), context), context);
+  }
+  if (!size) return total;
+  const beyond = rationalPower({ terms: [{ coef: oneExpr, scale: size }], error: null }, Q.rational(taylorOrder + 1), context).terms[0];
+  return addSeries(total, boundedSeries(beyond?.scale ?? size), context);
+}

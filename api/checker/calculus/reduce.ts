@@ -1,0 +1,116 @@
+import type { Expr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { sameExpr } from '../../../shared/maths/same.ts';
+import { mapExpr } from '../../../shared/maths/walk.ts';
+import type { CheckContext } from '../context.ts';
+import { Unsettled } from '../solving/unsettled.ts';
+import { isKnown } from '../values/arithmetic.ts';
+import { evaluate } from '../values/evaluate.ts';
+import { findAntiderivative, withoutDefinition } from './antiderivative.ts';
+import { subExprs, zeroExpr } from './build.ts';
+import { throughAntiderivative } from './definite.ts';
+import { bodyOf, differentiateTimes } from './differentiate.ts';
+import { infinitySign, limitExpr, limitOf, sideLimit } from './limit.ts';
+import { rateExpr } from './rates.ts';
+import { closedSeries } from './series.ts';
+import { substitute } from './substitute.ts';
+
+/** Carries out a derivative, definite integral, limit or sum: an ordinary expression, or null where that is not certain. */
+export function reduceCalculus(expr: Expr, context: CheckContext): Expr | null {
+  const known = context.calculus?.known;
+  const memory = known?.get(context.definitions) ?? new WeakMap<Expr, Expr | null>();
+  if (known && !known.has(context.definitions)) known.set(context.definitions, memory);
+  const found = memory.get(expr);
+  if (found !== undefined) return found;
+  const result = attempt(expr, context);
+  memory.set(expr, result);
+  return result;
+}
+
+function attempt(expr: Expr, context: CheckContext): Expr | null {
+  try {
+    return reduceNode(expr, context);
+  } catch (cause) {
+    if (cause instanceof Unsettled) return null;
+    throw cause;
+  }
+}
+
+function reduceNode(node: Expr, context: CheckContext): Expr | null {
+  switch (node.kind) {
+    case 'derivative': {
+      const operand = carriedOut(node.operand, context);
+      return differentiateTimes(operand, node.variable, node.order, context, node.partial);
+    }
+    case 'rate':
+      return reduceRate(node, context);
+    case 'apply':
+      return bodyOf(node, context);
+    case 'integral':
+      return reduceIntegral(node, context);
+    case 'evaluated':
+      return reduceEvaluated(node, context);
+    case 'limit':
+      return limitExpr(limitOf({ ...node, operand: carriedOut(node.operand, context) }, withoutDefinition(context, node.variable)));
+    case 'series':
+      return closedSeries(node, context);
+    default:
+      return null;
+  }
+}
+
+const operators: ReadonlySet<Expr['kind']> = new Set(['derivative', 'rate', 'integral', 'evaluated', 'limit']);
+
+/** With the operators inside carried out where that can be done. */
+export function carriedOut(expr: Expr, context: CheckContext): Expr {
+  return mapExpr(expr, (node) => (operators.has(node.kind) ? (reduceCalculus(node, context) ?? node) : node));
+}
+
+/** The derivative of what a letter or function was said to be; else a quantity of its own. */
+function reduceRate(node: Extract<Expr, { kind: 'rate' }>, context: CheckContext): Expr {
+  const definition = context.definitions.letters.get(node.of);
+  const own = context.definitions.functions.get(node.of);
+  const body = definition ?? own?.value;
+  if (body) return differentiateTimes(body, node.by, node.order, context, node.partial ?? false);
+  return rateExpr(node);
+}
+
+function reduceIntegral(node: Extract<Expr, { kind: 'integral' }>, context: CheckContext): Expr | null {
+  const { from, to, variable } = node;
+  if (!from || !to) return null;
+  const inner = withoutDefinition(context, variable);
+  const integrand = carriedOut(node.integrand, inner);
+  if (sameExpr(from, to)) return isKnownAt(integrand, variable, from, inner) ? zeroExpr : null;
+  const primitive = findAntiderivative(integrand, variable, inner);
+  return primitive && throughAntiderivative(primitive, { variable, from, to }, inner);
+}
+
+function isKnownAt(expr: Expr, variable: string, at: Expr, context: CheckContext): boolean {
+  return isKnown(evaluate(substitute(expr, variable, at), new Map(), 96, context)) || lettersOf(at).length > 0;
+}
+
+/** F at the upper end less F at the lower; an end without a value is approached from inside. */
+function reduceEvaluated(node: Extract<Expr, { kind: 'evaluated' }>, context: CheckContext): Expr | null {
+  const operand = carriedOut(node.operand, context);
+  const variable = node.variable ?? onlyLetter(operand, context);
+  if (variable === null) return lettersOf(operand).length === 0 && node.from ? zeroExpr : null;
+  const inner = withoutDefinition(context, variable);
+  const upper = valueAt(operand, variable, node.to, 'left', inner);
+  if (!node.from) return upper;
+  return subExprs(upper, valueAt(operand, variable, node.from, 'right', inner));
+}
+
+function valueAt(operand: Expr, variable: string, at: Expr, side: 'left' | 'right', context: CheckContext): Expr {
+  const put = substitute(operand, variable, at);
+  if (infinitySign(at) === null && (lettersOf(put).length > 0 || evaluate(put, new Map(), 96, context).kind !== 'undefined')) return put;
+  return limitExpr(sideLimit(operand, variable, { to: at, side }, context));
+}
+
+/** The letter that an evaluation bracket is about, where only one can be meant. */
+export function onlyLetter(operand: Expr, context: CheckContext): string | null {
+  const letters = lettersOf(operand);
+  if (letters.length === 1) return letters[0] as string;
+  const meant = letters.filter((name) => context.calculus?.variables.has(name));
+  if (meant.length === 1) return meant[0] as string;
+  return letters.length > 1 && letters.includes('x') && meant.length === 0 ? 'x' : null;
+}
