@@ -72,13 +72,14 @@ function isolateInUnit(start: Polynomial): { numerator: bigint; bits: number; ex
   return found;
 }
 
-function positiveRoots(p: Polynomial): RootInterval[] {
+/** The roots above zero of p, as roots of `whole`, which may be zero at zero as well. */
+function positiveRoots(p: Polynomial, whole: Polynomial): RootInterval[] {
   const bits = BigInt(rootBoundBits(p));
   const scaled = p.map((c, k) => c << (bits * BigInt(k)));
   return isolateInUnit(scaled).map(({ numerator, bits: depth, exact }) => {
     const scale = 1n << BigInt(depth);
     const low = rational(numerator << bits, scale);
-    return exact ? { low, high: low } : toRoot(p, { low, high: rational((numerator + 1n) << bits, scale) });
+    return exact ? { low, high: low } : toRoot(whole, { low, high: rational((numerator + 1n) << bits, scale) });
   });
 }
 
@@ -136,9 +137,9 @@ export function isolateRealRoots(p: Polynomial): RootInterval[] {
     roots.push({ low: none, high: none });
     rest = rest.slice(1);
   }
-  roots.push(...positiveRoots(rest));
-  const mirrored = rest.map((c, k) => (k % 2 === 0 ? c : -c));
-  for (const root of positiveRoots(mirrored)) {
+  roots.push(...positiveRoots(rest, p));
+  const mirror = (q: Polynomial): Polynomial => q.map((c, k) => (k % 2 === 0 ? c : -c));
+  for (const root of positiveRoots(mirror(rest), mirror(p))) {
     roots.push({ low: negated(root.high), high: negated(root.low) });
   }
   return roots
