@@ -17,7 +17,7 @@ export async function giveAlias(manager: EntityManager, classId: string, userId:
 }
 
 /** A handful of free aliases to choose from. */
-export async function offerAliases(manager: EntityManager, classId: string, count: number): Promise<string[]> {
+export async function drawAliases(manager: EntityManager, classId: string, count: number): Promise<string[]> {
   return drawFree(await takenAliases(manager, classId), count);
 }
 

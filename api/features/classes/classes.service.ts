@@ -9,12 +9,13 @@ import type {
 } from '../../../shared/schemas/class.ts';
 import { notFound, ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
+import { bind } from '../../lib/bind.ts';
 import type { Now } from '../../lib/clock.ts';
 import { createCode } from '../../lib/secrets.ts';
 import { recordAudit } from '../audit/record.ts';
 import { School } from '../people/people.entity.ts';
 import { getAccess } from './access.ts';
-import { offerAliases, takeAlias } from './aliases.ts';
+import { drawAliases, takeAlias } from './aliases.ts';
 import { Class, Membership } from './classes.entity.ts';
 import { toClassAnswer } from './classes.presenter.ts';
 
@@ -27,127 +28,156 @@ export interface ClassesDeps {
 export type ClassesService = ReturnType<typeof createClassesService>;
 
 /** Classes and their settings; people in them are in members.service. */
-export function createClassesService({ db, now }: ClassesDeps) {
+export function createClassesService(deps: ClassesDeps) {
+  return bind(deps, {
+    listClasses,
+    createClass,
+    getClass,
+    changeSettings,
+    renewCode,
+    startTerm,
+    setArchived,
+    getOwnPlace,
+    offerAliases,
+    changeAlias,
+  });
+}
+
+async function listClasses(deps: ClassesDeps, viewer: Viewer): Promise<ClassListItem[]> {
+  const rows: ListRow[] = await deps.db.query(LIST_SQL, [viewer.userId]);
+  return rows.map((row) => ({
+    id: row.id,
+    name: row.name,
+    timeZone: row.time_zone,
+    role: row.role,
+    archived: row.archived_at !== null,
+    students: row.role === 'student' ? null : Number(row.students),
+    waiting: row.role === 'teacher' ? Number(row.waiting) : null,
+  }));
+}
+
+async function createClass(
+  deps: ClassesDeps,
+  viewer: Viewer,
+  form: z.infer<typeof newClassSchema>,
+): Promise<{ id: string }> {
+  return await deps.db.transaction(async (manager) => {
+    await refuseTakenName(manager, viewer.schoolId, form.name, null);
+    const made = await manager.save(
+      manager.create(Class, {
+        ...form,
+        schoolId: viewer.schoolId,
+        joinCode: createCode(CLASS_CODE_LENGTH),
+        aliasTermStartsAt: deps.now(),
+        createdAt: deps.now(),
+      }),
+    );
+    await manager.insert(Membership, {
+      classId: made.id,
+      userId: viewer.userId,
+      role: 'teacher',
+      joinedAt: deps.now(),
+    });
+    await recordAudit(manager, {
+      ...trail(deps, viewer, made.id),
+      action: 'class.created',
+      after: { name: form.name },
+    });
+    return { id: made.id };
+  });
+}
+
+async function getClass(deps: ClassesDeps, viewer: Viewer, classId: string): Promise<ClassAnswer> {
+  const access = await getAccess(deps.db.manager, classId, viewer, ['teacher']);
+  return await toClassAnswer(deps.db.manager, access.class);
+}
+
+async function changeSettings(
+  deps: ClassesDeps,
+  viewer: Viewer,
+  classId: string,
+  form: z.infer<typeof classSettingsSchema>,
+): Promise<void> {
+  await deps.db.transaction(async (manager) => {
+    const { class: before } = await getAccess(manager, classId, viewer, ['teacher']);
+    if (form.name !== undefined) await refuseTakenName(manager, before.schoolId, form.name, classId);
+    if (Object.keys(form).length === 0) return;
+    await manager.update(Class, { id: classId }, form);
+    const old = Object.fromEntries(Object.keys(form).map((key) => [key, before[key as keyof typeof form]]));
+    await recordAudit(manager, {
+      ...trail(deps, viewer, classId),
+      action: 'class.settings-changed',
+      before: old,
+      after: form,
+    });
+  });
+}
+
+async function renewCode(deps: ClassesDeps, viewer: Viewer, classId: string): Promise<{ joinCode: string }> {
+  return await deps.db.transaction(async (manager) => {
+    await getAccess(manager, classId, viewer, ['teacher']);
+    const joinCode = createCode(CLASS_CODE_LENGTH);
+    await manager.update(Class, { id: classId }, { joinCode });
+    await recordAudit(manager, { ...trail(deps, viewer, classId), action: 'class.code-renewed' });
+    return { joinCode };
+  });
+}
+
+/** Lets every student choose a new alias once; done when a term begins. */
+async function startTerm(deps: ClassesDeps, viewer: Viewer, classId: string): Promise<void> {
+  await deps.db.transaction(async (manager) => {
+    await getAccess(manager, classId, viewer, ['teacher']);
+    await manager.update(Class, { id: classId }, { aliasTermStartsAt: deps.now() });
+    await recordAudit(manager, { ...trail(deps, viewer, classId), action: 'class.term-started' });
+  });
+}
+
+async function setArchived(deps: ClassesDeps, viewer: Viewer, classId: string, archived: boolean): Promise<void> {
+  await deps.db.transaction(async (manager) => {
+    await getAccess(manager, classId, viewer, ['teacher']);
+    await manager.update(Class, { id: classId }, { archivedAt: archived ? deps.now() : null });
+    await recordAudit(manager, {
+      ...trail(deps, viewer, classId),
+      action: archived ? 'class.archived' : 'class.brought-back',
+    });
+  });
+}
+
+/** One's own place in a class, for students and assistants. */
+async function getOwnPlace(deps: ClassesDeps, viewer: Viewer, classId: string): Promise<OwnPlaceAnswer> {
+  const { class: found, membership } = await getAccess(deps.db.manager, classId, viewer, ['student', 'assistant']);
+  const school = await deps.db.getRepository(School).findOneByOrFail({ id: found.schoolId });
   return {
-    async listClasses(viewer: Viewer): Promise<ClassListItem[]> {
-      const rows: ListRow[] = await db.query(LIST_SQL, [viewer.userId]);
-      return rows.map((row) => ({
-        id: row.id,
-        name: row.name,
-        timeZone: row.time_zone,
-        role: row.role,
-        archived: row.archived_at !== null,
-        students: row.role === 'student' ? null : Number(row.students),
-        waiting: row.role === 'teacher' ? Number(row.waiting) : null,
-      }));
-    },
-
-    async createClass(viewer: Viewer, form: z.infer<typeof newClassSchema>): Promise<{ id: string }> {
-      return await db.transaction(async (manager) => {
-        await refuseTakenName(manager, viewer.schoolId, form.name, null);
-        const made = await manager.save(
-          manager.create(Class, {
-            ...form,
-            schoolId: viewer.schoolId,
-            joinCode: createCode(CLASS_CODE_LENGTH),
-            aliasTermStartsAt: now(),
-            createdAt: now(),
-          }),
-        );
-        await manager.insert(Membership, { classId: made.id, userId: viewer.userId, role: 'teacher', joinedAt: now() });
-        await recordAudit(manager, { ...trail(viewer, made.id), action: 'class.created', after: { name: form.name } });
-        return { id: made.id };
-      });
-    },
-
-    async getClass(viewer: Viewer, classId: string): Promise<ClassAnswer> {
-      const access = await getAccess(db.manager, classId, viewer, ['teacher']);
-      return await toClassAnswer(db.manager, access.class);
-    },
-
-    async changeSettings(viewer: Viewer, classId: string, form: z.infer<typeof classSettingsSchema>): Promise<void> {
-      await db.transaction(async (manager) => {
-        const { class: before } = await getAccess(manager, classId, viewer, ['teacher']);
-        if (form.name !== undefined) await refuseTakenName(manager, before.schoolId, form.name, classId);
-        if (Object.keys(form).length === 0) return;
-        await manager.update(Class, { id: classId }, form);
-        const old = Object.fromEntries(Object.keys(form).map((key) => [key, before[key as keyof typeof form]]));
-        await recordAudit(manager, {
-          ...trail(viewer, classId),
-          action: 'class.settings-changed',
-          before: old,
-          after: form,
-        });
-      });
-    },
-
-    async renewCode(viewer: Viewer, classId: string): Promise<{ joinCode: string }> {
-      return await db.transaction(async (manager) => {
-        await getAccess(manager, classId, viewer, ['teacher']);
-        const joinCode = createCode(CLASS_CODE_LENGTH);
-        await manager.update(Class, { id: classId }, { joinCode });
-        await recordAudit(manager, { ...trail(viewer, classId), action: 'class.code-renewed' });
-        return { joinCode };
-      });
-    },
-
-    /** Lets every student choose a new alias once; done when a term begins. */
-    async startTerm(viewer: Viewer, classId: string): Promise<void> {
-      await db.transaction(async (manager) => {
-        await getAccess(manager, classId, viewer, ['teacher']);
-        await manager.update(Class, { id: classId }, { aliasTermStartsAt: now() });
-        await recordAudit(manager, { ...trail(viewer, classId), action: 'class.term-started' });
-      });
-    },
-
-    async setArchived(viewer: Viewer, classId: string, archived: boolean): Promise<void> {
-      await db.transaction(async (manager) => {
-        await getAccess(manager, classId, viewer, ['teacher']);
-        await manager.update(Class, { id: classId }, { archivedAt: archived ? now() : null });
-        await recordAudit(manager, {
-          ...trail(viewer, classId),
-          action: archived ? 'class.archived' : 'class.brought-back',
-        });
-      });
-    },
-
-    /** One's own place in a class, for students and assistants. */
-    async getOwnPlace(viewer: Viewer, classId: string): Promise<OwnPlaceAnswer> {
-      const { class: found, membership } = await getAccess(db.manager, classId, viewer, ['student', 'assistant']);
-      const school = await db.getRepository(School).findOneByOrFail({ id: found.schoolId });
-      return {
-        id: found.id,
-        name: found.name,
-        timeZone: found.timeZone,
-        role: membership.role === 'student' ? 'student' : 'assistant',
-        alias: membership.alias,
-        aliasChangeable: isAliasChangeable(found, membership),
-        standingsOn: found.standingsOn && school.standingsAllowed,
-        standingsOptOut: membership.standingsOptOut,
-      };
-    },
-
-    async offerAliases(viewer: Viewer, classId: string): Promise<{ aliases: string[] }> {
-      await getAccess(db.manager, classId, viewer, ['student']);
-      return { aliases: await offerAliases(db.manager, classId, 6) };
-    },
-
-    async changeAlias(viewer: Viewer, classId: string, alias: string): Promise<void> {
-      await db.transaction(async (manager) => {
-        const { class: found, membership } = await getAccess(manager, classId, viewer, ['student']);
-        if (!isAliasChangeable(found, membership)) {
-          throw new ProblemError('conflict', {
-            detail: 'An alias can be changed once a term. Your teacher starts a new term.',
-          });
-        }
-        await takeAlias(manager, membership, alias, now());
-      });
-    },
+    id: found.id,
+    name: found.name,
+    timeZone: found.timeZone,
+    role: membership.role === 'student' ? 'student' : 'assistant',
+    alias: membership.alias,
+    aliasChangeable: isAliasChangeable(found, membership),
+    standingsOn: found.standingsOn && school.standingsAllowed,
+    standingsOptOut: membership.standingsOptOut,
   };
+}
 
-  function trail(viewer: Viewer, classId: string) {
-    return { schoolId: viewer.schoolId, actorId: viewer.userId, at: now(), objectKind: 'class', objectId: classId };
-  }
+async function offerAliases(deps: ClassesDeps, viewer: Viewer, classId: string): Promise<{ aliases: string[] }> {
+  await getAccess(deps.db.manager, classId, viewer, ['student']);
+  return { aliases: await drawAliases(deps.db.manager, classId, 6) };
+}
+
+async function changeAlias(deps: ClassesDeps, viewer: Viewer, classId: string, alias: string): Promise<void> {
+  await deps.db.transaction(async (manager) => {
+    const { class: found, membership } = await getAccess(manager, classId, viewer, ['student']);
+    if (!isAliasChangeable(found, membership)) {
+      throw new ProblemError('conflict', {
+        detail: 'An alias can be changed once a term. Your teacher starts a new term.',
+      });
+    }
+    await takeAlias(manager, membership, alias, deps.now());
+  });
+}
+
+function trail(deps: ClassesDeps, viewer: Viewer, classId: string) {
+  return { schoolId: viewer.schoolId, actorId: viewer.userId, at: deps.now(), objectKind: 'class', objectId: classId };
 }
 
 function isAliasChangeable(found: Class, membership: Membership): boolean {

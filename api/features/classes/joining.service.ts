@@ -2,6 +2,7 @@ import { IsNull, type DataSource, type EntityManager } from 'typeorm';
 import type { InvitationAnswer } from '../../../shared/schemas/people.ts';
 import { notFound, ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
+import { bind } from '../../lib/bind.ts';
 import type { Now } from '../../lib/clock.ts';
 import type { RateLimiter } from '../../lib/rate-limit.ts';
 import { createToken, sha256 } from '../../lib/secrets.ts';
@@ -32,137 +33,167 @@ export type JoiningService = ReturnType<typeof createJoiningService>;
 
 /** The ways into a class: its code, or an invitation. */
 export function createJoiningService(deps: JoiningDeps) {
-  const { db, now, queueMail } = deps;
+  return bind(deps, {
+    findClassOfCode,
+    signUpByMail,
+    signUpByName,
+    joinByCode,
+    findInvitation,
+    acceptInvitation,
+    acceptSignedIn,
+  });
+}
 
-  async function findClassByCode(manager: EntityManager, code: string): Promise<Class> {
-    const found = await manager.findOneBy(Class, { joinCode: code, joinOpen: true, archivedAt: IsNull() });
-    if (!found)
-      throw new ProblemError('gone', { detail: 'No class takes this code now. Ask your teacher for the current one.' });
-    return found;
-  }
+/** What the holder of a code may know of its class. */
+async function findClassOfCode(deps: JoiningDeps, code: string): Promise<{ className: string; hasEmail: boolean }> {
+  const found = await findClassByCode(deps.db.manager, code);
+  return { className: found.name, hasEmail: found.hasEmail };
+}
 
-  async function createStudent(
-    manager: EntityManager,
-    schoolId: string,
-    role: User['role'],
-    person: NewPerson,
-    email: string | null,
-  ) {
-    const userName = email === null ? (person.userName ?? null) : null;
-    if (email === null && userName === null) throw fieldError('/userName', 'Choose a user name.');
-    deps.refuseCommonPassword(person.password, [person.name, email, userName]);
-    if (userName !== null && (await manager.existsBy(User, { schoolId, userName }))) {
-      throw fieldError('/userName', 'This user name is taken in your school. Choose another.');
+/** Mails a link that makes the account, or tells an account's owner to sign in; the answer is the same. */
+async function signUpByMail(deps: JoiningDeps, code: string, email: string): Promise<void> {
+  await deps.rateLimiter.count(`sign-up of ${email}`, 4, 3600);
+  await deps.db.transaction(async (manager) => {
+    const target = await findClassByCode(manager, code);
+    if (await manager.existsBy(User, { email })) {
+      await deps.queueMail(manager, {
+        kind: 'already-here',
+        userId: null,
+        to: email,
+        data: { className: target.name },
+      });
+      return;
     }
-    const row = manager.create(User, {
-      schoolId,
-      role,
-      name: person.name,
+    const token = await createInvitation(manager, {
+      schoolId: target.schoolId,
+      classId: target.id,
+      role: 'student',
+      name: '',
       email,
-      userName,
-      passwordHash: await deps.hashPassword(person.password),
+      createdById: null,
+      asksToJoin: true,
+      expiresAt: daysFrom(deps.now(), SIGN_UP_DAYS),
     });
-    return await manager.save(row);
-  }
+    await deps.queueMail(manager, {
+      kind: 'sign-up',
+      userId: null,
+      to: email,
+      data: { className: target.name, token },
+    });
+  });
+}
 
+/** Makes the account at once, for a class without e-mail; the teacher still accepts. */
+async function signUpByName(deps: JoiningDeps, code: string, person: NewPerson, userAgent: string): Promise<string> {
+  const userId = await deps.db.transaction(async (manager) => {
+    const target = await findClassByCode(manager, code);
+    if (target.hasEmail) throw fieldError('/userName', 'This class signs up by e-mail.');
+    const user = await createStudent(deps, manager, target.schoolId, 'student', person, null);
+    await askToJoin(manager, target, user, deps.now(), deps.queueMail);
+    return user.id;
+  });
+  return await deps.beginSession(userId, userAgent);
+}
+
+/** Somebody with an account asks to join a further class of the same school. */
+async function joinByCode(
+  deps: JoiningDeps,
+  viewer: Viewer,
+  code: string,
+): Promise<{ accepted: boolean; className: string }> {
+  await deps.rateLimiter.count(`class codes of ${viewer.userId}`, 10, 600);
+  return await deps.db.transaction(async (manager) => {
+    const target = await findClassByCode(manager, code);
+    if (target.schoolId !== viewer.schoolId)
+      throw new ProblemError('gone', { detail: 'This code belongs to another school.' });
+    if (await manager.existsBy(Membership, { classId: target.id, userId: viewer.userId, removedAt: IsNull() })) {
+      throw new ProblemError('conflict', { detail: `You are in ${target.name} already.` });
+    }
+    const user = await manager.findOneByOrFail(User, { id: viewer.userId });
+    return { accepted: await askToJoin(manager, target, user, deps.now(), deps.queueMail), className: target.name };
+  });
+}
+
+async function findInvitation(deps: JoiningDeps, token: string): Promise<InvitationAnswer> {
+  const found = await findOpenInvitation(deps.db.manager, token, deps.now());
+  const hasAccount = found.email !== null && (await deps.db.getRepository(User).existsBy({ email: found.email }));
   return {
-    /** What the holder of a code may know of its class. */
-    async findClassOfCode(code: string): Promise<{ className: string; hasEmail: boolean }> {
-      const found = await findClassByCode(db.manager, code);
-      return { className: found.name, hasEmail: found.hasEmail };
-    },
-
-    /** Mails a link that makes the account, or tells an account's owner to sign in; the answer is the same. */
-    async signUpByMail(code: string, email: string): Promise<void> {
-      await deps.rateLimiter.count(`sign-up of ${email}`, 4, 3600);
-      await db.transaction(async (manager) => {
-        const target = await findClassByCode(manager, code);
-        if (await manager.existsBy(User, { email })) {
-          await queueMail(manager, { kind: 'already-here', userId: null, to: email, data: { className: target.name } });
-          return;
-        }
-        const token = await createInvitation(manager, {
-          schoolId: target.schoolId,
-          classId: target.id,
-          role: 'student',
-          name: '',
-          email,
-          createdById: null,
-          asksToJoin: true,
-          expiresAt: daysFrom(now(), SIGN_UP_DAYS),
-        });
-        await queueMail(manager, { kind: 'sign-up', userId: null, to: email, data: { className: target.name, token } });
-      });
-    },
-
-    /** Makes the account at once, for a class without e-mail; the teacher still accepts. */
-    async signUpByName(code: string, person: NewPerson, userAgent: string): Promise<string> {
-      const userId = await db.transaction(async (manager) => {
-        const target = await findClassByCode(manager, code);
-        if (target.hasEmail) throw fieldError('/userName', 'This class signs up by e-mail.');
-        const user = await createStudent(manager, target.schoolId, 'student', person, null);
-        await askToJoin(manager, target, user, now(), queueMail);
-        return user.id;
-      });
-      return await deps.beginSession(userId, userAgent);
-    },
-
-    /** Somebody with an account asks to join a further class of the same school. */
-    async joinByCode(viewer: Viewer, code: string): Promise<{ accepted: boolean; className: string }> {
-      await deps.rateLimiter.count(`class codes of ${viewer.userId}`, 10, 600);
-      return await db.transaction(async (manager) => {
-        const target = await findClassByCode(manager, code);
-        if (target.schoolId !== viewer.schoolId)
-          throw new ProblemError('gone', { detail: 'This code belongs to another school.' });
-        if (await manager.existsBy(Membership, { classId: target.id, userId: viewer.userId, removedAt: IsNull() })) {
-          throw new ProblemError('conflict', { detail: `You are in ${target.name} already.` });
-        }
-        const user = await manager.findOneByOrFail(User, { id: viewer.userId });
-        return { accepted: await askToJoin(manager, target, user, now(), queueMail), className: target.name };
-      });
-    },
-
-    async findInvitation(token: string): Promise<InvitationAnswer> {
-      const found = await findOpenInvitation(db.manager, token, now());
-      const hasAccount = found.email !== null && (await db.getRepository(User).existsBy({ email: found.email }));
-      return {
-        schoolName: found.school?.name ?? '',
-        className: found.class?.name ?? null,
-        role: found.role,
-        name: found.name,
-        email: found.email,
-        asksToJoin: found.asksToJoin,
-        hasAccount,
-      };
-    },
-
-    /** Makes the account that an invitation is for, and signs in. */
-    async acceptInvitation(token: string, person: NewPerson, userAgent: string): Promise<string> {
-      const userId = await db.transaction(async (manager) => {
-        const found = await takeInvitation(manager, token, now());
-        if (found.email && (await manager.existsBy(User, { email: found.email }))) {
-          throw new ProblemError('conflict', { detail: 'There is an account with this address. Sign in to accept.' });
-        }
-        const role = found.role === 'admin' || found.role === 'teacher' ? found.role : 'student';
-        const user = await createStudent(manager, found.schoolId, role, person, found.email);
-        await enter(manager, found, user, now(), queueMail);
-        return user.id;
-      });
-      return await deps.beginSession(userId, userAgent);
-    },
-
-    /** Somebody who is signed in accepts with the account they have. */
-    async acceptSignedIn(viewer: Viewer, token: string): Promise<void> {
-      await db.transaction(async (manager) => {
-        const found = await takeInvitation(manager, token, now());
-        const user = await manager.findOneByOrFail(User, { id: viewer.userId });
-        if (found.schoolId !== user.schoolId || (found.email !== null && found.email !== user.email)) {
-          throw new ProblemError('not-found', { detail: 'This invitation is for another person. Sign out and open the link again.' });
-        }
-        await enter(manager, found, user, now(), queueMail);
-      });
-    },
+    schoolName: found.school?.name ?? '',
+    className: found.class?.name ?? null,
+    role: found.role,
+    name: found.name,
+    email: found.email,
+    asksToJoin: found.asksToJoin,
+    hasAccount,
   };
+}
+
+/** Makes the account that an invitation is for, and signs in. */
+async function acceptInvitation(
+  deps: JoiningDeps,
+  token: string,
+  person: NewPerson,
+  userAgent: string,
+): Promise<string> {
+  const userId = await deps.db.transaction(async (manager) => {
+    const found = await takeInvitation(manager, token, deps.now());
+    if (found.email && (await manager.existsBy(User, { email: found.email }))) {
+      throw new ProblemError('conflict', { detail: 'There is an account with this address. Sign in to accept.' });
+    }
+    const role = found.role === 'admin' || found.role === 'teacher' ? found.role : 'student';
+    const user = await createStudent(deps, manager, found.schoolId, role, person, found.email);
+    await enter(manager, found, user, deps.now(), deps.queueMail);
+    return user.id;
+  });
+  return await deps.beginSession(userId, userAgent);
+}
+
+/** Somebody who is signed in accepts with the account they have. */
+async function acceptSignedIn(deps: JoiningDeps, viewer: Viewer, token: string): Promise<void> {
+  await deps.db.transaction(async (manager) => {
+    const found = await takeInvitation(manager, token, deps.now());
+    const user = await manager.findOneByOrFail(User, { id: viewer.userId });
+    if (found.schoolId !== user.schoolId || (found.email !== null && found.email !== user.email)) {
+      throw new ProblemError('not-found', {
+        detail: 'This invitation is for another person. Sign out and open the link again.',
+      });
+    }
+    await enter(manager, found, user, deps.now(), deps.queueMail);
+  });
+}
+
+async function findClassByCode(manager: EntityManager, code: string): Promise<Class> {
+  const found = await manager.findOneBy(Class, { joinCode: code, joinOpen: true, archivedAt: IsNull() });
+  if (!found)
+    throw new ProblemError('gone', {
+      detail: 'No class takes this code deps.now. Ask your teacher for the current one.',
+    });
+  return found;
+}
+
+async function createStudent(
+  deps: JoiningDeps,
+  manager: EntityManager,
+  schoolId: string,
+  role: User['role'],
+  person: NewPerson,
+  email: string | null,
+) {
+  const userName = email === null ? (person.userName ?? null) : null;
+  if (email === null && userName === null) throw fieldError('/userName', 'Choose a user name.');
+  deps.refuseCommonPassword(person.password, [person.name, email, userName]);
+  if (userName !== null && (await manager.existsBy(User, { schoolId, userName }))) {
+    throw fieldError('/userName', 'This user name is taken in your school. Choose another.');
+  }
+  const row = manager.create(User, {
+    schoolId,
+    role,
+    name: person.name,
+    email,
+    userName,
+    passwordHash: await deps.hashPassword(person.password),
+  });
+  return await manager.save(row);
 }
 
 export interface InvitationOrder {

@@ -2,6 +2,7 @@ import type { DataSource, EntityManager } from 'typeorm';
 import type { ViewerAnswer } from '../../../shared/schemas/people.ts';
 import { notFound, ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
+import { bind } from '../../lib/bind.ts';
 import type { Now } from '../../lib/clock.ts';
 import type { RateLimiter } from '../../lib/rate-limit.ts';
 import { recordAudit } from '../audit/record.ts';
@@ -28,134 +29,164 @@ export type PeopleService = ReturnType<typeof createPeopleService>;
 
 /** Signing in and out, passwords and addresses. Nothing here tells whether an address is known. */
 export function createPeopleService(deps: PeopleDeps) {
-  const { db, now, sessions, queueMail } = deps;
+  return bind(deps, {
+    signIn,
+    signOut,
+    signOutEverywhere,
+    findViewer,
+    askForReset,
+    resetPassword,
+    signInByCode,
+    changePassword,
+    askForEmailChange,
+    changeEmail,
+    changeName,
+  });
+}
 
-  async function checkOwnPassword(viewer: Viewer, password: string, pointer: string): Promise<User> {
-    await deps.rateLimiter.count(`password of ${viewer.userId}`, TRIES_PER_QUARTER_HOUR, 900);
-    const user = await db.getRepository(User).findOneByOrFail({ id: viewer.userId });
-    if (!(await passwordMatches(user.passwordHash, password))) {
-      throw new ProblemError('invalid-fields', { errors: [{ pointer, detail: 'This is not your password.' }] });
+/** @throws {ProblemError} wrong-sign-in; the same, and as late, for an unknown name. */
+async function signIn(deps: PeopleDeps, name: string, password: string, userAgent: string): Promise<string> {
+  await deps.rateLimiter.count(`sign-in of ${name}`, TRIES_PER_QUARTER_HOUR, 900);
+  const matching = await findByName(deps.db.manager, name);
+  for (const user of matching.length > 0 ? matching : [null]) {
+    if ((await passwordMatches(user?.passwordHash ?? null, password)) && user && !user.disabledAt) {
+      return await deps.sessions.begin(user.id, userAgent);
     }
-    return user;
   }
+  throw new ProblemError('wrong-sign-in', { detail: 'Check both, or ask for a new password below.' });
+}
 
-  return {
-    /** @throws {ProblemError} wrong-sign-in; the same, and as late, for an unknown name. */
-    async signIn(name: string, password: string, userAgent: string): Promise<string> {
-      await deps.rateLimiter.count(`sign-in of ${name}`, TRIES_PER_QUARTER_HOUR, 900);
-      const matching = await findByName(db.manager, name);
-      for (const user of matching.length > 0 ? matching : [null]) {
-        if ((await passwordMatches(user?.passwordHash ?? null, password)) && user && !user.disabledAt) {
-          return await sessions.begin(user.id, userAgent);
-        }
-      }
-      throw new ProblemError('wrong-sign-in', { detail: 'Check both, or ask for a new password below.' });
-    },
+function signOut(deps: PeopleDeps, viewer: Viewer) {
+  return deps.sessions.end(viewer.sessionId);
+}
 
-    signOut: (viewer: Viewer) => sessions.end(viewer.sessionId),
-    signOutEverywhere: (viewer: Viewer) => sessions.endAll(viewer.userId),
-    findViewer: (viewer: Viewer) => toViewerAnswer(db.manager, viewer.userId),
+function signOutEverywhere(deps: PeopleDeps, viewer: Viewer) {
+  return deps.sessions.endAll(viewer.userId);
+}
 
-    /** Mails a link when the address is known; answers alike when it is not. */
-    async askForReset(email: string): Promise<void> {
-      await deps.rateLimiter.count(`reset of ${email}`, 4, 3600);
-      await db.transaction(async (manager) => {
-        const user = await manager.findOneBy(User, { email });
-        if (!user || user.disabledAt) return;
-        const token = await issueToken(manager, {
-          userId: user.id,
-          kind: 'reset',
-          expiresAt: hoursFrom(now(), RESET_HOURS),
-        });
-        await queueMail(manager, {
-          kind: 'reset',
-          userId: user.id,
-          to: email,
-          data: { name: user.name, token, hours: RESET_HOURS },
-        });
-      });
-    },
+function findViewer(deps: PeopleDeps, viewer: Viewer) {
+  return toViewerAnswer(deps.db.manager, viewer.userId);
+}
 
-    /** Sets a new password by the mailed link, ends every session and signs in. */
-    async resetPassword(token: string, password: string, userAgent: string): Promise<string> {
-      const userId = await db.transaction(async (manager) => {
-        const taken = await takeToken(manager, 'reset', token, now());
-        await setPassword(manager, taken.userId, password, now());
-        return taken.userId;
-      });
-      await sessions.endAll(userId);
-      return await sessions.begin(userId, userAgent);
-    },
+/** Mails a link when the address is known; answers alike when it is not. */
+async function askForReset(deps: PeopleDeps, email: string): Promise<void> {
+  await deps.rateLimiter.count(`reset of ${email}`, 4, 3600);
+  await deps.db.transaction(async (manager) => {
+    const user = await manager.findOneBy(User, { email });
+    if (!user || user.disabledAt) return;
+    const token = await issueToken(manager, {
+      userId: user.id,
+      kind: 'reset',
+      expiresAt: hoursFrom(deps.now(), RESET_HOURS),
+    });
+    await deps.queueMail(manager, {
+      kind: 'reset',
+      userId: user.id,
+      to: email,
+      data: { name: user.name, token, hours: RESET_HOURS },
+    });
+  });
+}
 
-    /** Signs in by the code that a teacher handed over and sets the person's own password. */
-    async signInByCode(name: string, code: string, password: string, userAgent: string): Promise<string> {
-      await deps.rateLimiter.count(`sign-in code of ${name}`, 8, 900);
-      const userId = await db.transaction(async (manager) => {
-        for (const user of await findByName(manager, name)) {
-          const taken = await takeToken(manager, 'one-day-code', `${user.id}:${code}`, now()).catch(() => null);
-          if (!taken) continue;
-          await setPassword(manager, user.id, password, now());
-          return user.id;
-        }
-        throw new ProblemError('wrong-sign-in', {
-          detail: 'The name and the code do not match, or the code is older than a day.',
-        });
-      });
-      await sessions.endAll(userId);
-      return await sessions.begin(userId, userAgent);
-    },
+/** Sets a new password by the mailed link, ends every session and signs in. */
+async function resetPassword(deps: PeopleDeps, token: string, password: string, userAgent: string): Promise<string> {
+  const userId = await deps.db.transaction(async (manager) => {
+    const taken = await takeToken(manager, 'reset', token, deps.now());
+    await setPassword(manager, taken.userId, password, deps.now());
+    return taken.userId;
+  });
+  await deps.sessions.endAll(userId);
+  return await deps.sessions.begin(userId, userAgent);
+}
 
-    async changePassword(viewer: Viewer, current: string, password: string, userAgent: string): Promise<string> {
-      await checkOwnPassword(viewer, current, '/current');
-      await db.transaction((manager) => setPassword(manager, viewer.userId, password, now()));
-      await sessions.endAll(viewer.userId);
-      return await sessions.begin(viewer.userId, userAgent);
-    },
+/** Signs in by the code that a teacher handed over and sets the person's own password. */
+async function signInByCode(
+  deps: PeopleDeps,
+  name: string,
+  code: string,
+  password: string,
+  userAgent: string,
+): Promise<string> {
+  await deps.rateLimiter.count(`sign-in code of ${name}`, 8, 900);
+  const userId = await deps.db.transaction(async (manager) => {
+    for (const user of await findByName(manager, name)) {
+      const taken = await takeToken(manager, 'one-day-code', `${user.id}:${code}`, deps.now()).catch(() => null);
+      if (!taken) continue;
+      await setPassword(manager, user.id, password, deps.now());
+      return user.id;
+    }
+    throw new ProblemError('wrong-sign-in', {
+      detail: 'The name and the code do not match, or the code is older than a day.',
+    });
+  });
+  await deps.sessions.endAll(userId);
+  return await deps.sessions.begin(userId, userAgent);
+}
 
-    /** Mails the new address; nothing changes before its link is followed. */
-    async askForEmailChange(viewer: Viewer, email: string, password: string): Promise<void> {
-      const user = await checkOwnPassword(viewer, password, '/password');
-      await deps.rateLimiter.count(`e-mail change of ${viewer.userId}`, 5, 3600);
-      await db.transaction(async (manager) => {
-        if (await manager.existsBy(User, { email })) {
-          await queueMail(manager, { kind: 'email-in-use', userId: null, to: email, data: {} });
-          return;
-        }
-        const expiresAt = hoursFrom(now(), EMAIL_CHANGE_HOURS);
-        const token = await issueToken(manager, { userId: user.id, kind: 'email-change', expiresAt, email });
-        await queueMail(manager, {
-          kind: 'email-change',
-          userId: user.id,
-          to: email,
-          data: { name: user.name, token },
-        });
-      });
-    },
+async function changePassword(
+  deps: PeopleDeps,
+  viewer: Viewer,
+  current: string,
+  password: string,
+  userAgent: string,
+): Promise<string> {
+  await checkOwnPassword(deps, viewer, current, '/current');
+  await deps.db.transaction((manager) => setPassword(manager, viewer.userId, password, deps.now()));
+  await deps.sessions.endAll(viewer.userId);
+  return await deps.sessions.begin(viewer.userId, userAgent);
+}
 
-    /** Follows the mailed link; the old address is told. */
-    async changeEmail(token: string): Promise<void> {
-      await db.transaction(async (manager) => {
-        const { userId, email } = await takeToken(manager, 'email-change', token, now());
-        const user = await manager.findOneByOrFail(User, { id: userId });
-        if (!email || (await manager.existsBy(User, { email }))) throw new ProblemError('gone');
-        await manager.update(User, { id: userId }, { email });
-        await recordAudit(manager, {
-          schoolId: user.schoolId,
-          actorId: userId,
-          at: now(),
-          action: 'person.email-changed',
-          objectKind: 'person',
-          objectId: userId,
-        });
-        if (user.email)
-          await queueMail(manager, { kind: 'email-changed', userId, to: user.email, data: { name: user.name } });
-      });
-    },
+/** Mails the new address; nothing changes before its link is followed. */
+async function askForEmailChange(deps: PeopleDeps, viewer: Viewer, email: string, password: string): Promise<void> {
+  const user = await checkOwnPassword(deps, viewer, password, '/password');
+  await deps.rateLimiter.count(`e-mail change of ${viewer.userId}`, 5, 3600);
+  await deps.db.transaction(async (manager) => {
+    if (await manager.existsBy(User, { email })) {
+      await deps.queueMail(manager, { kind: 'email-in-use', userId: null, to: email, data: {} });
+      return;
+    }
+    const expiresAt = hoursFrom(deps.now(), EMAIL_CHANGE_HOURS);
+    const token = await issueToken(manager, { userId: user.id, kind: 'email-change', expiresAt, email });
+    await deps.queueMail(manager, {
+      kind: 'email-change',
+      userId: user.id,
+      to: email,
+      data: { name: user.name, token },
+    });
+  });
+}
 
-    async changeName(viewer: Viewer, name: string): Promise<void> {
-      await db.getRepository(User).update({ id: viewer.userId }, { name });
-    },
-  };
+/** Follows the mailed link; the old address is told. */
+async function changeEmail(deps: PeopleDeps, token: string): Promise<void> {
+  await deps.db.transaction(async (manager) => {
+    const { userId, email } = await takeToken(manager, 'email-change', token, deps.now());
+    const user = await manager.findOneByOrFail(User, { id: userId });
+    if (!email || (await manager.existsBy(User, { email }))) throw new ProblemError('gone');
+    await manager.update(User, { id: userId }, { email });
+    await recordAudit(manager, {
+      schoolId: user.schoolId,
+      actorId: userId,
+      at: deps.now(),
+      action: 'person.email-changed',
+      objectKind: 'person',
+      objectId: userId,
+    });
+    if (user.email)
+      await deps.queueMail(manager, { kind: 'email-changed', userId, to: user.email, data: { name: user.name } });
+  });
+}
+
+async function changeName(deps: PeopleDeps, viewer: Viewer, name: string): Promise<void> {
+  await deps.db.getRepository(User).update({ id: viewer.userId }, { name });
+}
+
+async function checkOwnPassword(deps: PeopleDeps, viewer: Viewer, password: string, pointer: string): Promise<User> {
+  await deps.rateLimiter.count(`password of ${viewer.userId}`, TRIES_PER_QUARTER_HOUR, 900);
+  const user = await deps.db.getRepository(User).findOneByOrFail({ id: viewer.userId });
+  if (!(await passwordMatches(user.passwordHash, password))) {
+    throw new ProblemError('invalid-fields', { errors: [{ pointer, detail: 'This is not your password.' }] });
+  }
+  return user;
 }
 
 /** An address is one person; a user name may occur once in each school. */
