@@ -30,7 +30,7 @@ export function aimsOf(question: MendQuestion): Aim[] {
   const { above, line, context } = question;
   const pair = expressionsIn(question);
   if (pair) {
-    const wanted = workOut(pair.above, pair.focus);
+    const wanted = workOut(pair.above, pair.focus, context);
     const places = choosePlaces([wanted, pair.focus], placeCount, context);
     return [{ roots: [pair.focus], tree: pair.focus, wanted, places, targets: [places.map((place) => estimate(wanted, place))] }];
   }

@@ -53,7 +53,7 @@ function* singleChanges(question: MendQuestion, aims: readonly Aim[], isRight: (
   }
   const pair = expressionsIn(question);
   const [aim] = aims;
-  if (pair && aim) yield* rewritten(aim, pair.above, question.link === 1 ? question.aboveTex : null);
+  if (pair && aim) yield* rewritten(aim, pair.above, question.link === 1 ? question.aboveTex : null, question.context);
 }
 
 function rightParts(question: MendQuestion): (node: Expr) => boolean {

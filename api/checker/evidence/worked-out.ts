@@ -2,8 +2,10 @@ import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import { mapExpr } from '../../../shared/maths/walk.ts';
+import type { CheckContext } from '../context.ts';
 import { fraction, letter, neg, product, quotient, sum } from './build.ts';
-import { derive, integrate } from './derive.ts';
+import { antiderivative } from './antiderivative.ts';
+import { derive } from './derive.ts';
 import type { Candidate } from './edits.ts';
 import { collect, expanded, monomialExpr, spread, sumExpr } from './monomials.ts';
 import { outer, type Aim } from './mend-question.ts';
@@ -12,12 +14,12 @@ import { substituteLetter } from './substitute.ts';
 const constantNames = ['C', 'c', 'K', 'k'];
 
 /** Derivatives and integrals by the table; an indefinite integral with the constant that the other line has. */
-export function workOut(expr: Expr, other: Expr): Expr {
+export function workOut(expr: Expr, other: Expr, context: CheckContext): Expr {
   const constant = constantNames.find((name) => lettersOf(other).includes(name) && !lettersOf(expr).includes(name));
   return mapExpr(expr, (node) => {
     if (node.kind === 'derivative' && node.order === 1) return derive(node.operand, node.variable) ?? node;
     if (node.kind !== 'integral') return node;
-    const found = integrate(node.integrand, node.variable);
+    const found = antiderivative(node.integrand, node.variable, context);
     if (!found) return node;
     if (!node.from || !node.to) return constant ? sum(found, letter(constant)) : found;
     return sum(substituteLetter(found, node.variable, node.to), neg(substituteLetter(found, node.variable, node.from)));
@@ -27,13 +29,13 @@ export function workOut(expr: Expr, other: Expr): Expr {
 const wholeCost = 4;
 
 /** The whole expression written anew, for lines that no small change mends; the values at two limits come first. */
-export function* rewritten(aim: Aim, above: Expr, aboveTex: string | null): Generator<Candidate> {
+export function* rewritten(aim: Aim, above: Expr, aboveTex: string | null, context: CheckContext): Generator<Candidate> {
   const [focus] = aim.roots;
   if (!focus || aim.roots.length !== 1) return;
   const whole = (text: string, cost: number): Candidate => ({ edits: [{ ...outer(focus), text }], cost, touchesRight: false });
-  const limits = atBothLimits(above);
+  const limits = atBothLimits(above, context);
   if (limits && (focus.kind === 'sum' ? focus.terms.length === 2 : false)) yield whole(printExpr(limits), 1.05);
-  const worked = workOut(above, focus);
+  const worked = workOut(above, focus, context);
   if (hasCalculus(above) && !hasCalculus(worked)) yield whole(printExpr(worked), wholeCost);
   const joined = focus.kind === 'quotient' ? overOneDenominator(above) : null;
   if (joined) yield whole(printExpr(joined), wholeCost);
@@ -52,8 +54,8 @@ function hasCalculus(expr: Expr): boolean {
 }
 
 /** F(b) - F(a), both worked out to fractions; null where they are none. */
-function atBothLimits(above: Expr): Expr | null {
-  const ends = limitsOf(above);
+function atBothLimits(above: Expr, context: CheckContext): Expr | null {
+  const ends = limitsOf(above, context);
   const values = ends?.map((end) => {
     const terms = expanded(end);
     const [only] = terms ?? [];
@@ -64,12 +66,12 @@ function atBothLimits(above: Expr): Expr | null {
   return upper && lower ? sum(upper, neg(lower)) : null;
 }
 
-function limitsOf(above: Expr): readonly [Expr, Expr] | null {
+function limitsOf(above: Expr, context: CheckContext): readonly [Expr, Expr] | null {
   if (above.kind === 'evaluated' && above.from && above.variable) {
     return [substituteLetter(above.operand, above.variable, above.to), substituteLetter(above.operand, above.variable, above.from)];
   }
   if (above.kind !== 'integral' || !above.from || !above.to) return null;
-  const found = integrate(above.integrand, above.variable);
+  const found = antiderivative(above.integrand, above.variable, context);
   return found && [substituteLetter(found, above.variable, above.to), substituteLetter(found, above.variable, above.from)];
 }
 

@@ -1,0 +1,111 @@
+import type { Line } from '../../../shared/maths/expression.ts';
+import type { Evidence, StepRuling, Verdict } from '../../../shared/schemas/verdict.ts';
+import { BudgetSpent, createBudget, operationsPerStep, type CheckContext } from '../context.ts';
+import { nameBetween, nameSlip } from '../slips/name-slip.ts';
+import { contextOf, judgeLine, type Route, type WalkState } from '../walk-derivation.ts';
+import { expressionsIn } from './aims.ts';
+import { shortDifference } from './difference.ts';
+import { followsFrom } from './follows-from.ts';
+import { carryOn } from './mend-ending.ts';
+import { mendLine } from './mend-line.ts';
+import type { MendQuestion } from './mend-question.ts';
+import { meaningToLine } from './meaning-line.ts';
+import { isPlainlyHeld } from './plainly-held.ts';
+import { findWrongPart } from './wrong-part.ts';
+
+/** Later faults get less work than the first one. */
+const mostFaults = 3;
+
+/**
+ * The one place where the rulings are complete and what explains them is added: the wrong part, the mended line and
+ * ending, the difference, the slip. `before` holds what was known before each step.
+ */
+export function addEvidence(verdict: Verdict, route: Route, before: readonly WalkState[]): Verdict {
+  const failing = verdict.steps.filter((step) => step.ruling === 'fails').slice(0, mostFaults);
+  if (failing.length === 0) return verdict;
+  const added = new Map(failing.map((step, k) => [step.step, explainFault(step, k === 0, verdict, route, before)]));
+  return {
+    ...verdict,
+    steps: verdict.steps.map((step) => ({ ...step, evidence: { ...step.evidence, ...added.get(step.step) } })),
+  };
+}
+
+function explainFault(fault: StepRuling, isFirst: boolean, verdict: Verdict, route: Route, before: readonly WalkState[]): Evidence {
+  const state = before[fault.step];
+  if (!state) return {};
+  const budget = createBudget(isFirst ? operationsPerStep : operationsPerStep / 4);
+  const context: CheckContext = { ...contextOf(route, state), budget };
+  const question = askAbout(fault, route, state, context);
+  if (!question) return {};
+  const evidence: Evidence = {};
+  const steps: readonly (() => void)[] = [
+    () => Object.assign(evidence, namedSlip(question, route)),
+    () => Object.assign(evidence, mends(question, fault, isFirst, verdict, route, state)),
+    () => Object.assign(evidence, difference(question)),
+  ];
+  try {
+    for (const add of steps) add();
+  } catch (cause) {
+    // What was found before the work ran out still stands.
+    if (!(cause instanceof BudgetSpent) && !(cause instanceof RangeError)) throw cause;
+  }
+  return evidence;
+}
+
+function askAbout(fault: StepRuling, route: Route, state: WalkState, context: CheckContext): MendQuestion | null {
+  const own = route.read.lines[fault.step];
+  const above = lineAbove(route, state, fault.step);
+  if (!own?.ok || !above) return null;
+  const { evidence } = fault;
+  return {
+    above: above.line,
+    aboveTex: above.tex,
+    line: own.line,
+    tex: own.tex,
+    link: evidence.link ?? 1,
+    lost: evidence.lost ?? [],
+    gained: evidence.gained ?? [],
+    settings: route.read.settings,
+    context,
+    holds: (line) => isPlainlyHeld(judgeLine(route, state, fault.step, line, context).result),
+  };
+}
+
+/** What the step starts from, as a line; its text only where it is a line of its own. */
+function lineAbove(route: Route, state: WalkState, step: number): { line: Line; tex: string | null } | null {
+  const uses = route.input.uses?.[step] ?? [];
+  if (uses.length > 1) return null;
+  const meaning = uses.length === 1 ? state.meanings[uses[0] ?? 0] : state.from;
+  if (!meaning) return null;
+  const place = state.meanings.lastIndexOf(meaning);
+  const written = place >= 0 ? route.read.lines[place] : undefined;
+  if (written?.ok && written.line.kind === meaning.kind) return { line: written.line, tex: written.tex };
+  if (written?.ok && meaning.kind === 'statement' && ['relation', 'any', 'all', 'membership'].includes(written.line.kind)) return { line: written.line, tex: null };
+  const line = meaningToLine(meaning);
+  return line && { line, tex: null };
+}
+
+function namedSlip(question: MendQuestion, route: Route): Evidence {
+  const { above, line, link, context } = question;
+  const pair = link > 1 ? expressionsIn(question) : null;
+  const slip = pair
+    ? nameBetween(pair.above, pair.focus, false, context)
+    : nameSlip(above, line, context, (from, to) => followsFrom(from, to, route, context));
+  return slip ? { slip: { id: slip.id, kind: slip.kind } } : {};
+}
+
+function mends(question: MendQuestion, fault: StepRuling, isFirst: boolean, verdict: Verdict, route: Route, state: WalkState): Evidence {
+  const mended = mendLine(question);
+  if (!mended) return {};
+  const wrongPart = findWrongPart(question, mended);
+  const found: Evidence = { mended: { line: mended.tex, changed: [...mended.changed] }, ...(wrongPart ? { wrongPart } : {}) };
+  if (!isFirst) return found;
+  const ending = carryOn(route, state, fault.step, mended, verdict.steps, question.context);
+  return ending ? { ...found, mendedEnding: ending } : found;
+}
+
+function difference(question: MendQuestion): Evidence {
+  const pair = expressionsIn(question);
+  const found = pair && shortDifference(pair.above, pair.focus, question.context);
+  return found ? { difference: found } : {};
+}

@@ -1,0 +1,60 @@
+import type { Line } from '../../../shared/maths/expression.ts';
+import type { StepRuling } from '../../../shared/schemas/verdict.ts';
+import type { CheckContext } from '../context.ts';
+import { judgeLine, type Route, type WalkState } from '../walk-derivation.ts';
+import { mendLine, type MendedLine } from './mend-line.ts';
+import { operationsBetween } from './operations.ts';
+import { isPlainlyHeld } from './plainly-held.ts';
+
+const mostLines = 12;
+
+/**
+ * The author's later steps carried through from a mended line: each of them holds from the one before and is explained
+ * by an operation that also explains the author's own step. Null where one of them is not, for none is better than a
+ * wrong one.
+ */
+export function carryOn(route: Route, before: WalkState, step: number, mended: MendedLine, steps: readonly StepRuling[], context: CheckContext): string[] | null {
+  const { lines } = route.read;
+  if (lines.length - step > mostLines) return null;
+  const carried = [mended.tex];
+  let last: Line = mended.line;
+  let state = judgeLine(route, before, step, mended.line, context).state;
+  for (let next = step + 1; next < lines.length; next += 1) {
+    const own = lines[next];
+    const above = lines[next - 1];
+    if (!own?.ok || !above?.ok || steps[next - 1]?.ruling !== 'holds' || (route.input.uses?.[next]?.length ?? 0) > 0) return null;
+    const found = carryLine(route, state, next, { line: own.line, tex: own.tex }, { line: last, tex: carried[carried.length - 1] ?? '' }, context);
+    if (!found) return null;
+    const explained = operationsBetween(above.line, own.line, context);
+    const mendedToo = operationsBetween(last, found.line, context);
+    if (![...explained].some((operation) => mendedToo.has(operation))) return null;
+    carried.push(found.tex);
+    last = found.line;
+    state = judgeLine(route, state, next, found.line, context).state;
+  }
+  return carried;
+}
+
+interface Written {
+  readonly line: Line;
+  readonly tex: string;
+}
+
+/** The author's line as it stands where it still follows, else with the numbers that the mend brings with it. */
+function carryLine(route: Route, state: WalkState, step: number, own: Written, above: Written, context: CheckContext): Written | null {
+  const { result } = judgeLine(route, state, step, own.line, context);
+  if (isPlainlyHeld(result)) return own;
+  const found = mendLine({
+    above: above.line,
+    aboveTex: above.tex,
+    line: own.line,
+    tex: own.tex,
+    link: result.evidence.link ?? 1,
+    lost: result.evidence.lost ?? [],
+    gained: result.evidence.gained ?? [],
+    settings: route.read.settings,
+    context,
+    holds: (line) => isPlainlyHeld(judgeLine(route, state, step, line, context).result),
+  });
+  return found && !found.isRewritten ? found : null;
+}

@@ -1,0 +1,48 @@
+import type { Line, Span } from '../../../shared/maths/expression.ts';
+import { termsOfLine } from '../../../shared/lib/within-one-term.ts';
+import type { Evidence } from '../../../shared/schemas/verdict.ts';
+import { outer, type MendQuestion } from './mend-question.ts';
+import type { MendedLine } from './mend-line.ts';
+
+type WrongPart = NonNullable<Evidence['wrongPart']>;
+
+/**
+ * The one term, factor or side within which the whole mend lies: with that part replaced the step holds. Null where
+ * the mend reaches over several parts or puts in a new one.
+ */
+export function findWrongPart({ tex, line, settings }: MendQuestion, mended: MendedLine): WrongPart | null {
+  const { decimal, numbers } = settings;
+  const sign = changedSign(line, mended);
+  const parts = sign ? [sign] : [...termsOfLine(tex, { decimal, numbers }), ...sidesOf(line)];
+  const span = parts.find((part) => mended.edits.every((edit) => isWithin(edit, part)));
+  if (!span) return null;
+  const is = tex.slice(span.start, span.end).trim();
+  const end = mended.tex.length - (tex.length - span.end);
+  const shouldBe = mended.tex.slice(span.start, end).trim();
+  if (shouldBe === '' || is === shouldBe) return null;
+  const lostSign = is.startsWith('-') && !/^[+-]/.test(shouldBe);
+  return { span, is, shouldBe: lostSign ? `+${shouldBe}` : shouldBe };
+}
+
+/** What is put in at the very end of a part belongs to no part. */
+function isWithin(edit: Span, part: Span): boolean {
+  if (edit.start === edit.end && edit.start === part.end) return false;
+  return edit.start >= part.start && edit.end <= part.end;
+}
+
+function sidesOf(line: Line): Span[] {
+  return line.kind === 'relation' ? [outer(line.left), outer(line.right)] : [];
+}
+
+/** The relation sign, where that alone was changed. */
+function changedSign(line: Line, { edits }: MendedLine): Span | null {
+  if (line.kind === 'any' || line.kind === 'all') return line.parts.map((part) => signIn(part, edits)).find((span) => span !== null) ?? null;
+  return signIn(line, edits);
+}
+
+function signIn(line: Line, edits: readonly Span[]): Span | null {
+  const [only, ...more] = edits;
+  if (line.kind !== 'relation' || !only || more.length > 0 || only.start === only.end) return null;
+  const gap = { start: outer(line.left).end, end: outer(line.right).start };
+  return only.start >= gap.start && only.end <= gap.end ? gap : null;
+}
