@@ -13,7 +13,11 @@ export interface CheckPoolOptions {
   readonly derivationMs?: number;
   readonly memoryMb?: number;
   /** Told of each worker that was ended, so that it can be logged. */
-  readonly onEnded?: (event: { readonly step: number; readonly reason: 'time' | 'memory'; readonly input: DerivationInput }) => void;
+  readonly onEnded?: (event: {
+    readonly step: number;
+    readonly reason: 'time' | 'memory';
+    readonly input: DerivationInput;
+  }) => void;
 }
 
 export interface CheckPool {
@@ -103,11 +107,14 @@ async function runOnce(piscina: Piscina, task: Omit<CheckTask, 'progress'>, limi
     const now = performance.now();
     if (step !== seen) [seen, since] = [step, now];
     // Before its first step a task may only be waiting for a worker.
-    const isLate = step >= 0 && (now - since > limits.stepMs || (now > limits.deadline && now - since > limits.stepMs / 2));
+    const isLate =
+      step >= 0 && (now - since > limits.stepMs || (now > limits.deadline && now - since > limits.stepMs / 2));
     if (isLate) ending.abort();
   }, watchMs);
   try {
-    const answer = (await piscina.run({ ...task, progress } satisfies CheckTask, { signal: ending.signal })) as CheckAnswer;
+    const answer = (await piscina.run({ ...task, progress } satisfies CheckTask, {
+      signal: ending.signal,
+    })) as CheckAnswer;
     return { kind: 'done', answer };
   } catch (cause) {
     if (ending.signal.aborted) return { kind: 'time', step: Math.max(0, Atomics.load(at, 0)) };

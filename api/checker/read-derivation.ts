@@ -34,7 +34,8 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
   const wholeLetters = new Set(assumptions.flatMap(wholeByAssumption));
   // Only these forms make a letter whole: most derivations have none of them, and are not walked for it.
   if (input.lines.some((tex) => /!|binom|choose|\\sum|\\prod/.test(tex))) {
-    for (const result of lines) if (result.ok) for (const expr of exprsOf(result.line)) addWholeByUse(expr, wholeLetters);
+    for (const result of lines)
+      if (result.ok) for (const expr of exprsOf(result.line)) addWholeByUse(expr, wholeLetters);
   }
   return {
     lines,

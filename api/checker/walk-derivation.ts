@@ -3,7 +3,15 @@ import type { Line } from '../../shared/maths/expression.ts';
 import type { DerivationInput, UndecidedReason } from '../../shared/schemas/verdict.ts';
 import { reduceCalculus } from './calculus/reduce.ts';
 import { scopeOf } from './calculus/scope.ts';
-import { BudgetSpent, createBudget, createContext, operationsPerStep, type CalculusScope, type CheckContext, type Definitions } from './context.ts';
+import {
+  BudgetSpent,
+  createBudget,
+  createContext,
+  operationsPerStep,
+  type CalculusScope,
+  type CheckContext,
+  type Definitions,
+} from './context.ts';
 import type { ReadDerivation } from './read-derivation.ts';
 import { isolatedLetter } from './rules/formula.ts';
 import { meaningOf, type Meaning } from './rules/meaning.ts';
@@ -28,6 +36,8 @@ export interface WalkState {
   /** By line; null where a line was not read or leaves nothing to start from. */
   readonly meanings: readonly (Meaning | null)[];
   readonly from: Meaning | null;
+  /** What the last line said, where it was a remark. */
+  readonly remark: Meaning | null;
   /** False after a line that could not be read. */
   readonly isReadable: boolean;
   readonly reference: Statement | null;
@@ -47,7 +57,10 @@ export function planRoute(input: DerivationInput, read: ReadDerivation): Route {
     givenLetters: first?.ok ? [...lettersOf(first.line)] : [],
     unknown: findUnknown(input, read),
     given: first?.ok ? toStatement(first.line) : null,
-    calculus: scopeOf(read.lines.map((result) => (result.ok ? result.line : null)), input.settings.constant ?? false),
+    calculus: scopeOf(
+      read.lines.map((result) => (result.ok ? result.line : null)),
+      input.settings.constant ?? false,
+    ),
   };
 }
 
@@ -69,6 +82,7 @@ export function startWalk(route: Route): WalkState {
   const empty: WalkState = {
     meanings: [null],
     from: null,
+    remark: null,
     isReadable: true,
     reference: null,
     known: [],
@@ -89,7 +103,13 @@ export function startWalk(route: Route): WalkState {
 /** The line becomes what later values have to satisfy. */
 function startAgain(state: WalkState, meaning: Meaning | null): WalkState {
   const statement = meaning?.kind === 'statement' ? meaning.statement : null;
-  return { ...state, meanings: [...state.meanings.slice(0, -1), meaning], from: meaning, reference: statement, known: statement ? [statement] : [] };
+  return {
+    ...state,
+    meanings: [...state.meanings.slice(0, -1), meaning],
+    from: meaning,
+    reference: statement,
+    known: statement ? [statement] : [],
+  };
 }
 
 export interface WalkStep {
@@ -98,15 +118,31 @@ export interface WalkStep {
 }
 
 /** Rules on the line of one step and goes on to the next. */
-export function judgeLine(route: Route, state: WalkState, step: number, line: Line, context = contextOf(route, state)): WalkStep {
+export function judgeLine(
+  route: Route,
+  state: WalkState,
+  step: number,
+  line: Line,
+  context = contextOf(route, state),
+): WalkStep {
   const start = startOf(route, state, step);
   const answer = start === 'not-read' ? notRead(line) : attempt(route, state, step, line, start, context);
   const { ruling, reached, notes, evidence } = answer.result;
-  return { result: { ruling, reached, notes: [...new Set(notes)], evidence }, state: advance(route, state, step, answer) };
+  return {
+    result: { ruling, reached, notes: [...new Set(notes)], evidence },
+    state: advance(route, state, step, answer),
+  };
 }
 
 function notRead(line: Line): StepAnswer {
-  return { result: undecided('not-read'), meaning: meaningOf(line), candidates: [], shrunk: [], defines: null };
+  return {
+    result: undecided('not-read'),
+    meaning: meaningOf(line),
+    candidates: [],
+    shrunk: [],
+    defines: null,
+    remark: null,
+  };
 }
 
 export function contextOf(route: Route, state: WalkState): CheckContext {
@@ -125,7 +161,9 @@ export function contextOf(route: Route, state: WalkState): CheckContext {
 function startOf(route: Route, state: WalkState, step: number): Meaning | null | 'not-read' {
   const uses = route.input.uses?.[step];
   if (!uses || uses.length === 0) return state.isReadable ? state.from : 'not-read';
-  const named = [...new Set(uses)].filter((line) => line >= 0 && line < step).map((line) => state.meanings[line] ?? null);
+  const named = [...new Set(uses)]
+    .filter((line) => line >= 0 && line < step)
+    .map((line) => state.meanings[line] ?? null);
   const found = named.filter((meaning) => meaning !== null);
   if (found.length === 0) return state.isReadable ? state.from : 'not-read';
   if (found.length < named.length && uses.some((line) => route.read.lines[line]?.ok === false)) return 'not-read';
@@ -147,6 +185,7 @@ function attempt(
     return judgeStep({
       line,
       from,
+      remark: state.remark,
       reference: state.reference,
       known: route.input.uses?.[step]?.length && from?.kind === 'statement' ? [from.statement] : state.known,
       givenLetters: route.givenLetters,
@@ -158,7 +197,14 @@ function attempt(
       context,
     });
   } catch (cause) {
-    return { result: undecided(reasonOf(cause)), meaning: meaningOf(line), candidates: [], shrunk: [], defines: null };
+    return {
+      result: undecided(reasonOf(cause)),
+      meaning: meaningOf(line),
+      candidates: [],
+      shrunk: [],
+      defines: null,
+      remark: null,
+    };
   }
 }
 
@@ -175,9 +221,11 @@ function advance(route: Route, state: WalkState, step: number, answer: StepAnswe
     ...state,
     meanings: [...state.meanings.slice(0, step), meaning],
     from: meaning ?? state.from,
+    remark: answer.remark,
     isReadable: true,
     definitions: answer.defines ?? state.definitions,
-    candidates: answer.candidates.length > 0 ? [...state.candidates, { step, values: answer.candidates }] : state.candidates,
+    candidates:
+      answer.candidates.length > 0 ? [...state.candidates, { step, values: answer.candidates }] : state.candidates,
   };
   if (result.ruling !== 'holds') {
     const afterFault = state.afterFault || result.ruling === 'fails';

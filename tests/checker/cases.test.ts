@@ -14,7 +14,10 @@ interface Case {
 
 function readCases(name: string): Case[] {
   const text = readFileSync(new URL(`./data/${name}`, import.meta.url), 'utf8');
-  return text.trim().split('\n').map((line) => JSON.parse(line) as Case);
+  return text
+    .trim()
+    .split('\n')
+    .map((line) => JSON.parse(line) as Case);
 }
 
 // The sources of the rows are in data/README.md.

@@ -22,7 +22,13 @@ describe('the pool of checks', () => {
   it('ends a worker whose step takes too long, leaves that step undecided and rules on the rest', async () => {
     const worker = new URL('./data/slow.worker.ts', import.meta.url);
     const ended: number[] = [];
-    const slow = createCheckPool({ threads: 1, stepMs: 150, derivationMs: 20_000, workerUrl: worker, onEnded: ({ step }) => ended.push(step) });
+    const slow = createCheckPool({
+      threads: 1,
+      stepMs: 150,
+      derivationMs: 20_000,
+      workerUrl: worker,
+      onEnded: ({ step }) => ended.push(step),
+    });
     const verdict = await slow.check({ lines: ['x+x', '2x', '2x', 'x'], assume: [], settings: {} });
     expect(ended).toEqual([2, 2]);
     expect(verdict.steps.map((step) => step.ruling)).toEqual(['holds', 'undecided', 'fails']);

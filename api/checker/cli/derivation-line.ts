@@ -24,7 +24,11 @@ export function parseDerivationLine(text: string): DerivationLine {
   const parsed = lineSchema.safeParse(data);
   if (!parsed.success) {
     const issue = parsed.error.issues[0];
-    return { ok: false, id: idOf(data), message: `${issue?.path.join('.') || 'line'}: ${issue?.message ?? 'not a derivation'}` };
+    return {
+      ok: false,
+      id: idOf(data),
+      message: `${issue?.path.join('.') || 'line'}: ${issue?.message ?? 'not a derivation'}`,
+    };
   }
   const { id, lines, assume, uses, settings } = parsed.data;
   return {

@@ -19,7 +19,8 @@ const noteWords: Record<Note, string> = {
 
 /** A verdict for people: each line with its ruling and what shows it. */
 export function explainVerdict(input: DerivationInput, verdict: Verdict): string {
-  const summary = verdict.firstFault === null ? verdict.outcome : `${verdict.outcome}, first fault in step ${verdict.firstFault}`;
+  const summary =
+    verdict.firstFault === null ? verdict.outcome : `${verdict.outcome}, first fault in step ${verdict.firstFault}`;
   const rows = input.lines.map((line, k) => {
     const step = verdict.steps[k - 1];
     return step ? `  ${k}. ${line}\n     ${explainStep(step)}` : `  ${k}. ${line}\n     the given`;

@@ -20,7 +20,11 @@ async function main(): Promise<void> {
   await pool.close();
 }
 
-async function toOutput(parsed: Extract<DerivationLine, { ok: true }>, pool: CheckPool, explain: boolean): Promise<string> {
+async function toOutput(
+  parsed: Extract<DerivationLine, { ok: true }>,
+  pool: CheckPool,
+  explain: boolean,
+): Promise<string> {
   const { outcome, firstFault, steps, ms } = await pool.check(parsed.input);
   const verdict: Verdict = { outcome, firstFault, steps };
   if (explain) return `${parsed.id ?? '-'}: ${explainVerdict(parsed.input, verdict)}\n`;

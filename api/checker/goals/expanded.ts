@@ -55,7 +55,8 @@ function collectPower(expr: Extract<Expr, { kind: 'power' }>, times: bigint, pow
   const { base, exponent } = expr;
   if (exponent.kind === 'number' && exponent.denominator === 1n) {
     // A power of a product or a number is still to be worked out.
-    if (base.kind === 'product' || base.kind === 'quotient' || base.kind === 'power' || base.kind === 'number') return false;
+    if (base.kind === 'product' || base.kind === 'quotient' || base.kind === 'power' || base.kind === 'number')
+      return false;
     return collect(base, times * exponent.numerator, powers);
   }
   if (base.kind === 'sum' || base.kind === 'product') return false;

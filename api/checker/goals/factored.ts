@@ -67,7 +67,9 @@ function isPrimeFactor(factor: Expr): boolean {
 function hasCommonLetter(factor: Extract<Expr, { kind: 'sum' }>, letters: readonly string[]): boolean {
   return letters.some((name) => {
     const zero = substitute(factor, new Map([[name, numberExpr(rational(0))]]));
-    const values = new Map(letters.filter((other) => other !== name).map((other, k) => [other, rational(3 + 4 * k)] as const));
+    const values = new Map(
+      letters.filter((other) => other !== name).map((other, k) => [other, rational(3 + 4 * k)] as const),
+    );
     const fraction = toFraction(prepare(zero, createContext()), '', values);
     return fraction !== null && fraction.num.length === 0 && factor.terms.length > 1;
   });

@@ -1,4 +1,11 @@
-import { dividePolynomials, leading, primitivePart, squareFreePart, trim, type Polynomial } from '../solving/polynomial.ts';
+import {
+  dividePolynomials,
+  leading,
+  primitivePart,
+  squareFreePart,
+  trim,
+  type Polynomial,
+} from '../solving/polynomial.ts';
 import { isolateRealRoots } from '../solving/real-roots.ts';
 
 const mostDegree = 9;
@@ -50,7 +57,9 @@ function roundedProduct(roots: readonly Complex[], lead: number): Polynomial | n
     product = next;
   }
   const scale = Math.max(1, ...product.map((c) => Math.abs(c.re)));
-  const isWhole = product.every((c) => Math.abs(c.im) < 1e-4 * scale && Math.abs(c.re - Math.round(c.re)) < 1e-4 * scale);
+  const isWhole = product.every(
+    (c) => Math.abs(c.im) < 1e-4 * scale && Math.abs(c.re - Math.round(c.re)) < 1e-4 * scale,
+  );
   return isWhole ? primitivePart(trim(product.map((c) => BigInt(Math.round(c.re))))) : null;
 }
 

@@ -26,7 +26,15 @@ export function layoutOf(line: Line): string {
   }
 }
 
-const turned: Readonly<Record<RelationSign, RelationSign>> = { '=': '=', '!=': '!=', approx: 'approx', '<': '>', '>': '<', '<=': '>=', '>=': '<=' };
+const turned: Readonly<Record<RelationSign, RelationSign>> = {
+  '=': '=',
+  '!=': '!=',
+  approx: 'approx',
+  '<': '>',
+  '>': '<',
+  '<=': '>=',
+  '>=': '<=',
+};
 
 function relationLayout(left: Expr, sign: RelationSign, right: Expr): string {
   const [a, b] = [exprLayout(left), exprLayout(right)];
@@ -89,7 +97,8 @@ export function exprLayout(expr: Expr): string {
 
 function sumLayout(expr: Extract<Expr, { kind: 'sum' }>): string {
   const terms = expr.terms.flatMap((term): string[] => {
-    if (term.expr.kind === 'sum' && term.sign === 'plus') return term.expr.terms.map((inner) => `${inner.sign} ${exprLayout(inner.expr)}`);
+    if (term.expr.kind === 'sum' && term.sign === 'plus')
+      return term.expr.terms.map((inner) => `${inner.sign} ${exprLayout(inner.expr)}`);
     return [`${term.sign} ${exprLayout(term.expr)}`];
   });
   if (terms.length === 1 && terms[0]?.startsWith('plus ')) return terms[0].slice(5);
@@ -97,6 +106,8 @@ function sumLayout(expr: Extract<Expr, { kind: 'sum' }>): string {
 }
 
 function productLayout(expr: Extract<Expr, { kind: 'product' }>): string {
-  const factors = expr.factors.flatMap((factor) => (factor.kind === 'product' ? factor.factors : [factor])).map(exprLayout);
+  const factors = expr.factors
+    .flatMap((factor) => (factor.kind === 'product' ? factor.factors : [factor]))
+    .map(exprLayout);
   return `product(${factors.sort().join()})`;
 }

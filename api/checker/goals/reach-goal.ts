@@ -44,7 +44,10 @@ export function isSolved(statement: Statement, letter: string): boolean {
     case 'any':
       return statement.parts.every((part) => isSolved(part, letter));
     case 'all':
-      return statement.parts.some((part) => isSolved(part, letter)) && statement.parts.every((part) => isSolvedOrOther(part, letter));
+      return (
+        statement.parts.some((part) => isSolved(part, letter)) &&
+        statement.parts.every((part) => isSolvedOrOther(part, letter))
+      );
     case 'member':
       return statement.letter === null || isLetter(statement.letter, letter);
     case 'never':
@@ -56,7 +59,11 @@ export function isSolved(statement: Statement, letter: string): boolean {
 /** In a system the other letters may be solved beside the one asked for. */
 function isSolvedOrOther(statement: Statement, letter: string): boolean {
   if (isSolved(statement, letter)) return true;
-  return statement.kind === 'compare' && statement.left.kind === 'letter' && !lettersOf(statement.right).includes(statement.left.name);
+  return (
+    statement.kind === 'compare' &&
+    statement.left.kind === 'letter' &&
+    !lettersOf(statement.right).includes(statement.left.name)
+  );
 }
 
 function isTarget(tex: string, route: Route): boolean {
@@ -75,5 +82,7 @@ function asWritten(line: Line): Line {
 
 function lastSide(line: Line): Line {
   if (line.kind === 'relation' && line.sign === '=') return { kind: 'expression', expr: line.right, span: line.span };
-  return line.kind === 'chain' ? { kind: 'expression', expr: line.members[line.members.length - 1] as Expr, span: line.span } : line;
+  return line.kind === 'chain'
+    ? { kind: 'expression', expr: line.members[line.members.length - 1] as Expr, span: line.span }
+    : line;
 }

@@ -37,8 +37,22 @@ function meets(a: RealSet, b: RealSet): boolean {
 function piecesOf(set: RealSet): RealSet[] {
   const pieces: RealSet[] = [];
   for (let k = 0; k < set.between.length; k += 1) {
-    if (set.between[k]) pieces.push(only(set, (j) => j === k - 1 || j === k, (j) => j === k));
-    else if (set.at[k] && !set.between[k + 1]) pieces.push(only(set, (j) => j === k, () => false));
+    if (set.between[k])
+      pieces.push(
+        only(
+          set,
+          (j) => j === k - 1 || j === k,
+          (j) => j === k,
+        ),
+      );
+    else if (set.at[k] && !set.between[k + 1])
+      pieces.push(
+        only(
+          set,
+          (j) => j === k,
+          () => false,
+        ),
+      );
   }
   return pieces;
 }

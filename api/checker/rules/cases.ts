@@ -31,7 +31,10 @@ export function joinCases(route: Route, state: WalkState, step: number, failed: 
     });
     if (whole.result.ruling !== 'holds') continue;
     const result: StepResult = { ...whole.result, notes: [...whole.result.notes, 'cases'] };
-    const meanings = [...state.meanings.slice(0, step), ...parts.slice(0, count).map((part) => ({ kind: 'statement' as const, statement: part, last: null }))];
+    const meanings = [
+      ...state.meanings.slice(0, step),
+      ...parts.slice(0, count).map((part) => ({ kind: 'statement' as const, statement: part, last: null })),
+    ];
     const meaning = { kind: 'statement' as const, statement: joined, last: null };
     const results = parts.slice(0, count).map((): StepResult => result);
     return { results, state: { ...whole.state, meanings: [...meanings.slice(0, -1), meaning], from: meaning } };
@@ -49,7 +52,11 @@ function collectCases(route: Route, state: WalkState, step: number): Statement[]
     const meaning = result?.ok ? meaningOf(result.line) : null;
     if (!above || meaning?.kind !== 'statement') break;
     const letters = [...new Set([...freeLetters(above, context), ...freeLetters(meaning.statement, context)])];
-    if (letters.length !== 1 || !isPartOf(meaning.statement, above, { ...emptyEnv, letter: letters[0] as string, context })) break;
+    if (
+      letters.length !== 1 ||
+      !isPartOf(meaning.statement, above, { ...emptyEnv, letter: letters[0] as string, context })
+    )
+      break;
     parts.push(meaning.statement);
   }
   return parts;

@@ -91,7 +91,12 @@ function valuesOf(statement: Statement): Expr[] | null {
   return parts.includes(null) ? null : (parts as Expr[][]).flat();
 }
 
-function comparePolynomials(a: GaussianPolynomial, b: GaussianPolynomial, letter: string, question: Question): StepResult {
+function comparePolynomials(
+  a: GaussianPolynomial,
+  b: GaussianPolynomial,
+  letter: string,
+  question: Question,
+): StepResult {
   if (a.length === b.length && a.every((c, k) => sameGaussian(c, b[k] as Gaussian))) return holds('proved');
   const common = gcdOf(a, b);
   const lost = quotientOf(a, common);
@@ -116,7 +121,13 @@ function failOn(side: 'lost' | 'gained', names: readonly string[], letter: strin
 
 const bits = 288;
 
-function compareToValues(a: Roots, above: Statement, values: readonly Expr[], letter: string, context: CheckContext): StepResult {
+function compareToValues(
+  a: Roots,
+  above: Statement,
+  values: readonly Expr[],
+  letter: string,
+  context: CheckContext,
+): StepResult {
   const distinct = distinctValues(values, context);
   if (!distinct) return undecided('not-settled');
   for (const expr of distinct) {
@@ -142,7 +153,13 @@ function lostName(p: GaussianPolynomial, listed: readonly Expr[], letter: string
   return valueTex(rest, bits);
 }
 
-function compareFromValues(values: readonly Expr[], b: GaussianPolynomial, below: Statement, letter: string, context: CheckContext): StepResult {
+function compareFromValues(
+  values: readonly Expr[],
+  b: GaussianPolynomial,
+  below: Statement,
+  letter: string,
+  context: CheckContext,
+): StepResult {
   const distinct = distinctValues(values, context);
   if (!distinct) return undecided('not-settled');
   for (const expr of distinct) {

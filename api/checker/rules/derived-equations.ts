@@ -4,7 +4,15 @@ import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { Evidence } from '../../../shared/schemas/verdict.ts';
 import { rational } from '../numbers/rational.ts';
 import type { CompareStatement } from '../statements/statement.ts';
-import { differenceExpr, fromTerms, numberExpr, powerExpr, productExpr, termsOf, type SignedTerm } from './build-expr.ts';
+import {
+  differenceExpr,
+  fromTerms,
+  numberExpr,
+  powerExpr,
+  productExpr,
+  termsOf,
+  type SignedTerm,
+} from './build-expr.ts';
 
 export interface DerivedEquation {
   readonly operation: NonNullable<Evidence['operation']>;
@@ -50,7 +58,8 @@ function hasRootOrBar(expr: Expr): boolean {
 function clearedEquation(terms: readonly SignedTerm[]): DerivedEquation[] {
   const parts = terms.map((term) => splitQuotient(term.expr));
   const denominators: Expr[] = [];
-  for (const { below } of parts) for (const d of below) if (!denominators.some((e) => sameExpr(e, d))) denominators.push(d);
+  for (const { below } of parts)
+    for (const d of below) if (!denominators.some((e) => sameExpr(e, d))) denominators.push(d);
   if (denominators.length === 0 || denominators.length > 6) return [];
   const cleared = parts.map(({ above, below }, k): SignedTerm => {
     const others = denominators.filter((d) => !below.some((b) => sameExpr(b, d)));
@@ -102,12 +111,14 @@ function withoutLogarithms(terms: readonly SignedTerm[]): DerivedEquation[] {
 function toLogarithm(term: SignedTerm): (Logarithm & { base: Expr | 'e' | 'ten' }) | null {
   const sign = term.negative ? -1n : 1n;
   const { expr } = term;
-  if (expr.kind === 'call' && expr.name === 'ln' && expr.args[0]) return { argument: expr.args[0], times: sign, base: 'e' };
+  if (expr.kind === 'call' && expr.name === 'ln' && expr.args[0])
+    return { argument: expr.args[0], times: sign, base: 'e' };
   if (expr.kind === 'log') return { argument: expr.argument, times: sign, base: expr.base ?? 'ten' };
   if (expr.kind === 'product' && expr.factors.length === 2) {
     const [factor, inner] = expr.factors as [Expr, Expr];
     const log = toLogarithm({ negative: term.negative, expr: inner });
-    if (log && factor.kind === 'number' && factor.denominator === 1n) return { ...log, times: log.times * factor.numerator };
+    if (log && factor.kind === 'number' && factor.denominator === 1n)
+      return { ...log, times: log.times * factor.numerator };
   }
   return null;
 }

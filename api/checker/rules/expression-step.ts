@@ -27,7 +27,10 @@ function toAnswer(found: Comparison): ExpressionAnswer {
     }
     case 'different': {
       const { atTex, above: worthAbove, below: worthBelow } = found.witness;
-      return { ...fails('proved', { witness: { at: { ...atTex }, above: worthAbove, below: worthBelow } }), shrunk: [] };
+      return {
+        ...fails('proved', { witness: { at: { ...atTex }, above: worthAbove, below: worthBelow } }),
+        shrunk: [],
+      };
     }
     case 'nothing-in-common':
       return { ...fails('proved', {}, ['domain']), shrunk: [] };

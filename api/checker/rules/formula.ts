@@ -24,7 +24,8 @@ export function isolatedLetter(statement: Statement): string | null {
 }
 
 function countCompares(statement: Statement): number {
-  if (statement.kind === 'all' || statement.kind === 'any') return statement.parts.reduce((n, part) => n + countCompares(part), 0);
+  if (statement.kind === 'all' || statement.kind === 'any')
+    return statement.parts.reduce((n, part) => n + countCompares(part), 0);
   return 1;
 }
 
@@ -89,7 +90,16 @@ function judgeAt(question: FormulaQuestion, given: Assignment): OneLetterAnswer 
   return judgeOneLetter({ ...question, given });
 }
 
-const values: readonly Rational[] = [rational(2), rational(3), rational(5), rational(7, 2), rational(11), rational(4, 3), rational(13), rational(6)];
+const values: readonly Rational[] = [
+  rational(2),
+  rational(3),
+  rational(5),
+  rational(7, 2),
+  rational(11),
+  rational(4, 3),
+  rational(13),
+  rational(6),
+];
 
 /** General values first, both signs, then each letter at 0, 1 and equal to another: where formulas lose solutions. */
 function listAssignments(names: readonly string[], context: CheckContext): Assignment[] {
@@ -101,7 +111,15 @@ function listAssignments(names: readonly string[], context: CheckContext): Assig
         return [name, (signs >> k) % 2 === 1 ? { num: -whole.num, den: whole.den } : whole];
       }),
     );
-  const all = [general(0, 0), general(1, 0), general(2, 1), general(3, 2), general(4, 5), general(5, 10), general(6, 15)];
+  const all = [
+    general(0, 0),
+    general(1, 0),
+    general(2, 1),
+    general(3, 2),
+    general(4, 5),
+    general(5, 10),
+    general(6, 15),
+  ];
   const base = general(0, 0);
   for (const name of names) {
     for (const special of [rational(0), rational(1), rational(-1)]) all.push(new Map(base).set(name, special));

@@ -32,7 +32,11 @@ export function putBrackets(route: Route, state: WalkState, step: number, failed
     if (meant.result.ruling !== 'holds') continue;
     if (judgeLine(route, meant.state, step + 1, next.line).result.ruling !== 'holds') continue;
     const { result } = meant;
-    const noted = { ...result, notes: [...result.notes, 'presentation' as const], evidence: { ...result.evidence, meant: tex } };
+    const noted = {
+      ...result,
+      notes: [...result.notes, 'presentation' as const],
+      evidence: { ...result.evidence, meant: tex },
+    };
     return { results: [noted], state: meant.state };
   }
   return null;

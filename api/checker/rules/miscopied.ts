@@ -9,7 +9,9 @@ export function noteMiscopied(read: ReadDerivation, rulings: readonly StepResult
   const [given, first] = read.lines;
   const [ruling, ...rest] = rulings;
   if (!ruling || !given?.ok || !first?.ok || ruling.ruling !== 'fails' || route.input.uses?.[1]) return [...rulings];
-  return isMiscopy(given.line, first.line) ? [{ ...ruling, notes: [...ruling.notes, 'given-miscopied'] }, ...rest] : [...rulings];
+  return isMiscopy(given.line, first.line)
+    ? [{ ...ruling, notes: [...ruling.notes, 'given-miscopied'] }, ...rest]
+    : [...rulings];
 }
 
 function isMiscopy(given: Line, copy: Line): boolean {

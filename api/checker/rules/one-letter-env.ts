@@ -28,7 +28,10 @@ export function universeOf(letter: string, given: Assignment, context: CheckCont
 function assumptionOn(line: Line, letter: string, given: Assignment): Statement | null {
   const letters = lettersOf(line);
   if (!letters.includes(letter) || !letters.every((name) => name === letter || given.has(name))) return null;
-  if (line.kind === 'membership' && (line.set.kind === 'integers' || line.set.kind === 'naturals' || line.set.kind === 'rationals')) {
+  if (
+    line.kind === 'membership' &&
+    (line.set.kind === 'integers' || line.set.kind === 'naturals' || line.set.kind === 'rationals')
+  ) {
     return null;
   }
   return toStatement(line);
@@ -82,4 +85,3 @@ function periodsOf(expr: Expr, letter: string, given: Assignment, context: Check
     return slope === 0 ? 40 : (2 * Math.PI) / slope;
   });
 }
-

@@ -17,6 +17,7 @@ import {
 import { recogniseNumber } from '../solving/recognise.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { solveDefined, solveStatement, type SolveEnv } from '../statements/solve.ts';
+import { wholeNumbersOf } from '../solving/whole-numbers.ts';
 import { truthAt } from '../statements/truth.ts';
 import { comparesOf, isListOfValues, type Statement } from '../statements/statement.ts';
 import { haveSameComplexRoots } from './complex-roots.ts';
@@ -57,9 +58,10 @@ interface Solved {
 export function judgeOneLetter(question: OneLetterQuestion): OneLetterAnswer {
   const solved = solveAll(question);
   const { above, below, reference } = solved;
-  const lost = intersection(difference(above, below), reference);
+  const pieces = question.context.wholeLetters.has(question.letter) ? wholeNumbersOf : (set: RealSet): RealSet => set;
+  const lost = pieces(intersection(difference(above, below), reference));
   if (!isEmptySet(lost)) return answer(failWith(question, 'lost', lost, solved), solved, []);
-  const gained = difference(below, above);
+  const gained = pieces(difference(below, above));
   if (isEmptySet(gained)) return answer(judgeSame(question, solved), solved, listed(question, solved));
   const untrue = difference(gained, reference);
   if (isEmptySet(untrue)) return answer(holds(reachedBy(solved)), solved, listed(question, solved));
@@ -81,15 +83,28 @@ function recognise(point: RealNumber): string | null {
 function solveAll(question: OneLetterQuestion): Solved {
   const { letter, given, context, families } = question;
   const universe = universeOf(letter, given, context);
-  const window = windowFor([question.above, question.below, question.reference], universe, letter, given, families, context);
+  const window = windowFor(
+    [question.above, question.below, question.reference],
+    universe,
+    letter,
+    given,
+    families,
+    context,
+  );
   const inside = window && isWholeLine(universe) ? intersection(universe, windowSet(window)) : universe;
   const env: SolveEnv = { letter, given, context, window, hints: universe.points, families };
+  const restrict = context.wholeLetters.has(letter) ? wholeNumbersOf : (set: RealSet): RealSet => set;
   const solve = (statement: Statement, hints: readonly RealNumber[]): RealSet =>
-    isWholeLine(inside) ? solveStatement(statement, { ...env, hints }) : intersection(solveStatement(statement, { ...env, hints: [...universe.points, ...hints] }), inside);
+    restrict(
+      isWholeLine(inside)
+        ? solveStatement(statement, { ...env, hints })
+        : intersection(solveStatement(statement, { ...env, hints: [...universe.points, ...hints] }), inside),
+    );
   const first = solve(question.below, []);
   const above = solve(question.above, first.points);
   const below = needsHints(first) ? solve(question.below, above.points) : first;
-  const reference = question.reference === question.above ? above : solve(question.reference, [...above.points, ...below.points]);
+  const reference =
+    question.reference === question.above ? above : solve(question.reference, [...above.points, ...below.points]);
   return { above, below, reference, env, isStretch: window !== null && isWholeLine(universe) };
 }
 
@@ -152,7 +167,9 @@ function listed(question: OneLetterQuestion, { below, reference }: Solved): Real
 }
 
 function judgeGain(question: OneLetterQuestion, solved: Solved, gained: RealSet): OneLetterAnswer {
-  const isOrder = [question.above, question.below].some((s) => comparesOf(s).some((c) => c.sign !== '=' && c.sign !== 'approx'));
+  const isOrder = [question.above, question.below].some((s) =>
+    comparesOf(s).some((c) => c.sign !== '=' && c.sign !== 'approx'),
+  );
   if (question.settings.reversible || (isOrder && !isListOfValues(question.below, question.letter))) {
     return answer(failWith(question, 'gained', gained, solved), solved, []);
   }
@@ -163,7 +180,8 @@ function judgeGain(question: OneLetterQuestion, solved: Solved, gained: RealSet)
     const notes: Note[] = candidates.length > 0 ? ['one-way', 'candidates'] : ['one-way'];
     return answer(holds(reachedBy(solved), notes, { gained: names, operation }), solved, candidates);
   }
-  if (candidates.length > 0) return answer(holds(reachedBy(solved), ['candidates'], { gained: names }), solved, candidates);
+  if (candidates.length > 0)
+    return answer(holds(reachedBy(solved), ['candidates'], { gained: names }), solved, candidates);
   return answer(failWith(question, 'gained', gained, solved), solved, []);
 }
 

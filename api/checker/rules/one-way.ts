@@ -21,7 +21,12 @@ export function explainGain(above: Statement, below: Statement, gained: RealSet,
 }
 
 /** Every gained value has to be explained from one of the cases of the line above. */
-function explainByCases(cases: readonly Statement[], below: Statement, gained: RealSet, env: SolveEnv): Operation | null {
+function explainByCases(
+  cases: readonly Statement[],
+  below: Statement,
+  gained: RealSet,
+  env: SolveEnv,
+): Operation | null {
   let rest = gained;
   let operation: Operation | null = null;
   for (const part of cases) {
@@ -103,7 +108,9 @@ function explainRemoved(
   const defined = solveDefined(above, env);
   if (!isEmptySet(intersection(gained, defined))) return null;
   if (!areSameUpToFactor(above, below, env, context)) return null;
-  return JSON.stringify(above, (_, value: unknown) => (typeof value === 'bigint' ? String(value) : value)).match(/"(ln|log)"/)
+  return JSON.stringify(above, (_, value: unknown) => (typeof value === 'bigint' ? String(value) : value)).match(
+    /"(ln|log)"/,
+  )
     ? 'logarithm'
     : 'removed';
 }

@@ -67,7 +67,14 @@ function afterStatement(above: Statement, context: CheckContext): (line: Line) =
 
 function solutionsOf(above: Statement, letter: string, context: CheckContext): number[] {
   try {
-    const set = solveStatement(above, { letter, given: new Map(), context, window: null, hints: [], families: new Set() });
+    const set = solveStatement(above, {
+      letter,
+      given: new Map(),
+      context,
+      window: null,
+      hints: [],
+      families: new Set(),
+    });
     return isFiniteSet(set) ? set.points.filter((_, k) => set.at[k]).map(approximate) : [];
   } catch (cause) {
     if (cause instanceof Unsettled) return [];

@@ -10,7 +10,8 @@ import type { StepResult } from './step-result.ts';
  */
 export function judgeRunningEquals(above: Expr, members: readonly Expr[], context: CheckContext): StepResult | null {
   const [first, ...rest] = members;
-  if (!first || !beginningsOf(first).some((start) => compareExpressions(above, start, context).kind === 'equal')) return null;
+  if (!first || !beginningsOf(first).some((start) => compareExpressions(above, start, context).kind === 'equal'))
+    return null;
   if (rest.length === 0) return { ruling: 'holds', reached: 'proved', notes: ['presentation'], evidence: {} };
   const found = judgeLinks(first, rest, context);
   return found.ruling === 'holds' ? { ...found, notes: [...found.notes, 'presentation'] } : null;

@@ -46,7 +46,14 @@ export function areSameUpToFactor(
   return sameUpToFactor(above, below, env.given, context) !== null;
 }
 
-const trials: readonly Rational[] = [rational(7, 5), rational(13, 3), rational(1, 7), rational(-9, 4), rational(23, 2), rational(-17, 50)];
+const trials: readonly Rational[] = [
+  rational(7, 5),
+  rational(13, 3),
+  rational(1, 7),
+  rational(-9, 4),
+  rational(23, 2),
+  rational(-17, 50),
+];
 
 /** b / a at a point where both are short fractions, else a factor of 1 or -1. */
 function findFactor(a: Expr, b: Expr, given: Assignment, context: CheckContext): Rational | null {

@@ -66,7 +66,12 @@ function isSolution(equations: readonly CompareStatement[], solution: Solution, 
   });
 }
 
-function eliminate(equations: readonly CompareStatement[], values: Solution, context: CheckContext, depth: number): Solution[] {
+function eliminate(
+  equations: readonly CompareStatement[],
+  values: Solution,
+  context: CheckContext,
+  depth: number,
+): Solution[] {
   if (depth > 12) throw new Unsettled('limit');
   context.budget.spend(500);
   const open: { equation: CompareStatement; letters: string[] }[] = [];
@@ -77,11 +82,34 @@ function eliminate(equations: readonly CompareStatement[], values: Solution, con
   }
   if (open.length === 0) return [values];
   const single = open.find(({ letters }) => letters.length === 1);
-  if (single) return fromOneLetter(single.equation, single.letters[0] as string, open.map((o) => o.equation), values, context, depth);
+  if (single)
+    return fromOneLetter(
+      single.equation,
+      single.letters[0] as string,
+      open.map((o) => o.equation),
+      values,
+      context,
+      depth,
+    );
   const way = open.flatMap(({ equation, letters }) => letters.flatMap((letter) => waysOut(equation, letter, context)));
   const best = way.find((w) => w.slope !== null) ?? way[0];
-  if (!best) return eliminate(combine(open.map((o) => o.equation), context), values, context, depth + 1);
-  return fromLinear(best, open.map((o) => o.equation), values, context, depth);
+  if (!best)
+    return eliminate(
+      combine(
+        open.map((o) => o.equation),
+        context,
+      ),
+      values,
+      context,
+      depth + 1,
+    );
+  return fromLinear(
+    best,
+    open.map((o) => o.equation),
+    values,
+    context,
+    depth,
+  );
 }
 
 function fromOneLetter(
@@ -99,11 +127,23 @@ function fromOneLetter(
   return set.points.flatMap((point) => bind(letter, toExpr(point), rest, values, context, depth));
 }
 
-function bind(letter: string, value: Expr, rest: readonly CompareStatement[], values: Solution, context: CheckContext, depth: number): Solution[] {
+function bind(
+  letter: string,
+  value: Expr,
+  rest: readonly CompareStatement[],
+  values: Solution,
+  context: CheckContext,
+  depth: number,
+): Solution[] {
   const one = new Map([[letter, value]]);
   const next = new Map([...values].map(([name, expr]) => [name, substitute(expr, one)] as const));
   next.set(letter, value);
-  return eliminate(rest.map((equation) => substituteIn(equation, one) as CompareStatement), next, context, depth + 1);
+  return eliminate(
+    rest.map((equation) => substituteIn(equation, one) as CompareStatement),
+    next,
+    context,
+    depth + 1,
+  );
 }
 
 /** A number as an expression: a fraction, a surd or what the author wrote. */
@@ -156,7 +196,13 @@ function constantSlope(slope: Expr, context: CheckContext): Rational | null {
   return values.every((value) => value && value.num === first.num && value.den === first.den) ? first : null;
 }
 
-function fromLinear(way: WayOut, equations: readonly CompareStatement[], values: Solution, context: CheckContext, depth: number): Solution[] {
+function fromLinear(
+  way: WayOut,
+  equations: readonly CompareStatement[],
+  values: Solution,
+  context: CheckContext,
+  depth: number,
+): Solution[] {
   const { equation, letter, slope, slopeExpr, offset } = way;
   const rest = equations.filter((other) => other !== equation);
   const divisor = slope ? numberExpr(slope) : slopeExpr;

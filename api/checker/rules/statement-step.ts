@@ -36,12 +36,22 @@ export interface StatementAnswer extends StepResult {
 export function judgeStatements(question: StatementQuestion): StatementAnswer {
   const { above, below, context } = question;
   const families = findFamilies(question);
-  const letters = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter((n) => !families.has(n));
+  const letters = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter(
+    (n) => !families.has(n),
+  );
   if (context.numbers === 'complex') return withoutCandidates(judgeComplexStep(question, letters));
   if (isSystem(question)) return withoutCandidates(judgeSystemStep(question));
   const letter = letters.length === 1 ? (letters[0] as string) : chooseUnknown(question, letters);
   if (letter === null) return withoutCandidates(judgeSameEquation(above, below, context) ?? undecided('no-unknown'));
-  const shared = { above, below, letter, reference: question.reference, families, settings: question.settings, context };
+  const shared = {
+    above,
+    below,
+    letter,
+    reference: question.reference,
+    families,
+    settings: question.settings,
+    context,
+  };
   if (letters.length > 1) return withoutCandidates(judgeFormula(shared));
   if (isApproximate(above) || isApproximate(below)) {
     return withoutCandidates(judgeApproximation({ ...shared, given: new Map() }));

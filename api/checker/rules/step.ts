@@ -16,6 +16,8 @@ export interface StepQuestion {
   readonly line: Line;
   /** null where the lines before this one were definitions only. */
   readonly from: Meaning | null;
+  /** The line before this one where it was a remark: a line that continues goes on from there. */
+  readonly remark: Meaning | null;
   readonly reference: Statement | null;
   readonly known: readonly Statement[];
   readonly givenLetters: readonly string[];
@@ -35,10 +37,12 @@ export interface StepAnswer {
   /** Conditions that later steps stand under. */
   readonly shrunk: readonly Line[];
   readonly defines: Definitions | null;
+  /** What the line said, where it was a remark. */
+  readonly remark: Meaning | null;
 }
 
 function answer(result: StepResult, meaning: Meaning | null, rest: Partial<StepAnswer> = {}): StepAnswer {
-  return { result, meaning, candidates: [], shrunk: [], defines: null, ...rest };
+  return { result, meaning, candidates: [], shrunk: [], defines: null, remark: null, ...rest };
 }
 
 /** Rules on one step; throws Unsettled and BudgetSpent. */
@@ -56,7 +60,7 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   const fresh = freshDefinition(line, question);
   if (fresh) return define(fresh, context);
   if (freeLetters(meaning.statement, context).length === 0) {
-    const remark = judgeRemark(meaning.statement, question);
+    const remark = judgeRemark(meaning, question);
     if (remark) return remark;
   }
   if (from?.kind === 'statement') return judgeFromStatement(meaning, from.statement, question);
@@ -81,25 +85,36 @@ function freshDefinition(line: Line, question: StepQuestion): Extract<Line, { ki
   const right = toStatement({ kind: 'relation', left: line.right, sign: '=', right: line.right, span: line.span });
   const letters = right ? freeLetters(right, context) : [];
   const isKnown = letters.length > 0 && letters.every((letter) => used.includes(letter));
-  return isKnown && !letters.includes(name) ? { kind: 'definition', name, params: [], value: line.right, span: line.span } : null;
+  return isKnown && !letters.includes(name)
+    ? { kind: 'definition', name, params: [], value: line.right, span: line.span }
+    : null;
 }
 
 /** A statement without letters: a true one is a remark (rule 6c), a false one is judged as what it claims. */
-function judgeRemark(statement: Statement, question: StepQuestion): StepAnswer | null {
+function judgeRemark(meaning: Extract<Meaning, { kind: 'statement' }>, question: StepQuestion): StepAnswer | null {
+  const { statement } = meaning;
   if (statement.kind !== 'compare' && statement.kind !== 'all') return null;
   const { from, context } = question;
   const env = { letter: '', given: new Map(), context, window: null, hints: [], families: new Set<string>() };
   const truth = solveStatement(statement, env);
   if (isWholeLine(truth)) {
     const isFirst = from === null || (from.kind === 'statement' && freeLetters(from.statement, context).length === 0);
-    return answer(holds(truth.reached, isFirst ? [] : ['remark']), null);
+    return answer(holds(truth.reached, isFirst ? [] : ['remark']), null, { remark: meaning });
   }
   if (from?.kind === 'statement' && freeLetters(from.statement, context).length > 0) return null;
   if (!isEmptySet(truth)) return null;
-  return answer(fails(truth.reached, { witness: { at: {}, above: 'true', below: 'false' } }), { kind: 'statement', statement, last: null });
+  return answer(fails(truth.reached, { witness: { at: {}, above: 'true', below: 'false' } }), {
+    kind: 'statement',
+    statement,
+    last: null,
+  });
 }
 
-function judgeFromStatement(meaning: Extract<Meaning, { kind: 'statement' }>, above: Statement, question: StepQuestion): StepAnswer {
+function judgeFromStatement(
+  meaning: Extract<Meaning, { kind: 'statement' }>,
+  above: Statement,
+  question: StepQuestion,
+): StepAnswer {
   const found = judgeStatements({
     above,
     below: meaning.statement,
@@ -130,7 +145,8 @@ function judgeAfterExpression(line: Line, meaning: Meaning, question: StepQuesti
 }
 
 function judgeContinuation(line: Extract<Line, { kind: 'continuation' }>, question: StepQuestion): StepAnswer {
-  const { from, context } = question;
+  const { from, context, remark } = question;
+  if (remark?.kind === 'statement' && remark.last) return continueRemark(line, remark, remark.last, context);
   if (from === null) return answer(undecided('not-covered'), null);
   if (from.kind === 'expression') return continueExpression(line, from.expr, question);
   if (!from.last) return answer(undecided('not-covered'), null);
@@ -141,11 +157,26 @@ function judgeContinuation(line: Extract<Line, { kind: 'continuation' }>, questi
     const found = judgeLinks(from.last, line.members, context);
     if (found.ruling === 'holds') {
       const replaced = replaceLast(from.statement, last) ?? statement;
-      return answer(withNote(found, 'continued'), { kind: 'statement', statement: replaced, last }, { shrunk: found.shrunk });
+      return answer(
+        withNote(found, 'continued'),
+        { kind: 'statement', statement: replaced, last },
+        { shrunk: found.shrunk },
+      );
     }
   }
   const found = judgeFromStatement({ kind: 'statement', statement, last }, from.statement, question);
   return { ...found, result: withNote(found.result, 'continued') };
+}
+
+function continueRemark(
+  line: Extract<Line, { kind: 'continuation' }>,
+  remark: Extract<Meaning, { kind: 'statement' }>,
+  first: Expr,
+  context: CheckContext,
+): StepAnswer {
+  if (line.signs.some((sign) => sign !== '=')) return answer(undecided('not-covered'), null);
+  const found = withNote(judgeLinks(first, line.members, context), 'continued');
+  return answer(found, null, { remark: { ...remark, last: line.members[line.members.length - 1] as Expr } });
 }
 
 /** left = old becomes left = new, where the statement is one equation. */
@@ -166,15 +197,26 @@ function continueExpression(
   const last: Meaning = { kind: 'expression', expr: line.members[line.members.length - 1] as Expr };
   if (line.signs.every((sign) => sign === '=')) {
     const found = judgeLinks(above, line.members, context);
-    const running = found.ruling === 'fails' && settings.presentation === 'note' ? judgeRunningEquals(above, line.members, context) : null;
-    return answer(withNote(running ?? found, 'continued'), last, { shrunk: (running ? [] : found.shrunk) });
+    const running =
+      found.ruling === 'fails' && settings.presentation === 'note'
+        ? judgeRunningEquals(above, line.members, context)
+        : null;
+    return answer(withNote(running ?? found, 'continued'), last, { shrunk: running ? [] : found.shrunk });
   }
   const statement = continueFrom(above, line.members, line.signs);
   const letters = freeLetters(statement, context);
   if (letters.length > 1) return answer(undecided('change-of-kind'), last);
-  const env = { letter: letters[0] ?? '', given: new Map(), context, window: null, hints: [], families: new Set<string>() };
+  const env = {
+    letter: letters[0] ?? '',
+    given: new Map(),
+    context,
+    window: null,
+    hints: [],
+    families: new Set<string>(),
+  };
   const truth = solveStatement(statement, env);
   if (isWholeLine(truth)) return answer(holds(truth.reached, ['continued']), last);
-  if (letters.length === 0) return answer(fails(truth.reached, { witness: { at: {}, above: 'true', below: 'false' } }, ['continued']), last);
+  if (letters.length === 0)
+    return answer(fails(truth.reached, { witness: { at: {}, above: 'true', below: 'false' } }, ['continued']), last);
   return answer(undecided('change-of-kind'), last);
 }

@@ -36,7 +36,8 @@ export function judgeSystemStep(question: StatementQuestion): StepResult {
 
 function judgeKnown(known: readonly Statement[], below: Statement, context: CheckContext): StepResult {
   const solutions = branchesOf({ kind: 'all', parts: known }).flatMap((branch) => solveSystem(branch, context));
-  if (below.kind === 'never') return solutions.length === 0 ? holds('proved') : failAt(solutions[0] as Solution, context, 'lost');
+  if (below.kind === 'never')
+    return solutions.length === 0 ? holds('proved') : failAt(solutions[0] as Solution, context, 'lost');
   if (solutions.length === 0) return undecided('not-settled', ['empty']);
   let sampled = false;
   for (const solution of solutions) {
@@ -56,12 +57,15 @@ function branchesOf(statement: Statement): CompareStatement[][] {
     case 'compare':
       return statement.sign === '=' ? [[statement]] : [[]];
     case 'all':
-      return statement.parts.reduce<CompareStatement[][]>((branches, part) => {
-        const next = branchesOf(part);
-        const joined = branches.flatMap((branch) => next.map((more) => [...branch, ...more]));
-        if (joined.length > 16) throw new Unsettled('limit');
-        return joined;
-      }, [[]]);
+      return statement.parts.reduce<CompareStatement[][]>(
+        (branches, part) => {
+          const next = branchesOf(part);
+          const joined = branches.flatMap((branch) => next.map((more) => [...branch, ...more]));
+          if (joined.length > 16) throw new Unsettled('limit');
+          return joined;
+        },
+        [[]],
+      );
     case 'any':
       return statement.parts.flatMap(branchesOf);
     case 'always':
@@ -81,7 +85,12 @@ function isTrueOn(solution: Solution, below: Statement, context: CheckContext): 
   }
   const identity = isIdentity(put, context);
   if (identity !== null) return identity;
-  for (const [p, q] of [[1, 2], [2, 5], [3, 1], [0, 7]] as const) {
+  for (const [p, q] of [
+    [1, 2],
+    [2, 5],
+    [3, 1],
+    [0, 7],
+  ] as const) {
     const free = new Map(letters.map((name, k) => [name, numberExpr(rational(k === 0 ? p : q + k))] as const));
     const at = new Map([...[...solution].map(([name, expr]) => [name, substituteExpr(expr, free)] as const), ...free]);
     if (isTrueStatement(substituteIn(below, at), context) === false) return at;
@@ -104,7 +113,9 @@ function isIdentity(statement: Statement, context: CheckContext): true | 'sample
     if (parts.includes(null)) return null;
     return parts.includes('sampled') ? 'sampled' : true;
   }
-  return statement.kind === 'any' ? (statement.parts.map((part) => isIdentity(part, context)).find(Boolean) ?? null) : null;
+  return statement.kind === 'any'
+    ? (statement.parts.map((part) => isIdentity(part, context)).find(Boolean) ?? null)
+    : null;
 }
 
 /** The points that a line lists outright: letter = number for several letters, joined by and, cases by or. */
@@ -130,7 +141,9 @@ function failAt(point: Solution, context: CheckContext, side: 'lost' | 'gained')
   const at: Record<string, string> = {};
   for (const [name, expr] of point) at[name] = nameValue(expr, context);
   const [above, below] = side === 'lost' ? ['true', 'false'] : ['false', 'true'];
-  const named = Object.entries(at).map(([name, value]) => `${name}=${value}`).join(',\\ ');
+  const named = Object.entries(at)
+    .map(([name, value]) => `${name}=${value}`)
+    .join(',\\ ');
   return fails('proved', { [side]: [named], witness: { at, above, below } });
 }
 
@@ -142,11 +155,15 @@ function nameValue(expr: CompareStatement['left'], context: CheckContext): strin
 
 function solutionsEvidence(solutions: readonly Solution[], context: CheckContext): { solutions?: string } {
   const isPoint = (solution: Solution): boolean =>
-    [...solution.values()].every((expr) => freeLetters({ kind: 'compare', left: expr, sign: '=', right: expr }, context).length === 0);
+    [...solution.values()].every(
+      (expr) => freeLetters({ kind: 'compare', left: expr, sign: '=', right: expr }, context).length === 0,
+    );
   if (!solutions.every(isPoint) || solutions.length > 8) return {};
   const names = solutions.map((solution) => {
     const letters = [...solution.keys()].sort();
-    return letters.map((name) => `${name}=${nameValue(solution.get(name) as CompareStatement['left'], context)}`).join(',\\ ');
+    return letters
+      .map((name) => `${name}=${nameValue(solution.get(name) as CompareStatement['left'], context)}`)
+      .join(',\\ ');
   });
   return { solutions: names.join('\\text{ or }') };
 }

@@ -21,7 +21,8 @@ export function listBreaks(graph: Graph): Break[] {
 
 function breaksOf(node: GraphNode): Break[] {
   const [a, b] = node.args as readonly number[];
-  const at = (index: number | undefined, shift: -1 | 0 | 1 = 0): Break[] => (index === undefined ? [] : [{ node: index, shift }]);
+  const at = (index: number | undefined, shift: -1 | 0 | 1 = 0): Break[] =>
+    index === undefined ? [] : [{ node: index, shift }];
   switch (node.op) {
     case 'div':
       return at(b);
@@ -37,8 +38,18 @@ function breaksOf(node: GraphNode): Break[] {
   }
 }
 
-function breaksOfCall(name: Extract<GraphNode, { op: 'call' }>['name'], a: number | undefined, b: number | undefined): Break[] {
-  const both = (index: number | undefined): Break[] => (index === undefined ? [] : [{ node: index, shift: -1 }, { node: index, shift: 1 }]);
+function breaksOfCall(
+  name: Extract<GraphNode, { op: 'call' }>['name'],
+  a: number | undefined,
+  b: number | undefined,
+): Break[] {
+  const both = (index: number | undefined): Break[] =>
+    index === undefined
+      ? []
+      : [
+          { node: index, shift: -1 },
+          { node: index, shift: 1 },
+        ];
   const zero = (index: number | undefined): Break[] => (index === undefined ? [] : [{ node: index, shift: 0 }]);
   switch (name) {
     case 'ln':

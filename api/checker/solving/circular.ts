@@ -28,7 +28,12 @@ export function knownToNumber(value: KnownValue): number {
 }
 
 /** The zeros of sin or cos of a linear argument inside a window; null where the argument is not linear. */
-export function zerosOfCircular(graph: Graph, argument: number, which: 'sin' | 'cos', env: LineEnv): RealNumber[] | null {
+export function zerosOfCircular(
+  graph: Graph,
+  argument: number,
+  which: 'sin' | 'cos',
+  env: LineEnv,
+): RealNumber[] | null {
   const inner = { nodes: graph.nodes, root: argument };
   if (!env.window || degreeIn(inner, env.letter) !== 1) return null;
   const form = linearForm(inner, env.letter, env.given, 96, env.context);

@@ -39,4 +39,3 @@ function signsOfZero(holes: Polynomial): SignMap {
 export function betweenAll(points: readonly RealNumber[]): Rational[] {
   return Array.from({ length: points.length + 1 }, (_, k) => between(points[k - 1] ?? null, points[k] ?? null));
 }
-

@@ -61,7 +61,10 @@ export function monic(p: GaussianPolynomial): GaussianPolynomial {
   return lead ? p.map((c) => over(c, lead)) : p;
 }
 
-function divide(a: GaussianPolynomial, b: GaussianPolynomial): { quotient: GaussianPolynomial; rest: GaussianPolynomial } {
+function divide(
+  a: GaussianPolynomial,
+  b: GaussianPolynomial,
+): { quotient: GaussianPolynomial; rest: GaussianPolynomial } {
   const lead = b[b.length - 1] as Gaussian;
   const quotient: Gaussian[] = Array.from({ length: Math.max(0, a.length - b.length + 1) }, () => none);
   let rest = [...a];
@@ -117,7 +120,11 @@ function constant(value: Gaussian): GaussianFraction {
   return { num: isNone(value) ? [] : [value], den: whole };
 }
 
-function ofNode(node: GraphNode, letter: string, of: (arg: number) => GaussianFraction | null): GaussianFraction | null {
+function ofNode(
+  node: GraphNode,
+  letter: string,
+  of: (arg: number) => GaussianFraction | null,
+): GaussianFraction | null {
   switch (node.op) {
     case 'number':
       return constant({ re: node.value, im: zero });
@@ -126,7 +133,10 @@ function ofNode(node: GraphNode, letter: string, of: (arg: number) => GaussianFr
     case 'letter':
       return node.name === letter ? { num: [none, unit], den: whole } : null;
     case 'add':
-      return fold(node.args.map(of), (a, b) => ({ num: sum(product(a.num, b.den), product(b.num, a.den)), den: product(a.den, b.den) }));
+      return fold(node.args.map(of), (a, b) => ({
+        num: sum(product(a.num, b.den), product(b.num, a.den)),
+        den: product(a.den, b.den),
+      }));
     case 'mul':
       return fold(node.args.map(of), (a, b) => ({ num: product(a.num, b.num), den: product(a.den, b.den) }));
     case 'negate': {
@@ -135,12 +145,18 @@ function ofNode(node: GraphNode, letter: string, of: (arg: number) => GaussianFr
     }
     case 'div': {
       const [top, bottom] = [of(node.args[0]), of(node.args[1])];
-      return top && bottom && bottom.num.length > 0 ? { num: product(top.num, bottom.den), den: product(top.den, bottom.num) } : null;
+      return top && bottom && bottom.num.length > 0
+        ? { num: product(top.num, bottom.den), den: product(top.den, bottom.num) }
+        : null;
     }
     case 'power': {
       const base = of(node.args[0]);
-      if (!base || node.exponent < 1 || (base.num.length - 1) * node.exponent > mostDegree || node.exponent > 200) return null;
-      return fold(Array.from({ length: node.exponent }, () => base), (a, b) => ({ num: product(a.num, b.num), den: product(a.den, b.den) }));
+      if (!base || node.exponent < 1 || (base.num.length - 1) * node.exponent > mostDegree || node.exponent > 200)
+        return null;
+      return fold(
+        Array.from({ length: node.exponent }, () => base),
+        (a, b) => ({ num: product(a.num, b.num), den: product(a.den, b.den) }),
+      );
     }
     default:
       return null;

@@ -1,6 +1,17 @@
 import type { CheckContext } from '../context.ts';
 import { rational } from '../numbers/rational.ts';
-import { addKnown, divKnown, isExactZero, isKnown, mulKnown, negateKnown, oneValue, subKnown, toBall, zeroValue } from '../values/arithmetic.ts';
+import {
+  addKnown,
+  divKnown,
+  isExactZero,
+  isKnown,
+  mulKnown,
+  negateKnown,
+  oneValue,
+  subKnown,
+  toBall,
+  zeroValue,
+} from '../values/arithmetic.ts';
 import { evaluateNodes } from '../values/evaluate.ts';
 import type { Graph, GraphNode } from '../values/graph.ts';
 import type { KnownValue } from '../values/value.ts';
@@ -47,7 +58,13 @@ export interface LinearForm {
 }
 
 /** slope * letter + offset for a graph of degree one, exact where its constants are; null where one has no value. */
-export function linearForm(graph: Graph, letter: string, given: Assignment, bits: number, context: CheckContext): LinearForm | null {
+export function linearForm(
+  graph: Graph,
+  letter: string,
+  given: Assignment,
+  bits: number,
+  context: CheckContext,
+): LinearForm | null {
   const point = new Map<string, KnownValue>([[letter, zeroValue]]);
   for (const [name, value] of given) point.set(name, { kind: 'rational', value });
   const nodes = graph.nodes.slice(0, graph.root + 1);
@@ -132,4 +149,3 @@ function exactLinearRoot(graph: Graph, letter: string, given: Assignment): RealN
   const root = inverse && offset && multiplySurds(negateSurd(offset), inverse);
   return root ? surdToNumber(root) : null;
 }
-

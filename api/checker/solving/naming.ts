@@ -86,4 +86,3 @@ export function nameSet(set: RealSet, recognise: Recognise = () => null): string
 function interval(from: string, fromClosed: boolean, to: string, toClosed: boolean): string {
   return `\\left${fromClosed ? '[' : '('}${from},${to}\\right${toClosed ? ']' : ')'}`;
 }
-

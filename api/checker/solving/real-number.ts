@@ -84,7 +84,8 @@ export function compareNumbers(a: RealNumber, b: RealNumber): Order {
   if (a === b) return { order: 0, certain: true };
   if (a.kind === 'rational' && b.kind === 'rational') return { order: compare(a.value, b.value), certain: true };
   if (a.kind === 'rational' && b.kind === 'algebraic') return { order: compareToRoot(a.value, b), certain: true };
-  if (a.kind === 'algebraic' && b.kind === 'rational') return { order: reverse(compareToRoot(b.value, a)), certain: true };
+  if (a.kind === 'algebraic' && b.kind === 'rational')
+    return { order: reverse(compareToRoot(b.value, a)), certain: true };
   if (a.kind === 'algebraic' && b.kind === 'algebraic') {
     if (sameRoot(a, b)) return { order: 0, certain: true };
     return compareByDigits(a, b, 1 << 14) ?? { order: 0, certain: false };
@@ -142,7 +143,11 @@ export function between(low: RealNumber | null, high: RealNumber | null): Ration
 }
 
 function mirrored(a: RealNumber): RealNumber {
-  return { kind: 'computed', expr: null, enclose: (bits) => ({ mid: -enclose(a, bits).mid, rad: enclose(a, bits).rad }) };
+  return {
+    kind: 'computed',
+    expr: null,
+    enclose: (bits) => ({ mid: -enclose(a, bits).mid, rad: enclose(a, bits).rad }),
+  };
 }
 
 function wholeBelow(a: RealNumber): bigint {
@@ -174,4 +179,3 @@ function reduce(num: bigint, den: bigint): Rational {
   while (b !== 0n) [a, b] = [b, a % b];
   return { num: num / a, den: den / a };
 }
-

@@ -90,7 +90,10 @@ function toRoot(p: Polynomial, interval: RootInterval): RootInterval {
   if (signAt(p, low) === 0) low = nudge(p, low, high);
   if (signAt(p, high) === 0) high = nudge(p, high, low);
   let current: RootInterval = { low, high };
-  while ((current.high.num * current.low.den - current.low.num * current.high.den) * lead >= current.low.den * current.high.den) {
+  while (
+    (current.high.num * current.low.den - current.low.num * current.high.den) * lead >=
+    current.low.den * current.high.den
+  ) {
     current = halveInterval(p, current);
     if (current.low === current.high) return current;
   }
@@ -143,8 +146,12 @@ export function isolateRealRoots(p: Polynomial): RootInterval[] {
     roots.push({ low: negated(root.high), high: negated(root.low) });
   }
   return roots
-    .map((root) => (root.low.num === root.high.num && root.low.den === root.high.den ? { low: root.low, high: root.low } : root))
-    .sort((a, b) => (a.low.num * b.low.den < b.low.num * a.low.den ? -1 : a.low.num * b.low.den > b.low.num * a.low.den ? 1 : 0));
+    .map((root) =>
+      root.low.num === root.high.num && root.low.den === root.high.den ? { low: root.low, high: root.low } : root,
+    )
+    .sort((a, b) =>
+      a.low.num * b.low.den < b.low.num * a.low.den ? -1 : a.low.num * b.low.den > b.low.num * a.low.den ? 1 : 0,
+    );
 }
 
 function negated(a: Rational): Rational {

@@ -32,7 +32,14 @@ export function guessNumbers(near: number): RealNumber[] {
 /** ln of a fraction. */
 function logarithmOf(value: Rational): RealNumber {
   const span = { start: 0, end: 0 };
-  const argument: Expr = { kind: 'number', numerator: value.num, denominator: value.den, written: 'integer', decimals: 0, span };
+  const argument: Expr = {
+    kind: 'number',
+    numerator: value.num,
+    denominator: value.den,
+    written: 'integer',
+    decimals: 0,
+    span,
+  };
   return {
     kind: 'computed',
     expr: { kind: 'call', name: 'ln', args: [argument], span },
@@ -80,4 +87,3 @@ export function recogniseNumber(a: RealNumber): string | null {
   const top = size === 1n ? '\\pi' : `${size}\\pi`;
   return `${num < 0n ? '-' : ''}${den === 1n ? top : `\\frac{${top}}{${den}}`}`;
 }
-

@@ -93,7 +93,11 @@ function zerosBetween(
   const zeros: RealNumber[] = [];
   const low = env.window?.low ?? -Infinity;
   const high = env.window?.high ?? Infinity;
-  const all = [low - (env.window ? 1e-6 : 0), ...ends.filter((x) => x > low && x < high), high + (env.window ? 1e-6 : 0)];
+  const all = [
+    low - (env.window ? 1e-6 : 0),
+    ...ends.filter((x) => x > low && x < high),
+    high + (env.window ? 1e-6 : 0),
+  ];
   for (let k = 0; k + 1 < all.length; k += 1) {
     const [a, b] = [all[k] as number, all[k + 1] as number];
     const share = env.window ? (waves * (b - a)) / (high - low) : 0;
@@ -115,12 +119,14 @@ function zerosAt(
   const scale = Math.abs(f(crossing.low)) + Math.abs(f(crossing.high));
   if (crossing.kind === 'touching' && (!Number.isFinite(scale) || size > 1e-7 * scale)) return [];
   for (const guess of guessNumbers(at)) {
-    if (approximate(guess) >= crossing.low && approximate(guess) <= crossing.high && isZeroAt(graph, guess, env)) return [guess];
+    if (approximate(guess) >= crossing.low && approximate(guess) <= crossing.high && isZeroAt(graph, guess, env))
+      return [guess];
   }
   const ball = { graph, letter: env.letter, given: env.given, context: env.context };
   if (crossing.kind === 'touching') return touchingZeros(graph, f, crossing, at, env);
   const wider = 1e-9 * (1 + Math.abs(at));
-  const zero = zeroBetween(ball, crossing.low, crossing.high) ?? zeroBetween(ball, crossing.low - wider, crossing.high + wider);
+  const zero =
+    zeroBetween(ball, crossing.low, crossing.high) ?? zeroBetween(ball, crossing.low - wider, crossing.high + wider);
   if (zero) return [zero];
   // Signs that are noise: the function is zero all along, or the zero is not to be pinned down.
   const middle = rationalNumber(rational(BigInt(Math.round(at * 2 ** 40)), 1n << 40n));

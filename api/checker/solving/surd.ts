@@ -1,4 +1,18 @@
-import { absolute, add, div, exactRoot, isZero, mul, negate, one, rational, sign, sub, zero, type Rational } from '../numbers/rational.ts';
+import {
+  absolute,
+  add,
+  div,
+  exactRoot,
+  isZero,
+  mul,
+  negate,
+  one,
+  rational,
+  sign,
+  sub,
+  zero,
+  type Rational,
+} from '../numbers/rational.ts';
 import type { Graph, GraphNode } from '../values/graph.ts';
 import type { Assignment } from './fraction.ts';
 import { rationalNumber, realRoots, type RealNumber } from './real-number.ts';
@@ -187,4 +201,3 @@ function overTex(negative: boolean, top: string, den: bigint): string {
 function gcdOf(a: bigint, b: bigint): bigint {
   return b === 0n ? a : gcdOf(b, a % b);
 }
-

@@ -213,4 +213,3 @@ function findConstant(expr: Expr, env: SolveEnv): RealNumber | 'undefined' {
   if (!number) throw new Unsettled('not-covered');
   return number.kind === 'computed' ? { ...number, expr } : number;
 }
-

@@ -89,7 +89,8 @@ function withChoices(exprs: readonly Expr[], build: (chosen: readonly Expr[]) =>
 }
 
 function listChoices(expr: Expr): TermSign[] {
-  const own = expr.kind === 'sum' ? expr.terms.map((t) => t.sign).filter((s) => s === 'plusminus' || s === 'minusplus') : [];
+  const own =
+    expr.kind === 'sum' ? expr.terms.map((t) => t.sign).filter((s) => s === 'plusminus' || s === 'minusplus') : [];
   return [...own, ...childrenOf(expr).flatMap(listChoices)];
 }
 

@@ -31,7 +31,11 @@ export function truthAt(statement: Statement, at: RealNumber, env: SolveEnv): Tr
   }
 }
 
-function joinTruths(statement: Extract<Statement, { kind: 'all' | 'any' }>, at: RealNumber, env: SolveEnv): Truth | null {
+function joinTruths(
+  statement: Extract<Statement, { kind: 'all' | 'any' }>,
+  at: RealNumber,
+  env: SolveEnv,
+): Truth | null {
   const wanted = statement.kind === 'any';
   let result: Truth | null = { isTrue: !wanted, certain: true };
   for (const part of statement.parts) {

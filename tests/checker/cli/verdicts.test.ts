@@ -5,7 +5,9 @@ import { checkDerivation } from '../../../api/checker/rule-derivation.ts';
 
 describe('a line of the command', () => {
   it('is a derivation with its settings', () => {
-    const parsed = parseDerivationLine('{"id":"a","lines":["x+x","2x"],"assume":["x>0"],"settings":{"reversible":true}}');
+    const parsed = parseDerivationLine(
+      '{"id":"a","lines":["x+x","2x"],"assume":["x>0"],"settings":{"reversible":true}}',
+    );
     expect(parsed).toEqual({
       ok: true,
       id: 'a',

@@ -17,7 +17,10 @@ interface Row {
 describe.runIf(hasSympy)('steps between statements, beside SymPy', () => {
   it('never disagree, and are seldom undecided', () => {
     const made = spawnSync('python3', [script, '20261', '120'], { encoding: 'utf8', timeout: 240_000 });
-    const rows = made.stdout.trim().split('\n').map((line) => JSON.parse(line) as Row);
+    const rows = made.stdout
+      .trim()
+      .split('\n')
+      .map((line) => JSON.parse(line) as Row);
     expect(rows).toHaveLength(120);
     const rulings = rows.map(({ lines, assume, settings, label }) => {
       const verdict = checkDerivation({ lines, assume: assume ?? [], settings });
