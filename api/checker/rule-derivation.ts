@@ -1,5 +1,5 @@
 import type { DerivationInput, StepRuling, Verdict } from '../../shared/schemas/verdict.ts';
-import { addEvidence } from './add-evidence.ts';
+import { addEvidence } from './evidence/add-evidence.ts';
 import { readDerivation, type ReadDerivation } from './read-derivation.ts';
 import { applyGoal } from './goals/apply-goal.ts';
 import { joinCases } from './rules/cases.ts';
@@ -19,11 +19,11 @@ export interface Watch {
 export function checkDerivation(input: DerivationInput, watch: Watch = {}): Verdict {
   const read = readDerivation(input);
   const route = planRoute(input, read);
-  const { rulings, last } = ruleSteps(route, watch);
+  const { rulings, last, before } = ruleSteps(route, watch);
   const noted = noteMiscopied(read, rejectCandidates(rulings, last, route), route);
   const steps = noted.map((result, k): StepRuling => ({ step: k + 1, ...result }));
   const verdict = toVerdict(steps);
-  return addEvidence(applyGoal(verdict, last, route), read.lines, route);
+  return addEvidence(applyGoal(verdict, last, route), route, before);
 }
 
 /** The outcome and the first fault, by their definitions. */
@@ -34,12 +34,14 @@ export function toVerdict(steps: readonly StepRuling[]): Verdict {
   return { outcome: isFaulty ? 'faulty' : 'undecided', firstFault: isFaulty ? first.step : null, steps: [...steps] };
 }
 
-function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: WalkState } {
+function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: WalkState; before: WalkState[] } {
   const { lines } = route.read;
   const rulings: StepResult[] = [];
+  const before: WalkState[] = [];
   let state = startWalk(route);
   for (let step = 1; step < lines.length; step += 1) {
     const result = lines[step];
+    before[step] = state;
     watch.onStep?.(step);
     if (result?.ok && watch.timedOut?.includes(step)) {
       rulings.push(undecided('time'));
@@ -62,7 +64,7 @@ function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: W
     state = better ? better.state : found.state;
     if (better) step += better.results.length - 1;
   }
-  return { rulings, last: state };
+  return { rulings, last: state, before };
 }
 
 /** The step to a line that was not read, or from one, carries the error with its place. */
