@@ -14,6 +14,7 @@ export function followsFrom(from: Line, to: Line, route: Route, context: CheckCo
     const { result } = judgeStep({
       line: to,
       from: meaning,
+      remark: null,
       reference: meaning.statement,
       known: [meaning.statement],
       givenLetters: route.givenLetters,

@@ -61,9 +61,14 @@ function* changedNumber(place: PlacedNode, value: Rational, tex: string): Genera
   }
   const size = Q.negate(value);
   const turned = leads && turnedSign(leads, tex);
-  if (turned && Q.equals(size, before)) yield { edits: [turned], cost: costs.sign };
-  else if (turned) yield { edits: [turned, { ...span, text: numberText(size) }], cost: costs.signedNumber + extra };
+  if (leads && turned && Q.equals(size, before)) yield { edits: [turned], cost: costs.sign + frontMinus(leads) };
+  else if (leads && turned) yield { edits: [turned, { ...span, text: numberText(size) }], cost: costs.signedNumber + extra + frontMinus(leads) };
   else if (!isFactor) yield { edits: [{ ...span, text: isExponent ? `{-${numberText(size)}}` : `-${numberText(size)}` }], cost: costs.signedNumber + extra };
+}
+
+/** A sum that comes to begin with a minus reads worse than one whose other terms change. */
+function frontMinus({ term, isFirst, isOnly }: PlacedTerm): number {
+  return isFirst && !isOnly && term.sign === 'plus' ? 0.15 : 0;
 }
 
 export function numberText(value: Rational): string {
@@ -95,7 +100,7 @@ function* changedTerm(place: PlacedNode, leads: PlacedTerm, aim: Aim, target: re
   if (value.num < 0n && !turned) return;
   const front: Edit[] = turned ? [turned] : [];
   if (Q.equals(size, Q.one)) {
-    if (turned) yield { edits: front, cost: costs.sign };
+    if (turned) yield { edits: front, cost: costs.sign + frontMinus(leads) };
     return;
   }
   const at = outer(node).start;
@@ -130,16 +135,23 @@ function exponentText({ num }: Rational): string {
   return num < 10n && num >= 0n ? String(num) : `{${num}}`;
 }
 
+interface SmallChange {
+  readonly node: Expr;
+  readonly by: Expr;
+  readonly edit: Edit;
+  readonly cost: number;
+}
+
 /** Small changes of which two together may mend a line: signs, squares put in and taken out. */
-export function smallChanges(aim: Aim, tex: string): { readonly node: Expr; readonly by: Expr; readonly edit: Edit }[] {
-  const found: { node: Expr; by: Expr; edit: Edit }[] = [];
+export function smallChanges(aim: Aim, tex: string): SmallChange[] {
+  const found: SmallChange[] = [];
   for (const { node, leads, isBase } of aim.roots.flatMap(nodesOf)) {
     const turned = leads && leads.term.expr === node ? turnedSign(leads, tex) : null;
-    if (turned) found.push({ node, by: neg(node), edit: turned });
+    if (leads && turned) found.push({ node, by: neg(node), edit: turned, cost: 1 + frontMinus(leads) });
     const end = outer(node).end;
-    if (node.kind === 'letter' && !isBase) found.push({ node, by: power(node, whole(2)), edit: { start: end, end, text: '^2' } });
+    if (node.kind === 'letter' && !isBase) found.push({ node, by: power(node, whole(2)), edit: { start: end, end, text: '^2' }, cost: 1.05 });
     if (node.kind === 'power' && node.exponent.kind === 'number') {
-      found.push({ node, by: node.base, edit: { start: outer(node.base).end, end, text: '' } });
+      found.push({ node, by: node.base, edit: { start: outer(node.base).end, end, text: '' }, cost: 1.05 });
     }
   }
   return found;

@@ -100,10 +100,10 @@ function* pairsOfChanges(aim: Aim, { tex }: MendQuestion, isRight: (node: Expr) 
     const changed: Aim = { ...aim, tree: replaceNode(aim.tree, one.node, one.by) };
     for (const other of small.slice(k + 1)) {
       const both = replaceNode(changed.tree, other.node, other.by);
-      if (aim.targets.some((target) => hits(both, target, aim.places))) yield { edits: [one.edit, other.edit], cost: 2.1, touchesRight: false };
+      if (aim.targets.some((target) => hits(both, target, aim.places))) yield { edits: [one.edit, other.edit], cost: one.cost + other.cost, touchesRight: false };
     }
     for (const found of leafEdits(changed, [], tex, isRight)) {
-      yield { ...found, edits: [one.edit, ...found.edits], cost: 1 + found.cost };
+      yield { ...found, edits: [one.edit, ...found.edits], cost: one.cost + found.cost };
     }
   }
 }

@@ -1,9 +1,10 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
+import { sum } from './build.ts';
 import type { Candidate, Edit } from './edits.ts';
 import { leavesOf } from './line-parts.ts';
 import { collect, keyOf, monomialExpr, negated, spread, type Monomial } from './monomials.ts';
-import { outer, type Aim } from './mend-question.ts';
+import { hits, outer, type Aim } from './mend-question.ts';
 
 const mostMissing = 2;
 
@@ -11,14 +12,23 @@ const mostMissing = 2;
 export function* missingTerms(aim: Aim): Generator<Candidate> {
   const [focus] = aim.roots;
   const above = aim.wanted && spread(aim.wanted);
-  if (!focus || !above || aim.roots.length !== 1) return;
-  const own = spread(focus);
-  const missing = own && collect([...above, ...own.map(negated)]);
-  if (!missing || missing.length === 0 || missing.length > mostMissing) return;
+  const own = focus && spread(focus);
+  if (!focus || !above || !own || aim.roots.length !== 1) return;
   const order = collect(above).map(keyOf);
-  const edits = missing.map((term) => insertion(term, focus, order));
+  const present = new Set(own.map(keyOf));
+  // A like term that is there is changed instead.
+  const isNew = (terms: readonly Monomial[]): boolean => terms.length > 0 && terms.every((term) => !present.has(keyOf(term)));
+  const missing = collect([...above, ...own.map(negated)]);
+  if (missing.length <= mostMissing && isNew(missing)) yield put(missing, focus, order);
+  for (const term of collect(above)) {
+    const withTerm = sum(focus, monomialExpr(term));
+    if (isNew([term]) && aim.targets.some((target) => hits(withTerm, target, aim.places))) yield put([term], focus, order);
+  }
+}
+
+function put(missing: readonly Monomial[], focus: Expr, order: readonly string[]): Candidate {
   const leaves = missing.reduce((count, term) => count + leavesOf(monomialExpr(term)).length, 0);
-  yield { edits, cost: 1.3 + 0.1 * leaves, touchesRight: false };
+  return { edits: missing.map((term) => insertion(term, focus, order)), cost: 1.3 + 0.1 * leaves, touchesRight: false };
 }
 
 /** Behind the last term that comes before it in the work, else in front. */

@@ -76,7 +76,7 @@ function limitsOf(above: Expr, context: CheckContext): readonly [Expr, Expr] | n
 }
 
 /** Fractions added over the product of their denominators, the numerator multiplied out. */
-function overOneDenominator(above: Expr): Expr | null {
+export function overOneDenominator(above: Expr): Expr | null {
   if (above.kind !== 'sum' || above.terms.length > 4) return null;
   const parts = above.terms.map(({ sign, expr }) => {
     const [top, bottom] = expr.kind === 'quotient' ? [expr.numerator, expr.denominator] : [expr, null];

@@ -1,6 +1,7 @@
 import type { Line, Span } from '../../../shared/maths/expression.ts';
 import { termsOfLine } from '../../../shared/lib/within-one-term.ts';
 import type { Evidence } from '../../../shared/schemas/verdict.ts';
+import type { Edit } from './edits.ts';
 import { outer, type MendQuestion } from './mend-question.ts';
 import type { MendedLine } from './mend-line.ts';
 
@@ -24,9 +25,9 @@ export function findWrongPart({ tex, line, settings }: MendQuestion, mended: Men
   return { span, is, shouldBe: lostSign ? `+${shouldBe}` : shouldBe };
 }
 
-/** What is put in at the very end of a part belongs to no part. */
-function isWithin(edit: Span, part: Span): boolean {
-  if (edit.start === edit.end && edit.start === part.end) return false;
+/** What is put in at the very end of a part, a new term and a new value belong to no part. */
+function isWithin(edit: Edit, part: Span): boolean {
+  if (edit.start === edit.end && (edit.start === part.end || /^[+-]|=/.test(edit.text))) return false;
   return edit.start >= part.start && edit.end <= part.end;
 }
 

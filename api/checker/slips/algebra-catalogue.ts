@@ -56,4 +56,4 @@ const likeTerms: readonly Slip[] = [
   ruled('unlike terms were joined', 'like-terms', booth, ['ka+mb -> (k+m)ab', 'a+b -> ab'], 5),
 ];
 
-export const algebraSlips: readonly Slip[] = [...signs, ...brackets, ...likeTerms];
+export const algebraSlips: readonly Slip[] = [...signs, ...brackets, ...likeTerms.map((one) => ({ ...one, alsoExpanded: true }))];

@@ -31,7 +31,7 @@ function onProducts(solved: Solved): (above: Line) => Generator<Line> {
   return function* lines(above) {
     for (const { left, sign, right } of bothWays(above)) {
       for (const { factor, rest } of splitFactors(left)) {
-        if (lettersOf(rest).length === 0 && lettersOf(factor).length === 0) continue;
+        if (lettersOf(rest).length === 0) continue;
         for (const [newLeft, newRight] of solved(factor, rest, right)) yield relation(newLeft, sign, newRight);
       }
     }

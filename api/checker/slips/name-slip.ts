@@ -4,6 +4,7 @@ import { exprsOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { sum } from '../evidence/build.ts';
+import { expanded, sumExpr } from '../evidence/monomials.ts';
 import { estimate } from '../evidence/estimate.ts';
 import { choosePlaces, mayBeEqual } from '../evidence/places.ts';
 import { allSlips } from './catalogue.ts';
@@ -44,17 +45,30 @@ export function nameBetween(above: Expr, wholeBelow: Expr, worksOn: boolean, con
   const places = choosePlaces([above, below], 4, context);
   const values = places.map((place) => estimate(below, place));
   if (mayBeEqual(above, values, places)) return null;
-  let confirmed = 0;
+  const confirm = createConfirmer(below, context);
   for (const slip of inOrder(worksOn)) {
     for (const candidate of candidatesOf(slip, above, below, context)) {
-      if (candidate === below) return slip;
-      if (!mayBeEqual(candidate, values, places)) continue;
-      confirmed += 1;
-      if (confirmed > mostConfirmed) return null;
-      if (compareExpressions(candidate, below, context).kind === 'equal') return slip;
+      if (candidate === below || (mayBeEqual(candidate, values, places) && confirm(candidate))) return slip;
+    }
+  }
+  const terms = above.kind === 'sum' ? null : expanded(above);
+  if (!terms) return null;
+  const multiplied = sumExpr(terms);
+  for (const slip of allSlips.filter((one) => one.alsoExpanded)) {
+    for (const candidate of candidatesOf(slip, multiplied, below, context)) {
+      if (mayBeEqual(candidate, values, places) && confirm(candidate)) return slip;
     }
   }
   return null;
+}
+
+/** The checker's own answer, given a limited number of times. */
+function createConfirmer(below: Expr, context: CheckContext): (candidate: Expr) => boolean {
+  let confirmed = 0;
+  return (candidate) => {
+    confirmed += 1;
+    return confirmed <= mostConfirmed && compareExpressions(candidate, below, context).kind === 'equal';
+  };
 }
 
 function inOrder(worksOn: boolean): readonly Slip[] {

@@ -17,7 +17,7 @@ const exponents: readonly Slip[] = [
   ruled('the bases were multiplied and the exponents added together', 'powers-and-roots', matz, ['a^m a^n -> (aa)^{m+n}'], 6),
   ruled('a fractional exponent was turned upside down', 'powers-and-roots', memory, ['a^{m/n} -> a^{n/m}', 'a^{\\frac{m}{n}} -> a^{\\frac{n}{m}}'], 6),
   ruled('an exponent was brought down as a factor', 'powers-and-roots', memory, ['k^n -> kn', 'a^n -> na'], 3),
-  ruled('an exponent was lost', 'powers-and-roots', memory, ['a^n -> a'], 2),
+  { ...ruled('an exponent was lost', 'powers-and-roots', memory, ['a^n -> a'], 2), alsoExpanded: true },
 ];
 
 const radicals: readonly Slip[] = [

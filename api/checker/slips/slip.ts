@@ -13,6 +13,8 @@ export interface Slip {
   readonly source: string;
   /** Of several that fit, the highest is named; 5 for most, less for what explains nearly anything. */
   readonly rank: number;
+  /** Also looked for after brackets were multiplied out and like terms joined. */
+  readonly alsoExpanded?: boolean;
   /** What becomes of a part of an expression. */
   readonly rewrites?: readonly Rewrite[];
   /** What becomes of a whole statement: lines that the line below would then follow from. */

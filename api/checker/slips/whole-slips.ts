@@ -12,7 +12,8 @@ const noDefinitions = { letters: new Map(), functions: new Map() };
 const largestConstant = 400;
 
 /** (x+p)(x+q) with pq = c, where the middle term is another one. */
-function* wrongPairs(above: Expr): Generator<Expr> {
+function* wrongPairs(above: Expr, below: Expr): Generator<Expr> {
+  if (below.kind !== 'product') return;
   const [name, ...others] = lettersOf(above);
   if (!name || others.length > 0) return;
   const at = (x: number): number => estimate(above, { letters: new Map([[name, real(x)]]), definitions: noDefinitions }).re;
