@@ -1,7 +1,9 @@
 import './maths-reading.css';
 import type { ReadError, Reading } from '../../shared/maths/expression.ts';
 import { printLine } from '../../shared/maths/print.ts';
+import { DEFAULT_READ_SETTINGS, readLine } from '../../shared/maths/read.ts';
 import { wordReadError } from '../../shared/maths/reads-as.ts';
+import { lineInWords } from '../../shared/maths/words.ts';
 import { Button } from './button.tsx';
 import { Maths } from './maths.tsx';
 import { FLAG_WORDS, repairOf } from './maths-reading-words.ts';
@@ -20,7 +22,15 @@ export function MathsReading({ id, tex, reading, decimal, onChange }: MathsReadi
   if (!reading.ok) return <Unread id={id} tex={tex} error={reading.error} onChange={onChange} />;
   const now = printLine(reading.line, decimal);
   if (reading.alternatives.length > 0 && onChange) {
-    return <TwoReadings id={id} name={`${id}-choice`} choices={[now, ...reading.alternatives]} onChoose={onChange} />;
+    return (
+      <TwoReadings
+        id={id}
+        name={`${id}-choice`}
+        choices={[now, ...reading.alternatives]}
+        {...{ decimal }}
+        onChoose={onChange}
+      />
+    );
   }
   if (reading.flags.length === 0) return null;
   return (
@@ -53,10 +63,11 @@ interface TwoReadingsProps {
   readonly name: string;
   /** How it is read now comes first. */
   readonly choices: readonly string[];
+  readonly decimal: 'point' | 'comma';
   readonly onChoose: (tex: string) => void;
 }
 
-function TwoReadings({ id, name, choices, onChoose }: TwoReadingsProps) {
+function TwoReadings({ id, name, choices, decimal, onChoose }: TwoReadingsProps) {
   return (
     <fieldset id={id} className="reading-note">
       <legend className="small">
@@ -66,7 +77,14 @@ function TwoReadings({ id, name, choices, onChoose }: TwoReadingsProps) {
         {choices.map((choice, i) => (
           <label key={choice} className="reading-choice">
             {/* Choosing what is read already settles it as well, so a click counts, not only a change. */}
-            <input type="radio" name={name} checked={i === 0} readOnly onClick={() => onChoose(choice)} />
+            <input
+              type="radio"
+              name={name}
+              aria-label={inWords(choice, decimal)}
+              checked={i === 0}
+              readOnly
+              onClick={() => onChoose(choice)}
+            />
             <Maths tex={choice} display />
             {i === 0 ? <em>reads as this now</em> : null}
           </label>
@@ -74,4 +92,9 @@ function TwoReadings({ id, name, choices, onChoose }: TwoReadingsProps) {
       </div>
     </fieldset>
   );
+}
+
+function inWords(tex: string, decimal: 'point' | 'comma'): string {
+  const reading = readLine(tex, { ...DEFAULT_READ_SETTINGS, decimal });
+  return reading.ok ? lineInWords(reading.line) : tex;
 }

@@ -3,7 +3,7 @@ import type { SheetView } from '../../../shared/schemas/derivation.ts';
 import { givenLine } from '../../../shared/schemas/sheet.ts';
 import { Button } from '../../ui/button.tsx';
 import { Notice } from '../../ui/notice.tsx';
-import { Head, Page, Side } from '../../ui/page.tsx';
+import { Head, Page } from '../../ui/page.tsx';
 import { problemWords } from '../../ui/states.tsx';
 import { Time, TimeLeft, ZoneProvider } from '../../ui/time.tsx';
 import { Conflict } from './conflict.tsx';
@@ -76,11 +76,11 @@ function OpenSheet({ sheet, userId }: SheetProps) {
   const { state, sync } = running;
   return (
     <>
-      <Side className="sheet-side small">
+      <aside className="side sheet-side small" aria-label="Saved and due">
         <SavedState state={state} />
         {sheet.canWrite ? <TimeWords sheet={sheet} /> : null}
         {task.instructions ? <p className="muted sheet-note">Note from your teacher: {task.instructions}</p> : null}
-      </Side>
+      </aside>
       {sheet.canWrite ? null : (
         <Notice title="The time for writing is over.">Nothing was handed in. What you wrote is kept here.</Notice>
       )}
@@ -148,10 +148,10 @@ function Foot({ sheet, store, running }: FootProps) {
           </p>
         </div>
       </div>
-      <Side className="sheet-tip small muted">
+      <aside className="side sheet-tip small muted" aria-label="Who sees this">
         You see how each line was read, never whether it is right. {reviewerWords(sheet.reviewers)} will look; no one
         learns whose it is.
-      </Side>
+      </aside>
     </>
   );
 }
@@ -182,13 +182,13 @@ function HandedInSheet({ sheet }: { readonly sheet: SheetView }) {
   if (!handedIn) return null;
   return (
     <>
-      <Side className="sheet-side small">
+      <aside className="side sheet-side small" aria-label="Saved and due">
         <p>
           <b>Handed in</b> <Time iso={handedIn.at} />
           {handedIn.late ? ', late' : ''}
         </p>
         {sheet.canTakeBack && !sheet.lateNow ? <TimeWords sheet={sheet} /> : null}
-      </Side>
+      </aside>
       <HandedIn lines={handedIn.lines} />
       <div className="sheet-foot">
         <hr />

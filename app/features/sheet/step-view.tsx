@@ -55,8 +55,8 @@ export const StepView = memo(function StepView({ editor, node, extension }: Node
           </button>
         )}
       </div>
-      <div className={isLive && isInHand ? 'under has-keys' : 'under'}>
-        {isLive && isInHand ? <MathsFieldKeys onPress={(piece) => field.current?.insert(piece)} /> : null}
+      <div className={isLive ? 'under has-keys' : 'under'}>
+        {isLive ? <MathsFieldKeys onPress={(piece) => field.current?.insert(piece)} /> : null}
         {facts?.reading && isSettled ? (
           <MathsReading id={notesId} tex={tex} reading={facts.reading} decimal={settings.decimal} onChange={write} />
         ) : null}
@@ -92,6 +92,7 @@ function LiveLine({ editor, tex, facts, above, notesId, decimal, field, setInHan
   };
   return (
     <div
+      className="slate"
       onKeyDownCapture={onKeyDownCapture}
       onPasteCapture={(event) => {
         const text = event.clipboardData.getData('text/plain');
