@@ -36,7 +36,7 @@ export interface AnswerThing extends Thing {
   readonly dueAt: string;
   readonly derivationId: string;
   readonly count: number;
-  readonly first: { readonly step: number | null; readonly why: string } | null;
+  readonly first: { readonly step: number | null; readonly noFault: boolean; readonly why: string } | null;
 }
 
 /** A round that settled within the week in which it can be contested. */

@@ -131,15 +131,15 @@ const WORK_SQL = `
      where r.round_id = $1 and r.set_aside is null
      group by r.reviewer_id),
   received as (
-    select d.author_id, count(*)::int as received,
+    select d.author_id, count(*) filter (where f.pick is not null)::int as received,
            count(*) filter (where a.kind = 'accept')::int as accepted,
            count(*) filter (where a.kind = 'contest')::int as contested
       from review r
       join derivation d on d.id = r.derivation_id
       join lateral (
-        select id from finding where review_id = r.id and taken_back_at is null
+        select id, pick from finding where review_id = r.id and taken_back_at is null
          order by handed_in_at desc, id limit 1) f on true
-      left join answer a on a.finding_id = f.id
+      left join answer a on a.finding_id = f.id and f.pick is not null
      where r.round_id = $1 and $3
      group by d.author_id)
   select m.user_id, w.saved_at, w.line_added_at, coalesce(w.lines, 0) as lines, w.last_tex,

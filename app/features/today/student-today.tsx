@@ -14,7 +14,7 @@ export function StudentToday({ today }: { readonly today: TodayAnswer }) {
         {today.things.map((thing, i) => (
           <Thing key={`${thing.kind} ${thing.roundId}`} thing={thing} isFirst={i === 0} />
         ))}
-        {isEmpty && today.waiting.length === 0 ? (
+        {isEmpty && today.waiting.length === 0 && today.rounds.length === 0 ? (
           <div className="it">
             <div className="what">
               <EmptyState title="No round is running for you">
@@ -23,21 +23,27 @@ export function StudentToday({ today }: { readonly today: TodayAnswer }) {
             </div>
           </div>
         ) : null}
-        {today.waiting.length > 0 ? <Waiting rounds={today.waiting} isAlone={isEmpty} /> : null}
+        {today.waiting.length > 0 ? <Waiting rounds={today.waiting} now={today.now} isAlone={isEmpty} /> : null}
       </div>
       {today.progress ? <OwnProgress progress={today.progress} /> : null}
     </>
   );
 }
 
-function sayWaiting({ stage, nextAt, timeZone, handedIn }: WaitingRound): string {
+interface WaitingProps {
+  readonly rounds: readonly WaitingRound[];
+  readonly isAlone: boolean;
+}
+
+function sayWaiting({ stage, nextAt, timeZone, handedIn }: WaitingRound, now: string): string {
   const at = `${sayDay(nextAt, timeZone)} at ${formatInstant(nextAt, timeZone, 'time')}`;
   if (stage === 'writing') return `${handedIn ? 'Handed in. ' : ''}Reviewing opens ${at}.`;
   if (stage === 'reviewing') return `Nothing left to review. Findings can be read and answered from ${at}.`;
+  if (nextAt <= now) return 'Nothing to answer. The round settles when your teacher has ruled on what is open.';
   return `Nothing to answer. The round settles ${at}.`;
 }
 
-function Waiting({ rounds, isAlone }: { readonly rounds: readonly WaitingRound[]; readonly isAlone: boolean }) {
+function Waiting({ rounds, now, isAlone }: Pick<TodayAnswer, 'now'> & WaitingProps) {
   return (
     <section className="it" aria-label="Rounds that go on without you for now">
       <div className="what">
@@ -47,7 +53,7 @@ function Waiting({ rounds, isAlone }: { readonly rounds: readonly WaitingRound[]
             <li key={round.roundId}>
               {round.title} · round {round.number}
               <br />
-              <span className="small muted">{sayWaiting(round)}</span>
+              <span className="small muted">{sayWaiting(round, now)}</span>
             </li>
           ))}
         </ul>

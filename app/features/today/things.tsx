@@ -151,6 +151,11 @@ function ReviewTwo({ thing, isFirst }: ThingProps<ReviewThing>) {
   );
 }
 
+function sayFirst({ step, noFault }: NonNullable<AnswerThing['first']>): string {
+  if (step !== null) return `A reviewer marks your step ${step}`;
+  return noFault ? 'A reviewer finds no fault' : 'A reviewer names no step';
+}
+
 function AnswerFindings({ thing, isFirst }: ThingProps<AnswerThing>) {
   const to = paths.derivation(thing.derivationId);
   const { first, count } = thing;
@@ -164,9 +169,9 @@ function AnswerFindings({ thing, isFirst }: ThingProps<AnswerThing>) {
           </Link>
         </h2>
         <Context thing={thing} />
-        {first?.step ? (
+        {first ? (
           <p className="say">
-            A reviewer marks your step {first.step}
+            {sayFirst(first)}
             {first.why ? `: “${first.why}”` : '.'}
           </p>
         ) : null}

@@ -61,7 +61,7 @@ describe('a student’s first page', () => {
           dueAt: '2031-03-07T11:00:00.000Z',
           derivationId: 'd4',
           count: 1,
-          first: { step: 3, why: 'The minus belongs to the whole bracket.' },
+          first: { step: 3, noFault: false, why: 'The minus belongs to the whole bracket.' },
         },
       ],
     });
