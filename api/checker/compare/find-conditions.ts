@@ -17,6 +17,8 @@ import { meets, relationOf } from './conditions.ts';
 import type { Need } from './conditions.ts';
 import type { Pair } from './pair.ts';
 import { pointsOf } from './points.ts';
+import { ownZeros } from './polynomial-conditions.ts';
+import type { OwnZeros } from './polynomial-conditions.ts';
 import type { Region } from './points.ts';
 import type { Sample, Samples } from './sampling.ts';
 
@@ -37,6 +39,8 @@ export function findConditions(pair: Pair, samples: Samples, region: Region, con
   const onlyBelow = unshared(pair.needsBelow, pair.needsAbove);
   const onlyAbove = unshared(pair.needsAbove, pair.needsBelow);
   if (onlyBelow.length === 0 && onlyAbove.length === 0) return none;
+  const exact = exactConditions(pair, onlyBelow, onlyAbove, region);
+  if (exact !== null) return exact;
   const tried: Sample[] = [...samples.aboveOnly, ...samples.belowOnly];
   let count = 0;
   for (const point of pointsToTry(pair, [...onlyBelow, ...onlyAbove], samples, region, context)) {
@@ -48,6 +52,43 @@ export function findConditions(pair: Pair, samples: Samples, region: Region, con
     excluded: conditionsFrom(pair, onlyBelow, tried, 'above-only'),
     cancelled: conditionsFrom(pair, onlyAbove, tried, 'below-only'),
   };
+}
+
+/** Lines in one letter that only divide need no points. */
+function exactConditions(
+  pair: Pair,
+  onlyBelow: readonly Need[],
+  onlyAbove: readonly Need[],
+  region: Region,
+): FoundConditions | null {
+  const [letter] = region.names;
+  const isDivision = (need: Need): boolean => need.kind === 'nonzero';
+  if (letter === undefined || region.names.length !== 1 || pair.whole.has(letter)) return null;
+  if (region.context.numbers === 'complex' || ![...pair.needsAbove, ...pair.needsBelow].every(isDivision)) return null;
+  const below = ownZeros(pair.nodes, letter, onlyBelow, pair.needsAbove);
+  const above = ownZeros(pair.nodes, letter, onlyAbove, pair.needsBelow);
+  if (below === null || above === null) return null;
+  return {
+    excluded: conditionsOfZeros(below, letter, pair, region),
+    cancelled: conditionsOfZeros(above, letter, pair, region),
+  };
+}
+
+function conditionsOfZeros(zeros: readonly OwnZeros[], letter: string, pair: Pair, region: Region): Condition[] {
+  const found = new Map<string, Condition>();
+  for (const { need, rational, hasOthers } of zeros) {
+    const admitted = rational.filter((value) => region.admits(new Map([[letter, fromRational(value)]])));
+    const expr = hasOthers ? nodeToExpr(pair.nodes, need.arg) : null;
+    const lines =
+      expr === null
+        ? admitted.map((value) => relationLine(letterExpr(letter), '!=', numberExpr(value)))
+        : [plainLine(need, expr)];
+    for (const line of lines) {
+      const tex = printLine(line);
+      found.set(tex, { tex, line });
+    }
+  }
+  return [...found.values()];
 }
 
 function unshared(own: readonly Need[], other: readonly Need[]): Need[] {
@@ -90,7 +131,8 @@ function candidates(
   const turns = region.traits.turns || needs.some(({ kind }) => kind === 'sine' || kind === 'cosine');
   const multiples = turns ? Array.from({ length: 25 }, (_, k) => fromPi(Q.rational(k - 12, 12))) : [];
   const halves = turns ? Array.from({ length: 9 }, (_, k) => fromPi(Q.rational(k - 4, 2))) : [];
-  return [...exact.map(fromRational), ...gaps.map(fromRational), ...halves, ...multiples];
+  const sides = needs.every(({ kind }) => kind === 'nonzero') ? [] : gaps;
+  return [...exact.map(fromRational), ...sides.map(fromRational), ...halves, ...multiples];
 }
 
 function conditionsFrom(

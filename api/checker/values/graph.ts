@@ -163,7 +163,12 @@ export function createGraphBuilder(onPush: () => void): GraphBuilder {
     if (exponent === 1) return base;
     const inner = nodes[base];
     // (a^m)^n for m > 0: nothing is lost where a is zero.
-    if (inner?.op === 'power' && inner.exponent > 0 && exponent !== 0 && Math.abs(inner.exponent * exponent) <= largestExponent) {
+    if (
+      inner?.op === 'power' &&
+      inner.exponent > 0 &&
+      exponent !== 0 &&
+      Math.abs(inner.exponent * exponent) <= largestExponent
+    ) {
       return power(inner.args[0], inner.exponent * exponent);
     }
     const value = valueOf(base);

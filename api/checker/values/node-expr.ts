@@ -80,7 +80,11 @@ function build(node: GraphNode, args: readonly Expr[]): Expr | null {
     case 'constant':
       return { kind: 'constant', name: node.name, span: nowhere };
     case 'add':
-      return { kind: 'sum', terms: args.map(toTerm), span: nowhere };
+      return {
+        kind: 'sum',
+        terms: [...args.filter((arg) => !isNumber(arg)), ...args.filter(isNumber)].map(toTerm),
+        span: nowhere,
+      };
     case 'mul':
       return productExpr(args);
     case 'negate':
@@ -108,10 +112,13 @@ function toTerm(expr: Expr): Term {
   return only?.sign === 'minus' ? only : { sign: 'plus', expr, span: nowhere };
 }
 
+function isNumber(expr: Expr): boolean {
+  if (expr.kind === 'sum') return expr.terms.length === 1 && expr.terms.every((term) => isNumber(term.expr));
+  return expr.kind === 'number' || (expr.kind === 'quotient' && expr.numerator.kind === 'number');
+}
+
 /** Numbers first, as people write products. */
 function productExpr(args: readonly Expr[]): Expr {
-  const isNumber = (expr: Expr) =>
-    expr.kind === 'number' || (expr.kind === 'quotient' && expr.numerator.kind === 'number');
   const factors = [...args.filter(isNumber), ...args.filter((arg) => !isNumber(arg))];
   return { kind: 'product', factors, joins: factors.slice(1).map(() => 'implicit' as const), span: nowhere };
 }
@@ -126,6 +133,8 @@ function callNode(name: Extract<GraphNode, { op: 'call' }>['name'], args: readon
       return b ? { kind: 'binomial', top: a, bottom: b, span: nowhere } : null;
     case 'log':
       return b ? { kind: 'log', base: a, argument: b, span: nowhere } : null;
+    case 'exp':
+      return { kind: 'power', base: { kind: 'constant', name: 'e', span: nowhere }, exponent: a, span: nowhere };
     default:
       return callExpr(name, args);
   }
