@@ -2,6 +2,7 @@ import type { Expr, Line, ReadError, ReadSettings } from '../../shared/maths/exp
 import { lettersOf } from '../../shared/maths/letters.ts';
 import { readLine } from '../../shared/maths/read.ts';
 import { childrenOf, exprsOf } from '../../shared/maths/walk.ts';
+import { nameRates, usualVariable } from './calculus/name-rates.ts';
 import type { DerivationInput } from '../../shared/schemas/verdict.ts';
 
 /** A line as it was read, or why it could not be. */
@@ -22,11 +23,14 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
   const numbers = input.settings.numbers ?? guessNumbers(input);
   const decimal = input.settings.decimal ?? 'point';
   const functions: string[] = [];
+  const defined = new Set<string>();
+  const by = usualVariable(input.lines);
   const read = (tex: string): ReadResult => {
     const reading = readLine(tex, { numbers, decimal, functions: [...functions] });
     if (!reading.ok) return { ok: false, tex, error: reading.error };
     for (const name of functionsIn(reading.line)) functions.push(name);
-    return { ok: true, tex, line: reading.line };
+    for (const name of definedIn(reading.line)) defined.add(name);
+    return { ok: true, tex, line: nameRates(reading.line, defined, by) };
   };
   const assumed = input.assume.map(read);
   const lines = input.lines.map(read);
@@ -61,6 +65,11 @@ function hasUnit(expr: Expr): boolean {
 function functionsIn(line: Line): string[] {
   if (line.kind === 'definition' && line.params.length > 0) return [line.name];
   return line.kind === 'all' || line.kind === 'any' ? line.parts.flatMap(functionsIn) : [];
+}
+
+function definedIn(line: Line): string[] {
+  if (line.kind === 'all' || line.kind === 'any') return line.parts.flatMap(definedIn);
+  return line.kind === 'definition' ? [line.name] : [];
 }
 
 function wholeByAssumption(line: Line): readonly string[] {

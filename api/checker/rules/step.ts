@@ -1,5 +1,6 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import type { CheckSettings, Note } from '../../../shared/schemas/verdict.ts';
+import { judgeWithRates } from '../calculus/implicit.ts';
 import type { CheckContext, Definitions } from '../context.ts';
 import type { RealNumber } from '../solving/real-number.ts';
 import { isEmptySet, isWholeLine } from '../solving/real-set.ts';
@@ -115,7 +116,7 @@ function judgeFromStatement(
   above: Statement,
   question: StepQuestion,
 ): StepAnswer {
-  const found = judgeStatements({
+  const asked = {
     above,
     below: meaning.statement,
     reference: question.reference ?? above,
@@ -127,7 +128,8 @@ function judgeFromStatement(
     afterFault: question.afterFault,
     settings: question.settings,
     context: question.context,
-  });
+  };
+  const found = judgeWithRates(asked, judgeStatements);
   return answer(found, meaning, { candidates: found.candidates });
 }
 

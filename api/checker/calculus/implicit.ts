@@ -1,0 +1,112 @@
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { printExpr } from '../../../shared/maths/print.ts';
+import type { CheckContext } from '../context.ts';
+import { Unsettled } from '../solving/unsettled.ts';
+import { comparesOf, type CompareStatement, type Statement } from '../statements/statement.ts';
+import { judgeFormula, judgeSameEquation } from '../rules/formula.ts';
+import { freeLetters } from '../rules/meaning.ts';
+import type { StatementAnswer, StatementQuestion } from '../rules/statement-step.ts';
+import { fails, holds, undecided, type StepResult } from '../rules/step-result.ts';
+import { tryOnCurve } from './curve.ts';
+import { differentiate } from './differentiate.ts';
+import { judgeIntegralEquations } from './integral-equations.ts';
+import { rateNamed } from './rates.ts';
+import { carriedOut } from './reduce.ts';
+
+type Judge = (question: StatementQuestion) => StatementAnswer;
+
+/** Rules 2 and 8 on statements with dy/dx or integrals; all others go on to `judge`. Throws Unsettled. */
+export function judgeWithRates(question: StatementQuestion, judge: Judge): StatementAnswer {
+  const { above, below, context } = question;
+  const integrals = judgeIntegralEquations(question);
+  if (integrals) return { ...integrals, candidates: [] };
+  const [before, after] = [ratesIn(above, context), ratesIn(below, context)];
+  if (before.length + after.length === 0) return judge(question);
+  const fresh = after.filter((name) => !before.includes(name));
+  if (fresh.length > 0) return { ...judgeDerived(question, fresh), candidates: [] };
+  return confirmed(question, judge);
+}
+
+export function ratesIn(statement: Statement, context: CheckContext): string[] {
+  return freeLetters(statement, context).filter((name) => rateNamed(name) !== null);
+}
+
+function equationOf(statement: Statement): CompareStatement | null {
+  return statement.kind === 'compare' && statement.sign === '=' ? statement : null;
+}
+
+/** The line below follows from the derivative of an equation that is known. */
+function judgeDerived(question: StatementQuestion, fresh: readonly string[]): StepResult {
+  const { above, known, context } = question;
+  const below = equationOf(question.below);
+  const sources = [above, ...[...known].reverse()].flatMap((statement) => equationOf(statement) ?? []);
+  const [target] = fresh;
+  const rate = target === undefined ? null : rateNamed(target);
+  if (!below || !rate || sources.length === 0) return undecided('not-covered');
+  const derived = derivedFrom(sources, rate.by, rate.order, context);
+  for (const equation of derived) {
+    const found = judgeSameEquation(equation, below, context);
+    if (found) return oneWay(found, sources[0] as CompareStatement, question);
+  }
+  const relations = sources.filter((equation) => ratesIn(equation, context).length === 0);
+  const rated = [...derived, ...sources.filter((equation) => ratesIn(equation, context).length > 0)];
+  const [first] = derived;
+  if (first && target !== undefined) {
+    const formula = tryFormula(question, first, target);
+    if (formula?.ruling === 'holds') return oneWay(formula, sources[0] as CompareStatement, question);
+  }
+  return onCurve(relations, rated, below, question, (found) => oneWay(found, sources[0] as CompareStatement, question));
+}
+
+function tryFormula(question: StatementQuestion, above: CompareStatement, letter: string): StepResult | null {
+  const { below, reference, settings, context } = question;
+  try {
+    return judgeFormula({ above, below, letter, reference: reference === question.above ? above : reference, families: new Set(), settings, context });
+  } catch (cause) {
+    if (cause instanceof Unsettled) return null;
+    throw cause;
+  }
+}
+
+function derivedFrom(sources: readonly CompareStatement[], by: string, order: number, context: CheckContext): CompareStatement[] {
+  const result: CompareStatement[] = [];
+  for (const { left, right, sign } of sources) {
+    let sides = [carriedOut(left, context), carriedOut(right, context)] as const;
+    for (let k = 0; k < order; k += 1) {
+      sides = [differentiate(sides[0], by, context), differentiate(sides[1], by, context)];
+      result.push({ kind: 'compare', left: sides[0], sign, right: sides[1] });
+    }
+  }
+  return result;
+}
+
+/** Differentiating forgets a constant: it is a gain, which counts where every step has to be reversible. */
+function oneWay(found: StepResult, source: CompareStatement, { settings }: StatementQuestion): StepResult {
+  if (settings.reversible) {
+    const gained = `${printExpr(source.left)}=${printExpr(source.right)}+C`;
+    return fails(found.reached ?? 'proved', { gained: [gained], operation: 'differentiate' });
+  }
+  return holds(found.reached ?? 'sampled', [...found.notes, 'one-way'], { ...found.evidence, operation: 'differentiate' });
+}
+
+function onCurve(
+  relations: readonly CompareStatement[], rated: readonly CompareStatement[], below: CompareStatement, { context }: StatementQuestion,
+  agreed: (found: StepResult) => StepResult,
+): StepResult {
+  const found = tryOnCurve(relations, rated, below, context);
+  if (found.kind === 'apart') return fails('proved', { witness: { at: { ...found.at }, above: 'true', below: 'false' } });
+  return found.kind === 'agreed' ? agreed(holds('sampled')) : undecided('not-settled');
+}
+
+/** What the lines say of independent letters is tried on the curve that they belong to before it counts as a fault. */
+function confirmed(question: StatementQuestion, judge: Judge): StatementAnswer {
+  const { known, above, context } = question;
+  const result = judge(question);
+  const below = equationOf(question.below);
+  if (result.ruling === 'holds' || !below) return result;
+  const equations = [above, ...known].flatMap(comparesOf).filter(({ sign }) => sign === '=');
+  const relations = equations.filter((equation) => ratesIn(equation, context).length === 0 && lettersOf(equation.left).length + lettersOf(equation.right).length > 0);
+  if (relations.length === 0) return result;
+  const rated = equations.filter((equation) => ratesIn(equation, context).length > 0);
+  return { ...onCurve(relations.slice(0, 1), rated, below, question, (found) => found), candidates: [] };
+}
