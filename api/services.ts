@@ -49,6 +49,7 @@ import { createTasksService } from './features/tasks/tasks.service.ts';
 import { CHECKER_VERSION } from './features/verdicts/checker-version.ts';
 import { verdictsJobs } from './features/verdicts/verdicts.jobs.ts';
 import { verdictsRoutes } from './features/verdicts/verdicts.routes.ts';
+import { toCheckInput } from './features/verdicts/check-input.ts';
 import { createVerdictsService } from './features/verdicts/verdicts.service.ts';
 import { readLine } from '../shared/maths/read.ts';
 import { isWithinOneTerm } from '../shared/lib/within-one-term.ts';
@@ -170,10 +171,15 @@ function composePeople({ db, now, rateLimiter }: Platform, queueMail: QueueMail)
 }
 
 /** Findings, answers, disputes, settling and standings. `settling` is for the stage machine of rounds. */
-function composeReviewing({ db, now }: Platform, queueMail: QueueMail) {
+function composeReviewing({ db, now, checks }: Platform, queueMail: QueueMail) {
   const scoring = createScoringService({ now, isWithinOneTerm });
   const { findCurrentVerdicts, findFindingsInForce } = scoring;
-  const reviews = createReviewsService({ db, now, findCurrentVerdicts });
+  const reviews = createReviewsService({
+    db,
+    now,
+    findCurrentVerdicts,
+    checkLines: (task, lines) => checks.check(toCheckInput(task, lines)),
+  });
   const answers = createAnswersService({ db, now, findCurrentVerdicts, findFindingsInForce });
   const disputes = createDisputesService({ db, now, scoring, findFindingsInForce, queueMail });
   const standings = createStandingsService({ db, now });

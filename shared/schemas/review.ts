@@ -81,6 +81,8 @@ export interface ReviewResult {
   readonly slipNamed: boolean | null;
   readonly termMarked: boolean | null;
   readonly rescored: boolean;
+  /** Whether what the reviewer would have written follows from the line above; null where nothing was written. */
+  readonly shouldBe: 'holds' | 'fails' | 'undecided' | null;
   readonly contest: ReadContest;
 }
 

@@ -103,6 +103,15 @@ describe('answering a finding', () => {
     expect(await disputes()).toMatchObject([{ words: 'Still no.', closedBy: 'withdrawn' }]);
   });
 
+  it('takes two windows at once', async () => {
+    const { author, path, keyOf, disputes } = await answering([2]);
+    const at = `/findings/${keyOf(2)}/answer`;
+    const answers = ['One.', 'Two.', 'Three.'].map((reason) => author.put(at, { kind: 'contest', reason }));
+    for (const { status } of await Promise.all(answers)) expect(status).toBe(204);
+    expect(await disputes()).toHaveLength(1);
+    expect((await author.get(path)).body.findings[0].answer.kind).toBe('contest');
+  });
+
   it('is left to the verdict where the finding says otherwise, with the same reply', async () => {
     const { author, keyOf, disputes } = await answering([3]);
     await author.put(`/findings/${keyOf(3)}/answer`, { kind: 'contest', reason: 'No.' }).expect(204);

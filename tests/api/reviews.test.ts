@@ -174,6 +174,19 @@ describe('the result', () => {
     expect(Number.isInteger(body.result.points)).toBe(true);
   });
 
+  it('rules on what the reviewer would have written, only then', async () => {
+    const { review, reviewer, round } = await dealt();
+    const given = finding({ shouldBe: 'x^2+x-5x-5-2x^2-6x' });
+    const handedIn = await reviewer.post(`/reviews/${review.id}/finding`, given).expect(200);
+    expect(handedIn.body.result).toBeNull();
+    await round.move('settled');
+    expect((await reviewer.get(`/reviews/${review.id}`)).body.result.shouldBe).toBe('holds');
+    const other = await dealt();
+    await other.reviewer.post(`/reviews/${other.review.id}/finding`, finding({ shouldBe: 'x^2+7' })).expect(200);
+    await other.round.move('settled');
+    expect((await other.reviewer.get(`/reviews/${other.review.id}`)).body.result.shouldBe).toBe('fails');
+  });
+
   it('can be contested for a week, once at a time', async () => {
     const { review, reviewer, author, round } = await dealt();
     const path = `/reviews/${review.id}/contest`;

@@ -50,6 +50,8 @@ export function createAnswersService(deps: AnswersDeps) {
     await db.transaction(async (manager) => {
       const { finding, review } = await getOwnFinding(manager, authorKey, viewer);
       requireAnswering(await lockRound(manager, review.roundId, 'read'));
+      // Two windows at once: the second waits here, and changes the answer of the first.
+      await manager.findOneOrFail(Finding, { where: { id: finding.id }, lock: { mode: 'pessimistic_write' } });
       await saveAnswer(manager, finding.id, form, now());
       await syncDispute(deps, manager, { finding, review }, form, viewer.userId);
     });

@@ -1,6 +1,9 @@
 import { IsNull, type EntityManager } from 'typeorm';
 import { shownPoints } from '../../../shared/lib/scoring.ts';
 import type { ReadContest, ReviewResult } from '../../../shared/schemas/review.ts';
+import type { HandedInLine } from '../../../shared/schemas/sheet.ts';
+import type { FrozenTask } from '../../../shared/schemas/task.ts';
+import type { Verdict } from '../../../shared/schemas/verdict.ts';
 import { ProblemError } from '../../http/problem-error.ts';
 import { contestEndsAt } from '../../lib/contest-window.ts';
 import { toReadVerdict } from '../../lib/present-round.ts';
@@ -10,6 +13,11 @@ import { Score, type Finding, type Review } from './reviews.entity.ts';
 
 export interface ResultDeps {
   readonly now: () => Date;
+  /** Rules on lines under a task's terms, without keeping anything. */
+  readonly checkLines: (
+    task: FrozenTask,
+    lines: readonly Pick<HandedInLine, 'tex' | 'uses'>[],
+  ) => Promise<Pick<Verdict, 'steps'>>;
   readonly findCurrentVerdicts: (
     manager: EntityManager,
     versionIds: readonly string[],
@@ -18,7 +26,7 @@ export interface ResultDeps {
 
 /** What came of a review; call only when its round is settled. Null for one that was never scored. */
 export async function findReviewResult(
-  { now, findCurrentVerdicts }: ResultDeps,
+  { now, findCurrentVerdicts, checkLines }: ResultDeps,
   manager: EntityManager,
   review: Review,
   finding: Finding | null,
@@ -36,6 +44,7 @@ export async function findReviewResult(
     slipNamed: score.slipNamed,
     termMarked: score.termMarked,
     rescored: scores.length > 1,
+    shouldBe: await ruleShouldBe(checkLines, review, finding),
     contest: await findContest(
       manager,
       review.reviewerId,
@@ -45,6 +54,19 @@ export async function findReviewResult(
       now(),
     ),
   };
+}
+
+/** The reviewer's own line, as it was handed in, against the line above it. */
+async function ruleShouldBe(
+  checkLines: ResultDeps['checkLines'],
+  { round, version }: Review,
+  finding: Finding | null,
+): Promise<ReviewResult['shouldBe']> {
+  const pick = finding?.pick;
+  if (!finding || !pick || finding.shouldBe.trim() === '' || !round?.frozen || !version) return null;
+  const lines = [...version.lines.slice(0, pick), { tex: finding.shouldBe, uses: version.lines[pick]?.uses ?? null }];
+  const { steps } = await checkLines(round.frozen, lines);
+  return steps.find(({ step }) => step === pick)?.ruling ?? 'undecided';
 }
 
 async function findContest(

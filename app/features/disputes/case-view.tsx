@@ -91,7 +91,7 @@ function Evidence({ dispute, ruled, wordStep }: { dispute: DisputeCase; ruled: R
   const sentences = words ? [...words.evidence, ...words.notes] : [];
   return (
     <div>
-      <h3>Evidence</h3>
+      <h2>Evidence</h2>
       {sentences.length === 0 ? (
         <p>
           {ruled
@@ -127,7 +127,7 @@ function Algebra({ ruled }: { ruled: ReadStep | null }) {
   const { difference, mended, solutions } = ruled?.evidence ?? {};
   return (
     <div>
-      <h3>The algebra</h3>
+      <h2>The algebra</h2>
       {difference ? (
         <p>
           Line above minus this line: <Maths tex={difference} />
@@ -154,7 +154,7 @@ function AuthorWords({ dispute, names }: { dispute: DisputeCase; names: DisputeN
   const line = lines[step];
   return (
     <div>
-      <h3>{raisedBy === 'reviewer' ? 'The reviewer’s words' : 'The author’s words'}</h3>
+      <h2>{raisedBy === 'reviewer' ? 'The reviewer’s words' : 'The author’s words'}</h2>
       {words ? <p className="q">“{words}”</p> : null}
       {line?.prose ? <p className="q">{line.prose}</p> : null}
       {line?.reason ? (
@@ -189,7 +189,7 @@ function Findings({
 }) {
   return (
     <div>
-      <h3>The findings</h3>
+      <h2>The findings</h2>
       {dispute.findings.length === 0 ? <p className="muted">None was handed in.</p> : null}
       {dispute.findings.map((finding, i) => (
         <FindingEntry

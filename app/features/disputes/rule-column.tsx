@@ -35,7 +35,7 @@ export function RuleColumn(props: RuleColumnProps) {
   const isAsking = choice === 'ask';
   return (
     <aside className="rule-col" aria-label="Rule">
-      <h3 id="rule-head">Rule</h3>
+      <h2 id="rule-head">Rule</h2>
       <div className="rulings" role="radiogroup" aria-labelledby="rule-head">
         {CHOICES.map((each, i) => (
           <label
@@ -122,7 +122,7 @@ function Earlier({ dispute }: { dispute: DisputeCase }) {
   if (dispute.earlier.length === 0) return null;
   return (
     <div className="prec">
-      <h3>Ruled before</h3>
+      <h2>Ruled before</h2>
       {dispute.earlier.map((ruling) => (
         <p key={ruling.rulingId} className="small">
           Round {ruling.roundNumber}, {ruling.taskTitle}

@@ -13,7 +13,7 @@ export function SurenessFigure({ sureness }: { readonly sureness: OwnStanding['s
   if (sureness.length === 0) return null;
   return (
     <Side className="cal">
-      <h3>When you say…</h3>
+      <h2>When you say…</h2>
       <dl>
         {sureness.map(({ sure, right, of, expected }) => (
           <div key={sure}>

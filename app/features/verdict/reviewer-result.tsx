@@ -79,13 +79,20 @@ function OwnWords({ review }: { review: ReviewAnswer }) {
       {finding.why ? <p>You wrote: “{finding.why}”</p> : null}
       {finding.shouldBe ? (
         <p>
-          You would have written <Maths tex={finding.shouldBe} />.
+          You would have written <Maths tex={finding.shouldBe} />
+          {review.result?.shouldBe ? SHOULD_BE[review.result.shouldBe] : '.'}
         </p>
       ) : null}
       {kind ? <p>Kind of slip you named: {kind.toLowerCase()}.</p> : null}
     </div>
   );
 }
+
+const SHOULD_BE = {
+  holds: ': it follows from the line above.',
+  fails: ': it does not follow from the line above either.',
+  undecided: '. Whether it follows could not be decided.',
+} as const;
 
 function whyPoints({ outcome }: ReviewResult, sureness: number): string {
   if (outcome === 'not-handed-in') return 'A review that is not handed in counts as nothing.';

@@ -88,6 +88,7 @@ export function result(values: Partial<ReviewResult> = {}): ReviewResult {
     slipNamed: null,
     termMarked: null,
     rescored: false,
+    shouldBe: null,
     contest: { openUntil: '2031-03-16T11:00:00.000Z', mine: null },
     ...values,
   };
