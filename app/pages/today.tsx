@@ -47,10 +47,11 @@ export function Component() {
       </Page>
     );
   }
+  // Whoever only assists has no things of their own, and rounds to look after.
+  const idle =
+    running > 0 ? `${countWord(running)} ${running === 1 ? 'round' : 'rounds'} to look after` : 'Nothing to do';
   const asked =
-    things.length === 0
-      ? 'Nothing to do'
-      : `${countWord(things.length)} ${things.length === 1 ? 'thing' : 'things'} to do`;
+    things.length === 0 ? idle : `${countWord(things.length)} ${things.length === 1 ? 'thing' : 'things'} to do`;
   return (
     <Page>
       <Head where={where} h1={`${asked}, ${name}.`} title="Today" both />

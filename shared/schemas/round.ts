@@ -209,6 +209,7 @@ export interface BoardPerson {
   readonly ownWritingEndsAt: string | null;
   readonly ownReviewingEndsAt: string | null;
   readonly reviews: { readonly dealt: number; readonly begun: number; readonly done: number };
+  /** Those that pick a step: “no fault” and “can't tell” ask for no answer. */
   readonly findings: { readonly received: number; readonly accepted: number; readonly contested: number };
 }
 

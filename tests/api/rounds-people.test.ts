@@ -207,4 +207,12 @@ describe('who does what', () => {
     await move(round.id, 'answering');
     expect((await getPerson(author))?.findings).toEqual({ received: 1, accepted: 0, contested: 0 });
   });
+
+  it('counts no finding that picks no step, because it asks for no answer', async () => {
+    const [first] = (await openReviewing()) as [Review & { derivation: { authorId: string | null } }];
+    await find(server.dataSource, first, server.clock.now(), { pick: null, noFault: true });
+    await move(round.id, 'answering');
+    const author = school.students.find(({ id }) => id === first.derivation.authorId) as User;
+    expect((await getPerson(author))?.findings).toEqual({ received: 0, accepted: 0, contested: 0 });
+  });
 });

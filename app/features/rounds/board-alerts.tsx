@@ -81,7 +81,10 @@ function Alert(props: BoardAlertsProps & { readonly alert: BoardAlert; readonly 
     case 'disputes-open':
       return (
         <>
-          <b>{plural(alert.count, 'dispute')} to rule on.</b> The round waits for them when it is to settle.{' '}
+          <b>{plural(alert.count, 'dispute')} to rule on.</b>{' '}
+          {board.round.stage === 'settled'
+            ? 'Every score follows a ruling at once.'
+            : 'The round waits for them when it is to settle.'}{' '}
           <LinkButton to={paths.disputes()} small>
             To the desk
           </LinkButton>

@@ -261,16 +261,18 @@ function answeringLists({ people, disputesOpen, round }: BoardAnswer): Omit<List
   const isOver = round.stage === 'settled';
   return {
     figures: [
-      { count: sum(({ findings }) => findings.received), words: 'findings' },
+      { count: sum(({ findings }) => findings.received), words: 'steps marked' },
       { count: sum(({ findings }) => findings.accepted), words: 'accepted' },
       { count: sum(({ findings }) => findings.contested), words: 'contested' },
-      isOver ? { count: disputesOpen, words: 'disputes open' } : { count: sum(openOf), words: 'to be answered' },
+      isOver
+        ? { count: disputesOpen, words: disputesOpen === 1 ? 'dispute open' : 'disputes open' }
+        : { count: sum(openOf), words: 'to be answered' },
     ],
     left: [{ title: isOver ? 'Left unanswered' : 'To be answered', people: authors.filter((p) => openOf(p) > 0), row }],
     right: [{ title: 'Answered', people: authors.filter((p) => openOf(p) === 0), row }],
     below: [
       {
-        title: 'Without findings',
+        title: 'Nothing to answer',
         people: people.filter(({ findings }) => findings.received === 0),
         row: (person) => ({
           edge: plain(person.lines),

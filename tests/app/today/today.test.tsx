@@ -61,7 +61,7 @@ describe('a student’s first page', () => {
           dueAt: '2031-03-07T11:00:00.000Z',
           derivationId: 'd4',
           count: 1,
-          first: { step: 3, noFault: false, why: 'The minus belongs to the whole bracket.' },
+          first: { step: 3, why: 'The minus belongs to the whole bracket.' },
         },
       ],
     });
@@ -116,6 +116,12 @@ describe('a student’s first page', () => {
     show({ ...empty, waiting: [waiting] });
     expect(await screen.findByRole('heading', { level: 1, name: 'Nothing to do, Mira.' })).toBeInTheDocument();
     expect(screen.getByText('Handed in. Reviewing opens today at 21:00.')).toBeInTheDocument();
+  });
+
+  it('does not promise an end that has passed, while rulings are open', async () => {
+    const waiting = { ...base, roundId: 'r', stage: 'answering', nextAt: '2031-03-01T17:00:00.000Z', handedIn: true };
+    show({ ...empty, waiting: [waiting] });
+    expect(await screen.findByText(/settles when your teacher has ruled on what is open/)).toBeInTheDocument();
   });
 
   it('explains itself before the first round', async () => {
