@@ -13,10 +13,15 @@ interface DealtReview {
   readonly author_name: string;
 }
 
+interface Turn extends DealtReview {
+  /** Which of the derivation's reviews this is, from 0. */
+  readonly turn: number;
+}
+
 const DEALT_SQL = `
   select r.id, r.reviewer_id as reviewer, d.author_id as author, p.name as author_name
     from review r join derivation d on d.id = r.derivation_id join person p on p.id = d.author_id
-   where r.round_id = $1 order by p.name`;
+   where r.round_id = $1 order by p.name, r.reviewer_id`;
 
 /** Everybody reviews what was dealt to them; while reviewing is open some have only begun. */
 export async function reviewDerivations(round: PlayedRound): Promise<void> {
@@ -26,14 +31,20 @@ export async function reviewDerivations(round: PlayedRound): Promise<void> {
   await forEach(of.students, async (student) => {
     const mine = dealt.filter(({ reviewer }) => reviewer === student.viewer.userId);
     if (isOpen && plan.idle?.includes(student.person.name)) return;
-    for (const [i, review] of mine.entries()) await reviewOne(round, student, review, isOpen && i > 0);
+    for (const [i, review] of mine.entries()) {
+      // Two who look at one derivation do not say it in the same words.
+      const turn = dealt
+        .filter(({ author }) => author === review.author)
+        .findIndex(({ id: other }) => other === review.id);
+      await reviewOne(round, student, { ...review, turn }, isOpen && i > 0);
+    }
   });
 }
 
 async function reviewOne(
   round: PlayedRound,
   { viewer, person }: Actor<DemoStudent>,
-  { id, author, author_name }: DealtReview,
+  { id, author, author_name, turn }: Turn,
   mayBeUndone: boolean,
 ): Promise<void> {
   const { world, plan, writingEndsAt, reviewingEndsAt, sheets } = round;
@@ -42,7 +53,7 @@ async function reviewOne(
   const random = chanceOf('review', plan.task.form.title, person.name, author_name);
   const until = reviewingEndsAt < world.present ? reviewingEndsAt : world.present;
   const at = between(new Date(writingEndsAt.getTime() + 5 * 60_000), until, 0.05 + 0.85 * random());
-  const finding = findFault(sheet, person, random);
+  const finding = findFault(sheet, person, random, turn);
   const progress = mayBeUndone ? random() : 1;
   await world.clock.at(at, async () => {
     if (progress < 0.3) return;
@@ -82,32 +93,34 @@ function findFault(
   { lines, slip }: DemoSheet,
   { eye, sureness: [from, to] }: DemoStudent,
   random: Random,
+  turn: number,
 ): FindingDraft {
-  const sees = random() < eye;
-  const sureness = Math.min(MAX_SURENESS, from + Math.floor(random() * (to - from + 1)));
   const say = (pick: FindingDraft['pick'], why: string, sure = sureness): FindingDraft => ({
-    pick,
-    markedSpan: null,
-    slipKind: null,
-    shouldBe: '',
-    why,
+    ...{ pick, markedSpan: null, slipKind: null, shouldBe: '', why },
     sureness: sure,
   });
+  const among = (words: readonly string[]) =>
+    choose(
+      words.filter((_, i) => i % 2 === turn % 2),
+      random,
+    );
+  const sees = random() < eye;
+  const sureness = Math.min(MAX_SURENESS, from + Math.floor(random() * (to - from + 1)));
   if (sees && slip) {
     return {
-      ...say(slip.step, choose(slip.why, random)),
+      ...say(slip.step, among(slip.why)),
       markedSpan: random() < 0.7 ? spanOf(lines, slip) : null,
       slipKind: random() < 0.85 ? slip.kind : null,
       shouldBe: random() < 0.6 ? slip.shouldBe : '',
     };
   }
-  if (sees) return say('none', choose(NO_FAULT, random));
+  if (sees) return say('none', among(NO_FAULT));
   const other = random();
   if (other < 0.12) return say(null, 'I could not follow this one.', 0);
-  if (slip && other < 0.5) return say('none', choose(NO_FAULT, random), Math.max(1, sureness - 1));
-  if (slip && other < 0.8 && slip.step < lines.length) return say(slip.step + 1, choose(FURTHER_ON, random));
+  if (slip && other < 0.5) return say('none', among(NO_FAULT), Math.max(1, sureness - 1));
+  if (slip && other < 0.8 && slip.step < lines.length) return say(slip.step + 1, among(FURTHER_ON));
   const astray = lines.flatMap((_, i) => (i + 1 === slip?.step ? [] : [i + 1]));
-  return say(choose(astray, random), choose(ASTRAY, random), Math.max(1, sureness - 2));
+  return say(choose(astray, random), among(ASTRAY), Math.max(1, sureness - 2));
 }
 
 function spanOf(lines: readonly string[], { step, mark }: NonNullable<DemoSheet['slip']>) {
