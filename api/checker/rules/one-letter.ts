@@ -56,7 +56,24 @@ interface Solved {
 
 /** Rules 2 to 4 on statements about one letter; throws Unsettled. */
 export function judgeOneLetter(question: OneLetterQuestion): OneLetterAnswer {
-  const solved = solveAll(question);
+  try {
+    return judgeBySolutions(question, solveAll(question));
+  } catch (cause) {
+    if (!(cause instanceof Unsettled)) throw cause;
+    // What cannot be solved may still be the same equation.
+    const same = sameAsWritten(question);
+    if (!same) throw cause;
+    return { ...holds(same), solutions: null, candidates: [] };
+  }
+}
+
+function sameAsWritten({ above, below, given, context }: OneLetterQuestion): Reached | null {
+  if (above.kind !== 'compare' || below.kind !== 'compare') return null;
+  const same = sameUpToFactor(above, below, given, context);
+  return same?.sameDomain && keepsDirection(above.sign, below.sign, same.factor.num > 0n) ? same.reached : null;
+}
+
+function judgeBySolutions(question: OneLetterQuestion, solved: Solved): OneLetterAnswer {
   const { above, below, reference } = solved;
   const pieces = question.context.wholeLetters.has(question.letter) ? wholeNumbersOf : (set: RealSet): RealSet => set;
   const lost = pieces(intersection(difference(above, below), reference));

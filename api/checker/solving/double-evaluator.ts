@@ -45,7 +45,7 @@ function valueOf(
     case 'constant':
       return node.name === 'pi' ? Math.PI : node.name === 'e' ? Math.E : Number.NaN;
     case 'add':
-      return node.args.reduce<number>((sum, arg) => sum + (values[arg] ?? Number.NaN), 0);
+      return sumOf(node.args, values);
     case 'mul':
       return node.args.reduce<number>((product, arg) => product * (values[arg] ?? Number.NaN), 1);
     case 'negate':
@@ -63,6 +63,19 @@ function valueOf(
     default:
       return Number.NaN;
   }
+}
+
+/** NaN where the sum cancels to what may be nothing but rounding. */
+function sumOf(args: readonly number[], values: Float64Array): number {
+  let sum = 0;
+  let largest = 0;
+  for (const arg of args) {
+    const value = values[arg] ?? Number.NaN;
+    sum += value;
+    const size = Math.abs(value);
+    if (size > largest) largest = size;
+  }
+  return sum !== 0 && Math.abs(sum) < 4e-15 * largest ? Number.NaN : sum;
 }
 
 function rootOf(a: number, degree: number, times: number, positive: boolean): number {

@@ -24,8 +24,9 @@ export interface SignAtPoint {
 
 /** Bits at which values are looked at. */
 const wideBits = 288;
-/** A sum that cancels to less than 2^-180 of its largest part is zero: more than 50 digits agree. */
+/** A sum that cancels to less than 2^-180 of its largest part, and below 2^-140, is zero: more than 50 digits agree. */
 const cancelledBits = 180n;
+const tinyBits = 140;
 
 /**
  * The sign of a graph's value at a point. A sum that cancels to 50 digits is zero: so that a root or a denominator at the
@@ -80,7 +81,7 @@ function isCancelled(node: GraphNode, values: readonly Value[], index: number): 
   if (node.op === 'add') {
     const parts = node.args.map((arg) => sizeOf(values[arg]));
     const largest = parts.reduce((most, part) => (part > most ? part : most), 0n);
-    return size << cancelledBits < largest;
+    return size << cancelledBits < largest && size < 1n << BigInt(wideBits - tinyBits);
   }
   return node.op === 'call' && vanishing.has(node.name) && size << cancelledBits < 1n << BigInt(wideBits);
 }

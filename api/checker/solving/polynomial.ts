@@ -35,7 +35,7 @@ export function subtractPolynomials(a: Polynomial, b: Polynomial): Polynomial {
 
 export function multiplyPolynomials(a: Polynomial, b: Polynomial): Polynomial {
   if (a.length === 0 || b.length === 0) return [];
-  const result = new Array<bigint>(a.length + b.length - 1).fill(0n);
+  const result = Array.from({ length: a.length + b.length - 1 }, () => 0n);
   a.forEach((x, i) => {
     if (x === 0n) return;
     b.forEach((y, j) => {
@@ -108,7 +108,7 @@ export function dividePolynomials(a: Polynomial, b: Polynomial): Polynomial | nu
   if (a.length < b.length) return null;
   const lead = leading(b);
   const rest = [...scalePolynomial(a, lead ** BigInt(a.length - b.length + 1))];
-  const quotient = new Array<bigint>(a.length - b.length + 1).fill(0n);
+  const quotient = Array.from({ length: a.length - b.length + 1 }, () => 0n);
   for (let shift = a.length - b.length; shift >= 0; shift -= 1) {
     const factor = (rest[shift + b.length - 1] ?? 0n) / lead;
     quotient[shift] = factor;

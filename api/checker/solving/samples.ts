@@ -36,39 +36,57 @@ export interface Crossing {
   readonly high: number;
 }
 
+/** Places without a value are noise or overflow: the function has values all along between its breaks. */
 export function findCrossings(f: (x: number) => number, positions: readonly number[]): Crossing[] {
   const found: Crossing[] = [];
-  const values = positions.map(f);
-  for (let k = 0; k + 1 < positions.length; k += 1) {
-    const [a, b, c] = [values[k - 1] ?? Number.NaN, values[k] as number, values[k + 1] as number];
-    const [x, y] = [positions[k] as number, positions[k + 1] as number];
-    if (Number.isNaN(b)) continue;
-    if (b !== 0 && c !== 0 && Math.sign(b) === -Math.sign(c)) found.push({ kind: 'crossing', low: x, high: y });
-    else if (b === 0 && a !== 0 && c !== 0) found.push({ kind: 'touching', low: positions[k - 1] ?? x, high: y });
-    else if (Math.abs(b) <= Math.abs(a) && Math.abs(b) <= Math.abs(c) && Math.sign(a) === Math.sign(c)) {
-      found.push({ kind: 'touching', low: positions[k - 1] as number, high: y });
-    }
+  const known = positions.map((x) => ({ x, value: f(x) })).filter(({ value }) => !Number.isNaN(value));
+  for (let k = 0; k + 1 < known.length; k += 1) {
+    const [before, here, next] = [known[k - 1], known[k], known[k + 1]];
+    if (!here || !next) continue;
+    const [b, c] = [here.value, next.value];
+    if (b !== 0 && c !== 0 && Math.sign(b) === -Math.sign(c)) found.push({ kind: 'crossing', low: here.x, high: next.x });
+    else if (before && isLowest(before.value, b, c)) found.push({ kind: 'touching', low: before.x, high: next.x });
   }
   return found;
 }
 
-/** The place of the smallest size in an interval, by golden section, and the size there. */
+function isLowest(a: number, b: number, c: number): boolean {
+  if (b === 0) return a !== 0 && c !== 0;
+  return Math.abs(b) <= Math.abs(a) && Math.abs(b) <= Math.abs(c) && Math.sign(a) === Math.sign(c);
+}
+
+/** The place of a change of sign, by halving; where rounding hides the sign it is found. */
+export function placeOfCrossing(f: (x: number) => number, low: number, high: number): number {
+  let [a, b] = [low, high];
+  const below = Math.sign(f(a));
+  for (let k = 0; k < 80; k += 1) {
+    const middle = (a + b) / 2;
+    const sign = Math.sign(f(middle));
+    if (Number.isNaN(sign) || sign === 0 || middle === a || middle === b) return middle;
+    if (sign === below) a = middle;
+    else b = middle;
+  }
+  return (a + b) / 2;
+}
+
+/** The place of the smallest size in an interval, by golden section, and the size there; noise counts as zero. */
 export function smallestSize(f: (x: number) => number, low: number, high: number): { at: number; size: number } {
   const golden = (Math.sqrt(5) - 1) / 2;
+  const size = (x: number): number => Math.abs(f(x)) || 0;
   let [a, b] = [low, high];
   let x = b - golden * (b - a);
   let y = a + golden * (b - a);
-  let fx = Math.abs(f(x));
-  let fy = Math.abs(f(y));
+  let fx = size(x);
+  let fy = size(y);
   for (let k = 0; k < 60; k += 1) {
-    if (fx < fy || Number.isNaN(fy)) {
+    if (fx < fy) {
       [b, y, fy] = [y, x, fx];
       x = b - golden * (b - a);
-      fx = Math.abs(f(x));
+      fx = size(x);
     } else {
       [a, x, fx] = [x, y, fy];
       y = a + golden * (b - a);
-      fy = Math.abs(f(y));
+      fy = size(y);
     }
   }
   return fx < fy ? { at: x, size: fx } : { at: y, size: fy };

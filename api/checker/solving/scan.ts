@@ -10,7 +10,7 @@ import { approximate, between, rationalNumber, type RealNumber } from './real-nu
 import { simplify, sortNumbers } from './real-set.ts';
 import { guessNumbers } from './recognise.ts';
 import { zeroBetween } from './refine.ts';
-import { findCrossings, positionsBetween, smallestSize } from './samples.ts';
+import { findCrossings, placeOfCrossing, positionsBetween, smallestSize } from './samples.ts';
 import type { LineEnv } from './line-env.ts';
 import { Unsettled } from './unsettled.ts';
 
@@ -115,9 +115,10 @@ function zerosAt(
   crossing: { kind: 'crossing' | 'touching'; low: number; high: number },
   env: LineEnv,
 ): RealNumber[] {
-  const { at, size } = smallestSize(f, crossing.low, crossing.high);
+  const found = crossing.kind === 'touching' ? smallestSize(f, crossing.low, crossing.high) : null;
+  const at = found ? found.at : placeOfCrossing(f, crossing.low, crossing.high);
   const scale = Math.abs(f(crossing.low)) + Math.abs(f(crossing.high));
-  if (crossing.kind === 'touching' && (!Number.isFinite(scale) || size > 1e-7 * scale)) return [];
+  if (found && (!Number.isFinite(scale) || found.size > 1e-7 * scale)) return [];
   for (const guess of guessNumbers(at)) {
     if (approximate(guess) >= crossing.low && approximate(guess) <= crossing.high && isZeroAt(graph, guess, env))
       return [guess];
@@ -149,7 +150,7 @@ function touchingZeros(
   const middle = rationalNumber(rational(BigInt(Math.round(at * 2 ** 40)), 1n << 40n));
   const here = signAtPoint(graph, env.letter, middle, env.given, env.context);
   // Within the error of the place, a value that small may or may not be zero.
-  if (Math.abs(f(at)) < 1e-12 * (Math.abs(f(low)) + Math.abs(f(high))) || !here) throw new Unsettled('not-settled');
+  if ((Math.abs(f(at)) || 0) < 1e-12 * (Math.abs(f(low)) + Math.abs(f(high))) || !here) throw new Unsettled('not-settled');
   return [];
 }
 
