@@ -30,13 +30,13 @@ export interface ReviewThing extends Thing {
   }[];
 }
 
-/** Findings on one's own derivation that wait for an answer. */
+/** Findings that pick a step of one's own derivation and wait for an answer. */
 export interface AnswerThing extends Thing {
   readonly kind: 'answer';
   readonly dueAt: string;
   readonly derivationId: string;
   readonly count: number;
-  readonly first: { readonly step: number | null; readonly noFault: boolean; readonly why: string } | null;
+  readonly first: { readonly step: number; readonly why: string } | null;
 }
 
 /** A round that settled within the week in which it can be contested. */

@@ -112,7 +112,7 @@ describe('for a student', () => {
     expect((await getToday()).things).toEqual([]);
   });
 
-  it('asks for an answer to each finding, in words only', async () => {
+  it('asks for answers to findings that pick a step, in words only', async () => {
     const derivations = await allHandIn();
     await move('reviewing');
     const reviews = await listReviews(server.dataSource, round.id);
@@ -125,8 +125,8 @@ describe('for a student', () => {
     expect(today.things).toMatchObject([
       {
         kind: 'answer',
-        count: 2,
-        first: { step: 1, noFault: false, why: 'The sign turned.' },
+        count: 1,
+        first: { step: 1, why: 'The sign turned.' },
         dueAt: round.answeringEndsAt.toISOString(),
       },
     ]);

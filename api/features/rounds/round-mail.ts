@@ -95,12 +95,12 @@ const REVIEWERS_SQL = `
      and not exists (select 1 from excuse x where x.round_id = r.round_id and x.user_id = r.reviewer_id)
      and (not $2 or not exists (select 1 from finding f where f.review_id = r.id and f.taken_back_at is null))`;
 
-/** Every author with a finding to answer is told so, whatever the findings say. */
+/** Every author of whose derivation a step was marked, whether or not that is right. */
 const AUTHORS_SQL = `
   select distinct p.id as user_id, p.name, d.id as derivation_id
     from derivation d join person p on p.id = d.author_id
     join review r on r.derivation_id = d.id
-    join finding f on f.review_id = r.id and f.taken_back_at is null
+    join finding f on f.review_id = r.id and f.taken_back_at is null and f.pick is not null
    where d.round_id = $1 and d.kind = 'own'`;
 
 const TAKEN_PART_SQL = `

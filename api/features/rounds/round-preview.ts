@@ -124,19 +124,19 @@ async function countWork(manager: EntityManager, roundId: string): Promise<WorkC
 const COUNT_SQL = `
   with own as (select * from derivation where round_id = $1 and current_version_id is not null),
        dealt as (
-         select r.id, r.reviewer_id, r.derivation_id, f.id as finding_id
+         select r.id, r.reviewer_id, r.derivation_id, f.id as finding_id, f.pick
            from review r
            left join lateral (
-             select id from finding where review_id = r.id and taken_back_at is null
+             select id, pick from finding where review_id = r.id and taken_back_at is null
               order by handed_in_at desc, id limit 1) f on true
           where r.round_id = $1)
   select (select count(*)::int from own) as derivations,
          (select count(*)::int from own d where not exists (
             select 1 from verdict v where v.version_id = d.current_version_id)) as unchecked,
          (select count(finding_id)::int from dealt) as findings,
-         (select count(distinct derivation_id)::int from dealt where finding_id is not null) as authors,
+         (select count(distinct derivation_id)::int from dealt where pick is not null) as authors,
          (select count(*)::int from dealt where finding_id is null) as reviews_open,
-         (select count(*)::int from dealt d where finding_id is not null
+         (select count(*)::int from dealt d where pick is not null
              and not exists (select 1 from answer a where a.finding_id = d.finding_id)) as answers_open,
          (select count(*)::int from dispute where round_id = $1 and closed_at is null) as disputes_open,
          (select count(*)::int from (

@@ -149,15 +149,15 @@ async function toAnswer(manager: EntityManager, round: OwnRound, at: Date): Prom
   return { kind: 'answer', ...base(round), dueAt, derivationId: derivation.id, count: open.length, first };
 }
 
-/** Findings without an answer, those that pick a step first; else in the order of their random keys, which says nothing. */
+/** Findings that pick a step and have no answer; in the order of their random keys, which says nothing. */
 const FINDINGS_SQL = `
-  select f.pick as step, f.no_fault as "noFault", f.why
+  select f.pick as step, f.why
     from review r
     join lateral (
       select * from finding where review_id = r.id and taken_back_at is null
-       order by handed_in_at desc, id limit 1) f on true
+       order by handed_in_at desc, id limit 1) f on f.pick is not null
    where r.derivation_id = $1 and not exists (select 1 from answer a where a.finding_id = f.id)
-   order by f.pick is null, f.author_key`;
+   order by f.author_key`;
 
 interface VerdictRow {
   readonly steps: number;

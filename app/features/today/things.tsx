@@ -151,11 +151,6 @@ function ReviewTwo({ thing, isFirst }: ThingProps<ReviewThing>) {
   );
 }
 
-function sayFirst({ step, noFault }: NonNullable<AnswerThing['first']>): string {
-  if (step !== null) return `A reviewer marks your step ${step}`;
-  return noFault ? 'A reviewer finds no fault' : 'A reviewer names no step';
-}
-
 function AnswerFindings({ thing, isFirst }: ThingProps<AnswerThing>) {
   const to = paths.derivation(thing.derivationId);
   const { first, count } = thing;
@@ -171,7 +166,7 @@ function AnswerFindings({ thing, isFirst }: ThingProps<AnswerThing>) {
         <Context thing={thing} />
         {first ? (
           <p className="say">
-            {sayFirst(first)}
+            A reviewer marks your step {first.step}
             {first.why ? `: “${first.why}”` : '.'}
           </p>
         ) : null}
