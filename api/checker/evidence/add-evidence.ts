@@ -1,6 +1,7 @@
 import type { Line } from '../../../shared/maths/expression.ts';
+import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
 import type { Evidence, StepRuling, Verdict } from '../../../shared/schemas/verdict.ts';
-import { BudgetSpent, createBudget, operationsPerStep, type CheckContext } from '../context.ts';
+import { BudgetSpent, createBudget, type CheckContext } from '../context.ts';
 import { nameBetween, nameSlip } from '../slips/name-slip.ts';
 import { contextOf, judgeLine, type Route, type WalkState } from '../walk-derivation.ts';
 import { expressionsIn } from './aims.ts';
@@ -15,6 +16,10 @@ import { findWrongPart } from './wrong-part.ts';
 
 /** Later faults get less work than the first one. */
 const mostFaults = 3;
+
+/** Operations for each kind of evidence; larger lines than this get none, their terms could not be read in a sentence. */
+const allowed = { slip: 80_000, mend: 160_000, difference: 40_000 } as const;
+const mostNodes = 180;
 
 /**
  * The one place where the rulings are complete and what explains them is added: the wrong part, the mended line and
@@ -32,30 +37,34 @@ export function addEvidence(verdict: Verdict, route: Route, before: readonly Wal
 
 function explainFault(fault: StepRuling, isFirst: boolean, verdict: Verdict, route: Route, before: readonly WalkState[]): Evidence {
   const state = before[fault.step];
-  if (!state) return {};
-  const budget = createBudget(isFirst ? operationsPerStep : operationsPerStep / 4);
-  const context: CheckContext = { ...contextOf(route, state), budget };
-  const question = askAbout(fault, route, state, context);
-  if (!question) return {};
-  const evidence: Evidence = {};
-  const steps: readonly (() => void)[] = [
-    () => Object.assign(evidence, namedSlip(question, route)),
-    () => Object.assign(evidence, mends(question, fault, isFirst, verdict, route, state)),
-    () => Object.assign(evidence, difference(question)),
-  ];
+  const share = isFirst ? 1 : 0.25;
+  const within = (operations: number, find: (question: MendQuestion) => Evidence): Evidence => {
+    if (!state) return {};
+    const context: CheckContext = { ...contextOf(route, state), budget: createBudget(operations * share) };
+    const question = askAbout(fault, route, state, context);
+    return question ? attempt(() => find(question)) : {};
+  };
+  return {
+    ...within(allowed.slip, (question) => namedSlip(question, route)),
+    ...within(allowed.mend, (question) => mends(question, fault, isFirst, verdict, route, state as WalkState)),
+    ...within(allowed.difference, difference),
+  };
+}
+
+/** Nothing is better than something half looked at. */
+function attempt(find: () => Evidence): Evidence {
   try {
-    for (const add of steps) add();
+    return find();
   } catch (cause) {
-    // What was found before the work ran out still stands.
-    if (!(cause instanceof BudgetSpent) && !(cause instanceof RangeError)) throw cause;
+    if (cause instanceof BudgetSpent || cause instanceof RangeError) return {};
+    throw cause;
   }
-  return evidence;
 }
 
 function askAbout(fault: StepRuling, route: Route, state: WalkState, context: CheckContext): MendQuestion | null {
   const own = route.read.lines[fault.step];
   const above = lineAbove(route, state, fault.step);
-  if (!own?.ok || !above) return null;
+  if (!own?.ok || !above || sizeOf(own.line) + sizeOf(above.line) > mostNodes) return null;
   const { evidence } = fault;
   return {
     above: above.line,
@@ -63,12 +72,23 @@ function askAbout(fault: StepRuling, route: Route, state: WalkState, context: Ch
     line: own.line,
     tex: own.tex,
     link: evidence.link ?? 1,
+    solutions: solutionsOf(above.line, route, state, fault.step),
     lost: evidence.lost ?? [],
     gained: evidence.gained ?? [],
     settings: route.read.settings,
     context,
     holds: (line) => isPlainlyHeld(judgeLine(route, state, fault.step, line, context).result),
   };
+}
+
+/** Asked for inequalities only, whose solutions are not among what was lost or gained by name. */
+function solutionsOf(above: Line, route: Route, state: WalkState, step: number): string | null {
+  if (above.kind !== 'relation' || above.sign === '=') return null;
+  return judgeLine(route, state, step, above).result.evidence.solutions ?? null;
+}
+
+function sizeOf(line: Line): number {
+  return exprsOf(line).reduce((count, expr) => count + countNodes(expr), 0);
 }
 
 /** What the step starts from, as a line; its text only where it is a line of its own. */
@@ -100,8 +120,11 @@ function mends(question: MendQuestion, fault: StepRuling, isFirst: boolean, verd
   const wrongPart = findWrongPart(question, mended);
   const found: Evidence = { mended: { line: mended.tex, changed: [...mended.changed] }, ...(wrongPart ? { wrongPart } : {}) };
   if (!isFirst) return found;
-  const ending = carryOn(route, state, fault.step, mended, verdict.steps, question.context);
-  return ending ? { ...found, mendedEnding: ending } : found;
+  const ending = attempt(() => {
+    const lines = carryOn(route, state, fault.step, mended, verdict.steps, question.context);
+    return lines ? { mendedEnding: lines } : {};
+  });
+  return { ...found, ...ending };
 }
 
 function difference(question: MendQuestion): Evidence {

@@ -1,6 +1,7 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { exprsOf } from '../../../shared/maths/walk.ts';
+import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
+import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import { neg, sum } from './build.ts';
 import { isFiniteNumber, isNear, minus, over, plus, real, sizeOf, times, type Complex } from './complex-double.ts';
@@ -32,16 +33,16 @@ export function aimsOf(question: MendQuestion): Aim[] {
   if (pair) {
     const wanted = workOut(pair.above, pair.focus, context);
     const places = choosePlaces([wanted, pair.focus], placeCount, context);
-    return [{ roots: [pair.focus], tree: pair.focus, wanted, places, targets: [places.map((place) => estimate(wanted, place))] }];
+    return [{ roots: [pair.focus], tree: pair.focus, wanted, places, spend: spender(context, pair.focus), targets: [places.map((place) => estimate(wanted, place))] }];
   }
   if (above.kind !== 'relation' || line.kind !== 'relation') return [];
   const places = choosePlaces([above, line], placeCount, context);
-  const isolated = aimAtSolution(above, line, places);
-  return isolated ? [isolated] : [aimAtMultiple(above, line, places)];
+  const spend = spender(context, line.left, line.right);
+  return [{ ...(aimAtSolution(above, line, places) ?? aimAtMultiple(above, line, places)), spend }];
 }
 
 /** letter = expression: the right side must be what the line above says of the letter, where that is of first degree in it. */
-function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]): Aim | null {
+function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'spend'> | null {
   const { left, right } = line;
   if (left.kind !== 'letter' || lettersOf(right).includes(left.name)) return null;
   const { name } = left;
@@ -57,12 +58,18 @@ function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]
 }
 
 /** Left minus right must be a multiple of what it is above: by 1, by -1, or as some of the like terms have it. */
-function aimAtMultiple(above: Relation, line: Relation, places: readonly Place[]): Aim {
+function aimAtMultiple(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'spend'> {
   const tree = sum(line.left, neg(line.right));
   const whole: Expr = tree.kind === 'sum' ? { ...tree, terms: [{ sign: 'plus', expr: line.left, span: line.left.span }, { sign: 'minus', expr: line.right, span: line.right.span }] } : tree;
   const values = places.map((place) => differenceAt(above, place));
   const scales = scalesOf(sum(above.left, neg(above.right)), tree);
   return { roots: [line.left, line.right], tree: whole, wanted: null, places, targets: scales.map((scale) => values.map((value) => times(real(scale), value))) };
+}
+
+/** A change is looked at some ten times over. */
+function spender({ budget }: CheckContext, ...exprs: readonly Expr[]): () => void {
+  const cost = 4 + exprs.reduce((count, expr) => count + countNodes(expr), 0);
+  return () => budget.spend(cost);
 }
 
 const mostScales = 4;

@@ -19,6 +19,7 @@ export function* leafEdits(aim: Aim, letters: readonly string[], tex: string, is
   const nodes = aim.roots.flatMap(nodesOf);
   for (const target of aim.targets) {
     for (const place of nodes) {
+      aim.spend();
       for (const found of editsAt(place, aim, target, letters, tex)) yield { ...found, touchesRight: isRight(place.node) };
     }
   }
@@ -155,4 +156,35 @@ export function smallChanges(aim: Aim, tex: string): SmallChange[] {
     }
   }
   return found;
+}
+
+const widestSearch = 24;
+const mostNumbers = 4;
+
+/** Two numbers changed at once: the first tried from small whole numbers, the second solved for. */
+export function* numberPairs(aim: Aim, tex: string, isRight: (node: Expr) => boolean): Generator<Candidate> {
+  const numbers = aim.roots.flatMap(nodesOf).filter(({ node, isExponent }) => isWholeNumber(node) && !isExponent && !isRight(node));
+  if (numbers.length < 2 || numbers.length > mostNumbers) return;
+  for (const [k, one] of numbers.entries()) {
+    for (const other of numbers.slice(k + 1)) {
+      for (let size = -widestSearch; size <= widestSearch; size += 1) yield* pairAt(one, other, size, aim, tex);
+    }
+  }
+}
+
+function* pairAt(one: PlacedNode, other: PlacedNode, value: number, aim: Aim, tex: string): Generator<Candidate> {
+  if (value === 0 || one.node.kind !== 'number' || other.node.kind !== 'number') return;
+  aim.spend();
+  const tree = replaceNode(aim.tree, one.node, whole(value));
+  const withHole = replaceNode(tree, other.node, hole);
+  for (const target of aim.targets) {
+    const found = solveHole(withHole, Number(other.node.numerator), aim, target);
+    if (!found || found.den !== 1n || found.num === 0n) continue;
+    const far = Math.abs(value - Number(one.node.numerator)) + Math.abs(Number(found.num - other.node.numerator));
+    for (const first of changedNumber(one, Q.rational(value), tex)) {
+      for (const second of changedNumber(other, found, tex)) {
+        yield { edits: [...first.edits, ...second.edits], cost: first.cost + second.cost + 0.001 * far, touchesRight: false };
+      }
+    }
+  }
 }

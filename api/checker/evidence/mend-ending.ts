@@ -50,6 +50,7 @@ function carryLine(route: Route, state: WalkState, step: number, own: Written, a
     line: own.line,
     tex: own.tex,
     link: result.evidence.link ?? 1,
+    solutions: null,
     lost: result.evidence.lost ?? [],
     gained: result.evidence.gained ?? [],
     settings: route.read.settings,

@@ -4,11 +4,12 @@ import { readLine } from '../../../shared/maths/read.ts';
 import { aimsOf, expressionsIn } from './aims.ts';
 import { splice, type Candidate, type Edit } from './edits.ts';
 import { replaceNode } from './holes.ts';
-import { leafEdits, numberText, smallChanges } from './leaf-edits.ts';
+import { leafEdits, numberPairs, numberText, smallChanges } from './leaf-edits.ts';
 import { hits, outer, type Aim, type MendQuestion } from './mend-question.ts';
 import { missingTerms } from './missing-terms.ts';
 import { findRightParts, findRightTerms } from './right-parts.ts';
 import { shapeEdits } from './shape-edits.ts';
+import { solutionSet } from './solution-set.ts';
 import { signChoices, valueListEdits } from './value-lists.ts';
 import { rewritten } from './worked-out.ts';
 import { simpleFraction } from './holes.ts';
@@ -35,7 +36,7 @@ export function mendLine(question: MendQuestion): MendedLine | null {
   const single = [...singleChanges(question, aims, isRight)];
   const first = firstThatHolds(single.filter((candidate) => weight(candidate) < rewrittenCost), question);
   if (first) return first;
-  const pairs = aims.flatMap((aim) => [...pairsOfChanges(aim, question, isRight)]);
+  const pairs = aims.flatMap((aim) => [...pairsOfChanges(aim, question, isRight), ...numberPairs(aim, question.tex, isRight)]);
   return firstThatHolds(pairs, question) ?? firstThatHolds(single.filter((candidate) => weight(candidate) >= rewrittenCost), question);
 }
 
@@ -44,11 +45,12 @@ function* singleChanges(question: MendQuestion, aims: readonly Aim[], isRight: (
   yield* signChoices(question);
   yield* valueListEdits(question);
   yield* relationSigns(line);
+  yield* solutionSet(question);
   const letters = [...new Set([...lettersOf(above), ...lettersOf(line)])];
   for (const aim of aims) {
     yield* leafEdits(aim, letters, tex, isRight);
     yield* shapeEdits(aim, tex, isRight);
-    yield* missingTerms(aim);
+    yield* missingTerms(aim, isRight);
     yield* valueItself(aim);
   }
   const pair = expressionsIn(question);
@@ -99,6 +101,7 @@ function* pairsOfChanges(aim: Aim, { tex }: MendQuestion, isRight: (node: Expr) 
   for (const [k, one] of small.entries()) {
     const changed: Aim = { ...aim, tree: replaceNode(aim.tree, one.node, one.by) };
     for (const other of small.slice(k + 1)) {
+      aim.spend();
       const both = replaceNode(changed.tree, other.node, other.by);
       if (aim.targets.some((target) => hits(both, target, aim.places))) yield { edits: [one.edit, other.edit], cost: one.cost + other.cost, touchesRight: false };
     }

@@ -12,6 +12,8 @@ export interface MendQuestion {
   readonly tex: string;
   /** Which member of a chain failed, 1 for the first. */
   readonly link: number;
+  /** The solutions of the line above as TeX, where it has one letter. */
+  readonly solutions: string | null;
   readonly lost: readonly string[];
   readonly gained: readonly string[];
   readonly settings: ReadSettings;
@@ -29,6 +31,8 @@ export interface Aim {
   /** The expression that the tree should equal, where that is known in symbols. */
   readonly wanted: Expr | null;
   readonly places: readonly Place[];
+  /** Counts the work of looking at one change. */
+  readonly spend: () => void;
   /** Values that the tree must take; several sets where the scale is open. */
   readonly targets: readonly (readonly Complex[])[];
 }

@@ -9,14 +9,15 @@ import { hits, outer, type Aim } from './mend-question.ts';
 const mostMissing = 2;
 
 /** Terms that are not there at all, put in where the work would have them. */
-export function* missingTerms(aim: Aim): Generator<Candidate> {
+export function* missingTerms(aim: Aim, isRight: (node: Expr) => boolean): Generator<Candidate> {
   const [focus] = aim.roots;
   const above = aim.wanted && spread(aim.wanted);
   const own = focus && spread(focus);
   if (!focus || !above || !own || aim.roots.length !== 1) return;
   const order = collect(above).map(keyOf);
-  const present = new Set(own.map(keyOf));
-  // A like term that is there is changed instead.
+  const doubtful = focus.kind === 'sum' ? focus.terms.filter(({ expr }) => !isRight(expr)).flatMap(({ expr }) => spread(expr) ?? []) : own;
+  const present = new Set(doubtful.map(keyOf));
+  // A like term that is there, and not known to be right, is changed instead.
   const isNew = (terms: readonly Monomial[]): boolean => terms.length > 0 && terms.every((term) => !present.has(keyOf(term)));
   const missing = collect([...above, ...own.map(negated)]);
   if (missing.length <= mostMissing && isNew(missing)) yield put(missing, focus, order);

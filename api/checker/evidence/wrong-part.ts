@@ -1,4 +1,5 @@
-import type { Line, Span } from '../../../shared/maths/expression.ts';
+import type { Expr, Line, Span } from '../../../shared/maths/expression.ts';
+import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
 import { termsOfLine } from '../../../shared/lib/within-one-term.ts';
 import type { Evidence } from '../../../shared/schemas/verdict.ts';
 import type { Edit } from './edits.ts';
@@ -12,6 +13,7 @@ type WrongPart = NonNullable<Evidence['wrongPart']>;
  * the mend reaches over several parts or puts in a new one.
  */
 export function findWrongPart({ tex, line, settings }: MendQuestion, mended: MendedLine): WrongPart | null {
+  if (mended.isRewritten) return null;
   const { decimal, numbers } = settings;
   const sign = changedSign(line, mended);
   const parts = sign ? [sign] : [...termsOfLine(tex, { decimal, numbers }), ...sidesOf(line)];
@@ -21,8 +23,13 @@ export function findWrongPart({ tex, line, settings }: MendQuestion, mended: Men
   const end = mended.tex.length - (tex.length - span.end);
   const shouldBe = mended.tex.slice(span.start, end).trim();
   if (shouldBe === '' || is === shouldBe) return null;
-  const lostSign = is.startsWith('-') && !/^[+-]/.test(shouldBe);
+  const lostSign = is.startsWith('-') && !/^[+-]/.test(shouldBe) && exprsOf(line).some((expr) => isOneOfSeveral(expr, span));
   return { span, is, shouldBe: lostSign ? `+${shouldBe}` : shouldBe };
+}
+
+function isOneOfSeveral(expr: Expr, span: Span): boolean {
+  if (expr.kind === 'sum' && expr.terms.length > 1 && expr.terms.some((term) => term.span.start === span.start && term.span.end === span.end)) return true;
+  return childrenOf(expr).some((part) => isOneOfSeveral(part, span));
 }
 
 /** What is put in at the very end of a part, a new term and a new value belong to no part. */

@@ -1,6 +1,6 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { exprsOf } from '../../../shared/maths/walk.ts';
+import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { sum } from '../evidence/build.ts';
@@ -46,8 +46,10 @@ export function nameBetween(above: Expr, wholeBelow: Expr, worksOn: boolean, con
   const values = places.map((place) => estimate(below, place));
   if (mayBeEqual(above, values, places)) return null;
   const confirm = createConfirmer(below, context);
+  const cost = costOf(above);
   for (const slip of inOrder(worksOn)) {
     for (const candidate of candidatesOf(slip, above, below, context)) {
+      context.budget.spend(cost);
       if (candidate === below || (mayBeEqual(candidate, values, places) && confirm(candidate))) return slip;
     }
   }
@@ -56,10 +58,16 @@ export function nameBetween(above: Expr, wholeBelow: Expr, worksOn: boolean, con
   const multiplied = sumExpr(terms);
   for (const slip of allSlips.filter((one) => one.alsoExpanded)) {
     for (const candidate of candidatesOf(slip, multiplied, below, context)) {
+      context.budget.spend(cost);
       if (mayBeEqual(candidate, values, places) && confirm(candidate)) return slip;
     }
   }
   return null;
+}
+
+/** Looking at a candidate at some places, in operations. */
+function costOf(expr: Expr): number {
+  return 4 + (countNodes(expr) >> 1);
 }
 
 /** The checker's own answer, given a limited number of times. */
@@ -92,9 +100,11 @@ function withoutConstant(above: Expr, below: Expr): Expr {
 
 function nameBetweenStatements(above: Line, below: Line, context: CheckContext, follows: Follows): Slip | null {
   const filter = mayFollow(below, above, context);
+  const cost = exprsOf(above).reduce((total, expr) => total + costOf(expr), 0);
   let confirmed = 0;
   for (const slip of allSlips) {
     for (const candidate of statementsOf(slip, above, below, context)) {
+      context.budget.spend(cost);
       if (candidate === below) return slip;
       if (!filter(candidate)) continue;
       confirmed += 1;
