@@ -11,7 +11,8 @@ import { FindingNote } from './finding-note.tsx';
 /** The own derivation before settling: the plain edge, and the findings to answer once answering is open. */
 export function AnswerDesk({ derivation }: { readonly derivation: AuthorDerivation }) {
   const { round, task, lines, findings, canAnswer } = derivation;
-  const open = findings.filter((finding) => finding.answer === null).length;
+  // “No fault” and “can't tell” may be answered, and wait for nothing.
+  const open = findings.filter((finding) => finding.answer === null && finding.pick !== null).length;
   return (
     <>
       <Head
@@ -72,7 +73,7 @@ export function Answered({ finding }: { finding: AuthorDerivation['findings'][nu
 
 function headline({ round, findings, canAnswer }: AuthorDerivation, open: number): string {
   if (round.stage !== 'answering') return 'Your derivation is with its reviewers.';
-  if (findings.length === 0) return 'Nobody found anything to answer.';
+  if (findings.every(({ pick }) => pick === null)) return 'Nobody found anything to answer.';
   if (!canAnswer) return 'Answering is over.';
   if (open === 0) return 'Every finding is answered.';
   const words = countWord(open);
