@@ -1,6 +1,6 @@
 import type { AuthorDerivation } from '../../../shared/schemas/review.ts';
 import type { DemoStudent } from './cast.ts';
-import type { PlayedRound } from './play-round.ts';
+import type { PlayedRound } from './played-round.ts';
 import { between } from './seed-times.ts';
 import { chanceOf, choose, forEach, type Actor } from './seed-world.ts';
 

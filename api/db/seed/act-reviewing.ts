@@ -2,7 +2,7 @@ import { MAX_SURENESS, type FindingDraft } from '../../../shared/schemas/finding
 import type { Random } from '../../../shared/lib/seeded-random.ts';
 import type { DemoStudent } from './cast.ts';
 import { toLine, type DemoSheet } from './demo-task.ts';
-import type { PlayedRound } from './play-round.ts';
+import type { PlayedRound } from './played-round.ts';
 import { between } from './seed-times.ts';
 import { chanceOf, choose, forEach, type Actor } from './seed-world.ts';
 
@@ -96,8 +96,12 @@ function findFault(
   turn: number,
 ): FindingDraft {
   const say = (pick: FindingDraft['pick'], why: string, sure = sureness): FindingDraft => ({
-    ...{ pick, markedSpan: null, slipKind: null, shouldBe: '', why },
+    pick,
+    why,
     sureness: sure,
+    markedSpan: null,
+    slipKind: null,
+    shouldBe: '',
   });
   const among = (words: readonly string[]) =>
     choose(

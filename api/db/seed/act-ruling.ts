@@ -1,7 +1,6 @@
 import type { DisputeCase, DisputeItem } from '../../../shared/schemas/dispute.ts';
 import type { DemoSheet } from './demo-task.ts';
-import type { PlayedRound } from './play-round.ts';
-import { minutesAfter } from './play-round.ts';
+import { minutesAfter, type PlayedRound } from './played-round.ts';
 
 /** The teacher works through the desk until nothing of this round is left. */
 export async function ruleOnDisputes(round: PlayedRound): Promise<void> {

@@ -1,7 +1,7 @@
 import type { MendView } from '../../../shared/schemas/derivation.ts';
 import { toDocument } from './act-writing.ts';
 import { toLine } from './demo-task.ts';
-import { minutesAfter, type PlayedRound } from './play-round.ts';
+import { minutesAfter, type PlayedRound } from './played-round.ts';
 import { chanceOf, forEach } from './seed-world.ts';
 
 async function findDerivations({ world, id }: PlayedRound): Promise<Map<string, string>> {

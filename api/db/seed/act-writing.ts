@@ -1,7 +1,7 @@
 import type { SheetDocument } from '../../../shared/schemas/sheet.ts';
 import type { DemoStudent } from './cast.ts';
 import { toLine, type DemoSheet } from './demo-task.ts';
-import type { PlayedRound } from './play-round.ts';
+import type { PlayedRound } from './played-round.ts';
 import type { AtWork } from './round-plan.ts';
 import { between } from './seed-times.ts';
 import { chanceOf, choose, forEach, idOf, type Actor } from './seed-world.ts';

@@ -1,29 +1,14 @@
-import type { DemoSheet } from './demo-task.ts';
 import { answerFindings } from './act-answering.ts';
 import { contestVerdict, writeMends } from './act-settled.ts';
 import { reviewDerivations } from './act-reviewing.ts';
 import { ruleOnDisputes } from './act-ruling.ts';
 import { writeDerivations } from './act-writing.ts';
 import { DEMO_SCHOOL } from './cast.ts';
+import { minutesAfter, type PlayedRound } from './played-round.ts';
 import type { RoundPlan } from './round-plan.ts';
 import type { SeededClass } from './seed-class.ts';
 import { instantOf } from './seed-times.ts';
 import type { SeedWorld } from './seed-world.ts';
-
-/** A round while it is played: who wrote what is kept here, because reviewers of the demo say what fits it. */
-export interface PlayedRound {
-  readonly world: SeedWorld;
-  readonly of: SeededClass;
-  readonly plan: RoundPlan;
-  readonly id: string;
-  readonly opensAt: Date;
-  readonly writingEndsAt: Date;
-  readonly reviewingEndsAt: Date;
-  readonly answeringEndsAt: Date;
-  readonly settlesAt: Date;
-  /** By the author's user id. */
-  readonly sheets: Map<string, DemoSheet>;
-}
 
 /** Plans a round and plays it up to the present: every stage comes by its own job, at its own instant. */
 export async function playRound(world: SeedWorld, of: SeededClass, plan: RoundPlan, taskId: string): Promise<void> {
@@ -82,8 +67,4 @@ async function arrange({ world, of, plan, id, opensAt }: PlayedRound): Promise<v
       reason: plan.extended.reason,
     });
   });
-}
-
-export function minutesAfter(instant: Date, minutes: number): Date {
-  return new Date(instant.getTime() + minutes * 60_000);
 }
