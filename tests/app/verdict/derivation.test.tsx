@@ -30,7 +30,7 @@ afterEach(() => vi.unstubAllGlobals());
 describe('answering findings', () => {
   it('shows each finding without a name, and counts what waits', async () => {
     show(derivation());
-    expect(await screen.findByRole('heading', { level: 1 })).toHaveTextContent('Two findings wait for your answer.');
+    expect(await screen.findByRole('heading', { level: 1 })).toHaveTextContent('One finding waits for your answer.');
     expect(screen.getByText('“All is well.”')).toBeInTheDocument();
     expect(screen.getByText('Nearly certain.')).toBeInTheDocument();
     expect(document.body).not.toHaveTextContent(/points|right|carried/);
