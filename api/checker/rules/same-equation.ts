@@ -6,6 +6,7 @@ import { div, isZero, rational, type Rational } from '../numbers/rational.ts';
 import type { Assignment } from '../solving/fraction.ts';
 import type { Reached } from '../solving/real-set.ts';
 import type { CompareStatement } from '../statements/statement.ts';
+import { isKnown, toBall } from '../values/arithmetic.ts';
 import { prepare, evaluatePrepared } from '../values/evaluate.ts';
 import type { KnownValue, Value } from '../values/value.ts';
 import { differenceExpr, numberExpr, productExpr } from './build-expr.ts';
@@ -94,5 +95,7 @@ function roughRatio(x: Value, y: Value): Rational | null {
 }
 
 function middleOf(value: Value): bigint | null {
-  return value.kind === 'ball' && value.im === null ? value.re.mid : null;
+  if (!isKnown(value)) return null;
+  const { re, im } = toBall(value, 128);
+  return im === null ? re.mid : null;
 }

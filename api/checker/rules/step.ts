@@ -1,6 +1,7 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import type { CheckSettings, Note } from '../../../shared/schemas/verdict.ts';
 import { judgeWithRates } from '../calculus/implicit.ts';
+import { rateNamed } from '../calculus/rates.ts';
 import type { CheckContext, Definitions } from '../context.ts';
 import type { RealNumber } from '../solving/real-number.ts';
 import { isEmptySet, isWholeLine } from '../solving/real-set.ts';
@@ -80,6 +81,7 @@ function define(line: Extract<Line, { kind: 'definition' }>, context: CheckConte
 function freshDefinition(line: Line, question: StepQuestion): Extract<Line, { kind: 'definition' }> | null {
   if (line.kind !== 'relation' || line.sign !== '=' || line.left.kind !== 'letter') return null;
   const { name } = line.left;
+  if (rateNamed(name) !== null) return null;
   const { context, givenLetters, from, known } = question;
   const used = [...givenLetters, ...known.flatMap((statement) => freeLetters(statement, context))];
   if (from?.kind !== 'statement' || used.includes(name) || context.definitions.letters.has(name)) return null;
