@@ -128,8 +128,16 @@ export function divExprs(numerator: Expr, denominator: Expr): Expr {
 export function powExprs(base: Expr, exponent: Expr): Expr {
   if (isOneExpr(exponent)) return base;
   const whole: Expr = { kind: 'power', base, exponent, span };
-  const value = rationalOf(whole);
+  const value = rationalOf(whole) ?? rootOf(base, exponent);
   return value === null ? whole : rationalExpr(value);
+}
+
+/** A broken power of a positive fraction, where it is one. */
+function rootOf(base: Expr, exponent: Expr): Rational | null {
+  const [a, r] = [rationalOf(base), rationalOf(exponent)];
+  if (!a || !r || a.num <= 0n || r.den === 1n || r.den > 12n || r.num > 64n || r.num < -64n) return null;
+  const root = Q.exactRoot(a, Number(r.den));
+  return root && Q.pow(root, Number(r.num));
 }
 
 export function callOf(name: Extract<Expr, { kind: 'call' }>['name'], ...args: readonly Expr[]): Expr {

@@ -7,7 +7,7 @@ import { squareFreePart } from '../solving/polynomial.ts';
 import { isolateRealRoots } from '../solving/real-roots.ts';
 import { isKnown, isReal, toBall } from '../values/arithmetic.ts';
 import { evaluate, evaluatePrepared, prepare, type Prepared } from '../values/evaluate.ts';
-import { addExprs, divExprs, letterOf, mulExprs, numberOf, oneExpr, piExpr, rationalExpr, sqrtExpr } from './build.ts';
+import { addExprs, divExprs, letterOf, mulExprs, numberOf, oneExpr, piExpr, powExprs, rationalExpr } from './build.ts';
 import { infinitySign } from './limit.ts';
 import { polynomialIn } from './integrand.ts';
 import { needsOf } from './needs.ts';
@@ -72,7 +72,7 @@ function cutPoints(expr: Expr, variable: string, low: Position, high: Position, 
   const graph = prepare(expr, context);
   const start = Number.isFinite(low.value) ? low.value : -reach;
   const end = Number.isFinite(high.value) ? high.value : reach;
-  const trouble = unresolved(graph, variable, start, end, context);
+  const trouble = unresolved(graph, variable, start, end, context, candidates.map(({ value }) => value));
   if (!trouble) return null;
   const isFar = [low, high].map(({ value }) => Number.isFinite(value) || isCalm(expr, variable, value, reach, context));
   if (isFar.includes(false)) return null;
@@ -91,7 +91,7 @@ function cutPoints(expr: Expr, variable: string, low: Position, high: Position, 
 }
 
 /** Small stretches on which the values could not be enclosed, joined where they touch. */
-function unresolved(graph: Prepared, variable: string, start: number, end: number, context: CheckContext): [number, number][] | null {
+function unresolved(graph: Prepared, variable: string, start: number, end: number, context: CheckContext, expected: readonly number[] = []): [number, number][] | null {
   const found: [number, number][] = [];
   const pieces = Math.max(1, Math.min(64, Math.ceil((end - start) * 2)));
   let count = 0;
@@ -99,7 +99,8 @@ function unresolved(graph: Prepared, variable: string, start: number, end: numbe
     if ((count += 1) > mostEvaluations) return false;
     const value = evaluatePrepared(graph, new Map([[variable, { kind: 'ball', re: ballAround(low, high), im: null }]]), bits, context);
     if (isKnown(value) && isReal(value)) return true;
-    if (depth >= deepest) {
+    const isExpected = depth >= 6 && expected.some((x) => x >= low && x <= high);
+    if (depth >= deepest || isExpected) {
       const last = found[found.length - 1];
       if (last && last[1] >= low) last[1] = high;
       else found.push([low, high]);
@@ -149,6 +150,14 @@ function candidatesOf(expr: Expr, variable: string, low: Position, high: Positio
 }
 
 function rootsOf(need: Expr, variable: string, low: Position, high: Position, context: CheckContext): Candidate[] | null {
+  if (need.kind === 'quotient' || need.kind === 'product') {
+    const parts = (need.kind === 'quotient' ? [need.numerator, need.denominator] : need.factors).map((part) => rootsOf(part, variable, low, high, context));
+    return parts.includes(null) ? null : parts.flatMap((part) => part ?? []);
+  }
+  const coefs = polynomialIn(need, variable);
+  if (coefs?.length === 1) return [];
+  if (coefs?.length === 2) return linearRoot(coefs, context);
+  if (coefs?.length === 3) return quadraticRoots(coefs, context);
   const fraction = toFraction(prepare(need, context), variable);
   if (!fraction) return turningRoots(need, variable, low, high, context);
   if (fraction.num.length < 2) return [];
@@ -156,13 +165,18 @@ function rootsOf(need: Expr, variable: string, low: Position, high: Position, co
   const exact = roots.filter((root) => Q.equals(root.low, root.high)).map(({ low: at }) => ({ expr: rationalExpr(at), value: Q.toNumber(at) }));
   const inside = roots.filter((root) => Q.toNumber(root.high) > low.value && Q.toNumber(root.low) < high.value && !Q.equals(root.low, root.high));
   if (inside.length === 0) return exact;
-  const quadratic = polynomialIn(need, variable);
-  return quadratic?.length === 3 ? quadraticRoots(quadratic, context) : null;
+  return null;
+}
+
+function linearRoot([constant, slope]: readonly Expr[], context: CheckContext): Candidate[] {
+  const at = divExprs(mulExprs(numberOf(-1), constant as Expr), slope as Expr);
+  const position = positionOf(at, context);
+  return position ? [{ expr: at, value: position.value }] : [];
 }
 
 function quadraticRoots(coefs: readonly Expr[], context: CheckContext): Candidate[] {
   const [c, b, a] = coefs as [Expr, Expr, Expr];
-  const root = sqrtExpr(addExprs(mulExprs(b, b), mulExprs(numberOf(-4), a, c)));
+  const root = powExprs(addExprs(mulExprs(b, b), mulExprs(numberOf(-4), a, c)), numberOf(1, 2));
   return [1, -1].flatMap((sign) => {
     const at = divExprs(addExprs(mulExprs(numberOf(-1), b), mulExprs(numberOf(sign), root)), mulExprs(numberOf(2), a));
     const position = positionOf(at, context);

@@ -30,13 +30,16 @@ export function tryOnCurve(
   relations: readonly CompareStatement[], rated: readonly CompareStatement[], claim: CompareStatement, context: CheckContext,
 ): CurveAnswer {
   let agreed = 0;
+  let apart: Readonly<Record<string, string>> | null = null;
   for (const start of pointsOn(relations, [...rated, claim], context)) {
     const point = withRates(start, rated, [claim], context);
     if (!point) continue;
     const truth = isTrueAt(claim, point, context);
-    if (truth === false) return { kind: 'apart', at: Object.fromEntries([...point].map(([name, value]) => [name, valueTex(value, bits)])) };
+    if (truth === false) apart ??= Object.fromEntries([...point].map(([name, value]) => [name, valueTex(value, bits)]));
     if (truth === true) agreed += 1;
   }
+  // True on one branch of the curve and false on another: which one is meant is not said.
+  if (apart) return agreed < 3 ? { kind: 'apart', at: apart } : { kind: 'unknown' };
   return { kind: agreed >= agreementsNeeded ? 'agreed' : 'unknown' };
 }
 

@@ -234,7 +234,7 @@ function substituteAll(body: Expr, params: readonly string[], args: readonly Exp
 function ofIntegral(node: Extract<Expr, { kind: 'integral' }>, scope: Scope, visit: Visit): Expr {
   const { from, to, integrand, variable } = node;
   if (!from || !to) {
-    if (scope.partial ? variable !== scope.variable : !moves(variable, scope.variable, scope.context, false)) {
+    if (!moves(variable, scope.variable, scope.context, scope.partial)) {
       return scope.isConstant(integrand) ? zeroExpr : unsettled();
     }
     if (variable !== scope.variable && lettersOf(integrand).includes(scope.variable)) return unsettled();

@@ -101,7 +101,8 @@ function onCurve(
 /** What the lines say of independent letters is tried on the curve that they belong to before it counts as a fault. */
 function confirmed(question: StatementQuestion, judge: Judge): StatementAnswer {
   const { known, above, context } = question;
-  const result = judge(question);
+  // What does not satisfy the curve may not be dropped here: x and y stand for any of its points.
+  const result = judge({ ...question, reference: above });
   const below = equationOf(question.below);
   if (result.ruling === 'holds' || !below) return result;
   const equations = [above, ...known].flatMap(comparesOf).filter(({ sign }) => sign === '=');

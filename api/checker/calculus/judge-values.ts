@@ -9,7 +9,7 @@ import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
 
 /** What a line is worth where that is not an ordinary value: beyond all bounds, or none at all. */
-export type Worth = { readonly kind: 'infinite'; readonly sign: 1 | -1 } | { readonly kind: 'none' } | { readonly kind: 'ordinary'; readonly tex: string | null };
+export type Worth = { readonly kind: 'infinite'; readonly sign: 1 | -1 } | { readonly kind: 'none'; readonly sides?: boolean } | { readonly kind: 'ordinary'; readonly tex: string | null };
 
 /** Infinities and missing values, of a limit, an integral or a sum by itself, with a sign or a number before it. */
 export function worthOf(expr: Expr, context: CheckContext): Worth {
@@ -22,7 +22,7 @@ export function worthOf(expr: Expr, context: CheckContext): Worth {
   }
   if (['limit', 'integral', 'evaluated', 'series'].includes(expr.kind)) {
     const reduced = context.reduceCalculus?.(expr, context) ?? null;
-    if (reduced && hasNoValue(reduced)) return { kind: 'none' };
+    if (reduced && hasNoValue(reduced)) return { kind: 'none', sides: expr.kind === 'limit' };
     if (reduced && reduced.kind !== expr.kind) return worthOf(reduced, context);
   }
   if ((expr.kind === 'sum' || expr.kind === 'product' || expr.kind === 'quotient') && partsOf(expr).some((part) => worthOf(part, context).kind === 'none')) return { kind: 'none' };

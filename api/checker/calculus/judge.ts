@@ -6,6 +6,7 @@ import type { Comparison } from '../compare/comparison.ts';
 import type { CheckContext } from '../context.ts';
 import { compareAntiderivatives, concernsConstants, type AntiderivativeRuling } from './judge-antiderivative.ts';
 import { worthOf, type Worth } from './judge-values.ts';
+import { boundsOfSeries } from './series-bounds.ts';
 
 export interface CalculusComparison {
   readonly found: Comparison;
@@ -19,7 +20,9 @@ export function compareWithCalculus(above: Expr, below: Expr, context: CheckCont
   if (!hasOperator(above) && !hasOperator(below)) return plain(compareExpressions(above, below, context));
   const [a, b] = [worthOf(above, context), worthOf(below, context)];
   if (a.kind !== 'ordinary' || b.kind !== 'ordinary') return plain(compareWorth(a, b));
-  return plain(compareExpressions(above, below, context));
+  const bounds = [above, below].flatMap((expr) => boundsOfSeries(expr));
+  const within = bounds.length > 0 ? { ...context, assumptions: [...context.assumptions, ...bounds] } : context;
+  return plain(compareExpressions(above, below, within));
 }
 
 function plain(found: Comparison): CalculusComparison {
@@ -34,7 +37,7 @@ function hasOperator(expr: Expr): boolean {
 }
 
 function compareWorth(above: Worth, below: Worth): Comparison {
-  if (above.kind === 'none') return below.kind === 'ordinary' ? { kind: 'nothing-in-common' } : { kind: 'undecided', reason: 'no-domain' };
+  if (above.kind === 'none') return below.kind === 'ordinary' || (below.kind === 'infinite' && above.sides) ? { kind: 'nothing-in-common' } : { kind: 'undecided', reason: 'no-domain' };
   if (below.kind === 'none') return { kind: 'meaningless' };
   if (above.kind === 'infinite' && below.kind === 'infinite') {
     if (above.sign === below.sign) return { kind: 'equal', reached: 'proved', excluded: [], cancelled: [] };

@@ -1,10 +1,11 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
 import { Unsettled } from '../solving/unsettled.ts';
-import { isKnown } from '../values/arithmetic.ts';
+import { isExactZero, isKnown, isNonZero } from '../values/arithmetic.ts';
 import { evaluate } from '../values/evaluate.ts';
 import { signOf } from '../values/powers.ts';
 import { addExprs, callOf, divExprs, mulExprs, negateExpr, numberOf, oneExpr, powExprs, rationalExpr, rationalOf, zeroExpr } from './build.ts';
@@ -67,6 +68,10 @@ export function signOfCoefficient(coef: Expr, context: CheckContext): -1 | 0 | 1
 export function isZeroCoefficient(coef: Expr, context: CheckContext): boolean {
   const value = rationalOf(coef);
   if (value !== null) return Q.isZero(value);
+  if (lettersOf(coef).length === 0) {
+    const worth = evaluate(coef, new Map(), 128, context);
+    if (isKnown(worth) && !isExactZero(worth) && (worth.kind !== 'ball' || isNonZero(worth))) return false;
+  }
   const found = compareExpressions(coef, zeroExpr, context);
   if (found.kind === 'equal' && found.reached === 'proved') return true;
   if (found.kind === 'different') return false;
@@ -186,7 +191,8 @@ export function rationalPower(a: Series, r: Rational, context: CheckContext): Se
   let head: Expr;
   if (r.den === 1n) head = powExprs(lead.coef, rationalExpr(r));
   else {
-    const known = signOfCoefficient(lead.coef, context);
+    // With letters: where it is negative an even root has no value, and an odd one is the same power.
+    const known = lettersOf(lead.coef).length > 0 ? 1 : signOfCoefficient(lead.coef, context);
     if (known < 0 && (r.den % 2n === 0n || context.numbers === 'complex')) throw new Unsettled('no-domain');
     const size = powExprs(known < 0 ? negateExpr(lead.coef) : lead.coef, rationalExpr(r));
     head = known < 0 && r.num % 2n !== 0n ? negateExpr(size) : size;
@@ -223,7 +229,7 @@ export function expSeries(a: Series, context: CheckContext): Series {
 
 export function lnSeries(a: Series, context: CheckContext): Series {
   const { lead, rest } = splitLead(a, context);
-  if (signOfCoefficient(lead.coef, context) <= 0) throw new Unsettled('no-domain');
+  if (lettersOf(lead.coef).length === 0 && signOfCoefficient(lead.coef, context) <= 0) throw new Unsettled('no-domain');
   if (lead.scale.q !== 0) throw new Unsettled('not-covered');
   const terms: SeriesTerm[] = lead.scale.growth.map(({ coef, p, q }) => ({ coef, scale: { growth: [], p, q } }));
   terms.push({ coef: callOf('ln', lead.coef), scale: unitScale });
