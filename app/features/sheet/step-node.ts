@@ -3,7 +3,7 @@ import { NodeSelection, Plugin } from '@tiptap/pm/state';
 import { ReactNodeViewRenderer } from '@tiptap/react';
 import { StepView } from './step-view.tsx';
 import { blocksFromPaste } from './paste-steps.ts';
-import { goTo, insertBlocks, mendIds, nextLine } from './sheet-commands.ts';
+import { insertBlocks, mendIds, nextLine } from './sheet-commands.ts';
 import { sheetDecorations } from './sheet-decorations.ts';
 import { run, sheetKeys } from './sheet-keys.ts';
 
@@ -69,12 +69,6 @@ export const StepNode = Node.create<StepOptions>({
         props: {
           // A line is written in its field: keys that reach the sheet itself must never replace it.
           handleTextInput: ({ state }) => state.selection instanceof NodeSelection,
-          // Also on the line that is selected already, or whose reason has the focus.
-          handleClickOn: (view, _at, node, pos) => {
-            if (node.type.name !== 'step' || !editor.isEditable) return false;
-            view.dispatch(goTo(view.state.tr, pos));
-            return true;
-          },
           handlePaste: ({ state }, event) => {
             const text = event.clipboardData?.getData('text/plain') ?? '';
             if (!(state.selection instanceof NodeSelection) || text === '') return false;

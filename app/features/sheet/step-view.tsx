@@ -1,5 +1,5 @@
 import { NodeViewWrapper, type NodeViewProps } from '@tiptap/react';
-import { memo, useEffect, useId, useRef, useState, type KeyboardEvent, type RefObject } from 'react';
+import { memo, useEffect, useId, useRef, useState, type KeyboardEvent, type MouseEvent, type RefObject } from 'react';
 import { EdgeColumn } from '../../ui/edge-pieces.tsx';
 import type { EdgeRow } from '../../ui/edge-strokes.ts';
 import { Maths } from '../../ui/maths.tsx';
@@ -21,6 +21,8 @@ const PLAIN: EdgeRow = {
   isArm: false,
 };
 
+const OWN_PARTS = 'math-field, input, button, label, select, textarea, a, .maths-field, .under';
+
 /** One line of the sheet. Only the one under the caret holds a live field; all others are set maths. */
 export const StepView = memo(function StepView({ editor, node, extension }: NodeViewProps) {
   const { stepId, tex, reason } = stepAttributes(node);
@@ -35,8 +37,13 @@ export const StepView = memo(function StepView({ editor, node, extension }: Node
   const isSettled = useSettled(tex, isLive && isInHand);
   const write = (next: string) => run(editor, writeStep(stepId, { tex: next }));
   const beforeNumber = wordBefore(facts);
+  // A press anywhere on a written line enters it, by mouse, finger or pen.
+  const onClick = (event: MouseEvent) => {
+    const isOther = event.target instanceof Element && event.target.closest(OWN_PARTS);
+    if (!isOther && editor.isEditable) run(editor, enterLine(stepId, 'end'));
+  };
   return (
-    <NodeViewWrapper className="contents">
+    <NodeViewWrapper className="contents" onClick={onClick}>
       <span className="no" data-drag-handle="">
         {beforeNumber ? <span className="nr">{beforeNumber}</span> : null}
         <span className="sr-only">line </span>
