@@ -177,6 +177,7 @@ describe('after settling', () => {
     const [dispute] = await disputes();
     const teacher = await server.signIn(round.teacher);
     await teacher.post(`/disputes/${dispute!.id}/question`, { question: 'What did you mean by it?' }).expect(204);
+    await reviewer.post(`/disputes/${dispute!.id}/question`, { question: 'Mine?' }).expect(404);
     expect((await author.get(path)).body.settled.contest.mine.question).toBe('What did you mean by it?');
     await reviewer.post(`${path}/question-answer`, { answer: 'x' }).expect(404);
     await server.visitor().post(`${path}/question-answer`, { answer: 'x' }).expect(401);

@@ -84,6 +84,7 @@ describe('a draft', () => {
     await reviewer.put(path, { draft: { ...finding(), sureness: 9 }, version: 0 }).expect(422);
     await reviewer.put(path, { draft: finding({ pick: 5 }), version: 0 }).expect(422);
     await reviewer.put(path, { draft: finding({ markedSpan: { start: 0, end: 400 } }), version: 0 }).expect(422);
+    await reviewer.put(path, { draft: finding(), version: 0 }).expect(200);
   });
 });
 
@@ -112,6 +113,7 @@ describe('handing in', () => {
     expect(body.errors).toEqual([{ pointer: '/pick', detail: 'Choose a step, or say that there is no fault.' }]);
     await author.post(path, finding()).expect(404);
     await server.visitor().post(path, finding()).expect(401);
+    await reviewer.post(path, finding()).expect(200);
   });
 
   it('is open for two minutes after the end, and no longer', async () => {
@@ -136,9 +138,11 @@ describe('handing in', () => {
   });
 
   it('can be taken back by its reviewer alone', async () => {
-    const { review, author } = await dealt();
+    const { review, author, reviewer } = await dealt();
+    await reviewer.post(`/reviews/${review.id}/finding`, finding()).expect(200);
     await author.post(`/reviews/${review.id}/take-back`).expect(404);
     await server.visitor().post(`/reviews/${review.id}/take-back`).expect(401);
+    await reviewer.post(`/reviews/${review.id}/take-back`).expect(200);
   });
 });
 

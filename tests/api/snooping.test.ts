@@ -116,7 +116,9 @@ function expectClean(round: ReviewedRound, student: number, asked: readonly Aske
       expect(text, `${path} names a classmate's id`).not.toContain(id);
       expect(text, `${path} names a classmate`).not.toContain(`"${name}"`);
     }
-    for (const { version } of round.derivations) {
+    for (const [author, { version }] of round.derivations.entries()) {
+      // One's own sheet has the ids of one's own steps.
+      if (author === student) continue;
       expect(text, `${path} carries a version`).not.toContain(version.id);
       for (const { stepId } of version.lines)
         if (stepId !== 'given') expect(text, `${path} carries a step's id`).not.toContain(stepId);

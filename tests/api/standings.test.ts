@@ -116,7 +116,8 @@ describe('the list', () => {
   });
 
   it('is for the people of the class', async () => {
-    const { path } = await scored(2);
+    const { path, teacher } = await scored(2);
+    await (await server.signIn(teacher)).get(path).expect(200);
     const stranger = await server.signIn(await server.create.user('student'));
     await stranger.get(path).expect(404);
     await server.visitor().get(path).expect(401);

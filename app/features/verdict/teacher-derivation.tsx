@@ -77,11 +77,12 @@ export function TeacherDerivationView({ derivation, wordStep, onOverrule }: Teac
 const COLUMNS: readonly Column<TeacherFinding>[] = [
   { id: 'who', head: 'Reviewer', cell: ({ reviewer }) => reviewer ?? '—' },
   { id: 'pick', head: 'Says', cell: saysWords },
-  { id: 'why', head: 'Why', cell: ({ why }) => (why ? `“${why}”` : '') },
+  { id: 'why', head: 'Why', cell: ({ why }) => (why ? `“${why}”` : '—') },
   {
     id: 'answer',
     head: 'The author',
-    cell: ({ answer }) => (answer ? (answer.kind === 'accept' ? 'accepted' : `contested: “${answer.reason}”`) : ''),
+    cell: ({ answer }) =>
+      answer ? (answer.kind === 'accept' ? 'accepted' : `contested: “${answer.reason}”`) : 'no answer',
   },
   { id: 'points', head: 'Points', isFigure: true, cell: ({ points }) => (points === null ? '' : signed(points)) },
 ];
@@ -90,12 +91,12 @@ function saysWords({ pick, noFault, sureness, slipKind, outcome }: TeacherFindin
   const kind = slipKindLabel(slipKind);
   const place = noFault ? 'no fault' : pick === null ? 'can’t tell' : `step ${pick}`;
   return (
-    <>
+    <span>
       {place}
       {pick !== null || noFault ? `, ${SURE_WORDS[sureness]}` : null}
       {kind ? <em>, {kind.toLowerCase()}</em> : null}
       {outcome ? <span className="fine muted block">{OUTCOME_WORDS[outcome]}</span> : null}
-    </>
+    </span>
   );
 }
 
