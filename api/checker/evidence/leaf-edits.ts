@@ -105,7 +105,7 @@ function* changedTerm(place: PlacedNode, leads: PlacedTerm, aim: Aim, target: re
     return;
   }
   const at = outer(node).start;
-  const extra = size.den === 1n ? 0 : fractionCost / 2;
+  const extra = (size.den === 1n ? 0 : fractionCost / 2) + (node.kind === 'quotient' ? 0.4 : 0);
   const bracketed = node.kind === 'sum' && !node.bracketed;
   if (!bracketed) yield { edits: [...front, { start: at, end: at, text: numberText(size) }], cost: costs.factor + (turned ? 0.1 : 0) + extra };
 }

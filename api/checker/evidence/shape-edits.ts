@@ -1,4 +1,5 @@
 import type { Expr, FunctionName } from '../../../shared/maths/expression.ts';
+import { glue } from '../../../shared/maths/print-expression.ts';
 import { call, neg, power, product, quotient, sum } from './build.ts';
 import type { Candidate, Edit } from './edits.ts';
 import { replaceNode } from './holes.ts';
@@ -26,9 +27,11 @@ function* shapesOf(node: Expr, tex: string): Generator<Shape> {
   switch (node.kind) {
     case 'product':
       yield* productAsSum(node);
+      yield* numberBelow(node, tex);
       return;
     case 'quotient':
       yield* turnedOver(node, tex);
+      yield* multipliedInstead(node, tex);
       return;
     case 'sum':
       yield* lastTermBelow(node);
@@ -64,6 +67,24 @@ function* turnedOver(node: Extract<Expr, { kind: 'quotient' }>, tex: string): Ge
     { ...below, text: tex.slice(above.start, above.end) },
   ];
   yield { by: { ...node, numerator: denominator, denominator: numerator }, edits, cost: 1.4 };
+}
+
+/** y/4 for 4y: divided where it should have been multiplied. */
+function* multipliedInstead(node: Extract<Expr, { kind: 'quotient' }>, tex: string): Generator<Shape> {
+  const { numerator, denominator } = node;
+  const text = (part: Expr): string => tex.slice(outer(part).start, outer(part).end);
+  const isPlain = (part: Expr): boolean => part.kind !== 'sum' && !(part.kind === 'product' && part.factors.some((factor) => factor.kind === 'number'));
+  if (!isPlain(denominator) || !isPlain(numerator) || numerator.kind === 'number') return;
+  yield { by: product(denominator, numerator), edits: [{ ...node.span, text: glue(text(denominator), text(numerator)) }], cost: 1.45 };
+}
+
+/** 4y for y/4, the other way round. */
+function* numberBelow(node: Extract<Expr, { kind: 'product' }>, tex: string): Generator<Shape> {
+  const [first, ...rest] = node.factors;
+  const [second] = rest;
+  if (!first || !second || first.kind !== 'number') return;
+  const text = `\\frac{${tex.slice(outer(second).start, node.span.end)}}{${tex.slice(outer(first).start, outer(first).end)}}`;
+  yield { by: quotient(product(...rest), first), edits: [{ ...node.span, text }], cost: 1.45 };
 }
 
 /** A - B for A over B: subtracted where it should have been divided by. */

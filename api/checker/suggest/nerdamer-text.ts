@@ -1,6 +1,7 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { readLine } from '../../../shared/maths/read.ts';
+import { product } from '../evidence/build.ts';
 import { countNodes, mapExpr } from '../../../shared/maths/walk.ts';
 
 /** Names that mean nothing else to the library. */
@@ -81,5 +82,14 @@ export function fromNerdamer(tex: string, names: ReadonlyMap<string, string>): E
   const reading = readLine(cleaned);
   if (!reading.ok || reading.line.kind !== 'expression' || reading.alternatives.length > 0) return null;
   const back = new Map([...names].map(([own, plain]) => [plain, own]));
-  return mapExpr(reading.line.expr, (node) => (node.kind === 'letter' ? { ...node, name: back.get(node.name) ?? node.name } : node));
+  return mapExpr(reading.line.expr, (node) => {
+    if (node.kind === 'letter') return { ...node, name: back.get(node.name) ?? node.name };
+    return node.kind === 'product' ? product(...[...node.factors].sort((a, b) => rankOf(a) - rankOf(b))) : node;
+  });
+}
+
+/** Numbers, then powers of letters, then functions, then brackets. */
+function rankOf(factor: Expr): number {
+  const order = ['number', 'quotient', 'constant', 'letter', 'power', 'root', 'call', 'sum'];
+  return order.indexOf(factor.kind);
 }

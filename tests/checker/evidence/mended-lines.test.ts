@@ -1,0 +1,62 @@
+import { describe, expect, it } from 'vitest';
+import { printLine } from '../../../shared/maths/print.ts';
+import { readLine } from '../../../shared/maths/read.ts';
+import type { Evidence } from '../../../shared/schemas/verdict.ts';
+import { checkDerivation } from '../../../api/checker/rule-derivation.ts';
+import document from './mended-lines.json';
+
+/** One spelling for lines that read the same. */
+function canonical(tex: string): string {
+  const reading = readLine(tex);
+  return reading.ok ? printLine(reading.line) : `not read: ${tex}`;
+}
+
+function evidenceOf(lines: readonly string[], step: number): Evidence {
+  const verdict = checkDerivation({ lines, assume: [], settings: {} });
+  expect(verdict.firstFault).toBe(step);
+  return verdict.steps[step - 1]?.evidence ?? {};
+}
+
+describe('the evidence of a first fault', { timeout: 30_000 }, () => {
+  it.each(document.rows)('$id: the line is mended as a person would', ({ lines, firstFault, mended }) => {
+    expect(canonical(evidenceOf(lines, firstFault).mended?.line ?? '')).toBe(canonical(mended));
+  });
+
+  it('carries the later lines through, or leaves the ending out', () => {
+    const endings = document.rows.map(({ lines, firstFault, ending }) => {
+      const found = evidenceOf(lines, firstFault).mendedEnding;
+      return { found: found?.map(canonical), expected: ending.map(canonical) };
+    });
+    for (const { found, expected } of endings) if (found) expect(found).toEqual(expected);
+    expect(endings.filter(({ found }) => found).length).toBeGreaterThanOrEqual(31);
+  });
+
+  it('says which part is wrong, with its sign and its place', () => {
+    const tex = '3x-7-9x-21';
+    const { wrongPart, mended, difference, slip } = evidenceOf(['3x-7-3(3x-7)', tex], 1);
+    expect(wrongPart).toEqual({ span: { start: 7, end: 10 }, is: '-21', shouldBe: '+21' });
+    expect(mended).toEqual({ line: '3x-7-9x+21', changed: [{ start: 7, end: 8 }] });
+    expect(difference).toBe('42');
+    expect(slip?.kind).toBe('sign');
+  });
+
+  it('names no single part where a term is missing or several are wrong', () => {
+    expect(evidenceOf(['(x+3)^2', 'x^2+9'], 1)).toMatchObject({ mended: { line: 'x^2+6x+9' }, difference: '6x' });
+    expect(evidenceOf(['(x+3)^2', 'x^2+9'], 1).wrongPart).toBeUndefined();
+  });
+
+  it.each([
+    ['x^2=49', 'x=7', 'x=7\\text{ or }x=-7'],
+    ['x^2=5x', 'x=5', 'x=0\\text{ or }x=5'],
+    ['\\sqrt{x+6}=x', 'x=-2\\text{ or }x=3', 'x=3'],
+    ['-2x<10', 'x<-5', 'x>-5'],
+    ['|y-4|<3', 'y<7', '1<y<7'],
+    ['2x+6=14', 'x+6=7', 'x+6=10'],
+    ['n^2+8n+12', '(n+3)(n+4)', '(n+2)(n+6)'],
+    ['\\int x\\cos x\\,dx', '\\frac12x^2\\sin x+C', 'x\\sin x+\\cos x+C'],
+    ['\\sqrt{50}+\\sqrt{8}', '5\\sqrt2+4\\sqrt2', '5\\sqrt2+2\\sqrt2'],
+    ['y=\\frac{x}{4}', 'x=\\frac{y}{4}', 'x=4y'],
+  ])('mends %s to %s', (above, below, expected) => {
+    expect(canonical(evidenceOf([above, below], 1).mended?.line ?? '')).toBe(canonical(expected));
+  });
+});
