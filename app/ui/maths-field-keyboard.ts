@@ -13,7 +13,7 @@ const next: Key = {
   tooltip: 'Next line',
 };
 
-const fraction: Key = { latex: '\\frac{#@}{#?}', label: '<i>a</i>/<i>b</i>', tooltip: 'fraction' };
+const fraction: Key = { latex: '\\frac{#@}{#?}', class: 'small', tooltip: 'fraction' };
 const power: Key = { latex: '#@^{#?}', tooltip: 'power' };
 const square: Key = { latex: '#@^2', tooltip: 'squared' };
 const root: Key = { latex: '\\sqrt{#0}', tooltip: 'square root' };
