@@ -6,6 +6,7 @@ import type { Comparison } from '../compare/comparison.ts';
 import type { CheckContext } from '../context.ts';
 import { compareAntiderivatives, concernsConstants, type AntiderivativeRuling } from './judge-antiderivative.ts';
 import { worthOf, type Worth } from './judge-values.ts';
+import { compareOpenIntegrals, openIntegrals } from './open-integrals.ts';
 import { boundsOfSeries } from './series-bounds.ts';
 
 export interface CalculusComparison {
@@ -20,6 +21,7 @@ export function compareWithCalculus(above: Expr, below: Expr, context: CheckCont
   if (!hasOperator(above) && !hasOperator(below)) return plain(compareExpressions(above, below, context));
   const [a, b] = [worthOf(above, context), worthOf(below, context)];
   if (a.kind !== 'ordinary' || b.kind !== 'ordinary') return plain(compareWorth(a, b));
+  if (openIntegrals(above, context).length + openIntegrals(below, context).length > 0) return plain(compareOpenIntegrals(above, below, context));
   const bounds = [above, below].flatMap((expr) => boundsOfSeries(expr));
   const within = bounds.length > 0 ? { ...context, assumptions: [...context.assumptions, ...bounds] } : context;
   return plain(compareExpressions(above, below, within));

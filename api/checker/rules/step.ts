@@ -2,6 +2,7 @@ import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import type { CheckSettings, Note } from '../../../shared/schemas/verdict.ts';
 import { judgeWithRates } from '../calculus/implicit.ts';
 import { rateNamed } from '../calculus/rates.ts';
+import { isOperatorValue, judgeSubstitution, withDefinition } from '../calculus/substitution-line.ts';
 import type { CheckContext, Definitions } from '../context.ts';
 import type { RealNumber } from '../solving/real-number.ts';
 import { isEmptySet, isWholeLine } from '../solving/real-set.ts';
@@ -61,7 +62,9 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   }
   const fresh = freshDefinition(line, question);
   if (fresh) return define(fresh, context);
-  if (freeLetters(meaning.statement, context).length === 0) {
+  const helper = from?.kind === 'expression' ? judgeSubstitution(line, from.expr, context) : null;
+  if (helper) return answer(helper.result, null, { defines: helper.defines });
+  if (freeLetters(meaning.statement, context).length === 0 && !isValueOf(from)) {
     const remark = judgeRemark(meaning, question);
     if (remark) return remark;
   }
@@ -70,11 +73,16 @@ export function judgeStep(question: StepQuestion): StepAnswer {
 }
 
 function define(line: Extract<Line, { kind: 'definition' }>, context: CheckContext): StepAnswer {
-  const letters = new Map(context.definitions.letters);
+  const note = holds('proved', ['definition']);
+  if (line.params.length === 0) return answer(note, null, { defines: withDefinition(context.definitions, line.name, line.value) });
   const functions = new Map(context.definitions.functions);
-  if (line.params.length === 0) letters.set(line.name, line.value);
-  else functions.set(line.name, { params: line.params, value: line.value });
-  return answer(holds('proved', ['definition']), null, { defines: { letters, functions } });
+  functions.set(line.name, { params: line.params, value: line.value });
+  return answer(note, null, { defines: { ...context.definitions, functions } });
+}
+
+/** Rule 5 comes first where the line above is the value of an integral, limit or sum. */
+function isValueOf(from: Meaning | null): boolean {
+  return from?.kind === 'expression' && isOperatorValue(from.expr);
 }
 
 /** A letter that occurs for the first time, said to be an expression in the known ones: as good as "let u = ...". */
@@ -145,6 +153,7 @@ function judgeAfterExpression(line: Line, meaning: Meaning, question: StepQuesti
   const start = from?.kind === 'expression' ? from.expr : (members[0] as Expr);
   const found = judgeLinks(start, from?.kind === 'expression' ? members : members.slice(1), context);
   if (found.ruling === 'holds') return answer(found, from === null ? meaning : last, { shrunk: found.shrunk });
+  if (isValueOf(from)) return answer(found, last);
   return answer(from === null ? found : undecided('change-of-kind'), from === null ? meaning : last);
 }
 
