@@ -243,7 +243,7 @@ describe('after a crash', () => {
     expect(kept()).toBe(0);
   });
 
-  it('it is asked about where the server has gone on', async () => {
+  it('what was not sent is asked about where the server has gone on', async () => {
     await crash(sheet('x=1', 'unsent'));
     await server.save(sheet('x=1', 'gone on'), 1);
     const sync = start('page-2');
