@@ -43,7 +43,8 @@ describe('reading a review', () => {
   });
 
   it('is not there for anyone else', async () => {
-    const { review, author, round } = await dealt();
+    const { review, author, reviewer, round } = await dealt();
+    await reviewer.get(`/reviews/${review.id}`).expect(200);
     await author.get(`/reviews/${review.id}`).expect(404);
     await (await server.signIn(round.teacher)).get(`/reviews/${review.id}`).expect(404);
     await server.visitor().get(`/reviews/${review.id}`).expect(401);
