@@ -82,7 +82,7 @@ function traitsOf(pair: Pair): Traits {
 function rule(pair: Pair, samples: Samples, region: Region, isProved: boolean, context: CheckContext): Comparison {
   const { counts } = samples;
   const tried = Object.values(counts).reduce((a, b) => a + b, 0);
-  if (counts['no-agreed-meaning'] * 6 > tried) return { kind: 'undecided', reason: 'no-agreed-meaning' };
+  if (counts['no-agreed-meaning'] * 3 > tried) return { kind: 'undecided', reason: 'no-agreed-meaning' };
   if (counts['not-covered'] * 2 > tried) return { kind: 'undecided', reason: 'not-covered' };
   const isInside = samples.inside || pair.names.every((name) => pair.whole.has(name));
   if (isInside && isProved)

@@ -2,10 +2,11 @@ import type { CheckContext } from '../context.ts';
 import { cyclotomicPrimes, primes } from '../numbers/modular.ts';
 import { createRandom } from '../numbers/random.ts';
 import type { Random } from '../numbers/random.ts';
+import { lettersBelow } from '../values/graph.ts';
 import { createKernelPlan } from './kernel-plan.ts';
 import type { KernelPlan } from './kernel-plan.ts';
 import { createKernelValues } from './kernel-values.ts';
-import { evaluateModular, noResidue } from './modular-values.ts';
+import { evaluateModular, markNeeded, noResidue } from './modular-values.ts';
 import type { Pair } from './pair.ts';
 import { findSigns } from './signs.ts';
 import { boundDifference, boundSizes, evaluationsNeeded } from './size-bounds.ts';
@@ -18,17 +19,14 @@ const evaluationCost = 12;
  * Whether two expressions are the same combination of independent quantities (powers of e, logarithms of the sizes of
  * factors, roots): then they are equal wherever both have a value. False says nothing.
  */
-export function provesIdentity(pair: Pair, context: CheckContext): boolean {
-  if (pair.above === pair.below) return true;
+export function provesIdentity(lines: Pair, context: CheckContext): boolean {
+  if (lines.above === lines.below) return true;
+  const pair = withFacts(lines);
   const complex = context.numbers === 'complex';
-  const needs = [...pair.needsAbove, ...pair.needsBelow];
+  const needs = complex ? [] : [...pair.needsAbove, ...pair.needsBelow];
+  const facts = pair.facts.map(({ node }) => node);
   const plan = createKernelPlan(pair.nodes, pair.needed, complex, (forms) =>
-    findSigns(
-      pair.nodes,
-      forms,
-      complex ? [] : needs,
-      pair.facts.map(({ node }) => node),
-    ),
+    findSigns(pair.nodes, forms, needs, facts),
   );
   if (plan === null) return false;
   const count = countEvaluations(pair, plan);
@@ -40,6 +38,14 @@ export function provesIdentity(pair: Pair, context: CheckContext): boolean {
     }
   }
   return true;
+}
+
+/** Quantities of the assumptions may be the first of their kind, and need a residue too. */
+function withFacts(pair: Pair): Pair {
+  const facts = pair.facts.filter(({ node }) =>
+    [...lettersBelow(pair.nodes, node)].every((name) => pair.names.includes(name)),
+  );
+  return { ...pair, facts, needed: markNeeded(pair.nodes, [pair.above, pair.below, ...facts.map(({ node }) => node)]) };
 }
 
 /** Roots multiply the degree of what has to vanish: by their norms, at most by the product of the degrees. */
@@ -57,7 +63,7 @@ function countEvaluations(pair: Pair, plan: KernelPlan): number | null {
   const b = bounds[pair.below];
   if (a === undefined || b === undefined) return null;
   const { degree, bits } = boundDifference(a, b);
-  return evaluationsNeeded(degree * norm, bits * norm, 24, 6_000, mostEvaluations);
+  return evaluationsNeeded(degree * norm, bits * norm, 24, 3_000, mostEvaluations);
 }
 
 /** A random prime modulo which the roots of the plan can be taken. */
@@ -98,7 +104,13 @@ function agrees(
   random: Random,
   context: CheckContext,
 ): boolean {
-  const setting = { nodes: pair.nodes, plan, names: pair.names, complex: context.numbers === 'complex' };
+  const setting = {
+    nodes: pair.nodes,
+    needed: pair.needed,
+    plan,
+    names: pair.names,
+    complex: context.numbers === 'complex',
+  };
   for (let attempt = 0; attempt < mostAttempts; attempt += 1) {
     context.budget.spend(evaluationCost);
     const p = drawPrime(plan, random);

@@ -4,6 +4,7 @@ import { lcm, rational } from '../numbers/rational.ts';
 import type { GraphNode } from '../values/graph.ts';
 import { createForms } from './normal-forms.ts';
 import type { Atom, Forms } from './normal-forms.ts';
+import { rationalOps } from './rational-identity.ts';
 import { isPositiveNode, learnFromForm, signOfAtom } from './signs.ts';
 import type { Signs } from './signs.ts';
 
@@ -96,6 +97,10 @@ export function createKernelPlan(
   findSignsOf: (forms: Forms) => Signs,
 ): KernelPlan | null {
   const forms = createForms(nodes, complex);
+  // In order, so that the first node of each kind is the one with a residue when it is asked for.
+  nodes.forEach((node, index) => {
+    if (needed[index] === 1 && !rationalOps.has(node.op)) forms.formOf(index);
+  });
   const signs = findSignsOf(forms);
   const positive = positiveBases(nodes, needed, forms, signs);
   const denominators = new Map<string, number>();

@@ -23,6 +23,7 @@ export interface KernelValues {
 export interface KernelSetting {
   readonly nodes: readonly GraphNode[];
   readonly plan: KernelPlan;
+  readonly needed: Uint8Array;
   readonly names: readonly string[];
   readonly complex: boolean;
 }
@@ -44,9 +45,12 @@ class KernelResidues implements KernelValues {
   private readonly forms: Forms;
   private residues: Float64Array = new Float64Array(0);
   private hasFailed = false;
+  /** The node being evaluated: only earlier ones have their residue. */
+  private current = 0;
   private readonly nodes: readonly GraphNode[];
   private readonly plan: KernelPlan;
   private readonly complex: boolean;
+  private readonly needed: Uint8Array;
   private readonly p: number;
   private readonly random: Random;
   private readonly choice: Choice;
@@ -55,6 +59,7 @@ class KernelResidues implements KernelValues {
     this.nodes = setting.nodes;
     this.plan = setting.plan;
     this.complex = setting.complex;
+    this.needed = setting.needed;
     this.p = p;
     this.random = random;
     this.choice = choice;
@@ -69,6 +74,7 @@ class KernelResidues implements KernelValues {
 
   readonly kernel: Kernel = (index, current) => {
     this.residues = current;
+    this.current = index;
     const node = this.nodes[index];
     const value = node === undefined ? this.fail() : this.nodeValue(node, index);
     return this.hasFailed ? noResidue : value;
@@ -136,9 +142,9 @@ class KernelResidues implements KernelValues {
       case 'other': {
         const node = this.nodes[atom.node];
         // Nodes that are written by generators come first; the rest are quantities of their own.
-        return node !== undefined && isWritten(node, this.complex)
-          ? (this.residues[atom.node] ?? this.fail())
-          : 1 + this.random(this.p - 1);
+        if (node === undefined || this.needed[atom.node] !== 1) return this.fail();
+        if (!isWritten(node, this.complex)) return 1 + this.random(this.p - 1);
+        return atom.node < this.current ? (this.residues[atom.node] ?? this.fail()) : this.fail();
       }
       default:
         return 1 + this.random(this.p - 1);
