@@ -8,6 +8,7 @@ const platform = {
   config: { baseUrl: 'http://slipstone.test' },
   db: createDataSource('postgres://nobody@127.0.0.1:1/none'),
   mailbox: { list: () => [] },
+  checks: {},
 } as unknown as Platform;
 const { routes } = composeServices(platform);
 const calls = readRouteLog();
