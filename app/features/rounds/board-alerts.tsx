@@ -10,6 +10,9 @@ import { useRoundAct } from './use-round-act.ts';
 
 const SMALL = ['Nothing needs you', 'One thing needs you', 'Two things need you', 'Three things need you'];
 
+/** What an assistant can do something about. */
+const FOR_ASSISTANTS = new Set<BoardAlert['kind']>(['line-stops', 'disputes-open', 'waiting-for-rulings']);
+
 export interface BoardAlertsProps {
   readonly board: BoardAnswer;
   readonly onMoreTime: () => void;
@@ -18,8 +21,8 @@ export interface BoardAlertsProps {
 
 /** What waits for the teacher; each entry ends in an act. */
 export function BoardAlerts({ board, onMoreTime, onMove }: BoardAlertsProps) {
-  const { alerts, round } = board;
-  const isTeacher = round.role === 'teacher';
+  const isTeacher = board.round.role === 'teacher';
+  const alerts = isTeacher ? board.alerts : board.alerts.filter(({ kind }) => FOR_ASSISTANTS.has(kind));
   return (
     <aside className="alerts" aria-labelledby="alerts-head">
       <h2 id="alerts-head">{SMALL[alerts.length] ?? `${alerts.length} things need you`}</h2>

@@ -1,5 +1,5 @@
 import type { Instants } from '../../../shared/schemas/round.ts';
-import { formatInstant } from '../../lib/dates.ts';
+import { daysBetween, formatInstant } from '../../lib/dates.ts';
 import { TimeEdge } from '../../ui/time-edge.tsx';
 import { shortInstant } from './round-words.ts';
 
@@ -14,6 +14,7 @@ export interface RoundTimesProps {
 export function RoundTimes({ instants, zone, now }: RoundTimesProps) {
   const { opensAt, writingEndsAt, reviewingEndsAt, answeringEndsAt, settlesAt } = instants;
   const say = (iso: string) => shortInstant(iso, zone, now);
+  const isOneDay = daysBetween(opensAt, writingEndsAt, zone) === 0;
   return (
     <TimeEdge
       label="Stages of the round"
@@ -25,7 +26,7 @@ export function RoundTimes({ instants, zone, now }: RoundTimesProps) {
           name: 'writing',
           from: opensAt,
           to: writingEndsAt,
-          words: `${say(opensAt)} to ${say(writingEndsAt)}`,
+          words: `${say(opensAt)} to ${isOneDay ? formatInstant(writingEndsAt, zone, 'time') : say(writingEndsAt)}`,
         },
         {
           id: 'reviewing',

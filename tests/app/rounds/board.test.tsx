@@ -219,6 +219,7 @@ describe('the board', { timeout: 20_000 }, () => {
       },
     });
     expect(await screen.findByText('Student 1')).toBeInTheDocument();
+    expect(screen.getByRole('heading', { name: 'One thing needs you' })).toBeInTheDocument();
     expect(screen.queryByRole('button', { name: /Give more time|Open reviewing|Student/ })).not.toBeInTheDocument();
   });
 });
