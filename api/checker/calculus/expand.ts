@@ -1,18 +1,17 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { addExprs, callOf, divExprs, mulExprs, numberOf, oneExpr, piExpr, rationalOf, subExprs, zeroExpr } from './build.ts';
 import { bodyOf, differentiateTimes } from './differentiate.ts';
 import {
   addSeries, boundedSeries, composeSeries, constantSeries, expSeries, inverseSeries, lnSeries, mulSeries, negateSeries, rationalPower,
-  scaleSeries, signOfCoefficient, splitBySize, unitScale, type Series,
+  scaleSeries, signOfCoefficient, splitBySize, unitScale, type Expansion, type Series,
 } from './series-ring.ts';
 import { substitute } from './substitute.ts';
 
 /** The expansion of an expression once the letter is a series; throws Unsettled. */
-export function expand(expr: Expr, variable: string, at: Series, context: CheckContext): Series {
+export function expand(expr: Expr, variable: string, at: Series, context: Expansion): Series {
   const visit = (node: Expr): Series => {
     context.budget.spend(4);
     return expandNode(node, { variable, at, context, visit });
@@ -20,14 +19,14 @@ export function expand(expr: Expr, variable: string, at: Series, context: CheckC
   return visit(expr);
 }
 
-interface Expansion {
+interface ExpandJob {
   readonly variable: string;
   readonly at: Series;
-  readonly context: CheckContext;
+  readonly context: Expansion;
   readonly visit: (node: Expr) => Series;
 }
 
-function expandNode(node: Expr, job: Expansion): Series {
+function expandNode(node: Expr, job: ExpandJob): Series {
   const { variable, at, context, visit } = job;
   switch (node.kind) {
     case 'letter': {
@@ -69,7 +68,7 @@ function expandNode(node: Expr, job: Expansion): Series {
   }
 }
 
-function expandPower(base: Expr, exponent: Expr, { context, visit, variable }: Expansion): Series {
+function expandPower(base: Expr, exponent: Expr, { context, visit, variable }: ExpandJob): Series {
   const r = rationalOf(exponent);
   if (r) return rationalPower(visit(base), r, context);
   if (!lettersOf(base).includes(variable) && !lettersOf(exponent).includes(variable)) return constantSeries({ kind: 'power', base, exponent, span: base.span });
@@ -77,7 +76,7 @@ function expandPower(base: Expr, exponent: Expr, { context, visit, variable }: E
   return expSeries(mulSeries(visit(exponent), lnSeries(visit(base), context), context), context);
 }
 
-function expandCall(node: Extract<Expr, { kind: 'call' }>, job: Expansion): Series {
+function expandCall(node: Extract<Expr, { kind: 'call' }>, job: ExpandJob): Series {
   const { context, visit } = job;
   const [u] = node.args;
   if (u === undefined || node.args.length !== 1) throw new Unsettled('not-covered');
@@ -139,7 +138,7 @@ function rewritten(name: Extract<Expr, { kind: 'call' }>['name'], u: Expr): Expr
 }
 
 /** A sine or cosine of what grows is bounded, and no more is known. */
-function expandCircular(name: 'sin' | 'cos', a: Series, context: CheckContext): Series {
+function expandCircular(name: 'sin' | 'cos', a: Series, context: Expansion): Series {
   const { large, constant, small } = splitBySize(a, context);
   if (large.length > 0) {
     if (context.numbers === 'complex') throw new Unsettled('not-covered');
@@ -159,7 +158,7 @@ function factorial(k: number): bigint {
   return product;
 }
 
-function expandBars(name: 'abs' | 'sign', a: Series, context: CheckContext): Series {
+function expandBars(name: 'abs' | 'sign', a: Series, context: Expansion): Series {
   if (context.numbers === 'complex') throw new Unsettled('not-covered');
   const [lead] = a.terms;
   if (!lead) throw new Unsettled('not-settled');
@@ -169,7 +168,7 @@ function expandBars(name: 'abs' | 'sign', a: Series, context: CheckContext): Ser
 }
 
 /** arctan(c + d) = arctan c + arctan(d / (1 + c^2 + c d)); beyond all bounds it is pi/2 less that of the inverse. */
-function expandArctan(a: Series, context: CheckContext): Series {
+function expandArctan(a: Series, context: Expansion): Series {
   const { large, constant, small } = splitBySize(a, context);
   if (large[0]) {
     const known = signOfCoefficient(large[0].coef, context);
@@ -183,13 +182,14 @@ function expandArctan(a: Series, context: CheckContext): Series {
   return addSeries(constantSeries(callOf('arctan', constant)), tail(z), context);
 }
 
-const taylorOrder = 5;
+const mostTaylor = 5;
 const smooth: ReadonlySet<string> = new Set(['arcsin', 'arsinh', 'artanh', 'arccot', 'arcsec', 'arccsc', 'arcosh']);
 
 /** Taylor's series at an inner point of the domain, as far as its derivatives have values. */
-function expandTaylor(name: Extract<Expr, { kind: 'call' }>['name'], a: Series, context: CheckContext): Series {
+function expandTaylor(name: Extract<Expr, { kind: 'call' }>['name'], a: Series, context: Expansion): Series {
   const { large, constant, small } = splitBySize(a, context);
   if (!smooth.has(name) || large.length > 0) throw new Unsettled('not-covered');
+  const taylorOrder = Math.min(mostTaylor, context.steps);
   const letter = 'z_{0}';
   const call = callOf(name, { kind: 'letter', name: letter, span: { start: 0, end: 0 } });
   const at = constant ?? zeroExpr;

@@ -5,7 +5,7 @@ import * as Q from '../numbers/rational.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { infinityExpr, negateExpr, noValueExpr, numberOf, zeroExpr } from './build.ts';
 import { expand } from './expand.ts';
-import { compareScales, constantSeries, powerSeries, signOfCoefficient, unitScale, type Series } from './series-ring.ts';
+import { compareScales, constantSeries, powerSeries, signOfCoefficient, unitScale, type Expansion, type Series } from './series-ring.ts';
 
 export type LimitValue =
   | { readonly kind: 'finite'; readonly value: Expr }
@@ -30,8 +30,19 @@ export function infinitySign(expr: Expr): 1 | -1 | null {
 
 /** The limit from one side; throws Unsettled where it is not known for certain. */
 export function sideLimit(expr: Expr, variable: string, target: Target, context: CheckContext): LimitValue {
-  return limitOfSeries(expand(expr, variable, seriesAt(target), context), context);
+  for (const steps of stepsTried) {
+    try {
+      const expansion: Expansion = { ...context, steps };
+      return limitOfSeries(expand(expr, variable, seriesAt(target), expansion), expansion);
+    } catch (cause) {
+      if (!(cause instanceof Unsettled) || cause.reason !== 'not-settled' || steps === stepsTried[stepsTried.length - 1]) throw cause;
+    }
+  }
+  throw new Unsettled('not-settled');
 }
+
+/** Few terms first: most limits need no more, and zeros among many coefficients take long to prove. */
+const stepsTried = [2, 5, 9];
 
 function seriesAt({ to, side }: Target): Series {
   const beyond = infinitySign(to);
@@ -41,7 +52,7 @@ function seriesAt({ to, side }: Target): Series {
   return { terms: [...at.terms, ...step.terms], error: null };
 }
 
-function limitOfSeries(series: Series, context: CheckContext): LimitValue {
+function limitOfSeries(series: Series, context: Expansion): LimitValue {
   const [lead] = series.terms;
   if (!lead) {
     if (series.error && compareScales(series.error, unitScale, context) >= 0) throw new Unsettled('not-settled');

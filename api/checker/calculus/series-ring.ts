@@ -29,13 +29,16 @@ export interface SeriesTerm {
   readonly coef: Expr;
   readonly scale: Scale;
 }
+/** How many powers of what tends to 0 are kept. */
+export interface Expansion extends CheckContext {
+  readonly steps: number;
+}
 /** Terms from the largest on; `error`: what is left out is at most a constant times this, null where nothing is. */
 export interface Series {
   readonly terms: readonly SeriesTerm[];
   readonly error: Scale | null;
 }
 
-const steps = 9;
 const mostTerms = 24;
 export const unitScale: Scale = { growth: [], p: Q.zero, q: 0 };
 
@@ -70,7 +73,8 @@ export function isZeroCoefficient(coef: Expr, context: CheckContext): boolean {
   if (value !== null) return Q.isZero(value);
   if (lettersOf(coef).length === 0) {
     const worth = evaluate(coef, new Map(), 128, context);
-    if (isKnown(worth) && !isExactZero(worth) && (worth.kind !== 'ball' || isNonZero(worth))) return false;
+    if (isKnown(worth) && worth.kind !== 'ball') return isExactZero(worth);
+    if (isKnown(worth) && isNonZero(worth)) return false;
   }
   const found = compareExpressions(coef, zeroExpr, context);
   if (found.kind === 'equal' && found.reached === 'proved') return true;
@@ -79,14 +83,14 @@ export function isZeroCoefficient(coef: Expr, context: CheckContext): boolean {
 }
 
 /** Positive where a is the larger one as t tends to 0. */
-export function compareScales(a: Scale, b: Scale, context: CheckContext): number {
+export function compareScales(a: Scale, b: Scale, context: Expansion): number {
   const lead = joinGrowth(a.growth, b.growth, -1, context)[0];
   if (lead) return signOfCoefficient(lead.coef, context);
   const order = Q.compare(b.p, a.p);
   return order !== 0 ? order : a.q - b.q;
 }
 
-function joinGrowth(a: readonly GrowthTerm[], b: readonly GrowthTerm[], times: number, context: CheckContext): GrowthTerm[] {
+function joinGrowth(a: readonly GrowthTerm[], b: readonly GrowthTerm[], times: number, context: Expansion): GrowthTerm[] {
   const result = [...a];
   for (const term of b) {
     const coef = times === 1 ? term.coef : negateExpr(term.coef);
@@ -99,7 +103,7 @@ function joinGrowth(a: readonly GrowthTerm[], b: readonly GrowthTerm[], times: n
     .sort((x, y) => Q.compare(x.p, y.p) || y.q - x.q);
 }
 
-function mulScales(a: Scale, b: Scale, context: CheckContext): Scale {
+function mulScales(a: Scale, b: Scale, context: Expansion): Scale {
   const growth = a.growth.length + b.growth.length === 0 ? [] : joinGrowth(a.growth, b.growth, 1, context);
   return { growth, p: Q.add(a.p, b.p), q: a.q + b.q };
 }
@@ -110,13 +114,13 @@ function powScale(a: Scale, r: Rational): Scale {
   return { growth: a.growth.map((term) => ({ ...term, coef: mulExprs(rationalExpr(r), term.coef) })), p: Q.mul(a.p, r), q: Number(q.num) };
 }
 
-function larger(a: Scale | null, b: Scale | null, context: CheckContext): Scale | null {
+function larger(a: Scale | null, b: Scale | null, context: Expansion): Scale | null {
   if (!a || !b) return a ?? b;
   return compareScales(a, b, context) >= 0 ? a : b;
 }
 
 /** Sorted, equal scales joined, zeros and what is below the error left out. */
-function normalised(terms: readonly SeriesTerm[], error: Scale | null, context: CheckContext): Series {
+function normalised(terms: readonly SeriesTerm[], error: Scale | null, context: Expansion): Series {
   context.budget.spend(4 + terms.length);
   const joined: SeriesTerm[] = [];
   for (const term of terms) {
@@ -131,11 +135,11 @@ function normalised(terms: readonly SeriesTerm[], error: Scale | null, context: 
   return dropped ? { terms: kept.slice(0, mostTerms), error: larger(error, dropped.scale, context) } : { terms: kept, error };
 }
 
-export function addSeries(a: Series, b: Series, context: CheckContext): Series {
+export function addSeries(a: Series, b: Series, context: Expansion): Series {
   return normalised([...a.terms, ...b.terms], larger(a.error, b.error, context), context);
 }
 
-export function scaleSeries(a: Series, coef: Expr, context: CheckContext): Series {
+export function scaleSeries(a: Series, coef: Expr, context: Expansion): Series {
   return normalised(a.terms.map((term) => ({ ...term, coef: mulExprs(coef, term.coef) })), a.error, context);
 }
 
@@ -143,7 +147,7 @@ export function negateSeries(a: Series): Series {
   return { ...a, terms: a.terms.map((term) => ({ ...term, coef: negateExpr(term.coef) })) };
 }
 
-export function mulSeries(a: Series, b: Series, context: CheckContext): Series {
+export function mulSeries(a: Series, b: Series, context: Expansion): Series {
   const terms = a.terms.flatMap((x) =>
     b.terms.map((y) => ({ coef: mulExprs(x.coef, y.coef), scale: mulScales(x.scale, y.scale, context) })),
   );
@@ -155,7 +159,7 @@ export function mulSeries(a: Series, b: Series, context: CheckContext): Series {
 }
 
 /** The leading term and what the rest is of it. */
-function splitLead(a: Series, context: CheckContext): { lead: SeriesTerm; rest: Series } {
+function splitLead(a: Series, context: Expansion): { lead: SeriesTerm; rest: Series } {
   const [lead, ...others] = a.terms;
   if (!lead) throw new Unsettled('not-settled');
   const inverse: SeriesTerm = { coef: divExprs(oneExpr, lead.coef), scale: powScale(lead.scale, Q.minusOne) };
@@ -164,27 +168,27 @@ function splitLead(a: Series, context: CheckContext): { lead: SeriesTerm; rest: 
 }
 
 /** Sum of c_k d^k for a d that tends to 0; `coefficient` gives c_k. */
-export function composeSeries(coefficient: (k: number) => Expr, small: Series, context: CheckContext): Series {
+export function composeSeries(coefficient: (k: number) => Expr, small: Series, context: Expansion): Series {
   const size = small.terms[0]?.scale ?? small.error;
   let total = constantSeries(coefficient(0));
   if (!size) return total;
   if (compareScales(size, unitScale, context) >= 0) throw new Unsettled('not-settled');
   let power = constantSeries(oneExpr);
-  for (let k = 1; k <= steps; k += 1) {
+  for (let k = 1; k <= context.steps; k += 1) {
     power = mulSeries(power, small, context);
     const coef = coefficient(k);
     if (!isZeroCoefficient(coef, context)) total = addSeries(total, scaleSeries(power, coef, context), context);
   }
-  const error = larger(total.error, powScale(size, Q.rational(steps + 1)), context);
+  const error = larger(total.error, powScale(size, Q.rational(context.steps + 1)), context);
   return normalised(total.terms, error, context);
 }
 
-export function inverseSeries(a: Series, context: CheckContext): Series {
+export function inverseSeries(a: Series, context: Expansion): Series {
   return rationalPower(a, Q.minusOne, context);
 }
 
 /** a^r; a leading coefficient below zero has real powers with an odd denominator only. */
-export function rationalPower(a: Series, r: Rational, context: CheckContext): Series {
+export function rationalPower(a: Series, r: Rational, context: Expansion): Series {
   if (Q.isZero(r)) return constantSeries(oneExpr);
   if (a.terms.length === 0 && Q.sign(r) > 0) return { terms: [], error: a.error && powScale(a.error, r) };
   const { lead, rest } = splitLead(a, context);
@@ -207,7 +211,7 @@ export function rationalPower(a: Series, r: Rational, context: CheckContext): Se
   return mulSeries({ terms: [{ coef: head, scale: powScale(lead.scale, r) }], error: null }, tail, context);
 }
 
-export function expSeries(a: Series, context: CheckContext): Series {
+export function expSeries(a: Series, context: Expansion): Series {
   const split = splitBySize(a, context);
   let p = Q.zero;
   const growth: GrowthTerm[] = [];
@@ -227,7 +231,7 @@ export function expSeries(a: Series, context: CheckContext): Series {
   return mulSeries({ terms: [head], error: null }, tail, context);
 }
 
-export function lnSeries(a: Series, context: CheckContext): Series {
+export function lnSeries(a: Series, context: Expansion): Series {
   const { lead, rest } = splitLead(a, context);
   if (lettersOf(lead.coef).length === 0 && signOfCoefficient(lead.coef, context) <= 0) throw new Unsettled('no-domain');
   if (lead.scale.q !== 0) throw new Unsettled('not-covered');
@@ -239,7 +243,7 @@ export function lnSeries(a: Series, context: CheckContext): Series {
 }
 
 /** Growing terms, the constant and what tends to 0. */
-export function splitBySize(a: Series, context: CheckContext): { large: SeriesTerm[]; constant: Expr | null; small: Series } {
+export function splitBySize(a: Series, context: Expansion): { large: SeriesTerm[]; constant: Expr | null; small: Series } {
   if (a.error && compareScales(a.error, unitScale, context) >= 0) throw new Unsettled('not-settled');
   const large: SeriesTerm[] = [];
   const small: SeriesTerm[] = [];
