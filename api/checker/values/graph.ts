@@ -102,6 +102,13 @@ function keyOf(node: GraphNode): string | number {
   }
 }
 
+/** The power as a fraction where it has one and is short. */
+function foldedPower(value: Rational, exponent: number): Rational | null {
+  if (exponent === 0 || (exponent < 0 && Q.isZero(value))) return null;
+  const size = Q.bitLength(value.num) + Q.bitLength(value.den);
+  return size * Math.abs(exponent) <= foldBits ? Q.pow(value, exponent) : null;
+}
+
 export function createGraphBuilder(onPush: () => void): GraphBuilder {
   const nodes: GraphNode[] = [];
   const known = new Map<string | number, number>();
@@ -172,10 +179,8 @@ export function createGraphBuilder(onPush: () => void): GraphBuilder {
       return power(inner.args[0], inner.exponent * exponent);
     }
     const value = valueOf(base);
-    if (value !== null && exponent !== 0 && !(exponent < 0 && Q.isZero(value))) {
-      const size = Q.bitLength(value.num) + Q.bitLength(value.den);
-      if (size * Math.abs(exponent) <= foldBits) return number(Q.pow(value, exponent));
-    }
+    const folded = value === null ? null : foldedPower(value, exponent);
+    if (folded !== null) return number(folded);
     return push({ op: 'power', args: [base], exponent });
   }
   return {
