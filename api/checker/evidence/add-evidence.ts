@@ -11,15 +11,16 @@ import { carryOn } from './mend-ending.ts';
 import { mendLine } from './mend-line.ts';
 import type { MendQuestion } from './mend-question.ts';
 import { meaningToLine } from './meaning-line.ts';
-import { isPlainlyHeld } from './plainly-held.ts';
+import { followsPlainly } from './plainly-held.ts';
 import { findWrongPart } from './wrong-part.ts';
 
 /** Later faults get less work than the first one. */
 const mostFaults = 3;
 
-/** Operations for each kind of evidence; larger lines than this get none, their terms could not be read in a sentence. */
-const allowed = { slip: 80_000, mend: 160_000, difference: 40_000 } as const;
-const mostNodes = 180;
+/** Operations for each kind of evidence; of larger lines than this only single terms are looked at. */
+const allowed = { slip: 50_000, mend: 90_000, ending: 60_000, difference: 30_000 } as const;
+const mostNodes = 160;
+const largest = 900;
 
 /**
  * The one place where the rulings are complete and what explains them is added: the wrong part, the mended line and
@@ -35,14 +36,20 @@ export function addEvidence(verdict: Verdict, route: Route, before: readonly Wal
   };
 }
 
-function explainFault(fault: StepRuling, isFirst: boolean, verdict: Verdict, route: Route, before: readonly WalkState[]): Evidence {
+function explainFault(
+  fault: StepRuling,
+  isFirst: boolean,
+  verdict: Verdict,
+  route: Route,
+  before: readonly WalkState[],
+): Evidence {
   const state = before[fault.step];
   const share = isFirst ? 1 : 0.25;
   const within = (operations: number, find: (question: MendQuestion) => Evidence): Evidence => {
     if (!state) return {};
     const context: CheckContext = { ...contextOf(route, state), budget: createBudget(operations * share) };
     const question = askAbout(fault, route, state, context);
-    return question ? attempt(() => find(question)) : {};
+    return question && (!question.isLarge || operations === allowed.mend) ? attempt(() => find(question)) : {};
   };
   return {
     ...within(allowed.slip, (question) => namedSlip(question, route)),
@@ -64,7 +71,8 @@ function attempt(find: () => Evidence): Evidence {
 function askAbout(fault: StepRuling, route: Route, state: WalkState, context: CheckContext): MendQuestion | null {
   const own = route.read.lines[fault.step];
   const above = lineAbove(route, state, fault.step);
-  if (!own?.ok || !above || sizeOf(own.line) + sizeOf(above.line) > mostNodes) return null;
+  const size = own?.ok && above ? sizeOf(own.line) + sizeOf(above.line) : Infinity;
+  if (!own?.ok || !above || size > largest) return null;
   const { evidence } = fault;
   return {
     above: above.line,
@@ -72,12 +80,13 @@ function askAbout(fault: StepRuling, route: Route, state: WalkState, context: Ch
     line: own.line,
     tex: own.tex,
     link: evidence.link ?? 1,
+    isLarge: size > mostNodes,
     solutions: solutionsOf(above.line, route, state, fault.step),
     lost: evidence.lost ?? [],
     gained: evidence.gained ?? [],
     settings: route.read.settings,
     context,
-    holds: (line) => isPlainlyHeld(judgeLine(route, state, fault.step, line, context).result),
+    holds: (line) => followsPlainly(judgeLine(route, state, fault.step, line, context), state),
   };
 }
 
@@ -100,7 +109,12 @@ function lineAbove(route: Route, state: WalkState, step: number): { line: Line; 
   const place = state.meanings.lastIndexOf(meaning);
   const written = place >= 0 ? route.read.lines[place] : undefined;
   if (written?.ok && written.line.kind === meaning.kind) return { line: written.line, tex: written.tex };
-  if (written?.ok && meaning.kind === 'statement' && ['relation', 'any', 'all', 'membership'].includes(written.line.kind)) return { line: written.line, tex: null };
+  if (
+    written?.ok &&
+    meaning.kind === 'statement' &&
+    ['relation', 'any', 'all', 'membership'].includes(written.line.kind)
+  )
+    return { line: written.line, tex: null };
   const line = meaningToLine(meaning);
   return line && { line, tex: null };
 }
@@ -114,14 +128,25 @@ function namedSlip(question: MendQuestion, route: Route): Evidence {
   return slip ? { slip: { id: slip.id, kind: slip.kind } } : {};
 }
 
-function mends(question: MendQuestion, fault: StepRuling, isFirst: boolean, verdict: Verdict, route: Route, state: WalkState): Evidence {
+function mends(
+  question: MendQuestion,
+  fault: StepRuling,
+  isFirst: boolean,
+  verdict: Verdict,
+  route: Route,
+  state: WalkState,
+): Evidence {
   const mended = mendLine(question);
   if (!mended) return {};
   const wrongPart = findWrongPart(question, mended);
-  const found: Evidence = { mended: { line: mended.tex, changed: [...mended.changed] }, ...(wrongPart ? { wrongPart } : {}) };
+  const found: Evidence = {
+    mended: { line: mended.tex, changed: [...mended.changed] },
+    ...(wrongPart ? { wrongPart } : {}),
+  };
   if (!isFirst) return found;
   const ending = attempt(() => {
-    const lines = carryOn(route, state, fault.step, mended, verdict.steps, question.context);
+    const context = { ...question.context, budget: createBudget(allowed.ending) };
+    const lines = carryOn(route, state, fault.step, mended, verdict.steps, context);
     return lines ? { mendedEnding: lines } : {};
   });
   return { ...found, ...ending };

@@ -4,7 +4,18 @@ import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import { neg, sum } from './build.ts';
-import { isFiniteNumber, isNear, minus, over, plus, real, sizeOf, times, type Complex } from './complex-double.ts';
+import {
+  isFiniteNumber,
+  isNear,
+  minus,
+  over,
+  plus,
+  real,
+  rootOf,
+  sizeOf,
+  times,
+  type Complex,
+} from './complex-double.ts';
 import { estimate, type Place } from './estimate.ts';
 import { differenceAt, type Aim, type MendQuestion } from './mend-question.ts';
 import { collect, keyOf, spread } from './monomials.ts';
@@ -16,7 +27,11 @@ type Relation = Extract<Line, { kind: 'relation' }>;
 const placeCount = 3;
 
 /** The expression that the line above says of a line's expression, and that expression; null for statements. */
-export function expressionsIn({ above, line, link }: MendQuestion): { readonly above: Expr; readonly focus: Expr } | null {
+export function expressionsIn({
+  above,
+  line,
+  link,
+}: MendQuestion): { readonly above: Expr; readonly focus: Expr } | null {
   if (above.kind !== 'expression') return null;
   if (line.kind === 'expression') return { above: above.expr, focus: line.expr };
   if (line.kind !== 'relation' && line.kind !== 'chain' && line.kind !== 'continuation') return null;
@@ -33,12 +48,26 @@ export function aimsOf(question: MendQuestion): Aim[] {
   if (pair) {
     const wanted = workOut(pair.above, pair.focus, context);
     const places = choosePlaces([wanted, pair.focus], placeCount, context);
-    return [{ roots: [pair.focus], tree: pair.focus, wanted, places, spend: spender(context, pair.focus), targets: [places.map((place) => estimate(wanted, place))] }];
+    return [
+      {
+        roots: [pair.focus],
+        tree: pair.focus,
+        wanted,
+        places,
+        spend: spender(context, pair.focus),
+        targets: [places.map((place) => estimate(wanted, place))],
+      },
+    ];
   }
   if (above.kind !== 'relation' || line.kind !== 'relation') return [];
   const places = choosePlaces([above, line], placeCount, context);
   const spend = spender(context, line.left, line.right);
-  return [{ ...(aimAtSolution(above, line, places) ?? aimAtMultiple(above, line, places)), spend }];
+  return [
+    {
+      ...(aimAtRoots(above, line, places) ?? aimAtSolution(above, line, places) ?? aimAtMultiple(above, line, places)),
+      spend,
+    },
+  ];
 }
 
 /** letter = expression: the right side must be what the line above says of the letter, where that is of first degree in it. */
@@ -47,7 +76,8 @@ function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]
   if (left.kind !== 'letter' || lettersOf(right).includes(left.name)) return null;
   const { name } = left;
   const target = places.map((place): Complex => {
-    const at = (x: number): Complex => differenceAt(above, { ...place, letters: new Map(place.letters).set(name, real(x)) });
+    const at = (x: number): Complex =>
+      differenceAt(above, { ...place, letters: new Map(place.letters).set(name, real(x)) });
     const [f2, f3, f5] = [at(2), at(3), at(5)];
     const slope = minus(f3, f2);
     const isLinear = isNear(f5, plus(f2, times(real(3), slope))) && sizeOf(slope) > 1e-9;
@@ -57,13 +87,66 @@ function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]
   return { roots: [right], tree: right, wanted: null, places, targets: [target] };
 }
 
+/** letter = expression with one plus-or-minus: with either sign, one of the two roots of a line above of second degree. */
+function aimAtRoots(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'spend'> | null {
+  const { left, right } = line;
+  const upper = withPlus(right);
+  if (left.kind !== 'letter' || upper === right || lettersOf(right).includes(left.name)) return null;
+  const roots = places.map((place) =>
+    rootsAt((x) => differenceAt(above, { ...place, letters: new Map(place.letters).set(left.name, real(x)) })),
+  );
+  if (roots.some((pair) => pair === null)) return null;
+  const targets = [0, 1].map((k) => roots.map((pair) => (pair as readonly Complex[])[k] as Complex));
+  return { roots: [right], tree: upper, wanted: null, places, targets };
+}
+
+/** The upper sign; what is left of the tree keeps its nodes. */
+function withPlus(expr: Expr): Expr {
+  if (expr.kind === 'sum' && expr.terms.some((term) => term.sign === 'plusminus')) {
+    return {
+      ...expr,
+      terms: expr.terms.map((term) => (term.sign === 'plusminus' ? { ...term, sign: 'plus' as const } : term)),
+    };
+  }
+  if (expr.kind !== 'quotient') return expr;
+  const numerator = withPlus(expr.numerator);
+  return numerator === expr.numerator ? expr : { ...expr, numerator };
+}
+
+function rootsAt(f: (x: number) => Complex): readonly Complex[] | null {
+  const [c, one, two, three] = [f(0), f(1), f(2), f(3)];
+  if (!c || !one || !two || !three) return null;
+  const a = over(plus(minus(two, times(real(2), one)), c), real(2));
+  const b = minus(minus(one, a), c);
+  const expected = plus(plus(times(real(9), a), times(real(3), b)), c);
+  if (!isFiniteNumber(a) || sizeOf(a) < 1e-9 || !isNear(three, expected)) return null;
+  const part = rootOf(minus(times(b, b), times(real(4), times(a, c))));
+  const root = (sign: number): Complex => over(plus(times(real(-1), b), times(real(sign), part)), times(real(2), a));
+  return [root(1), root(-1)];
+}
+
 /** Left minus right must be a multiple of what it is above: by 1, by -1, or as some of the like terms have it. */
 function aimAtMultiple(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'spend'> {
   const tree = sum(line.left, neg(line.right));
-  const whole: Expr = tree.kind === 'sum' ? { ...tree, terms: [{ sign: 'plus', expr: line.left, span: line.left.span }, { sign: 'minus', expr: line.right, span: line.right.span }] } : tree;
+  const whole: Expr =
+    tree.kind === 'sum'
+      ? {
+          ...tree,
+          terms: [
+            { sign: 'plus', expr: line.left, span: line.left.span },
+            { sign: 'minus', expr: line.right, span: line.right.span },
+          ],
+        }
+      : tree;
   const values = places.map((place) => differenceAt(above, place));
   const scales = scalesOf(sum(above.left, neg(above.right)), tree);
-  return { roots: [line.left, line.right], tree: whole, wanted: null, places, targets: scales.map((scale) => values.map((value) => times(real(scale), value))) };
+  return {
+    roots: [line.left, line.right],
+    tree: whole,
+    wanted: null,
+    places,
+    targets: scales.map((scale) => values.map((value) => times(real(scale), value))),
+  };
 }
 
 /** A change is looked at some ten times over. */

@@ -6,7 +6,9 @@ const span = { start: 0, end: 0 };
 
 export function whole(value: number | bigint): Expr {
   const size = BigInt(value);
-  return size < 0n ? neg(whole(-size)) : { kind: 'number', numerator: size, denominator: 1n, written: 'integer', decimals: 0, span };
+  return size < 0n
+    ? neg(whole(-size))
+    : { kind: 'number', numerator: size, denominator: 1n, written: 'integer', decimals: 0, span };
 }
 
 /** A fraction of whole numbers, as people write it. */
@@ -49,9 +51,16 @@ export function product(...parts: readonly Expr[]): Expr {
   const kept = factors.filter((factor) => !isOne(factor));
   if (kept.some(isZero)) return whole(0);
   const result: Expr =
-    kept.length === 0 ? whole(1)
-    : kept.length === 1 ? (kept[0] as Expr)
-    : { kind: 'product', factors: kept, joins: kept.slice(1).map((factor) => (factor.kind === 'number' ? 'dot' : 'implicit')), span };
+    kept.length === 0
+      ? whole(1)
+      : kept.length === 1
+        ? (kept[0] as Expr)
+        : {
+            kind: 'product',
+            factors: kept,
+            joins: kept.slice(1).map((factor) => (factor.kind === 'number' ? 'dot' : 'implicit')),
+            span,
+          };
   return negative ? neg(result) : result;
 }
 

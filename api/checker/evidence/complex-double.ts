@@ -52,7 +52,8 @@ export function rootOf(a: Complex): Complex {
 }
 
 export function powerOf(a: Complex, exponent: Complex): Complex {
-  if (exponent.im === 0 && Number.isInteger(exponent.re) && Math.abs(exponent.re) <= 64) return wholePower(a, exponent.re);
+  if (exponent.im === 0 && Number.isInteger(exponent.re) && Math.abs(exponent.re) <= 64)
+    return wholePower(a, exponent.re);
   if (a.im === 0 && exponent.im === 0 && a.re > 0) return real(a.re ** exponent.re);
   if (a.re === 0 && a.im === 0) return exponent.re > 0 ? real(0) : missing;
   return expOf(times(exponent, logOf(a)));

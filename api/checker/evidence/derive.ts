@@ -41,13 +41,16 @@ function deriveSum(expr: Extract<Expr, { kind: 'sum' }>, by: string): Expr | nul
   for (const { sign, expr: part } of expr.terms) {
     const derived = sign === 'plus' || sign === 'minus' ? derive(part, by) : null;
     if (!derived) return null;
-    if (derived.kind !== 'number' || derived.numerator !== 0n) parts.push(sign === 'minus' ? negTerms(derived) : derived);
+    if (derived.kind !== 'number' || derived.numerator !== 0n)
+      parts.push(sign === 'minus' ? negTerms(derived) : derived);
   }
   return sum(...parts);
 }
 
 function negTerms(expr: Expr): Expr {
-  return expr.kind === 'sum' && expr.terms.length > 1 ? sum(...termsOf(expr).map((t) => (t.sign === 'minus' ? t.expr : neg(t.expr)))) : neg(expr);
+  return expr.kind === 'sum' && expr.terms.length > 1
+    ? sum(...termsOf(expr).map((t) => (t.sign === 'minus' ? t.expr : neg(t.expr))))
+    : neg(expr);
 }
 
 export function deriveProduct(factors: readonly Expr[], by: string): Expr | null {
@@ -76,7 +79,10 @@ function derivePower(base: Expr, exponent: Expr, by: string): Expr | null {
   if (isConstant) return product(exponent, power(base, lessOne(exponent)), inner);
   const self = power(base, exponent);
   const isFixed = inner.kind === 'number' && inner.numerator === 0n;
-  if (isFixed) return base.kind === 'constant' && base.name === 'e' ? product(growth, self) : product(growth, self, call('ln', base));
+  if (isFixed)
+    return base.kind === 'constant' && base.name === 'e'
+      ? product(growth, self)
+      : product(growth, self, call('ln', base));
   return product(self, sum(product(growth, call('ln', base)), quotient(product(exponent, inner), base)));
 }
 
@@ -84,7 +90,8 @@ function derivePower(base: Expr, exponent: Expr, by: string): Expr | null {
 export function lessOne(exponent: Expr): Expr {
   if (exponent.kind === 'number' && exponent.denominator === 1n) return whole(exponent.numerator - 1n);
   const [only] = exponent.kind === 'sum' && exponent.terms.length === 1 ? exponent.terms : [];
-  if (only?.sign === 'minus' && only.expr.kind === 'number' && only.expr.denominator === 1n) return whole(-only.expr.numerator - 1n);
+  if (only?.sign === 'minus' && only.expr.kind === 'number' && only.expr.denominator === 1n)
+    return whole(-only.expr.numerator - 1n);
   return sum(exponent, neg(whole(1)));
 }
 
@@ -145,7 +152,12 @@ export function integrate(expr: Expr, by: string): Expr | null {
     case 'power':
       return integratePower(expr, by);
     case 'root':
-      return expr.degree ? null : integratePower({ kind: 'power', base: expr.radicand, exponent: quotient(whole(1), whole(2)), span: expr.span }, by);
+      return expr.degree
+        ? null
+        : integratePower(
+            { kind: 'power', base: expr.radicand, exponent: quotient(whole(1), whole(2)), span: expr.span },
+            by,
+          );
     case 'call':
       return integrateCall(expr, by);
     default:

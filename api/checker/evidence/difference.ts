@@ -4,7 +4,7 @@ import { childrenOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { suggestForm } from '../suggest/suggest-form.ts';
-import { neg, sum } from './build.ts';
+import { neg, sum, termsOf } from './build.ts';
 import { expanded, spread, sumExpr } from './monomials.ts';
 import { overOneDenominator, workOut } from './worked-out.ts';
 
@@ -17,9 +17,14 @@ const longest = 80;
  * checker finds it equal.
  */
 export function shortDifference(above: Expr, below: Expr, context: CheckContext): string | null {
-  const whole = sum(workOut(above, below, context), neg(below));
+  const whole = sum(
+    workOut(above, below, context),
+    ...termsOf(below).map((term) => (term.sign === 'minus' ? term.expr : neg(term.expr))),
+  );
   const forms = isRationalSum(whole) ? quotients(whole) : [plainDifference(whole)];
-  const texts = forms.flatMap((form) => (form ? [{ form, tex: printExpr(form) }] : [])).filter(({ tex }) => tex.length <= longest);
+  const texts = forms
+    .flatMap((form) => (form && !hasQuotientInside(form) ? [{ form, tex: printExpr(form) }] : []))
+    .filter(({ tex }) => tex.length <= longest);
   texts.sort((a, b) => a.tex.length - b.tex.length);
   return texts.find(({ form }) => compareExpressions(whole, form, context).kind === 'equal')?.tex ?? null;
 }
@@ -29,7 +34,10 @@ function plainDifference(whole: Expr): Expr | null {
   const terms = expanded(whole);
   const before = spread(whole);
   if (!terms || !before || terms.length > mostTerms) return null;
-  return terms.length < before.length || terms.every(({ powers }) => [...powers.values()].every(({ base }) => base.kind === 'letter')) ? sumExpr(terms) : null;
+  return terms.length < before.length ||
+    terms.every(({ powers }) => [...powers.values()].every(({ base }) => base.kind === 'letter'))
+    ? sumExpr(terms)
+    : null;
 }
 
 function isRationalSum(expr: Expr): boolean {
@@ -38,6 +46,13 @@ function isRationalSum(expr: Expr): boolean {
 
 function hasSumBelow(expr: Expr): boolean {
   return (expr.kind === 'quotient' && expr.denominator.kind !== 'number') || childrenOf(expr).some(hasSumBelow);
+}
+
+/** A quotient within a quotient, which nobody would want to read. */
+function hasQuotientInside(expr: Expr): boolean {
+  const isDeep = (part: Expr): boolean => part.kind === 'quotient' || childrenOf(part).some(isDeep);
+  if (expr.kind === 'quotient' && childrenOf(expr).some(isDeep)) return true;
+  return childrenOf(expr).some(hasQuotientInside);
 }
 
 function isRational(expr: Expr): boolean {

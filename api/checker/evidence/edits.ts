@@ -40,7 +40,8 @@ export function splice(tex: string, edits: readonly Edit[]): Spliced | null {
 
 /** Braces where TeX would take only the first sign, and a blank where a command would run into a letter. */
 function fit(before: string, piece: string, after: string): string {
-  if (piece.length > 1 && /(\^|_|\\[dt]?frac\s*(\{[^{}]*\}|\d)?|\\sqrt)\s*$/.test(before) && !isGroup(piece)) return `{${piece}}`;
+  if (piece.length > 1 && /(\^|_|\\[dt]?frac\s*(\{[^{}]*\}|\d)?|\\sqrt)\s*$/.test(before) && !isGroup(piece))
+    return `{${piece}}`;
   const runsInto = /\\[a-zA-Z]+$/.test(before) && /^[a-zA-Z]/.test(piece);
   const runsOn = /\\[a-zA-Z]+$/.test(piece) && /^[a-zA-Z]/.test(after);
   return `${runsInto ? ' ' : ''}${piece}${runsOn ? ' ' : ''}`;
@@ -52,5 +53,7 @@ function isGroup(piece: string): boolean {
 
 /** What was taken out leaves its neighbour marked, so that something can be seen. */
 function visible({ start, end }: Span, length: number): Span {
-  return end > start ? { start, end } : { start: Math.max(0, Math.min(start, length - 1)), end: Math.min(length, start + 1) };
+  return end > start
+    ? { start, end }
+    : { start: Math.max(0, Math.min(start, length - 1)), end: Math.min(length, start + 1) };
 }

@@ -1,7 +1,21 @@
 import type { Expr, FunctionName } from '../../../shared/maths/expression.ts';
 import type { Definitions } from '../context.ts';
 import {
-  cosineOf, expOf, isFiniteNumber, logOf, minus, missing, over, plus, powerOf, real, rootOf, sineOf, sizeOf, times, type Complex,
+  cosineOf,
+  expOf,
+  isFiniteNumber,
+  logOf,
+  minus,
+  missing,
+  over,
+  plus,
+  powerOf,
+  real,
+  rootOf,
+  sineOf,
+  sizeOf,
+  times,
+  type Complex,
 } from './complex-double.ts';
 import { derive } from './derive.ts';
 
@@ -37,7 +51,10 @@ export function estimate(expr: Expr, at: Place): Complex {
     case 'root':
       return rootValue(expr, at);
     case 'call':
-      return callValue(expr.name, expr.args.map((arg) => estimate(arg, at)));
+      return callValue(
+        expr.name,
+        expr.args.map((arg) => estimate(arg, at)),
+      );
     case 'log':
       return over(logOf(estimate(expr.argument, at)), expr.base ? logOf(estimate(expr.base, at)) : real(Math.LN10));
     case 'factorial':
@@ -65,7 +82,8 @@ function rootValue(expr: Extract<Expr, { kind: 'root' }>, at: Place): Complex {
   const inside = estimate(expr.radicand, at);
   if (!expr.degree) return rootOf(inside);
   const degree = estimate(expr.degree, at);
-  if (inside.im === 0 && inside.re < 0 && Math.abs(degree.re % 2) === 1) return real(-((-inside.re) ** (1 / degree.re)));
+  if (inside.im === 0 && inside.re < 0 && Math.abs(degree.re % 2) === 1)
+    return real(-((-inside.re) ** (1 / degree.re)));
   return powerOf(inside, over(real(1), degree));
 }
 
@@ -118,7 +136,21 @@ function callValue(name: FunctionName, args: readonly Complex[]): Complex {
 
 type CalculusExpr = Exclude<
   Expr,
-  { kind: 'number' | 'letter' | 'constant' | 'sum' | 'product' | 'quotient' | 'power' | 'root' | 'call' | 'log' | 'factorial' | 'binomial' }
+  {
+    kind:
+      | 'number'
+      | 'letter'
+      | 'constant'
+      | 'sum'
+      | 'product'
+      | 'quotient'
+      | 'power'
+      | 'root'
+      | 'call'
+      | 'log'
+      | 'factorial'
+      | 'binomial';
+  }
 >;
 
 function calculusValue(expr: CalculusExpr, at: Place): Complex {

@@ -27,7 +27,8 @@ const largestDenominator = 60;
 
 /** The fraction that makes an expression with a hole take the wanted values, null where there is none that is simple. */
 export function solveHole(withHole: Expr, start: number, aim: Aim, target: readonly Complex[]): Rational | null {
-  const at = (c: Complex, place: Place): Complex => estimate(withHole, { ...place, letters: new Map(place.letters).set(holeName, c) });
+  const at = (c: Complex, place: Place): Complex =>
+    estimate(withHole, { ...place, letters: new Map(place.letters).set(holeName, c) });
   const [first] = aim.places;
   const [wanted] = target;
   if (!first || !wanted || !isFiniteNumber(wanted)) return null;

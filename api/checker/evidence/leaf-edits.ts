@@ -10,27 +10,53 @@ import { isWholeNumber, leavesOf, nodesOf, signSpan, type PlacedNode, type Place
 import { hits, outer, type Aim } from './mend-question.ts';
 
 /** What one change costs: a sign least, then a number, then what is put in. */
-const costs = { sign: 1, number: 1.1, signedNumber: 1.2, exponent: 1.15, factor: 1.15, letter: 1.1, drop: 1.25 } as const;
+const costs = {
+  sign: 1,
+  number: 1.1,
+  signedNumber: 1.2,
+  exponent: 1.15,
+  factor: 1.15,
+  letter: 1.1,
+  drop: 1.25,
+} as const;
 /** Fractions where none was written are rarely what was meant. */
 const fractionCost = 1.5;
 
 /** Changes of one number, sign, exponent, coefficient or letter after which the tree has the wanted values. */
-export function* leafEdits(aim: Aim, letters: readonly string[], tex: string, isRight: (node: Expr) => boolean): Generator<Candidate> {
-  const nodes = aim.roots.flatMap(nodesOf);
+export function* leafEdits(
+  aim: Aim,
+  letters: readonly string[],
+  tex: string,
+  isRight: (node: Expr) => boolean,
+  isWanted: (node: Expr) => boolean = () => true,
+): Generator<Candidate> {
+  const nodes = aim.roots.flatMap(nodesOf).filter(({ node }) => isWanted(node));
   for (const target of aim.targets) {
     for (const place of nodes) {
       aim.spend();
-      for (const found of editsAt(place, aim, target, letters, tex)) yield { ...found, touchesRight: isRight(place.node) };
+      for (const found of editsAt(place, aim, target, letters, tex))
+        yield { ...found, touchesRight: isRight(place.node) };
     }
   }
 }
 
 type Found = Omit<Candidate, 'touchesRight'>;
 
-function* editsAt(place: PlacedNode, aim: Aim, target: readonly Complex[], letters: readonly string[], tex: string): Generator<Found> {
+function* editsAt(
+  place: PlacedNode,
+  aim: Aim,
+  target: readonly Complex[],
+  letters: readonly string[],
+  tex: string,
+): Generator<Found> {
   const { node } = place;
   if (node.kind === 'number') {
-    const value = solveHole(replaceNode(aim.tree, node, hole), Number(node.numerator) / Number(node.denominator), aim, target);
+    const value = solveHole(
+      replaceNode(aim.tree, node, hole),
+      Number(node.numerator) / Number(node.denominator),
+      aim,
+      target,
+    );
     if (value) yield* changedNumber(place, value, tex);
     return;
   }
@@ -56,15 +82,24 @@ function* changedNumber(place: PlacedNode, value: Rational, tex: string): Genera
     return;
   }
   if (value.num >= 0n) {
-    const isUnit = isFactor && leads !== null && Q.equals(value, Q.one) && !/^\s*(\\cdot|\\times|[0-9])/.test(tex.slice(span.end));
+    const isUnit =
+      isFactor && leads !== null && Q.equals(value, Q.one) && !/^\s*(\\cdot|\\times|[0-9])/.test(tex.slice(span.end));
     yield { edits: [{ ...span, text: isUnit ? '' : numberText(value) }], cost: costs.number + extra };
     return;
   }
   const size = Q.negate(value);
   const turned = leads && turnedSign(leads, tex);
   if (leads && turned && Q.equals(size, before)) yield { edits: [turned], cost: costs.sign + frontMinus(leads) };
-  else if (leads && turned) yield { edits: [turned, { ...span, text: numberText(size) }], cost: costs.signedNumber + extra + frontMinus(leads) };
-  else if (!isFactor) yield { edits: [{ ...span, text: isExponent ? `{-${numberText(size)}}` : `-${numberText(size)}` }], cost: costs.signedNumber + extra };
+  else if (leads && turned)
+    yield {
+      edits: [turned, { ...span, text: numberText(size) }],
+      cost: costs.signedNumber + extra + frontMinus(leads),
+    };
+  else if (!isFactor)
+    yield {
+      edits: [{ ...span, text: isExponent ? `{-${numberText(size)}}` : `-${numberText(size)}` }],
+      cost: costs.signedNumber + extra,
+    };
 }
 
 /** A sum that comes to begin with a minus reads worse than one whose other terms change. */
@@ -87,13 +122,20 @@ export function turnedSign(placed: PlacedTerm, tex: string): Edit | null {
 }
 
 /** A coefficient put in front of a term that has none; with it its sign, or the whole term taken out. */
-function* changedTerm(place: PlacedNode, leads: PlacedTerm, aim: Aim, target: readonly Complex[], tex: string): Generator<Found> {
+function* changedTerm(
+  place: PlacedNode,
+  leads: PlacedTerm,
+  aim: Aim,
+  target: readonly Complex[],
+  tex: string,
+): Generator<Found> {
   const { node } = place;
   if (startsWithNumber(node)) return;
   const value = solveHole(replaceNode(aim.tree, node, product(hole, node)), 1, aim, target);
   if (!value) return;
   if (Q.isZero(value)) {
-    if (!leads.isOnly) yield { edits: [{ ...leads.term.span, text: '' }], cost: costs.drop + 0.1 * leavesOf(node).length };
+    if (!leads.isOnly)
+      yield { edits: [{ ...leads.term.span, text: '' }], cost: costs.drop + 0.1 * leavesOf(node).length };
     return;
   }
   const size = Q.absolute(value);
@@ -107,7 +149,11 @@ function* changedTerm(place: PlacedNode, leads: PlacedTerm, aim: Aim, target: re
   const at = outer(node).start;
   const extra = (size.den === 1n ? 0 : fractionCost / 2) + (node.kind === 'quotient' ? 0.4 : 0);
   const bracketed = node.kind === 'sum' && !node.bracketed;
-  if (!bracketed) yield { edits: [...front, { start: at, end: at, text: numberText(size) }], cost: costs.factor + (turned ? 0.1 : 0) + extra };
+  if (!bracketed)
+    yield {
+      edits: [...front, { start: at, end: at, text: numberText(size) }],
+      cost: costs.factor + (turned ? 0.1 : 0) + extra,
+    };
 }
 
 function startsWithNumber(node: Expr): boolean {
@@ -117,7 +163,12 @@ function startsWithNumber(node: Expr): boolean {
 }
 
 /** Another letter, or another power of it. */
-function* changedLetter(place: PlacedNode, aim: Aim, target: readonly Complex[], letters: readonly string[]): Generator<Found> {
+function* changedLetter(
+  place: PlacedNode,
+  aim: Aim,
+  target: readonly Complex[],
+  letters: readonly string[],
+): Generator<Found> {
   const { node, isBase } = place;
   if (node.kind !== 'letter') return;
   const span = outer(node);
@@ -150,7 +201,8 @@ export function smallChanges(aim: Aim, tex: string): SmallChange[] {
     const turned = leads && leads.term.expr === node ? turnedSign(leads, tex) : null;
     if (leads && turned) found.push({ node, by: neg(node), edit: turned, cost: 1 + frontMinus(leads) });
     const end = outer(node).end;
-    if (node.kind === 'letter' && !isBase) found.push({ node, by: power(node, whole(2)), edit: { start: end, end, text: '^2' }, cost: 1.05 });
+    if (node.kind === 'letter' && !isBase)
+      found.push({ node, by: power(node, whole(2)), edit: { start: end, end, text: '^2' }, cost: 1.05 });
     if (node.kind === 'power' && node.exponent.kind === 'number') {
       found.push({ node, by: node.base, edit: { start: outer(node.base).end, end, text: '' }, cost: 1.05 });
     }
@@ -163,7 +215,9 @@ const mostNumbers = 4;
 
 /** Two numbers changed at once: the first tried from small whole numbers, the second solved for. */
 export function* numberPairs(aim: Aim, tex: string, isRight: (node: Expr) => boolean): Generator<Candidate> {
-  const numbers = aim.roots.flatMap(nodesOf).filter(({ node, isExponent }) => isWholeNumber(node) && !isExponent && !isRight(node));
+  const numbers = aim.roots
+    .flatMap(nodesOf)
+    .filter(({ node, isExponent }) => isWholeNumber(node) && !isExponent && !isRight(node));
   if (numbers.length < 2 || numbers.length > mostNumbers) return;
   for (const [k, one] of numbers.entries()) {
     for (const other of numbers.slice(k + 1)) {
@@ -183,7 +237,11 @@ function* pairAt(one: PlacedNode, other: PlacedNode, value: number, aim: Aim, te
     const far = Math.abs(value - Number(one.node.numerator)) + Math.abs(Number(found.num - other.node.numerator));
     for (const first of changedNumber(one, Q.rational(value), tex)) {
       for (const second of changedNumber(other, found, tex)) {
-        yield { edits: [...first.edits, ...second.edits], cost: first.cost + second.cost + 0.001 * far, touchesRight: false };
+        yield {
+          edits: [...first.edits, ...second.edits],
+          cost: first.cost + second.cost + 0.001 * far,
+          touchesRight: false,
+        };
       }
     }
   }

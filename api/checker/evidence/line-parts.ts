@@ -49,7 +49,9 @@ function visit(node: Expr, spot: Spot, found: PlacedNode[]): void {
       }
       return;
     case 'product':
-      node.factors.forEach((factor, k) => visit(factor, { leads: k === 0 ? leads : inside(factor), isFactor: true }, found));
+      node.factors.forEach((factor, k) =>
+        visit(factor, { leads: k === 0 ? leads : inside(factor), isFactor: true }, found),
+      );
       return;
     case 'quotient':
       visit(node.numerator, { leads: leads && node.numerator.kind !== 'sum' ? leads : inside(node.numerator) }, found);

@@ -6,7 +6,9 @@ const span = { start: 0, end: 0 };
 
 /** What a step starts from, as a line that stands nowhere in the text. */
 export function meaningToLine(meaning: Meaning): Line | null {
-  return meaning.kind === 'expression' ? { kind: 'expression', expr: meaning.expr, span } : statementToLine(meaning.statement);
+  return meaning.kind === 'expression'
+    ? { kind: 'expression', expr: meaning.expr, span }
+    : statementToLine(meaning.statement);
 }
 
 function statementToLine(statement: Statement): Line | null {
@@ -16,7 +18,9 @@ function statementToLine(statement: Statement): Line | null {
     case 'all':
     case 'any': {
       const parts = statement.parts.map(statementToLine);
-      return parts.includes(null) ? null : { kind: statement.kind, parts: parts.flatMap((part) => (part ? [part] : [])), span };
+      return parts.includes(null)
+        ? null
+        : { kind: statement.kind, parts: parts.flatMap((part) => (part ? [part] : [])), span };
     }
     case 'member':
       return { kind: 'membership', letter: statement.letter, set: statement.set, negated: statement.negated, span };

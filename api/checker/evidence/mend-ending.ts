@@ -4,7 +4,7 @@ import type { CheckContext } from '../context.ts';
 import { judgeLine, type Route, type WalkState } from '../walk-derivation.ts';
 import { mendLine, type MendedLine } from './mend-line.ts';
 import { operationsBetween } from './operations.ts';
-import { isPlainlyHeld } from './plainly-held.ts';
+import { followsPlainly } from './plainly-held.ts';
 
 const mostLines = 12;
 
@@ -13,7 +13,14 @@ const mostLines = 12;
  * by an operation that also explains the author's own step. Null where one of them is not, for none is better than a
  * wrong one.
  */
-export function carryOn(route: Route, before: WalkState, step: number, mended: MendedLine, steps: readonly StepRuling[], context: CheckContext): string[] | null {
+export function carryOn(
+  route: Route,
+  before: WalkState,
+  step: number,
+  mended: MendedLine,
+  steps: readonly StepRuling[],
+  context: CheckContext,
+): string[] | null {
   const { lines } = route.read;
   if (lines.length - step > mostLines) return null;
   const carried = [mended.tex];
@@ -22,8 +29,16 @@ export function carryOn(route: Route, before: WalkState, step: number, mended: M
   for (let next = step + 1; next < lines.length; next += 1) {
     const own = lines[next];
     const above = lines[next - 1];
-    if (!own?.ok || !above?.ok || steps[next - 1]?.ruling !== 'holds' || (route.input.uses?.[next]?.length ?? 0) > 0) return null;
-    const found = carryLine(route, state, next, { line: own.line, tex: own.tex }, { line: last, tex: carried[carried.length - 1] ?? '' }, context);
+    if (!own?.ok || !above?.ok || steps[next - 1]?.ruling !== 'holds' || (route.input.uses?.[next]?.length ?? 0) > 0)
+      return null;
+    const found = carryLine(
+      route,
+      state,
+      next,
+      { line: own.line, tex: own.tex },
+      { line: last, tex: carried[carried.length - 1] ?? '' },
+      context,
+    );
     if (!found) return null;
     const explained = operationsBetween(above.line, own.line, context);
     const mendedToo = operationsBetween(last, found.line, context);
@@ -41,21 +56,30 @@ interface Written {
 }
 
 /** The author's line as it stands where it still follows, else with the numbers that the mend brings with it. */
-function carryLine(route: Route, state: WalkState, step: number, own: Written, above: Written, context: CheckContext): Written | null {
-  const { result } = judgeLine(route, state, step, own.line, context);
-  if (isPlainlyHeld(result)) return own;
+function carryLine(
+  route: Route,
+  state: WalkState,
+  step: number,
+  own: Written,
+  above: Written,
+  context: CheckContext,
+): Written | null {
+  const judged = judgeLine(route, state, step, own.line, context);
+  const { result } = judged;
+  if (followsPlainly(judged, state)) return own;
   const found = mendLine({
     above: above.line,
     aboveTex: above.tex,
     line: own.line,
     tex: own.tex,
     link: result.evidence.link ?? 1,
+    isLarge: false,
     solutions: null,
     lost: result.evidence.lost ?? [],
     gained: result.evidence.gained ?? [],
     settings: route.read.settings,
     context,
-    holds: (line) => isPlainlyHeld(judgeLine(route, state, step, line, context).result),
+    holds: (line) => followsPlainly(judgeLine(route, state, step, line, context), state),
   });
   return found && !found.isRewritten ? found : null;
 }

@@ -2,9 +2,11 @@ import type { Expr, Line, RelationSign, Span } from '../../../shared/maths/expre
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { readLine } from '../../../shared/maths/read.ts';
 import { aimsOf, expressionsIn } from './aims.ts';
+import { termsOf } from './build.ts';
 import { splice, type Candidate, type Edit } from './edits.ts';
 import { replaceNode } from './holes.ts';
 import { leafEdits, numberPairs, numberText, smallChanges } from './leaf-edits.ts';
+import { nodesOf } from './line-parts.ts';
 import { hits, outer, type Aim, type MendQuestion } from './mend-question.ts';
 import { missingTerms } from './missing-terms.ts';
 import { findRightParts, findRightTerms } from './right-parts.ts';
@@ -33,14 +35,31 @@ const rewrittenCost = 4;
 export function mendLine(question: MendQuestion): MendedLine | null {
   const aims = aimsOf(question);
   const isRight = rightParts(question);
+  if (question.isLarge) return firstThatHolds([...changesOfWrongTerms(question, aims, isRight)], question);
   const single = [...singleChanges(question, aims, isRight)];
-  const first = firstThatHolds(single.filter((candidate) => weight(candidate) < rewrittenCost), question);
+  const first = firstThatHolds(
+    single.filter((candidate) => weight(candidate) < rewrittenCost),
+    question,
+  );
   if (first) return first;
-  const pairs = aims.flatMap((aim) => [...pairsOfChanges(aim, question, isRight), ...numberPairs(aim, question.tex, isRight)]);
-  return firstThatHolds(pairs, question) ?? firstThatHolds(single.filter((candidate) => weight(candidate) >= rewrittenCost), question);
+  const pairs = aims.flatMap((aim) => [
+    ...pairsOfChanges(aim, question, isRight),
+    ...numberPairs(aim, question.tex, isRight),
+  ]);
+  return (
+    firstThatHolds(pairs, question) ??
+    firstThatHolds(
+      single.filter((candidate) => weight(candidate) >= rewrittenCost),
+      question,
+    )
+  );
 }
 
-function* singleChanges(question: MendQuestion, aims: readonly Aim[], isRight: (node: Expr) => boolean): Generator<Candidate> {
+function* singleChanges(
+  question: MendQuestion,
+  aims: readonly Aim[],
+  isRight: (node: Expr) => boolean,
+): Generator<Candidate> {
   const { line, above, tex } = question;
   yield* signChoices(question);
   yield* valueListEdits(question);
@@ -57,6 +76,22 @@ function* singleChanges(question: MendQuestion, aims: readonly Aim[], isRight: (
   const [aim] = aims;
   if (pair && aim) yield* rewritten(aim, pair.above, question.link === 1 ? question.aboveTex : null, question.context);
 }
+
+/** In a long line only those terms are looked at that do not match the line above. */
+function* changesOfWrongTerms(
+  { tex }: MendQuestion,
+  aims: readonly Aim[],
+  isRight: (node: Expr) => boolean,
+): Generator<Candidate> {
+  for (const aim of aims) {
+    const wrong = aim.roots.flatMap((root) => termsOf(root).map((term) => term.expr)).filter((node) => !isRight(node));
+    if (wrong.length > mostWrong) continue;
+    const within = new Set(wrong.flatMap((node) => nodesOf(node).map((placed) => placed.node)));
+    yield* leafEdits(aim, [], tex, isRight, (node) => within.has(node));
+  }
+}
+
+const mostWrong = 3;
 
 function rightParts(question: MendQuestion): (node: Expr) => boolean {
   const pair = expressionsIn(question);
@@ -80,7 +115,8 @@ function* relationSigns(line: Line): Generator<Candidate> {
   const place = { start: outer(line.left).end, end: outer(line.right).start };
   const turned: Partial<Record<RelationSign, RelationSign>> = { '<': '>', '>': '<', '<=': '>=', '>=': '<=' };
   for (const [sign, text] of Object.entries(signTex)) {
-    if (sign !== line.sign) yield { edits: [{ ...place, text }], cost: sign === turned[line.sign] ? 1 : 1.05, touchesRight: false };
+    if (sign !== line.sign)
+      yield { edits: [{ ...place, text }], cost: sign === turned[line.sign] ? 1 : 1.05, touchesRight: false };
   }
 }
 
@@ -88,22 +124,26 @@ function* relationSigns(line: Line): Generator<Candidate> {
 function* valueItself(aim: Aim): Generator<Candidate> {
   const [focus] = aim.roots;
   const value = aim.targets[0]?.[0];
-  if (!focus || !value || aim.wanted || aim.roots.length > 1 || lettersOf(focus).length > 0) return;
+  if (!focus || !value || aim.roots.length > 1 || lettersOf(focus).length > 0) return;
   const found = simpleFraction(value);
-  if (found && aim.targets[0]?.every((other) => other.re === value.re)) yield { edits: [{ ...outer(focus), text: numberText(found) }], cost: 1.9, touchesRight: false };
+  if (found && aim.targets[0]?.every((other) => other.re === value.re))
+    yield { edits: [{ ...outer(focus), text: numberText(found) }], cost: 1.9, touchesRight: false };
 }
 
 const mostSmall = 18;
 
 /** Two changes, the first of them small. */
 function* pairsOfChanges(aim: Aim, { tex }: MendQuestion, isRight: (node: Expr) => boolean): Generator<Candidate> {
-  const small = smallChanges(aim, tex).filter(({ node }) => !isRight(node)).slice(0, mostSmall);
+  const small = smallChanges(aim, tex)
+    .filter(({ node }) => !isRight(node))
+    .slice(0, mostSmall);
   for (const [k, one] of small.entries()) {
     const changed: Aim = { ...aim, tree: replaceNode(aim.tree, one.node, one.by) };
     for (const other of small.slice(k + 1)) {
       aim.spend();
       const both = replaceNode(changed.tree, other.node, other.by);
-      if (aim.targets.some((target) => hits(both, target, aim.places))) yield { edits: [one.edit, other.edit], cost: one.cost + other.cost, touchesRight: false };
+      if (aim.targets.some((target) => hits(both, target, aim.places)))
+        yield { edits: [one.edit, other.edit], cost: one.cost + other.cost, touchesRight: false };
     }
     for (const found of leafEdits(changed, [], tex, isRight)) {
       yield { ...found, edits: [one.edit, ...found.edits], cost: one.cost + found.cost };

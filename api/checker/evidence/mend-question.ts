@@ -16,6 +16,8 @@ export interface MendQuestion {
   readonly solutions: string | null;
   readonly lost: readonly string[];
   readonly gained: readonly string[];
+  /** Too long for more than a look at its terms. */
+  readonly isLarge: boolean;
   readonly settings: ReadSettings;
   readonly context: CheckContext;
   /** The ruling of the checker itself on the step to another line. */

@@ -15,15 +15,20 @@ export function* missingTerms(aim: Aim, isRight: (node: Expr) => boolean): Gener
   const own = focus && spread(focus);
   if (!focus || !above || !own || aim.roots.length !== 1) return;
   const order = collect(above).map(keyOf);
-  const doubtful = focus.kind === 'sum' ? focus.terms.filter(({ expr }) => !isRight(expr)).flatMap(({ expr }) => spread(expr) ?? []) : own;
+  const doubtful =
+    focus.kind === 'sum'
+      ? focus.terms.filter(({ expr }) => !isRight(expr)).flatMap(({ expr }) => spread(expr) ?? [])
+      : own;
   const present = new Set(doubtful.map(keyOf));
   // A like term that is there, and not known to be right, is changed instead.
-  const isNew = (terms: readonly Monomial[]): boolean => terms.length > 0 && terms.every((term) => !present.has(keyOf(term)));
+  const isNew = (terms: readonly Monomial[]): boolean =>
+    terms.length > 0 && terms.every((term) => !present.has(keyOf(term)));
   const missing = collect([...above, ...own.map(negated)]);
   if (missing.length <= mostMissing && isNew(missing)) yield put(missing, focus, order);
   for (const term of collect(above)) {
     const withTerm = sum(focus, monomialExpr(term));
-    if (isNew([term]) && aim.targets.some((target) => hits(withTerm, target, aim.places))) yield put([term], focus, order);
+    if (isNew([term]) && aim.targets.some((target) => hits(withTerm, target, aim.places)))
+      yield put([term], focus, order);
   }
 }
 
@@ -37,7 +42,10 @@ function insertion(term: Monomial, focus: Expr, order: readonly string[]): Edit 
   const place = order.indexOf(keyOf(term));
   const text = printExpr(monomialExpr(term));
   const signed = text.startsWith('-') ? text : `+${text}`;
-  const terms = focus.kind === 'sum' ? focus.terms.map(({ expr, span }) => ({ expr, end: span.end })) : [{ expr: focus, end: outer(focus).end }];
+  const terms =
+    focus.kind === 'sum'
+      ? focus.terms.map(({ expr, span }) => ({ expr, end: span.end }))
+      : [{ expr: focus, end: outer(focus).end }];
   let at: number | null = null;
   for (const { expr, end } of terms) {
     const parts = spread(expr);

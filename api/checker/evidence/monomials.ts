@@ -114,7 +114,9 @@ function spreadPower(expr: Extract<Expr, { kind: 'power' }>): Monomial[] | null 
   if (!base) return null;
   if (base.length === 1 && only) {
     if (Q.isZero(only.coefficient)) return exponent > 0 ? [only] : [atom(expr, 1)];
-    const powers = new Map([...only.powers].map(([key, part]) => [key, { base: part.base, exponent: part.exponent * exponent }]));
+    const powers = new Map(
+      [...only.powers].map(([key, part]) => [key, { base: part.base, exponent: part.exponent * exponent }]),
+    );
     return [normal(Q.pow(only.coefficient, exponent), powers)];
   }
   if (exponent < 0) return [atom(expr.base, exponent)];
@@ -133,7 +135,8 @@ export function wholeValue(expr: Expr): number | null {
 
 function spreadRoot(expr: Extract<Expr, { kind: 'root' }>): Monomial {
   const { radicand } = expr;
-  if (expr.degree || radicand.kind !== 'number' || radicand.denominator !== 1n || radicand.numerator > 1_000_000n) return atom(expr, 1);
+  if (expr.degree || radicand.kind !== 'number' || radicand.denominator !== 1n || radicand.numerator > 1_000_000n)
+    return atom(expr, 1);
   let outside = 1n;
   let inside = radicand.numerator;
   for (let k = 2n; k * k <= inside; k += 1n) {
@@ -147,7 +150,10 @@ function spreadRoot(expr: Extract<Expr, { kind: 'root' }>): Monomial {
 
 /** Equal for like terms. */
 export function keyOf(term: Monomial): string {
-  return [...term.powers].map(([key, { exponent }]) => `${key}^${exponent}`).sort().join('*');
+  return [...term.powers]
+    .map(([key, { exponent }]) => `${key}^${exponent}`)
+    .sort()
+    .join('*');
 }
 
 /** Like terms joined, in order of first appearance; what comes to nothing is left out. */
@@ -170,7 +176,9 @@ export function monomialExpr({ coefficient, powers }: Monomial): Expr {
     (exponent > 0 ? above : below).push(power(base, whole(Math.abs(exponent))));
   }
   const isPlain = below.length === 0 && (size.den === 1n || above.length === 0);
-  const result = isPlain ? product(fraction(size), ...above) : quotient(product(whole(size.num), ...above), product(whole(size.den), ...below));
+  const result = isPlain
+    ? product(fraction(size), ...above)
+    : quotient(product(whole(size.num), ...above), product(whole(size.den), ...below));
   return coefficient.num < 0n ? neg(result) : result;
 }
 

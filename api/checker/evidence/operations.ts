@@ -28,12 +28,21 @@ export function operationsBetween(above: Line, below: Line, context: CheckContex
   if (listOf(below) && (above.kind === 'relation' || above.kind === 'any')) found.add('solve');
   if (above.kind === 'relation' && below.kind === 'relation') {
     const places = choosePlaces([above, below], 3, context);
-    const ratio = commonRatio(places.map((place) => differenceAt(below, place)), places.map((place) => differenceAt(above, place)));
+    const ratio = commonRatio(
+      places.map((place) => differenceAt(below, place)),
+      places.map((place) => differenceAt(above, place)),
+    );
     if (ratio) found.add('both-sides');
     const isOrder = above.sign !== '=' && below.sign !== '=';
     if (isOrder && below.left.kind === 'letter') found.add('solve');
   }
-  if (above.kind === 'relation' && below.kind === 'relation' && below.left.kind === 'letter' && !lettersOf(below.right).includes(below.left.name)) found.add('solve');
+  if (
+    above.kind === 'relation' &&
+    below.kind === 'relation' &&
+    below.left.kind === 'letter' &&
+    !lettersOf(below.right).includes(below.left.name)
+  )
+    found.add('solve');
   return found;
 }
 
@@ -62,7 +71,9 @@ function shapeOf(expr: Expr): Shape {
   const parts = terms.map((term) => (hasBracketedSum(term) ? null : spread(term)));
   const isSpread = parts.every((part) => part !== null && part.length <= 1);
   const keys = parts.flatMap((part) => (part ?? []).map(keyOf));
-  const isProduct = expr.kind === 'product' && expr.factors.some((factor) => factor.kind === 'sum' || (factor.kind === 'power' && factor.base.kind === 'sum'));
+  const isProduct =
+    expr.kind === 'product' &&
+    expr.factors.some((factor) => factor.kind === 'sum' || (factor.kind === 'power' && factor.base.kind === 'sum'));
   return { isSpread, isCollected: isSpread && new Set(keys).size === keys.length, isProduct };
 }
 

@@ -47,7 +47,8 @@ function matchParts(above: Expr, below: Expr, found: Set<Expr>): void {
   if (below.kind === 'sum') return matchTerms(spread(above), below.terms, found);
   if (below.kind === 'product') return matchFactors(above, below.factors, found);
   const [before, after] = [childrenOf(above), childrenOf(below)];
-  if (above.kind === below.kind && before.length === after.length) before.forEach((part, k) => matchParts(part, after[k] as Expr, found));
+  if (above.kind === below.kind && before.length === after.length)
+    before.forEach((part, k) => matchParts(part, after[k] as Expr, found));
 }
 
 function areSame(a: Expr, b: Expr): boolean {
@@ -64,7 +65,9 @@ function matchTerms(above: readonly Monomial[] | null, terms: readonly Term[], f
   for (const { term, parts } of own) {
     const [only] = parts ?? [];
     if (!only || parts?.length !== 1) continue;
-    const place = left.findIndex((other) => keyOf(other) === keyOf(only) && Q.equals(other.coefficient, only.coefficient));
+    const place = left.findIndex(
+      (other) => keyOf(other) === keyOf(only) && Q.equals(other.coefficient, only.coefficient),
+    );
     if (place < 0) continue;
     left.splice(place, 1);
     mark(term.expr, found);

@@ -18,7 +18,8 @@ export function* shapeEdits(aim: Aim, tex: string, isRight: (node: Expr) => bool
     for (const { by, edits, cost } of shapesOf(node, tex)) {
       aim.spend();
       const changed = replaceNode(aim.tree, node, by);
-      if (aim.targets.some((target) => hits(changed, target, aim.places))) yield { edits, cost, touchesRight: isRight(node) };
+      if (aim.targets.some((target) => hits(changed, target, aim.places)))
+        yield { edits, cost, touchesRight: isRight(node) };
     }
   }
 }
@@ -73,9 +74,14 @@ function* turnedOver(node: Extract<Expr, { kind: 'quotient' }>, tex: string): Ge
 function* multipliedInstead(node: Extract<Expr, { kind: 'quotient' }>, tex: string): Generator<Shape> {
   const { numerator, denominator } = node;
   const text = (part: Expr): string => tex.slice(outer(part).start, outer(part).end);
-  const isPlain = (part: Expr): boolean => part.kind !== 'sum' && !(part.kind === 'product' && part.factors.some((factor) => factor.kind === 'number'));
+  const isPlain = (part: Expr): boolean =>
+    part.kind !== 'sum' && !(part.kind === 'product' && part.factors.some((factor) => factor.kind === 'number'));
   if (!isPlain(denominator) || !isPlain(numerator) || numerator.kind === 'number') return;
-  yield { by: product(denominator, numerator), edits: [{ ...node.span, text: glue(text(denominator), text(numerator)) }], cost: 1.45 };
+  yield {
+    by: product(denominator, numerator),
+    edits: [{ ...node.span, text: glue(text(denominator), text(numerator)) }],
+    cost: 1.45,
+  };
 }
 
 /** 4y for y/4, the other way round. */
@@ -121,10 +127,26 @@ function* factorMoved(node: FunctionExpr, tex: string): Generator<Shape> {
   const removed: Edit = { start: factor.start, end: outer(second).start, text: '' };
   const start = node.span.start;
   const bare = second.kind === 'letter' && /\\left\($|\($/.test(tex.slice(0, factor.start));
-  const unbracketed: Edit[] = bare ? [{ start: tex.slice(0, factor.start).replace(/(\\left)?\($/, '').length, end: node.span.end, text: ` ${tex.slice(outer(second).start, outer(second).end)}` }] : [removed];
-  yield { by: product(first, withArgument(node, second)), edits: [{ start, end: start, text: digits }, ...unbracketed], cost: 1.5 };
+  const unbracketed: Edit[] = bare
+    ? [
+        {
+          start: tex.slice(0, factor.start).replace(/(\\left)?\($/, '').length,
+          end: node.span.end,
+          text: ` ${tex.slice(outer(second).start, outer(second).end)}`,
+        },
+      ]
+    : [removed];
+  yield {
+    by: product(first, withArgument(node, second)),
+    edits: [{ start, end: start, text: digits }, ...unbracketed],
+    cost: 1.5,
+  };
   const end = outer(second).end;
-  yield { by: withArgument(node, power(second, first)), edits: [removed, { start: end, end, text: `^{${digits}}` }], cost: 1.55 };
+  yield {
+    by: withArgument(node, power(second, first)),
+    edits: [removed, { start: end, end, text: `^{${digits}}` }],
+    cost: 1.55,
+  };
 }
 
 const partners: Partial<Record<FunctionName, readonly FunctionName[]>> = {
@@ -145,6 +167,10 @@ function* otherFunction(node: FunctionExpr, tex: string): Generator<Shape> {
   const command = `\\${node.name}`;
   if (!tex.startsWith(command, start)) return;
   for (const name of partners[node.name] ?? []) {
-    yield { by: call(name, ...node.args), edits: [{ start, end: start + command.length, text: `\\${name}` }], cost: 1.2 };
+    yield {
+      by: call(name, ...node.args),
+      edits: [{ start, end: start + command.length, text: `\\${name}` }],
+      cost: 1.2,
+    };
   }
 }

@@ -34,7 +34,9 @@ export function* valueListEdits(question: MendQuestion): Generator<Candidate> {
 
 function toValue(tex: string, { settings }: MendQuestion): Expr | null {
   const reading = readLine(tex, settings);
-  return reading.ok && reading.line.kind === 'expression' && isFiniteNumber(estimate(reading.line.expr, nowhere)) ? reading.line.expr : null;
+  return reading.ok && reading.line.kind === 'expression' && isFiniteNumber(estimate(reading.line.expr, nowhere))
+    ? reading.line.expr
+    : null;
 }
 
 interface Listed {
@@ -56,7 +58,12 @@ function entriesOf(line: Line): Listed | null {
   }
   if (line.kind !== 'membership' || line.set.kind !== 'finite' || line.letter?.kind !== 'letter') return null;
   const entries = line.set.items.map((item): Entry => {
-    return { value: estimate(item, nowhere), span: outer(item), right: outer(item), textFor: (value) => printExpr(value) };
+    return {
+      value: estimate(item, nowhere),
+      span: outer(item),
+      right: outer(item),
+      textFor: (value) => printExpr(value),
+    };
   });
   return { name: line.letter.name, entries, isSet: true };
 }
@@ -66,7 +73,8 @@ function entryOf(line: Extract<Line, { kind: 'relation' }>): { name: string; ent
   const { left, right } = line;
   const name = onlyLetter(left);
   if (line.sign !== '=' || name === null || !isFiniteNumber(estimate(right, nowhere))) return null;
-  const at = (x: number): Complex => minus(estimate(left, { ...nowhere, letters: new Map([[name, real(x)]]) }), estimate(right, nowhere));
+  const at = (x: number): Complex =>
+    minus(estimate(left, { ...nowhere, letters: new Map([[name, real(x)]]) }), estimate(right, nowhere));
   const [f0, f1, f3] = [at(0), at(1), at(3)];
   const slope = minus(f1, f0);
   if (!isNear(minus(f3, f0), over(slope, real(1 / 3)))) return null;
@@ -90,7 +98,12 @@ function onlyLetter(expr: Expr): string | null {
   return names.size === 1 ? ([...names][0] ?? null) : null;
 }
 
-function* replacements(listed: Listed, wrong: readonly Entry[], lost: readonly Expr[], question: MendQuestion): Generator<Candidate> {
+function* replacements(
+  listed: Listed,
+  wrong: readonly Entry[],
+  lost: readonly Expr[],
+  question: MendQuestion,
+): Generator<Candidate> {
   if (lost.length > 4 || wrong.length > 4) return;
   for (const order of permutations(lost)) {
     const edits: Edit[] = [];
@@ -150,6 +163,9 @@ export function* signChoices(question: MendQuestion): Generator<Candidate> {
   if (!gained) return;
   const value = estimate(only.expr, nowhere);
   const isUpper = isNear(value, estimate(gained, nowhere));
-  yield { edits: [{ start: only.span.start, end: outer(only.expr).start, text: isUpper ? '-' : '' }], cost: 1, touchesRight: false };
+  yield {
+    edits: [{ start: only.span.start, end: outer(only.expr).start, text: isUpper ? '-' : '' }],
+    cost: 1,
+    touchesRight: false,
+  };
 }
-

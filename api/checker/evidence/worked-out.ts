@@ -29,14 +29,26 @@ export function workOut(expr: Expr, other: Expr, context: CheckContext): Expr {
 const wholeCost = 4;
 
 /** The whole expression written anew, for lines that no small change mends; the values at two limits come first. */
-export function* rewritten(aim: Aim, above: Expr, aboveTex: string | null, context: CheckContext): Generator<Candidate> {
+export function* rewritten(
+  aim: Aim,
+  above: Expr,
+  aboveTex: string | null,
+  context: CheckContext,
+): Generator<Candidate> {
   const [focus] = aim.roots;
   if (!focus || aim.roots.length !== 1) return;
-  const whole = (text: string, cost: number): Candidate => ({ edits: [{ ...outer(focus), text }], cost, touchesRight: false });
+  const whole = (text: string, cost: number): Candidate => ({
+    edits: [{ ...outer(focus), text }],
+    cost,
+    touchesRight: false,
+  });
   const limits = atBothLimits(above, context);
   if (limits && (focus.kind === 'sum' ? focus.terms.length === 2 : false)) yield whole(printExpr(limits), 1.05);
   const worked = workOut(above, focus, context);
-  if (hasCalculus(above) && !hasCalculus(worked)) yield whole(printExpr(worked), wholeCost);
+  if (hasCalculus(above) && !hasCalculus(worked)) {
+    const terms = above.kind === 'integral' ? expanded(worked) : null;
+    yield whole(printExpr(terms ? sumExpr(terms) : worked), wholeCost);
+  }
   const joined = focus.kind === 'quotient' ? overOneDenominator(above) : null;
   if (joined) yield whole(printExpr(joined), wholeCost);
   const multiplied = focus.kind === 'sum' ? expanded(worked) : null;
@@ -68,11 +80,16 @@ function atBothLimits(above: Expr, context: CheckContext): Expr | null {
 
 function limitsOf(above: Expr, context: CheckContext): readonly [Expr, Expr] | null {
   if (above.kind === 'evaluated' && above.from && above.variable) {
-    return [substituteLetter(above.operand, above.variable, above.to), substituteLetter(above.operand, above.variable, above.from)];
+    return [
+      substituteLetter(above.operand, above.variable, above.to),
+      substituteLetter(above.operand, above.variable, above.from),
+    ];
   }
   if (above.kind !== 'integral' || !above.from || !above.to) return null;
   const found = antiderivative(above.integrand, above.variable, context);
-  return found && [substituteLetter(found, above.variable, above.to), substituteLetter(found, above.variable, above.from)];
+  return (
+    found && [substituteLetter(found, above.variable, above.to), substituteLetter(found, above.variable, above.from)]
+  );
 }
 
 /** Fractions added over the product of their denominators, the numerator multiplied out. */

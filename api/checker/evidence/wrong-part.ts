@@ -23,12 +23,18 @@ export function findWrongPart({ tex, line, settings }: MendQuestion, mended: Men
   const end = mended.tex.length - (tex.length - span.end);
   const shouldBe = mended.tex.slice(span.start, end).trim();
   if (shouldBe === '' || is === shouldBe) return null;
-  const lostSign = is.startsWith('-') && !/^[+-]/.test(shouldBe) && exprsOf(line).some((expr) => isOneOfSeveral(expr, span));
+  const lostSign =
+    is.startsWith('-') && !/^[+-]/.test(shouldBe) && exprsOf(line).some((expr) => isOneOfSeveral(expr, span));
   return { span, is, shouldBe: lostSign ? `+${shouldBe}` : shouldBe };
 }
 
 function isOneOfSeveral(expr: Expr, span: Span): boolean {
-  if (expr.kind === 'sum' && expr.terms.length > 1 && expr.terms.some((term) => term.span.start === span.start && term.span.end === span.end)) return true;
+  if (
+    expr.kind === 'sum' &&
+    expr.terms.length > 1 &&
+    expr.terms.some((term) => term.span.start === span.start && term.span.end === span.end)
+  )
+    return true;
   return childrenOf(expr).some((part) => isOneOfSeveral(part, span));
 }
 
@@ -44,7 +50,8 @@ function sidesOf(line: Line): Span[] {
 
 /** The relation sign, where that alone was changed. */
 function changedSign(line: Line, { edits }: MendedLine): Span | null {
-  if (line.kind === 'any' || line.kind === 'all') return line.parts.map((part) => signIn(part, edits)).find((span) => span !== null) ?? null;
+  if (line.kind === 'any' || line.kind === 'all')
+    return line.parts.map((part) => signIn(part, edits)).find((span) => span !== null) ?? null;
   return signIn(line, edits);
 }
 

@@ -4,43 +4,150 @@ const schechter = 'Schechter, The Most Common Errors in Undergraduate Mathematic
 const portland = 'Portland State University, Common Errors in Algebra and Calculus';
 const matz = 'Matz 1980/1982, process model for high-school algebra errors (from memory)';
 const pitfalls = 'Brown University, Algebra Pitfalls';
-const detachment = 'Linchevski & Herscovics 1996; Herscovics & Linchevski 1994, detachment from the minus sign (from memory)';
+const detachment =
+  'Linchevski & Herscovics 1996; Herscovics & Linchevski 1994, detachment from the minus sign (from memory)';
 const cangelosi = 'Cangelosi, Madrid, Cooper, Olson & Hartter 2013, The negative sign and exponential expressions';
 const booth = 'L. Booth 1984 / Kuchemann 1981 (CSMS), letters and concatenation (from memory)';
 
 /** Signs. */
 const signs: readonly Slip[] = [
-  ruled('the minus in front of a fraction reached only its first term', 'sign', `${schechter} (lost parentheses)`, ['-\\frac{b+c}{d} -> \\frac{-b+c}{d}', '-\\frac{b-c}{d} -> \\frac{-b-c}{d}'], 7),
-  ruled('the minus in front of a bracket reached only its first term', 'sign', `${schechter} (sign errors; lost parentheses)`, ['-(a+b) -> -a+b', '-(a-b) -> -a-b'], 6),
-  ruled('a product of two negatives was left negative', 'sign', `${schechter} (sign errors)`, ['-a(b-c) -> -ab-ac', '(a-b)(c-d) -> ac-ad-bc-bd', '-(a-b) -> -a-b', '(-a)(-b) -> -ab']),
-  ruled('a product of a positive and a negative was made positive', 'sign', `${schechter} (sign errors)`, ['-a(b+c) -> -ab+ac', 'a(b-c) -> ab+ac', '(a-b)(c+d) -> ac+ad+bc-bd', '(a-b)(c+d) -> ac+ad-bc+bd', '(a+b)(c-d) -> ac+ad+bc-bd', '(a+b)(c-d) -> ac-ad+bc+bd'], 4),
+  ruled(
+    'the minus in front of a fraction reached only its first term',
+    'sign',
+    `${schechter} (lost parentheses)`,
+    ['-\\frac{b+c}{d} -> \\frac{-b+c}{d}', '-\\frac{b-c}{d} -> \\frac{-b-c}{d}'],
+    7,
+  ),
+  ruled(
+    'the minus in front of a bracket reached only its first term',
+    'sign',
+    `${schechter} (sign errors; lost parentheses)`,
+    ['-(a+b) -> -a+b', '-(a-b) -> -a-b'],
+    6,
+  ),
+  ruled('a product of two negatives was left negative', 'sign', `${schechter} (sign errors)`, [
+    '-a(b-c) -> -ab-ac',
+    '(a-b)(c-d) -> ac-ad-bc-bd',
+    '-(a-b) -> -a-b',
+    '(-a)(-b) -> -ab',
+  ]),
+  ruled(
+    'a product of a positive and a negative was made positive',
+    'sign',
+    `${schechter} (sign errors)`,
+    [
+      '-a(b+c) -> -ab+ac',
+      'a(b-c) -> ab+ac',
+      '(a-b)(c+d) -> ac+ad+bc-bd',
+      '(a-b)(c+d) -> ac+ad-bc+bd',
+      '(a+b)(c-d) -> ac+ad+bc-bd',
+      '(a+b)(c-d) -> ac-ad+bc+bd',
+    ],
+    4,
+  ),
   ruled('two negatives were added as if they made a plus', 'sign', `Vlassis 2004; ${detachment}`, ['-a-b -> a+b'], 4),
   ruled('subtracting a negative was treated as subtracting', 'sign', memory, ['-(-b) -> -b'], 6),
   ruled('a term was detached from the minus in front of it', 'sign', detachment, ['-b+c -> -(b+c)', '-b-c -> -b+c'], 4),
   ruled('the square of a negative was taken as negative', 'sign', cangelosi, ['(-a)^n -> -a^n'], 6),
   ruled('the minus sign was drawn into the power', 'sign', portland, ['-a^n -> (-a)^n'], 6),
-  ruled('a sign was lost on taking out a common factor', 'sign', memory, ['ab-ac -> a(b+c)', '-ab+ac -> a(b+c)', '-ab-ac -> -a(b-c)'], 4),
-  ruled('the square of the imaginary unit was taken as one', 'sign', memory, ['k\\mathrm{i}^2 -> k', '\\mathrm{i}^2 -> 1'], 7),
+  ruled(
+    'a sign was lost on taking out a common factor',
+    'sign',
+    memory,
+    ['ab-ac -> a(b+c)', '-ab+ac -> a(b+c)', '-ab-ac -> -a(b-c)'],
+    4,
+  ),
+  ruled(
+    'the square of the imaginary unit was taken as one',
+    'sign',
+    memory,
+    ['k\\mathrm{i}^2 -> k', '\\mathrm{i}^2 -> 1'],
+    7,
+  ),
 ];
 
 /** Brackets and everything taken term by term. */
 const brackets: readonly Slip[] = [
-  ruled('only the first term was multiplied', 'brackets', `${matz}; Sleeman 1984, Cognitive Science 8:387-412`, ['a(b+c) -> ab+c', '-a(b+c) -> -ab+c', '-a(b-c) -> -ab-c'], 6),
-  ruled('only the first and last terms were multiplied', 'brackets', matz, ['(a+b)(c+d) -> ac+bd', '(a-b)(c-d) -> ac+bd', '(a+b)(c-d) -> ac-bd'], 6),
+  ruled(
+    'only the first term was multiplied',
+    'brackets',
+    `${matz}; Sleeman 1984, Cognitive Science 8:387-412`,
+    ['a(b+c) -> ab+c', '-a(b+c) -> -ab+c', '-a(b-c) -> -ab-c'],
+    6,
+  ),
+  ruled(
+    'only the first and last terms were multiplied',
+    'brackets',
+    matz,
+    ['(a+b)(c+d) -> ac+bd', '(a-b)(c-d) -> ac+bd', '(a+b)(c-d) -> ac-bd'],
+    6,
+  ),
   ruled('the multiplier was applied to each factor of a product', 'brackets', memory, ['a(bc) -> (ab)(ac)']),
   ruled('the multiplier went in before squaring', 'brackets', portland, ['k(a+b)^n -> (ka+kb)^n'], 6),
-  ruled('the power reached only the letter', 'brackets', `Dawkins, bad/lost parentheses; ${schechter}`, ['(ka)^n -> ka^n'], 6),
+  ruled(
+    'the power reached only the letter',
+    'brackets',
+    `Dawkins, bad/lost parentheses; ${schechter}`,
+    ['(ka)^n -> ka^n'],
+    6,
+  ),
   ruled('the square of a difference was taken with a minus kept', 'brackets', matz, ['(a-b)^2 -> a^2-b^2'], 7),
-  ruled('the cube of a sum was taken term by term', 'brackets', `${pitfalls} (general power)`, ['(a+b)^3 -> a^3+b^3', '(a-b)^3 -> a^3-b^3'], 7),
-  ruled('a sum of a root and a number was squared term by term', 'powers-and-roots', `${pitfalls} (same family)`, ['(\\sqrt{a}+b)^2 -> a+b^2', '(\\sqrt{a}-b)^2 -> a+b^2', '(\\sqrt{a}-b)^2 -> a-b^2'], 8),
+  ruled(
+    'the cube of a sum was taken term by term',
+    'brackets',
+    `${pitfalls} (general power)`,
+    ['(a+b)^3 -> a^3+b^3', '(a-b)^3 -> a^3-b^3'],
+    7,
+  ),
+  ruled(
+    'a sum of a root and a number was squared term by term',
+    'powers-and-roots',
+    `${pitfalls} (same family)`,
+    ['(\\sqrt{a}+b)^2 -> a+b^2', '(\\sqrt{a}-b)^2 -> a+b^2', '(\\sqrt{a}-b)^2 -> a-b^2'],
+    8,
+  ),
   ruled('the square of a sum was taken term by term', 'brackets', pitfalls, ['(a+b)^2 -> a^2+b^2'], 6),
-  ruled('a power of a sum was taken term by term', 'brackets', `${pitfalls} (general power)`, ['(a+b)^n -> a^n+b^n', '(a-b)^n -> a^n-b^n']),
+  ruled('a power of a sum was taken term by term', 'brackets', `${pitfalls} (general power)`, [
+    '(a+b)^n -> a^n+b^n',
+    '(a-b)^n -> a^n-b^n',
+  ]),
   ruled('the middle term was not doubled', 'brackets', memory, ['(a+b)^2 -> a^2+ab+b^2', '(a-b)^2 -> a^2-ab+b^2'], 6),
   ruled('the last sign of a squared difference was wrong', 'sign', memory, ['(a-b)^2 -> a^2-2ab-b^2'], 6),
-  ruled('the pythagorean identity was rooted term by term', 'functions', memory, ['\\sqrt{1-\\cos^2 a} -> 1-\\cos a', '\\sqrt{1-\\sin^2 a} -> 1-\\sin a'], 8),
-  ruled('the root of a sum was taken term by term', 'powers-and-roots', pitfalls, ['\\sqrt{a+b} -> \\sqrt{a}+\\sqrt{b}', '\\sqrt{a-b} -> \\sqrt{a}-\\sqrt{b}', '\\sqrt{a^2+b^2} -> a+b', '\\sqrt{a^2+b} -> a+\\sqrt{b}', '\\sqrt{a^2-b} -> a-\\sqrt{b}', '\\sqrt{a^2-b^2} -> a-b'], 6),
-  ruled('a sum of roots was put under one root', 'powers-and-roots', portland, ['\\sqrt{a}+\\sqrt{b} -> \\sqrt{a+b}', '\\sqrt{a}-\\sqrt{b} -> \\sqrt{a-b}'], 6),
-  ruled('the reciprocal of a sum was taken term by term', 'fractions', `${matz}; ${schechter} (everything is additive)`, ['\\frac{1}{a+b} -> \\frac{1}{a}+\\frac{1}{b}'], 7),
+  ruled(
+    'the pythagorean identity was rooted term by term',
+    'functions',
+    memory,
+    ['\\sqrt{1-\\cos^2 a} -> 1-\\cos a', '\\sqrt{1-\\sin^2 a} -> 1-\\sin a'],
+    8,
+  ),
+  ruled(
+    'the root of a sum was taken term by term',
+    'powers-and-roots',
+    pitfalls,
+    [
+      '\\sqrt{a+b} -> \\sqrt{a}+\\sqrt{b}',
+      '\\sqrt{a-b} -> \\sqrt{a}-\\sqrt{b}',
+      '\\sqrt{a^2+b^2} -> a+b',
+      '\\sqrt{a^2+b} -> a+\\sqrt{b}',
+      '\\sqrt{a^2-b} -> a-\\sqrt{b}',
+      '\\sqrt{a^2-b^2} -> a-b',
+    ],
+    6,
+  ),
+  ruled(
+    'a sum of roots was put under one root',
+    'powers-and-roots',
+    portland,
+    ['\\sqrt{a}+\\sqrt{b} -> \\sqrt{a+b}', '\\sqrt{a}-\\sqrt{b} -> \\sqrt{a-b}'],
+    6,
+  ),
+  ruled(
+    'the reciprocal of a sum was taken term by term',
+    'fractions',
+    `${matz}; ${schechter} (everything is additive)`,
+    ['\\frac{1}{a+b} -> \\frac{1}{a}+\\frac{1}{b}'],
+    7,
+  ),
   ruled('a denominator was split', 'fractions', matz, ['\\frac{a}{b+c} -> \\frac{a}{b}+\\frac{a}{c}'], 6),
   ruled('a power with a sum above was taken as a sum of powers', 'powers-and-roots', matz, ['c^{a+b} -> c^a+c^b'], 6),
   ruled('an absolute value was taken term by term', 'functions', memory, ['|a+b| -> |a|+|b|', '|a-b| -> |a|-|b|'], 6),
@@ -50,10 +157,32 @@ const brackets: readonly Slip[] = [
 const likeTerms: readonly Slip[] = [
   ruled('a letter minus itself left the letter', 'like-terms', memory, ['ka-ka -> a', 'a-a -> 1'], 7),
   ruled('the letter was taken away instead of the term', 'like-terms', booth, ['ka-a -> k'], 7),
-  ruled('the exponents were added along with like terms', 'like-terms', memory, ['ka^n+ma^n -> (k+m)a^{2n}', 'ka+ma -> (k+m)a^2'], 6),
-  ruled('terms of different degree were added', 'like-terms', memory, ['a^m+a^n -> a^{m+n}', 'ka^m+pa^n -> (k+p)a^{m+n}', 'ka^m+pa -> (k+p)a^{m+1}'], 6),
-  ruled('a number and a letter term were joined', 'like-terms', `${booth}; Sleeman 1984, Cognitive Science 8:387-412`, ['k+ma -> (k+m)a'], 7),
+  ruled(
+    'the exponents were added along with like terms',
+    'like-terms',
+    memory,
+    ['ka^n+ma^n -> (k+m)a^{2n}', 'ka+ma -> (k+m)a^2'],
+    6,
+  ),
+  ruled(
+    'terms of different degree were added',
+    'like-terms',
+    memory,
+    ['a^m+a^n -> a^{m+n}', 'ka^m+pa^n -> (k+p)a^{m+n}', 'ka^m+pa -> (k+p)a^{m+1}'],
+    6,
+  ),
+  ruled(
+    'a number and a letter term were joined',
+    'like-terms',
+    `${booth}; Sleeman 1984, Cognitive Science 8:387-412`,
+    ['k+ma -> (k+m)a'],
+    7,
+  ),
   ruled('unlike terms were joined', 'like-terms', booth, ['ka+mb -> (k+m)ab', 'a+b -> ab'], 5),
 ];
 
-export const algebraSlips: readonly Slip[] = [...signs, ...brackets, ...likeTerms.map((one) => ({ ...one, alsoExpanded: true }))];
+export const algebraSlips: readonly Slip[] = [
+  ...signs,
+  ...brackets,
+  ...likeTerms.map((one) => ({ ...one, alsoExpanded: true })),
+];

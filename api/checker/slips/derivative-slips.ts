@@ -25,7 +25,11 @@ function* variants(expr: Expr, by: string, wrong: WrongDerivative): Generator<Ex
     if (right.includes(null)) return;
     for (const [k, factor] of expr.factors.entries()) {
       for (const changed of variants(factor, by, wrong)) {
-        const parts = expr.factors.map((_, at) => product(...expr.factors.map((other, place) => (place !== at ? other : at === k ? changed : (right[at] as Expr)))));
+        const parts = expr.factors.map((_, at) =>
+          product(
+            ...expr.factors.map((other, place) => (place !== at ? other : at === k ? changed : (right[at] as Expr))),
+          ),
+        );
         yield sum(...parts);
       }
     }
@@ -110,7 +114,8 @@ function* powerRuleOnExponential(part: Expr, by: string): Generator<Expr> {
 }
 
 function* constantKept(part: Expr, by: string): Generator<Expr> {
-  if (!lettersOf(part).includes(by) && (part.kind === 'number' || part.kind === 'letter' || part.kind === 'constant')) yield part;
+  if (!lettersOf(part).includes(by) && (part.kind === 'number' || part.kind === 'letter' || part.kind === 'constant'))
+    yield part;
 }
 
 function* signLost(part: Expr, by: string): Generator<Expr> {
@@ -129,7 +134,8 @@ function* exponentRaised(part: Expr, by: string): Generator<Expr> {
 }
 
 function* exponentKept(part: Expr, by: string): Generator<Expr> {
-  if (part.kind === 'power' && lettersOf(part.base).includes(by) && !lettersOf(part.exponent).includes(by)) yield product(part.exponent, part);
+  if (part.kind === 'power' && lettersOf(part.base).includes(by) && !lettersOf(part.exponent).includes(by))
+    yield product(part.exponent, part);
 }
 
 /** Another letter, a function of the variable by custom, differentiated as if by itself or as if fixed. */
@@ -144,16 +150,60 @@ function* otherLetterFixed(part: Expr, by: string): Generator<Expr> {
 }
 
 export const derivativeSlips: readonly Slip[] = [
-  slip('the derivative of a product was taken as the product of the derivatives', 'calculus', `${memory}; Dawkins, Common Math Errors: Calculus Errors`, { rank: 7, rewrites: onDerivatives(productOfDerivatives) }),
-  slip('the derivative of a quotient was taken as the quotient of the derivatives', 'calculus', 'Dawkins, Common Math Errors: Calculus Errors', { rank: 7, rewrites: onDerivatives(quotientOfDerivatives) }),
-  slip('the numerator of the quotient rule was in the wrong order', 'calculus', memory, { rank: 6, rewrites: onDerivatives(quotientInWrongOrder) }),
-  slip('degrees were used where radians are needed', 'calculus', memory, { rank: 8, rewrites: onDerivatives(inDegrees) }),
-  slip('the inner derivative was left out', 'calculus', 'Clark et al. 1997, chain rule (from memory); common practice, from memory', { rank: 7, rewrites: onDerivatives(withoutInner) }),
-  slip('the inner function was replaced by its derivative', 'calculus', memory, { rank: 6, rewrites: onDerivatives(withInnerReplaced) }),
-  slip('the power rule was used on an exponential', 'calculus', memory, { rank: 7, rewrites: onDerivatives(powerRuleOnExponential) }),
-  slip('a constant was kept on differentiating', 'calculus', 'Orton 1983, Educ. Stud. Math. 14, integration / differentiation (from memory)', { rank: 6, rewrites: onDerivatives(constantKept) }),
-  slip('a sign was lost in the derivative of a function', 'calculus', memory, { rank: 6, rewrites: onDerivatives(signLost) }),
-  slip('the exponent was moved the wrong way on differentiating', 'calculus', memory, { rank: 6, rewrites: onDerivatives(exponentRaised) }),
-  slip('the exponent was not lowered on differentiating', 'calculus', memory, { rank: 5, rewrites: onDerivatives(exponentKept) }),
-  slip('another letter was treated as a constant in implicit differentiation', 'calculus', memory, { rank: 6, rewrites: onDerivatives(otherLetterFixed) }),
+  slip(
+    'the derivative of a product was taken as the product of the derivatives',
+    'calculus',
+    `${memory}; Dawkins, Common Math Errors: Calculus Errors`,
+    { rank: 7, rewrites: onDerivatives(productOfDerivatives) },
+  ),
+  slip(
+    'the derivative of a quotient was taken as the quotient of the derivatives',
+    'calculus',
+    'Dawkins, Common Math Errors: Calculus Errors',
+    { rank: 7, rewrites: onDerivatives(quotientOfDerivatives) },
+  ),
+  slip('the numerator of the quotient rule was in the wrong order', 'calculus', memory, {
+    rank: 6,
+    rewrites: onDerivatives(quotientInWrongOrder),
+  }),
+  slip('degrees were used where radians are needed', 'calculus', memory, {
+    rank: 8,
+    rewrites: onDerivatives(inDegrees),
+  }),
+  slip(
+    'the inner derivative was left out',
+    'calculus',
+    'Clark et al. 1997, chain rule (from memory); common practice, from memory',
+    { rank: 7, rewrites: onDerivatives(withoutInner) },
+  ),
+  slip('the inner function was replaced by its derivative', 'calculus', memory, {
+    rank: 6,
+    rewrites: onDerivatives(withInnerReplaced),
+  }),
+  slip('the power rule was used on an exponential', 'calculus', memory, {
+    rank: 7,
+    rewrites: onDerivatives(powerRuleOnExponential),
+  }),
+  slip(
+    'a constant was kept on differentiating',
+    'calculus',
+    'Orton 1983, Educ. Stud. Math. 14, integration / differentiation (from memory)',
+    { rank: 6, rewrites: onDerivatives(constantKept) },
+  ),
+  slip('a sign was lost in the derivative of a function', 'calculus', memory, {
+    rank: 6,
+    rewrites: onDerivatives(signLost),
+  }),
+  slip('the exponent was moved the wrong way on differentiating', 'calculus', memory, {
+    rank: 6,
+    rewrites: onDerivatives(exponentRaised),
+  }),
+  slip('the exponent was not lowered on differentiating', 'calculus', memory, {
+    rank: 5,
+    rewrites: onDerivatives(exponentKept),
+  }),
+  slip('another letter was treated as a constant in implicit differentiation', 'calculus', memory, {
+    rank: 6,
+    rewrites: onDerivatives(otherLetterFixed),
+  }),
 ];

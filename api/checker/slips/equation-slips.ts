@@ -39,7 +39,11 @@ function onProducts(solved: Solved): (above: Line) => Generator<Line> {
 }
 
 /** All terms but one divided or multiplied by a number that stands in the line. */
-function* onAllButOne(above: Line, change: (term: Expr, by: Expr) => Expr, numbersOf: (term: Expr) => Expr[]): Generator<Line> {
+function* onAllButOne(
+  above: Line,
+  change: (term: Expr, by: Expr) => Expr,
+  numbersOf: (term: Expr) => Expr[],
+): Generator<Line> {
   if (above.kind !== 'relation') return;
   const sides = [signedTerms(above.left), signedTerms(above.right)] as const;
   const all = [...sides[0].map((term) => ({ side: 0, term })), ...sides[1].map((term) => ({ side: 1, term }))];
@@ -47,14 +51,17 @@ function* onAllButOne(above: Line, change: (term: Expr, by: Expr) => Expr, numbe
   for (const by of all.flatMap(({ term }) => numbersOf(term))) {
     for (const [spared] of all.entries()) {
       const parts = all.map(({ side, term }, k) => ({ side, term: k === spared ? term : change(term, by) }));
-      const side = (wanted: number): Expr => sumOf(parts.filter((part) => part.side === wanted).map((part) => part.term));
+      const side = (wanted: number): Expr =>
+        sumOf(parts.filter((part) => part.side === wanted).map((part) => part.term));
       yield relation(side(0), above.sign, side(1));
     }
   }
 }
 
 function coefficientsOf(term: Expr): Expr[] {
-  return [...splitFactors(term)].map(({ factor }) => factor).filter((factor) => isNumber(factor) && lettersOf(term).length > 0);
+  return [...splitFactors(term)]
+    .map(({ factor }) => factor)
+    .filter((factor) => isNumber(factor) && lettersOf(term).length > 0);
 }
 
 function denominatorsOf(term: Expr): Expr[] {
@@ -84,10 +91,15 @@ export const equationSlips: readonly Slip[] = [
     rank: 6,
     lines: (above) => movedWithSign(above, (term) => !isNegative(term)),
   }),
-  slip('different things were done to the two sides', 'both-sides', 'Kieran 1981, Educ. Stud. Math. 12:317-326 (from memory)', {
-    rank: 6,
-    lines: (above) => movedWithSign(above, isNegative),
-  }),
+  slip(
+    'different things were done to the two sides',
+    'both-sides',
+    'Kieran 1981, Educ. Stud. Math. 12:317-326 (from memory)',
+    {
+      rank: 6,
+      lines: (above) => movedWithSign(above, isNegative),
+    },
+  ),
   slip('the coefficient was subtracted instead of divided by', 'both-sides', sleeman, {
     rank: 6,
     lines: onProducts(function* solved(factor, rest, right) {

@@ -87,10 +87,19 @@ function* zeroProduct(above: Line): Generator<Line> {
 }
 
 export const inequalitySlips: readonly Slip[] = [
-  slip('the inequality was not reversed on dividing by a negative', 'both-sides', memory, { rank: 7, lines: turned(true) }),
-  slip('the inequality was reversed when nothing negative was divided by', 'both-sides', memory, { rank: 6, lines: turned(false) }),
+  slip('the inequality was not reversed on dividing by a negative', 'both-sides', memory, {
+    rank: 7,
+    lines: turned(true),
+  }),
+  slip('the inequality was reversed when nothing negative was divided by', 'both-sides', memory, {
+    rank: 6,
+    lines: turned(false),
+  }),
   slip('the square root of an inequality was taken as of an equation', 'solutions', memory, { rank: 7, lines: rooted }),
-  slip('an inequality was multiplied by an expression of unknown sign', 'both-sides', tsamir, { rank: 7, lines: multipliedThrough }),
+  slip('an inequality was multiplied by an expression of unknown sign', 'both-sides', tsamir, {
+    rank: 7,
+    lines: multipliedThrough,
+  }),
   slip('the zero-product rule was used with an inequality', 'solutions', tsamir, {
     rank: 7,
     *lines(above) {
@@ -99,5 +108,8 @@ export const inequalitySlips: readonly Slip[] = [
     },
   }),
   slip('only one case of an absolute value was taken', 'solutions', memory, { rank: 7, lines: oneCase }),
-  slip('a strict inequality and one that is not were exchanged', 'copying', memory, { rank: 5, lines: otherStrictness }),
+  slip('a strict inequality and one that is not were exchanged', 'copying', memory, {
+    rank: 5,
+    lines: otherStrictness,
+  }),
 ];

@@ -26,8 +26,12 @@ function* variants(integrand: Expr, by: string, wrong: WrongIntegral): Generator
   for (const [k, term] of integrand.terms.entries()) {
     const others = integrand.terms.map((other) => integrate(other.expr, by));
     for (const found of variants(term.expr, by, wrong)) {
-      const parts = integrand.terms.map((other, at) => ({ sign: other.sign, expr: at === k ? found : (others[at] ?? null) }));
-      if (parts.every(({ expr }) => expr !== null)) yield sum(...parts.map(({ sign, expr }) => (sign === 'minus' ? neg(expr as Expr) : (expr as Expr))));
+      const parts = integrand.terms.map((other, at) => ({
+        sign: other.sign,
+        expr: at === k ? found : (others[at] ?? null),
+      }));
+      if (parts.every(({ expr }) => expr !== null))
+        yield sum(...parts.map(({ sign, expr }) => (sign === 'minus' ? neg(expr as Expr) : (expr as Expr))));
     }
   }
 }
@@ -58,14 +62,18 @@ function onLimits(join: (upper: Expr, lower: Expr) => Expr): readonly Rewrite[] 
         if (found) yield join(at(found, part, part.to), at(found, part, part.from));
       }
       if (part.kind === 'evaluated' && part.from && part.variable) {
-        yield join(substituteLetter(part.operand, part.variable, part.to), substituteLetter(part.operand, part.variable, part.from));
+        yield join(
+          substituteLetter(part.operand, part.variable, part.to),
+          substituteLetter(part.operand, part.variable, part.from),
+        );
       }
     },
   ];
 }
 
 function* productOfIntegrals(integrand: Expr, by: string): Generator<Expr> {
-  if (integrand.kind !== 'product' || integrand.factors.filter((factor) => lettersOf(factor).includes(by)).length < 2) return;
+  if (integrand.kind !== 'product' || integrand.factors.filter((factor) => lettersOf(factor).includes(by)).length < 2)
+    return;
   const factors = integrand.factors.map((factor) => (lettersOf(factor).includes(by) ? integrate(factor, by) : factor));
   if (!factors.includes(null)) yield product(...(factors as Expr[]));
 }
@@ -82,7 +90,12 @@ function* logWithoutModulus(integrand: Expr, by: string): Generator<Expr> {
 }
 
 function innerOf(integrand: Expr): Expr | null {
-  if (integrand.kind === 'power') return integrand.base.kind === 'letter' ? null : integrand.exponent.kind === 'number' ? integrand.base : integrand.exponent;
+  if (integrand.kind === 'power')
+    return integrand.base.kind === 'letter'
+      ? null
+      : integrand.exponent.kind === 'number'
+        ? integrand.base
+        : integrand.exponent;
   const [inner] = integrand.kind === 'call' ? integrand.args : [];
   return inner && inner.kind !== 'letter' ? inner : null;
 }
@@ -95,8 +108,12 @@ function outerIntegral(integrand: Expr, by: string): { outer: Expr; slope: Expr 
   if (!inner || !slope || lettersOf(integrand).includes(stand)) return null;
   const replaced: Expr =
     integrand.kind === 'power'
-      ? integrand.base === inner ? { ...integrand, base: letter(stand) } : { ...integrand, exponent: letter(stand) }
-      : integrand.kind === 'call' ? { ...integrand, args: [letter(stand)] } : integrand;
+      ? integrand.base === inner
+        ? { ...integrand, base: letter(stand) }
+        : { ...integrand, exponent: letter(stand) }
+      : integrand.kind === 'call'
+        ? { ...integrand, args: [letter(stand)] }
+        : integrand;
   const outer = integrate(replaced, stand);
   return outer && { outer: substituteLetter(outer, stand, inner), slope };
 }
@@ -136,29 +153,69 @@ function hasZeroBelow(expr: Expr): boolean {
 
 /** A value at all means that nobody looked for a pole: the antiderivative was put in at both ends. */
 export const integralSlips: readonly Slip[] = [
-  slip('the integral of a product was taken as the product of the integrals', 'calculus', `OpenStax Calculus, m53621 Antiderivatives, Example 2; ${dawkins}`, { rank: 7, rewrites: onIntegrals(productOfIntegrals) }),
+  slip(
+    'the integral of a product was taken as the product of the integrals',
+    'calculus',
+    `OpenStax Calculus, m53621 Antiderivatives, Example 2; ${dawkins}`,
+    { rank: 7, rewrites: onIntegrals(productOfIntegrals) },
+  ),
   slip('the power rule was used at exponent minus one', 'calculus', dawkins, {
     rank: 8,
     *whole(above, below) {
       if (above.kind === 'integral' && above.integrand.kind === 'quotient' && hasZeroBelow(below)) yield below;
     },
   }),
-  slip('one over an expression was integrated to its logarithm', 'calculus', 'Dawkins, calculus errors', { rank: 6, rewrites: onIntegrals(logOfAnything) }),
-  slip('the absolute value was dropped in a logarithm', 'calculus', 'Dawkins, calculus errors', { rank: 5, rewrites: onIntegrals(logWithoutModulus) }),
-  slip('the inner derivative was not divided out', 'calculus', memory, { rank: 6, rewrites: onIntegrals(innerNotDivided) }),
-  slip('an inner derivative that is not constant was divided out', 'calculus', memory, { rank: 7, rewrites: onIntegrals(dividedByInner) }),
-  slip('the integrand was differentiated instead of integrated', 'calculus', orton, { rank: 7, rewrites: onIntegrals(differentiated) }),
-  slip('a sign was wrong in the integral of a function', 'calculus', memory, { rank: 7.5, rewrites: onIntegrals(wrongSign) }),
-  slip('the exponent was raised without dividing by it', 'calculus', memory, { rank: 5, rewrites: onIntegrals(raisedOnly) }),
-  slip('the constant of integration was left out', 'calculus', 'Schechter, The Most Common Errors in Undergraduate Mathematics (loss of constants of integration)', {
+  slip('one over an expression was integrated to its logarithm', 'calculus', 'Dawkins, calculus errors', {
     rank: 6,
-    *whole(above, below) {
-      if (above.kind !== 'integral' || above.from || lettersOf(below).some((name) => /^[cCkK]$/.test(name))) return;
-      const found = integrate(above.integrand, above.variable);
-      if (found) yield found;
-    },
+    rewrites: onIntegrals(logOfAnything),
   }),
-  slip('the lower limit was added instead of subtracted', 'calculus', orton, { rank: 6, rewrites: onLimits((upper, lower) => sum(upper, lower)) }),
-  slip('the limits were put in the wrong way round', 'calculus', memory, { rank: 6, rewrites: onLimits((upper, lower) => sum(lower, neg(upper))) }),
-  slip('an integral was taken across a pole', 'calculus', memory, { rank: 8, rewrites: onLimits((upper, lower) => sum(upper, neg(lower))) }),
+  slip('the absolute value was dropped in a logarithm', 'calculus', 'Dawkins, calculus errors', {
+    rank: 5,
+    rewrites: onIntegrals(logWithoutModulus),
+  }),
+  slip('the inner derivative was not divided out', 'calculus', memory, {
+    rank: 6,
+    rewrites: onIntegrals(innerNotDivided),
+  }),
+  slip('an inner derivative that is not constant was divided out', 'calculus', memory, {
+    rank: 7,
+    rewrites: onIntegrals(dividedByInner),
+  }),
+  slip('the integrand was differentiated instead of integrated', 'calculus', orton, {
+    rank: 7,
+    rewrites: onIntegrals(differentiated),
+  }),
+  slip('a sign was wrong in the integral of a function', 'calculus', memory, {
+    rank: 7.5,
+    rewrites: onIntegrals(wrongSign),
+  }),
+  slip('the exponent was raised without dividing by it', 'calculus', memory, {
+    rank: 5,
+    rewrites: onIntegrals(raisedOnly),
+  }),
+  slip(
+    'the constant of integration was left out',
+    'calculus',
+    'Schechter, The Most Common Errors in Undergraduate Mathematics (loss of constants of integration)',
+    {
+      rank: 6,
+      *whole(above, below) {
+        if (above.kind !== 'integral' || above.from || lettersOf(below).some((name) => /^[cCkK]$/.test(name))) return;
+        const found = integrate(above.integrand, above.variable);
+        if (found) yield found;
+      },
+    },
+  ),
+  slip('the lower limit was added instead of subtracted', 'calculus', orton, {
+    rank: 6,
+    rewrites: onLimits((upper, lower) => sum(upper, lower)),
+  }),
+  slip('the limits were put in the wrong way round', 'calculus', memory, {
+    rank: 6,
+    rewrites: onLimits((upper, lower) => sum(lower, neg(upper))),
+  }),
+  slip('an integral was taken across a pole', 'calculus', memory, {
+    rank: 8,
+    rewrites: onLimits((upper, lower) => sum(upper, neg(lower))),
+  }),
 ];

@@ -28,7 +28,8 @@ function vanishes(expr: Expr, { variable, to }: Limit): boolean {
 
 function* zeroOverZero(limit: Limit): Generator<Expr> {
   const { operand } = limit;
-  if (operand.kind !== 'quotient' || !vanishes(operand.numerator, limit) || !vanishes(operand.denominator, limit)) return;
+  if (operand.kind !== 'quotient' || !vanishes(operand.numerator, limit) || !vanishes(operand.denominator, limit))
+    return;
   yield whole(0);
   yield whole(1);
 }
@@ -46,7 +47,9 @@ function* infinityMinusInfinity({ operand, variable, to }: Limit): Generator<Exp
   const isInfinite = to.kind === 'constant' && to.name === 'infinity';
   if (!isInfinite || operand.kind !== 'sum' || !operand.terms.some((term) => term.sign === 'minus')) return;
   const far = new Map([[variable, real(1e8)]]);
-  const grows = operand.terms.filter(({ expr }) => sizeOf(estimate(expr, { letters: far, definitions: nowhere })) > 1e3);
+  const grows = operand.terms.filter(
+    ({ expr }) => sizeOf(estimate(expr, { letters: far, definitions: nowhere })) > 1e3,
+  );
   if (grows.length >= 2) yield whole(0);
 }
 
@@ -57,7 +60,18 @@ function* signOfInfinity({ to, operand, variable }: Limit): Generator<Expr> {
 
 export const limitSlips: readonly Slip[] = [
   slip('zero over zero was taken as zero or one', 'calculus', memory, { rank: 6, rewrites: onLimits(zeroOverZero) }),
-  slip('derivatives were taken of a form that is not indeterminate', 'calculus', memory, { rank: 6, rewrites: onLimits(derivativesEverywhere) }),
-  slip('infinity minus infinity was taken as zero', 'calculus', 'Schechter, The Most Common Errors in Undergraduate Mathematics (jumping to conclusions about infinity)', { rank: 6, rewrites: onLimits(infinityMinusInfinity) }),
-  slip('the sign of the place of a limit was lost', 'calculus', memory, { rank: 3, rewrites: onLimits(signOfInfinity) }),
+  slip('derivatives were taken of a form that is not indeterminate', 'calculus', memory, {
+    rank: 6,
+    rewrites: onLimits(derivativesEverywhere),
+  }),
+  slip(
+    'infinity minus infinity was taken as zero',
+    'calculus',
+    'Schechter, The Most Common Errors in Undergraduate Mathematics (jumping to conclusions about infinity)',
+    { rank: 6, rewrites: onLimits(infinityMinusInfinity) },
+  ),
+  slip('the sign of the place of a limit was lost', 'calculus', memory, {
+    rank: 3,
+    rewrites: onLimits(signOfInfinity),
+  }),
 ];

@@ -34,7 +34,11 @@ export function* matchExpr(pattern: Expr, expr: Expr, bound: Bindings = nothing)
   } else if (pattern.kind === 'log') {
     const hasBase = pattern.base !== null;
     if (expr.kind === 'log' && hasBase === (expr.base !== null)) {
-      yield* matchAll([pattern.argument, ...(pattern.base ? [pattern.base] : [])], [expr.argument, ...(expr.base ? [expr.base] : [])], bound);
+      yield* matchAll(
+        [pattern.argument, ...(pattern.base ? [pattern.base] : [])],
+        [expr.argument, ...(expr.base ? [expr.base] : [])],
+        bound,
+      );
     }
   } else if (sameExpr(pattern, expr)) yield bound;
 }
@@ -70,14 +74,20 @@ export function* matchTerm(pattern: Term, terms: readonly Term[], bound: Binding
   if (pattern.sign === 'minus') {
     if (first.sign !== 'minus') return;
     if (terms.length === 1) yield* matchExpr(pattern.expr, first.expr, bound);
-    else yield* matchExpr(pattern.expr, sum(...terms.map((term) => (term.sign === 'minus' ? term.expr : neg(term.expr)))), bound);
+    else
+      yield* matchExpr(
+        pattern.expr,
+        sum(...terms.map((term) => (term.sign === 'minus' ? term.expr : neg(term.expr)))),
+        bound,
+      );
     return;
   }
   if (pattern.expr.kind === 'letter') {
     yield* matchExpr(pattern.expr, sum(...terms.map(signed)), bound);
     return;
   }
-  if (terms.length === 1) yield* matchExpr(pattern.expr, first.sign === 'minus' ? withNegativeNumber(first.expr) : first.expr, bound);
+  if (terms.length === 1)
+    yield* matchExpr(pattern.expr, first.sign === 'minus' ? withNegativeNumber(first.expr) : first.expr, bound);
 }
 
 function signed(term: Term): Expr {
@@ -88,7 +98,8 @@ function signed(term: Term): Expr {
 function withNegativeNumber(expr: Expr): Expr {
   if (isNumber(expr)) return neg(expr);
   const [first, ...rest] = expr.kind === 'product' ? expr.factors : [whole(1), expr];
-  const factors = first && isNumber(first) ? [neg(first), ...rest] : [neg(whole(1)), ...(first ? [first] : []), ...rest];
+  const factors =
+    first && isNumber(first) ? [neg(first), ...rest] : [neg(whole(1)), ...(first ? [first] : []), ...rest];
   return { kind: 'product', factors, joins: factors.slice(1).map(() => 'implicit' as const), span: expr.span };
 }
 
@@ -98,7 +109,11 @@ function* matchSum(pattern: readonly Term[], expr: Expr, bound: Bindings): Gener
   for (const groups of groupings(expr.terms, pattern.length)) yield* matchTerms(pattern, groups, bound);
 }
 
-export function* matchTerms(pattern: readonly Term[], groups: readonly (readonly Term[])[], bound: Bindings): Generator<Bindings> {
+export function* matchTerms(
+  pattern: readonly Term[],
+  groups: readonly (readonly Term[])[],
+  bound: Bindings,
+): Generator<Bindings> {
   const [term, ...others] = pattern;
   const [group, ...rest] = groups;
   if (!term || !group) {
@@ -119,7 +134,11 @@ function* matchProduct(pattern: readonly Expr[], expr: Expr, bound: Bindings): G
   }
 }
 
-export function* matchFactors(pattern: readonly Expr[], groups: readonly (readonly Expr[])[], bound: Bindings): Generator<Bindings> {
+export function* matchFactors(
+  pattern: readonly Expr[],
+  groups: readonly (readonly Expr[])[],
+  bound: Bindings,
+): Generator<Bindings> {
   const [factor, ...others] = pattern;
   const [group, ...rest] = groups;
   if (!factor || !group) {
@@ -149,7 +168,9 @@ function groupings<T>(items: readonly T[], count: number): (readonly T[])[][] {
 
 export function permutations<T>(items: readonly T[]): T[][] {
   if (items.length <= 1) return [[...items]];
-  return items.flatMap((item, k) => permutations(items.filter((_, other) => other !== k)).map((rest) => [item, ...rest]));
+  return items.flatMap((item, k) =>
+    permutations(items.filter((_, other) => other !== k)).map((rest) => [item, ...rest]),
+  );
 }
 
 /** The pattern with its letters replaced by what they stand for. */
@@ -158,15 +179,26 @@ export function fill(pattern: Expr, bound: Bindings): Expr {
     case 'letter':
       return bound.get(pattern.name) ?? pattern;
     case 'sum':
-      return sum(...pattern.terms.map(({ sign, expr }) => (sign === 'minus' ? neg(fill(expr, bound)) : fill(expr, bound))));
+      return sum(
+        ...pattern.terms.map(({ sign, expr }) => (sign === 'minus' ? neg(fill(expr, bound)) : fill(expr, bound))),
+      );
     case 'product':
       return product(...pattern.factors.map((factor) => fill(factor, bound)));
     case 'quotient':
-      return { ...pattern, written: 'fraction', numerator: fill(pattern.numerator, bound), denominator: fill(pattern.denominator, bound) };
+      return {
+        ...pattern,
+        written: 'fraction',
+        numerator: fill(pattern.numerator, bound),
+        denominator: fill(pattern.denominator, bound),
+      };
     case 'power':
       return { ...pattern, base: fill(pattern.base, bound), exponent: fill(pattern.exponent, bound) };
     case 'root':
-      return { ...pattern, degree: pattern.degree && fill(pattern.degree, bound), radicand: fill(pattern.radicand, bound) };
+      return {
+        ...pattern,
+        degree: pattern.degree && fill(pattern.degree, bound),
+        radicand: fill(pattern.radicand, bound),
+      };
     case 'call':
       return { ...pattern, args: pattern.args.map((arg) => fill(arg, bound)) };
     case 'log':
@@ -175,4 +207,3 @@ export function fill(pattern: Expr, bound: Bindings): Expr {
       return pattern;
   }
 }
-

@@ -17,19 +17,29 @@ export function mayFollow(below: Line, above: Line, context: CheckContext): (can
   }
   if (below.kind === 'relation' && below.sign === '=') {
     const wanted = places.map((place) => sides(below, place));
-    return (candidate) => candidate.kind !== 'relation' || (candidate.sign === '=' && isProportional(places.map((place) => sides(candidate, place)), wanted));
+    return (candidate) =>
+      candidate.kind !== 'relation' ||
+      (candidate.sign === '=' &&
+        isProportional(
+          places.map((place) => sides(candidate, place)),
+          wanted,
+        ));
   }
   const [name] = letters;
   if (letters.length !== 1 || name === undefined) return () => true;
   const points = samplePoints.map((x) => withValue(places[0] as Place, name, real(x)));
   const truths = points.map((point) => roughTruth(below, point));
-  return (candidate) => points.every((point, k) => {
-    const found = roughTruth(candidate, point);
-    return found === null || truths[k] === null || found === truths[k];
-  });
+  return (candidate) =>
+    points.every((point, k) => {
+      const found = roughTruth(candidate, point);
+      return found === null || truths[k] === null || found === truths[k];
+    });
 }
 
-const samplePoints = [-97.3, -31.7, -12.1, -8.3, -6.7, -5.4, -4.6, -3.3, -2.7, -1.9, -1.2, -0.7, -0.3, 0.2, 0.4, 0.8, 1.3, 1.7, 2.4, 3.4, 4.3, 5.7, 6.2, 7.4, 8.8, 11.3, 14.9, 29.4, 88.1];
+const samplePoints = [
+  -97.3, -31.7, -12.1, -8.3, -6.7, -5.4, -4.6, -3.3, -2.7, -1.9, -1.2, -0.7, -0.3, 0.2, 0.4, 0.8, 1.3, 1.7, 2.4, 3.4,
+  4.3, 5.7, 6.2, 7.4, 8.8, 11.3, 14.9, 29.4, 88.1,
+];
 
 function withValue(place: Place, name: string, value: Complex): Place {
   return { ...place, letters: new Map(place.letters).set(name, value) };
@@ -67,7 +77,12 @@ export function valuesListed(line: Line): Listed | null {
 }
 
 export function listOf(line: Line): { name: string; values: readonly Expr[] } | null {
-  if (line.kind === 'relation' && line.sign === '=' && line.left.kind === 'letter' && lettersOf(line.right).length === 0) {
+  if (
+    line.kind === 'relation' &&
+    line.sign === '=' &&
+    line.left.kind === 'letter' &&
+    lettersOf(line.right).length === 0
+  ) {
     return { name: line.left.name, values: [line.right] };
   }
   if (line.kind === 'membership' && line.letter?.kind === 'letter' && line.set.kind === 'finite' && !line.negated) {

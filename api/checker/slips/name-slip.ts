@@ -22,7 +22,9 @@ export type Follows = (from: Line, to: Line) => boolean;
  */
 export function nameSlip(above: Line, below: Line, context: CheckContext, follows: Follows): Slip | null {
   const pair = expressionsOf(above, below);
-  return pair ? nameBetween(pair[0], pair[1], isWorkedOn(below), context) : nameBetweenStatements(above, below, context, follows);
+  return pair
+    ? nameBetween(pair[0], pair[1], isWorkedOn(below), context)
+    : nameBetweenStatements(above, below, context, follows);
 }
 
 /** What the two lines say of the same quantity; a line that goes on with an equals sign starts with it. */
@@ -94,7 +96,9 @@ function* candidatesOf(slip: Slip, above: Expr, below: Expr, context: CheckConte
 function withoutConstant(above: Expr, below: Expr): Expr {
   if (above.kind !== 'integral' || above.from || below.kind !== 'sum') return below;
   const known = lettersOf(above);
-  const kept = below.terms.filter(({ expr }) => !(expr.kind === 'letter' && /^[cCkK]$/.test(expr.name) && !known.includes(expr.name)));
+  const kept = below.terms.filter(
+    ({ expr }) => !(expr.kind === 'letter' && /^[cCkK]$/.test(expr.name) && !known.includes(expr.name)),
+  );
   return kept.length === below.terms.length || kept.length === 0 ? below : sum(...kept.map(signedTerm));
 }
 

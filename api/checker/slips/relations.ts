@@ -45,21 +45,29 @@ export function* splitFactors(expr: Expr): Generator<{ factor: Expr; rest: Expr 
   const factors = factorsOf(only && (isNegative || only.sign === 'plus') ? only.expr : expr);
   for (const [k, factor] of factors.entries()) {
     const rest = factors.length === 1 ? whole(1) : product(...without(factors, k));
-    yield { factor: isNegative && isNumber(factor) ? neg(factor) : factor, rest: isNegative && !isNumber(factor) ? neg(rest) : rest };
+    yield {
+      factor: isNegative && isNumber(factor) ? neg(factor) : factor,
+      rest: isNegative && !isNumber(factor) ? neg(rest) : rest,
+    };
     if (factors.length > 2) yield { factor: rest, rest: factor };
   }
-  if (expr.kind === 'quotient' && isNumber(expr.denominator)) yield { factor: quotient(whole(1), expr.denominator), rest: expr.numerator };
+  if (expr.kind === 'quotient' && isNumber(expr.denominator))
+    yield { factor: quotient(whole(1), expr.denominator), rest: expr.numerator };
 }
 
 /** a, b and c of a x^2 + b x + c = 0, found from values and checked; null for anything else. */
-export function quadraticOf(line: Relation, at: (expr: Expr, x: number) => number): { a: Expr; b: Expr; c: Expr; letter: string } | null {
+export function quadraticOf(
+  line: Relation,
+  at: (expr: Expr, x: number) => number,
+): { a: Expr; b: Expr; c: Expr; letter: string } | null {
   const [letter, ...others] = [...new Set([...lettersOf(line.left), ...lettersOf(line.right)])];
   if (!letter || others.length > 0 || line.sign !== '=') return null;
   const f = (x: number): number => at(line.left, x) - at(line.right, x);
   const c = f(0);
   const a = (f(1) + f(-1)) / 2 - c;
   const b = f(1) - a - c;
-  if (![a, b, c].every(Number.isSafeInteger) || a === 0 || f(3) !== 9 * a + 3 * b + c || f(-2) !== 4 * a - 2 * b + c) return null;
+  if (![a, b, c].every(Number.isSafeInteger) || a === 0 || f(3) !== 9 * a + 3 * b + c || f(-2) !== 4 * a - 2 * b + c)
+    return null;
   const toExpr = (value: number): Expr => fraction({ num: BigInt(value), den: 1n });
   return { a: toExpr(a), b: toExpr(b), c: toExpr(c), letter };
 }
@@ -67,7 +75,9 @@ export function quadraticOf(line: Relation, at: (expr: Expr, x: number) => numbe
 /** Terms that several sides share as a factor. */
 export function commonFactors(left: Expr, right: Expr, same: (a: Expr, b: Expr) => boolean): Expr[] {
   const inRight = factorsOfSide(right);
-  return factorsOfSide(left).filter((factor) => lettersOf(factor).length > 0 && (isZeroSide(right) || inRight.some((other) => same(factor, other))));
+  return factorsOfSide(left).filter(
+    (factor) => lettersOf(factor).length > 0 && (isZeroSide(right) || inRight.some((other) => same(factor, other))),
+  );
 }
 
 function isZeroSide(expr: Expr): boolean {

@@ -46,7 +46,11 @@ function* amongTerms(pattern: SumExpr, part: SumExpr): Generator<Instance> {
     const place = Math.min(...picked);
     for (const bound of matchTerms(pattern.terms, groups, new Map())) {
       const rebuild = (replaced: Expr): Expr =>
-        sum(...terms.flatMap((term, k) => (k === place ? [replaced] : picked.includes(k) ? [] : [term.sign === 'minus' ? neg(term.expr) : term.expr])));
+        sum(
+          ...terms.flatMap((term, k) =>
+            k === place ? [replaced] : picked.includes(k) ? [] : [term.sign === 'minus' ? neg(term.expr) : term.expr],
+          ),
+        );
       yield { bound, rebuild };
     }
   }
@@ -57,8 +61,13 @@ function* amongFactors(pattern: readonly Expr[], part: Expr): Generator<Instance
   if (factors.length > mostTerms || factors.length <= pattern.length) return;
   for (const picked of tuples(factors.length, pattern.length)) {
     const place = Math.min(...picked);
-    for (const bound of matchFactors(pattern, picked.map((k) => [factors[k] as Expr]), new Map())) {
-      const rebuild = (replaced: Expr): Expr => product(...factors.flatMap((f, k) => (k === place ? [replaced] : picked.includes(k) ? [] : [f])));
+    for (const bound of matchFactors(
+      pattern,
+      picked.map((k) => [factors[k] as Expr]),
+      new Map(),
+    )) {
+      const rebuild = (replaced: Expr): Expr =>
+        product(...factors.flatMap((f, k) => (k === place ? [replaced] : picked.includes(k) ? [] : [f])));
       yield { bound, rebuild };
     }
   }
@@ -68,7 +77,11 @@ function* amongFactors(pattern: readonly Expr[], part: Expr): Generator<Instance
 function tuples(count: number, size: number): number[][] {
   if (size === 0) return [[]];
   const shorter = tuples(count, size - 1);
-  return shorter.flatMap((picked) => Array.from({ length: count }, (_, k) => k).filter((k) => !picked.includes(k)).map((k) => [...picked, k]));
+  return shorter.flatMap((picked) =>
+    Array.from({ length: count }, (_, k) => k)
+      .filter((k) => !picked.includes(k))
+      .map((k) => [...picked, k]),
+  );
 }
 
 /** The whole expression under a rule used once, at any of its parts. */

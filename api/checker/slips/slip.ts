@@ -28,7 +28,10 @@ export const memory = 'common practice, from memory';
 type Parts = Partial<Pick<Slip, 'rank' | 'rewrites' | 'lines' | 'whole'>>;
 
 export function slip(name: string, kind: SlipKind, source: string, parts: Parts): Slip {
-  const id = name.toLowerCase().replace(/[^a-z0-9]+/g, '-').replace(/^-|-$/g, '');
+  const id = name
+    .toLowerCase()
+    .replace(/[^a-z0-9]+/g, '-')
+    .replace(/^-|-$/g, '');
   return { id, name, kind, source, rank: 5, ...parts };
 }
 

@@ -34,7 +34,9 @@ type Conditions = readonly Line[];
 function equationIn(above: Line): { equation: Relation; beside: Conditions } | null {
   if (above.kind === 'relation') return { equation: above, beside: [] };
   if (above.kind !== 'all') return null;
-  const [equation, ...more] = above.parts.filter((part): part is Relation => part.kind === 'relation' && part.sign === '=');
+  const [equation, ...more] = above.parts.filter(
+    (part): part is Relation => part.kind === 'relation' && part.sign === '=',
+  );
   return equation && more.length === 0 ? { equation, beside: above.parts.filter((part) => part !== equation) } : null;
 }
 
@@ -59,7 +61,9 @@ function divided(side: Expr, by: Expr): Expr {
   if (isZero(side)) return side;
   const [only] = side.kind === 'sum' && side.terms.length === 1 ? side.terms : [];
   const factors = [...factorsOf(only ? only.expr : side)];
-  const place = factors.findIndex((factor) => sameExpr(factor, by) || (factor.kind === 'power' && sameExpr(factor.base, by)));
+  const place = factors.findIndex(
+    (factor) => sameExpr(factor, by) || (factor.kind === 'power' && sameExpr(factor.base, by)),
+  );
   const found = factors[place];
   if (!found) return quotient(side, by);
   const left = found.kind === 'power' && !sameExpr(found, by) ? power(found.base, lowered(found.exponent)) : whole(1);
@@ -68,7 +72,9 @@ function divided(side: Expr, by: Expr): Expr {
 }
 
 function lowered(exponent: Expr): Expr {
-  return exponent.kind === 'number' && exponent.denominator === 1n ? whole(exponent.numerator - 1n) : sum(exponent, neg(whole(1)));
+  return exponent.kind === 'number' && exponent.denominator === 1n
+    ? whole(exponent.numerator - 1n)
+    : sum(exponent, neg(whole(1)));
 }
 
 function isFunction(expr: Expr): boolean {
@@ -78,7 +84,8 @@ function isFunction(expr: Expr): boolean {
 /** x^2 = k read as x = root of k; also for even powers and brackets. */
 function* positiveRoot(above: Line): Generator<Line> {
   for (const { left, sign, right } of bothWays(above)) {
-    if (sign === '=' && left.kind === 'power' && left.exponent.kind === 'number' && left.exponent.numerator === 2n) yield relation(left.base, '=', root(right));
+    if (sign === '=' && left.kind === 'power' && left.exponent.kind === 'number' && left.exponent.numerator === 2n)
+      yield relation(left.base, '=', root(right));
   }
 }
 
@@ -91,7 +98,9 @@ function* signsOfFactors(above: Line): Generator<Line> {
   const roots = factors.map((factor) => rootOfLinear(factor.kind === 'power' ? factor.base : factor, name));
   if (roots.length < 2 || roots.includes(null)) return;
   for (let choice = (1 << roots.length) - 1; choice > 0; choice -= 1) {
-    yield any(roots.map((value, k) => relation(letter(name), '=', (choice >> k) & 1 ? neg(value as Expr) : (value as Expr))));
+    yield any(
+      roots.map((value, k) => relation(letter(name), '=', (choice >> k) & 1 ? neg(value as Expr) : (value as Expr))),
+    );
   }
 }
 
@@ -124,9 +133,12 @@ function* squared(above: Line): Generator<Line> {
 function* cleared(above: Line): Generator<Line> {
   if (above.kind !== 'relation' || above.sign !== '=') return;
   const { left, right } = above;
-  const parts = (side: Expr): readonly [Expr, Expr] => (side.kind === 'quotient' ? [side.numerator, side.denominator] : [side, whole(1)]);
+  const parts = (side: Expr): readonly [Expr, Expr] =>
+    side.kind === 'quotient' ? [side.numerator, side.denominator] : [side, whole(1)];
   const [[top, bottom], [otherTop, otherBottom]] = [parts(left), parts(right)];
-  yield sameExpr(bottom, otherBottom) ? relation(top, '=', otherTop) : relation(product(top, otherBottom), '=', product(otherTop, bottom));
+  yield sameExpr(bottom, otherBottom)
+    ? relation(top, '=', otherTop)
+    : relation(product(top, otherBottom), '=', product(otherTop, bottom));
 }
 
 /** Logarithms joined and taken off, whatever sign their arguments have. */
@@ -142,7 +154,8 @@ function joined(side: Expr): Expr | null {
   for (const term of signedTerms(side)) {
     const isMinus = term.kind === 'sum';
     const inner = term.kind === 'sum' ? (term.terms[0]?.expr ?? term) : term;
-    const argument = inner.kind === 'log' ? inner.argument : inner.kind === 'call' && inner.name === 'ln' ? inner.args[0] : null;
+    const argument =
+      inner.kind === 'log' ? inner.argument : inner.kind === 'call' && inner.name === 'ln' ? inner.args[0] : null;
     if (!argument) return null;
     (isMinus ? under : over).push(argument);
   }
@@ -150,10 +163,26 @@ function joined(side: Expr): Expr | null {
 }
 
 export const solutionSlips: readonly Slip[] = [
-  slip('the zero-product rule was used with a right side that is not zero', 'solutions', matz, { rank: 7, lines: factorsEqual }),
-  slip('both sides were divided by the unknown and a root was lost', 'solutions', `${memory}; division by zero family: Dawkins, Common Math Errors: Algebra Errors`, { rank: 7, lines: onCommonFactor((factor) => factor.kind === 'letter') }),
-  slip('both sides were divided by a function that can be zero', 'solutions', memory, { rank: 7, lines: onCommonFactor(isFunction) }),
-  slip('both sides were divided by an expression that can be zero', 'solutions', 'Dawkins, Common Math Errors: Algebra Errors', { rank: 6, lines: onCommonFactor((factor) => factor.kind !== 'letter' && !isFunction(factor)) }),
+  slip('the zero-product rule was used with a right side that is not zero', 'solutions', matz, {
+    rank: 7,
+    lines: factorsEqual,
+  }),
+  slip(
+    'both sides were divided by the unknown and a root was lost',
+    'solutions',
+    `${memory}; division by zero family: Dawkins, Common Math Errors: Algebra Errors`,
+    { rank: 7, lines: onCommonFactor((factor) => factor.kind === 'letter') },
+  ),
+  slip('both sides were divided by a function that can be zero', 'solutions', memory, {
+    rank: 7,
+    lines: onCommonFactor(isFunction),
+  }),
+  slip(
+    'both sides were divided by an expression that can be zero',
+    'solutions',
+    'Dawkins, Common Math Errors: Algebra Errors',
+    { rank: 6, lines: onCommonFactor((factor) => factor.kind !== 'letter' && !isFunction(factor)) },
+  ),
   slip('only the positive root was taken', 'solutions', memory, { rank: 7, lines: positiveRoot }),
   slip('roots were read with the signs of the factors', 'solutions', memory, { rank: 7, lines: signsOfFactors }),
   slip('only the root part was divided in the quadratic formula', 'solutions', memory, {
@@ -174,10 +203,21 @@ export const solutionSlips: readonly Slip[] = [
     rank: 6.5,
     lines: onQuadratics((a, b, c) => {
       const part = root(sum(power(b, whole(2)), product(whole(4), a, c)));
-      return [quotient(sum(neg(b), part), product(whole(2), a)), quotient(sum(neg(b), neg(part)), product(whole(2), a))];
+      return [
+        quotient(sum(neg(b), part), product(whole(2), a)),
+        quotient(sum(neg(b), neg(part)), product(whole(2), a)),
+      ];
     }),
   }),
   slip('a root that squaring brought in was kept', 'solutions', openstaxOther, { rank: 6, lines: squared }),
-  slip('a root at which a denominator is zero was kept', 'solutions', `${openstaxOther} (Example 11 family)`, { rank: 6, lines: cleared }),
-  slip('a root outside the domain of a logarithm was kept', 'solutions', 'OpenStax Algebra and Trigonometry 2e, m49366 Exponential and Logarithmic Equations, Example 4', { rank: 6, lines: logsRemoved }),
+  slip('a root at which a denominator is zero was kept', 'solutions', `${openstaxOther} (Example 11 family)`, {
+    rank: 6,
+    lines: cleared,
+  }),
+  slip(
+    'a root outside the domain of a logarithm was kept',
+    'solutions',
+    'OpenStax Algebra and Trigonometry 2e, m49366 Exponential and Logarithmic Equations, Example 4',
+    { rank: 6, lines: logsRemoved },
+  ),
 ];

@@ -16,7 +16,8 @@ function* wrongPairs(above: Expr, below: Expr): Generator<Expr> {
   if (below.kind !== 'product') return;
   const [name, ...others] = lettersOf(above);
   if (!name || others.length > 0) return;
-  const at = (x: number): number => estimate(above, { letters: new Map([[name, real(x)]]), definitions: noDefinitions }).re;
+  const at = (x: number): number =>
+    estimate(above, { letters: new Map([[name, real(x)]]), definitions: noDefinitions }).re;
   const [c, one, two, three] = [at(0), at(1), at(2), at(3)];
   const lead = (two - 2 * one + c) / 2;
   const isQuadratic = lead === 1 && three - 3 * two + 3 * one - c === 0;
@@ -30,8 +31,12 @@ function* wrongPairs(above: Expr, below: Expr): Generator<Expr> {
 /** x^2 + px + qx + c with pq = c or -c, where p + q is not the middle coefficient. */
 function* wrongSplits(above: Expr, below: Expr): Generator<Expr> {
   if (below.kind !== 'sum' || above.kind !== 'sum') return;
-  const kept = above.terms.filter((term) => below.terms.some((other) => other.sign === term.sign && sameExpr(other.expr, term.expr)));
-  const rest = below.terms.filter((term) => !above.terms.some((other) => other.sign === term.sign && sameExpr(other.expr, term.expr)));
+  const kept = above.terms.filter((term) =>
+    below.terms.some((other) => other.sign === term.sign && sameExpr(other.expr, term.expr)),
+  );
+  const rest = below.terms.filter(
+    (term) => !above.terms.some((other) => other.sign === term.sign && sameExpr(other.expr, term.expr)),
+  );
   if (kept.length === above.terms.length - 1 && rest.length === 2) yield below;
 }
 
@@ -87,37 +92,70 @@ function decimalsIn(expr: Expr): NumberExpr[] {
   return childrenOf(expr).flatMap(decimalsIn);
 }
 
-const withoutBrackets = [rule('-(a+b)', '-a+b'), rule('-(a-b)', '-a-b'), rule('a(b+c)', 'ab+c'), rule('a(b-c)', 'ab-c')];
+const withoutBrackets = [
+  rule('-(a+b)', '-a+b'),
+  rule('-(a-b)', '-a-b'),
+  rule('a(b+c)', 'ab+c'),
+  rule('a(b-c)', 'ab-c'),
+];
 
 export const wholeSlips: readonly Slip[] = [
-  ruled('a sum of squares was factorised like a difference', 'brackets', memory, ['a^2+b^2 -> (a+b)(a-b)', 'a^2+k -> (a+\\sqrt{k})(a-\\sqrt{k})'], 6),
-  ruled('the square was completed without compensating', 'brackets', memory, ['a^2+ka -> (a+\\frac{k}{2})^2', 'a^2-ka -> (a-\\frac{k}{2})^2'], 6),
+  ruled(
+    'a sum of squares was factorised like a difference',
+    'brackets',
+    memory,
+    ['a^2+b^2 -> (a+b)(a-b)', 'a^2+k -> (a+\\sqrt{k})(a-\\sqrt{k})'],
+    6,
+  ),
+  ruled(
+    'the square was completed without compensating',
+    'brackets',
+    memory,
+    ['a^2+ka -> (a+\\frac{k}{2})^2', 'a^2-ka -> (a-\\frac{k}{2})^2'],
+    6,
+  ),
   slip('the factor pair had the right product and the wrong sum', 'brackets', memory, { rank: 6, whole: wrongPairs }),
   slip('the middle term was split with the wrong sum', 'sign', memory, { rank: 4, whole: wrongSplits }),
-  slip('a root was given both signs', 'powers-and-roots', 'Portland State University, Common Errors in Algebra and Calculus', {
-    rank: 8,
-    *whole(above, below) {
-      const [only] = below.kind === 'sum' && below.terms.length === 1 ? below.terms : [];
-      if (only?.sign === 'plusminus' && hasRoot(above)) yield below;
+  slip(
+    'a root was given both signs',
+    'powers-and-roots',
+    'Portland State University, Common Errors in Algebra and Calculus',
+    {
+      rank: 8,
+      *whole(above, below) {
+        const [only] = below.kind === 'sum' && below.terms.length === 1 ? below.terms : [];
+        if (only?.sign === 'plusminus' && hasRoot(above)) yield below;
+      },
     },
-  }),
+  ),
   slip('a rounded value was carried on', 'copying', memory, { rank: 6, whole: roundings }),
-  slip('brackets were lost and the work went on without them', 'brackets', 'Schechter, The Most Common Errors in Undergraduate Mathematics (loss of invisible parentheses)', {
-    rank: 3,
-    *whole(above) {
-      for (const rewrite of withoutBrackets) yield* everywhere(above, rewrite);
+  slip(
+    'brackets were lost and the work went on without them',
+    'brackets',
+    'Schechter, The Most Common Errors in Undergraduate Mathematics (loss of invisible parentheses)',
+    {
+      rank: 3,
+      *whole(above) {
+        for (const rewrite of withoutBrackets) yield* everywhere(above, rewrite);
+      },
     },
-  }),
-  slip('a number was copied wrongly from one line to the next', 'copying', 'Sleeman 1984, Cognitive Science 8:387-412 (clerical errors class seen in abstract)', {
-    rank: 1,
-    *whole(above, below) {
-      const span = above.span;
-      if (isMiscopied({ kind: 'expression', expr: above, span }, { kind: 'expression', expr: below, span })) yield below;
+  ),
+  slip(
+    'a number was copied wrongly from one line to the next',
+    'copying',
+    'Sleeman 1984, Cognitive Science 8:387-412 (clerical errors class seen in abstract)',
+    {
+      rank: 1,
+      *whole(above, below) {
+        const span = above.span;
+        if (isMiscopied({ kind: 'expression', expr: above, span }, { kind: 'expression', expr: below, span }))
+          yield below;
+      },
+      *lines(above, below) {
+        if (isMiscopied(above, below)) yield below;
+      },
     },
-    *lines(above, below) {
-      if (isMiscopied(above, below)) yield below;
-    },
-  }),
+  ),
 ];
 
 function hasRoot(expr: Expr): boolean {

@@ -1,12 +1,16 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { childrenOf } from '../../../shared/maths/walk.ts';
+import { childrenOf, countNodes } from '../../../shared/maths/walk.ts';
 import { askNerdamer } from './ask-nerdamer.ts';
 import { fromNerdamer, toNerdamer } from './nerdamer-text.ts';
 
+/** With more letters or terms it takes longer than an answer is worth. */
+const mostNodes = 24;
+
 /** What an outside library would make of an expression: a guess, to be confirmed by the checker before it is shown. */
 export function suggestForm(expr: Expr, want: 'expand' | 'factor'): Expr | null {
-  const asked = isRational(expr) ? toNerdamer(expr) : null;
+  const isSmall = lettersOf(expr).length === 1 && countNodes(expr) <= mostNodes && isRational(expr);
+  const asked = isSmall ? toNerdamer(expr) : null;
   const answer = asked && askNerdamer(`${want}(${asked.text})`);
   return asked && answer ? fromNerdamer(answer, asked.names) : null;
 }
@@ -26,23 +30,36 @@ function isRational(expr: Expr): boolean {
 
 /** Only integrals that the library is known to end on: the others can keep it busy for minutes. */
 function hasKnownShape(integrand: Expr, by: string): boolean {
-  const factors = (integrand.kind === 'product' ? integrand.factors : [integrand]).filter((factor) => lettersOf(factor).includes(by));
+  const factors = (integrand.kind === 'product' ? integrand.factors : [integrand]).filter((factor) =>
+    lettersOf(factor).includes(by),
+  );
   const functions = factors.filter((factor) => !isPower(factor));
   return factors.length <= 2 && functions.length === 1 && functions.every(isFunctionOfLinear);
 }
 
 function isPower(factor: Expr): boolean {
   if (factor.kind === 'letter') return true;
-  return factor.kind === 'power' && factor.base.kind === 'letter' && factor.exponent.kind === 'number' && factor.exponent.numerator <= 3n;
+  return (
+    factor.kind === 'power' &&
+    factor.base.kind === 'letter' &&
+    factor.exponent.kind === 'number' &&
+    factor.exponent.numerator <= 3n
+  );
 }
 
 function isFunctionOfLinear(factor: Expr): boolean {
-  if (factor.kind === 'power') return factor.base.kind === 'constant' && factor.base.name === 'e' && isLinear(factor.exponent);
+  if (factor.kind === 'power')
+    return factor.base.kind === 'constant' && factor.base.name === 'e' && isLinear(factor.exponent);
   return factor.kind === 'call' && ['sin', 'cos', 'exp', 'ln'].includes(factor.name) && factor.args.every(isLinear);
 }
 
 function isLinear(expr: Expr): boolean {
   if (expr.kind === 'letter' || expr.kind === 'number') return true;
   if (expr.kind === 'sum') return expr.terms.every((term) => isLinear(term.expr));
-  return expr.kind === 'product' && expr.factors.length === 2 && expr.factors[0]?.kind === 'number' && expr.factors[1]?.kind === 'letter';
+  return (
+    expr.kind === 'product' &&
+    expr.factors.length === 2 &&
+    expr.factors[0]?.kind === 'number' &&
+    expr.factors[1]?.kind === 'letter'
+  );
 }

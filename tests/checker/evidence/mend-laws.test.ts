@@ -12,13 +12,25 @@ const small = fc.integer({ min: 2, max: 9 });
 const name = fc.constantFrom('x', 'y', 't', 'n');
 
 const rightLines = fc.oneof(
-  fc.tuple(name, small, small, small).map(([x, a, b, c]) => [`${a}(${b}${x}+${c})-${b}${x}`, `${a * b}${x}+${a * c}-${b}${x}`, `${a * b - b}${x}+${a * c}`]),
+  fc
+    .tuple(name, small, small, small)
+    .map(([x, a, b, c]) => [
+      `${a}(${b}${x}+${c})-${b}${x}`,
+      `${a * b}${x}+${a * c}-${b}${x}`,
+      `${a * b - b}${x}+${a * c}`,
+    ]),
   fc.tuple(name, small, small).map(([x, a, b]) => [`(${x}+${a})(${x}-${b})`, `${x}^2-${b}${x}+${a}${x}-${a * b}`]),
-  fc.tuple(name, small, small, small).map(([x, a, b, c]) => [`${a}${x}+${b}=${c}`, `${a}${x}=${c - b}`, `${x}=\\frac{${c - b}}{${a}}`]),
-  fc.tuple(name, small, small).map(([x, a, b]) => [`(${x}-${a})(${x}-${b + 8})=0`, `${x}=${a}\\text{ or }${x}=${b + 8}`]),
+  fc
+    .tuple(name, small, small, small)
+    .map(([x, a, b, c]) => [`${a}${x}+${b}=${c}`, `${a}${x}=${c - b}`, `${x}=\\frac{${c - b}}{${a}}`]),
+  fc
+    .tuple(name, small, small)
+    .map(([x, a, b]) => [`(${x}-${a})(${x}-${b + 8})=0`, `${x}=${a}\\text{ or }${x}=${b + 8}`]),
   fc.tuple(name, small, small).map(([x, a, b]) => [`-${a}${x}<${a * b}`, `${x}>-${b}`]),
   fc.tuple(name, small, small).map(([x, a, b]) => [`\\frac{d}{d${x}}(${a}${x}^3+${b}${x})`, `${3 * a}${x}^2+${b}`]),
-  fc.tuple(name, small, small).map(([x, a, b]) => [`\\frac{${a}}{${x}}+\\frac{${b}}{${x}}`, `\\frac{${a}+${b}}{${x}}`, `\\frac{${a + b}}{${x}}`]),
+  fc
+    .tuple(name, small, small)
+    .map(([x, a, b]) => [`\\frac{${a}}{${x}}+\\frac{${b}}{${x}}`, `\\frac{${a}+${b}}{${x}}`, `\\frac{${a + b}}{${x}}`]),
 );
 
 /** Changes the digit, sign or relation that stands at some place of a line, where there is one. */

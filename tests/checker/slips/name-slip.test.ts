@@ -49,10 +49,12 @@ describe('naming a slip', { timeout: 30_000 }, () => {
     ).toEqual([]);
   });
 
-  it('names it as well where the step is no fault by the rules', () => {
-    for (const { entry, before, wrong, slip } of document.cases)
-      if (noFault.has(entry)) expect(nameOf(before, wrong)).toBe(slip);
-  });
+  it.each(document.cases.filter(({ entry }) => noFault.has(entry)))(
+    '$entry: names it as well where the step is no fault by the rules',
+    ({ before, wrong, slip }) => {
+      expect(nameOf(before, wrong)).toBe(slip);
+    },
+  );
 
   it.each(otherCases)('names what happened from %s to %s', (above, below, begins) => {
     expect(slipOf(above, below)).toMatch(new RegExp(`^${begins}`));
