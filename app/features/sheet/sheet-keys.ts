@@ -2,6 +2,12 @@ import type { Editor } from '@tiptap/core';
 import { TextSelection } from '@tiptap/pm/state';
 import { copyAbove, deleteBlock, insertLine, insertWords, moveBlock, type Command } from './sheet-commands.ts';
 
+/** What the kind of node is told of its sheet. */
+export interface StepOptions {
+  /** The line that the first one goes on from. */
+  readonly above: string;
+}
+
 /** Runs a command on the editor; false where it has nothing to do. */
 export function run(editor: Editor, command: Command): boolean {
   const tr = editor.isEditable ? command(editor.state) : null;

@@ -5,12 +5,7 @@ import { StepView } from './step-view.tsx';
 import { blocksFromPaste } from './paste-steps.ts';
 import { insertBlocks, mendIds, nextLine } from './sheet-commands.ts';
 import { sheetDecorations } from './sheet-decorations.ts';
-import { run, sheetKeys } from './sheet-keys.ts';
-
-export interface StepOptions {
-  /** The line that the first one goes on from. */
-  readonly above: string;
-}
+import { run, sheetKeys, type StepOptions } from './sheet-keys.ts';
 
 /** One line of maths with its reason: an atom, whose field is drawn and run by its view. */
 export const StepNode = Node.create<StepOptions>({

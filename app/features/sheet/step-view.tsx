@@ -8,9 +8,8 @@ import { MathsReading } from '../../ui/maths-reading.tsx';
 import { MathsField, type MathsFieldHandle } from '../../ui/maths-field.tsx';
 import { pasteInto } from './paste-steps.ts';
 import { deleteBlock, enterLine, leaveLine, nextLine, stepAttributes, writeStep } from './sheet-commands.ts';
-import { pressKey, run } from './sheet-keys.ts';
+import { pressKey, run, type StepOptions } from './sheet-keys.ts';
 import { useLineFacts, useSheetStore, type LineFacts } from './sheet-store.ts';
-import type { StepOptions } from './step-node.ts';
 import { useSettled } from './use-settled.ts';
 
 const PLAIN: EdgeRow = {
