@@ -3,8 +3,16 @@ import type { EarlierRuling, ReadRound, ReadStep, ReadTask, ReadLine, ReadVerdic
 
 export type DisputeKind = 'undecided' | 'contested-finding' | 'contested-verdict' | 'contested-points';
 
-const reasonSchema = z.string().trim().min(1, 'Give the reason: everyone concerned will read it.').max(2000, 'A reason holds at most 2000 characters.');
-const wordsSchema = z.string().trim().min(1, 'Say what is contested, and why.').max(2000, 'This holds at most 2000 characters.');
+const reasonSchema = z
+  .string()
+  .trim()
+  .min(1, 'Give the reason: everyone concerned will read it.')
+  .max(2000, 'A reason holds at most 2000 characters.');
+const wordsSchema = z
+  .string()
+  .trim()
+  .min(1, 'Say what is contested, and why.')
+  .max(2000, 'This holds at most 2000 characters.');
 
 export const decisionSchema = z.enum(['holds', 'fails', 'presentation']);
 export type Decision = z.infer<typeof decisionSchema>;
@@ -19,14 +27,22 @@ export const rulingFormSchema = z.object({
 
 export const effectQuerySchema = z.object({
   decision: decisionSchema,
-  along: z.enum(['true', 'false']).default('false').transform((value) => value === 'true'),
+  along: z
+    .enum(['true', 'false'])
+    .default('false')
+    .transform((value) => value === 'true'),
 });
 
-export const questionSchema = z.object({ question: z.string().trim().min(1, 'Write the question.').max(2000, 'A question holds at most 2000 characters.') });
+export const questionSchema = z.object({
+  question: z.string().trim().min(1, 'Write the question.').max(2000, 'A question holds at most 2000 characters.'),
+});
 export const questionAnswerSchema = z.object({ answer: wordsSchema });
 
 /** A teacher's own verdict on a whole derivation: where the first fault is, or that there is none. */
-export const overruleSchema = z.object({ firstFault: z.number().int().min(1).max(400).nullable(), reason: reasonSchema });
+export const overruleSchema = z.object({
+  firstFault: z.number().int().min(1).max(400).nullable(),
+  reason: reasonSchema,
+});
 
 export const contestVerdictSchema = z.object({ step: z.number().int().min(1).max(400), words: wordsSchema });
 export const contestPointsSchema = z.object({ words: wordsSchema });

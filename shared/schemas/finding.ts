@@ -49,7 +49,14 @@ export const findingSchema = findingDraftSchema.superRefine((finding, context) =
   }
 });
 
-export const EMPTY_DRAFT: FindingDraft = { pick: null, markedSpan: null, slipKind: null, shouldBe: '', why: '', sureness: 0 };
+export const EMPTY_DRAFT: FindingDraft = {
+  pick: null,
+  markedSpan: null,
+  slipKind: null,
+  shouldBe: '',
+  why: '',
+  sureness: 0,
+};
 
 export const draftSaveSchema = z.object({ draft: findingDraftSchema, version: z.number().int().min(0) });
 

@@ -29,7 +29,12 @@ export interface OwnStanding {
   readonly change: number | null;
   readonly rounds: readonly { readonly number: number; readonly mean: number; readonly classMean: number | null }[];
   /** How often one was right, by how sure one was; `expected` is the share that honest sureness would give. */
-  readonly sureness: readonly { readonly sure: 'a-little' | 'half' | 'nearly' | 'certain'; readonly right: number; readonly of: number; readonly expected: number }[];
+  readonly sureness: readonly {
+    readonly sure: 'a-little' | 'half' | 'nearly' | 'certain';
+    readonly right: number;
+    readonly of: number;
+    readonly expected: number;
+  }[];
 }
 
 export interface StandingsAnswer {

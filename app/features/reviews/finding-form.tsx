@@ -1,15 +1,11 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { useState } from 'react';
-import { readsAs, wordReadError } from '../../../shared/maths/reads-as.ts';
 import { stakesOf } from '../../../shared/lib/scoring.ts';
-import { SLIP_KINDS, type FindingDraft } from '../../../shared/schemas/finding.ts';
+import type { FindingDraft } from '../../../shared/schemas/finding.ts';
 import type { ReviewAnswer } from '../../../shared/schemas/review.ts';
-import { SLIP_KIND_WORDS } from '../../lib/finding-words.ts';
 import { Button } from '../../ui/button.tsx';
-import { RadioGroup } from '../../ui/choice.tsx';
 import { HowSure, type SureOutcome } from '../../ui/how-sure.tsx';
 import { Maths } from '../../ui/maths.tsx';
-import { MathsField } from '../../ui/maths-field.tsx';
 import { Notice } from '../../ui/notice.tsx';
 import { problemWords } from '../../ui/states.tsx';
 import { TextArea } from '../../ui/text-field.tsx';
@@ -18,6 +14,7 @@ import type { DraftKeeper, DraftView } from './draft-keeper.ts';
 import { handInFinding, reviewQuery, takeBackFinding } from './reviews.queries.ts';
 import { SavedState } from './saved-state.tsx';
 import { SetAside } from './set-aside.tsx';
+import { StepFields } from './step-fields.tsx';
 
 export interface FindingFormProps {
   readonly review: ReviewAnswer;
@@ -133,61 +130,6 @@ function Picked({ draft, markedTex, canMark }: { draft: FindingDraft; markedTex:
       ) : canMark ? (
         'Mark the term where it goes wrong.'
       ) : null}
-    </>
-  );
-}
-
-function StepFields({ review, keeper, draft }: { review: ReviewAnswer; keeper: DraftKeeper; draft: FindingDraft }) {
-  return (
-    <>
-      <RadioGroup
-        label="Kind of slip"
-        value={draft.slipKind}
-        onChange={(slipKind) => keeper.edit({ slipKind })}
-        options={SLIP_KINDS.map((kind) => ({
-          value: kind,
-          label: SLIP_KIND_WORDS[kind].label,
-          hint: draft.slipKind === kind ? `such as ${SLIP_KIND_WORDS[kind].example}` : undefined,
-        }))}
-      />
-      <ShouldBe review={review} keeper={keeper} draft={draft} />
-    </>
-  );
-}
-
-/** Shows how the line reads and nothing else: no word on whether it follows. */
-function ShouldBe({ review, keeper, draft }: { review: ReviewAnswer; keeper: DraftKeeper; draft: FindingDraft }) {
-  const { decimal, numbers } = review.task.settings;
-  const label = `What line ${draft.pick} should have been`;
-  const reading = draft.shouldBe.trim() === '' ? null : readsAs(draft.shouldBe, { decimal, numbers, functions: [] });
-  return (
-    <div className="fld">
-      <span className="flabel" id="should-be-label">
-        {label}
-      </span>
-      <MathsField
-        value={draft.shouldBe}
-        onChange={(shouldBe) => keeper.edit({ shouldBe })}
-        label={label}
-        describedBy="should-be-reads"
-        decimal={decimal}
-        keys
-      />
-      <p className="msg" id="should-be-reads">
-        {reading ? <ReadsAs reading={reading} /> : null}
-      </p>
-    </div>
-  );
-}
-
-function ReadsAs({ reading }: { reading: ReturnType<typeof readsAs> }) {
-  if (reading.kind === 'error') return <>{wordReadError(reading.error)}</>;
-  const tex = reading.kind === 'note' ? reading.tex : reading.kind === 'ask' ? reading.choices[0]?.tex : undefined;
-  if (tex === undefined)
-    return <span className="sr-only">reads as {reading.kind === 'silent' ? reading.words : ''}</span>;
-  return (
-    <>
-      reads as <Maths tex={tex} />
     </>
   );
 }
