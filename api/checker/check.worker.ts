@@ -19,6 +19,7 @@ const warmUp: readonly (readonly string[])[] = [
   ['2(x+3)^2', '2x^2+12x+18', '\\sin^2 x+\\cos^2 x'],
   ['x^2-5x+6=0', '(x-2)(x-3)=0', 'x=2\\text{ or }x=3'],
   ['\\sqrt{x+6}=x', 'x+6=x^2', 'x=3'],
+  ['3(x-2)-x', '3x-2-x', '2x-2'],
   ['\\frac{x+9}{x+6}', '\\frac{3}{2}'],
 ];
 for (const lines of warmUp) checkDerivation({ lines, assume: [], settings: {} });

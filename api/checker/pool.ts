@@ -54,10 +54,12 @@ export function createCheckPool(options: CheckPoolOptions = {}): CheckPool {
       const run = await runOnce(piscina, { input, timedOut: [...timedOut] }, { stepMs, deadline });
       if (run.kind === 'done') return { ...run.answer.verdict, ms: run.answer.ms };
       options.onEnded?.({ step: run.step, reason: run.kind, input });
-      if (performance.now() > deadline) {
+      const explaining = input.lines.length;
+      if (timedOut.includes(explaining) && performance.now() > deadline) return givenUp(input, derivationMs);
+      if (run.step === explaining) timedOut.push(explaining);
+      else if (performance.now() > deadline) {
         // No time is left for the rest: every step from here on stays open.
-        for (let step = run.step; step < input.lines.length; step += 1) timedOut.push(step);
-        if (timedOut.includes(0) || timedOut.length > input.lines.length) return givenUp(input, derivationMs);
+        for (let step = run.step; step <= explaining; step += 1) timedOut.push(step);
       } else if (run.kind === 'time' && !slow.has(run.step)) slow.add(run.step);
       else timedOut.push(run.step);
       if (run.step === 0) return givenUp(input, derivationMs);

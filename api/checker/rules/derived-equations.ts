@@ -22,6 +22,10 @@ export interface DerivedEquation {
 /** What an equation becomes by one of the operations that may gain solutions (rule 3). */
 export function deriveEquations(equation: CompareStatement): DerivedEquation[] {
   const terms = termsOf(differenceExpr(equation.left, equation.right));
+  // Without roots, bars and logarithms only the sides as they stand are worth raising.
+  if (!hasRootOrBar(equation.left) && !hasRootOrBar(equation.right)) {
+    return [...raisedEquations(equation, []), ...clearedEquation(terms), ...withoutLogarithms(terms)];
+  }
   return [...raisedEquations(equation, terms), ...clearedEquation(terms), ...withoutLogarithms(terms)];
 }
 

@@ -2,7 +2,7 @@ import type { CheckContext } from '../context.ts';
 import type { Evidence } from '../../../shared/schemas/verdict.ts';
 import { reduceFraction } from '../solving/fraction.ts';
 import { dividePolynomials, gcdPolynomials, squareFreePart } from '../solving/polynomial.ts';
-import { complement, difference, intersection, isEmptySet, type RealSet } from '../solving/real-set.ts';
+import { complement, difference, intersection, isEmptySet, isFiniteSet, type RealSet } from '../solving/real-set.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { solveDefined, solveStatement, type SolveEnv } from '../statements/solve.ts';
 import { comparesOf, type CompareStatement, type Statement } from '../statements/statement.ts';
@@ -14,6 +14,8 @@ export type Operation = NonNullable<Evidence['operation']>;
 
 /** What a step that gained solutions is explained by (rule 3), or null where no operation does. */
 export function explainGain(above: Statement, below: Statement, gained: RealSet, env: SolveEnv): Operation | null {
+  // The operations gain single values: a whole stretch comes from none of them.
+  if (!isFiniteSet(gained) && above.kind === 'compare' && equationFraction(above, env)) return null;
   const cases = above.kind === 'any' ? above.parts : [above];
   if (cases.length > 1) return explainByCases(cases, below, gained, env);
   if (above.kind !== 'compare' || above.sign !== '=') return explainParts(above, below, gained, env);
