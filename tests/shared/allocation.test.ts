@@ -42,7 +42,7 @@ function couplesOf(input: AllocationInput, share: number): fc.Arbitrary<Couple[]
   return fc.array(fc.tuple(person, person), { maxLength: Math.ceil(share * all.length) });
 }
 
-describe('allocate', () => {
+describe('allocate', { timeout: 60_000 }, () => {
   it('never deals one’s own, nor one derivation twice to a reviewer', () => {
     fc.assert(
       fc.property(classes, (input) => {

@@ -33,7 +33,7 @@ const lateCase = fc
     return { input, onTime, lateOnes, each };
   });
 
-describe('allocateLater', () => {
+describe('allocateLater', { timeout: 60_000 }, () => {
   it('gives each late derivation its reviews and each late author their share, leaving what was dealt alone', () => {
     fc.assert(
       fc.property(lateCase, ({ input, lateOnes, each }) => {
