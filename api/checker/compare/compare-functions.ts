@@ -1,5 +1,6 @@
 import type { CheckContext } from '../context.ts';
 import { isReal } from '../values/arithmetic.ts';
+import { usuallyWhole } from '../values/lower.ts';
 import type { KnownValue, Point } from '../values/value.ts';
 import { breakPointsOf } from './break-points.ts';
 import type { Comparison } from './comparison.ts';
@@ -33,7 +34,8 @@ export function compareFunctions(pair: Pair, context: CheckContext): Comparison 
     // A proof and a witness cannot both be right.
     if (isProved) return { kind: 'undecided', reason: 'not-settled' };
     const witness = witnessAt(pair, samples.apart.point, samples.apart.bits, context);
-    if (witness !== null && mayBeMeantReal(samples, region)) return { kind: 'undecided', reason: 'no-agreed-meaning' };
+    if (witness !== null && (mayBeMeantReal(samples, region) || mayBeMeantWhole(pair, samples.apart.point, context)))
+      return { kind: 'undecided', reason: 'no-agreed-meaning' };
     return witness === null ? { kind: 'undecided', reason: 'not-settled' } : { kind: 'different', witness };
   }
   return rule(pair, samples, region, isProved, context);
@@ -44,6 +46,25 @@ function mayBeMeantReal(samples: Samples, region: Region): boolean {
   if (region.context.numbers === 'real' || samples.counts.same < agreementsNeeded) return false;
   const point = samples.apart?.point ?? new Map<string, KnownValue>();
   return [...point].some(([name, value]) => !isReal(value) && !complexLetters.has(name.charAt(0)));
+}
+
+/** Apart only where n, m or k is no whole number, as in sin(x + 2 pi n). */
+function mayBeMeantWhole(pair: Pair, apart: Point, context: CheckContext): boolean {
+  const open = pair.names.filter(
+    (name) => usuallyWhole.has(name) && !pair.whole.has(name) && !isWholeValue(apart.get(name)),
+  );
+  if (open.length === 0) return false;
+  const whole = new Set([...pair.whole, ...open]);
+  const stricter = createPair(pair.nodes, pair.above, pair.below, whole, context.numbers === 'complex', pair.facts);
+  const region = createRegion(pair.names, whole, marksOf(pair), traitsOf(pair), context);
+  const samples = takeSamples(stricter, pointsOf(region, context.seed, mostPoints), context, {
+    agreements: agreementsAsked,
+  });
+  return samples.apart === null && samples.counts.same >= agreementsNeeded;
+}
+
+function isWholeValue(value: KnownValue | undefined): boolean {
+  return value?.kind === 'rational' && value.value.den === 1n;
 }
 
 const complexLetters: ReadonlySet<string> = new Set(['z', 'w', 'Z', 'W']);

@@ -102,6 +102,11 @@ function keyOf(node: GraphNode): string | number {
   }
 }
 
+/** (a^m)^n as one power for m > 0, where nothing is lost when a is zero. */
+function joinedExponent(m: number, n: number): number | null {
+  return m > 0 && n !== 0 && Math.abs(m * n) <= largestExponent ? m * n : null;
+}
+
 /** The power as a fraction where it has one and is short. */
 function foldedPower(value: Rational, exponent: number): Rational | null {
   if (exponent === 0 || (exponent < 0 && Q.isZero(value))) return null;
@@ -169,15 +174,8 @@ export function createGraphBuilder(onPush: () => void): GraphBuilder {
   function power(base: number, exponent: number): number {
     if (exponent === 1) return base;
     const inner = nodes[base];
-    // (a^m)^n for m > 0: nothing is lost where a is zero.
-    if (
-      inner?.op === 'power' &&
-      inner.exponent > 0 &&
-      exponent !== 0 &&
-      Math.abs(inner.exponent * exponent) <= largestExponent
-    ) {
-      return power(inner.args[0], inner.exponent * exponent);
-    }
+    const joined = inner?.op === 'power' ? joinedExponent(inner.exponent, exponent) : null;
+    if (inner?.op === 'power' && joined !== null) return power(inner.args[0], joined);
     const value = valueOf(base);
     const folded = value === null ? null : foldedPower(value, exponent);
     if (folded !== null) return number(folded);

@@ -27,10 +27,30 @@ describe('lines made to be hard', () => {
 
   it('are answered however deep they are', () => {
     const roots = nested((inner) => `\\sqrt{1+${inner}}`, 30);
-    expect(verdictOf(roots, nested((inner) => `\\sqrt{${inner}+1}`, 30))).toBe('equal');
-    expect(verdictOf(roots, nested((inner) => `\\sqrt{2+${inner}}`, 30))).toBe('different');
-    expect(verdictOf(nested((inner) => `(${inner})^2+1`, 25), '0')).not.toBe('equal');
-    expect(verdictOf(nested((inner) => `\\sin(${inner})`, 40), nested((inner) => `\\sin(${inner})`, 40))).toBe('equal');
+    expect(
+      verdictOf(
+        roots,
+        nested((inner) => `\\sqrt{${inner}+1}`, 30),
+      ),
+    ).toBe('equal');
+    expect(
+      verdictOf(
+        roots,
+        nested((inner) => `\\sqrt{2+${inner}}`, 30),
+      ),
+    ).toBe('different');
+    expect(
+      verdictOf(
+        nested((inner) => `(${inner})^2+1`, 25),
+        '0',
+      ),
+    ).not.toBe('equal');
+    expect(
+      verdictOf(
+        nested((inner) => `\\sin(${inner})`, 40),
+        nested((inner) => `\\sin(${inner})`, 40),
+      ),
+    ).toBe('equal');
   });
 
   it('show differences that are tiny beside the rest', () => {

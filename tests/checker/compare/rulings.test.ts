@@ -29,6 +29,28 @@ describe('roots and bars over the reals', () => {
   });
 });
 
+describe('functions of the school', () => {
+  it.each<[string, string, string, Setting]>([
+    [r`\sin(x+2\pi n)`, r`\sin x`, 'equal', { whole: ['n'] }],
+    [r`\sin(x+2\pi n)`, r`\sin x`, 'undecided no-agreed-meaning', {}],
+    [r`\sqrt{1-\sin^2x}`, r`\cos x`, 'different', {}],
+    [r`\sqrt{1-\sin^2x}`, r`|\cos x|`, 'equal', {}],
+    [r`\sqrt{x+2\sqrt{x-1}}`, r`1+\sqrt{x-1}`, 'equal', {}],
+    [r`2\arctan x`, r`\arctan\frac{2x}{1-x^2}`, 'different', {}],
+    [r`\arccos x`, r`\arcsin\sqrt{1-x^2}`, 'different', {}],
+    [r`\frac{|x|}{x}`, '1', 'different', {}],
+    [r`\frac{|x|}{x}`, '1', 'equal', { assume: ['x>0'] }],
+    ['2^x+2^x', '4^x', 'different', {}],
+    ['(2^x)^2', '4^x', 'equal', {}],
+    [r`(x^2)^a`, 'x^{2a}', 'equal', {}],
+    [r`\sum_{k=1}^{n}k^2`, r`\frac{n(n+1)(2n+1)}{6}`, 'equal', {}],
+    [r`\sum_{k=1}^{n}k^2`, r`\frac{n(n+1)(2n-1)}{6}`, 'different', {}],
+    [r`\sqrt[n]{x^n}`, 'x', 'different', { whole: ['n'] }],
+  ])('%s to %s: %s', (above, below, verdict, setting) => {
+    expect(verdictOf(above, below, setting)).toBe(verdict);
+  });
+});
+
 describe('numbers', () => {
   it.each<[string, string, string]>([
     [r`\frac{355}{113}`, r`\pi`, 'different'],
