@@ -2,7 +2,7 @@ import type { Expr } from '../../../shared/maths/expression.ts';
 import { ballBetween, ballFromRational, ballToNumber, isApart, type Ball } from '../numbers/ball.ts';
 import { compare, toNumber, type Rational } from '../numbers/rational.ts';
 import type { KnownValue } from '../values/value.ts';
-import { degree, gcdPolynomials, signAt, type Polynomial } from './polynomial.ts';
+import { degree, derivePolynomial, gcdPolynomials, scaledValueAt, signAt, type Polynomial } from './polynomial.ts';
 import { isolateRealRoots, type RootInterval } from './real-roots.ts';
 
 /** A point of the real line. */
@@ -46,8 +46,28 @@ export function enclose(a: RealNumber, bits: number): Ball {
   return ball;
 }
 
-/** Bisection on a grid of 2^-bits: one sign of the polynomial a bit. */
+const startBits = 56;
+
+/** Bisection to 56 bits, then Newton's steps, whose last is confirmed by the signs on both sides. */
 function encloseRoot(p: Polynomial, interval: RootInterval, bits: number): Ball {
+  if (bits <= startBits) return bisectRoot(p, interval, bits);
+  const start = bisectRoot(p, interval, startBits);
+  const slope = derivePolynomial(p);
+  const den = 1n << BigInt(bits);
+  let middle = start.mid << BigInt(bits - startBits);
+  for (let known = startBits / 2; known < bits * 2; known *= 2) {
+    const divisor = scaledValueAt(slope, { num: middle, den });
+    if (divisor === 0n) break;
+    middle -= scaledValueAt(p, { num: middle, den }) / divisor;
+  }
+  const [low, high] = [middle - 4n, middle + 4n].map((num) => ({ num, den })) as [Rational, Rational];
+  const isInside = compare(low, interval.low) > 0 && compare(high, interval.high) < 0;
+  if (isInside && signAt(p, low) * signAt(p, high) < 0) return { mid: middle, rad: 4n };
+  return bisectRoot(p, interval, bits);
+}
+
+/** Bisection on a grid of 2^-bits: one sign of the polynomial a bit. */
+function bisectRoot(p: Polynomial, interval: RootInterval, bits: number): Ball {
   let low = floorAt(interval.low, bits);
   let high = floorAt(interval.high, bits) + 1n;
   const den = 1n << BigInt(bits);
