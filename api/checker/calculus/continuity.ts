@@ -7,7 +7,7 @@ import { squareFreePart } from '../solving/polynomial.ts';
 import { isolateRealRoots } from '../solving/real-roots.ts';
 import { isKnown, isReal, toBall } from '../values/arithmetic.ts';
 import { evaluate, evaluatePrepared, prepare, type Prepared } from '../values/evaluate.ts';
-import { addExprs, divExprs, letterOf, mulExprs, numberOf, oneExpr, piExpr, powExprs, rationalExpr } from './build.ts';
+import { addExprs, divExprs, letterOf, mulExprs, numberOf, oneExpr, piExpr, powExprs, rationalExpr, rationalOf } from './build.ts';
 import { infinitySign } from './limit.ts';
 import { polynomialIn } from './integrand.ts';
 import { needsOf } from './needs.ts';
@@ -66,27 +66,33 @@ interface CutPoint {
 const farAway = 64;
 
 function cutPoints(expr: Expr, variable: string, low: Position, high: Position, context: CheckContext): CutPoint[] | null {
-  const candidates = candidatesOf(expr, variable, low, high, context);
-  if (!candidates) return null;
+  const needs = zerosOf(expr, variable, low, high, context);
+  if (!needs) return null;
+  const { candidates } = needs;
+  if (needs.areAll) return between(low, high, candidates);
   const reach = Math.max(farAway, ...[low.value, high.value, ...candidates.map(({ value }) => value)].filter(Number.isFinite).map((x) => 2 * Math.abs(x)));
   const graph = prepare(expr, context);
   const start = Number.isFinite(low.value) ? low.value : -reach;
   const end = Number.isFinite(high.value) ? high.value : reach;
   const trouble = unresolved(graph, variable, start, end, context, candidates.map(({ value }) => value));
   if (!trouble) return null;
-  const isFar = [low, high].map(({ value }) => Number.isFinite(value) || isCalm(expr, variable, value, reach, context));
-  if (isFar.includes(false)) return null;
+  if ([low, high].some(({ value }) => !Number.isFinite(value) && !isCalm(expr, variable, value, reach, context))) return null;
   const inner = candidates.filter(({ value }) => value > start && value < end);
   const width = (end - start) / 2 ** 6;
   const near = (x: number, [from, to]: readonly [number, number]): boolean => x >= from - 1e-9 * width && x <= to + 1e-9 * width;
   const covered = trouble.every((stretch) => inner.some(({ value }) => near(value, stretch)) || near(start, stretch) || near(end, stretch));
-  if (!covered) return null;
-  const gaps = inner.filter(({ value }) => trouble.some((stretch) => near(value, stretch)));
-  gaps.sort((a, b) => a.value - b.value);
+  return covered ? between(low, high, inner.filter(({ value }) => trouble.some((stretch) => near(value, stretch)))) : null;
+}
+
+/** Ends are approached as limits: for those at which nothing is amiss that is the value. */
+function between(low: Position, high: Position, candidates: readonly Candidate[]): CutPoint[] {
+  const isNear = (a: number, b: number): boolean => Math.abs(a - b) < 1e-9 * (1 + Math.abs(a));
+  const gaps = candidates.filter(({ value }) => value > low.value && value < high.value && !isNear(value, low.value) && !isNear(value, high.value));
+  const isGap = ({ value }: Position): boolean => !Number.isFinite(value) || candidates.some((candidate) => isNear(candidate.value, value));
   return [
-    { expr: low.expr, isGap: !Number.isFinite(low.value) || trouble.some((stretch) => near(start, stretch)) },
-    ...gaps.map(({ expr: at }) => ({ expr: at, isGap: true })),
-    { expr: high.expr, isGap: !Number.isFinite(high.value) || trouble.some((stretch) => near(end, stretch)) },
+    { expr: low.expr, isGap: isGap(low) },
+    ...[...gaps].sort((a, b) => a.value - b.value).map(({ expr: at }) => ({ expr: at, isGap: true })),
+    { expr: high.expr, isGap: isGap(high) },
   ];
 }
 
@@ -136,36 +142,45 @@ interface Candidate {
   readonly value: number;
 }
 
-/** The zeros of what the expression needs, where they can be found; null where some cannot. */
-function candidatesOf(expr: Expr, variable: string, low: Position, high: Position, context: CheckContext): Candidate[] | null {
-  const needs = needsOf(expr, variable);
-  if (!needs) return [];
-  const found: Candidate[] = [];
-  for (const need of needs) {
-    const roots = rootsOf(need.expr, variable, low, high, context);
-    if (!roots) return null;
-    for (const root of roots) if (!found.some(({ value }) => Math.abs(value - root.value) < 1e-9)) found.push(root);
-  }
-  return found;
+interface Zeros {
+  readonly candidates: readonly Candidate[];
+  /** Whether there are certainly no others. */
+  readonly areAll: boolean;
 }
 
-function rootsOf(need: Expr, variable: string, low: Position, high: Position, context: CheckContext): Candidate[] | null {
+/** The zeros of what the expression needs, where they can be found; null where some cannot. */
+function zerosOf(expr: Expr, variable: string, low: Position, high: Position, context: CheckContext): Zeros | null {
+  const needs = needsOf(expr, variable);
+  if (!needs) return { candidates: [], areAll: false };
+  const found: Candidate[] = [];
+  let areAll = true;
+  for (const need of needs) {
+    const zeros = rootsOf(need.expr, variable, low, high, context);
+    if (!zeros) return null;
+    areAll &&= zeros.areAll;
+    for (const root of zeros.candidates) if (!found.some(({ value }) => Math.abs(value - root.value) < 1e-9)) found.push(root);
+  }
+  return { candidates: found, areAll };
+}
+
+function rootsOf(need: Expr, variable: string, low: Position, high: Position, context: CheckContext): Zeros | null {
   if (need.kind === 'quotient' || need.kind === 'product') {
     const parts = (need.kind === 'quotient' ? [need.numerator, need.denominator] : need.factors).map((part) => rootsOf(part, variable, low, high, context));
-    return parts.includes(null) ? null : parts.flatMap((part) => part ?? []);
+    if (parts.includes(null)) return null;
+    return { candidates: parts.flatMap((part) => part?.candidates ?? []), areAll: parts.every((part) => part?.areAll) };
   }
+  if (need.kind === 'power' && rationalOf(need.exponent)) return rootsOf(need.base, variable, low, high, context);
   const coefs = polynomialIn(need, variable);
-  if (coefs?.length === 1) return [];
-  if (coefs?.length === 2) return linearRoot(coefs, context);
-  if (coefs?.length === 3) return quadraticRoots(coefs, context);
+  if (coefs?.length === 1) return { candidates: [], areAll: true };
+  if (coefs?.length === 2) return { candidates: linearRoot(coefs, context), areAll: true };
+  if (coefs?.length === 3) return { candidates: quadraticRoots(coefs, context), areAll: true };
   const fraction = toFraction(prepare(need, context), variable);
-  if (!fraction) return turningRoots(need, variable, low, high, context);
-  if (fraction.num.length < 2) return [];
+  if (!fraction) return { candidates: turningRoots(need, variable, low, high, context), areAll: false };
+  if (fraction.num.length < 2) return { candidates: [], areAll: true };
   const roots = isolateRealRoots(squareFreePart(fraction.num));
   const exact = roots.filter((root) => Q.equals(root.low, root.high)).map(({ low: at }) => ({ expr: rationalExpr(at), value: Q.toNumber(at) }));
-  const inside = roots.filter((root) => Q.toNumber(root.high) > low.value && Q.toNumber(root.low) < high.value && !Q.equals(root.low, root.high));
-  if (inside.length === 0) return exact;
-  return null;
+  const isOpen = roots.some((root) => Q.toNumber(root.high) > low.value && Q.toNumber(root.low) < high.value && !Q.equals(root.low, root.high));
+  return isOpen ? null : { candidates: exact, areAll: true };
 }
 
 function linearRoot([constant, slope]: readonly Expr[], context: CheckContext): Candidate[] {

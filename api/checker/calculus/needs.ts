@@ -23,7 +23,41 @@ export function needsOf(expr: Expr, letter: string): Need[] | null {
   }
   const own = ownNeed(expr, letter);
   if (own === undefined) return null;
-  return own === null ? inside : [...inside, own];
+  return own === null || isPositive(own.expr) ? inside : [...inside, own];
+}
+
+/** Above zero wherever it has a value, by its form alone. */
+function isPositive(expr: Expr): boolean {
+  switch (expr.kind) {
+    case 'number':
+      return expr.numerator > 0n;
+    case 'constant':
+      return expr.name === 'pi' || expr.name === 'e';
+    case 'sum':
+      return expr.terms.every(({ sign, expr: term }) => sign === 'plus' && isNotNegative(term)) && expr.terms.some(({ expr: term }) => isPositive(term));
+    case 'product':
+      return expr.factors.every(isPositive);
+    case 'quotient':
+      return isPositive(expr.numerator) && isPositive(expr.denominator);
+    case 'power':
+      return isPositive(expr.base);
+    case 'root':
+      return isPositive(expr.radicand);
+    case 'call':
+      if (expr.name === 'abs') return expr.args[0] !== undefined && isPositive(expr.args[0]);
+      return expr.name === 'exp' || expr.name === 'cosh';
+    default:
+      return false;
+  }
+}
+
+function isNotNegative(expr: Expr): boolean {
+  if (isPositive(expr)) return true;
+  if (expr.kind === 'product') return expr.factors.every(isNotNegative);
+  if (expr.kind === 'call') return expr.name === 'abs';
+  if (expr.kind === 'root') return expr.degree === null;
+  const times = expr.kind === 'power' ? rationalOf(expr.exponent) : null;
+  return times !== null && times.den === 1n && times.num > 0n && times.num % 2n === 0n;
 }
 
 /** null for none, undefined where it cannot be said. */

@@ -7,10 +7,10 @@ import { evaluate, prepare } from '../values/evaluate.ts';
 import type { Graph } from '../values/graph.ts';
 import { taylorOf } from './taylor.ts';
 
-export const quadratureBits = 144;
-const order = 24;
-/** Errors that are asked for on each piece: 2^-(bits - 54). */
-const tolerance = 1n << 54n;
+export const quadratureBits = 112;
+const order = 20;
+/** The error that is asked for on each piece: 2^-74. */
+const tolerance = 1n << 38n;
 const deepest = 14;
 const mostPieces = 160;
 

@@ -1,5 +1,5 @@
 import type { CheckContext } from '../context.ts';
-import { addBalls, ballFromRational, ballSign, divBalls, mulBalls, negateBall, sqrtBall, type Ball } from '../numbers/ball.ts';
+import { addBalls, ballSign, divBalls, magnitude, negateBall, sqrtBall, type Ball } from '../numbers/ball.ts';
 import { expBall, sinCosBall } from '../numbers/elementary.ts';
 import * as Q from '../numbers/rational.ts';
 import { isKnown, isReal, toBall } from '../values/arithmetic.ts';
@@ -68,19 +68,29 @@ function jetOf(node: GraphNode, head: Ball, jets: readonly (Ball[] | null)[], se
 }
 
 function mulJets(a: readonly Ball[], b: readonly Ball[], bits: number): Ball[] {
-  return a.map((_, k) => {
-    let total = nothing;
-    for (let j = 0; j <= k; j += 1) total = addBalls(total, mulBalls(a[j] as Ball, b[k - j] as Ball, bits));
-    return total;
-  });
+  return a.map((_, k) => convolved(a, b, k, 0, 0n, 1n, 1n, bits));
+}
+
+/** The sum over j from `first` to k of (p j + q) a_j b_(k-j), over `under`: one rounding for all. */
+function convolved(a: readonly Ball[], b: readonly Ball[], k: number, first: number, p: bigint, q: bigint, under: bigint, bits: number): Ball {
+  let mid = 0n;
+  let rad = 0n;
+  for (let j = first; j <= k; j += 1) {
+    const [x, y] = [a[j] as Ball, b[k - j] as Ball];
+    if (x.mid === 0n && x.rad === 0n) continue;
+    const weight = p * BigInt(j) + q;
+    mid += weight * x.mid * y.mid;
+    if (x.rad !== 0n || y.rad !== 0n) rad += magnitude(weight) * (magnitude(x.mid) * y.rad + (magnitude(y.mid) + y.rad) * x.rad);
+  }
+  const shift = BigInt(bits);
+  return { mid: (mid >> shift) / under, rad: (rad >> shift) / under + 3n };
 }
 
 /** q b = a, from the lowest coefficient up. */
 function divJets(a: readonly Ball[], b: readonly Ball[], head: Ball, bits: number): Ball[] | null {
   const result: Ball[] = [head];
   for (let k = 1; k < a.length; k += 1) {
-    let top = a[k] as Ball;
-    for (let j = 1; j <= k; j += 1) top = addBalls(top, negateBall(mulBalls(b[j] as Ball, result[k - j] as Ball, bits)));
+    const top = addBalls(a[k] as Ball, negateBall(convolved(b, result, k, 1, 0n, 1n, 1n, bits)));
     const next = divBalls(top, b[0] as Ball, bits);
     if (!next) return null;
     result.push(next);
@@ -88,25 +98,18 @@ function divJets(a: readonly Ball[], b: readonly Ball[], head: Ball, bits: numbe
   return result;
 }
 
-function scaled(ball: Ball, value: Q.Rational, bits: number): Ball {
-  return mulBalls(ball, ballFromRational(value, bits), bits);
-}
-
 /** a p' = r p a'; a whole power of what may be zero is multiplied out. */
 function powJet(a: readonly Ball[], r: Q.Rational, head: Ball, bits: number): Ball[] | null {
-  if (ballSign(a[0] as Ball) === 0) {
-    if (r.den !== 1n || r.num < 0n || r.num > 60n) return null;
+  if (r.den === 1n && r.num >= 0n && r.num <= 60n) {
     let total = constantJet({ mid: 1n << BigInt(bits), rad: 0n }, a.length - 1);
     for (let k = 0n; k < r.num; k += 1n) total = mulJets(total, a, bits);
     return total;
   }
+  if (ballSign(a[0] as Ball) === 0) return null;
   const result: Ball[] = [head];
   for (let k = 1; k < a.length; k += 1) {
-    let total = nothing;
-    for (let j = 1; j <= k; j += 1) {
-      const times = Q.sub(Q.div(Q.mul(Q.add(r, Q.one), Q.rational(j)), Q.rational(k)), Q.one);
-      total = addBalls(total, scaled(mulBalls(a[j] as Ball, result[k - j] as Ball, bits), times, bits));
-    }
+    // ((r + 1) j / k - 1), over a common denominator.
+    const total = convolved(a, result, k, 1, r.num + r.den, -BigInt(k) * r.den, BigInt(k) * r.den, bits);
     const next = divBalls(total, a[0] as Ball, bits);
     if (!next) return null;
     result.push(next);
@@ -123,9 +126,7 @@ function integrated(g: readonly Ball[], a: readonly Ball[], head: Ball, bits: nu
 
 /** The k-th coefficient of an integral of g a'. */
 function chainTerm(g: readonly Ball[], a: readonly Ball[], k: number, bits: number): Ball {
-  let total = nothing;
-  for (let j = 1; j <= k; j += 1) total = addBalls(total, scaled(mulBalls(a[j] as Ball, g[k - j] as Ball, bits), Q.rational(j, k), bits));
-  return total;
+  return convolved(a, g, k, 1, 1n, 0n, BigInt(k), bits);
 }
 
 function callJet(name: string, a: readonly Ball[], head: Ball, bits: number): Ball[] | null {
