@@ -14,6 +14,7 @@ import { MathsReading } from '../../ui/maths-reading.tsx';
 import { problemWords } from '../../ui/states.tsx';
 import { StepEvidence } from './step-evidence.tsx';
 import { edgeStates, stepWords, verdictHeadline } from './verdict-words.ts';
+import './try-it.css';
 
 export interface TryItProps {
   /** The task as it stands in the form, saved or not. */
@@ -55,6 +56,7 @@ export function TryIt({ task }: TryItProps) {
   return (
     <section aria-label="Try it">
       <Derivation
+        className="try-it"
         layout="narrow"
         label="A model derivation"
         lines={[
