@@ -1,5 +1,5 @@
 import type { BoardAlert, BoardPerson } from '../../../shared/schemas/round.ts';
-import type { WorkRow } from './board.service.ts';
+import type { WorkRow } from './board-work.ts';
 import type { RoundPerson } from './round-people.ts';
 import { FEWEST_PEOPLE } from './round-preview.ts';
 import type { Round } from './rounds.entity.ts';
