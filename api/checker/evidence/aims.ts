@@ -1,7 +1,6 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
-import type { CheckContext } from '../context.ts';
+import { exprsOf } from '../../../shared/maths/walk.ts';
 import * as Q from '../numbers/rational.ts';
 import { neg, sum } from './build.ts';
 import {
@@ -16,7 +15,7 @@ import {
   times,
   type Complex,
 } from './complex-double.ts';
-import { estimate, type Place } from './estimate.ts';
+import { estimate, estimateCost, type Place } from './estimate.ts';
 import { differenceAt, type Aim, type MendQuestion } from './mend-question.ts';
 import { collect, keyOf, spread } from './monomials.ts';
 import { choosePlaces } from './places.ts';
@@ -54,24 +53,25 @@ export function aimsOf(question: MendQuestion): Aim[] {
         tree: pair.focus,
         wanted,
         places,
-        spend: spender(context, pair.focus),
+        cost: costOf(pair.focus),
+        budget: context.budget,
         targets: [places.map((place) => estimate(wanted, place))],
       },
     ];
   }
   if (above.kind !== 'relation' || line.kind !== 'relation') return [];
   const places = choosePlaces([above, line], placeCount, context);
-  const spend = spender(context, line.left, line.right);
+  const work = { cost: costOf(line.left, line.right), budget: context.budget };
   return [
     {
       ...(aimAtRoots(above, line, places) ?? aimAtSolution(above, line, places) ?? aimAtMultiple(above, line, places)),
-      spend,
+      ...work,
     },
   ];
 }
 
 /** letter = expression: the right side must be what the line above says of the letter, where that is of first degree in it. */
-function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'spend'> | null {
+function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'cost' | 'budget'> | null {
   const { left, right } = line;
   if (left.kind !== 'letter' || lettersOf(right).includes(left.name)) return null;
   const { name } = left;
@@ -88,7 +88,7 @@ function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]
 }
 
 /** letter = expression with one plus-or-minus: with either sign, one of the two roots of a line above of second degree. */
-function aimAtRoots(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'spend'> | null {
+function aimAtRoots(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'cost' | 'budget'> | null {
   const { left, right } = line;
   const upper = withPlus(right);
   if (left.kind !== 'letter' || upper === right || lettersOf(right).includes(left.name)) return null;
@@ -126,7 +126,7 @@ function rootsAt(f: (x: number) => Complex): readonly Complex[] | null {
 }
 
 /** Left minus right must be a multiple of what it is above: by 1, by -1, or as some of the like terms have it. */
-function aimAtMultiple(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'spend'> {
+function aimAtMultiple(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'cost' | 'budget'> {
   const tree = sum(line.left, neg(line.right));
   const whole: Expr =
     tree.kind === 'sum'
@@ -149,10 +149,9 @@ function aimAtMultiple(above: Relation, line: Relation, places: readonly Place[]
   };
 }
 
-/** A change is looked at some ten times over. */
-function spender({ budget }: CheckContext, ...exprs: readonly Expr[]): () => void {
-  const cost = 4 + exprs.reduce((count, expr) => count + countNodes(expr), 0);
-  return () => budget.spend(cost);
+/** A number that is solved for is looked at some ten times over. */
+function costOf(...exprs: readonly Expr[]): number {
+  return 4 + exprs.reduce((count, expr) => count + 2 * estimateCost(expr), 0);
 }
 
 const mostScales = 4;

@@ -1,4 +1,5 @@
 import type { Expr, FunctionName } from '../../../shared/maths/expression.ts';
+import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { Definitions } from '../context.ts';
 import {
   cosineOf,
@@ -199,6 +200,14 @@ function seriesValue(expr: Extract<Expr, { kind: 'series' }>, at: Place): Comple
     total = expr.operation === 'sum' ? plus(total, value) : times(total, value);
   }
   return total;
+}
+
+/** The work of one estimate, in nodes: what stands under an integral or a sum is looked at many times. */
+export function estimateCost(expr: Expr): number {
+  const inside = childrenOf(expr).reduce((cost, part) => cost + estimateCost(part), 1);
+  if (expr.kind === 'integral') return inside * gauss.length * panels;
+  if (expr.kind === 'derivative') return inside * 6;
+  return expr.kind === 'series' ? inside * 8 : inside;
 }
 
 /** Nodes and weights of Gauss and Legendre with five points. */

@@ -33,7 +33,7 @@ export function* leafEdits(
   const nodes = aim.roots.flatMap(nodesOf).filter(({ node }) => isWanted(node));
   for (const target of aim.targets) {
     for (const place of nodes) {
-      aim.spend();
+      aim.budget.spend(aim.cost);
       for (const found of editsAt(place, aim, target, letters, tex))
         yield { ...found, touchesRight: isRight(place.node) };
     }
@@ -228,7 +228,7 @@ export function* numberPairs(aim: Aim, tex: string, isRight: (node: Expr) => boo
 
 function* pairAt(one: PlacedNode, other: PlacedNode, value: number, aim: Aim, tex: string): Generator<Candidate> {
   if (value === 0 || one.node.kind !== 'number' || other.node.kind !== 'number') return;
-  aim.spend();
+  aim.budget.spend(aim.cost);
   const tree = replaceNode(aim.tree, one.node, whole(value));
   const withHole = replaceNode(tree, other.node, hole);
   for (const target of aim.targets) {

@@ -1,6 +1,7 @@
 import type { Expr, Line, RelationSign, Span } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { readLine } from '../../../shared/maths/read.ts';
+import { BudgetSpent, createBudget } from '../context.ts';
 import { aimsOf, expressionsIn } from './aims.ts';
 import { termsOf } from './build.ts';
 import { splice, type Candidate, type Edit } from './edits.ts';
@@ -42,10 +43,7 @@ export function mendLine(question: MendQuestion): MendedLine | null {
     question,
   );
   if (first) return first;
-  const pairs = aims.flatMap((aim) => [
-    ...pairsOfChanges(aim, question, isRight),
-    ...numberPairs(aim, question.tex, isRight),
-  ]);
+  const pairs = aims.flatMap((aim) => findPairs(aim, question, isRight));
   return (
     firstThatHolds(pairs, question) ??
     firstThatHolds(
@@ -130,6 +128,21 @@ function* valueItself(aim: Aim): Generator<Candidate> {
     yield { edits: [{ ...outer(focus), text: numberText(found) }], cost: 1.9, touchesRight: false };
 }
 
+const pairOperations = 50_000;
+
+/** Two changes at once, as many as can be looked at; what was found before the work ran out is kept. */
+function findPairs(aim: Aim, question: MendQuestion, isRight: (node: Expr) => boolean): Candidate[] {
+  const limited: Aim = { ...aim, budget: createBudget(Math.min(pairOperations, Math.max(0, aim.budget.left()))) };
+  const found: Candidate[] = [];
+  try {
+    for (const candidate of pairsOfChanges(limited, question, isRight)) found.push(candidate);
+    for (const candidate of numberPairs(limited, question.tex, isRight)) found.push(candidate);
+  } catch (cause) {
+    if (!(cause instanceof BudgetSpent)) throw cause;
+  }
+  return found;
+}
+
 const mostSmall = 18;
 
 /** Two changes, the first of them small. */
@@ -140,7 +153,7 @@ function* pairsOfChanges(aim: Aim, { tex }: MendQuestion, isRight: (node: Expr) 
   for (const [k, one] of small.entries()) {
     const changed: Aim = { ...aim, tree: replaceNode(aim.tree, one.node, one.by) };
     for (const other of small.slice(k + 1)) {
-      aim.spend();
+      aim.budget.spend(aim.cost);
       const both = replaceNode(changed.tree, other.node, other.by);
       if (aim.targets.some((target) => hits(both, target, aim.places)))
         yield { edits: [one.edit, other.edit], cost: one.cost + other.cost, touchesRight: false };

@@ -1,5 +1,5 @@
 import type { Expr, Line, ReadSettings, Span } from '../../../shared/maths/expression.ts';
-import type { CheckContext } from '../context.ts';
+import type { Budget, CheckContext } from '../context.ts';
 import { isFiniteNumber, isNear, minus, over, sizeOf, type Complex } from './complex-double.ts';
 import { estimate, type Place } from './estimate.ts';
 
@@ -33,8 +33,9 @@ export interface Aim {
   /** The expression that the tree should equal, where that is known in symbols. */
   readonly wanted: Expr | null;
   readonly places: readonly Place[];
-  /** Counts the work of looking at one change. */
-  readonly spend: () => void;
+  /** The work of looking at one change, and what it is taken from. */
+  readonly cost: number;
+  readonly budget: Budget;
   /** Values that the tree must take; several sets where the scale is open. */
   readonly targets: readonly (readonly Complex[])[];
 }

@@ -16,7 +16,7 @@ interface Shape {
 export function* shapeEdits(aim: Aim, tex: string, isRight: (node: Expr) => boolean): Generator<Candidate> {
   for (const { node } of aim.roots.flatMap(nodesOf)) {
     for (const { by, edits, cost } of shapesOf(node, tex)) {
-      aim.spend();
+      aim.budget.spend(aim.cost);
       const changed = replaceNode(aim.tree, node, by);
       if (aim.targets.some((target) => hits(changed, target, aim.places)))
         yield { edits, cost, touchesRight: isRight(node) };

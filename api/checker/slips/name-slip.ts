@@ -1,11 +1,11 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
+import { exprsOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { sum } from '../evidence/build.ts';
 import { expanded, sumExpr } from '../evidence/monomials.ts';
-import { estimate } from '../evidence/estimate.ts';
+import { estimate, estimateCost } from '../evidence/estimate.ts';
 import { choosePlaces, mayBeEqual } from '../evidence/places.ts';
 import { allSlips } from './catalogue.ts';
 import { mayFollow } from './may-follow.ts';
@@ -69,7 +69,7 @@ export function nameBetween(above: Expr, wholeBelow: Expr, worksOn: boolean, con
 
 /** Looking at a candidate at some places, in operations. */
 function costOf(expr: Expr): number {
-  return 4 + (countNodes(expr) >> 1);
+  return 4 + (estimateCost(expr) >> 1);
 }
 
 /** The checker's own answer, given a limited number of times. */

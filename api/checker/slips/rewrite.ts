@@ -11,11 +11,20 @@ export type Rewrite = (part: Expr) => Iterable<Expr>;
 export function rule(from: string, to: string, accepts: (bound: Bindings) => boolean = () => true): Rewrite {
   const pattern = toExpr(from);
   const result = toExpr(to);
-  return function* rewrite(part) {
+  function* instancesIn(part: Expr): Generator<Expr> {
     for (const { bound, rebuild } of instances(pattern, part)) {
       if (accepts(bound)) yield rebuild(fill(result, bound));
     }
-  };
+  }
+  return (part) => (mayMatch(pattern, part) ? instancesIn(part) : none);
+}
+
+const none: readonly Expr[] = [];
+
+/** A product may be found in anything, for a coefficient of 1 is not written; the rest only among its own kind. */
+function mayMatch(pattern: Expr, part: Expr): boolean {
+  if (pattern.kind === 'product') return part.kind === 'product' || pattern.factors[0]?.kind === 'letter';
+  return pattern.kind === part.kind || pattern.kind === 'letter';
 }
 
 function toExpr(tex: string): Expr {
