@@ -1,5 +1,5 @@
 import type { CheckContext } from '../context.ts';
-import { isReal } from '../values/arithmetic.ts';
+import { isKnown, isReal } from '../values/arithmetic.ts';
 import { usuallyWhole } from '../values/lower.ts';
 import type { KnownValue, Point } from '../values/value.ts';
 import { breakPointsOf } from './break-points.ts';
@@ -8,7 +8,8 @@ import { confirmAt } from './confirm.ts';
 import { findConditions } from './find-conditions.ts';
 import { provesIdentity } from './kernel-identity.ts';
 import { leavesNoInterval } from './no-interior.ts';
-import { createPair, marksOf } from './pair.ts';
+import { precisions } from './agreement.ts';
+import { createPair, evaluatePair, isInside, marksOf } from './pair.ts';
 import type { Pair } from './pair.ts';
 import { createRegion, pointsOf } from './points.ts';
 import type { Region, Traits } from './points.ts';
@@ -31,6 +32,9 @@ export function compareFunctions(pair: Pair, context: CheckContext): Comparison 
   const points = pointsFor(pair, region, isProved, progress, context);
   const samples = takeSamples(pair, points, context, { agreements, mayStop: () => isProved || !progress.mustGoOn });
   if (samples.apart !== null) {
+    if (!samples.insideAbove && !hasInterior(pair, samples.apart.point, region, context)) {
+      return { kind: 'undecided', reason: 'no-domain' };
+    }
     // A proof and a witness cannot both be right.
     if (isProved) return { kind: 'undecided', reason: 'not-settled' };
     const witness = witnessAt(pair, samples.apart.point, samples.apart.bits, context);
@@ -46,6 +50,19 @@ function mayBeMeantReal(samples: Samples, region: Region): boolean {
   if (region.context.numbers === 'real' || samples.counts.same < agreementsNeeded) return false;
   const point = samples.apart?.point ?? new Map<string, KnownValue>();
   return [...point].some(([name, value]) => !isReal(value) && !complexLetters.has(name.charAt(0)));
+}
+
+/** Whether the line above has a value around some point, the given one or another. */
+function hasInterior(pair: Pair, first: Point, region: Region, context: CheckContext): boolean {
+  if (pair.needsAbove.length === 0 || pair.names.every((name) => pair.whole.has(name))) return true;
+  const bits = precisions[0];
+  const isIn = (point: Point): boolean => {
+    const { above, all } = evaluatePair(pair, point, bits, context);
+    return isKnown(above) && isInside(pair.needsAbove, pair, all, bits);
+  };
+  if (isIn(first)) return true;
+  for (const point of pointsFor(pair, region, false, { mustGoOn: true }, context)) if (isIn(point)) return true;
+  return false;
 }
 
 /** Apart only where n, m or k is no whole number, as in sin(x + 2 pi n). */
