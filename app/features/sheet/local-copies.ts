@@ -23,6 +23,27 @@ export interface LocalCopies {
   close(): void;
 }
 
+/** What is needed of a browser's store. */
+type Store = Pick<Storage, 'getItem' | 'setItem' | 'removeItem' | 'key' | 'length'>;
+
+/** The browser's store, or one that lasts as long as the page where the browser keeps its own closed. */
+export function openStore(find: () => Storage): Store {
+  try {
+    return find();
+  } catch {
+    const kept = new Map<string, string>();
+    return {
+      getItem: (key) => kept.get(key) ?? null,
+      setItem: (key, value) => void kept.set(key, value),
+      removeItem: (key) => void kept.delete(key),
+      key: (index) => [...kept.keys()][index] ?? null,
+      get length() {
+        return kept.size;
+      },
+    };
+  }
+}
+
 interface Locks {
   request(name: string, callback: () => Promise<void>): Promise<unknown>;
   query(): Promise<{ readonly held?: readonly { readonly name?: string }[] }>;
@@ -32,9 +53,9 @@ export interface LocalCopiesOptions {
   /** Person, derivation and purpose; no other person's copies are ever looked at. */
   readonly scope: string;
   readonly pageId: string;
-  readonly storage: Storage;
+  readonly storage: Store;
   /** Remembers the page that stood in this tab before. */
-  readonly tab: Storage;
+  readonly tab: Store;
   /** The browser's locks, where it has them: a page that is still open holds one. */
   readonly locks?: Locks;
   readonly now: () => number;
@@ -77,7 +98,7 @@ export function openLocalCopies(options: LocalCopiesOptions): LocalCopies {
   };
 }
 
-function keysOf(storage: Storage, prefix: string): string[] {
+function keysOf(storage: Store, prefix: string): string[] {
   return Array.from({ length: storage.length }, (_, i) => storage.key(i) ?? '').filter((key) => key.startsWith(prefix));
 }
 

@@ -2,7 +2,7 @@ import type { Editor, JSONContent } from '@tiptap/core';
 import { useEffect, useRef, useState, useSyncExternalStore } from 'react';
 import type { SaveAnswer, SavedDraft, SaveSheet } from '../../../shared/schemas/derivation.ts';
 import type { SheetDocument } from '../../../shared/schemas/sheet.ts';
-import { openLocalCopies } from './local-copies.ts';
+import { openLocalCopies, openStore } from './local-copies.ts';
 import { toWritable } from './sheet-editor.tsx';
 import { createSheetSync, type SheetSync, type SyncState } from './sheet-sync.ts';
 import { newStepId } from './step-id.ts';
@@ -36,8 +36,8 @@ export function useSheetSync({ scope, draft, save }: SheetSyncOptions): RunningS
       copies: openLocalCopies({
         scope,
         pageId: newStepId(),
-        storage: localStorage,
-        tab: sessionStorage,
+        storage: openStore(() => localStorage),
+        tab: openStore(() => sessionStorage),
         locks: navigator.locks,
         now: Date.now,
       }),

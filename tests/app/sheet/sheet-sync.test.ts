@@ -1,5 +1,5 @@
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
-import { openLocalCopies, type LocalCopies } from '../../../app/features/sheet/local-copies.ts';
+import { openLocalCopies, openStore, type LocalCopies } from '../../../app/features/sheet/local-copies.ts';
 import { createSheetSync, type SheetSync } from '../../../app/features/sheet/sheet-sync.ts';
 import { ApiProblem } from '../../../app/lib/api.ts';
 import type { SaveAnswer, SavedDraft } from '../../../shared/schemas/derivation.ts';
@@ -280,6 +280,16 @@ describe('copies in the browser', () => {
   it('of another person are never looked at', async () => {
     openWith('one', 'mira.d1').keep({ document: sheet('a'), baseVersion: 1, touchedAt: 1 });
     expect(await openWith('two', 'hanno.d1').findLeft()).toEqual([]);
+  });
+
+  it('last as long as the page where the browser keeps its store closed', () => {
+    const store = openStore(() => {
+      throw new DOMException('closed', 'SecurityError');
+    });
+    store.setItem('a', '1');
+    expect([store.getItem('a'), store.length, store.key(0)]).toEqual(['1', 1, 'a']);
+    store.removeItem('a');
+    expect(store.getItem('a')).toBeNull();
   });
 
   it('that cannot be read are dropped', async () => {
