@@ -6,6 +6,7 @@ import { InvitePanel } from '../features/classes/invite-panel.tsx';
 import { MembersPanel } from '../features/classes/members-panel.tsx';
 import { PairsPanel } from '../features/classes/pairs-panel.tsx';
 import { SettingsPanel } from '../features/classes/settings-panel.tsx';
+import { ClassRounds } from '../features/rounds/class-rounds.tsx';
 import { paths } from '../lib/paths.ts';
 import { LinkButton } from '../ui/button.tsx';
 import { Head, Page } from '../ui/page.tsx';
@@ -60,6 +61,7 @@ function ClassPage({ found }: { readonly found: ClassAnswer }) {
             panel: <MembersPanel found={found} />,
             ...(found.requests.length > 0 && { count: found.requests.length }),
           },
+          { id: 'rounds', label: 'Rounds', panel: <ClassRounds classId={found.id} /> },
           { id: 'invite', label: 'Ways in', panel: <InvitePanel found={found} /> },
           { id: 'pairs', label: 'Keep apart', panel: <PairsPanel found={found} /> },
           { id: 'settings', label: 'Settings', panel: <SettingsPanel found={found} /> },

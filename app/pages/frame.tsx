@@ -1,5 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { Navigate, Outlet, ScrollRestoration, useLocation } from 'react-router-dom';
+import { disputesQuery } from '../features/disputes/disputes.queries.ts';
 import type { Viewer } from '../features/people/viewer.queries.ts';
 import { viewerQuery } from '../features/people/viewer.queries.ts';
 import { paths } from '../lib/paths.ts';
@@ -9,24 +10,26 @@ import { Shell } from '../ui/shell.tsx';
 import { ErrorState, Waiting } from '../ui/states.tsx';
 import { ZoneProvider } from '../ui/time.tsx';
 
-/** The words in the bar, by what the person may do. */
-export function navFor(viewer: Viewer): readonly NavItem[] {
-  const isTeacher = viewer.user.role !== 'student';
-  const isAssistant = viewer.classes.some((each) => each.role === 'assistant');
+/** The words in the bar, by what the person may do. `waiting` disputes are counted beside their word. */
+export function navFor(viewer: Viewer, waiting?: number): readonly NavItem[] {
+  const { role } = viewer.user;
   const standings = { to: paths.standings(), label: 'Standings' };
-  const disputes = { to: paths.disputes(), label: 'Disputes' };
+  const disputes = { to: paths.disputes(), label: 'Disputes', ...(waiting ? { count: waiting } : {}) };
   const work = ['/derivations', '/reviews', '/rounds'];
-  if (!isTeacher)
-    return [{ to: paths.today(), label: 'Today', also: work }, ...(isAssistant ? [disputes] : []), standings];
+  if (role === 'admin') return [{ to: paths.admin(), label: 'School' }];
+  if (role === 'student')
+    return [{ to: paths.today(), label: 'Today', also: work }, ...(isAssistant(viewer) ? [disputes] : []), standings];
   return [
     { to: paths.today(), label: 'Rounds', also: work },
     { to: paths.classes(), label: 'Classes' },
     { to: paths.tasks(), label: 'Tasks' },
     disputes,
-    { to: paths.insights(), label: 'Insights' },
     standings,
-    ...(viewer.user.role === 'admin' ? [{ to: paths.admin(), label: 'School' }] : []),
   ];
+}
+
+function isAssistant({ classes }: Viewer): boolean {
+  return classes.some((each) => each.role === 'assistant');
 }
 
 function placeOf({ classes, school }: Viewer): string {
@@ -43,6 +46,8 @@ function footOf({ classes, school }: Viewer): string {
 export function RequireViewer() {
   const viewer = useQuery(viewerQuery);
   const { pathname, search } = useLocation();
+  const rules = viewer.data ? viewer.data.user.role === 'teacher' || isAssistant(viewer.data) : false;
+  const disputes = useQuery({ ...disputesQuery, enabled: rules });
   if (viewer.data === null)
     return <Navigate to={paths.signIn(pathname === '/' ? undefined : pathname + search)} replace />;
   if (!viewer.data) {
@@ -56,9 +61,10 @@ export function RequireViewer() {
       </Shell>
     );
   }
+  if (viewer.data.user.role === 'admin' && pathname === paths.today()) return <Navigate to={paths.admin()} replace />;
   return (
     <Shell
-      nav={navFor(viewer.data)}
+      nav={navFor(viewer.data, disputes.data?.length)}
       who={{ name: viewer.data.user.name, place: placeOf(viewer.data) }}
       foot={footOf(viewer.data)}
     >

@@ -9,6 +9,7 @@ export const optionalMailKindSchema = z.enum([
   'findings-to-answer',
   'round-settled',
   'ruling-after-settling',
+  'author-asked',
 ]);
 export type OptionalMailKind = z.infer<typeof optionalMailKindSchema>;
 

@@ -11,7 +11,7 @@ import type { DeskDeps } from './desk-views.ts';
 import { Dispute } from './disputes.entity.ts';
 import { findMembership, findSteps, getCase, toOrders } from './open-case.ts';
 import { ruleFirstFault } from './rule-steps.ts';
-import { applyRuling, type RulingDeps } from './ruling.service.ts';
+import { applyRuling, mailQuestion, type RulingDeps } from './ruling.service.ts';
 
 export interface DisputesDeps extends RulingDeps, DeskDeps {
   readonly db: DataSource;
@@ -50,6 +50,7 @@ export function createDisputesService(deps: DisputesDeps) {
       if (!version.derivation?.author)
         throw new ProblemError('conflict', { detail: 'This derivation has no author to ask.' });
       await manager.update(Dispute, dispute.id, { question, questionAnswer: null });
+      await mailQuestion(deps, manager, round, version.derivation);
       await recordAudit(manager, {
         schoolId: round.schoolId,
         actorId: viewer.userId,

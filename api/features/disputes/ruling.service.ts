@@ -4,8 +4,8 @@ import type { RulingTrail } from '../../../shared/schemas/ruling.ts';
 import type { Verdict } from '../../../shared/schemas/verdict.ts';
 import { laterThan } from '../../lib/later-than.ts';
 import { recordAudit } from '../audit/record.ts';
-import { DerivationVersion } from '../derivations/derivations.entity.ts';
-import type { QueueMail } from '../mail/queue-mail.ts';
+import { DerivationVersion, type Derivation } from '../derivations/derivations.entity.ts';
+import type { QueueMail, RoundMailData } from '../mail/queue-mail.ts';
 import { User } from '../people/people.entity.ts';
 import type { Finding, Review, Score } from '../reviews/reviews.entity.ts';
 import { Round } from '../rounds/rounds.entity.ts';
@@ -164,7 +164,6 @@ async function mailConcerned(
     where: { id: given.versionId },
     relations: { derivation: true },
   });
-  const full = await manager.findOneOrFail(Round, { where: { id: round.id }, relations: { class: true } });
   const ids = new Set([...given.raisers, ...given.scored.map(({ review }) => review.reviewerId)]);
   if (version.derivation?.authorId) ids.add(version.derivation.authorId);
   const people = await manager.find(User, { where: { id: In([...ids]) }, order: { id: 'ASC' } });
@@ -172,16 +171,36 @@ async function mailConcerned(
     await queueMail(manager, {
       kind: 'ruling-after-settling',
       userId: person.id,
-      data: {
-        name: person.name,
-        className: full.class?.name ?? '',
-        taskTitle: full.frozen?.title ?? '',
-        roundId: round.id,
-        timeZone: full.class?.timeZone ?? 'UTC',
-      },
+      data: await toRoundMail(manager, round, person),
       dedupeKey: `ruling ${given.rulingId} ${person.id}`,
     });
   }
+}
+
+/** The author learns that there is a question; it stands on the verdict's page. */
+export async function mailQuestion(
+  { queueMail }: Pick<RulingDeps, 'queueMail'>,
+  manager: EntityManager,
+  round: Round,
+  derivation: Derivation,
+): Promise<void> {
+  if (!derivation.author) return;
+  await queueMail(manager, {
+    kind: 'author-asked',
+    userId: derivation.author.id,
+    data: { ...(await toRoundMail(manager, round, derivation.author)), derivationId: derivation.id },
+  });
+}
+
+async function toRoundMail(manager: EntityManager, round: Round, person: User): Promise<RoundMailData> {
+  const full = await manager.findOneOrFail(Round, { where: { id: round.id }, relations: { class: true } });
+  return {
+    name: person.name,
+    className: full.class?.name ?? '',
+    taskTitle: full.frozen?.title ?? '',
+    roundId: round.id,
+    timeZone: full.class?.timeZone ?? 'UTC',
+  };
 }
 
 function toTrail(

@@ -131,6 +131,13 @@ const WRITERS: Writers = {
     ],
     action: { label: 'See the ruling', path: `/rounds/${data.roundId}` },
   }),
+  'author-asked': (data) => ({
+    ...about(data, `Your teacher asks: ${data.taskTitle}`),
+    paragraphs: [
+      `About your derivation on “${data.taskTitle}” (${data.className}) something is contested, and your teacher asks you about it before ruling.`,
+    ],
+    action: { label: 'Read and answer', path: `/derivations/${data.derivationId}` },
+  }),
 };
 
 /** The kinds that nobody needs for their account, in people's words; they can be switched off. */
@@ -142,6 +149,7 @@ export const OPTIONAL_KINDS = {
   'findings-to-answer': 'Findings to answer',
   'round-settled': 'A round is settled',
   'ruling-after-settling': 'A ruling after settling',
+  'author-asked': 'Your teacher asks about your derivation',
 } as const satisfies Record<OptionalMailKind, string>;
 
 export function isOptionalKind(kind: string): kind is OptionalMailKind {

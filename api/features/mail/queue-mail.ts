@@ -36,6 +36,8 @@ export interface MailDataOf {
   readonly 'findings-to-answer': RoundMailData & { readonly derivationId: string; readonly endsAt: Date };
   readonly 'round-settled': RoundMailData;
   readonly 'ruling-after-settling': RoundMailData;
+  /** The teacher asks the author of a settled derivation something. */
+  readonly 'author-asked': RoundMailData & { readonly derivationId: string };
 }
 export type MailKind = keyof MailDataOf;
 

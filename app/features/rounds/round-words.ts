@@ -1,4 +1,4 @@
-import type { RoundWarning, Stage, StageEffect } from '../../../shared/schemas/round.ts';
+import type { RoundListItem, RoundWarning, Stage, StageEffect } from '../../../shared/schemas/round.ts';
 import { formatInstant, sayDay } from '../../lib/dates.ts';
 
 /** `1 person`, `3 people`. */
@@ -18,6 +18,17 @@ export function shortInstant(iso: string, zone: string, now: string): string {
     new Date(iso),
   );
   return `${date}, ${time}`;
+}
+
+/** The instant at which the round moves on by itself; null when it is settled. */
+export function nextInstantOf({ stage, instants }: Pick<RoundListItem, 'stage' | 'instants'>): string | null {
+  return {
+    planned: instants.opensAt,
+    writing: instants.writingEndsAt,
+    reviewing: instants.reviewingEndsAt,
+    answering: instants.settlesAt,
+    settled: null,
+  }[stage];
 }
 
 /** The act that moves a round on, in its own verb. */

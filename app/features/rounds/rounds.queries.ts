@@ -7,6 +7,7 @@ import type {
   RoundChange,
   RoundChoices,
   RoundForm,
+  RoundListItem,
   StageMove,
   StagePreview,
 } from '../../../shared/schemas/round.ts';
@@ -18,6 +19,12 @@ export const roundChoicesQuery = queryOptions({
   queryKey: ['round-choices'],
   queryFn: ({ signal }) => api.get<RoundChoices>('/api/round-choices', { signal }),
 });
+
+export const classRoundsQuery = (classId: string) =>
+  queryOptions({
+    queryKey: ['rounds', 'of-class', classId],
+    queryFn: ({ signal }) => api.get<readonly RoundListItem[]>(`/api/rounds?classId=${classId}`, { signal }),
+  });
 
 /** The board of a round; it keeps itself up to date while it is looked at. */
 export const boardQuery = (roundId: string) =>
