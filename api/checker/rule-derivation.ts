@@ -64,7 +64,10 @@ function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: W
       state = found.state;
       continue;
     }
-    const better = found.result.ruling === 'fails' ? (joinCases(route, state, step, found) ?? putBrackets(route, state, step, found)) : null;
+    const better =
+      found.result.ruling === 'fails'
+        ? (joinCases(route, state, step, found) ?? putBrackets(route, state, step, found))
+        : null;
     rulings.push(...(better ? better.results : [found.result]));
     state = better ? better.state : found.state;
     if (better) step += better.results.length - 1;

@@ -48,8 +48,10 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
   const seen: OneLetterAnswer[] = [];
   const excluded: string[] = [];
   let open = 0;
-  for (const given of listAssignments(names, context)) {
-    const found = judgeAt(question, given);
+  for (const [index, given] of listAssignments(names, context).entries()) {
+    // Lines that are solved by samples cost more: fewer special values are tried.
+    if (index >= mostSampled && seen[0]?.reached === 'sampled') break;
+    const found = judgeAt({ ...question, isSpecial: isSpecial(given) }, given);
     if (found === 'no-value-below') excluded.push(...zeroNames(given));
     if (typeof found === 'string') continue;
     if (found.ruling === 'fails') return found;
@@ -59,6 +61,14 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
   const informative = seen.filter((answer) => answer.solutions && !isEmptySet(answer.solutions));
   if (informative.length < 2) return undecided(open > 0 ? 'not-settled' : 'no-domain');
   return summarise(seen, excluded);
+}
+
+const mostSampled = 12;
+
+/** A letter that is 0 or 1 in size, or equal to another: where formulas may have no value. */
+function isSpecial(given: Assignment): boolean {
+  const values = [...given.values()].map(({ num, den }) => `${num}/${den}`);
+  return new Set(values).size < values.length || values.some((value) => ['0/1', '1/1', '-1/1'].includes(value));
 }
 
 function summarise(seen: readonly OneLetterAnswer[], excluded: readonly string[]): StepResult {

@@ -38,6 +38,8 @@ export interface OneLetterQuestion {
   readonly families: ReadonlySet<string>;
   readonly settings: CheckSettings;
   readonly context: CheckContext;
+  /** A solution at which the new line has no value is no loss: for special values of a formula's other letters. */
+  readonly isSpecial?: boolean;
 }
 
 export interface OneLetterAnswer extends StepResult {
@@ -76,7 +78,8 @@ function sameAsWritten({ above, below, given, context }: OneLetterQuestion): Rea
 function judgeBySolutions(question: OneLetterQuestion, solved: Solved): OneLetterAnswer {
   const { above, below, reference } = solved;
   const pieces = question.context.wholeLetters.has(question.letter) ? wholeNumbersOf : (set: RealSet): RealSet => set;
-  const lost = pieces(intersection(difference(above, below), reference));
+  const missing = pieces(intersection(difference(above, below), reference));
+  const lost = question.isSpecial ? intersection(missing, solveDefined(question.below, solved.env)) : missing;
   if (!isEmptySet(lost)) return answer(failWith(question, 'lost', lost, solved), solved, []);
   const gained = pieces(difference(below, above));
   if (isEmptySet(gained)) return answer(judgeSame(question, solved), solved, listed(question, solved));

@@ -1,4 +1,3 @@
-import type { CheckSettings } from '../../../shared/schemas/verdict.ts';
 import type { CheckContext } from '../context.ts';
 import type { RealNumber } from '../solving/real-number.ts';
 import { comparesOf, isListOfValues, type Statement } from '../statements/statement.ts';
@@ -8,25 +7,10 @@ import { isolatedLetter, judgeFormula, judgeSameEquation } from './formula.ts';
 import { freeLetters } from './meaning.ts';
 import { judgeOneLetter } from './one-letter.ts';
 import { undecided, type StepResult } from './step-result.ts';
+import type { StatementQuestion } from './statement-question.ts';
 import { isSystem, judgeSystemStep } from './system-step.ts';
 
-export interface StatementQuestion {
-  readonly above: Statement;
-  readonly below: Statement;
-  readonly reference: Statement;
-  /** Everything that earlier lines established, for systems. */
-  readonly known: readonly Statement[];
-  /** Letters of the given. */
-  readonly givenLetters: readonly string[];
-  /** The letter that the derivation is about, where settings or a later line name it. */
-  readonly unknown: string | null;
-  readonly isLast: boolean;
-  /** The line that the task gave, and whether a step before this one failed. */
-  readonly given: Statement | null;
-  readonly afterFault: boolean;
-  readonly settings: CheckSettings;
-  readonly context: CheckContext;
-}
+export type { StatementQuestion };
 
 export interface StatementAnswer extends StepResult {
   readonly candidates: readonly RealNumber[];

@@ -74,7 +74,8 @@ export function judgeStep(question: StepQuestion): StepAnswer {
 
 function define(line: Extract<Line, { kind: 'definition' }>, context: CheckContext): StepAnswer {
   const note = holds('proved', ['definition']);
-  if (line.params.length === 0) return answer(note, null, { defines: withDefinition(context.definitions, line.name, line.value) });
+  if (line.params.length === 0)
+    return answer(note, null, { defines: withDefinition(context.definitions, line.name, line.value) });
   const functions = new Map(context.definitions.functions);
   functions.set(line.name, { params: line.params, value: line.value });
   return answer(note, null, { defines: { ...context.definitions, functions } });

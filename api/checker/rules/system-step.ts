@@ -9,7 +9,7 @@ import { comparesOf, type CompareStatement, type Statement } from '../statements
 import { numberExpr } from './build-expr.ts';
 import { freeLetters } from './meaning.ts';
 import { isTrueStatement, solveSystem, substituteIn, type Solution } from './solve-system.ts';
-import type { StatementQuestion } from './statement-step.ts';
+import type { StatementQuestion } from './statement-question.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
 /** Whether the step is about several equations that hold together for several letters. */

@@ -44,7 +44,8 @@ export function findCrossings(f: (x: number) => number, positions: readonly numb
     const [before, here, next] = [known[k - 1], known[k], known[k + 1]];
     if (!here || !next) continue;
     const [b, c] = [here.value, next.value];
-    if (b !== 0 && c !== 0 && Math.sign(b) === -Math.sign(c)) found.push({ kind: 'crossing', low: here.x, high: next.x });
+    if (b !== 0 && c !== 0 && Math.sign(b) === -Math.sign(c))
+      found.push({ kind: 'crossing', low: here.x, high: next.x });
     else if (before && isLowest(before.value, b, c)) found.push({ kind: 'touching', low: before.x, high: next.x });
   }
   return found;

@@ -150,7 +150,8 @@ function touchingZeros(
   const middle = rationalNumber(rational(BigInt(Math.round(at * 2 ** 40)), 1n << 40n));
   const here = signAtPoint(graph, env.letter, middle, env.given, env.context);
   // Within the error of the place, a value that small may or may not be zero.
-  if ((Math.abs(f(at)) || 0) < 1e-12 * (Math.abs(f(low)) + Math.abs(f(high))) || !here) throw new Unsettled('not-settled');
+  if ((Math.abs(f(at)) || 0) < 1e-12 * (Math.abs(f(low)) + Math.abs(f(high))) || !here)
+    throw new Unsettled('not-settled');
   return [];
 }
 

@@ -16,7 +16,10 @@ describe('statements', () => {
   it('lose a solution by name', () => {
     const verdict = check(['x^2=7x', 'x=7']);
     expect(verdict).toMatchObject({ outcome: 'faulty', firstFault: 1 });
-    expect(step(verdict, 1).evidence).toMatchObject({ lost: ['0'], witness: { at: { x: '0' }, above: 'true', below: 'false' } });
+    expect(step(verdict, 1).evidence).toMatchObject({
+      lost: ['0'],
+      witness: { at: { x: '0' }, above: 'true', below: 'false' },
+    });
   });
 
   it('carry their running set of solutions', () => {
@@ -30,7 +33,11 @@ describe('statements', () => {
 
   it('gain by a named operation one way only', () => {
     const squared = check(['\\sqrt{x+6}=x', 'x+6=x^2', 'x=3']);
-    expect(step(squared, 1)).toMatchObject({ ruling: 'holds', notes: ['one-way'], evidence: { operation: 'power', gained: ['-2'] } });
+    expect(step(squared, 1)).toMatchObject({
+      ruling: 'holds',
+      notes: ['one-way'],
+      evidence: { operation: 'power', gained: ['-2'] },
+    });
     const logs = check(['\\ln(x+1)+\\ln(x-1)=\\ln 3', '\\ln(x^2-1)=\\ln 3']);
     expect(step(logs, 1).evidence).toMatchObject({ operation: 'logarithm', gained: ['-2'] });
     const cleared = check(['\\frac{x}{x-2}=\\frac{2}{x-2}', 'x=2', '\\text{no solution}']);

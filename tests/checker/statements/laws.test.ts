@@ -41,11 +41,15 @@ describe('a true rewriting of an equation', () => {
 
   it('holds when the sides are swapped or multiplied by a number that is not zero', () => {
     fc.assert(
-      fc.property(equation, fc.integer({ min: -9, max: 9 }).filter((n) => n !== 0), (tex, n) => {
-        const [left, right] = sidesOf(tex);
-        expect(rule([tex, `${right}=${left}`])).toBe('holds');
-        expect(rule([tex, `${n}(${left})=${n}(${right})`])).toBe('holds');
-      }),
+      fc.property(
+        equation,
+        fc.integer({ min: -9, max: 9 }).filter((n) => n !== 0),
+        (tex, n) => {
+          const [left, right] = sidesOf(tex);
+          expect(rule([tex, `${right}=${left}`])).toBe('holds');
+          expect(rule([tex, `${n}(${left})=${n}(${right})`])).toBe('holds');
+        },
+      ),
       { numRuns: 40 },
     );
   }, 60_000);
@@ -63,7 +67,11 @@ describe('a true rewriting of an equation', () => {
   it('fails when one side is changed by a number, and names a value that shows it', () => {
     for (const tex of equations) {
       const [left, right] = sidesOf(tex);
-      const verdict = checkDerivation({ lines: [tex, `${left}+1=${right}`], assume: [], settings: { reversible: true } });
+      const verdict = checkDerivation({
+        lines: [tex, `${left}+1=${right}`],
+        assume: [],
+        settings: { reversible: true },
+      });
       expect([tex, verdict.outcome]).toEqual([tex, 'faulty']);
       expect(verdict.steps[0]?.evidence.witness).toBeDefined();
     }
