@@ -7,6 +7,7 @@ import {
   isFiniteNumber,
   isNear,
   minus,
+  missing,
   over,
   plus,
   real,
@@ -70,21 +71,29 @@ export function aimsOf(question: MendQuestion): Aim[] {
   ];
 }
 
-/** letter = expression: the right side must be what the line above says of the letter, where that is of first degree in it. */
+/** letter = expression: the right side must be what the line above says of the letter, where that can be told. */
 function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]): Omit<Aim, 'cost' | 'budget'> | null {
   const { left, right } = line;
   if (left.kind !== 'letter' || lettersOf(right).includes(left.name)) return null;
   const { name } = left;
-  const target = places.map((place): Complex => {
-    const at = (x: number): Complex =>
-      differenceAt(above, { ...place, letters: new Map(place.letters).set(name, real(x)) });
-    const [f2, f3, f5] = [at(2), at(3), at(5)];
-    const slope = minus(f3, f2);
-    const isLinear = isNear(f5, plus(f2, times(real(3), slope))) && sizeOf(slope) > 1e-9;
-    return isLinear ? minus(real(2), over(f2, slope)) : { re: NaN, im: NaN };
-  });
-  if (!target.every(isFiniteNumber)) return null;
-  return { roots: [right], tree: right, wanted: null, places, targets: [target] };
+  for (const back of ways) {
+    const target = places.map((place): Complex => {
+      return solvedBy(back, (x) => differenceAt(above, { ...place, letters: new Map(place.letters).set(name, x) }));
+    });
+    if (target.every(isFiniteNumber)) return { roots: [right], tree: right, wanted: null, places, targets: [target] };
+  }
+  return null;
+}
+
+/** The line above may be of first degree in the letter, in its reciprocal or in its square. */
+const ways: readonly ((t: Complex) => Complex)[] = [(t) => t, (t) => over(real(1), t), rootOf];
+
+function solvedBy(back: (t: Complex) => Complex, f: (x: Complex) => Complex): Complex {
+  const at = (t: number): Complex => f(back(real(t)));
+  const [f2, f3, f5] = [at(2), at(3), at(5)];
+  const slope = minus(f3, f2);
+  const isLinear = isNear(f5, plus(f2, times(real(3), slope))) && sizeOf(slope) > 1e-9;
+  return isLinear ? back(minus(real(2), over(f2, slope))) : missing;
 }
 
 /** letter = expression with one plus-or-minus: with either sign, one of the two roots of a line above of second degree. */

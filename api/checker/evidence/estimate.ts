@@ -156,10 +156,8 @@ type CalculusExpr = Exclude<
 
 function calculusValue(expr: CalculusExpr, at: Place): Complex {
   switch (expr.kind) {
-    case 'derivative': {
-      const derived = expr.order === 1 ? derive(expr.operand, expr.variable) : null;
-      return derived ? estimate(derived, at) : missing;
-    }
+    case 'derivative':
+      return expr.order === 1 ? derivativeValue(expr, at) : missing;
     case 'evaluated': {
       if (!expr.from || !expr.variable) return missing;
       return minus(
@@ -185,6 +183,35 @@ function calculusValue(expr: CalculusExpr, at: Place): Complex {
     case 'matrix':
       return missing;
   }
+}
+
+const analytic: ReadonlySet<string> = new Set(['sin', 'cos', 'tan', 'cot', 'sec', 'csc', 'ln', 'exp', 'degrees']);
+const step = 1e-20;
+
+function isAnalytic(expr: Expr): boolean {
+  if (expr.kind === 'call' && !analytic.has(expr.name)) return false;
+  const isKnown = ![
+    'integral',
+    'derivative',
+    'limit',
+    'series',
+    'apply',
+    'evaluated',
+    'factorial',
+    'binomial',
+  ].includes(expr.kind);
+  return isKnown && childrenOf(expr).every(isAnalytic);
+}
+
+/** By a step along the imaginary axis (Squire & Trapp 1998), which loses no digits; else by the rules. */
+function derivativeValue({ operand, variable }: Extract<Expr, { kind: 'derivative' }>, at: Place): Complex {
+  const place = at.letters.get(variable);
+  if (place?.im === 0 && isAnalytic(operand)) {
+    const value = estimate(operand, moved(at, variable, { re: place.re, im: step }));
+    return Math.abs(value.im) < 1e-6 ? real(value.im / step) : missing;
+  }
+  const derived = derive(operand, variable);
+  return derived ? estimate(derived, at) : missing;
 }
 
 function moved(at: Place, letter: string, value: Complex): Place {
