@@ -7,10 +7,40 @@ import * as Q from '../numbers/rational.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { isKnown } from '../values/arithmetic.ts';
 import { evaluate } from '../values/evaluate.ts';
-import { addExprs, callOf, divExprs, isZeroExpr, letterOf, mulExprs, numberOf, oneExpr, powExprs, rationalExpr, sqrtExpr, subExprs } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  isZeroExpr,
+  letterOf,
+  mulExprs,
+  numberOf,
+  oneExpr,
+  powExprs,
+  rationalExpr,
+  sqrtExpr,
+  subExprs,
+} from './build.ts';
 import { bodyOf, differentiate } from './differentiate.ts';
-import { factorise, isFree, linearIn, multiplied, polynomialExpr, polynomialIn, termsIn, type Factor, type Factored } from './integrand.ts';
-import { antiderivativeOfCall, antiderivativeOfSquare, integrateByParts, integratePowerLog, integrateWave, productOfWaves } from './integrate-parts.ts';
+import {
+  factorise,
+  isFree,
+  linearIn,
+  multiplied,
+  polynomialExpr,
+  polynomialIn,
+  termsIn,
+  type Factor,
+  type Factored,
+} from './integrand.ts';
+import {
+  antiderivativeOfCall,
+  antiderivativeOfSquare,
+  integrateByParts,
+  integratePowerLog,
+  integrateWave,
+  productOfWaves,
+} from './integrate-parts.ts';
 import { integrateRational } from './integrate-rational.ts';
 import { freshLetter, substitute } from './substitute.ts';
 
@@ -69,10 +99,17 @@ function integrate(expr: Expr, letter: string, context: CheckContext, depth: num
 }
 
 function integratePolynomial(coefs: readonly Expr[], letter: string): Expr {
-  return addExprs(...coefs.map((coef, k) => mulExprs(divExprs(coef, numberOf(k + 1)), powExprs(letterOf(letter), numberOf(k + 1)))));
+  return addExprs(
+    ...coefs.map((coef, k) => mulExprs(divExprs(coef, numberOf(k + 1)), powExprs(letterOf(letter), numberOf(k + 1)))),
+  );
 }
 
-function integrateProduct({ coef, factors }: Factored, letter: string, context: CheckContext, depth: number): Expr | null {
+function integrateProduct(
+  { coef, factors }: Factored,
+  letter: string,
+  context: CheckContext,
+  depth: number,
+): Expr | null {
   const found =
     integrateOne(factors, letter) ??
     integratePair(factors, letter, context, depth) ??
@@ -101,11 +138,18 @@ function integrateOne(factors: readonly Factor[], letter: string): Expr | null {
       : (antiderivativeOfSquare(base.name, times, base.args[0]) ?? inverseCall(base, times));
     return whole && divExprs(whole, inner.slope);
   }
-  return Q.equals(times, Q.rational(-1, 2)) || Q.equals(times, Q.rational(1, 2)) ? integrateRootOfQuadratic(base, times, letter) : null;
+  return Q.equals(times, Q.rational(-1, 2)) || Q.equals(times, Q.rational(1, 2))
+    ? integrateRootOfQuadratic(base, times, letter)
+    : null;
 }
 
 const reciprocals: Partial<Record<string, 'sec' | 'csc' | 'sech' | 'csch' | 'cos' | 'sin' | 'cot' | 'tan'>> = {
-  cos: 'sec', sin: 'csc', sec: 'cos', csc: 'sin', tan: 'cot', cot: 'tan',
+  cos: 'sec',
+  sin: 'csc',
+  sec: 'cos',
+  csc: 'sin',
+  tan: 'cot',
+  cot: 'tan',
 };
 
 function inverseCall(base: Extract<Expr, { kind: 'call' }>, times: Q.Rational): Expr | null {
@@ -124,8 +168,14 @@ function integrateRootOfQuadratic(base: Expr, times: Q.Rational, letter: string)
   if (lead === 0) return null;
   const inverse =
     lead > 0
-      ? divExprs(callOf('ln', callOf('abs', addExprs(mulExprs(numberOf(2), sqrtExpr(a), sqrtExpr(base)), linear))), sqrtExpr(a))
-      : divExprs(callOf('arcsin', divExprs(mulExprs(numberOf(-1), linear), sqrtExpr(gap))), sqrtExpr(mulExprs(numberOf(-1), a)));
+      ? divExprs(
+          callOf('ln', callOf('abs', addExprs(mulExprs(numberOf(2), sqrtExpr(a), sqrtExpr(base)), linear))),
+          sqrtExpr(a),
+        )
+      : divExprs(
+          callOf('arcsin', divExprs(mulExprs(numberOf(-1), linear), sqrtExpr(gap))),
+          sqrtExpr(mulExprs(numberOf(-1), a)),
+        );
   if (Q.sign(times) < 0) return inverse;
   const four = mulExprs(numberOf(4), a);
   const rest = divExprs(mulExprs(numberOf(-1), gap, inverse), mulExprs(numberOf(2), four));
@@ -147,23 +197,37 @@ function integratePair(factors: readonly Factor[], letter: string, context: Chec
   const [first, second] = calls;
   if (first?.base.kind !== 'call') return null;
   if (second?.base.kind === 'call') {
-    if (calls.length > 2 || others.length > 0 || !Q.equals(first.times, Q.one) || !Q.equals(second.times, Q.one)) return null;
+    if (calls.length > 2 || others.length > 0 || !Q.equals(first.times, Q.one) || !Q.equals(second.times, Q.one))
+      return null;
     return integrateCalls(first.base, second.base, letter);
   }
   const polynomial = others.every(({ times }) => times.den === 1n && times.num > 0n)
     ? polynomialIn(multiplied({ coef: oneExpr, factors: others }), letter)
     : null;
   if (polynomial && Q.equals(first.times, Q.one)) {
-    const parts = integrateByParts(polynomial, first.base, letter) ?? integrateInverse(polynomial, first.base, letter, context, depth);
+    const parts =
+      integrateByParts(polynomial, first.base, letter) ??
+      integrateInverse(polynomial, first.base, letter, context, depth);
     if (parts) return parts;
   }
   const [power] = others;
-  if (first.base.name !== 'ln' || first.times.den !== 1n || first.times.num < 0n || first.times.num > 12n || others.length > 1) return null;
+  if (
+    first.base.name !== 'ln' ||
+    first.times.den !== 1n ||
+    first.times.num < 0n ||
+    first.times.num > 12n ||
+    others.length > 1
+  )
+    return null;
   if (power && (power.base.kind !== 'letter' || power.base.name !== letter)) return null;
   return integratePowerLog(power?.times ?? Q.zero, Number(first.times.num), first.base, letter);
 }
 
-function integrateCalls(a: Extract<Expr, { kind: 'call' }>, b: Extract<Expr, { kind: 'call' }>, letter: string): Expr | null {
+function integrateCalls(
+  a: Extract<Expr, { kind: 'call' }>,
+  b: Extract<Expr, { kind: 'call' }>,
+  letter: string,
+): Expr | null {
   if (a.name === 'exp' && (b.name === 'sin' || b.name === 'cos')) return integrateWave(a, b, letter);
   if (b.name === 'exp' && (a.name === 'sin' || a.name === 'cos')) return integrateWave(b, a, letter);
   const [u, v] = [a.args[0], b.args[0]];
@@ -178,7 +242,13 @@ function integrateCalls(a: Extract<Expr, { kind: 'call' }>, b: Extract<Expr, { k
 const inverses: ReadonlySet<string> = new Set(['ln', 'arctan', 'arcsin', 'arccos', 'arsinh', 'artanh']);
 
 /** A polynomial times an inverse function: by parts. */
-function integrateInverse(polynomial: readonly Expr[], call: Extract<Expr, { kind: 'call' }>, letter: string, context: CheckContext, depth: number): Expr | null {
+function integrateInverse(
+  polynomial: readonly Expr[],
+  call: Extract<Expr, { kind: 'call' }>,
+  letter: string,
+  context: CheckContext,
+  depth: number,
+): Expr | null {
   if (!inverses.has(call.name)) return null;
   const whole = integratePolynomial(polynomial, letter);
   const slope = withoutConditions(differentiate(call, letter, context));
@@ -188,11 +258,20 @@ function integrateInverse(polynomial: readonly Expr[], call: Extract<Expr, { kin
 
 /** A derivative without the terms that only keep its domain. */
 function withoutConditions(expr: Expr): Expr {
-  return mapExpr(expr, (node) => (node.kind === 'sum' ? addExprs(...node.terms.map((t) => mulExprs(numberOf(t.sign === 'minus' ? -1 : 1), t.expr))) : node));
+  return mapExpr(expr, (node) =>
+    node.kind === 'sum'
+      ? addExprs(...node.terms.map((t) => mulExprs(numberOf(t.sign === 'minus' ? -1 : 1), t.expr)))
+      : node,
+  );
 }
 
 /** f(g) g' up to a constant, for an inner g: then it is F(g). */
-function substituteInner(factors: readonly Factor[], letter: string, context: CheckContext, depth: number): Expr | null {
+function substituteInner(
+  factors: readonly Factor[],
+  letter: string,
+  context: CheckContext,
+  depth: number,
+): Expr | null {
   if (depth >= 2) return null;
   for (const [k, { base, times }] of factors.entries()) {
     for (const inner of innersOf(base, letter)) {
@@ -211,7 +290,8 @@ function substituteInner(factors: readonly Factor[], letter: string, context: Ch
 
 function innersOf(base: Expr, letter: string): Expr[] {
   const own = base.kind === 'letter' ? [] : [base];
-  const inside = base.kind === 'call' ? childrenOf(base).filter((part) => !isFree(part, letter) && part.kind !== 'letter') : [];
+  const inside =
+    base.kind === 'call' ? childrenOf(base).filter((part) => !isFree(part, letter) && part.kind !== 'letter') : [];
   return [...inside, ...own];
 }
 
@@ -235,7 +315,10 @@ function constantFactor(rest: Expr, slope: Expr, letter: string, context: CheckC
 function factorAt(ratio: Expr, letter: string, at: Q.Rational, context: CheckContext): Expr | null {
   const value = evaluate(ratio, new Map([[letter, { kind: 'rational', value: at }]]), 128, context);
   if (value.kind === 'rational') return rationalExpr(value.value);
-  if (!isKnown(value)) return value.kind === 'unknown' && value.reason === 'not-covered' ? substitute(ratio, letter, rationalExpr(at)) : null;
+  if (!isKnown(value))
+    return value.kind === 'unknown' && value.reason === 'not-covered'
+      ? substitute(ratio, letter, rationalExpr(at))
+      : null;
   if (value.kind !== 'ball' || value.im !== null) return substitute(ratio, letter, rationalExpr(at));
   for (let den = 1n; den <= 60n; den += 1n) {
     const scaled = (value.re.mid * den * 2n + (1n << 128n)) / (2n << 128n);

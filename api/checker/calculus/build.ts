@@ -27,7 +27,13 @@ export const oneExpr = numberOf(1);
 export const infinityExpr: Expr = { kind: 'constant', name: 'infinity', span };
 export const piExpr: Expr = { kind: 'constant', name: 'pi', span };
 /** Has no value anywhere. */
-export const noValueExpr: Expr = { kind: 'quotient', numerator: oneExpr, denominator: zeroExpr, written: 'fraction', span };
+export const noValueExpr: Expr = {
+  kind: 'quotient',
+  numerator: oneExpr,
+  denominator: zeroExpr,
+  written: 'fraction',
+  span,
+};
 
 /** The fraction that an expression is, where numbers and signs alone say so. */
 export function rationalOf(expr: Expr): Rational | null {
@@ -155,5 +161,12 @@ export function letterOf(name: string): Expr {
 /** The same value, with a value only where `needed` has one. */
 export function wherever(needed: Expr, expr: Expr): Expr {
   const nothing: Expr = { kind: 'product', factors: [zeroExpr, needed], joins: ['dot'], span };
-  return { kind: 'sum', terms: [{ sign: 'plus', expr, span }, { sign: 'plus', expr: nothing, span }], span };
+  return {
+    kind: 'sum',
+    terms: [
+      { sign: 'plus', expr, span },
+      { sign: 'plus', expr: nothing, span },
+    ],
+    span,
+  };
 }

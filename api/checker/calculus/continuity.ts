@@ -7,7 +7,18 @@ import { squareFreePart } from '../solving/polynomial.ts';
 import { isolateRealRoots } from '../solving/real-roots.ts';
 import { isKnown, isReal, toBall } from '../values/arithmetic.ts';
 import { evaluate, evaluatePrepared, prepare, type Prepared } from '../values/evaluate.ts';
-import { addExprs, divExprs, letterOf, mulExprs, numberOf, oneExpr, piExpr, powExprs, rationalExpr, rationalOf } from './build.ts';
+import {
+  addExprs,
+  divExprs,
+  letterOf,
+  mulExprs,
+  numberOf,
+  oneExpr,
+  piExpr,
+  powExprs,
+  rationalExpr,
+  rationalOf,
+} from './build.ts';
 import { infinitySign } from './limit.ts';
 import { polynomialIn } from './integrand.ts';
 import { needsOf } from './needs.ts';
@@ -29,7 +40,13 @@ const mostEvaluations = 1_500;
  * Cuts the stretch between two numbers so that the expression is continuous between neighbouring ones: shown by enclosures
  * of its values on small intervals, but for small stretches around the cuts. Null where that does not succeed.
  */
-export function splitAt(expr: Expr, variable: string, from: Expr, to: Expr, context: CheckContext): readonly Cut[] | null {
+export function splitAt(
+  expr: Expr,
+  variable: string,
+  from: Expr,
+  to: Expr,
+  context: CheckContext,
+): readonly Cut[] | null {
   const [a, b] = [positionOf(from, context), positionOf(to, context)];
   if (!a || !b) return null;
   if (a.value === b.value) return Q.equals(a.exact ?? Q.one, b.exact ?? Q.zero) ? [] : null;
@@ -65,30 +82,61 @@ interface CutPoint {
 /** Beyond this the stretch is looked at in 1/x. */
 const farAway = 64;
 
-function cutPoints(expr: Expr, variable: string, low: Position, high: Position, context: CheckContext): CutPoint[] | null {
+function cutPoints(
+  expr: Expr,
+  variable: string,
+  low: Position,
+  high: Position,
+  context: CheckContext,
+): CutPoint[] | null {
   const needs = zerosOf(expr, variable, low, high, context);
   if (!needs) return null;
   const { candidates } = needs;
   if (needs.areAll) return between(low, high, candidates);
-  const reach = Math.max(farAway, ...[low.value, high.value, ...candidates.map(({ value }) => value)].filter(Number.isFinite).map((x) => 2 * Math.abs(x)));
+  const reach = Math.max(
+    farAway,
+    ...[low.value, high.value, ...candidates.map(({ value }) => value)]
+      .filter(Number.isFinite)
+      .map((x) => 2 * Math.abs(x)),
+  );
   const graph = prepare(expr, context);
   const start = Number.isFinite(low.value) ? low.value : -reach;
   const end = Number.isFinite(high.value) ? high.value : reach;
-  const trouble = unresolved(graph, variable, start, end, context, candidates.map(({ value }) => value));
+  const trouble = unresolved(
+    graph,
+    variable,
+    start,
+    end,
+    context,
+    candidates.map(({ value }) => value),
+  );
   if (!trouble) return null;
-  if ([low, high].some(({ value }) => !Number.isFinite(value) && !isCalm(expr, variable, value, reach, context))) return null;
+  if ([low, high].some(({ value }) => !Number.isFinite(value) && !isCalm(expr, variable, value, reach, context)))
+    return null;
   const inner = candidates.filter(({ value }) => value > start && value < end);
   const width = (end - start) / 2 ** 6;
-  const near = (x: number, [from, to]: readonly [number, number]): boolean => x >= from - 1e-9 * width && x <= to + 1e-9 * width;
-  const covered = trouble.every((stretch) => inner.some(({ value }) => near(value, stretch)) || near(start, stretch) || near(end, stretch));
-  return covered ? between(low, high, inner.filter(({ value }) => trouble.some((stretch) => near(value, stretch)))) : null;
+  const near = (x: number, [from, to]: readonly [number, number]): boolean =>
+    x >= from - 1e-9 * width && x <= to + 1e-9 * width;
+  const covered = trouble.every(
+    (stretch) => inner.some(({ value }) => near(value, stretch)) || near(start, stretch) || near(end, stretch),
+  );
+  return covered
+    ? between(
+        low,
+        high,
+        inner.filter(({ value }) => trouble.some((stretch) => near(value, stretch))),
+      )
+    : null;
 }
 
 /** Ends are approached as limits: for those at which nothing is amiss that is the value. */
 function between(low: Position, high: Position, candidates: readonly Candidate[]): CutPoint[] {
   const isNear = (a: number, b: number): boolean => Math.abs(a - b) < 1e-9 * (1 + Math.abs(a));
-  const gaps = candidates.filter(({ value }) => value > low.value && value < high.value && !isNear(value, low.value) && !isNear(value, high.value));
-  const isGap = ({ value }: Position): boolean => !Number.isFinite(value) || candidates.some((candidate) => isNear(candidate.value, value));
+  const gaps = candidates.filter(
+    ({ value }) => value > low.value && value < high.value && !isNear(value, low.value) && !isNear(value, high.value),
+  );
+  const isGap = ({ value }: Position): boolean =>
+    !Number.isFinite(value) || candidates.some((candidate) => isNear(candidate.value, value));
   return [
     { expr: low.expr, isGap: isGap(low) },
     ...[...gaps].sort((a, b) => a.value - b.value).map(({ expr: at }) => ({ expr: at, isGap: true })),
@@ -97,13 +145,25 @@ function between(low: Position, high: Position, candidates: readonly Candidate[]
 }
 
 /** Small stretches on which the values could not be enclosed, joined where they touch. */
-function unresolved(graph: Prepared, variable: string, start: number, end: number, context: CheckContext, expected: readonly number[] = []): [number, number][] | null {
+function unresolved(
+  graph: Prepared,
+  variable: string,
+  start: number,
+  end: number,
+  context: CheckContext,
+  expected: readonly number[] = [],
+): [number, number][] | null {
   const found: [number, number][] = [];
   const pieces = Math.max(1, Math.min(64, Math.ceil((end - start) * 2)));
   let count = 0;
   const visit = (low: number, high: number, depth: number): boolean => {
     if ((count += 1) > mostEvaluations) return false;
-    const value = evaluatePrepared(graph, new Map([[variable, { kind: 'ball', re: ballAround(low, high), im: null }]]), bits, context);
+    const value = evaluatePrepared(
+      graph,
+      new Map([[variable, { kind: 'ball', re: ballAround(low, high), im: null }]]),
+      bits,
+      context,
+    );
     if (isKnown(value) && isReal(value)) return true;
     const isExpected = depth >= 6 && expected.some((x) => x >= low && x <= high);
     if (depth >= deepest || isExpected) {
@@ -116,7 +176,10 @@ function unresolved(graph: Prepared, variable: string, start: number, end: numbe
     return visit(low, middle, depth + 1) && visit(middle, high, depth + 1);
   };
   for (let k = 0; k < pieces; k += 1) {
-    const [low, high] = [start + ((end - start) * k) / pieces, k === pieces - 1 ? end : start + ((end - start) * (k + 1)) / pieces];
+    const [low, high] = [
+      start + ((end - start) * k) / pieces,
+      k === pieces - 1 ? end : start + ((end - start) * (k + 1)) / pieces,
+    ];
     if (!visit(low, high, Math.min(5, Math.floor(Math.log2(pieces))))) return null;
   }
   return found;
@@ -158,14 +221,17 @@ function zerosOf(expr: Expr, variable: string, low: Position, high: Position, co
     const zeros = rootsOf(need.expr, variable, low, high, context);
     if (!zeros) return null;
     areAll &&= zeros.areAll;
-    for (const root of zeros.candidates) if (!found.some(({ value }) => Math.abs(value - root.value) < 1e-9)) found.push(root);
+    for (const root of zeros.candidates)
+      if (!found.some(({ value }) => Math.abs(value - root.value) < 1e-9)) found.push(root);
   }
   return { candidates: found, areAll };
 }
 
 function rootsOf(need: Expr, variable: string, low: Position, high: Position, context: CheckContext): Zeros | null {
   if (need.kind === 'quotient' || need.kind === 'product') {
-    const parts = (need.kind === 'quotient' ? [need.numerator, need.denominator] : need.factors).map((part) => rootsOf(part, variable, low, high, context));
+    const parts = (need.kind === 'quotient' ? [need.numerator, need.denominator] : need.factors).map((part) =>
+      rootsOf(part, variable, low, high, context),
+    );
     if (parts.includes(null)) return null;
     return { candidates: parts.flatMap((part) => part?.candidates ?? []), areAll: parts.every((part) => part?.areAll) };
   }
@@ -178,8 +244,12 @@ function rootsOf(need: Expr, variable: string, low: Position, high: Position, co
   if (!fraction) return { candidates: turningRoots(need, variable, low, high, context), areAll: false };
   if (fraction.num.length < 2) return { candidates: [], areAll: true };
   const roots = isolateRealRoots(squareFreePart(fraction.num));
-  const exact = roots.filter((root) => Q.equals(root.low, root.high)).map(({ low: at }) => ({ expr: rationalExpr(at), value: Q.toNumber(at) }));
-  const isOpen = roots.some((root) => Q.toNumber(root.high) > low.value && Q.toNumber(root.low) < high.value && !Q.equals(root.low, root.high));
+  const exact = roots
+    .filter((root) => Q.equals(root.low, root.high))
+    .map(({ low: at }) => ({ expr: rationalExpr(at), value: Q.toNumber(at) }));
+  const isOpen = roots.some(
+    (root) => Q.toNumber(root.high) > low.value && Q.toNumber(root.low) < high.value && !Q.equals(root.low, root.high),
+  );
   return isOpen ? null : { candidates: exact, areAll: true };
 }
 
@@ -202,7 +272,9 @@ function quadraticRoots(coefs: readonly Expr[], context: CheckContext): Candidat
 /** Zeros among whole numbers, halves, multiples of pi/12 and small powers of e. */
 function turningRoots(need: Expr, variable: string, low: Position, high: Position, context: CheckContext): Candidate[] {
   const e: Expr = { kind: 'constant', name: 'e', span: need.span };
-  const places: Candidate[] = [oneExpr, numberOf(0), e, divExprs(oneExpr, e)].flatMap((expr) => positionOf(expr, context) ?? []);
+  const places: Candidate[] = [oneExpr, numberOf(0), e, divExprs(oneExpr, e)].flatMap(
+    (expr) => positionOf(expr, context) ?? [],
+  );
   for (let k = -48; k <= 48; k += 1) {
     places.push({ expr: mulExprs(numberOf(k, 12), piExpr), value: (k * Math.PI) / 12 });
     if (Math.abs(k) <= 12 && k !== 0 && k !== 2) places.push({ expr: numberOf(k, 2), value: k / 2 });
@@ -212,8 +284,8 @@ function turningRoots(need: Expr, variable: string, low: Position, high: Positio
     if (value < low.value - 1e-9 || value > high.value + 1e-9) return false;
     const position = evaluate(expr, new Map(), bits, context);
     const worth = isKnown(position) ? evaluatePrepared(graph, new Map([[variable, position]]), bits, context) : null;
-    if (!worth || !isKnown(worth) || !isReal(worth) || Math.abs(ballToNumber(toBall(worth, bits).re, bits)) > 1e-12) return false;
+    if (!worth || !isKnown(worth) || !isReal(worth) || Math.abs(ballToNumber(toBall(worth, bits).re, bits)) > 1e-12)
+      return false;
     return isZeroCoefficient(substitute(need, variable, expr), context);
   });
 }
-

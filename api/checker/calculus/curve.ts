@@ -6,7 +6,18 @@ import { toKnownValue } from '../solving/point-value.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { solveStatement, type SolveEnv } from '../statements/solve.ts';
 import type { CompareStatement } from '../statements/statement.ts';
-import { divKnown, isExactZero, isKnown, isReal, mulKnown, negateKnown, oneValue, subKnown, toBall, zeroValue } from '../values/arithmetic.ts';
+import {
+  divKnown,
+  isExactZero,
+  isKnown,
+  isReal,
+  mulKnown,
+  negateKnown,
+  oneValue,
+  subKnown,
+  toBall,
+  zeroValue,
+} from '../values/arithmetic.ts';
 import { evaluate } from '../values/evaluate.ts';
 import { valueTex } from '../values/value-tex.ts';
 import type { KnownValue } from '../values/value.ts';
@@ -27,7 +38,10 @@ export type CurveAnswer =
  * rates give there. Every equation is linear in the rate that it is solved for.
  */
 export function tryOnCurve(
-  relations: readonly CompareStatement[], rated: readonly CompareStatement[], claim: CompareStatement, context: CheckContext,
+  relations: readonly CompareStatement[],
+  rated: readonly CompareStatement[],
+  claim: CompareStatement,
+  context: CheckContext,
 ): CurveAnswer {
   let agreed = 0;
   let apart: Readonly<Record<string, string>> | null = null;
@@ -45,21 +59,36 @@ export function tryOnCurve(
 
 type CurvePoint = Map<string, KnownValue>;
 
-const firsts: readonly Q.Rational[] = [1, 3, 2, -1, 4, -2, 5, 6, -3].map((n) => Q.rational(n)).concat([Q.rational(1, 2), Q.rational(3, 2), Q.rational(7, 3)]);
+const firsts: readonly Q.Rational[] = [1, 3, 2, -1, 4, -2, 5, 6, -3]
+  .map((n) => Q.rational(n))
+  .concat([Q.rational(1, 2), Q.rational(3, 2), Q.rational(7, 3)]);
 
 /** Points that satisfy the relations; without any, all letters are free. */
-function pointsOn(relations: readonly CompareStatement[], others: readonly CompareStatement[], context: CheckContext): CurvePoint[] {
-  const names = [...new Set([...relations, ...others].flatMap(lettersOfEquation))].filter((name) => rateNamed(name) === null && !context.definitions.letters.has(name));
+function pointsOn(
+  relations: readonly CompareStatement[],
+  others: readonly CompareStatement[],
+  context: CheckContext,
+): CurvePoint[] {
+  const names = [...new Set([...relations, ...others].flatMap(lettersOfEquation))].filter(
+    (name) => rateNamed(name) === null && !context.definitions.letters.has(name),
+  );
   const [relation] = relations;
   const solved = relation && dependentOf(relation, others, context);
   const found: CurvePoint[] = [];
   for (let k = 0; k < firsts.length && found.length < mostPoints; k += 1) {
-    const given = new Map(names.filter((name) => name !== solved).map((name, j) => [name, firsts[(k + j * 4) % firsts.length] as Q.Rational]));
+    const given = new Map(
+      names
+        .filter((name) => name !== solved)
+        .map((name, j) => [name, firsts[(k + j * 4) % firsts.length] as Q.Rational]),
+    );
     const start: CurvePoint = new Map([...given].map(([name, value]) => [name, { kind: 'rational', value }]));
     if (!relation || !solved) found.push(start);
-    else for (const value of solutionsOf(relation, solved, given, context)) found.push(new Map(start).set(solved, value));
+    else
+      for (const value of solutionsOf(relation, solved, given, context)) found.push(new Map(start).set(solved, value));
   }
-  return found.filter((point) => relations.slice(1).every((other) => isTrueAt(other, point, context) === true)).sort((a, b) => weight(a) - weight(b));
+  return found
+    .filter((point) => relations.slice(1).every((other) => isTrueAt(other, point, context) === true))
+    .sort((a, b) => weight(a) - weight(b));
 }
 
 /** Exact points first: a person puts them in by hand. */
@@ -72,13 +101,26 @@ function lettersOfEquation({ left, right }: CompareStatement): string[] {
 }
 
 /** The letter that a rate is of, else one that the relation has. */
-function dependentOf(relation: CompareStatement, others: readonly CompareStatement[], context: CheckContext): string | undefined {
+function dependentOf(
+  relation: CompareStatement,
+  others: readonly CompareStatement[],
+  context: CheckContext,
+): string | undefined {
   const names = lettersOfEquation(relation);
   const moving = others.flatMap(lettersOfEquation).flatMap((name) => rateNamed(name)?.of ?? []);
-  return moving.find((name) => names.includes(name)) ?? names.find((name) => context.calculus?.dependents.has(name)) ?? names[0];
+  return (
+    moving.find((name) => names.includes(name)) ??
+    names.find((name) => context.calculus?.dependents.has(name)) ??
+    names[0]
+  );
 }
 
-function solutionsOf(relation: CompareStatement, letter: string, given: ReadonlyMap<string, Q.Rational>, context: CheckContext): KnownValue[] {
+function solutionsOf(
+  relation: CompareStatement,
+  letter: string,
+  given: ReadonlyMap<string, Q.Rational>,
+  context: CheckContext,
+): KnownValue[] {
   const env: SolveEnv = { letter, given, context, window: { low: -8, high: 8 }, hints: [], families: new Set() };
   try {
     const set = solveStatement(relation, env);
@@ -90,12 +132,21 @@ function solutionsOf(relation: CompareStatement, letter: string, given: Readonly
 }
 
 /** Adds the rates, lowest order first; null where an equation does not give one. */
-function withRates(start: CurvePoint, rated: readonly CompareStatement[], claims: readonly CompareStatement[], context: CheckContext): CurvePoint | null {
+function withRates(
+  start: CurvePoint,
+  rated: readonly CompareStatement[],
+  claims: readonly CompareStatement[],
+  context: CheckContext,
+): CurvePoint | null {
   const point = new Map(start);
-  const names = [...new Set([...rated, ...claims].flatMap(lettersOfEquation).filter((name) => rateNamed(name) !== null))];
+  const names = [
+    ...new Set([...rated, ...claims].flatMap(lettersOfEquation).filter((name) => rateNamed(name) !== null)),
+  ];
   for (let round = 0; round < 4 && names.some((name) => !point.has(name)); round += 1) {
     for (const equation of rated) {
-      const open = [...new Set(lettersOfEquation(equation))].filter((name) => rateNamed(name) !== null && !point.has(name));
+      const open = [...new Set(lettersOfEquation(equation))].filter(
+        (name) => rateNamed(name) !== null && !point.has(name),
+      );
       const [name] = open;
       if (open.length !== 1 || name === undefined) continue;
       const value = solveLinear(equation, name, point, context);
@@ -105,7 +156,12 @@ function withRates(start: CurvePoint, rated: readonly CompareStatement[], claims
   return names.every((name) => point.has(name)) ? point : null;
 }
 
-function solveLinear(equation: CompareStatement, name: string, point: CurvePoint, context: CheckContext): KnownValue | null {
+function solveLinear(
+  equation: CompareStatement,
+  name: string,
+  point: CurvePoint,
+  context: CheckContext,
+): KnownValue | null {
   const difference = subExprs(equation.left, equation.right);
   const worth = (value: KnownValue): KnownValue | null => {
     const result = evaluate(difference, new Map(point).set(name, value), bits, context);
@@ -136,4 +192,3 @@ function isTrueAt({ left, right }: CompareStatement, point: CurvePoint, context:
   if (difference.kind !== 'ball') return false;
   return ballSign(toBall(difference, bits).re) === 0 ? null : false;
 }
-

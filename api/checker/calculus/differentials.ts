@@ -35,7 +35,9 @@ export function judgeDifferentials(line: Line, context: CheckContext): StepResul
 export function differentialsIn(expr: Expr): string[] {
   const found: string[] = [];
   mapExpr(expr, (node) => {
-    if (node.kind === 'product') for (const [k, factor] of node.factors.entries()) if (isDifferential(node.factors, k)) found.push(factor.kind === 'letter' ? factor.name : '');
+    if (node.kind === 'product')
+      for (const [k, factor] of node.factors.entries())
+        if (isDifferential(node.factors, k)) found.push(factor.kind === 'letter' ? factor.name : '');
     return node;
   });
   return found;

@@ -1,5 +1,18 @@
 import type { Expr, FunctionName } from '../../../shared/maths/expression.ts';
-import { addExprs, callOf, divExprs, mulExprs, negateExpr, numberOf, oneExpr, piExpr, powExprs, sqrtExpr, subExprs, wherever } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  mulExprs,
+  negateExpr,
+  numberOf,
+  oneExpr,
+  piExpr,
+  powExprs,
+  sqrtExpr,
+  subExprs,
+  wherever,
+} from './build.ts';
 
 const two = numberOf(2);
 

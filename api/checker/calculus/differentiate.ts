@@ -4,7 +4,22 @@ import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import { Unsettled } from '../solving/unsettled.ts';
-import { addExprs, callOf, divExprs, isZeroExpr, mulExprs, negateExpr, numberOf, oneExpr, powExprs, rationalExpr, rationalOf, subExprs, wherever, zeroExpr } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  isZeroExpr,
+  mulExprs,
+  negateExpr,
+  numberOf,
+  oneExpr,
+  powExprs,
+  rationalExpr,
+  rationalOf,
+  subExprs,
+  wherever,
+  zeroExpr,
+} from './build.ts';
 import { slopeOf } from './differentiate-call.ts';
 import { rateExpr, rateNamed } from './rates.ts';
 import { substitute } from './substitute.ts';
@@ -34,7 +49,13 @@ export function differentiate(expr: Expr, variable: string, context: CheckContex
 }
 
 /** A derivative of higher order. */
-export function differentiateTimes(expr: Expr, variable: string, order: number, context: CheckContext, partial = false): Expr {
+export function differentiateTimes(
+  expr: Expr,
+  variable: string,
+  order: number,
+  context: CheckContext,
+  partial = false,
+): Expr {
   let result = expr;
   for (let k = 0; k < order; k += 1) result = differentiate(result, variable, context, partial);
   return result;
@@ -66,14 +87,17 @@ function ownLetters(node: Expr, context: CheckContext, depth = 0): readonly stri
   const inside = childrenOf(node).flatMap((part) => ownLetters(part, context, depth));
   const own = node.kind === 'apply' ? context.definitions.functions.get(node.name) : undefined;
   if (!own || depth > 8) return inside;
-  const free = lettersOf(own.value).filter((name) => node.kind === 'apply' && (node.args.length === 0 || !own.params.includes(name)));
+  const free = lettersOf(own.value).filter(
+    (name) => node.kind === 'apply' && (node.args.length === 0 || !own.params.includes(name)),
+  );
   return [...inside, ...free, ...ownLetters(own.value, context, depth + 1)];
 }
 
 function moves(name: string, variable: string, context: CheckContext, partial: boolean): boolean {
   if (name === variable) return true;
   const definition = context.definitions.letters.get(name);
-  if (definition !== undefined) return lettersOf(definition).some((inner) => inner !== name && moves(inner, variable, context, partial));
+  if (definition !== undefined)
+    return lettersOf(definition).some((inner) => inner !== name && moves(inner, variable, context, partial));
   if (partial) return false;
   const rate = rateNamed(name);
   if (rate) return rate.by === variable;
@@ -165,7 +189,10 @@ function ofPower(node: Extract<Expr, { kind: 'power' }>, scope: Scope, visit: Vi
   }
   if (base.kind === 'constant' && base.name === 'e') return mulExprs(node, visit(exponent));
   if (scope.isConstant(base)) return mulExprs(node, callOf('ln', base), visit(exponent));
-  const growth = addExprs(mulExprs(visit(exponent), callOf('ln', base)), divExprs(mulExprs(exponent, visit(base)), base));
+  const growth = addExprs(
+    mulExprs(visit(exponent), callOf('ln', base)),
+    divExprs(mulExprs(exponent, visit(base)), base),
+  );
   return mulExprs(node, growth);
 }
 
@@ -225,7 +252,9 @@ function substituteAll(body: Expr, params: readonly string[], args: readonly Exp
   // By way of letters of their own, so that f(y, x) does not mix its letters up.
   const middle = params.map((_, k) => `\\arg_{${k + 1}}`);
   let result = body;
-  params.forEach((param, k) => (result = substitute(result, param, { kind: 'letter', name: middle[k] as string, span: body.span })));
+  params.forEach(
+    (param, k) => (result = substitute(result, param, { kind: 'letter', name: middle[k] as string, span: body.span })),
+  );
   args.forEach((arg, k) => (result = substitute(result, middle[k] as string, arg)));
   return result;
 }
@@ -240,7 +269,10 @@ function ofIntegral(node: Extract<Expr, { kind: 'integral' }>, scope: Scope, vis
     if (variable !== scope.variable && lettersOf(integrand).includes(scope.variable)) return unsettled();
     return mulExprs(integrand, visit({ kind: 'letter', name: variable, span: node.span }));
   }
-  const ends = subExprs(mulExprs(substitute(integrand, variable, to), visit(to)), mulExprs(substitute(integrand, variable, from), visit(from)));
+  const ends = subExprs(
+    mulExprs(substitute(integrand, variable, to), visit(to)),
+    mulExprs(substitute(integrand, variable, from), visit(from)),
+  );
   if (variable === scope.variable || scope.isConstant(integrand)) return ends;
   return addExprs(ends, { ...node, integrand: visit(integrand) });
 }

@@ -2,11 +2,36 @@ import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import * as Q from '../numbers/rational.ts';
 import { Unsettled } from '../solving/unsettled.ts';
-import { addExprs, callOf, divExprs, mulExprs, numberOf, oneExpr, piExpr, rationalOf, subExprs, zeroExpr } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  mulExprs,
+  numberOf,
+  oneExpr,
+  piExpr,
+  rationalOf,
+  subExprs,
+  zeroExpr,
+} from './build.ts';
 import { bodyOf, differentiateTimes } from './differentiate.ts';
 import {
-  addSeries, boundedSeries, composeSeries, constantSeries, expSeries, inverseSeries, lnSeries, mulSeries, negateSeries, rationalPower,
-  scaleSeries, signOfCoefficient, splitBySize, unitScale, type Expansion, type Series,
+  addSeries,
+  boundedSeries,
+  composeSeries,
+  constantSeries,
+  expSeries,
+  inverseSeries,
+  lnSeries,
+  mulSeries,
+  negateSeries,
+  rationalPower,
+  scaleSeries,
+  signOfCoefficient,
+  splitBySize,
+  unitScale,
+  type Expansion,
+  type Series,
 } from './series-ring.ts';
 import { substitute } from './substitute.ts';
 
@@ -71,7 +96,8 @@ function expandNode(node: Expr, job: ExpandJob): Series {
 function expandPower(base: Expr, exponent: Expr, { context, visit, variable }: ExpandJob): Series {
   const r = rationalOf(exponent);
   if (r) return rationalPower(visit(base), r, context);
-  if (!lettersOf(base).includes(variable) && !lettersOf(exponent).includes(variable)) return constantSeries({ kind: 'power', base, exponent, span: base.span });
+  if (!lettersOf(base).includes(variable) && !lettersOf(exponent).includes(variable))
+    return constantSeries({ kind: 'power', base, exponent, span: base.span });
   if (base.kind === 'constant' && base.name === 'e') return expSeries(visit(exponent), context);
   return expSeries(mulSeries(visit(exponent), lnSeries(visit(base), context), context), context);
 }
@@ -144,8 +170,16 @@ function expandCircular(name: 'sin' | 'cos', a: Series, context: Expansion): Ser
     if (context.numbers === 'complex') throw new Unsettled('not-covered');
     return boundedSeries(unitScale);
   }
-  const sine = composeSeries((k) => (k % 2 === 0 ? zeroExpr : numberOf(k % 4 === 1 ? 1 : -1, factorial(k))), small, context);
-  const cosine = composeSeries((k) => (k % 2 === 1 ? zeroExpr : numberOf(k % 4 === 0 ? 1 : -1, factorial(k))), small, context);
+  const sine = composeSeries(
+    (k) => (k % 2 === 0 ? zeroExpr : numberOf(k % 4 === 1 ? 1 : -1, factorial(k))),
+    small,
+    context,
+  );
+  const cosine = composeSeries(
+    (k) => (k % 2 === 1 ? zeroExpr : numberOf(k % 4 === 0 ? 1 : -1, factorial(k))),
+    small,
+    context,
+  );
   if (constant === null) return name === 'sin' ? sine : cosine;
   const [s, c] = [callOf('sin', constant), callOf('cos', constant)];
   if (name === 'sin') return addSeries(scaleSeries(cosine, s, context), scaleSeries(sine, c, context), context);
@@ -175,9 +209,14 @@ function expandArctan(a: Series, context: Expansion): Series {
     const rest = negateSeries(expandArctan(inverseSeries(a, context), context));
     return addSeries(constantSeries(mulExprs(numberOf(known, 2), piExpr)), rest, context);
   }
-  const tail = (z: Series): Series => composeSeries((k) => (k % 2 === 0 ? zeroExpr : numberOf(k % 4 === 1 ? 1 : -1, k)), z, context);
+  const tail = (z: Series): Series =>
+    composeSeries((k) => (k % 2 === 0 ? zeroExpr : numberOf(k % 4 === 1 ? 1 : -1, k)), z, context);
   if (constant === null) return tail(small);
-  const bottom = addSeries(constantSeries(addExprs(oneExpr, mulExprs(constant, constant))), scaleSeries(small, constant, context), context);
+  const bottom = addSeries(
+    constantSeries(addExprs(oneExpr, mulExprs(constant, constant))),
+    scaleSeries(small, constant, context),
+    context,
+  );
   const z = mulSeries(small, inverseSeries(bottom, context), context);
   return addSeries(constantSeries(callOf('arctan', constant)), tail(z), context);
 }
@@ -202,6 +241,10 @@ function expandTaylor(name: Extract<Expr, { kind: 'call' }>['name'], a: Series, 
     total = addSeries(total, scaleSeries(power, divExprs(slope, numberOf(factorial(k))), context), context);
   }
   if (!size) return total;
-  const beyond = rationalPower({ terms: [{ coef: oneExpr, scale: size }], error: null }, Q.rational(taylorOrder + 1), context).terms[0];
+  const beyond = rationalPower(
+    { terms: [{ coef: oneExpr, scale: size }], error: null },
+    Q.rational(taylorOrder + 1),
+    context,
+  ).terms[0];
   return addSeries(total, boundedSeries(beyond?.scale ?? size), context);
 }

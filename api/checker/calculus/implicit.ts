@@ -61,14 +61,27 @@ function judgeDerived(question: StatementQuestion, fresh: readonly string[]): St
 function tryFormula(question: StatementQuestion, above: CompareStatement, letter: string): StepResult | null {
   const { below, reference, settings, context } = question;
   try {
-    return judgeFormula({ above, below, letter, reference: reference === question.above ? above : reference, families: new Set(), settings, context });
+    return judgeFormula({
+      above,
+      below,
+      letter,
+      reference: reference === question.above ? above : reference,
+      families: new Set(),
+      settings,
+      context,
+    });
   } catch (cause) {
     if (cause instanceof Unsettled) return null;
     throw cause;
   }
 }
 
-function derivedFrom(sources: readonly CompareStatement[], by: string, order: number, context: CheckContext): CompareStatement[] {
+function derivedFrom(
+  sources: readonly CompareStatement[],
+  by: string,
+  order: number,
+  context: CheckContext,
+): CompareStatement[] {
   const result: CompareStatement[] = [];
   for (const { left, right, sign } of sources) {
     let sides = [carriedOut(left, context), carriedOut(right, context)] as const;
@@ -86,15 +99,22 @@ function oneWay(found: StepResult, source: CompareStatement, { settings }: State
     const gained = `${printExpr(source.left)}=${printExpr(source.right)}+C`;
     return fails(found.reached ?? 'proved', { gained: [gained], operation: 'differentiate' });
   }
-  return holds(found.reached ?? 'sampled', [...found.notes, 'one-way'], { ...found.evidence, operation: 'differentiate' });
+  return holds(found.reached ?? 'sampled', [...found.notes, 'one-way'], {
+    ...found.evidence,
+    operation: 'differentiate',
+  });
 }
 
 function onCurve(
-  relations: readonly CompareStatement[], rated: readonly CompareStatement[], below: CompareStatement, { context }: StatementQuestion,
+  relations: readonly CompareStatement[],
+  rated: readonly CompareStatement[],
+  below: CompareStatement,
+  { context }: StatementQuestion,
   agreed: (found: StepResult) => StepResult,
 ): StepResult {
   const found = tryOnCurve(relations, rated, below, context);
-  if (found.kind === 'apart') return fails('proved', { witness: { at: { ...found.at }, above: 'true', below: 'false' } });
+  if (found.kind === 'apart')
+    return fails('proved', { witness: { at: { ...found.at }, above: 'true', below: 'false' } });
   return found.kind === 'agreed' ? agreed(holds('sampled')) : undecided('not-settled');
 }
 
@@ -106,7 +126,10 @@ function confirmed(question: StatementQuestion, judge: Judge): StatementAnswer {
   const below = equationOf(question.below);
   if (result.ruling === 'holds' || !below) return result;
   const equations = [above, ...known].flatMap(comparesOf).filter(({ sign }) => sign === '=');
-  const relations = equations.filter((equation) => ratesIn(equation, context).length === 0 && lettersOf(equation.left).length + lettersOf(equation.right).length > 0);
+  const relations = equations.filter(
+    (equation) =>
+      ratesIn(equation, context).length === 0 && lettersOf(equation.left).length + lettersOf(equation.right).length > 0,
+  );
   if (relations.length === 0) return result;
   const rated = equations.filter((equation) => ratesIn(equation, context).length > 0);
   return { ...onCurve(relations.slice(0, 1), rated, below, question, (found) => found), candidates: [] };

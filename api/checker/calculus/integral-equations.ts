@@ -16,9 +16,24 @@ import { carriedOut } from './reduce.ts';
 import { indefiniteVariables } from './scope.ts';
 
 /** Equations with indefinite integrals or a constant of integration on the way; null for all others. */
-export function judgeIntegralEquations({ above, below, settings, context, families }: StatementQuestion & { readonly families?: ReadonlySet<string> }): StepResult | null {
-  if (!context.calculus?.hasIntegral || above.kind !== 'compare' || below.kind !== 'compare' || above.sign !== '=' || below.sign !== '=') return null;
-  const constants = [above, below].map((statement) => lettersIn(statement).filter((name) => context.calculus?.constants.has(name)));
+export function judgeIntegralEquations({
+  above,
+  below,
+  settings,
+  context,
+  families,
+}: StatementQuestion & { readonly families?: ReadonlySet<string> }): StepResult | null {
+  if (
+    !context.calculus?.hasIntegral ||
+    above.kind !== 'compare' ||
+    below.kind !== 'compare' ||
+    above.sign !== '=' ||
+    below.sign !== '='
+  )
+    return null;
+  const constants = [above, below].map((statement) =>
+    lettersIn(statement).filter((name) => context.calculus?.constants.has(name)),
+  );
   const integrals = [above, below].map((statement) => exprsOfStatement(statement).flatMap(indefiniteVariables));
   const rates = [above, below].map((statement) => lettersIn(statement).filter((name) => rateNamed(name) !== null));
   const isFreeBelow = constants[1]?.length !== 0 || integrals[1]?.length !== 0;
@@ -42,20 +57,37 @@ function noConstant(below: CompareStatement): StepResult {
 type Rest = Pick<StatementQuestion, 'settings' | 'context'> & { readonly families?: ReadonlySet<string> | undefined };
 
 /** A relation between x and y as the solution of an equation for dy/dx: its derivative gives that equation. */
-function solved(above: CompareStatement, below: CompareStatement, isFree: boolean, { settings, context }: Rest): StepResult {
+function solved(
+  above: CompareStatement,
+  below: CompareStatement,
+  isFree: boolean,
+  { settings, context }: Rest,
+): StepResult {
   const names = lettersIn(above).filter((name) => rateNamed(name) !== null);
   const rate = names.length === 1 ? rateNamed(names[0] as string) : null;
   if (!rate || rate.order !== 1) return undecided('not-covered');
   if (!isFree && context.calculus?.constantNeeded) return noConstant(below);
-  const sides = [below.left, below.right].map((side) => differentiate(carriedOut(side, context), rate.by, context)) as [Expr, Expr];
+  const sides = [below.left, below.right].map((side) => differentiate(carriedOut(side, context), rate.by, context)) as [
+    Expr,
+    Expr,
+  ];
   const derived: CompareStatement = { kind: 'compare', left: sides[0], sign: '=', right: sides[1] };
   const notes: Note[] = isFree ? [] : ['constant'];
   const same = judgeSameEquation(above, derived, context);
   if (same) return holds(same.reached ?? 'proved', notes);
-  const formula = judgeFormula({ above, below: derived, letter: names[0] as string, reference: above, families: new Set(), settings, context });
+  const formula = judgeFormula({
+    above,
+    below: derived,
+    letter: names[0] as string,
+    reference: above,
+    families: new Set(),
+    settings,
+    context,
+  });
   if (formula.ruling === 'holds') return holds(formula.reached ?? 'sampled', notes);
   const found = tryOnCurve([below], [derived], above, context);
-  if (found.kind === 'apart') return fails('proved', { witness: { at: { ...found.at }, above: 'false', below: 'true' } });
+  if (found.kind === 'apart')
+    return fails('proved', { witness: { at: { ...found.at }, above: 'false', below: 'true' } });
   return found.kind === 'agreed' ? holds('sampled', notes) : undecided('not-settled');
 }
 
@@ -63,18 +95,32 @@ function solved(above: CompareStatement, below: CompareStatement, isFree: boolea
  * The curves left - right = constant are the same when the gradients are parallel everywhere. A fault shows at a point
  * where the slopes of the curves through it differ.
  */
-function sameCurves(above: CompareStatement, below: CompareStatement, notes: readonly Note[], hasIntegral: boolean, context: CheckContext): StepResult | null {
-  const moving = lettersIn(above).concat(lettersIn(below)).filter((name) => !context.calculus?.constants.has(name));
-  const variables = [...new Set(moving)].filter((name) => context.calculus?.variables.has(name) || context.calculus?.dependents.has(name) || isBy(name, context));
-  if (variables.length === 1) variables.push(...[...new Set(moving)].filter((name) => !variables.includes(name)).slice(0, 1));
+function sameCurves(
+  above: CompareStatement,
+  below: CompareStatement,
+  notes: readonly Note[],
+  hasIntegral: boolean,
+  context: CheckContext,
+): StepResult | null {
+  const moving = lettersIn(above)
+    .concat(lettersIn(below))
+    .filter((name) => !context.calculus?.constants.has(name));
+  const variables = [...new Set(moving)].filter(
+    (name) => context.calculus?.variables.has(name) || context.calculus?.dependents.has(name) || isBy(name, context),
+  );
+  if (variables.length === 1)
+    variables.push(...[...new Set(moving)].filter((name) => !variables.includes(name)).slice(0, 1));
   const [x, y] = variables;
   if (x === undefined) return undecided('not-covered');
-  const [f, g] = [above, below].map(({ left, right }) => subExprs(carriedOut(left, context), carriedOut(right, context))) as [Expr, Expr];
+  const [f, g] = [above, below].map(({ left, right }) =>
+    subExprs(carriedOut(left, context), carriedOut(right, context)),
+  ) as [Expr, Expr];
   const along = (expr: Expr, name: string): Expr => differentiate(expr, name, context, true);
   if (y === undefined || variables.length > 2) return hasIntegral ? exactly(f, g, variables, notes, context) : null;
   const [fx, fy, gx, gy] = [along(f, x), along(f, y), along(g, x), along(g, y)];
   const slopes = [fx, fy, gx, gy].flatMap((expr) => lettersOf(expr));
-  if (slopes.some((name) => context.calculus?.constants.has(name))) return hasIntegral ? undecided('not-settled') : null;
+  if (slopes.some((name) => context.calculus?.constants.has(name)))
+    return hasIntegral ? undecided('not-settled') : null;
   const found = compareExpressions(negateExpr(divExprs(fx, fy)), negateExpr(divExprs(gx, gy)), context);
   if (found.kind === 'equal') return holds(found.reached, notes);
   if (found.kind !== 'different') {
@@ -90,10 +136,20 @@ function isBy(name: string, context: CheckContext): boolean {
 }
 
 /** One variable only: left - right changes by a constant. */
-function exactly(f: Expr, g: Expr, variables: readonly string[], notes: readonly Note[], context: CheckContext): StepResult {
+function exactly(
+  f: Expr,
+  g: Expr,
+  variables: readonly string[],
+  notes: readonly Note[],
+  context: CheckContext,
+): StepResult {
   let reached: 'proved' | 'sampled' = 'proved';
   for (const name of variables) {
-    const found = compareExpressions(differentiate(f, name, context, true), differentiate(g, name, context, true), context);
+    const found = compareExpressions(
+      differentiate(f, name, context, true),
+      differentiate(g, name, context, true),
+      context,
+    );
     if (found.kind !== 'equal') return undecided('not-settled');
     if (found.reached === 'sampled') reached = 'sampled';
   }

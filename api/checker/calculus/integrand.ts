@@ -4,7 +4,20 @@ import { sameExpr } from '../../../shared/maths/same.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
-import { addExprs, callOf, divExprs, isZeroExpr, mulExprs, negateExpr, numberOf, oneExpr, powExprs, rationalExpr, rationalOf, zeroExpr } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  isZeroExpr,
+  mulExprs,
+  negateExpr,
+  numberOf,
+  oneExpr,
+  powExprs,
+  rationalExpr,
+  rationalOf,
+  zeroExpr,
+} from './build.ts';
 import { bodyOf } from './differentiate.ts';
 
 /** A product: what does not depend on the letter, and bases to fractional powers. Exponentials are one base exp(u). */
@@ -22,7 +35,11 @@ export function isFree(expr: Expr, letter: string): boolean {
 }
 
 /** Definitions and own functions written out, so that the letter of integration shows. */
-export function writtenOut(expr: Expr, context: CheckContext, map: (expr: Expr, change: (node: Expr) => Expr) => Expr): Expr {
+export function writtenOut(
+  expr: Expr,
+  context: CheckContext,
+  map: (expr: Expr, change: (node: Expr) => Expr) => Expr,
+): Expr {
   return map(expr, (node) => (node.kind === 'apply' ? bodyOf(node, context) : node));
 }
 
@@ -71,7 +88,12 @@ export function factorise(expr: Expr, letter: string): Factored {
   const visitPower = (node: Extract<Expr, { kind: 'power' }>, times: Rational): void => {
     const value = rationalOf(node.exponent);
     // (x^2)^(1/2) is |x|: only whole powers are taken apart.
-    if (value && (value.den === 1n && times.den === 1n ? true : node.base.kind === 'letter' || times.den === 1n && node.base.kind !== 'product')) {
+    if (
+      value &&
+      (value.den === 1n && times.den === 1n
+        ? true
+        : node.base.kind === 'letter' || (times.den === 1n && node.base.kind !== 'product'))
+    ) {
       if (node.base.kind === 'letter' && times.den !== 1n && value.num % 2n === 0n) return put(node, times);
       return visit(node.base, Q.mul(value, times));
     }
@@ -129,7 +151,10 @@ export function polynomialIn(expr: Expr, letter: string): Expr[] | null {
     }
     case 'power': {
       const times = rationalOf(expr.exponent);
-      const base = times && times.den === 1n && times.num >= 0n && times.num <= highestDegree ? polynomialIn(expr.base, letter) : null;
+      const base =
+        times && times.den === 1n && times.num >= 0n && times.num <= highestDegree
+          ? polynomialIn(expr.base, letter)
+          : null;
       if (!base || !times) return null;
       let total: Expr[] | null = [oneExpr];
       for (let k = 0n; k < times.num && total; k += 1n) total = mulCoefficients(total, base);
@@ -203,4 +228,3 @@ export function termsIn(expr: Expr, letter: string): Expr[] {
       return [expr];
   }
 }
-

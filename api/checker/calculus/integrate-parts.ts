@@ -1,7 +1,22 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
-import { addExprs, callOf, divExprs, isZeroExpr, letterOf, mulExprs, negateExpr, numberOf, oneExpr, powExprs, rationalExpr, sqrtExpr, subExprs, zeroExpr } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  isZeroExpr,
+  letterOf,
+  mulExprs,
+  negateExpr,
+  numberOf,
+  oneExpr,
+  powExprs,
+  rationalExpr,
+  sqrtExpr,
+  subExprs,
+  zeroExpr,
+} from './build.ts';
 import { linearIn, polynomialExpr, type Factor } from './integrand.ts';
 
 type CallExpr = Extract<Expr, { kind: 'call' }>;
@@ -132,11 +147,20 @@ interface Wave {
 export function productOfWaves(factors: readonly Factor[], letter: string): Expr | null {
   let waves: Wave[] = [{ coef: oneExpr, name: 'cos', argument: zeroExpr }];
   for (const { base, times } of factors) {
-    if (base.kind !== 'call' || (base.name !== 'sin' && base.name !== 'cos') || times.den !== 1n || times.num < 0n || times.num > 8n) return null;
+    if (
+      base.kind !== 'call' ||
+      (base.name !== 'sin' && base.name !== 'cos') ||
+      times.den !== 1n ||
+      times.num < 0n ||
+      times.num > 8n
+    )
+      return null;
     const argument = base.args[0];
     if (!argument || !linearIn(argument, letter)) return null;
     for (let k = 0n; k < times.num; k += 1n) {
-      waves = waves.flatMap((wave) => timesWave(wave, { coef: oneExpr, name: base.name === 'sin' ? 'sin' : 'cos', argument }));
+      waves = waves.flatMap((wave) =>
+        timesWave(wave, { coef: oneExpr, name: base.name === 'sin' ? 'sin' : 'cos', argument }),
+      );
       if (waves.length > 512) return null;
     }
   }
@@ -155,10 +179,21 @@ function timesWave(a: Wave, b: Wave): Wave[] {
   const coef = mulExprs(numberOf(1, 2), a.coef, b.coef);
   const plus = collected(a.argument, b.argument, 1);
   const minus = collected(a.argument, b.argument, -1);
-  if (a.name === 'cos' && b.name === 'cos') return [{ coef, name: 'cos', argument: minus }, { coef, name: 'cos', argument: plus }];
-  if (a.name === 'sin' && b.name === 'sin') return [{ coef, name: 'cos', argument: minus }, { coef: negateExpr(coef), name: 'cos', argument: plus }];
+  if (a.name === 'cos' && b.name === 'cos')
+    return [
+      { coef, name: 'cos', argument: minus },
+      { coef, name: 'cos', argument: plus },
+    ];
+  if (a.name === 'sin' && b.name === 'sin')
+    return [
+      { coef, name: 'cos', argument: minus },
+      { coef: negateExpr(coef), name: 'cos', argument: plus },
+    ];
   const sign = a.name === 'sin' ? 1 : -1;
-  return [{ coef, name: 'sin', argument: plus }, { coef: mulExprs(numberOf(sign), coef), name: 'sin', argument: minus }];
+  return [
+    { coef, name: 'sin', argument: plus },
+    { coef: mulExprs(numberOf(sign), coef), name: 'sin', argument: minus },
+  ];
 }
 
 /** a + b or a - b, by coefficients, so that what cancels is gone. */

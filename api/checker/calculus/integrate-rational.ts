@@ -7,7 +7,18 @@ import { dividePolynomials, type Polynomial } from '../solving/polynomial.ts';
 import { isolateRealRoots } from '../solving/real-roots.ts';
 import { squareFreePart } from '../solving/polynomial.ts';
 import { prepare } from '../values/evaluate.ts';
-import { addExprs, callOf, divExprs, letterOf, mulExprs, numberOf, powExprs, rationalExpr, sqrtExpr, subExprs } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  letterOf,
+  mulExprs,
+  numberOf,
+  powExprs,
+  rationalExpr,
+  sqrtExpr,
+  subExprs,
+} from './build.ts';
 
 /** A quotient of polynomials with fractions for coefficients, by partial fractions; null where a factor is out of reach. */
 export function integrateRational(expr: Expr, letter: string, context: CheckContext): Expr | null {
@@ -21,7 +32,11 @@ export function integrateRational(expr: Expr, letter: string, context: CheckCont
   const coefs = solveParts(num, den, shapes);
   if (!coefs) return null;
   const x = letterOf(letter);
-  return addExprs(...shapes.flatMap((shape, k) => (Q.isZero(coefs[k] as Rational) ? [] : [integrateShape(shape, coefs[k] as Rational, x)])));
+  return addExprs(
+    ...shapes.flatMap((shape, k) =>
+      Q.isZero(coefs[k] as Rational) ? [] : [integrateShape(shape, coefs[k] as Rational, x)],
+    ),
+  );
 }
 
 interface Parts {
@@ -58,8 +73,15 @@ type Shape =
 
 function shapesOf({ roots, quadratic }: Parts, degree: number): Shape[] {
   const powers = Array.from({ length: Math.max(0, degree + 1) }, (_, exponent): Shape => ({ kind: 'power', exponent }));
-  const poles = roots.flatMap(({ at, times }) => Array.from({ length: times }, (_, k): Shape => ({ kind: 'root', at, times: k + 1 })));
-  const rest: Shape[] = quadratic ? [{ kind: 'quadratic', of: quadratic, top: 0 }, { kind: 'quadratic', of: quadratic, top: 1 }] : [];
+  const poles = roots.flatMap(({ at, times }) =>
+    Array.from({ length: times }, (_, k): Shape => ({ kind: 'root', at, times: k + 1 })),
+  );
+  const rest: Shape[] = quadratic
+    ? [
+        { kind: 'quadratic', of: quadratic, top: 0 },
+        { kind: 'quadratic', of: quadratic, top: 1 },
+      ]
+    : [];
   return [...powers, ...poles, ...rest];
 }
 
@@ -110,7 +132,9 @@ export function eliminate(rows: Rational[][], size: number): Rational[] | null {
       rows[k] = row.map((value, j) => Q.sub(value, Q.mul(times, lead[j] as Rational)));
     }
   }
-  return Array.from({ length: size }, (_, k) => Q.div((rows[k] as Rational[])[size] as Rational, (rows[k] as Rational[])[k] as Rational));
+  return Array.from({ length: size }, (_, k) =>
+    Q.div((rows[k] as Rational[])[size] as Rational, (rows[k] as Rational[])[k] as Rational),
+  );
 }
 
 function integrateShape(shape: Shape, coef: Rational, x: Expr): Expr {
@@ -138,7 +162,11 @@ function integrateQuadratic([c, b, a]: readonly [Rational, Rational, Rational], 
       ? divExprs(mulExprs(numberOf(2), callOf('arctan', divExprs(linear, root))), root)
       : divExprs(callOf('ln', callOf('abs', divExprs(subExprs(linear, root), addExprs(linear, root)))), root);
   if (top === 0) return plain;
-  const whole = addExprs(rationalExpr(c), mulExprs(rationalExpr(b), x), mulExprs(rationalExpr(a), powExprs(x, numberOf(2))));
+  const whole = addExprs(
+    rationalExpr(c),
+    mulExprs(rationalExpr(b), x),
+    mulExprs(rationalExpr(a), powExprs(x, numberOf(2))),
+  );
   const log = mulExprs(rationalExpr(Q.div(Q.one, Q.mul(Q.rational(2), a))), callOf('ln', callOf('abs', whole)));
   return subExprs(log, mulExprs(rationalExpr(Q.div(b, Q.mul(Q.rational(2), a))), plain));
 }

@@ -15,7 +15,12 @@ import { substitute } from './substitute.ts';
 
 /** How two lines compare up to a free constant on each interval of their domain. */
 export type AntiderivativeRuling =
-  | { readonly kind: 'holds'; readonly reached: 'proved' | 'sampled'; readonly notes: readonly Note[]; readonly found: Extract<Comparison, { kind: 'equal' }> }
+  | {
+      readonly kind: 'holds';
+      readonly reached: 'proved' | 'sampled';
+      readonly notes: readonly Note[];
+      readonly found: Extract<Comparison, { kind: 'equal' }>;
+    }
   /** The constant that the task asks for is missing. */
   | { readonly kind: 'no-constant'; readonly meant: string }
   | { readonly kind: 'compared'; readonly found: Comparison }
@@ -24,11 +29,16 @@ export type AntiderivativeRuling =
 /** Whether the step has an indefinite integral or a constant of integration; then its lines are compared by derivatives. */
 export function concernsConstants(above: Expr, below: Expr, context: CheckContext): boolean {
   if (indefiniteVariables(above).length + indefiniteVariables(below).length > 0) return true;
-  return [...constantsIn(above, context), ...constantsIn(below, context)].length > 0 && baseVariables([], above, below, context).length > 0;
+  return (
+    [...constantsIn(above, context), ...constantsIn(below, context)].length > 0 &&
+    baseVariables([], above, below, context).length > 0
+  );
 }
 
 function constantsIn(expr: Expr, context: CheckContext): string[] {
-  return lettersOf(expr).filter((name) => context.calculus?.constants.has(name) && !context.definitions.letters.has(name));
+  return lettersOf(expr).filter(
+    (name) => context.calculus?.constants.has(name) && !context.definitions.letters.has(name),
+  );
 }
 
 /** Rule 8: the derivatives agree where both have a value; a constant that is missing is noted. */
@@ -51,12 +61,19 @@ function compareDerivatives(above: Expr, below: Expr, context: CheckContext): An
   if (found.kind === 'equal') return agreed(above, below, found, context);
   if (found.kind === 'different' && constantsIn(a, context).length > 0) {
     const absorbed = absorbs(above, below, variable, context);
-    return absorbed ? { kind: 'holds', reached: absorbed.reached, notes: [], found: absorbed } : { kind: 'undecided', reason: 'not-settled' };
+    return absorbed
+      ? { kind: 'holds', reached: absorbed.reached, notes: [], found: absorbed }
+      : { kind: 'undecided', reason: 'not-settled' };
   }
   return { kind: 'compared', found };
 }
 
-function agreed(above: Expr, below: Expr, found: Extract<Comparison, { kind: 'equal' }>, context: CheckContext): AntiderivativeRuling {
+function agreed(
+  above: Expr,
+  below: Expr,
+  found: Extract<Comparison, { kind: 'equal' }>,
+  context: CheckContext,
+): AntiderivativeRuling {
   const isFreeAbove = indefiniteVariables(above).length > 0 || constantsIn(above, context).length > 0;
   const isMissing = isFreeAbove && indefiniteVariables(below).length === 0 && constantsIn(below, context).length === 0;
   if (isMissing && context.calculus?.constantNeeded) return { kind: 'no-constant', meant: `${printExpr(below)}+C` };
@@ -66,7 +83,12 @@ function agreed(above: Expr, below: Expr, found: Extract<Comparison, { kind: 'eq
 /** The letters to differentiate by: the variables of the integrals, or those that defined ones of them depend on. */
 function baseVariables(open: readonly string[], above: Expr, below: Expr, context: CheckContext): string[] {
   const letters = new Set([...lettersOf(above), ...lettersOf(below)]);
-  const named = open.length > 0 ? open : [...(context.calculus?.variables ?? [])].filter((name) => letters.has(name) || baseOf(name, context).some((b) => letters.has(b)));
+  const named =
+    open.length > 0
+      ? open
+      : [...(context.calculus?.variables ?? [])].filter(
+          (name) => letters.has(name) || baseOf(name, context).some((b) => letters.has(b)),
+        );
   const bases = [...new Set(named.flatMap((name) => baseOf(name, context)))];
   if (bases.length > 1 && open.length === 0) return bases.filter((name) => letters.has(name));
   return bases;
@@ -81,7 +103,12 @@ function baseOf(name: string, context: CheckContext, depth = 0): string[] {
 }
 
 /** A constant factor that takes others up: h(x) e^C written as C g(x). */
-function absorbs(above: Expr, below: Expr, variable: string, context: CheckContext): Extract<Comparison, { kind: 'equal' }> | null {
+function absorbs(
+  above: Expr,
+  below: Expr,
+  variable: string,
+  context: CheckContext,
+): Extract<Comparison, { kind: 'equal' }> | null {
   for (const name of constantsIn(below, context)) {
     const linear = linearIn(below, name);
     if (!linear || !isFree(linear.slope, name)) continue;
@@ -93,4 +120,3 @@ function absorbs(above: Expr, below: Expr, variable: string, context: CheckConte
   }
   return null;
 }
-

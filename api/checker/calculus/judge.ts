@@ -7,6 +7,7 @@ import type { CheckContext } from '../context.ts';
 import { compareAntiderivatives, concernsConstants, type AntiderivativeRuling } from './judge-antiderivative.ts';
 import { worthOf, type Worth } from './judge-values.ts';
 import { compareOpenIntegrals, openIntegrals } from './open-integrals.ts';
+import { carriedOut } from './reduce.ts';
 import { boundsOfSeries } from './series-bounds.ts';
 
 export interface CalculusComparison {
@@ -21,10 +22,11 @@ export function compareWithCalculus(above: Expr, below: Expr, context: CheckCont
   if (!hasOperator(above) && !hasOperator(below)) return plain(compareExpressions(above, below, context));
   const [a, b] = [worthOf(above, context), worthOf(below, context)];
   if (a.kind !== 'ordinary' || b.kind !== 'ordinary') return plain(compareWorth(a, b));
-  if (openIntegrals(above, context).length + openIntegrals(below, context).length > 0) return plain(compareOpenIntegrals(above, below, context));
+  if (openIntegrals(above, context).length + openIntegrals(below, context).length > 0)
+    return plain(compareOpenIntegrals(above, below, context));
   const bounds = [above, below].flatMap((expr) => boundsOfSeries(expr));
   const within = bounds.length > 0 ? { ...context, assumptions: [...context.assumptions, ...bounds] } : context;
-  return plain(compareExpressions(above, below, within));
+  return plain(compareExpressions(carriedOut(above, context), carriedOut(below, context), within));
 }
 
 function plain(found: Comparison): CalculusComparison {
@@ -39,7 +41,10 @@ function hasOperator(expr: Expr): boolean {
 }
 
 function compareWorth(above: Worth, below: Worth): Comparison {
-  if (above.kind === 'none') return below.kind === 'ordinary' || (below.kind === 'infinite' && above.sides) ? { kind: 'nothing-in-common' } : { kind: 'undecided', reason: 'no-domain' };
+  if (above.kind === 'none')
+    return below.kind === 'ordinary' || (below.kind === 'infinite' && above.sides)
+      ? { kind: 'nothing-in-common' }
+      : { kind: 'undecided', reason: 'no-domain' };
   if (below.kind === 'none') return { kind: 'meaningless' };
   if (above.kind === 'infinite' && below.kind === 'infinite') {
     if (above.sign === below.sign) return { kind: 'equal', reached: 'proved', excluded: [], cancelled: [] };

@@ -1,7 +1,21 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
 import * as Q from '../numbers/rational.ts';
-import { addExprs, callOf, divExprs, letterOf, mulExprs, numberOf, oneExpr, piExpr, powExprs, rationalExpr, rationalOf, subExprs, zeroExpr } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  letterOf,
+  mulExprs,
+  numberOf,
+  oneExpr,
+  piExpr,
+  powExprs,
+  rationalExpr,
+  rationalOf,
+  subExprs,
+  zeroExpr,
+} from './build.ts';
 import { factorise, isFree, linearIn } from './integrand.ts';
 import { substitute } from './substitute.ts';
 
@@ -23,7 +37,10 @@ function zetaSum(body: Expr, index: string, start: bigint): Expr | null {
   if (factors.length !== 1 || only?.base.kind !== 'letter' || start < 1n || start > mostSkipped) return null;
   const order = Q.equals(only.times, Q.rational(-2)) ? 2 : Q.equals(only.times, Q.rational(-4)) ? 4 : null;
   if (order === null) return null;
-  const whole = order === 2 ? divExprs(powExprs(piExpr, numberOf(2)), numberOf(6)) : divExprs(powExprs(piExpr, numberOf(4)), numberOf(90));
+  const whole =
+    order === 2
+      ? divExprs(powExprs(piExpr, numberOf(2)), numberOf(6))
+      : divExprs(powExprs(piExpr, numberOf(4)), numberOf(90));
   return mulExprs(coef, subExprs(whole, firstTerms(powExprs(letterOf(index), numberOf(-order)), index, 1n, start)));
 }
 
@@ -35,7 +52,8 @@ function firstTerms(body: Expr, index: string, low: bigint, high: bigint): Expr 
 }
 
 function exponentialSum(body: Expr, index: string, start: bigint): Expr | null {
-  if (body.kind !== 'quotient' || body.denominator.kind !== 'factorial' || start < 0n || start > mostSkipped) return null;
+  if (body.kind !== 'quotient' || body.denominator.kind !== 'factorial' || start < 0n || start > mostSkipped)
+    return null;
   if (!sameExpr(body.denominator.operand, letterOf(index))) return null;
   const { coef, base } = powerOfIndex(body.numerator, index) ?? {};
   if (!coef || !base) return null;

@@ -5,7 +5,15 @@ import * as Q from '../numbers/rational.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { infinityExpr, negateExpr, noValueExpr, numberOf, zeroExpr } from './build.ts';
 import { expand } from './expand.ts';
-import { compareScales, constantSeries, powerSeries, signOfCoefficient, unitScale, type Expansion, type Series } from './series-ring.ts';
+import {
+  compareScales,
+  constantSeries,
+  powerSeries,
+  signOfCoefficient,
+  unitScale,
+  type Expansion,
+  type Series,
+} from './series-ring.ts';
 
 export type LimitValue =
   | { readonly kind: 'finite'; readonly value: Expr }
@@ -35,7 +43,12 @@ export function sideLimit(expr: Expr, variable: string, target: Target, context:
       const expansion: Expansion = { ...context, steps };
       return limitOfSeries(expand(expr, variable, seriesAt(target), expansion), expansion);
     } catch (cause) {
-      if (!(cause instanceof Unsettled) || cause.reason !== 'not-settled' || steps === stepsTried[stepsTried.length - 1]) throw cause;
+      if (
+        !(cause instanceof Unsettled) ||
+        cause.reason !== 'not-settled' ||
+        steps === stepsTried[stepsTried.length - 1]
+      )
+        throw cause;
     }
   }
   throw new Unsettled('not-settled');

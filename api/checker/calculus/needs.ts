@@ -10,7 +10,19 @@ export interface Need {
   readonly strict: boolean;
 }
 
-const entire: ReadonlySet<string> = new Set(['sin', 'cos', 'exp', 'arctan', 'sinh', 'cosh', 'tanh', 'sech', 'arsinh', 'degrees', 'abs']);
+const entire: ReadonlySet<string> = new Set([
+  'sin',
+  'cos',
+  'exp',
+  'arctan',
+  'sinh',
+  'cosh',
+  'tanh',
+  'sech',
+  'arsinh',
+  'degrees',
+  'abs',
+]);
 
 /** What the expression needs to be continuous in the letter over the real numbers; null where more is needed than signs. */
 export function needsOf(expr: Expr, letter: string): Need[] | null {
@@ -34,7 +46,10 @@ function isPositive(expr: Expr): boolean {
     case 'constant':
       return expr.name === 'pi' || expr.name === 'e';
     case 'sum':
-      return expr.terms.every(({ sign, expr: term }) => sign === 'plus' && isNotNegative(term)) && expr.terms.some(({ expr: term }) => isPositive(term));
+      return (
+        expr.terms.every(({ sign, expr: term }) => sign === 'plus' && isNotNegative(term)) &&
+        expr.terms.some(({ expr: term }) => isPositive(term))
+      );
     case 'product':
       return expr.factors.every(isPositive);
     case 'quotient':
@@ -74,7 +89,9 @@ function ownNeed(expr: Expr, letter: string): Need | null | undefined {
     case 'root':
       return expr.degree === null || isFree(expr.degree, letter) ? { expr: expr.radicand, strict: false } : undefined;
     case 'log':
-      return expr.base === null || isFree(expr.base, letter) ? { expr: withoutBars(expr.argument), strict: true } : undefined;
+      return expr.base === null || isFree(expr.base, letter)
+        ? { expr: withoutBars(expr.argument), strict: true }
+        : undefined;
     case 'call':
       return callNeed(expr);
     default:

@@ -43,12 +43,16 @@ function isDefinite(expr: Expr): expr is DefiniteExpr {
  */
 export function compareOpenIntegrals(above: Expr, below: Expr, context: CheckContext): Comparison {
   const [a, b] = [withShown(above, below, context), withShown(below, above, context)];
-  if (openIntegrals(a, context).length + openIntegrals(b, context).length === 0) return compareExpressions(a, b, context);
+  if (openIntegrals(a, context).length + openIntegrals(b, context).length === 0)
+    return compareExpressions(a, b, context);
   const names = createNames(context);
   const [formalA, formalB] = [named(a, names, context), named(b, names, context)];
-  if (formalA && formalB) {
-    const found = compareExpressions(formalA, formalB, context);
-    if (found.kind === 'equal') return found;
+  // Where an integrand may have a pole, only the same integrals in both lines are as good as equal.
+  const isAlike = formalA.ends.size === formalB.ends.size && [...formalA.ends].every((end) => formalB.ends.has(end));
+  if ((formalA.isCertain && formalB.isCertain) || isAlike) {
+    const found = compareExpressions(formalA.expr, formalB.expr, context);
+    if (found.kind === 'equal')
+      return formalA.isCertain && formalB.isCertain ? found : { ...found, reached: 'sampled' };
   }
   return compareEnclosures(a, b, context);
 }
@@ -71,7 +75,11 @@ function bracketsIn(expr: Expr): Extract<Expr, { kind: 'evaluated' }>[] {
   return expr.kind === 'evaluated' ? [expr, ...inside] : inside;
 }
 
-function throughShown(integral: DefiniteExpr, bracket: Extract<Expr, { kind: 'evaluated' }>, context: CheckContext): Expr | null {
+function throughShown(
+  integral: DefiniteExpr,
+  bracket: Extract<Expr, { kind: 'evaluated' }>,
+  context: CheckContext,
+): Expr | null {
   const inner = withoutDefinition(context, integral.variable);
   const letter = bracket.variable ?? onlyLetter(bracket.operand, context);
   if (letter === null) return null;
@@ -122,9 +130,17 @@ function createNames(context: CheckContext): Names {
   };
 }
 
-/** Integrals as differences of letters, by terms and without constant factors; null where one may have no value. */
-function named(expr: Expr, names: Names, context: CheckContext): Expr | null {
+interface Formal {
+  readonly expr: Expr;
+  /** Whether every integral certainly has a value. */
+  readonly isCertain: boolean;
+  readonly ends: ReadonlySet<string>;
+}
+
+/** Integrals as differences of letters, by terms and without constant factors. */
+function named(expr: Expr, names: Names, context: CheckContext): Formal {
   let isCertain = true;
+  const ends = new Set<string>();
   const result = replaceOpen(expr, context, (integral) => {
     const inner = withoutDefinition(context, integral.variable);
     const integrand = carriedOut(integral.integrand, inner);
@@ -135,11 +151,13 @@ function named(expr: Expr, names: Names, context: CheckContext): Expr | null {
       const value = context.reduceCalculus?.(part, context);
       if (value) return mulExprs(coef, value);
       const name = names.integrandOf(part.integrand, integral.variable);
-      return mulExprs(coef, subExprs(names.endOf(name, integral.to), names.endOf(name, integral.from)));
+      const [upper, lower] = [names.endOf(name, integral.to), names.endOf(name, integral.from)];
+      for (const letter of [upper, lower]) for (const used of lettersOf(letter)) ends.add(used);
+      return mulExprs(coef, subExprs(upper, lower));
     });
     return addExprs(...parts);
   });
-  return isCertain ? result : null;
+  return { expr: result, isCertain, ends };
 }
 
 /** Both lines in numbers: apart for certain, or equal to many digits. */
@@ -149,10 +167,15 @@ function compareEnclosures(above: Expr, below: Expr, context: CheckContext): Com
   const difference = toBall(subKnown(a, b, quadratureBits), quadratureBits);
   if (difference.im !== null) return { kind: 'undecided', reason: 'not-covered' };
   if (ballSign(difference.re) !== 0) {
-    return { kind: 'different', witness: { at: new Map(), atTex: {}, above: valueTex(a, quadratureBits), below: valueTex(b, quadratureBits) } };
+    return {
+      kind: 'different',
+      witness: { at: new Map(), atTex: {}, above: valueTex(a, quadratureBits), below: valueTex(b, quadratureBits) },
+    };
   }
   const isClose = magnitude(difference.re.mid) + difference.re.rad < 1n << BigInt(quadratureBits - agreeingBits);
-  return isClose ? { kind: 'equal', reached: 'sampled', excluded: [], cancelled: [] } : { kind: 'undecided', reason: 'not-settled' };
+  return isClose
+    ? { kind: 'equal', reached: 'sampled', excluded: [], cancelled: [] }
+    : { kind: 'undecided', reason: 'not-settled' };
 }
 
 const agreeingBits = 64;

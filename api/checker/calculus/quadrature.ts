@@ -12,13 +12,19 @@ const order = 20;
 /** The error that is asked for on each piece: 2^-74. */
 const tolerance = 1n << 38n;
 const deepest = 14;
-const mostPieces = 160;
+const mostPieces = 400;
 
 /**
  * An enclosure of an integral between two numbers, by Taylor's formula on pieces: the remainder is at most the highest
  * coefficient on the piece times its length to that power. Null where the integrand is not enclosed on all of the way.
  */
-export function encloseIntegral(integrand: Expr, letter: string, from: Expr, to: Expr, context: CheckContext): Ball | null {
+export function encloseIntegral(
+  integrand: Expr,
+  letter: string,
+  from: Expr,
+  to: Expr,
+  context: CheckContext,
+): Ball | null {
   const [a, b] = [endOf(from, context), endOf(to, context)];
   if (!a || !b) return null;
   const graph = prepare(integrand, context);
@@ -52,7 +58,7 @@ function edges({ graph, letter, context }: Job, ...ends: readonly Ball[]): Ball 
     if (end.rad === 0n) continue;
     const jet = taylorOf(graph, letter, end, 1, quadratureBits, context);
     if (!jet?.[0]) return null;
-    rad += ((magnitude(jet[0].mid) + jet[0].rad) * end.rad >> BigInt(quadratureBits)) + 1n;
+    rad += (((magnitude(jet[0].mid) + jet[0].rad) * end.rad) >> BigInt(quadratureBits)) + 1n;
   }
   return { mid: 0n, rad };
 }
@@ -81,13 +87,19 @@ function taylorIntegral(job: Job, low: bigint, high: bigint, anyway: boolean): B
   const powers: Ball[] = [power];
   for (let k = 1; k <= order; k += 1) powers.push((power = mulBalls(power, half, bits)));
   const last = powers[order] as Ball;
-  const remainder = (2n * (magnitude(beyond.mid) + beyond.rad) * (magnitude(last.mid) + last.rad) >> BigInt(bits)) / BigInt(order + 1) + 1n;
+  const remainder =
+    ((2n * (magnitude(beyond.mid) + beyond.rad) * (magnitude(last.mid) + last.rad)) >> BigInt(bits)) /
+      BigInt(order + 1) +
+    1n;
   if (remainder > tolerance && !anyway) return null;
   const jet = taylorOf(graph, letter, { mid: middle, rad: 0n }, order, bits, context);
   if (!jet) return null;
   let total: Ball = { mid: 0n, rad: remainder };
   for (let k = 0; k < order; k += 2) {
-    total = addBalls(total, mulBalls(mulBalls(jet[k] as Ball, powers[k] as Ball, bits), ballFromRational(Q.rational(2, k + 1), bits), bits));
+    total = addBalls(
+      total,
+      mulBalls(mulBalls(jet[k] as Ball, powers[k] as Ball, bits), ballFromRational(Q.rational(2, k + 1), bits), bits),
+    );
   }
   return total;
 }

@@ -12,7 +12,6 @@ export function rateName({ of, by, order }: Rate): string {
   return order === 1 ? `\\frac{d${of}}{d${by}}` : `\\frac{d^{${order}}${of}}{d${by}^{${order}}}`;
 }
 
-
 export function rateExpr(rate: Rate): Expr {
   return letterOf(rateName(rate));
 }

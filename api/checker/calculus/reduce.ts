@@ -7,7 +7,7 @@ import { Unsettled } from '../solving/unsettled.ts';
 import { isKnown } from '../values/arithmetic.ts';
 import { evaluate } from '../values/evaluate.ts';
 import { findAntiderivative, withoutDefinition } from './antiderivative.ts';
-import { subExprs, zeroExpr } from './build.ts';
+import { infinityExpr, negateExpr, noValueExpr, subExprs, zeroExpr } from './build.ts';
 import { throughAntiderivative } from './definite.ts';
 import { bodyOf, differentiateTimes } from './differentiate.ts';
 import { infinitySign, limitExpr, limitOf, sideLimit } from './limit.ts';
@@ -51,7 +51,9 @@ function reduceNode(node: Expr, context: CheckContext): Expr | null {
     case 'evaluated':
       return reduceEvaluated(node, context);
     case 'limit':
-      return limitExpr(limitOf({ ...node, operand: carriedOut(node.operand, context) }, withoutDefinition(context, node.variable)));
+      return limitExpr(
+        limitOf({ ...node, operand: carriedOut(node.operand, context) }, withoutDefinition(context, node.variable)),
+      );
     case 'series':
       return closedSeries(node, context);
     default:
@@ -97,12 +99,20 @@ function reduceEvaluated(node: Extract<Expr, { kind: 'evaluated' }>, context: Ch
   const inner = withoutDefinition(context, variable);
   const upper = valueAt(operand, variable, node.to, 'left', inner);
   if (!node.from) return upper;
-  return subExprs(upper, valueAt(operand, variable, node.from, 'right', inner));
+  const lower = valueAt(operand, variable, node.from, 'right', inner);
+  const [above, below] = [infinitySign(upper), infinitySign(lower)];
+  if (above === null && below === null) return subExprs(upper, lower);
+  if (above !== null && below === above) return noValueExpr;
+  return (above ?? -(below ?? 1)) > 0 ? infinityExpr : negateExpr(infinityExpr);
 }
 
 function valueAt(operand: Expr, variable: string, at: Expr, side: 'left' | 'right', context: CheckContext): Expr {
   const put = substitute(operand, variable, at);
-  if (infinitySign(at) === null && (lettersOf(put).length > 0 || evaluate(put, new Map(), 96, context).kind !== 'undefined')) return put;
+  if (
+    infinitySign(at) === null &&
+    (lettersOf(put).length > 0 || evaluate(put, new Map(), 96, context).kind !== 'undefined')
+  )
+    return put;
   return limitExpr(sideLimit(operand, variable, { to: at, side }, context));
 }
 

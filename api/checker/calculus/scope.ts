@@ -26,7 +26,9 @@ export function scopeOf(lines: readonly (Line | null)[], constantNeeded: boolean
       // The constant may stand beside the integral in the line that brings it: S 2x dx = x^2 + C.
       for (const name of letters) if (!before.has(name) && usualConstants.has(name.charAt(0))) constants.add(name);
     }
-    hasIntegral ||= exprs.some((expr) => integralsIn(expr).some(({ from }) => from === null)) || [...letters].some((name) => rateNamed(name) !== null);
+    hasIntegral ||=
+      exprs.some((expr) => integralsIn(expr).some(({ from }) => from === null)) ||
+      [...letters].some((name) => rateNamed(name) !== null);
     if (line.kind === 'definition') before.add(line.name);
     for (const name of letters) before.add(name);
   }

@@ -8,7 +8,19 @@ import { Unsettled } from '../solving/unsettled.ts';
 import { isExactZero, isKnown, isNonZero } from '../values/arithmetic.ts';
 import { evaluate } from '../values/evaluate.ts';
 import { signOf } from '../values/powers.ts';
-import { addExprs, callOf, divExprs, mulExprs, negateExpr, numberOf, oneExpr, powExprs, rationalExpr, rationalOf, zeroExpr } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  mulExprs,
+  negateExpr,
+  numberOf,
+  oneExpr,
+  powExprs,
+  rationalExpr,
+  rationalOf,
+  zeroExpr,
+} from './build.ts';
 
 /**
  * Expansions at a point, in a letter t > 0 that tends to 0: sums of c exp(E) t^p L^q with L = ln(1/t), the largest first,
@@ -90,7 +102,12 @@ export function compareScales(a: Scale, b: Scale, context: Expansion): number {
   return order !== 0 ? order : a.q - b.q;
 }
 
-function joinGrowth(a: readonly GrowthTerm[], b: readonly GrowthTerm[], times: number, context: Expansion): GrowthTerm[] {
+function joinGrowth(
+  a: readonly GrowthTerm[],
+  b: readonly GrowthTerm[],
+  times: number,
+  context: Expansion,
+): GrowthTerm[] {
   const result = [...a];
   for (const term of b) {
     const coef = times === 1 ? term.coef : negateExpr(term.coef);
@@ -111,7 +128,11 @@ function mulScales(a: Scale, b: Scale, context: Expansion): Scale {
 function powScale(a: Scale, r: Rational): Scale {
   const q = Q.mul(Q.rational(a.q), r);
   if (q.den !== 1n) throw new Unsettled('not-covered');
-  return { growth: a.growth.map((term) => ({ ...term, coef: mulExprs(rationalExpr(r), term.coef) })), p: Q.mul(a.p, r), q: Number(q.num) };
+  return {
+    growth: a.growth.map((term) => ({ ...term, coef: mulExprs(rationalExpr(r), term.coef) })),
+    p: Q.mul(a.p, r),
+    q: Number(q.num),
+  };
 }
 
 function larger(a: Scale | null, b: Scale | null, context: Expansion): Scale | null {
@@ -132,7 +153,9 @@ function normalised(terms: readonly SeriesTerm[], error: Scale | null, context: 
   const kept = joined.filter((term) => !isZeroCoefficient(term.coef, context));
   kept.sort((a, b) => compareScales(b.scale, a.scale, context));
   const dropped = kept[mostTerms];
-  return dropped ? { terms: kept.slice(0, mostTerms), error: larger(error, dropped.scale, context) } : { terms: kept, error };
+  return dropped
+    ? { terms: kept.slice(0, mostTerms), error: larger(error, dropped.scale, context) }
+    : { terms: kept, error };
 }
 
 export function addSeries(a: Series, b: Series, context: Expansion): Series {
@@ -140,7 +163,11 @@ export function addSeries(a: Series, b: Series, context: Expansion): Series {
 }
 
 export function scaleSeries(a: Series, coef: Expr, context: Expansion): Series {
-  return normalised(a.terms.map((term) => ({ ...term, coef: mulExprs(coef, term.coef) })), a.error, context);
+  return normalised(
+    a.terms.map((term) => ({ ...term, coef: mulExprs(coef, term.coef) })),
+    a.error,
+    context,
+  );
 }
 
 export function negateSeries(a: Series): Series {
@@ -202,12 +229,18 @@ export function rationalPower(a: Series, r: Rational, context: Expansion): Serie
     head = known < 0 && r.num % 2n !== 0n ? negateExpr(size) : size;
   }
   const binomials = [oneExpr];
-  const tail = composeSeries((k) => {
-    for (let j = binomials.length; j <= k; j += 1) {
-      binomials.push(mulExprs(binomials[j - 1] as Expr, rationalExpr(Q.div(Q.sub(r, Q.rational(j - 1)), Q.rational(j)))));
-    }
-    return binomials[k] as Expr;
-  }, rest, context);
+  const tail = composeSeries(
+    (k) => {
+      for (let j = binomials.length; j <= k; j += 1) {
+        binomials.push(
+          mulExprs(binomials[j - 1] as Expr, rationalExpr(Q.div(Q.sub(r, Q.rational(j - 1)), Q.rational(j)))),
+        );
+      }
+      return binomials[k] as Expr;
+    },
+    rest,
+    context,
+  );
   return mulSeries({ terms: [{ coef: head, scale: powScale(lead.scale, r) }], error: null }, tail, context);
 }
 
@@ -221,13 +254,20 @@ export function expSeries(a: Series, context: Expansion): Series {
     if (Q.isZero(scale.p) && scale.q === 1 && times) p = Q.sub(p, times);
     else growth.push({ coef, p: scale.p, q: scale.q });
   }
-  const head: SeriesTerm = { coef: split.constant ? callOf('exp', split.constant) : oneExpr, scale: { growth, p, q: 0 } };
+  const head: SeriesTerm = {
+    coef: split.constant ? callOf('exp', split.constant) : oneExpr,
+    scale: { growth, p, q: 0 },
+  };
   let factorial = 1n;
   const factorials = [1n];
-  const tail = composeSeries((k) => {
-    for (let j = factorials.length; j <= k; j += 1) factorials.push((factorial *= BigInt(j)));
-    return numberOf(1, factorials[k] as bigint);
-  }, split.small, context);
+  const tail = composeSeries(
+    (k) => {
+      for (let j = factorials.length; j <= k; j += 1) factorials.push((factorial *= BigInt(j)));
+      return numberOf(1, factorials[k] as bigint);
+    },
+    split.small,
+    context,
+  );
   return mulSeries({ terms: [head], error: null }, tail, context);
 }
 
@@ -243,7 +283,10 @@ export function lnSeries(a: Series, context: Expansion): Series {
 }
 
 /** Growing terms, the constant and what tends to 0. */
-export function splitBySize(a: Series, context: Expansion): { large: SeriesTerm[]; constant: Expr | null; small: Series } {
+export function splitBySize(
+  a: Series,
+  context: Expansion,
+): { large: SeriesTerm[]; constant: Expr | null; small: Series } {
   if (a.error && compareScales(a.error, unitScale, context) >= 0) throw new Unsettled('not-settled');
   const large: SeriesTerm[] = [];
   const small: SeriesTerm[] = [];

@@ -5,7 +5,21 @@ import * as Q from '../numbers/rational.ts';
 import { isKnown, toBall } from '../values/arithmetic.ts';
 import { evaluate } from '../values/evaluate.ts';
 import { ballToNumber } from '../numbers/ball.ts';
-import { addExprs, callOf, divExprs, isZeroExpr, mulExprs, negateExpr, numberOf, oneExpr, powExprs, rationalExpr, subExprs, wherever, zeroExpr } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  divExprs,
+  isZeroExpr,
+  mulExprs,
+  negateExpr,
+  numberOf,
+  oneExpr,
+  powExprs,
+  rationalExpr,
+  subExprs,
+  wherever,
+  zeroExpr,
+} from './build.ts';
 import { isFree, polynomialIn, termsIn } from './integrand.ts';
 import { infinitySign } from './limit.ts';
 import { knownInfiniteSum } from './known-sums.ts';
@@ -22,7 +36,10 @@ export function closedSeries(node: SeriesExpr, context: CheckContext): Expr | nu
   const known = isInfinite ? knownInfiniteSum(body, index, from) : null;
   if (known) return known;
   const telescope = telescoped(body, index, context);
-  if (telescope) return isInfinite ? telescope.atInfinity && subExprs(telescope.atInfinity, at(telescope.sum, index, from)) : between(telescope.sum, index, from, to);
+  if (telescope)
+    return isInfinite
+      ? telescope.atInfinity && subExprs(telescope.atInfinity, at(telescope.sum, index, from))
+      : between(telescope.sum, index, from, to);
   const parts = termsIn(body, index).map((term) => closedTerm(term, node, isInfinite, context));
   return parts.every((part) => part !== null) ? addExprs(...(parts as Expr[])) : null;
 }
@@ -42,17 +59,28 @@ function closedProduct({ index, from, to, body }: SeriesExpr): Expr | null {
 }
 
 /** A polynomial times r^k, summed as G(k+1) - G(k). */
-function closedTerm(term: Expr, { index, from, to }: SeriesExpr, isInfinite: boolean, context: CheckContext): Expr | null {
+function closedTerm(
+  term: Expr,
+  { index, from, to }: SeriesExpr,
+  isInfinite: boolean,
+  context: CheckContext,
+): Expr | null {
   const geometric = splitGeometric(term, index);
   const coefs = geometric && polynomialIn(geometric.rest, index);
   if (!geometric || !coefs || coefs.length > 13) return null;
   const { ratio } = geometric;
   if (ratio === null || isOne(ratio, context)) {
     if (isInfinite) return null;
-    return addExprs(...coefs.map((coef, k) => mulExprs(coef, subExprs(powerSum(k, to), powerSum(k, subExprs(from, oneExpr))))));
+    return addExprs(
+      ...coefs.map((coef, k) => mulExprs(coef, subExprs(powerSum(k, to), powerSum(k, subExprs(from, oneExpr))))),
+    );
   }
   const quotient = geometricPart(coefs, ratio);
-  const sum = (k: Expr): Expr => mulExprs(addExprs(...quotient.map((coef, j) => mulExprs(coef, j === 0 ? oneExpr : powExprs(k, numberOf(j))))), powExprs(ratio, k));
+  const sum = (k: Expr): Expr =>
+    mulExprs(
+      addExprs(...quotient.map((coef, j) => mulExprs(coef, j === 0 ? oneExpr : powExprs(k, numberOf(j))))),
+      powExprs(ratio, k),
+    );
   if (!isInfinite) return subExprs(sum(addExprs(to, oneExpr)), sum(from));
   const converges = tendsToZero(ratio, context);
   if (converges === false || converges === null) return null;
@@ -95,7 +123,9 @@ function binomial(n: number, k: number): bigint {
 /** 1^m + ... + n^m as a polynomial: (n+1)^(m+1) - 1 is the sum of the binomials times the lower sums. */
 export function powerSum(m: number, n: Expr): Expr {
   const coefs = powerSumCoefficients(m);
-  return addExprs(...coefs.map((coef, k) => (Q.isZero(coef) ? zeroExpr : mulExprs(rationalExpr(coef), powExprs(n, numberOf(k))))));
+  return addExprs(
+    ...coefs.map((coef, k) => (Q.isZero(coef) ? zeroExpr : mulExprs(rationalExpr(coef), powExprs(n, numberOf(k))))),
+  );
 }
 
 function powerSumCoefficients(m: number): Q.Rational[] {
@@ -145,7 +175,7 @@ function splitGeometric(term: Expr, index: string): Geometric | null {
 
 function powerOf(node: Expr): { base: Expr; exponent: Expr } | null {
   if (node.kind === 'power') return node;
-  if (node.kind === 'call' && node.name === 'exp' && node.args[0]) return { base: { kind: 'constant', name: 'e', span: node.span }, exponent: node.args[0] };
+  if (node.kind === 'call' && node.name === 'exp' && node.args[0])
+    return { base: { kind: 'constant', name: 'e', span: node.span }, exponent: node.args[0] };
   return null;
 }
-

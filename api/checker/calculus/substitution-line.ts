@@ -18,7 +18,10 @@ export function judgeSubstitution(line: Line, from: Expr, context: CheckContext)
   let current = context;
   let result: StepResult | null = null;
   // What defines a letter comes before what is said of its differential, in whatever order it is written.
-  const ordered = [...parts.filter((part) => differentialsOf(part).length === 0), ...parts.filter((part) => differentialsOf(part).length > 0)];
+  const ordered = [
+    ...parts.filter((part) => differentialsOf(part).length === 0),
+    ...parts.filter((part) => differentialsOf(part).length > 0),
+  ];
   for (const part of ordered) {
     const next = judgePart(part, from, current);
     if (!next) return null;
@@ -38,13 +41,24 @@ function judgePart(line: Line, from: Expr, context: CheckContext): SubstitutionL
   if (line.kind !== 'relation' || line.sign !== '=') return null;
   // dv = e^x dx before v is known: it says what v will be.
   const [own, ...others] = differentialsIn(line.left);
-  if (own !== undefined && others.length === 0 && isNew(own, from, context) && differentialsIn(line.right).length === 1) {
+  if (
+    own !== undefined &&
+    others.length === 0 &&
+    isNew(own, from, context) &&
+    differentialsIn(line.right).length === 1
+  ) {
     return { result: holds('proved', ['definition']), defines: null };
   }
   if (line.left.kind !== 'letter' || !hasIntegral(from)) return null;
   const { name } = line.left;
   const inside = lettersOf(line.right);
-  if (!isNew(name, from, context) || inside.includes(name) || rateNamed(name) || !inside.some((letter) => lettersWithin(from).has(letter))) return null;
+  if (
+    !isNew(name, from, context) ||
+    inside.includes(name) ||
+    rateNamed(name) ||
+    !inside.some((letter) => lettersWithin(from).has(letter))
+  )
+    return null;
   return { result: holds('proved', ['definition']), defines: withDefinition(context.definitions, name, line.right) };
 }
 
@@ -69,7 +83,14 @@ export function withDefinition(definitions: Definitions, name: string, value: Ex
   const letters = new Map(definitions.letters).set(name, value);
   const [by, ...others] = lettersOf(value);
   if (by !== undefined && others.length === 0) {
-    letters.set(rateName({ of: name, by, order: 1 }), { kind: 'derivative', variable: by, order: 1, partial: false, operand: value, span: value.span });
+    letters.set(rateName({ of: name, by, order: 1 }), {
+      kind: 'derivative',
+      variable: by,
+      order: 1,
+      partial: false,
+      operand: value,
+      span: value.span,
+    });
   }
   return { ...definitions, letters };
 }

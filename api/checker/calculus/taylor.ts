@@ -11,7 +11,14 @@ import type { Graph, GraphNode } from '../values/graph.ts';
  * encloses those of the expansions at all of its points. Recurrences as in Moore, Methods and Applications of Interval
  * Analysis (1979), 3.4.
  */
-export function taylorOf(graph: Graph, letter: string, at: Ball, order: number, bits: number, context: CheckContext): Ball[] | null {
+export function taylorOf(
+  graph: Graph,
+  letter: string,
+  at: Ball,
+  order: number,
+  bits: number,
+  context: CheckContext,
+): Ball[] | null {
   const values = evaluateNodes(graph.nodes, new Map([[letter, { kind: 'ball', re: at, im: null }]]), bits, context);
   const jets: (Ball[] | null)[] = [];
   for (const [index, node] of graph.nodes.entries()) {
@@ -49,7 +56,9 @@ function jetOf(node: GraphNode, head: Ball, jets: readonly (Ball[] | null)[], se
       if (node.name !== setting.letter) return null;
       return [head, { mid: 1n << BigInt(bits), rad: 0n }, ...Array.from({ length: order - 1 }, () => nothing)];
     case 'add':
-      return Array.from({ length: order + 1 }, (_, k) => known.reduce((total, jet) => addBalls(total, jet[k] as Ball), nothing));
+      return Array.from({ length: order + 1 }, (_, k) =>
+        known.reduce((total, jet) => addBalls(total, jet[k] as Ball), nothing),
+      );
     case 'mul':
       return known.reduce((total, jet) => mulJets(total, jet, bits));
     case 'negate':
@@ -63,7 +72,9 @@ function jetOf(node: GraphNode, head: Ball, jets: readonly (Ball[] | null)[], se
     case 'call':
       return a && known.length === 1 ? callJet(node.name, a, head, bits) : null;
     default:
-      return known.every((jet) => jet.slice(1).every((ball) => ball.mid === 0n && ball.rad === 0n)) ? constantJet(head, order) : null;
+      return known.every((jet) => jet.slice(1).every((ball) => ball.mid === 0n && ball.rad === 0n))
+        ? constantJet(head, order)
+        : null;
   }
 }
 
@@ -72,7 +83,16 @@ function mulJets(a: readonly Ball[], b: readonly Ball[], bits: number): Ball[] {
 }
 
 /** The sum over j from `first` to k of (p j + q) a_j b_(k-j), over `under`: one rounding for all. */
-function convolved(a: readonly Ball[], b: readonly Ball[], k: number, first: number, p: bigint, q: bigint, under: bigint, bits: number): Ball {
+function convolved(
+  a: readonly Ball[],
+  b: readonly Ball[],
+  k: number,
+  first: number,
+  p: bigint,
+  q: bigint,
+  under: bigint,
+  bits: number,
+): Ball {
   let mid = 0n;
   let rad = 0n;
   for (let j = first; j <= k; j += 1) {
@@ -80,7 +100,8 @@ function convolved(a: readonly Ball[], b: readonly Ball[], k: number, first: num
     if (x.mid === 0n && x.rad === 0n) continue;
     const weight = p * BigInt(j) + q;
     mid += weight * x.mid * y.mid;
-    if (x.rad !== 0n || y.rad !== 0n) rad += magnitude(weight) * (magnitude(x.mid) * y.rad + (magnitude(y.mid) + y.rad) * x.rad);
+    if (x.rad !== 0n || y.rad !== 0n)
+      rad += magnitude(weight) * (magnitude(x.mid) * y.rad + (magnitude(y.mid) + y.rad) * x.rad);
   }
   const shift = BigInt(bits);
   return { mid: (mid >> shift) / under, rad: (rad >> shift) / under + 3n };
@@ -207,7 +228,8 @@ function hyperbolicJet(name: string, a: readonly Ball[], bits: number): Ball[] |
     return head && callJet('exp', jet, head, bits);
   });
   if (!up || !down) return null;
-  const half = (jet: readonly Ball[]): Ball[] => jet.map((ball) => ({ mid: ball.mid >> 1n, rad: (ball.rad >> 1n) + 1n }));
+  const half = (jet: readonly Ball[]): Ball[] =>
+    jet.map((ball) => ({ mid: ball.mid >> 1n, rad: (ball.rad >> 1n) + 1n }));
   const sinh = half(up.map((ball, k) => addBalls(ball, negateBall(down[k] as Ball))));
   const cosh = half(up.map((ball, k) => addBalls(ball, down[k] as Ball)));
   if (name === 'sinh') return sinh;

@@ -24,11 +24,18 @@ export function telescoped(body: Expr, index: string, context: CheckContext): Te
 /** f(k+1) - f(k), or the other way round, as it is written. */
 function differenceOfTerms(body: Expr, index: string, context: CheckContext): Telescope | null {
   if (body.kind !== 'sum' || body.terms.length !== 2) return null;
-  const [first, second] = body.terms.map((term) => (term.sign === 'minus' ? negateExpr(term.expr) : term.expr)) as [Expr, Expr];
-  for (const [later, earlier] of [[first, second], [second, first]] as const) {
+  const [first, second] = body.terms.map((term) => (term.sign === 'minus' ? negateExpr(term.expr) : term.expr)) as [
+    Expr,
+    Expr,
+  ];
+  for (const [later, earlier] of [
+    [first, second],
+    [second, first],
+  ] as const) {
     const sum = negateExpr(earlier);
     const next = substitute(sum, index, addExprs(letterOf(index), oneExpr));
-    if (compareExpressions(later, next, context).kind === 'equal') return { sum, atInfinity: limitBeyond(sum, index, context) };
+    if (compareExpressions(later, next, context).kind === 'equal')
+      return { sum, atInfinity: limitBeyond(sum, index, context) };
   }
   return null;
 }
@@ -69,7 +76,10 @@ function partialFractions(body: Expr, index: string, context: CheckContext): Tel
 /** 1/(k+s) is 1/(k+s0) and the steps between: the sum of the earlier ones has these as its differences. */
 function joinPoles(group: readonly { shift: Q.Rational; residue: Q.Rational }[], index: string): Expr | null {
   const total = group.reduce((sum, { residue }) => Q.add(sum, residue), Q.zero);
-  const lowest = group.reduce((least, { shift }) => (Q.compare(shift, least) < 0 ? shift : least), (group[0] as { shift: Q.Rational }).shift);
+  const lowest = group.reduce(
+    (least, { shift }) => (Q.compare(shift, least) < 0 ? shift : least),
+    (group[0] as { shift: Q.Rational }).shift,
+  );
   if (!Q.isZero(total)) return null;
   const parts: Expr[] = [];
   for (const { shift, residue } of group) {
@@ -90,4 +100,3 @@ function residueAt(num: Polynomial, den: Polynomial, at: Q.Rational): Q.Rational
 function valueAt(p: Polynomial, x: Q.Rational): Q.Rational {
   return p.reduceRight((total, coef) => Q.add(Q.mul(total, x), Q.rational(coef)), Q.zero);
 }
-
