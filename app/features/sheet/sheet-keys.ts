@@ -1,6 +1,14 @@
 import type { Editor } from '@tiptap/core';
-import { TextSelection } from '@tiptap/pm/state';
-import { copyAbove, deleteBlock, insertLine, insertWords, moveBlock, type Command } from './sheet-commands.ts';
+import { NodeSelection } from '@tiptap/pm/state';
+import {
+  copyAbove,
+  deleteBlock,
+  insertLine,
+  insertWords,
+  moveBlock,
+  stepAttributes,
+  type Command,
+} from './sheet-commands.ts';
 
 /** What the kind of node is told of its sheet. */
 export interface StepOptions {
@@ -12,10 +20,24 @@ export interface StepOptions {
 export function run(editor: Editor, command: Command): boolean {
   const tr = editor.isEditable ? command(editor.state) : null;
   if (!tr) return false;
-  editor.view.dispatch(tr);
-  // A line takes the focus into its field by itself; words are written in the sheet.
-  if (editor.state.selection instanceof TextSelection) editor.view.focus();
+  keepFocus(editor, () => editor.view.dispatch(tr));
   return true;
+}
+
+/**
+ * Words are written in the sheet itself. A line takes the focus into its field, a moment after the field before it is
+ * gone: until then the sheet holds it, so that no key is lost. Not on touch screens, where that would bring up the
+ * device's own keys.
+ */
+function keepFocus(editor: Editor, act: () => void): void {
+  const before = selectedStep(editor);
+  act();
+  const after = selectedStep(editor);
+  if (after === null || (after !== before && matchMedia('(pointer: fine)').matches)) editor.view.focus();
+}
+
+function selectedStep({ state }: Editor): string | null {
+  return state.selection instanceof NodeSelection ? stepAttributes(state.selection.node).stepId : null;
 }
 
 /** Keys that act on the line in hand, in a maths field as in words; written as TipTap writes them. */
@@ -41,8 +63,10 @@ function nameOf({ key, ctrlKey, metaKey, altKey, shiftKey }: Pressed): string {
 /** Acts on a key pressed within a field, which the editor itself does not see. Answers whether it was one of ours. */
 export function pressKey(editor: Editor, event: Pressed, above: string): boolean {
   const name = nameOf(event);
-  if (name === 'Mod-z') return editor.commands.undo() || true;
-  if (name === 'Mod-Shift-z' || name === 'Mod-y') return editor.commands.redo() || true;
+  if (name === 'Mod-z' || name === 'Mod-Shift-z' || name === 'Mod-y') {
+    keepFocus(editor, () => (name === 'Mod-z' ? editor.commands.undo() : editor.commands.redo()));
+    return true;
+  }
   const command = sheetKeys(above)[name];
   if (!command) return false;
   run(editor, command);

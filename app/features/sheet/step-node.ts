@@ -3,7 +3,7 @@ import { NodeSelection, Plugin } from '@tiptap/pm/state';
 import { ReactNodeViewRenderer } from '@tiptap/react';
 import { StepView } from './step-view.tsx';
 import { blocksFromPaste } from './paste-steps.ts';
-import { insertBlocks, mendIds, nextLine } from './sheet-commands.ts';
+import { insertBlocks, mendIds, nextLine, stepAttributes, writeStep } from './sheet-commands.ts';
 import { sheetDecorations } from './sheet-decorations.ts';
 import { run, sheetKeys, type StepOptions } from './sheet-keys.ts';
 
@@ -62,8 +62,12 @@ export const StepNode = Node.create<StepOptions>({
         appendTransaction: (transactions, _before, state) =>
           transactions.some(({ docChanged }) => docChanged) ? mendIds(state) : null,
         props: {
-          // A line is written in its field: keys that reach the sheet itself must never replace it.
-          handleTextInput: ({ state }) => state.selection instanceof NodeSelection,
+          // What is typed before the line's field has the focus goes to its end, and never replaces the line.
+          handleTextInput: ({ state }, _from, _to, text) => {
+            if (!(state.selection instanceof NodeSelection)) return false;
+            const { stepId, tex } = stepAttributes(state.selection.node);
+            return run(editor, writeStep(stepId, { tex: tex + text })) || true;
+          },
           handlePaste: ({ state }, event) => {
             const text = event.clipboardData?.getData('text/plain') ?? '';
             if (!(state.selection instanceof NodeSelection) || text === '') return false;
