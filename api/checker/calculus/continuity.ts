@@ -20,7 +20,7 @@ import {
   rationalOf,
 } from './build.ts';
 import { infinitySign } from './limit.ts';
-import { polynomialIn } from './integrand.ts';
+import { linearIn, polynomialIn } from './integrand.ts';
 import { needsOf } from './needs.ts';
 import { isZeroCoefficient } from './series-ring.ts';
 import { substitute } from './substitute.ts';
@@ -56,6 +56,17 @@ export function splitAt(
   if (!points) return null;
   const cuts = points.map((point): Cut => ({ at: point.expr, isGap: point.isGap, isDescending }));
   return isDescending ? cuts.reverse() : cuts;
+}
+
+/** The stretch between two numbers cut at all zeros of an expression, from the one to the other; null where some may be missed. */
+export function cutsAtZeros(expr: Expr, variable: string, from: Expr, to: Expr, context: CheckContext): Expr[] | null {
+  const [a, b] = [positionOf(from, context), positionOf(to, context)];
+  if (!a || !b || !Number.isFinite(a.value) || !Number.isFinite(b.value) || a.value === b.value) return null;
+  const [low, high] = a.value < b.value ? [a, b] : [b, a];
+  const zeros = rootsOf(expr, variable, low, high, context);
+  if (!zeros?.areAll) return null;
+  const cuts = between(low, high, zeros.candidates).map(({ expr: at }) => at);
+  return a.value < b.value ? cuts : cuts.reverse();
 }
 
 interface Position {
@@ -236,6 +247,8 @@ function rootsOf(need: Expr, variable: string, low: Position, high: Position, co
     return { candidates: parts.flatMap((part) => part?.candidates ?? []), areAll: parts.every((part) => part?.areAll) };
   }
   if (need.kind === 'power' && rationalOf(need.exponent)) return rootsOf(need.base, variable, low, high, context);
+  const turning = need.kind === 'call' ? circularRoots(need, variable, low, high, context) : null;
+  if (turning) return { candidates: turning, areAll: true };
   const coefs = polynomialIn(need, variable);
   if (coefs?.length === 1) return { candidates: [], areAll: true };
   if (coefs?.length === 2) return { candidates: linearRoot(coefs, context), areAll: true };
@@ -251,6 +264,38 @@ function rootsOf(need: Expr, variable: string, low: Position, high: Position, co
     (root) => Q.toNumber(root.high) > low.value && Q.toNumber(root.low) < high.value && !Q.equals(root.low, root.high),
   );
   return isOpen ? null : { candidates: exact, areAll: true };
+}
+
+const mostTurns = 60;
+
+/** The zeros of a sine or cosine of something linear: where that is a multiple of pi, or half a one more. */
+function circularRoots(
+  need: Extract<Expr, { kind: 'call' }>,
+  variable: string,
+  low: Position,
+  high: Position,
+  context: CheckContext,
+): Candidate[] | null {
+  const linear = need.args[0] ? linearIn(need.args[0], variable) : null;
+  if (!linear || (need.name !== 'sin' && need.name !== 'cos')) return null;
+  const ends = [low, high].map(({ expr, value }) =>
+    Number.isFinite(value) ? positionOf(addExprs(mulExprs(linear.slope, expr), linear.constant), context) : null,
+  );
+  const [a, b] = ends;
+  if (!a || !b) return null;
+  const [first, last] = [Math.min(a.value, b.value), Math.max(a.value, b.value)].map((angle) => angle / Math.PI) as [
+    number,
+    number,
+  ];
+  if (last - first > mostTurns) return null;
+  const found: Candidate[] = [];
+  for (let k = Math.floor(first) - 1; k <= Math.ceil(last) + 1; k += 1) {
+    const angle = mulExprs(need.name === 'sin' ? numberOf(k) : numberOf(2 * k + 1, 2), piExpr);
+    const at = divExprs(addExprs(angle, mulExprs(numberOf(-1), linear.constant)), linear.slope);
+    const position = positionOf(at, context);
+    if (position) found.push({ expr: at, value: position.value });
+  }
+  return found;
 }
 
 function linearRoot([constant, slope]: readonly Expr[], context: CheckContext): Candidate[] {

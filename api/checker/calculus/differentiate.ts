@@ -72,7 +72,7 @@ function constantTest(variable: string, context: CheckContext, partial: boolean)
   };
   const lettersBelow = (node: Expr): readonly string[] => {
     if (node.kind === 'letter') return [node.name];
-    if (bindsOrNames(node)) return [...lettersOf(node), ...ownLetters(node, context)];
+    if (bindsOrNames(node)) return [...lettersOf(node), ...openVariables(node), ...ownLetters(node, context)];
     return childrenOf(node).every(isConstant) ? [] : [variable];
   };
   return isConstant;
@@ -80,6 +80,12 @@ function constantTest(variable: string, context: CheckContext, partial: boolean)
 
 function bindsOrNames(node: Expr): boolean {
   return ['series', 'limit', 'integral', 'derivative', 'evaluated', 'rate', 'apply'].includes(node.kind);
+}
+
+/** An indefinite integral depends on its variable, whatever stands under it. */
+function openVariables(node: Expr): readonly string[] {
+  const inside = childrenOf(node).flatMap(openVariables);
+  return node.kind === 'integral' && !node.from ? [node.variable, ...inside] : inside;
 }
 
 /** The free letters of own functions that occur. */

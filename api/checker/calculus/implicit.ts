@@ -59,13 +59,13 @@ function judgeDerived(question: StatementQuestion, fresh: readonly string[]): St
 }
 
 function tryFormula(question: StatementQuestion, above: CompareStatement, letter: string): StepResult | null {
-  const { below, reference, settings, context } = question;
+  const { below, settings, context } = question;
   try {
     return judgeFormula({
       above,
       below,
       letter,
-      reference: reference === question.above ? above : reference,
+      reference: above,
       families: new Set(),
       settings,
       context,

@@ -7,7 +7,9 @@ import { Unsettled } from '../solving/unsettled.ts';
 import { isKnown } from '../values/arithmetic.ts';
 import { evaluate } from '../values/evaluate.ts';
 import { findAntiderivative, withoutDefinition } from './antiderivative.ts';
-import { infinityExpr, negateExpr, noValueExpr, subExprs, zeroExpr } from './build.ts';
+import { withoutBars } from './bars.ts';
+import { knownIntegral } from './known-integrals.ts';
+import { addExprs, infinityExpr, negateExpr, noValueExpr, subExprs, zeroExpr } from './build.ts';
 import { throughAntiderivative } from './definite.ts';
 import { bodyOf, differentiateTimes } from './differentiate.ts';
 import { infinitySign, limitExpr, limitOf, sideLimit } from './limit.ts';
@@ -84,7 +86,12 @@ function reduceIntegral(node: Extract<Expr, { kind: 'integral' }>, context: Chec
   const integrand = carriedOut(node.integrand, inner);
   if (sameExpr(from, to)) return isKnownAt(integrand, variable, from, inner) ? zeroExpr : null;
   const primitive = findAntiderivative(integrand, variable, inner);
-  return primitive && throughAntiderivative(primitive, { variable, from, to }, inner);
+  if (primitive) return throughAntiderivative(primitive, { variable, from, to }, inner);
+  const known = knownIntegral({ ...node, integrand }, inner);
+  if (known) return known;
+  const pieces = withoutBars({ ...node, integrand }, inner);
+  const values = pieces?.map((piece) => reduceCalculus(piece, context));
+  return values?.every((value) => value !== null) ? addExprs(...(values as Expr[])) : null;
 }
 
 function isKnownAt(expr: Expr, variable: string, at: Expr, context: CheckContext): boolean {
@@ -111,9 +118,15 @@ function valueAt(operand: Expr, variable: string, at: Expr, side: 'left' | 'righ
   if (
     infinitySign(at) === null &&
     (lettersOf(put).length > 0 || evaluate(put, new Map(), 96, context).kind !== 'undefined')
-  )
+  ) {
     return put;
-  return limitExpr(sideLimit(operand, variable, { to: at, side }, context));
+  }
+  try {
+    return limitExpr(sideLimit(operand, variable, { to: at, side }, context));
+  } catch (cause) {
+    if (cause instanceof Unsettled && cause.reason === 'no-domain') return noValueExpr;
+    throw cause;
+  }
 }
 
 /** The letter that an evaluation bracket is about, where only one can be meant. */

@@ -2,13 +2,16 @@ import type { Expr, SeriesExpr } from '../../../shared/maths/expression.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
+import { reduceFraction, toFraction } from '../solving/fraction.ts';
+import { leading } from '../solving/polynomial.ts';
 import { isKnown, toBall } from '../values/arithmetic.ts';
-import { evaluate } from '../values/evaluate.ts';
+import { evaluate, prepare } from '../values/evaluate.ts';
 import { ballToNumber } from '../numbers/ball.ts';
 import {
   addExprs,
   callOf,
   divExprs,
+  infinityExpr,
   isZeroExpr,
   mulExprs,
   negateExpr,
@@ -33,7 +36,7 @@ export function closedSeries(node: SeriesExpr, context: CheckContext): Expr | nu
   if (isZeroExpr(body) && infinitySign(to) !== null) return zeroExpr;
   const isInfinite = infinitySign(to) === 1;
   if (!isInfinite && infinitySign(to) !== null) return null;
-  const known = isInfinite ? knownInfiniteSum(body, index, from) : null;
+  const known = isInfinite ? (divergentSum(body, index, context) ?? knownInfiniteSum(body, index, from)) : null;
   if (known) return known;
   const telescope = telescoped(body, index, context);
   if (telescope)
@@ -42,6 +45,15 @@ export function closedSeries(node: SeriesExpr, context: CheckContext): Expr | nu
       : between(telescope.sum, index, from, to);
   const parts = termsIn(body, index).map((term) => closedTerm(term, node, isInfinite, context));
   return parts.every((part) => part !== null) ? addExprs(...(parts as Expr[])) : null;
+}
+
+/** Quotients of polynomials that do not fall faster than 1/k have no finite sum. */
+function divergentSum(body: Expr, index: string, context: CheckContext): Expr | null {
+  const fraction = toFraction(prepare(body, context), index);
+  if (!fraction) return null;
+  const { num, den } = reduceFraction(fraction);
+  if (num.length === 0 || num.length + 1 < den.length) return null;
+  return leading(num) > 0n === leading(den) > 0n ? infinityExpr : negateExpr(infinityExpr);
 }
 
 function at(expr: Expr, index: string, value: Expr): Expr {
