@@ -1,7 +1,5 @@
+import { GRACE_MS } from '../../../shared/lib/round-times.ts';
 import type { Round } from '../rounds/rounds.entity.ts';
-
-/** The server's time of receipt decides, with this much grace. */
-export const GRACE_MS = 120_000;
 
 type Times = Pick<Round, 'stage' | 'writingEndsAt' | 'lateRule' | 'lateDealtAt'>;
 
