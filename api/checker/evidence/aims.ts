@@ -2,7 +2,7 @@ import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { exprsOf } from '../../../shared/maths/walk.ts';
 import * as Q from '../numbers/rational.ts';
-import { neg, sum } from './build.ts';
+import { neg, product, sum, termsOf } from './build.ts';
 import {
   isFiniteNumber,
   isNear,
@@ -148,14 +148,26 @@ function aimAtMultiple(above: Relation, line: Relation, places: readonly Place[]
         }
       : tree;
   const values = places.map((place) => differenceAt(above, place));
+  const below = denominatorsIn(above);
+  const cleared = places.map((place) => estimate(product(...below), place));
   const scales = scalesOf(sum(above.left, neg(above.right)), tree);
   return {
     roots: [line.left, line.right],
     tree: whole,
     wanted: null,
     places,
-    targets: scales.map((scale) => values.map((value) => times(real(scale), value))),
+    targets: [
+      ...scales.map((scale) => values.map((value) => times(real(scale), value))),
+      ...(below.length > 0
+        ? [1, -1].map((scale) => values.map((value, k) => times(real(scale), times(value, cleared[k] as Complex))))
+        : []),
+    ],
   };
+}
+
+/** What both sides would be multiplied by to clear fractions. */
+function denominatorsIn({ left, right }: Relation): Expr[] {
+  return [left, right].flatMap(termsOf).flatMap(({ expr }) => (expr.kind === 'quotient' ? [expr.denominator] : []));
 }
 
 /** A number that is solved for is looked at some ten times over. */

@@ -60,8 +60,14 @@ function* editsAt(
     if (value) yield* changedNumber(place, value, tex);
     return;
   }
-  if (place.leads && place.leads.term.expr === node) yield* changedTerm(place, place.leads, aim, target, tex);
+  if (place.leads && place.leads.term.expr === node && !place.isFactor)
+    yield* changedTerm(place, place.leads, aim, target, tex);
   if (node.kind === 'letter') yield* changedLetter(place, aim, target, letters);
+}
+
+/** A line with fractions in it may well have one more. */
+function costOfFraction(tex: string): number {
+  return tex.includes('frac') ? 0.6 : fractionCost;
 }
 
 function* changedNumber(place: PlacedNode, value: Rational, tex: string): Generator<Found> {
@@ -69,7 +75,12 @@ function* changedNumber(place: PlacedNode, value: Rational, tex: string): Genera
   if (node.kind !== 'number') return;
   const before = { num: node.numerator, den: node.denominator };
   if (Q.equals(value, before)) return;
-  const extra = value.den !== 1n && isWholeNumber(node) ? fractionCost : 0;
+  const extra =
+    value.den !== 1n && isWholeNumber(node)
+      ? place.isFactor || place.isExponent || place.isInQuotient
+        ? fractionCost
+        : costOfFraction(tex)
+      : 0;
   const span = outer(node);
   if (Q.isZero(value) && leads && !leads.isOnly) {
     yield { edits: [{ ...leads.term.span, text: '' }], cost: costs.drop + 0.1 * leavesOf(leads.term.expr).length };
@@ -147,7 +158,7 @@ function* changedTerm(
     return;
   }
   const at = outer(node).start;
-  const extra = (size.den === 1n ? 0 : fractionCost / 2) + (node.kind === 'quotient' ? 0.4 : 0);
+  const extra = (size.den === 1n ? 0 : fractionCost) + (node.kind === 'quotient' ? 0.4 : 0);
   const bracketed = node.kind === 'sum' && !node.bracketed;
   if (!bracketed)
     yield {

@@ -13,6 +13,8 @@ export interface PlacedNode {
   readonly isBase: boolean;
   /** What follows it in a product. */
   readonly isFactor: boolean;
+  /** Part of a numerator or denominator. */
+  readonly isInQuotient: boolean;
 }
 export interface PlacedTerm {
   readonly term: Term;
@@ -26,6 +28,7 @@ interface Spot {
   readonly isExponent?: boolean;
   readonly isBase?: boolean;
   readonly isFactor?: boolean;
+  readonly isInQuotient?: boolean;
 }
 
 /** Every node of an expression in reading order, outer first. A side without a sign is a term by itself. */
@@ -40,29 +43,34 @@ function standAlone(expr: Expr): PlacedTerm {
 }
 
 function visit(node: Expr, spot: Spot, found: PlacedNode[]): void {
-  const { leads, isExponent = false, isBase = false, isFactor = false } = spot;
-  found.push({ node, leads, isExponent, isBase, isFactor });
+  const { leads, isExponent = false, isBase = false, isFactor = false, isInQuotient = false } = spot;
+  found.push({ node, leads, isExponent, isBase, isFactor, isInQuotient });
+  const within = { isInQuotient: isInQuotient || node.kind === 'quotient' };
   switch (node.kind) {
     case 'sum':
       for (const [k, term] of node.terms.entries()) {
-        visit(term.expr, { leads: { term, isFirst: k === 0, isOnly: node.terms.length === 1 } }, found);
+        visit(term.expr, { leads: { term, isFirst: k === 0, isOnly: node.terms.length === 1 }, ...within }, found);
       }
       return;
     case 'product':
       node.factors.forEach((factor, k) =>
-        visit(factor, { leads: k === 0 ? leads : inside(factor), isFactor: true }, found),
+        visit(factor, { leads: k === 0 ? leads : inside(factor), isFactor: true, ...within }, found),
       );
       return;
     case 'quotient':
-      visit(node.numerator, { leads: leads && node.numerator.kind !== 'sum' ? leads : inside(node.numerator) }, found);
-      visit(node.denominator, { leads: inside(node.denominator) }, found);
+      visit(
+        node.numerator,
+        { leads: leads && node.numerator.kind !== 'sum' ? leads : inside(node.numerator), ...within },
+        found,
+      );
+      visit(node.denominator, { leads: inside(node.denominator), ...within }, found);
       return;
     case 'power':
-      visit(node.base, { leads: null, isBase: true }, found);
-      visit(node.exponent, { leads: inside(node.exponent), isExponent: true }, found);
+      visit(node.base, { leads: null, isBase: true, ...within }, found);
+      visit(node.exponent, { leads: inside(node.exponent), isExponent: true, ...within }, found);
       return;
     default:
-      for (const part of childrenOf(node)) visit(part, { leads: inside(part) }, found);
+      for (const part of childrenOf(node)) visit(part, { leads: inside(part), ...within }, found);
   }
 }
 

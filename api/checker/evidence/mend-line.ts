@@ -31,26 +31,21 @@ export interface MendedLine {
 const mostRuled = 14;
 const rightCost = 1.2;
 const rewrittenCost = 4;
+/** Beyond this two changes may be better than one. */
+const likelyCost = 2.15;
 
 /** The mended line of a step that fails; null where none was found. */
 export function mendLine(question: MendQuestion): MendedLine | null {
   const aims = aimsOf(question);
-  const isRight = rightParts(question);
+  const isRight = rightParts(question, aims[0]?.wanted ?? null);
   if (question.isLarge) return firstThatHolds([...changesOfWrongTerms(question, aims, isRight)], question);
   const single = [...singleChanges(question, aims, isRight)];
-  const first = firstThatHolds(
-    single.filter((candidate) => weight(candidate) < rewrittenCost),
-    question,
-  );
+  const likely = single.filter((candidate) => weight(candidate) < likelyCost);
+  const unlikely = single.filter((candidate) => weight(candidate) >= likelyCost);
+  const first = firstThatHolds(likely, question);
   if (first) return first;
   const pairs = aims.flatMap((aim) => findPairs(aim, question, isRight));
-  return (
-    firstThatHolds(pairs, question) ??
-    firstThatHolds(
-      single.filter((candidate) => weight(candidate) >= rewrittenCost),
-      question,
-    )
-  );
+  return firstThatHolds([...pairs, ...unlikely], question);
 }
 
 function* singleChanges(
@@ -91,11 +86,11 @@ function* changesOfWrongTerms(
 
 const mostWrong = 3;
 
-function rightParts(question: MendQuestion): (node: Expr) => boolean {
+function rightParts(question: MendQuestion, wanted: Expr | null): (node: Expr) => boolean {
   const pair = expressionsIn(question);
   const { above, line } = question;
   const found = pair
-    ? findRightParts(pair.above, pair.focus)
+    ? findRightParts(wanted ?? pair.above, pair.focus)
     : above.kind === 'relation' && line.kind === 'relation'
       ? findRightTerms([above.left, above.right], [line.left, line.right])
       : new Set<Expr>();

@@ -43,18 +43,31 @@ interface Listed {
   readonly name: string;
   readonly entries: readonly Entry[];
   readonly isSet: boolean;
+  readonly cost: number;
 }
+
+const listCost = 0.9;
+/** An equation that is not solved yet is rather mended in its terms. */
+const equationCost = 2.3;
 
 function entriesOf(line: Line): Listed | null {
   if (line.kind === 'relation') {
     const found = entryOf(line);
-    return found && { name: found.name, entries: [found.entry], isSet: false };
+    const isSolved = line.left.kind === 'letter';
+    return (
+      found && { name: found.name, entries: [found.entry], isSet: false, cost: isSolved ? listCost : equationCost }
+    );
   }
   if (line.kind === 'any') {
     const found = line.parts.map((part) => (part.kind === 'relation' ? entryOf(part) : null));
     const [first] = found;
     if (!first || found.some((part) => part?.name !== first.name)) return null;
-    return { name: first.name, entries: found.flatMap((part) => (part ? [part.entry] : [])), isSet: false };
+    return {
+      name: first.name,
+      entries: found.flatMap((part) => (part ? [part.entry] : [])),
+      isSet: false,
+      cost: listCost,
+    };
   }
   if (line.kind !== 'membership' || line.set.kind !== 'finite' || line.letter?.kind !== 'letter') return null;
   const entries = line.set.items.map((item): Entry => {
@@ -65,7 +78,7 @@ function entriesOf(line: Line): Listed | null {
       textFor: (value) => printExpr(value),
     };
   });
-  return { name: line.letter.name, entries, isSet: true };
+  return { name: line.letter.name, entries, isSet: true, cost: listCost };
 }
 
 /** letter = value, or an equation of first degree with a number on the right. */
@@ -107,7 +120,7 @@ function* replacements(
   if (lost.length > 4 || wrong.length > 4) return;
   for (const order of permutations(lost)) {
     const edits: Edit[] = [];
-    let cost = 0.9;
+    let cost = listed.cost;
     for (const [k, entry] of wrong.entries()) {
       const value = order[k];
       const text = value && entry.textFor(value);
@@ -156,6 +169,7 @@ function addition({ name, entries, isSet }: Listed, value: Expr, { tex }: MendQu
 /** x = 3 and x = -3 where a plus-or-minus stands: what is left of it, written out. */
 export function* signChoices(question: MendQuestion): Generator<Candidate> {
   const { line } = question;
+  yield* bothSigns(question);
   if (line.kind !== 'relation' || line.left.kind !== 'letter' || question.gained.length !== 1) return;
   const [only] = line.right.kind === 'sum' && line.right.terms.length === 1 ? line.right.terms : [];
   if (only?.sign !== 'plusminus') return;
@@ -168,4 +182,12 @@ export function* signChoices(question: MendQuestion): Generator<Candidate> {
     cost: 1,
     touchesRight: false,
   };
+}
+
+/** A plus-or-minus where one of two signs was forgotten. */
+function* bothSigns({ line, lost, gained }: MendQuestion): Generator<Candidate> {
+  if (line.kind !== 'relation' || line.sign !== '=' || lost.length !== 1 || gained.length > 0) return;
+  const isBare = line.right.kind === 'number' || line.right.kind === 'root';
+  const { start } = outer(line.right);
+  if (isBare) yield { edits: [{ start, end: start, text: '\\pm' }], cost: 1.2, touchesRight: false };
 }

@@ -43,7 +43,8 @@ export function* rewritten(
     touchesRight: false,
   });
   const limits = atBothLimits(above, context);
-  if (limits && (focus.kind === 'sum' ? focus.terms.length === 2 : false)) yield whole(printExpr(limits), 1.05);
+  const isDifference = focus.kind === 'sum' && focus.terms.length === 2 && focus.terms[1]?.sign === 'minus';
+  if (limits && isDifference) yield whole(printExpr(limits), 1.05);
   const worked = workOut(above, focus, context);
   if (hasCalculus(above) && !hasCalculus(worked)) {
     const terms = above.kind === 'integral' ? expanded(worked) : null;

@@ -1,4 +1,8 @@
-import { memory, ruled, type Slip } from './slip.ts';
+import type { Expr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import type { Bindings } from './match.ts';
+import { rule } from './rewrite.ts';
+import { memory, ruled, slip, type Slip } from './slip.ts';
 
 const schechter = 'Schechter, The Most Common Errors in Undergraduate Mathematics';
 const portland = 'Portland State University, Common Errors in Algebra and Calculus';
@@ -8,6 +12,14 @@ const detachment =
   'Linchevski & Herscovics 1996; Herscovics & Linchevski 1994, detachment from the minus sign (from memory)';
 const cangelosi = 'Cangelosi, Madrid, Cooper, Olson & Hartter 2013, The negative sign and exponential expressions';
 const booth = 'L. Booth 1984 / Kuchemann 1981 (CSMS), letters and concatenation (from memory)';
+
+function hasLetter(expr: Expr | undefined): boolean {
+  return expr !== undefined && lettersOf(expr).length > 0;
+}
+
+function isNumeric(bound: Bindings): boolean {
+  return ![...bound.values()].some(hasLetter);
+}
 
 /** Signs. */
 const signs: readonly Slip[] = [
@@ -171,13 +183,14 @@ const likeTerms: readonly Slip[] = [
     ['a^m+a^n -> a^{m+n}', 'ka^m+pa^n -> (k+p)a^{m+n}', 'ka^m+pa -> (k+p)a^{m+1}'],
     6,
   ),
-  ruled(
-    'a number and a letter term were joined',
-    'like-terms',
-    `${booth}; Sleeman 1984, Cognitive Science 8:387-412`,
-    ['k+ma -> (k+m)a'],
-    7,
-  ),
+  slip('a number and a letter term were joined', 'like-terms', `${booth}; Sleeman 1984, Cognitive Science 8:387-412`, {
+    rank: 7,
+    rewrites: [rule('k+ma', '(k+m)a', (bound) => hasLetter(bound.get('a')))],
+  }),
+  slip('an addition was done before a multiplication', 'brackets', memory, {
+    rank: 7,
+    rewrites: [rule('a+kb', '(a+k)b', isNumeric), rule('a-kb', '(a-k)b', isNumeric)],
+  }),
   ruled('unlike terms were joined', 'like-terms', booth, ['ka+mb -> (k+m)ab', 'a+b -> ab'], 5),
 ];
 

@@ -46,7 +46,11 @@ describe('the evidence of a first fault', { timeout: 30_000 }, () => {
   });
 
   it.each([
-    ['x^2=49', 'x=7', 'x=7\\text{ or }x=-7'],
+    ['x^2=49', 'x=7', 'x=\\pm7'],
+    ['(x+5)^2=16', 'x+5=4', 'x+5=\\pm4'],
+    ['\\frac{2}{x}=\\frac{3}{x+1}', '2x+1=3x', '2x+2=3x'],
+    ['\\int_0^1(x^2+x)\\,dx', '\\frac13+1', '\\frac13+\\frac12'],
+    ['\\frac{x}{2}+\\frac{x}{3}=5', '\\frac{2x}{5}=5', '\\frac{5x}{6}=5'],
     ['x^2=5x', 'x=5', 'x=0\\text{ or }x=5'],
     ['\\sqrt{x+6}=x', 'x=-2\\text{ or }x=3', 'x=3'],
     ['-2x<10', 'x<-5', 'x>-5'],
