@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { namesInWords } from '../../api/features/derivations/names-in-words.ts';
-import { GRACE_MS, writingWindow } from '../../api/features/derivations/writing-window.ts';
+import { writingWindow } from '../../api/features/derivations/writing-window.ts';
+import { GRACE_MS } from '../../shared/lib/round-times.ts';
 import { givenLine, linesOf } from '../../shared/schemas/sheet.ts';
 import { prose, sheet, step } from '../support/sheets.ts';
 
