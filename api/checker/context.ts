@@ -15,6 +15,8 @@ export interface Definitions {
 export interface CalculusScope {
   /** Letters that it takes derivatives of, as dy/dx, by the letter that they depend on. */
   readonly dependents: ReadonlyMap<string, string>;
+  /** Letters under d/dx that may depend on x or not: nothing says which. */
+  readonly ambiguous: ReadonlyMap<string, string>;
   /** Letters that it integrates by. */
   readonly variables: ReadonlySet<string>;
   /** Letters that play the constant of integration. */

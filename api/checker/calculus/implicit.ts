@@ -16,15 +16,42 @@ import { carriedOut } from './reduce.ts';
 type Judge = (question: StatementQuestion) => StatementAnswer;
 
 /** Rules 2 and 8 on statements with dy/dx or integrals; all others go on to `judge`. Throws Unsettled. */
-export function judgeWithRates(question: StatementQuestion, judge: Judge): StatementAnswer {
+export function judgeWithRates(asked: StatementQuestion, judge: Judge): StatementAnswer {
+  const question = withoutOperators(asked);
   const { above, below, context } = question;
   const integrals = judgeIntegralEquations(question);
   if (integrals) return { ...integrals, candidates: [] };
   const [before, after] = [ratesIn(above, context), ratesIn(below, context)];
-  if (before.length + after.length === 0) return judge(question);
-  const fresh = after.filter((name) => !before.includes(name));
+  if (before.length + after.length === 0) return withConstants(question, judge);
+  const fresh = after.filter((name) => !before.includes(name) && orderOf(name) > Math.max(0, ...before.map(orderOf)));
   if (fresh.length > 0) return { ...judgeDerived(question, fresh), candidates: [] };
   return confirmed(question, judge);
+}
+
+function orderOf(name: string): number {
+  return rateNamed(name)?.order ?? 0;
+}
+
+/** Derivatives carried out, so that dy/dx shows as a letter. */
+function withoutOperators(question: StatementQuestion): StatementQuestion {
+  const { above, below, known, context } = question;
+  if (!context.calculus?.dependents.size) return question;
+  const carried = (statement: Statement): Statement => {
+    if (statement.kind === 'all' || statement.kind === 'any')
+      return { ...statement, parts: statement.parts.map(carried) };
+    if (statement.kind !== 'compare') return statement;
+    return { ...statement, left: carriedOut(statement.left, context), right: carriedOut(statement.right, context) };
+  };
+  return { ...question, above: carried(above), below: carried(below), known: known.map(carried) };
+}
+
+/** A constant of integration may take up another one: where the lines differ as they stand, nothing is said. */
+function withConstants(question: StatementQuestion, judge: Judge): StatementAnswer {
+  const result = judge(question);
+  const { above, below, context } = question;
+  const names = [...freeLetters(above, context), ...freeLetters(below, context)];
+  const isFree = context.calculus?.hasIntegral && names.some((name) => context.calculus?.constants.has(name));
+  return result.ruling === 'fails' && isFree ? { ...undecided('not-settled'), candidates: [] } : result;
 }
 
 export function ratesIn(statement: Statement, context: CheckContext): string[] {
@@ -50,7 +77,7 @@ function judgeDerived(question: StatementQuestion, fresh: readonly string[]): St
   }
   const relations = sources.filter((equation) => ratesIn(equation, context).length === 0);
   const rated = [...derived, ...sources.filter((equation) => ratesIn(equation, context).length > 0)];
-  const [first] = derived;
+  const first = derived.find((equation) => ratesIn(equation, context).includes(target ?? ''));
   if (first && target !== undefined) {
     const formula = tryFormula(question, first, target);
     if (formula?.ruling === 'holds') return oneWay(formula, sources[0] as CompareStatement, question);
@@ -122,6 +149,12 @@ function onCurve(
 function confirmed(question: StatementQuestion, judge: Judge): StatementAnswer {
   const { known, above, context } = question;
   // What does not satisfy the curve may not be dropped here: x and y stand for any of its points.
+  const rates = ratesIn(question.below, context);
+  // A value at one point, such as dy/dx = -3/4 at (3, 4), follows from a point that the line does not name.
+  if (rates.length === 0 || freeLetters(question.below, context).length === rates.length) {
+    const isSame = freeLetters(above, context).length === ratesIn(above, context).length;
+    if (!isSame) return { ...undecided('not-settled'), candidates: [] };
+  }
   const result = judge({ ...question, reference: above });
   const below = equationOf(question.below);
   if (result.ruling === 'holds' || !below) return result;

@@ -8,10 +8,10 @@ import { judgeFormula, judgeSameEquation } from '../rules/formula.ts';
 import type { StatementQuestion } from '../rules/statement-step.ts';
 import { fails, holds, undecided, type StepResult } from '../rules/step-result.ts';
 import { exprsOfStatement, type CompareStatement, type Statement } from '../statements/statement.ts';
-import { divExprs, mulExprs, negateExpr, subExprs } from './build.ts';
+import { divExprs, isZeroExpr, mulExprs, negateExpr, subExprs } from './build.ts';
 import { tryOnCurve } from './curve.ts';
 import { differentiate } from './differentiate.ts';
-import { rateNamed } from './rates.ts';
+import { rateName, rateNamed } from './rates.ts';
 import { carriedOut } from './reduce.ts';
 import { indefiniteVariables } from './scope.ts';
 
@@ -37,7 +37,11 @@ export function judgeIntegralEquations({
   const integrals = [above, below].map((statement) => exprsOfStatement(statement).flatMap(indefiniteVariables));
   const rates = [above, below].map((statement) => lettersIn(statement).filter((name) => rateNamed(name) !== null));
   const isFreeBelow = constants[1]?.length !== 0 || integrals[1]?.length !== 0;
-  if (rates[0]?.length && !rates[1]?.length) return solved(above, below, isFreeBelow, { settings, context, families });
+  const orders = rates.map((names) => Math.max(0, ...names.map((name) => rateNamed(name)?.order ?? 0))) as [
+    number,
+    number,
+  ];
+  if (orders[0] > orders[1]) return solved(above, below, isFreeBelow, { settings, context, families });
   if ((rates[0]?.length ?? 0) + (rates[1]?.length ?? 0) > 0) return null;
   if (constants.flat().length + integrals.flat().length === 0) return null;
   const isFreeAbove = constants[0]?.length !== 0 || integrals[0]?.length !== 0;
@@ -65,7 +69,8 @@ function solved(
 ): StepResult {
   const names = lettersIn(above).filter((name) => rateNamed(name) !== null);
   const rate = names.length === 1 ? rateNamed(names[0] as string) : null;
-  if (!rate || rate.order !== 1) return undecided('not-covered');
+  const lower = rate && rate.order > 1 ? rateName({ ...rate, order: rate.order - 1 }) : rate?.of;
+  if (!rate || lower === undefined || !lettersIn(below).includes(lower)) return undecided('not-covered');
   if (!isFree && context.calculus?.constantNeeded) return noConstant(below);
   const sides = [below.left, below.right].map((side) => differentiate(carriedOut(side, context), rate.by, context)) as [
     Expr,
@@ -118,6 +123,14 @@ function sameCurves(
   const along = (expr: Expr, name: string): Expr => differentiate(expr, name, context, true);
   if (y === undefined || variables.length > 2) return hasIntegral ? exactly(f, g, variables, notes, context) : null;
   const [fx, fy, gx, gy] = [along(f, x), along(f, y), along(g, x), along(g, y)];
+  // A line without x and y, such as what C is, says nothing of the curves.
+  if (
+    [
+      [fx, fy],
+      [gx, gy],
+    ].some((pair) => pair.every((slope) => isZeroExpr(slope as Expr)))
+  )
+    return undecided('not-settled');
   const slopes = [fx, fy, gx, gy].flatMap((expr) => lettersOf(expr));
   if (slopes.some((name) => context.calculus?.constants.has(name)))
     return hasIntegral ? undecided('not-settled') : null;

@@ -18,6 +18,22 @@ export interface CalculusComparison {
 
 /** Rule 8 on two expressions: up to a constant where one is free, by values that may be infinite or missing, else rule 1. */
 export function compareWithCalculus(above: Expr, below: Expr, context: CheckContext): CalculusComparison {
+  const first = compareAsRead(above, below, context);
+  const { calculus } = context;
+  if (!calculus || calculus.ambiguous.size === 0 || first.found.kind === 'equal') return first;
+  // The other reading: y depends on x. A fault has to be one under both.
+  const moving = {
+    ...calculus,
+    dependents: new Map([...calculus.dependents, ...calculus.ambiguous]),
+    known: new WeakMap(),
+  };
+  const second = compareAsRead(above, below, { ...context, calculus: moving });
+  if (second.found.kind === 'equal' || second.found.kind === first.found.kind)
+    return second.found.kind === 'equal' ? second : first;
+  return plain({ kind: 'undecided', reason: 'not-settled' });
+}
+
+function compareAsRead(above: Expr, below: Expr, context: CheckContext): CalculusComparison {
   if (concernsConstants(above, below, context)) return compareFreely(above, below, context);
   if (!hasOperator(above) && !hasOperator(below)) return plain(compareExpressions(above, below, context));
   const [a, b] = [worthOf(above, context), worthOf(below, context)];

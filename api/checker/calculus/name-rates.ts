@@ -17,8 +17,17 @@ function nameRate(node: Expr, defined: ReadonlySet<string>, by: string): Expr {
   if (node.kind === 'apply' && node.primes > 0 && node.args.length === 0 && !defined.has(node.name)) {
     return { kind: 'letter', name: rateName({ of: node.name, by, order: node.primes }), span: node.span };
   }
+  if (node.kind === 'derivative' && node.operand.kind === 'letter' && !node.partial) {
+    const { name } = node.operand;
+    const isMoving = name !== node.variable && movingLetters.has(name.charAt(0)) && !defined.has(name);
+    if (isMoving)
+      return { kind: 'letter', name: rateName({ of: name, by: node.variable, order: node.order }), span: node.span };
+  }
   return node;
 }
+
+/** Letters that stand for what varies: d/dx of one of them is dy/dx, while d/dx of a c is 0. */
+const movingLetters: ReadonlySet<string> = new Set(['y', 'u', 'v', 'w', 'f', 'g']);
 
 /** What a bare prime is by: x where the derivation has one, else t, else x. */
 export function usualVariable(lines: readonly string[]): string {

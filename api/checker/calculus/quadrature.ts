@@ -1,7 +1,6 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import type { CheckContext } from '../context.ts';
-import { addBalls, ballFromRational, magnitude, mulBalls, type Ball } from '../numbers/ball.ts';
-import * as Q from '../numbers/rational.ts';
+import { addBalls, magnitude, type Ball } from '../numbers/ball.ts';
 import { isKnown, isReal, toBall } from '../values/arithmetic.ts';
 import { evaluate, prepare } from '../values/evaluate.ts';
 import type { Graph } from '../values/graph.ts';
@@ -78,28 +77,33 @@ function taylorIntegral(job: Job, low: bigint, high: bigint, anyway: boolean): B
   const { graph, letter, context } = job;
   const bits = quadratureBits;
   const middle = (low + high) >> 1n;
-  const half: Ball = { mid: (high - low) >> 1n, rad: 1n };
-  const whole: Ball = { mid: middle, rad: half.mid + 2n };
-  if (half.mid >> BigInt(bits) > 3n) return null;
+  const half = ((high - low) >> 1n) + 1n;
+  const whole: Ball = { mid: middle, rad: half + 1n };
+  if (half >> BigInt(bits) > 3n) return null;
   const beyond = taylorOf(graph, letter, whole, order, bits, context)?.[order];
   if (!beyond) return null;
-  let power: Ball = half;
-  const powers: Ball[] = [power];
-  for (let k = 1; k <= order; k += 1) powers.push((power = mulBalls(power, half, bits)));
-  const last = powers[order] as Ball;
-  const remainder =
-    ((2n * (magnitude(beyond.mid) + beyond.rad) * (magnitude(last.mid) + last.rad)) >> BigInt(bits)) /
-      BigInt(order + 1) +
-    1n;
+  // Powers of the length are kept whole: they soon are smaller than a unit in the last place.
+  const remainder = scaledPower(2n * sizeOf(beyond), half, order + 1) / BigInt(order + 1) + 1n;
   if (remainder > tolerance && !anyway) return null;
   const jet = taylorOf(graph, letter, { mid: middle, rad: 0n }, order, bits, context);
   if (!jet) return null;
-  let total: Ball = { mid: 0n, rad: remainder };
+  let total: Ball = { mid: 0n, rad: remainder + (8n * sizeOf(jet[0] as Ball)) / (1n << BigInt(bits)) + 64n };
   for (let k = 0; k < order; k += 2) {
-    total = addBalls(
-      total,
-      mulBalls(mulBalls(jet[k] as Ball, powers[k] as Ball, bits), ballFromRational(Q.rational(2, k + 1), bits), bits),
-    );
+    const { mid, rad } = jet[k] as Ball;
+    const under = BigInt(k + 1);
+    total = addBalls(total, {
+      mid: scaledPower(2n * mid, half, k + 1) / under,
+      rad: scaledPower(2n * rad, half, k + 1) / under + 2n,
+    });
   }
   return total;
+}
+
+/** value times half^times, for a half in units of 2^-bits. */
+function scaledPower(value: bigint, half: bigint, times: number): bigint {
+  return (value * half ** BigInt(times)) >> BigInt(quadratureBits * times);
+}
+
+function sizeOf(ball: Ball): bigint {
+  return magnitude(ball.mid) + ball.rad;
 }

@@ -32,12 +32,26 @@ export function scopeOf(lines: readonly (Line | null)[], constantNeeded: boolean
     if (line.kind === 'definition') before.add(line.name);
     for (const name of letters) before.add(name);
   }
+  const first = lines[0];
+  const isRelation =
+    first !== null && first !== undefined && first.kind !== 'expression' && first.kind !== 'definition';
+  const ambiguous = new Map<string, string>();
+  for (const operator of lines.flatMap((line) => (line ? exprsOf(line).flatMap(derivativesIn) : []))) {
+    const { variable, operand } = operator;
+    if (operator.partial || variable === 'y' || dependents.has('y') || !lettersOf(operand).includes('y')) continue;
+    (isRelation ? dependents : ambiguous).set('y', variable);
+  }
   for (const name of variables) constants.delete(name);
   for (const name of dependents.keys()) constants.delete(name);
-  return { dependents, variables, constants, hasIntegral, constantNeeded, known: new WeakMap() };
+  return { dependents, ambiguous, variables, constants, hasIntegral, constantNeeded, known: new WeakMap() };
 }
 
 const usualConstants: ReadonlySet<string> = new Set(['C', 'c', 'K', 'k', 'D', 'A', 'B']);
+
+function derivativesIn(expr: Expr): Extract<Expr, { kind: 'derivative' }>[] {
+  const inside = childrenOf(expr).flatMap(derivativesIn);
+  return expr.kind === 'derivative' ? [expr, ...inside] : inside;
+}
 
 function integralsIn(expr: Expr): Extract<Expr, { kind: 'integral' }>[] {
   const inside = childrenOf(expr).flatMap(integralsIn);

@@ -6,7 +6,7 @@ import type { CheckContext } from '../context.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
 export interface ExpressionAnswer extends StepResult {
-  /** Conditions that later steps stand under, because this line has a value only there. */
+  /** Conditions that later steps stand under, because this line or the one above has a value only there. */
   readonly shrunk: readonly Line[];
 }
 
@@ -23,7 +23,7 @@ function toAnswer(found: Comparison): ExpressionAnswer {
       const conditions = [...found.excluded, ...found.cancelled].map((c) => c.tex);
       const evidence: Evidence = conditions.length > 0 ? { excluded: [...new Set(conditions)] } : {};
       const result = holds(found.reached, conditions.length > 0 ? ['domain'] : [], evidence);
-      return { ...result, shrunk: found.excluded.map((c) => c.line) };
+      return { ...result, shrunk: [...found.excluded, ...found.cancelled].map((c) => c.line) };
     }
     case 'different': {
       const { atTex, above: worthAbove, below: worthBelow } = found.witness;
