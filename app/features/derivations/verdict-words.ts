@@ -40,11 +40,13 @@ export function verdictHeadline({
 /** One step in words that can be checked by hand. */
 export function stepWords(ruling: StepRuling, state: StepState): StepWords {
   const { evidence, notes } = ruling;
+  // A value that is listed and never rejected is held against the given, not against the line above, which it solves.
+  const other = notes.includes('not-rejected') ? 'the given' : 'the line above';
   return {
     summary: SUMMARIES[state](ruling.step),
     evidence: [
-      ...witnessWords(evidence),
-      ...solutionWords(evidence),
+      ...witnessWords(evidence, other),
+      ...solutionWords(evidence, other),
       ...wrongPartWords(evidence),
       ...mendWords(evidence),
       ...undecidedWords(evidence),
@@ -70,14 +72,14 @@ const REACHED: Record<'proved' | 'sampled', string> = {
   sampled: 'Found by agreement to many digits at many points, which is not a proof.',
 };
 
-function witnessWords({ witness, link }: Evidence): Sentence[] {
+function witnessWords({ witness, link }: Evidence, other: string): Sentence[] {
   if (!witness) return [];
   const place = placeWords(witness.at);
   const where: Sentence = link ? [...place, `, in part ${link} of this line`] : place;
   if (isTruth(witness.above) || isTruth(witness.below)) {
-    return [[...where, ` the line above is ${truthWord(witness.above)}, this one is ${truthWord(witness.below)}.`]];
+    return [[...where, ` ${other} is ${truthWord(witness.above)}, this one is ${truthWord(witness.below)}.`]];
   }
-  return [[...where, ' the line above is ', tex(witness.above), ', this one is ', tex(witness.below), '.']];
+  return [[...where, ` ${other} is `, tex(witness.above), ', this one is ', tex(witness.below), '.']];
 }
 
 function placeWords(at: Readonly<Record<string, string>>): Sentence {
@@ -89,22 +91,22 @@ function placeWords(at: Readonly<Record<string, string>>): Sentence {
 const isTruth = (value: string) => value === 'true' || value === 'false';
 const truthWord = (value: string) => (value === 'true' ? 'true' : 'not true');
 
-function solutionWords({ lost, gained, solutions, operation }: Evidence): Sentence[] {
+function solutionWords({ lost, gained, solutions, operation }: Evidence, other: string): Sentence[] {
   const words: Sentence[] = [];
   if (lost?.length) {
     words.push([
       ...between(lost.map(tex)),
       lost.length === 1
-        ? ' solves the line above, but not this one: it was lost.'
-        : ' solve the line above, but not this one: they were lost.',
+        ? ` solves ${other}, but not this one: it was lost.`
+        : ` solve ${other}, but not this one: they were lost.`,
     ]);
   }
   if (gained?.length) {
     words.push([
       ...between(gained.map(tex)),
       gained.length === 1
-        ? ' solves this line, but not the line above: it was gained.'
-        : ' solve this line, but not the line above: they were gained.',
+        ? ` solves this line, but not ${other}: it was gained.`
+        : ` solve this line, but not ${other}: they were gained.`,
     ]);
   }
   if (operation) words.push([OPERATIONS[operation]]);
