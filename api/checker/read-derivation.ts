@@ -3,6 +3,7 @@ import { lettersOf } from '../../shared/maths/letters.ts';
 import { readLine } from '../../shared/maths/read.ts';
 import { childrenOf, exprsOf } from '../../shared/maths/walk.ts';
 import { nameRates, usualVariable } from './calculus/name-rates.ts';
+import { readInPlace } from './meant-lines.ts';
 import type { DerivationInput } from '../../shared/schemas/verdict.ts';
 
 /** A line as it was read, or why it could not be. */
@@ -33,7 +34,14 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
     return { ok: true, tex, line: nameRates(reading.line, defined, by) };
   };
   const assumed = input.assume.map(read);
-  const lines = input.lines.map(read);
+  const before: Line[] = [];
+  const lines = input.lines.map((tex): ReadResult => {
+    const result = read(tex);
+    if (!result.ok) return result;
+    const line = readInPlace(result.line, tex, before);
+    before.push(line);
+    return { ...result, line };
+  });
   const assumptions = assumed.flatMap((result) => (result.ok ? [result.line] : []));
   const wholeLetters = new Set(assumptions.flatMap(wholeByAssumption));
   // Only these forms make a letter whole: most derivations have none of them, and are not walked for it.

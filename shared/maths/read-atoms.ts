@@ -57,7 +57,8 @@ export function readBraces(reader: Reader): Expr {
   });
   reader.expect('}', 'missing-bracket', '}');
   const isLoose = !expr.bracketed && (expr.kind === 'sum' || (expr.kind === 'quotient' && expr.written !== 'fraction'));
-  if (isLoose && !(standsAlone(before) && standsAlone(reader.token.kind))) {
+  const isBarred = before === '|' && reader.token.kind === '|';
+  if (isLoose && !isBarred && !(standsAlone(before) && standsAlone(reader.token.kind))) {
     reader.fail('missing-bracket', ['('], { start: token.start, end: reader.lastEnd });
   }
   return expr;

@@ -29,12 +29,9 @@ export interface MemberStatement {
 export function toStatement(line: Line): Statement | null {
   switch (line.kind) {
     case 'relation':
-      return withChoices([line.left, line.right], ([left, right]) => ({
-        kind: 'compare',
-        left: left as Expr,
-        sign: line.sign,
-        right: right as Expr,
-      }));
+      return withChoices([line.left, line.right], ([left, right]) =>
+        toCompare(left as Expr, line.sign, right as Expr),
+      );
     case 'chain':
       return withChoices(line.members, (members) => toLinks(members, line.signs));
     case 'any':
@@ -51,6 +48,15 @@ export function toStatement(line: Line): Statement | null {
     default:
       return null;
   }
+}
+
+/** An equation of two written vectors or matrices says that their entries are equal: (x,y)=(3,1). */
+function toCompare(left: Expr, sign: RelationSign, right: Expr): Statement {
+  const whole: Statement = { kind: 'compare', left, sign, right };
+  if (sign !== '=' || left.kind !== 'matrix' || right.kind !== 'matrix') return whole;
+  const [a, b] = [left.rows.flat(), right.rows.flat()];
+  if (left.rows.length !== right.rows.length || a.length !== b.length) return whole;
+  return { kind: 'all', parts: a.map((entry, k) => toCompare(entry, '=', b[k] as Expr)) };
 }
 
 function toLinks(members: readonly Expr[], signs: readonly RelationSign[]): Statement {
