@@ -45,7 +45,22 @@ export function differentiate(expr: Expr, variable: string, context: CheckContex
     if ((spent & 63) === 0) context.budget.spend(16);
     return scope.isConstant(node) ? zeroExpr : rule(node, scope, visit);
   };
-  return visit(expr);
+  const result = visit(expr);
+  if (isLargerThan(result, largestResult)) throw new Unsettled('limit');
+  return result;
+}
+
+const largestResult = 6_000;
+
+/** Parts that occur several times are counted as often: so they are when the expression is evaluated. */
+function isLargerThan(expr: Expr, most: number): boolean {
+  let count = 0;
+  const open = [expr];
+  for (let node = open.pop(); node !== undefined; node = open.pop()) {
+    if ((count += 1) > most) return true;
+    open.push(...childrenOf(node));
+  }
+  return false;
 }
 
 /** A derivative of higher order. */

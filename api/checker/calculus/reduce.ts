@@ -1,7 +1,7 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
-import { mapExpr } from '../../../shared/maths/walk.ts';
+import { childrenOf, mapExpr } from '../../../shared/maths/walk.ts';
 import type { CheckContext } from '../context.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { isKnown } from '../values/arithmetic.ts';
@@ -41,7 +41,10 @@ function attempt(expr: Expr, context: CheckContext): Expr | null {
 function reduceNode(node: Expr, context: CheckContext): Expr | null {
   switch (node.kind) {
     case 'derivative': {
-      const operand = carriedOut(node.operand, context);
+      // One by one, from the inside: where an inner one is out of reach, so are those around it.
+      const operand =
+        node.operand.kind === 'derivative' ? reduceCalculus(node.operand, context) : carriedOut(node.operand, context);
+      if (!operand) return null;
       return differentiateTimes(operand, node.variable, node.order, context, node.partial);
     }
     case 'rate':
@@ -67,7 +70,12 @@ const operators: ReadonlySet<Expr['kind']> = new Set(['derivative', 'rate', 'int
 
 /** With the operators inside carried out where that can be done. */
 export function carriedOut(expr: Expr, context: CheckContext): Expr {
+  if (!hasOperatorBelow(expr)) return expr;
   return mapExpr(expr, (node) => (operators.has(node.kind) ? (reduceCalculus(node, context) ?? node) : node));
+}
+
+function hasOperatorBelow(expr: Expr): boolean {
+  return operators.has(expr.kind) || childrenOf(expr).some(hasOperatorBelow);
 }
 
 /** The derivative of what a letter or function was said to be; else a quantity of its own. */

@@ -1,21 +1,25 @@
 import { describe, expect, it } from 'vitest';
-import * as rows from './hand-rows.ts';
+import type { CheckSettings } from '../../../shared/schemas/verdict.ts';
+import handSteps from './hand-steps.json';
 import { judgeLines, lettersFor } from './judge-lines.ts';
 import madeSteps from './made-steps.json';
 import sourcedSteps from './sourced-steps.json';
 
-describe.each([
-  ['derivatives', rows.derivatives],
-  ['implicit differentiation', rows.implicit],
-  ['antiderivatives', rows.antiderivatives],
-  ['integrals between bounds', rows.definite],
-  ['limits', rows.limits],
-  ['sums, products and factorials', rows.sums],
-] as const)('%s', (_, table) => {
-  it.each(table.map((row) => [row.lines.join('  |  '), row] as const))('%s', (_text, row) => {
-    expect(lettersFor(judgeLines(row.lines, row.settings))).toBe(row.want);
-  });
-});
+interface HandStep {
+  readonly lines: readonly string[];
+  /** One letter a step: holds, fails, undecided. */
+  readonly want: string;
+  readonly settings?: CheckSettings;
+}
+
+describe.each(Object.entries(handSteps as unknown as Record<string, readonly HandStep[]>))(
+  '%s, by hand',
+  (_, table) => {
+    it.each(table.map((row) => [row.lines.join('  |  '), row] as const))('%s', (_text, row) => {
+      expect(lettersFor(judgeLines(row.lines, row.settings))).toBe(row.want);
+    });
+  },
+);
 
 describe('steps with a source', () => {
   it.each(sourcedSteps.map((row) => [`${row.lines.join('  |  ')}  (${row.source})`, row] as const))(
