@@ -106,7 +106,7 @@ async function playClass(
 /** The weekly sheets of the last weeks, each on the first day on which the rules let it be made. */
 async function makeStandings(platform: Platform): Promise<void> {
   const world = await createSeedWorld(platform, platform.now());
-  for (let day = -28; day <= 0; day += 1) {
+  for (let day = -15; day <= 0; day += 1) {
     const at = instantOf(world.present, DEMO_SCHOOL.timeZone, { day, hour: 7.4 });
     if (at < world.present) await world.clock.at(at, () => world.runJob('standings-sheets'));
   }

@@ -11,13 +11,16 @@ const CONTESTS = [
   'The lines before and after agree, so it cannot be here.',
 ];
 
+/** Derivations with a finding that picks a step. */
+const TO_ANSWER_SQL = `
+  select d.id, d.author_id as author from derivation d
+   where d.round_id = $1 and exists (
+     select 1 from review r join finding f on f.review_id = r.id where r.derivation_id = d.id and f.pick is not null)`;
+
 /** Authors answer what was said about their derivations: right findings are mostly accepted, wrong ones contested. */
 export async function answerFindings(round: PlayedRound): Promise<void> {
   const { world, id, of, plan } = round;
-  const rows: { id: string; author: string }[] = await world.db.query(
-    'select id, author_id as author from derivation where round_id = $1 and current_version_id is not null',
-    [id],
-  );
+  const rows: { id: string; author: string }[] = await world.db.query(TO_ANSWER_SQL, [id]);
   await forEach(of.students, async (student) => {
     const own = rows.find(({ author }) => author === student.viewer.userId);
     if (own && !plan.silent?.includes(student.person.name)) await answerAll(round, student, own.id);

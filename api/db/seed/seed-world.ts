@@ -4,6 +4,7 @@ import { seededRandom, type Random } from '../../../shared/lib/seeded-random.ts'
 import { composeServices, type Platform } from '../../services.ts';
 import type { Viewer } from '../../http/route.ts';
 import { createRouteCaller, type RouteCaller } from './route-caller.ts';
+import { createSeedChecks } from './seed-checks.ts';
 import { createSeedClock, type SeedClock } from './seed-clock.ts';
 import { createSeedQueue } from './seed-queue.ts';
 
@@ -29,6 +30,7 @@ export async function createSeedWorld(platform: Platform, present: Date): Promis
     ...platform,
     now: clock.now,
     queue,
+    checks: createSeedChecks(),
     // Thirty people of the demo at one keyboard are no attack.
     rateLimiter: { count: async () => undefined, sweep: async () => undefined },
     drawSeed: (round) => `demo ${round.number} ${round.frozen?.title ?? ''}`,
