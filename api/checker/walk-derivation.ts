@@ -93,11 +93,15 @@ export function startWalk(route: Route): WalkState {
   };
   const first = read.lines[0];
   if (!first?.ok) return { ...empty, isReadable: false };
-  if (first.line.kind === 'definition') {
+  if (isDefinition(first.line)) {
     const { state } = judgeLine(route, empty, 0, first.line);
     return state;
   }
   return startAgain(empty, meaningOf(first.line));
+}
+
+function isDefinition(line: Line): boolean {
+  return line.kind === 'definition' || (line.kind === 'all' && line.parts.every(isDefinition));
 }
 
 /** The line becomes what later values have to satisfy. */

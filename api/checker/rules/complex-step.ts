@@ -3,6 +3,7 @@ import { printExpr } from '../../../shared/maths/print.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import type { CheckSettings } from '../../../shared/schemas/verdict.ts';
 import type { CheckContext } from '../context.ts';
+import { rational } from '../numbers/rational.ts';
 import { ballSign, magnitude } from '../numbers/ball.ts';
 import {
   gcdOf,
@@ -16,6 +17,7 @@ import {
   type Gaussian,
   type GaussianPolynomial,
 } from '../solving/gaussian-polynomial.ts';
+import { degreeIn } from '../solving/linear.ts';
 import { differenceGraph } from '../statements/solve.ts';
 import { isListOfValues, type Statement } from '../statements/statement.ts';
 import { subKnown, toBall, isKnown, fromParts } from '../values/arithmetic.ts';
@@ -23,7 +25,15 @@ import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import { valueTex } from '../values/value-tex.ts';
 import type { KnownValue } from '../values/value.ts';
 import { substitute } from './solve-system.ts';
-import { differenceExpr } from './build-expr.ts';
+import {
+  differenceExpr,
+  minusExpr,
+  numberExpr,
+  powerExpr,
+  productExpr,
+  quotientExpr,
+  sumExpr,
+} from './build-expr.ts';
 import { judgeSameEquation } from './formula.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
@@ -51,15 +61,16 @@ export function judgeComplexStep(question: Question, letters: readonly string[])
   if (!a || !b) return undecided('not-covered');
   if (a.kind === 'polynomial' && b.kind === 'polynomial') return comparePolynomials(a.of, b.of, letter, question);
   if (b.kind === 'values') return compareToValues(a, above, b.exprs, letter, context);
-  if (a.kind === 'values') return compareFromValues(a.exprs, b.of, below, letter, context);
+  if (a.kind === 'values') {
+    return compareFromValues(a.exprs, b.of, below, letter, context, question.settings.reversible ?? false);
+  }
   return undecided('not-covered');
 }
 
 function rootsOf(statement: Statement, letter: string, context: CheckContext): Roots | null {
   const fraction = polynomialOf(statement, letter, context);
   if (fraction) return { kind: 'polynomial', of: fraction };
-  if (!isListOfValues(statement, letter)) return null;
-  const exprs = valuesOf(statement);
+  const exprs = isListOfValues(statement, letter) ? valuesOf(statement) : solvedValues(statement, letter, context);
   return exprs && { kind: 'values', exprs };
 }
 
@@ -89,6 +100,33 @@ function valuesOf(statement: Statement): Expr[] | null {
   if (statement.kind !== 'any') return null;
   const parts = statement.parts.map(valuesOf);
   return parts.includes(null) ? null : (parts as Expr[][]).flat();
+}
+
+/** The roots as expressions, where each equation is of first or second degree with constants of any kind. */
+function solvedValues(statement: Statement, letter: string, context: CheckContext): Expr[] | null {
+  if (statement.kind === 'any') {
+    const parts = statement.parts.map((part) => solvedValues(part, letter, context));
+    return parts.includes(null) ? null : (parts as Expr[][]).flat();
+  }
+  if (isListOfValues(statement, letter)) return valuesOf(statement);
+  if (statement.kind !== 'compare' || statement.sign !== '=') return null;
+  const env = { letter, given: new Map(), context, window: null, hints: [] };
+  const degree = degreeIn(differenceGraph(statement.left, statement.right, env), letter);
+  if (degree !== 1 && degree !== 2) return null;
+  const f = differenceExpr(statement.left, statement.right);
+  const [low, zero, high] = [-1, 0, 1].map((at) => substitute(f, new Map([[letter, numberExpr(rational(at))]]))) as [
+    Expr,
+    Expr,
+    Expr,
+  ];
+  const half = (expr: Expr): Expr => quotientExpr(expr, numberExpr(rational(2)));
+  const b = half(differenceExpr(high, low));
+  if (degree === 1) return [quotientExpr(minusExpr(zero), b)];
+  const a = differenceExpr(half(sumExpr([high, low])), zero);
+  const inside = differenceExpr(powerExpr(b, rational(2)), productExpr([numberExpr(rational(4)), a, zero]));
+  const root = powerExpr(inside, rational(1, 2));
+  const divisor = productExpr([numberExpr(rational(2)), a]);
+  return [sumExpr([minusExpr(b), root]), differenceExpr(minusExpr(b), root)].map((top) => quotientExpr(top, divisor));
 }
 
 function comparePolynomials(
@@ -135,10 +173,24 @@ function compareToValues(
     if (truth === null) return undecided('not-settled');
     if (!truth) return failOn('gained', [printExpr(expr)], letter);
   }
-  const wanted = a.kind === 'polynomial' ? a.of.length - 1 : distinctValues(a.exprs, context)?.length;
-  if (wanted === distinct.length) return holds('sampled');
-  if (a.kind !== 'polynomial') return undecided('not-settled');
+  if (a.kind === 'values') return compareValues(a.exprs, distinct, letter, context);
+  if (a.of.length - 1 === distinct.length) return holds('sampled');
   return failOn('lost', [lostName(a.of, distinct, letter, context)], letter);
+}
+
+/** Every value of the list is known to be a root of the line above. */
+function compareValues(
+  above: readonly Expr[],
+  listed: readonly Expr[],
+  letter: string,
+  context: CheckContext,
+): StepResult {
+  const roots = distinctValues(above, context);
+  if (!roots) return undecided('not-settled');
+  if (roots.length === listed.length) return holds('sampled');
+  const lost = roots.find((root) => distinctValues([...listed, root], context)?.length === listed.length + 1);
+  const value = lost && valueOf(lost, context);
+  return value ? failOn('lost', [valueTex(value, bits)], letter) : undecided('not-settled');
 }
 
 /** One lost root is the sum of all roots without those listed; several are named by the equation that has them. */
@@ -159,6 +211,7 @@ function compareFromValues(
   below: Statement,
   letter: string,
   context: CheckContext,
+  isReversible: boolean,
 ): StepResult {
   const distinct = distinctValues(values, context);
   if (!distinct) return undecided('not-settled');
@@ -167,7 +220,10 @@ function compareFromValues(
     if (truth === null) return undecided('not-settled');
     if (!truth) return failOn('lost', [printExpr(expr)], letter);
   }
-  return distinct.length === b.length - 1 ? holds('sampled') : undecided('not-settled');
+  if (distinct.length === b.length - 1) return holds('sampled');
+  const gained = [lostName(b, distinct, letter, context)];
+  if (isReversible) return failOn('gained', gained, letter);
+  return holds('sampled', ['one-way'], { gained, operation: 'multiply' });
 }
 
 function valueOf(expr: Expr, context: CheckContext): KnownValue | null {

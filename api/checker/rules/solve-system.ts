@@ -9,13 +9,31 @@ import { isEmptySet, isFiniteSet, isWholeLine } from '../solving/real-set.ts';
 import { quadraticRoots, toSurd } from '../solving/surd.ts';
 import { approximate } from '../solving/real-number.ts';
 import { Unsettled } from '../solving/unsettled.ts';
+import { truthAt } from '../statements/truth.ts';
 import { differenceGraph, solveStatement, type SolveEnv } from '../statements/solve.ts';
 import type { CompareStatement, Statement } from '../statements/statement.ts';
 import { differenceExpr, minusExpr, numberExpr, powerExpr, productExpr, quotientExpr, sumExpr } from './build-expr.ts';
 import { freeLetters } from './meaning.ts';
 
-/** What each letter is worth, by letters that stay free; letters that are not named are free themselves. */
+/** Expressions in the place of letters. */
 export type Solution = ReadonlyMap<string, Expr>;
+
+/** A letter that stands for a number which no expression names. */
+export interface Anchor {
+  readonly letter: string;
+  readonly number: RealNumber;
+}
+
+/** What each letter is worth, by letters that stay free and the anchor; letters that are not named are free themselves. */
+export interface SystemSolution {
+  readonly values: Solution;
+  readonly anchor: Anchor | null;
+}
+
+interface Search {
+  readonly context: CheckContext;
+  readonly anchor: Anchor | null;
+}
 
 const mostSolutions = 32;
 
@@ -37,8 +55,15 @@ export function substituteIn(statement: Statement, values: Solution): Statement 
   }
 }
 
-/** Whether a statement without letters is true; null where that cannot be told. */
-export function isTrueStatement(statement: Statement, context: CheckContext): boolean | null {
+/** Whether a statement without letters but that of the anchor is true; null where that cannot be told. */
+export function isTrueStatement(
+  statement: Statement,
+  context: CheckContext,
+  anchor: Anchor | null = null,
+): boolean | null {
+  if (anchor && freeLetters(statement, context).includes(anchor.letter)) {
+    return truthAt(statement, anchor.number, envFor(anchor.letter, context))?.isTrue ?? null;
+  }
   const truth = solveStatement(statement, envFor('', context));
   if (isWholeLine(truth)) return true;
   return isEmptySet(truth) ? false : null;
@@ -48,19 +73,28 @@ function envFor(letter: string, context: CheckContext): SolveEnv {
   return { letter, given: new Map(), context, window: null, hints: [], families: new Set() };
 }
 
+/** The letters of a statement that no number is known for. */
+export function openLetters(statement: Statement, context: CheckContext, anchor: Anchor | null): string[] {
+  return freeLetters(statement, context).filter((name) => name !== anchor?.letter);
+}
+
 /** All that satisfies several equations together; throws Unsettled where elimination does not get there. */
-export function solveSystem(equations: readonly CompareStatement[], context: CheckContext): Solution[] {
-  const found = eliminate(equations, new Map(), context, 0);
+export function solveSystem(equations: readonly CompareStatement[], context: CheckContext): SystemSolution[] {
+  const found = eliminate(equations, new Map(), { context, anchor: null }, 0);
   const solutions = found.filter((solution) => isSolution(equations, solution, context));
   if (solutions.length > mostSolutions) throw new Unsettled('limit');
   return solutions;
 }
 
-function isSolution(equations: readonly CompareStatement[], solution: Solution, context: CheckContext): boolean {
+function isSolution(
+  equations: readonly CompareStatement[],
+  { values, anchor }: SystemSolution,
+  context: CheckContext,
+): boolean {
   return equations.every((equation) => {
-    const put = substituteIn(equation, solution);
-    if (freeLetters(put, context).length > 0) return true;
-    const truth = isTrueStatement(put, context);
+    const put = substituteIn(equation, values);
+    if (openLetters(put, context, anchor).length > 0) return true;
+    const truth = isTrueStatement(put, context, anchor);
     if (truth === null) throw new Unsettled('not-settled');
     return truth;
   });
@@ -69,47 +103,28 @@ function isSolution(equations: readonly CompareStatement[], solution: Solution, 
 function eliminate(
   equations: readonly CompareStatement[],
   values: Solution,
-  context: CheckContext,
+  search: Search,
   depth: number,
-): Solution[] {
+): SystemSolution[] {
+  const { context, anchor } = search;
   if (depth > 12) throw new Unsettled('limit');
   context.budget.spend(500);
   const open: { equation: CompareStatement; letters: string[] }[] = [];
   for (const equation of equations) {
-    const letters = freeLetters(equation, context);
+    const letters = openLetters(equation, context, anchor);
     if (letters.length > 0) open.push({ equation, letters });
-    else if (isTrueStatement(equation, context) === false) return [];
+    else if (isTrueStatement(equation, context, anchor) === false) return [];
   }
-  if (open.length === 0) return [values];
-  const single = open.find(({ letters }) => letters.length === 1);
-  if (single)
-    return fromOneLetter(
-      single.equation,
-      single.letters[0] as string,
-      open.map((o) => o.equation),
-      values,
-      context,
-      depth,
-    );
+  if (open.length === 0) return [{ values, anchor }];
+  const rest = open.map((o) => o.equation);
+  const single = open.find(
+    ({ equation, letters }) => letters.length === 1 && freeLetters(equation, context).length === 1,
+  );
+  if (single) return fromOneLetter(single.equation, single.letters[0] as string, rest, values, search, depth);
   const way = open.flatMap(({ equation, letters }) => letters.flatMap((letter) => waysOut(equation, letter, context)));
   const best = way.find((w) => w.slope !== null) ?? way[0];
-  if (!best)
-    return eliminate(
-      combine(
-        open.map((o) => o.equation),
-        context,
-      ),
-      values,
-      context,
-      depth + 1,
-    );
-  return fromLinear(
-    best,
-    open.map((o) => o.equation),
-    values,
-    context,
-    depth,
-  );
+  if (!best) return eliminate(combine(rest, context), values, search, depth + 1);
+  return fromLinear(best, rest, values, search, depth);
 }
 
 function fromOneLetter(
@@ -117,14 +132,20 @@ function fromOneLetter(
   letter: string,
   equations: readonly CompareStatement[],
   values: Solution,
-  context: CheckContext,
+  search: Search,
   depth: number,
-): Solution[] {
-  const set = solveStatement(equation, envFor(letter, context));
+): SystemSolution[] {
+  const set = solveStatement(equation, envFor(letter, search.context));
   const rest = equations.filter((other) => other !== equation);
-  if (isWholeLine(set)) return eliminate(rest, values, context, depth + 1);
+  if (isWholeLine(set)) return eliminate(rest, values, search, depth + 1);
   if (!isFiniteSet(set)) throw new Unsettled('not-covered');
-  return set.points.flatMap((point) => bind(letter, toExpr(point), rest, values, context, depth));
+  return set.points.flatMap((point) => {
+    const expr = toExpr(point);
+    if (expr) return bind(letter, expr, rest, values, search, depth);
+    // One letter may stand for its number throughout; a second one would have to be a number over the first.
+    if (search.anchor) throw new Unsettled('not-covered');
+    return eliminate(rest, values, { ...search, anchor: { letter, number: point } }, depth + 1);
+  });
 }
 
 function bind(
@@ -132,30 +153,27 @@ function bind(
   value: Expr,
   rest: readonly CompareStatement[],
   values: Solution,
-  context: CheckContext,
+  search: Search,
   depth: number,
-): Solution[] {
+): SystemSolution[] {
   const one = new Map([[letter, value]]);
   const next = new Map([...values].map(([name, expr]) => [name, substitute(expr, one)] as const));
   next.set(letter, value);
   return eliminate(
     rest.map((equation) => substituteIn(equation, one) as CompareStatement),
     next,
-    context,
+    search,
     depth + 1,
   );
 }
 
-/** A number as an expression: a fraction, a surd or what the author wrote. */
-function toExpr(point: RealNumber): Expr {
+/** A number as an expression: a fraction, a surd or what the author wrote; null where it is none of them. */
+function toExpr(point: RealNumber): Expr | null {
   if (point.kind === 'rational') return numberExpr(point.value);
-  if (point.kind === 'computed') {
-    if (point.expr) return point.expr;
-    throw new Unsettled('not-covered');
-  }
+  if (point.kind === 'computed') return point.expr;
   const [c0, c1, c2] = point.polynomial;
   const roots = point.polynomial.length === 3 ? quadraticRoots(c0 ?? 0n, c1 ?? 0n, c2 ?? 1n) : null;
-  if (!roots) throw new Unsettled('not-covered');
+  if (!roots) return null;
   const surd = roots[approximate(point) > -Number(c1) / (2 * Number(c2)) ? 1 : 0];
   const root = powerExpr(numberExpr(rational(surd.radicand)), rational(1, 2));
   return sumExpr([numberExpr(surd.whole), productExpr([numberExpr(surd.part), root])]);
@@ -200,18 +218,18 @@ function fromLinear(
   way: WayOut,
   equations: readonly CompareStatement[],
   values: Solution,
-  context: CheckContext,
+  search: Search,
   depth: number,
-): Solution[] {
+): SystemSolution[] {
   const { equation, letter, slope, slopeExpr, offset } = way;
   const rest = equations.filter((other) => other !== equation);
   const divisor = slope ? numberExpr(slope) : slopeExpr;
-  const solved = bind(letter, quotientExpr(minusExpr(offset), divisor), rest, values, context, depth);
+  const solved = bind(letter, quotientExpr(minusExpr(offset), divisor), rest, values, search, depth);
   if (slope) return solved;
   // Where the slope is zero the letter drops out of this equation.
   const zero = numberExpr(rational(0));
   const equate = (left: Expr): CompareStatement => ({ kind: 'compare', left, sign: '=', right: zero });
-  return [...solved, ...eliminate([equate(slopeExpr), equate(offset), ...rest], values, context, depth + 1)];
+  return [...solved, ...eliminate([equate(slopeExpr), equate(offset), ...rest], values, search, depth + 1)];
 }
 
 /** Two equations of one degree in a letter, added so that its highest power goes away. */

@@ -1,4 +1,6 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckSettings, Note } from '../../../shared/schemas/verdict.ts';
 import { judgeWithRates } from '../calculus/implicit.ts';
 import { rateNamed } from '../calculus/rates.ts';
@@ -51,17 +53,22 @@ function answer(result: StepResult, meaning: Meaning | null, rest: Partial<StepA
 /** Rules on one step; throws Unsettled and BudgetSpent. */
 export function judgeStep(question: StepQuestion): StepAnswer {
   const { line, from, context } = question;
-  if (line.kind === 'definition') return define(line, context);
+  if (line.kind === 'definition') return define([line], context);
+  if (line.kind === 'all') {
+    const parts = line.parts.filter((part) => part.kind === 'definition');
+    if (parts.length === line.parts.length) return define(parts, context);
+  }
   if (line.kind === 'continuation') return judgeContinuation(line, question);
   const meaning = meaningOf(line);
   if (!meaning) return answer(undecided('not-covered'), null);
   if (meaning.kind === 'expression') {
+    if (from === null && usesDefinition(meaning.expr, context)) return answer(holds('proved'), meaning);
     if (from?.kind !== 'expression') return answer(undecided('change-of-kind'), meaning);
     const found = judgeExpressions(from.expr, meaning.expr, context);
     return answer(found, meaning, { shrunk: found.shrunk });
   }
   const fresh = freshDefinition(line, question);
-  if (fresh) return define(fresh, context);
+  if (fresh) return define([fresh], context);
   const helper = from?.kind === 'expression' ? judgeSubstitution(line, from.expr, context) : null;
   if (helper) return answer(helper.result, null, { defines: helper.defines });
   if (freeLetters(meaning.statement, context).length === 0 && !isValueOf(from)) {
@@ -72,13 +79,16 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   return judgeAfterExpression(line, meaning, question);
 }
 
-function define(line: Extract<Line, { kind: 'definition' }>, context: CheckContext): StepAnswer {
-  const note = holds('proved', ['definition']);
-  if (line.params.length === 0)
-    return answer(note, null, { defines: withDefinition(context.definitions, line.name, line.value) });
-  const functions = new Map(context.definitions.functions);
-  functions.set(line.name, { params: line.params, value: line.value });
-  return answer(note, null, { defines: { ...context.definitions, functions } });
+type Definition = Extract<Line, { kind: 'definition' }>;
+
+function define(lines: readonly Definition[], context: CheckContext): StepAnswer {
+  const defines = lines.reduce((all, line) => addDefinition(all, line), context.definitions);
+  return answer(holds('proved', ['definition']), null, { defines });
+}
+
+function addDefinition(definitions: Definitions, { name, params, value }: Definition): Definitions {
+  if (params.length === 0) return withDefinition(definitions, name, value);
+  return { ...definitions, functions: new Map(definitions.functions).set(name, { params, value }) };
 }
 
 /** Rule 5 comes first where the line above is the value of an integral, limit or sum. */
@@ -151,11 +161,41 @@ function judgeAfterExpression(line: Line, meaning: Meaning, question: StepQuesti
   const signs = line.kind === 'relation' ? [line.sign] : line.kind === 'chain' ? line.signs : [];
   if (members.length === 0 || signs.some((sign) => sign !== '=')) return answer(undecided('change-of-kind'), meaning);
   const last: Meaning = { kind: 'expression', expr: members[members.length - 1] as Expr };
-  const start = from?.kind === 'expression' ? from.expr : (members[0] as Expr);
-  const found = judgeLinks(start, from?.kind === 'expression' ? members : members.slice(1), context);
-  if (found.ruling === 'holds') return answer(found, from === null ? meaning : last, { shrunk: found.shrunk });
+  if (from === null) return judgeAfterDefinitions(members, meaning, context);
+  if (from.kind !== 'expression') return answer(undecided('change-of-kind'), meaning);
+  const found = judgeLinks(from.expr, members, context);
+  if (found.ruling === 'holds') return answer(found, last, { shrunk: found.shrunk });
   if (isValueOf(from)) return answer(found, last);
-  return answer(from === null ? found : undecided('change-of-kind'), from === null ? meaning : last);
+  return answer(undecided('change-of-kind'), last);
+}
+
+/**
+ * After definitions only, a line claims an identity, and the next one starts afresh from them; or it is a question, such
+ * as f(x)=0, that nothing above it leads to.
+ */
+function judgeAfterDefinitions(members: readonly Expr[], meaning: Meaning, context: CheckContext): StepAnswer {
+  const first = members[0] as Expr;
+  const found = judgeLinks(first, members.slice(1), context);
+  if (found.ruling === 'holds') return answer(found, null, { shrunk: found.shrunk, remark: meaning });
+  const isAsked = !members.slice(1).some((member) => lettersOf(member).length > 0) || isPlainValue(first, context);
+  return answer(found.ruling === 'fails' && isAsked ? undecided('change-of-kind') : found, meaning);
+}
+
+/** f(x), where f was defined as f(x). */
+function isPlainValue(expr: Expr, { definitions }: CheckContext): boolean {
+  if (expr.kind !== 'apply') return false;
+  const own = definitions.functions.get(expr.name);
+  return expr.args.every((arg, k) => arg.kind === 'letter' && arg.name === own?.params[k]);
+}
+
+/** Whether an expression is written with something that the derivation defined, or defined something with. */
+function usesDefinition(expr: Expr, context: CheckContext): boolean {
+  const { letters, functions } = context.definitions;
+  if (expr.kind === 'letter' && letters.has(expr.name)) return true;
+  if (expr.kind === 'apply' && functions.has(expr.name)) return true;
+  const known = [...letters.values()].flatMap((value) => lettersOf(value));
+  if (expr.kind === 'letter' && known.includes(expr.name)) return true;
+  return childrenOf(expr).some((part) => usesDefinition(part, context));
 }
 
 function judgeContinuation(line: Extract<Line, { kind: 'continuation' }>, question: StepQuestion): StepAnswer {

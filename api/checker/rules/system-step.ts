@@ -2,13 +2,25 @@ import type { CheckContext } from '../context.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import { rational } from '../numbers/rational.ts';
+import { computedNumber } from '../solving/linear.ts';
+import { toKnownValue } from '../solving/point-value.ts';
+import { isKnown } from '../values/arithmetic.ts';
+import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import { nameNumber } from '../solving/naming.ts';
 import { constantNumber } from '../statements/solve.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { comparesOf, type CompareStatement, type Statement } from '../statements/statement.ts';
-import { numberExpr } from './build-expr.ts';
+import { letterExpr, numberExpr } from './build-expr.ts';
 import { freeLetters } from './meaning.ts';
-import { isTrueStatement, solveSystem, substituteIn, type Solution } from './solve-system.ts';
+import {
+  isTrueStatement,
+  openLetters,
+  solveSystem,
+  substituteIn,
+  type Anchor,
+  type Solution,
+  type SystemSolution,
+} from './solve-system.ts';
 import type { StatementQuestion } from './statement-question.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
@@ -26,18 +38,33 @@ function isJoint(statement: Statement, context: CheckContext): boolean {
 
 /** Rule 6a: a line holds when every solution of what is known satisfies it; values listed are solutions, all of them. */
 export function judgeSystemStep(question: StatementQuestion): StepResult {
-  const { below, context, known } = question;
+  const { context, known } = question;
+  const below = asPoint(question) ?? question.below;
   const first = judgeKnown(known, below, context);
+  // Which number of a bare pair belongs to which letter is custom.
+  if (first.ruling === 'fails' && below !== question.below) return undecided('no-agreed-meaning');
   if (first.ruling !== 'fails' || !question.afterFault || !question.given) return first;
   // After a fault the author goes on from the wrong line, and still has the given.
   const wider = judgeKnown([...known, question.given], below, context);
   return wider.ruling === 'holds' ? wider : undecided('not-settled');
 }
 
+/** `(3,1)` at the end of a system is a point, its letters by the alphabet. */
+function asPoint({ below, known, context }: StatementQuestion): Statement | null {
+  if (below.kind !== 'member' || below.letter || below.set.kind !== 'interval') return null;
+  const { from, to, fromClosed, toClosed } = below.set;
+  const letters = freeLetters({ kind: 'all', parts: known }, context).sort();
+  if (letters.length !== 2 || !from || !to || fromClosed || toClosed) return null;
+  return {
+    kind: 'all',
+    parts: [from, to].map((right, k) => ({ kind: 'compare', left: letterExpr(letters[k] as string), sign: '=', right })),
+  };
+}
+
 function judgeKnown(known: readonly Statement[], below: Statement, context: CheckContext): StepResult {
   const solutions = branchesOf({ kind: 'all', parts: known }).flatMap((branch) => solveSystem(branch, context));
   if (below.kind === 'never')
-    return solutions.length === 0 ? holds('proved') : failAt(solutions[0] as Solution, context, 'lost');
+    return solutions.length === 0 ? holds('proved') : failAt(solutions[0] as SystemSolution, context, 'lost');
   if (solutions.length === 0) return undecided('not-settled', ['empty']);
   let sampled = false;
   for (const solution of solutions) {
@@ -47,7 +74,7 @@ function judgeKnown(known: readonly Statement[], below: Statement, context: Chec
     sampled ||= truth === 'sampled';
   }
   const extra = listedPoints(below, context).find((point) => !satisfies(known, point, context));
-  if (extra) return failAt(extra, context, 'gained');
+  if (extra) return failAt({ values: extra, anchor: null }, context, 'gained');
   return holds(sampled ? 'sampled' : 'proved', [], solutionsEvidence(solutions, context));
 }
 
@@ -76,11 +103,16 @@ function branchesOf(statement: Statement): CompareStatement[][] {
 }
 
 /** true or 'sampled' where the statement holds on the solution, a point of it where it does not, null where unknown. */
-function isTrueOn(solution: Solution, below: Statement, context: CheckContext): true | 'sampled' | Solution | null {
-  const put = substituteIn(below, solution);
-  const letters = freeLetters(put, context);
+function isTrueOn(
+  solution: SystemSolution,
+  below: Statement,
+  context: CheckContext,
+): true | 'sampled' | SystemSolution | null {
+  const { values, anchor } = solution;
+  const put = substituteIn(below, values);
+  const letters = openLetters(put, context, anchor);
   if (letters.length === 0) {
-    const truth = isTrueStatement(put, context);
+    const truth = isTrueStatement(put, context, anchor);
     return truth === false ? solution : truth;
   }
   const identity = isIdentity(put, context);
@@ -92,8 +124,8 @@ function isTrueOn(solution: Solution, below: Statement, context: CheckContext): 
     [0, 7],
   ] as const) {
     const free = new Map(letters.map((name, k) => [name, numberExpr(rational(k === 0 ? p : q + k))] as const));
-    const at = new Map([...[...solution].map(([name, expr]) => [name, substituteExpr(expr, free)] as const), ...free]);
-    if (isTrueStatement(substituteIn(below, at), context) === false) return at;
+    const at = new Map([...[...values].map(([name, expr]) => [name, substituteExpr(expr, free)] as const), ...free]);
+    if (isTrueStatement(substituteIn(below, at), context, anchor) === false) return { values: at, anchor };
   }
   return null;
 }
@@ -137,9 +169,8 @@ function satisfies(known: readonly Statement[], point: Solution, context: CheckC
   return isTrueStatement(put, context) !== false;
 }
 
-function failAt(point: Solution, context: CheckContext, side: 'lost' | 'gained'): StepResult {
-  const at: Record<string, string> = {};
-  for (const [name, expr] of point) at[name] = nameValue(expr, context);
+function failAt(point: SystemSolution, context: CheckContext, side: 'lost' | 'gained'): StepResult {
+  const at = Object.fromEntries(namesOf(point, context));
   const [above, below] = side === 'lost' ? ['true', 'false'] : ['false', 'true'];
   const named = Object.entries(at)
     .map(([name, value]) => `${name}=${value}`)
@@ -147,23 +178,42 @@ function failAt(point: Solution, context: CheckContext, side: 'lost' | 'gained')
   return fails('proved', { [side]: [named], witness: { at, above, below } });
 }
 
-function nameValue(expr: CompareStatement['left'], context: CheckContext): string {
-  if (freeLetters({ kind: 'compare', left: expr, sign: '=', right: expr }, context).length > 0) return printExpr(expr);
+/** Each letter with what it is worth. */
+function namesOf({ values, anchor }: SystemSolution, context: CheckContext): [string, string][] {
+  const names = [...values].map(([name, expr]): [string, string] => [name, nameValue(expr, context, anchor)]);
+  return anchor ? [[anchor.letter, nameNumber(anchor.number)], ...names] : names;
+}
+
+function nameValue(expr: CompareStatement['left'], context: CheckContext, anchor: Anchor | null): string {
+  const letters = freeLetters({ kind: 'compare', left: expr, sign: '=', right: expr }, context);
+  if (anchor && letters.length === 1 && letters[0] === anchor.letter) return nameAnchored(expr, anchor, context);
+  if (letters.length > 0) return printExpr(expr);
   const env = { letter: '', given: new Map(), context, window: null, hints: [], families: new Set<string>() };
   return nameNumber(constantNumber(expr, env), () => printExpr(expr));
 }
 
-function solutionsEvidence(solutions: readonly Solution[], context: CheckContext): { solutions?: string } {
-  const isPoint = (solution: Solution): boolean =>
-    [...solution.values()].every(
-      (expr) => freeLetters({ kind: 'compare', left: expr, sign: '=', right: expr }, context).length === 0,
+/** Decimals: the number has no shorter name. */
+function nameAnchored(expr: CompareStatement['left'], anchor: Anchor, context: CheckContext): string {
+  const graph = prepare(expr, context);
+  const number = computedNumber((bits) => {
+    const point = new Map([[anchor.letter, toKnownValue(anchor.number, bits)]]);
+    const value = evaluatePrepared(graph, point, bits, context);
+    return isKnown(value) ? value : null;
+  });
+  return number ? nameNumber(number) : printExpr(expr);
+}
+
+function solutionsEvidence(solutions: readonly SystemSolution[], context: CheckContext): { solutions?: string } {
+  const isPoint = ({ values, anchor }: SystemSolution): boolean =>
+    [...values.values()].every(
+      (expr) => openLetters({ kind: 'compare', left: expr, sign: '=', right: expr }, context, anchor).length === 0,
     );
   if (!solutions.every(isPoint) || solutions.length > 8) return {};
   const names = solutions.map((solution) => {
-    const letters = [...solution.keys()].sort();
-    return letters
-      .map((name) => `${name}=${nameValue(solution.get(name) as CompareStatement['left'], context)}`)
+    return namesOf(solution, context)
+      .sort(([a], [b]) => (a < b ? -1 : 1))
+      .map(([name, value]) => `${name}=${value}`)
       .join(',\\ ');
   });
-  return { solutions: names.join('\\text{ or }') };
+  return { solutions: [...new Set(names)].join('\\text{ or }') };
 }

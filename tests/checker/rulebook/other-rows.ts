@@ -74,3 +74,52 @@ export const otherRows: readonly Row[] = [
   ['read', tex`2x+4=10 ;; 2x=( ;; x=3`, 'undecided'],
   ['read', tex`2x+4=10 ;; 2x=6 ;; x=3+`, 'undecided'],
 ];
+
+/** Rule 7: what lines mean after definitions. */
+export const definitionRows: readonly Row[] = [
+  ['7', tex`f(x)=x^2-4 ;; f(x)=0 ;; x^2-4=0 ;; x=\pm 2`, 'undecided'],
+  ['7', tex`f(x)=2x+3 ;; f(x+h)=2x+h+3`, 1],
+  ['7', tex`f(x)=x^2 ;; \frac{f(x+h)-f(x)}{h} ;; \frac{(x+h)^2-x^2}{h} ;; \frac{2xh+h^2}{h} ;; 2x+h`, null],
+  ['7', tex`f(x)=x^2 ;; \frac{f(x+h)-f(x)}{h} ;; \frac{x^2+h^2-x^2}{h} ;; h`, 2],
+  ['7', tex`f(x)=3x-2,\ g(x)=x^2 ;; g(f(x)) ;; (3x-2)^2 ;; 9x^2-12x+4`, null],
+  ['7', tex`f(x)=3x-2,\ g(x)=x^2 ;; g(f(x)) ;; 3x^2-2`, 2],
+  ['7', tex`f(x)=3x-2 ;; g(x)=x^2 ;; f(g(2)) ;; f(4) ;; 10`, null],
+  ['7', tex`f(x)=3x-2 ;; f(-1)=-3-2 ;; =-5`, null],
+  ['7', tex`f(x)=3x-2 ;; f(-1)=-3-2 ;; =5`, 2],
+  ['7', tex`f(x)=x^2+1 ;; f(-2)=-4+1 ;; f(-2)=-3`, 1],
+  ['7', tex`\text{let }u=2x+1 ;; \int 2(2x+1)^3\,dx ;; \int u^3\,du ;; \frac{u^4}{4}+C ;; \frac{(2x+1)^4}{4}+C`, null],
+  ['7', tex`\int 2x\cos(x^2)\,dx ;; \text{let }u=x^2 ;; \int\cos u\,du ;; \sin u+C ;; \sin(x^2)+C`, null],
+  ['7', tex`2^{2x}-5\cdot 2^x+4=0 ;; \text{let }y=2^x ;; y^2-5y+4=0 ;; (y-1)(y-4)=0 ;; y=1\text{ or }y=4 ;; 2^x=1\text{ or }2^x=4 ;; x=0\text{ or }x=2`, null],
+  ['7', tex`2^{2x}-5\cdot 2^x+4=0 ;; y=2^x ;; y^2-5y+4=0 ;; y=1\text{ or }y=4 ;; x=0\text{ or }x=2`, null],
+  ['7', tex`2^{2x}-5\cdot 2^x+4=0 ;; y=2^x ;; 2y-5y+4=0 ;; y=\frac{4}{3}`, 2],
+];
+
+const complex = { settings: { numbers: 'complex' as const } };
+
+/** Rule 2 over the complex numbers. */
+export const complexRows: readonly Row[] = [
+  ['2', tex`x^2-6x+13=0 ;; x^2-6x+9=-4 ;; (x-3)^2=-4 ;; x-3=\pm 2i ;; x=3\pm 2i`, null, complex],
+  ['2', tex`x^2-6x+13=0 ;; (x-3)^2=4 ;; x-3=\pm 2`, 1, complex],
+  ['2', tex`x^2-6x+13=0 ;; (x-3)^2=-4 ;; x-3=\pm 2i ;; x=3+2i`, 3, complex],
+  ['2', tex`x^2+2x+4=0 ;; (x+1)^2=-3 ;; x+1=\pm\sqrt{3}i ;; x=-1\pm\sqrt{3}i`, null, complex],
+  ['2', tex`x^2+2x+4=0 ;; (x+1)^2=-3 ;; x+1=\sqrt{3}i`, 2, complex],
+  ['2', tex`x^2+2x+4=0 ;; (x+1)^2=-3 ;; x+1=\pm 3i`, 2, complex],
+  ['2', tex`2x^2-2x+1=0 ;; x=\frac{2\pm\sqrt{-4}}{4} ;; x=\frac{1\pm i}{2}`, null, complex],
+  ['2', tex`2x^2-2x+1=0 ;; x=\frac{2\pm\sqrt{-4}}{4} ;; x=\frac{1\pm i}{4}`, 2, complex],
+  ['2', tex`z^2+\sqrt{2}z+1=0 ;; z=\frac{-\sqrt{2}\pm\sqrt{-2}}{2} ;; z=\frac{-\sqrt{2}\pm i\sqrt{2}}{2}`, null, complex],
+  ['2', tex`z^2+\sqrt{2}z+1=0 ;; z=\frac{-\sqrt{2}\pm\sqrt{-2}}{2} ;; z=\frac{-\sqrt{2}\pm 2i}{2}`, 2, complex],
+  ['2', tex`x^4+x^2-6=0 ;; (x^2+3)(x^2-2)=0 ;; x=\pm i\sqrt{3}\text{ or }x=\pm\sqrt{2}`, null, complex],
+  ['2', tex`x^4+x^2-6=0 ;; (x^2+3)(x^2-2)=0 ;; x=\pm\sqrt{2}`, 2, complex],
+  ['2', tex`(2-i)z=3+i ;; z=\frac{3+i}{2-i} ;; z=\frac{(3+i)(2+i)}{5} ;; z=\frac{5+5i}{5} ;; z=1+i`, null],
+  ['2', tex`(2-i)z=3+i ;; z=\frac{3+i}{2-i} ;; z=\frac{(3+i)(2-i)}{5}`, 2],
+  ['13', tex`(1+i)^8 ;; ((1+i)^2)^4 ;; (2i)^4 ;; 16`, null],
+  ['13', tex`(1+i)^8 ;; 1+i^8 ;; 2`, 1],
+  ['13', tex`\sqrt{-2}\cdot\sqrt{-8} ;; \sqrt{16} ;; 4`, 1, complex],
+  ['13', tex`\sqrt{-2}\cdot\sqrt{-8} ;; i\sqrt{2}\cdot 2i\sqrt{2} ;; -4`, null, complex],
+  ['13', tex`|1+2i|^2 ;; 1+4 ;; 5`, null],
+  ['13', tex`\frac{1}{i} ;; -i`, null],
+  ['13', tex`\frac{1}{i} ;; i`, 1],
+  ['13', tex`e^{i\theta}e^{-i\theta} ;; 1`, null],
+  ['13', tex`(\cos x+i\sin x)^2 ;; \cos 2x+i\sin 2x`, null],
+  ['13', tex`(\cos x+i\sin x)^2 ;; \cos^2 x+\sin^2 x`, 1],
+];

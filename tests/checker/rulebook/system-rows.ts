@@ -48,7 +48,7 @@ export const systemRows: readonly Row[] = [
   ['6a', tex`a+b=5,\ ab=6 ;; a^2+b^2=(a+b)^2-ab ;; a^2+b^2=19`, 1],
   ['6a', tex`3a+2b=12,\ a=b-1 ;; 3(b-1)+2b=12 ;; 5b=15 ;; b=3 ;; a=2`, null],
   ['6a', tex`3a+2b=12,\ a=b-1 ;; 3b-1+2b=12 ;; 5b=13 ;; b=\frac{13}{5}`, 1],
-  ['6a', tex`x+y=4\text{ and }x-y=2 ;; x=3\text{ and }y=1 ;; (3,1)`, 'undecided'],
+  ['6a', tex`x+y=4\text{ and }x-y=2 ;; x=3\text{ and }y=1 ;; (3,1)`, null],
   ['6a', tex`x+y=10,\ 2x-y=2 ;; 3x=12 ;; x=4 ;; 4+y=10 ;; y=6`, null],
   ['6a', tex`x+y=10,\ 2x-y=2 ;; 3x=12 ;; x=4 ;; 8-y=2 ;; y=-6`, 4],
   ['6a', tex`x+y=10,\ y+z=12,\ x+z=8 ;; 2x+2y+2z=30 ;; x+y+z=15 ;; z=5 ;; x=3 ;; y=7`, null],
