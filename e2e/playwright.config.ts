@@ -5,6 +5,7 @@ import { defineConfig } from '@playwright/test';
 const root = fileURLToPath(new URL('..', import.meta.url));
 const port = Number(process.env['E2E_PORT'] ?? 4690);
 const baseURL = `http://127.0.0.1:${port}`;
+process.env['E2E_DATABASE_FILE'] ??= path.join(root, 'test-results/e2e-database');
 
 /** The built product on a port and a throw-away database of its own, in Debian's Chromium. */
 export default defineConfig({
@@ -17,10 +18,11 @@ export default defineConfig({
   retries: 0,
   timeout: 120_000,
   globalTimeout: 19 * 60_000,
-  expect: { timeout: 10_000 },
+  expect: { timeout: 20_000 },
   reporter: [['list'], ['json', { outputFile: path.join(root, 'test-results/e2e.json') }]],
   use: {
     baseURL,
+    actionTimeout: 30_000,
     locale: 'en-GB',
     timezoneId: 'Europe/Lisbon',
     viewport: { width: 1440, height: 900 },
@@ -43,7 +45,7 @@ export default defineConfig({
     command: 'node e2e/server.mjs',
     cwd: root,
     url: `${baseURL}/api/health`,
-    env: { PORT: String(port) },
+    env: { PORT: String(port), E2E_DATABASE_FILE: process.env['E2E_DATABASE_FILE'] },
     timeout: 180_000,
     reuseExistingServer: false,
     gracefulShutdown: { signal: 'SIGTERM', timeout: 10_000 },

@@ -17,6 +17,12 @@ await buildWhatChanged(root);
 const parent = fs.existsSync('/dev/shm') ? '/dev/shm' : os.tmpdir();
 const folder = path.join(parent, `slipstone-test-${process.pid}-${randomBytes(3).toString('hex')}`);
 const cluster = await startCluster(folder, { throwAway: true });
+// For what is done on the command line beside the running server, such as making a school.
+const databaseFile = process.env.E2E_DATABASE_FILE;
+if (databaseFile) {
+  fs.mkdirSync(path.dirname(databaseFile), { recursive: true });
+  fs.writeFileSync(databaseFile, cluster.url, { mode: 0o600 });
+}
 const server = spawn(process.execPath, ['--enable-source-maps', 'dist/api/main.js'], {
   env: {
     ...process.env,
@@ -29,6 +35,7 @@ const server = spawn(process.execPath, ['--enable-source-maps', 'dist/api/main.j
 
 server.once('exit', (code) => {
   cluster.stop();
+  if (databaseFile) fs.rmSync(databaseFile, { force: true });
   fs.rmSync(folder, { recursive: true, force: true });
   process.exit(code ?? 1);
 });
