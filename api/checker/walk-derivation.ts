@@ -13,7 +13,7 @@ import {
   type Definitions,
 } from './context.ts';
 import type { ReadDerivation } from './read-derivation.ts';
-import { isolatedLetter } from './rules/formula.ts';
+import { isolatedLetter, nearlyIsolatedLetter } from './rules/formula.ts';
 import { meaningOf, type Meaning } from './rules/meaning.ts';
 import { judgeStep, type StepAnswer } from './rules/step.ts';
 import { undecided, type StepResult } from './rules/step-result.ts';
@@ -68,10 +68,13 @@ export function planRoute(input: DerivationInput, read: ReadDerivation): Route {
 function findUnknown(input: DerivationInput, read: ReadDerivation): string | null {
   if (input.settings.unknown) return input.settings.unknown;
   if (input.settings.goal?.kind === 'solved') return input.settings.goal.letter;
-  for (let k = read.lines.length - 1; k > 0; k -= 1) {
-    const result = read.lines[k];
-    const statement = result?.ok ? toStatement(result.line) : null;
-    const letter = statement && isolatedLetter(statement);
+  const statements = read.lines.slice(1).flatMap((result) => (result.ok ? (toStatement(result.line) ?? []) : []));
+  return lastNotNull(statements, isolatedLetter) ?? lastNotNull(statements, nearlyIsolatedLetter);
+}
+
+function lastNotNull(statements: readonly Statement[], find: (statement: Statement) => string | null): string | null {
+  for (const statement of [...statements].reverse()) {
+    const letter = find(statement);
     if (letter) return letter;
   }
   return null;
@@ -197,6 +200,7 @@ function attempt(
       given: route.given,
       afterFault: state.afterFault,
       isLast: step === route.read.lines.length - 1,
+      later: laterLetters(route, step),
       settings: route.input.settings,
       context,
     });
@@ -210,6 +214,10 @@ function attempt(
       remark: null,
     };
   }
+}
+
+function laterLetters({ read }: Route, step: number): string[] {
+  return read.lines.slice(step + 1).flatMap((result) => (result.ok ? lettersOf(result.line) : []));
 }
 
 /** Only what the work on a step is known to end with; anything else is a broken invariant and goes on up. */

@@ -20,6 +20,7 @@ export function followsFrom(from: Line, to: Line, route: Route, context: CheckCo
       givenLetters: route.givenLetters,
       unknown: route.unknown,
       isLast: true,
+      later: [],
       given: meaning.statement,
       afterFault: false,
       settings: route.input.settings,

@@ -14,6 +14,7 @@ import { judgeExpressions, judgeLinks } from './expression-step.ts';
 import { freeLetters, meaningOf, type Meaning } from './meaning.ts';
 import { judgeRunningEquals } from './running-equals.ts';
 import { judgeStatements } from './statement-step.ts';
+import { judgeAside } from './aside.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
 /** One step: the line, what it starts from, and what the derivation knows so far. */
@@ -28,6 +29,8 @@ export interface StepQuestion {
   readonly givenLetters: readonly string[];
   readonly unknown: string | null;
   readonly isLast: boolean;
+  /** Letters of the lines after this one. */
+  readonly later: readonly string[];
   readonly given: Statement | null;
   readonly afterFault: boolean;
   readonly settings: CheckSettings;
@@ -53,6 +56,7 @@ function answer(result: StepResult, meaning: Meaning | null, rest: Partial<StepA
 /** Rules on one step; throws Unsettled and BudgetSpent. */
 export function judgeStep(question: StepQuestion): StepAnswer {
   const { line, from, context } = question;
+  if (bringsUnit(question)) return answer(undecided('no-agreed-meaning'), meaningOf(line));
   if (line.kind === 'definition') return define([line], context);
   if (line.kind === 'all') {
     const parts = line.parts.filter((part) => part.kind === 'definition');
@@ -69,6 +73,11 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   }
   const fresh = freshDefinition(line, question);
   if (fresh) return define([fresh], context);
+  const aside =
+    from?.kind === 'statement'
+      ? judgeAside({ line, from: from.statement, met: metLetters(question), later: question.later, context })
+      : null;
+  if (aside) return answer(aside.result, null, { defines: aside.defines });
   const helper = from?.kind === 'expression' ? judgeSubstitution(line, from.expr, context) : null;
   if (helper) return answer(helper.result, null, { defines: helper.defines });
   if (freeLetters(meaning.statement, context).length === 0 && !isValueOf(from)) {
@@ -77,6 +86,12 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   }
   if (from?.kind === 'statement') return judgeFromStatement(meaning, from.statement, question);
   return judgeAfterExpression(line, meaning, question);
+}
+
+/** An i that comes up in a task about real numbers may be a letter or the unit. */
+function bringsUnit({ line, givenLetters, known, context }: StepQuestion): boolean {
+  if (context.numbers === 'complex' || givenLetters.includes('i') || !lettersOf(line).includes('i')) return false;
+  return !known.some((statement) => freeLetters(statement, context).includes('i'));
 }
 
 type Definition = Extract<Line, { kind: 'definition' }>;
@@ -96,13 +111,21 @@ function isValueOf(from: Meaning | null): boolean {
   return from?.kind === 'expression' && isOperatorValue(from.expr);
 }
 
+function metLetters({ givenLetters, known, context }: StepQuestion): string[] {
+  return [
+    ...givenLetters,
+    ...known.flatMap((statement) => freeLetters(statement, context)),
+    ...context.definitions.letters.keys(),
+  ];
+}
+
 /** A letter that occurs for the first time, said to be an expression in the known ones: as good as "let u = ...". */
 function freshDefinition(line: Line, question: StepQuestion): Extract<Line, { kind: 'definition' }> | null {
   if (line.kind !== 'relation' || line.sign !== '=' || line.left.kind !== 'letter') return null;
   const { name } = line.left;
   if (rateNamed(name) !== null) return null;
-  const { context, givenLetters, from, known } = question;
-  const used = [...givenLetters, ...known.flatMap((statement) => freeLetters(statement, context))];
+  const { context, from } = question;
+  const used = metLetters(question);
   if (from?.kind !== 'statement' || used.includes(name) || context.definitions.letters.has(name)) return null;
   const right = toStatement({ kind: 'relation', left: line.right, sign: '=', right: line.right, span: line.span });
   const letters = right ? freeLetters(right, context) : [];
