@@ -1,4 +1,4 @@
-import { IsNull, MoreThan, Not, type DataSource } from 'typeorm';
+import { Not, type DataSource } from 'typeorm';
 import type { z } from 'zod';
 import type {
   MailStateAnswer,
@@ -14,7 +14,6 @@ import { bind } from '../../lib/bind.ts';
 import type { Now } from '../../lib/clock.ts';
 import { recordAudit } from '../audit/record.ts';
 import type { QueueMail } from '../mail/queue-mail.ts';
-import { OutgoingMail } from '../mail/mail.entity.ts';
 import { School, User } from '../people/people.entity.ts';
 
 const PAGE = 50;
@@ -70,11 +69,7 @@ async function changeSchool(deps: AdminDeps, viewer: Viewer, form: SchoolSetting
 }
 
 async function listPeople(deps: AdminDeps, viewer: Viewer, search: string): Promise<PersonAnswer[]> {
-  const rows: PersonRow[] = await deps.db.query(PEOPLE_SQL, [
-    viewer.schoolId,
-    `%${search.replace(/[\\%_]/g, '\\$&')}%`,
-    300,
-  ]);
+  const rows: PersonRow[] = await deps.db.query(PEOPLE_SQL, [viewer.schoolId, toPattern(search), 300]);
   return rows.map((row) => ({
     id: row.id,
     name: row.name,
@@ -156,11 +151,11 @@ async function listTrail(
   const rows: TrailRow[] = await deps.db.query(TRAIL_SQL, [
     viewer.schoolId,
     query.before ?? null,
-    `%${query.search ?? ''}%`,
-    PAGE + 1,
+    toPattern(query.search ?? ''),
+    PAGE,
   ]);
   return {
-    entries: rows.slice(0, PAGE).map((row) => ({
+    entries: rows.map((row) => ({
       id: row.id,
       at: row.at.toISOString(),
       actor: row.actor,
@@ -170,33 +165,48 @@ async function listTrail(
       after: row.after,
       reason: row.reason,
     })),
-    more: rows.length > PAGE,
+    more: Number(rows[0]?.total ?? 0) > rows.length,
   };
 }
 
-/** Letters that wait or failed, for the whole installation's mail of this school's people. */
+/** Letters of this school that wait or failed; those to people who have no account yet are known by their invitation. */
 async function getMailState(deps: AdminDeps, viewer: Viewer): Promise<MailStateAnswer> {
-  const ofSchool = (query: string) =>
-    `${query} and (user_id is null or user_id in (select id from person where school_id = $1))`;
   const [{ count }]: [{ count: string }] = await deps.db.query(
-    ofSchool('select count(*) from outgoing_mail where sent_at is null'),
+    `select count(*) from outgoing_mail m where m.sent_at is null and ${OF_SCHOOL}`,
     [viewer.schoolId],
   );
-  const failed = await deps.db.getRepository(OutgoingMail).find({
-    where: { sentAt: IsNull(), attempts: MoreThan(0) },
-    order: { createdAt: 'DESC' },
-    take: 20,
-  });
+  const failed: FailedRow[] = await deps.db.query(
+    `select m.id, m.kind, m.created_at, m.attempts, m.last_error from outgoing_mail m
+      where m.sent_at is null and m.attempts > 0 and ${OF_SCHOOL} order by m.created_at desc, m.id limit 20`,
+    [viewer.schoolId],
+  );
   return {
     waiting: Number(count),
     failed: failed.map((m) => ({
       id: m.id,
       kind: m.kind,
-      createdAt: m.createdAt.toISOString(),
+      createdAt: m.created_at.toISOString(),
       attempts: m.attempts,
-      lastError: m.lastError ?? '',
+      lastError: m.last_error ?? '',
     })),
   };
+}
+
+const OF_SCHOOL = `(
+  exists (select 1 from person p where p.school_id = $1 and (p.id = m.user_id or (m.user_id is null and p.email = m.recipient)))
+  or (m.user_id is null and exists (select 1 from invitation i where i.school_id = $1 and i.email = m.recipient)))`;
+
+interface FailedRow {
+  readonly id: string;
+  readonly kind: string;
+  readonly created_at: Date;
+  readonly attempts: number;
+  readonly last_error: string | null;
+}
+
+/** For `ilike`: the text anywhere, taken as it stands. */
+function toPattern(search: string): string {
+  return `%${search.replace(/[\\%_]/g, '\\$&')}%`;
 }
 
 function trail(deps: AdminDeps, viewer: Viewer, objectKind: string, objectId: string) {
@@ -230,10 +240,12 @@ interface TrailRow {
   readonly before: unknown;
   readonly after: unknown;
   readonly reason: string;
+  readonly total: string;
 }
 
+/** Entries of one instant come on one page, because the next page begins before it. */
 const TRAIL_SQL = `
-  select a.id, a.at, p.name as actor, a.action, a.object_kind, a.before, a.after, a.reason
+  select a.id, a.at, p.name as actor, a.action, a.object_kind, a.before, a.after, a.reason, count(*) over () as total
   from audit_entry a left join person p on p.id = a.actor_id
   where a.school_id = $1 and ($2::timestamptz is null or a.at < $2) and (a.action ilike $3 or p.name ilike $3 or a.reason ilike $3)
-  order by a.at desc, a.id limit $4`;
+  order by a.at desc fetch first $4 rows with ties`;

@@ -1,4 +1,4 @@
-import type { DataSource, EntityManager } from 'typeorm';
+import { IsNull, Not, type DataSource, type EntityManager } from 'typeorm';
 import type { HandInPreview, SaveAnswer, SaveSheet, SheetView } from '../../../shared/schemas/derivation.ts';
 import { givenLine, linesOf, proseOf, stepOf, type SheetDocument } from '../../../shared/schemas/sheet.ts';
 import type { FrozenTask } from '../../../shared/schemas/task.ts';
@@ -42,7 +42,7 @@ export function createDerivationsService({ db, now, queueCheck }: DerivationsDep
   ): Promise<T> {
     return await db.transaction(async (manager) => {
       const opened = await openRound(manager, roundId, viewer.userId, true);
-      const window = writingWindow(opened.round, opened.extendedTo, now());
+      const window = await windowOf(manager, opened, viewer.userId, now());
       const { id } = await openDerivation(manager, roundId, viewer.userId, now(), window.open);
       const derivation = await holdDerivation(manager, id);
       return await act(manager, { ...opened, derivation, window });
@@ -54,7 +54,7 @@ export function createDerivationsService({ db, now, queueCheck }: DerivationsDep
     async readSheet(roundId: string, viewer: Viewer): Promise<SheetView> {
       return await db.transaction(async (manager) => {
         const opened = await openRound(manager, roundId, viewer.userId);
-        const { open } = writingWindow(opened.round, opened.extendedTo, now());
+        const { open } = await windowOf(manager, opened, viewer.userId, now());
         const derivation = await openDerivation(manager, roundId, viewer.userId, now(), open);
         return await present(manager, opened, derivation, now());
       });
@@ -70,11 +70,11 @@ export function createDerivationsService({ db, now, queueCheck }: DerivationsDep
 
     async preview(roundId: string, viewer: Viewer): Promise<HandInPreview> {
       return await db.transaction(async (manager) => {
-        const { round, frozen, of, extendedTo } = await openRound(manager, roundId, viewer.userId);
-        const { open } = writingWindow(round, extendedTo, now());
+        const opened = await openRound(manager, roundId, viewer.userId);
+        const { open } = await windowOf(manager, opened, viewer.userId, now());
         const derivation = await openDerivation(manager, roundId, viewer.userId, now(), open);
         const draft = await openDraft(manager, derivation.id, 'submission', now());
-        return toPreview(draft, frozen, await namesOfClass(manager, of.id));
+        return toPreview(draft, opened.frozen, await namesOfClass(manager, opened.of.id));
       });
     },
 
@@ -144,7 +144,6 @@ async function present(
   derivation: Derivation,
   at: Date,
 ): Promise<SheetView> {
-  const { round, extendedTo } = opened;
   const draft = await openDraft(manager, derivation.id, 'submission', at);
   const version = derivation.currentVersionId
     ? await manager.findOneByOrFail(DerivationVersion, { id: derivation.currentVersionId })
@@ -154,10 +153,27 @@ async function present(
     derivation,
     draft,
     version,
-    window: writingWindow(round, extendedTo, at),
+    window: await windowOf(manager, opened, derivation.authorId ?? '', at),
     dealt: await isDealt(manager, derivation),
     now: at,
   });
+}
+
+/** The time for writing, which is over for whoever has read a classmate's derivation, whatever the clock says. */
+async function windowOf(
+  manager: EntityManager,
+  { round, extendedTo }: OpenedRound,
+  studentId: string,
+  at: Date,
+): Promise<WritingWindow> {
+  const window = writingWindow(round, extendedTo, at);
+  if (!window.open || round.stage === 'writing') return window;
+  const read = { roundId: round.id, reviewerId: studentId };
+  const hasRead = await manager.existsBy(Review, [
+    { ...read, openedAt: Not(IsNull()) },
+    { ...read, draft: Not(IsNull()) },
+  ]);
+  return { ...window, open: !hasRead };
 }
 
 /** Whether others review it, or its author has been dealt others' derivations and may have read them. */

@@ -2,25 +2,21 @@
 const SHORTEST_PART = 3;
 
 /**
- * The names of a class list that stand in an author's words, by whole name or by one of its parts. Letters' case and
- * marks do not matter. It is a warning only: a part may also be an ordinary word.
+ * The words of an author that are part of a name on the class list, as the author wrote them and no more: a first name
+ * that is typed must not tell the surname. Letters' case and marks do not matter. It is a warning only: a part may also
+ * be an ordinary word.
  */
 export function namesInWords(names: readonly string[], words: readonly string[]): string[] {
-  const text = ` ${plain(words.join(' '))} `;
-  return names.filter((name) => partsOf(name).some((part) => text.includes(` ${part} `)));
+  const parts = new Set(
+    names.flatMap((name) => wordsOf(name).map(plain)).filter((part) => part.length >= SHORTEST_PART),
+  );
+  return [...new Set(words.flatMap(wordsOf))].filter((word) => parts.has(plain(word)));
 }
 
-function partsOf(name: string): string[] {
-  return plain(name)
-    .split(' ')
-    .filter((part) => part.length >= SHORTEST_PART);
+function wordsOf(text: string): string[] {
+  return text.match(/[\p{L}\p{M}\p{N}]+/gu) ?? [];
 }
 
-function plain(text: string): string {
-  return text
-    .normalize('NFD')
-    .replace(/\p{M}/gu, '')
-    .toLowerCase()
-    .replace(/[^\p{L}\p{N}]+/gu, ' ')
-    .trim();
+function plain(word: string): string {
+  return word.normalize('NFD').replace(/\p{M}/gu, '').toLowerCase();
 }
