@@ -34,7 +34,7 @@ export async function takeAlias(
 }
 
 async function lockAliases(manager: EntityManager, classId: string): Promise<Set<string>> {
-  await manager.findOne(Class, { where: { id: classId }, select: { id: true }, lock: { mode: 'pessimistic_write' } });
+  await manager.findOne(Class, { where: { id: classId }, select: { id: true }, lock: { mode: 'for_no_key_update' } });
   return await takenAliases(manager, classId);
 }
 

@@ -221,7 +221,7 @@ export async function lockForTeacher(manager: EntityManager, classId: string, vi
   await getAccess(manager, classId, viewer, ['teacher']);
   const locked = await manager.findOne(Class, {
     where: { id: classId, archivedAt: IsNull() },
-    lock: { mode: 'pessimistic_write' },
+    lock: { mode: 'for_no_key_update' },
   });
   if (!locked) throw notFound();
   locked.school = await manager.findOneByOrFail(School, { id: locked.schoolId });

@@ -4,6 +4,7 @@ import { notFound, ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
 import { bind } from '../../lib/bind.ts';
 import type { Now } from '../../lib/clock.ts';
+import { inEvenTime } from '../../lib/even-time.ts';
 import type { RateLimiter } from '../../lib/rate-limit.ts';
 import { createToken, sha256 } from '../../lib/secrets.ts';
 import { recordAudit } from '../audit/record.ts';
@@ -11,6 +12,7 @@ import type { QueueMail } from '../mail/queue-mail.ts';
 import { User } from '../people/people.entity.ts';
 import { giveAlias } from './aliases.ts';
 import { Class, Invitation, JoinRequest, Membership, RosterEntry } from './classes.entity.ts';
+import { refuseUnfitRole } from './fitting-role.ts';
 
 export interface JoiningDeps {
   readonly db: DataSource;
@@ -53,33 +55,35 @@ async function findClassOfCode(deps: JoiningDeps, code: string): Promise<{ class
 /** Mails a link that makes the account, or tells an account's owner to sign in; the answer is the same. */
 async function signUpByMail(deps: JoiningDeps, code: string, email: string): Promise<void> {
   await deps.rateLimiter.count(`sign-up of ${email}`, 4, 3600);
-  await deps.db.transaction(async (manager) => {
-    const target = await findClassByCode(manager, code);
-    if (await manager.existsBy(User, { email })) {
-      await deps.queueMail(manager, {
-        kind: 'already-here',
-        userId: null,
-        to: email,
-        data: { className: target.name },
-      });
-      return;
-    }
-    const token = await createInvitation(manager, {
-      schoolId: target.schoolId,
-      classId: target.id,
-      role: 'student',
-      name: '',
-      email,
-      createdById: null,
-      asksToJoin: true,
-      expiresAt: daysFrom(deps.now(), SIGN_UP_DAYS),
-    });
+  await inEvenTime(deps.db.transaction((manager) => mailSignUp(deps, manager, code, email)));
+}
+
+async function mailSignUp(deps: JoiningDeps, manager: EntityManager, code: string, email: string): Promise<void> {
+  const target = await findClassByCode(manager, code);
+  if (await manager.existsBy(User, { email })) {
     await deps.queueMail(manager, {
-      kind: 'sign-up',
+      kind: 'already-here',
       userId: null,
       to: email,
-      data: { className: target.name, token },
+      data: { className: target.name },
     });
+    return;
+  }
+  const token = await createInvitation(manager, {
+    schoolId: target.schoolId,
+    classId: target.id,
+    role: 'student',
+    name: '',
+    email,
+    createdById: null,
+    asksToJoin: true,
+    expiresAt: daysFrom(deps.now(), SIGN_UP_DAYS),
+  });
+  await deps.queueMail(manager, {
+    kind: 'sign-up',
+    userId: null,
+    to: email,
+    data: { className: target.name, token },
   });
 }
 
@@ -166,7 +170,7 @@ async function findClassByCode(manager: EntityManager, code: string): Promise<Cl
   const found = await manager.findOneBy(Class, { joinCode: code, joinOpen: true, archivedAt: IsNull() });
   if (!found)
     throw new ProblemError('gone', {
-      detail: 'No class takes this code deps.now. Ask your teacher for the current one.',
+      detail: 'No class takes this code now. Ask your teacher for the current one.',
     });
   return found;
 }
@@ -253,6 +257,7 @@ async function askToJoin(
   at: Date,
   queueMail: QueueMail,
 ): Promise<boolean> {
+  await refuseUnfitRole(manager, target.id, user, 'student');
   const roster = await manager.findBy(RosterEntry, { classId: target.id });
   // Anyone can claim a name; only an address or user name that the teacher listed lets a person in unseen.
   const listed = roster.some(
@@ -281,7 +286,7 @@ async function askToJoin(
       kind: 'join-request',
       userId: teacher.id,
       to: teacher.email,
-      data: { name: teacher.name, className: target.name, classId: target.id },
+      data: { name: teacher.name, asker: user.name, className: target.name, classId: target.id },
       dedupeKey: `join-request ${target.id} ${at.toISOString().slice(0, 13)} ${teacher.id}`,
     });
   }
@@ -297,8 +302,11 @@ export async function addMember(
   at: Date,
 ): Promise<void> {
   if (user.schoolId !== target.schoolId) throw notFound();
+  // No stronger than this: rows that refer to the class share it, and two people who join at once would wait for each other.
+  await manager.findOne(Class, { where: { id: target.id }, select: { id: true }, lock: { mode: 'for_no_key_update' } });
   const before = await manager.findOneBy(Membership, { classId: target.id, userId: user.id });
   if (before && before.removedAt === null) return;
+  await refuseUnfitRole(manager, target.id, user, role);
   if (before) await manager.update(Membership, { id: before.id }, { removedAt: null, role });
   else await manager.insert(Membership, { classId: target.id, userId: user.id, role, joinedAt: at });
   if (role === 'student') await giveAlias(manager, target.id, user.id);

@@ -13,8 +13,10 @@ import type { Now } from '../../lib/clock.ts';
 import { recordAudit } from '../audit/record.ts';
 import type { QueueMail } from '../mail/queue-mail.ts';
 import { User } from '../people/people.entity.ts';
+import { giveAlias } from './aliases.ts';
 import { lockForTeacher } from './classes.service.ts';
 import { ConflictPair, Invitation, JoinRequest, Membership, RosterEntry, type Class } from './classes.entity.ts';
+import { refuseUnfitRole } from './fitting-role.ts';
 import { addMember, createInvitation } from './joining.service.ts';
 import { readRosterCsv } from './roster-csv.ts';
 
@@ -164,15 +166,10 @@ async function changeRole(
   await asTeacher(deps, viewer, classId, async (manager, found) => {
     const member = await getMember(manager, classId, membershipId);
     if (role === member.role) return;
-    if (role === 'teacher' && member.user.role === 'student')
-      throw new ProblemError('conflict', { detail: 'Only somebody with a teacher account can teach a class.' });
-    if (member.role === 'student' && (await hasWorked(manager, classId, member.userId))) {
-      throw new ProblemError('conflict', {
-        detail: 'This person has worked in the class as a student. Nobody assists a class in which they are a student.',
-      });
-    }
+    await refuseUnfitRole(manager, classId, member.user, role);
     if (member.role === 'teacher') await refuseLastTeacher(manager, found.id);
     await manager.update(Membership, { id: membershipId }, { role });
+    if (role === 'student') await giveAlias(manager, classId, member.userId);
     await recordAudit(manager, {
       ...trail(deps, viewer, classId),
       action: 'class.role-changed',
@@ -310,16 +307,6 @@ async function inviteOne(
     });
   }
   return { name: person.name, email, token };
-}
-
-async function hasWorked(manager: EntityManager, classId: string, userId: string): Promise<boolean> {
-  const rows: unknown[] = await manager.query(
-    `select 1 from round r where r.class_id = $1 and (
-       exists (select 1 from derivation d where d.round_id = r.id and d.author_id = $2)
-       or exists (select 1 from review v where v.round_id = r.id and v.reviewer_id = $2)) limit 1`,
-    [classId, userId],
-  );
-  return rows.length > 0;
 }
 
 async function refuseLastTeacher(manager: EntityManager, classId: string): Promise<void> {

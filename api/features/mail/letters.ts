@@ -76,10 +76,10 @@ const WRITERS: Writers = {
     action: { label: 'Sign in', path: '/signin' },
     afterwards: 'If it was not you, nothing has changed and you need do nothing.',
   }),
-  'join-request': ({ name, className, classId }) => ({
-    subject: `${name} asks to join ${className}`,
-    name: null,
-    paragraphs: [`${name} has typed the code of ${className} and waits for you to accept or refuse.`],
+  'join-request': ({ name, asker, className, classId }) => ({
+    subject: `${asker} asks to join ${className}`,
+    name,
+    paragraphs: [`${asker} has typed the code of ${className} and waits for you to accept or refuse.`],
     action: { label: 'Answer', path: `/classes/${classId}` },
   }),
   'join-accepted': ({ name, className }) => ({

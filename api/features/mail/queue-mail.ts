@@ -28,7 +28,12 @@ export interface MailDataOf {
   /** To the owner of an address with which somebody tried to sign up again: sign in and join with the code. */
   readonly 'already-here': { readonly className: string };
   /** To the teacher: somebody asks to join. */
-  readonly 'join-request': { readonly name: string; readonly className: string; readonly classId: string };
+  readonly 'join-request': {
+    readonly name: string;
+    readonly asker: string;
+    readonly className: string;
+    readonly classId: string;
+  };
   readonly 'join-accepted': { readonly name: string; readonly className: string };
   readonly 'writing-opened': RoundMailData & { readonly endsAt: Date };
   readonly 'reviewing-opened': RoundMailData & { readonly endsAt: Date };
