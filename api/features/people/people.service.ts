@@ -4,6 +4,7 @@ import { notFound, ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
 import { bind } from '../../lib/bind.ts';
 import type { Now } from '../../lib/clock.ts';
+import { inEvenTime } from '../../lib/even-time.ts';
 import type { RateLimiter } from '../../lib/rate-limit.ts';
 import { recordAudit } from '../audit/record.ts';
 import { Membership } from '../classes/classes.entity.ts';
@@ -11,7 +12,7 @@ import type { QueueMail } from '../mail/queue-mail.ts';
 import { hashPassword, passwordMatches, refuseCommonPassword } from './passwords.ts';
 import { User } from './people.entity.ts';
 import type { Sessions } from './sessions.ts';
-import { issueToken, takeToken } from './tokens.ts';
+import { issueToken, takeToken, voidTokens } from './tokens.ts';
 
 export interface PeopleDeps {
   readonly db: DataSource;
@@ -71,20 +72,22 @@ function findViewer(deps: PeopleDeps, viewer: Viewer) {
 /** Mails a link when the address is known; answers alike when it is not. */
 async function askForReset(deps: PeopleDeps, email: string): Promise<void> {
   await deps.rateLimiter.count(`reset of ${email}`, 4, 3600);
-  await deps.db.transaction(async (manager) => {
-    const user = await manager.findOneBy(User, { email });
-    if (!user || user.disabledAt) return;
-    const token = await issueToken(manager, {
-      userId: user.id,
-      kind: 'reset',
-      expiresAt: hoursFrom(deps.now(), RESET_HOURS),
-    });
-    await deps.queueMail(manager, {
-      kind: 'reset',
-      userId: user.id,
-      to: email,
-      data: { name: user.name, token, hours: RESET_HOURS },
-    });
+  await inEvenTime(deps.db.transaction((manager) => mailReset(deps, manager, email)));
+}
+
+async function mailReset(deps: PeopleDeps, manager: EntityManager, email: string): Promise<void> {
+  const user = await manager.findOneBy(User, { email });
+  if (!user || user.disabledAt) return;
+  const token = await issueToken(manager, {
+    userId: user.id,
+    kind: 'reset',
+    expiresAt: hoursFrom(deps.now(), RESET_HOURS),
+  });
+  await deps.queueMail(manager, {
+    kind: 'reset',
+    userId: user.id,
+    to: email,
+    data: { name: user.name, token, hours: RESET_HOURS },
   });
 }
 
@@ -140,19 +143,21 @@ async function changePassword(
 async function askForEmailChange(deps: PeopleDeps, viewer: Viewer, email: string, password: string): Promise<void> {
   const user = await checkOwnPassword(deps, viewer, password, '/password');
   await deps.rateLimiter.count(`e-mail change of ${viewer.userId}`, 5, 3600);
-  await deps.db.transaction(async (manager) => {
-    if (await manager.existsBy(User, { email })) {
-      await deps.queueMail(manager, { kind: 'email-in-use', userId: null, to: email, data: {} });
-      return;
-    }
-    const expiresAt = hoursFrom(deps.now(), EMAIL_CHANGE_HOURS);
-    const token = await issueToken(manager, { userId: user.id, kind: 'email-change', expiresAt, email });
-    await deps.queueMail(manager, {
-      kind: 'email-change',
-      userId: user.id,
-      to: email,
-      data: { name: user.name, token },
-    });
+  await inEvenTime(deps.db.transaction((manager) => mailEmailChange(deps, manager, user, email)));
+}
+
+async function mailEmailChange(deps: PeopleDeps, manager: EntityManager, user: User, email: string): Promise<void> {
+  if (await manager.existsBy(User, { email })) {
+    await deps.queueMail(manager, { kind: 'email-in-use', userId: null, to: email, data: {} });
+    return;
+  }
+  const expiresAt = hoursFrom(deps.now(), EMAIL_CHANGE_HOURS);
+  const token = await issueToken(manager, { userId: user.id, kind: 'email-change', expiresAt, email });
+  await deps.queueMail(manager, {
+    kind: 'email-change',
+    userId: user.id,
+    to: email,
+    data: { name: user.name, token },
   });
 }
 
@@ -163,6 +168,7 @@ async function changeEmail(deps: PeopleDeps, token: string): Promise<void> {
     const user = await manager.findOneByOrFail(User, { id: userId });
     if (!email || (await manager.existsBy(User, { email }))) throw new ProblemError('gone');
     await manager.update(User, { id: userId }, { email });
+    await voidTokens(manager, userId);
     await recordAudit(manager, {
       schoolId: user.schoolId,
       actorId: userId,
@@ -177,7 +183,21 @@ async function changeEmail(deps: PeopleDeps, token: string): Promise<void> {
 }
 
 async function changeName(deps: PeopleDeps, viewer: Viewer, name: string): Promise<void> {
-  await deps.db.getRepository(User).update({ id: viewer.userId }, { name });
+  await deps.db.transaction(async (manager) => {
+    const user = await manager.findOneByOrFail(User, { id: viewer.userId });
+    if (user.name === name) return;
+    await manager.update(User, { id: viewer.userId }, { name });
+    await recordAudit(manager, {
+      schoolId: user.schoolId,
+      actorId: user.id,
+      at: deps.now(),
+      action: 'person.name-changed',
+      objectKind: 'person',
+      objectId: user.id,
+      before: { name: user.name },
+      after: { name },
+    });
+  });
 }
 
 async function checkOwnPassword(deps: PeopleDeps, viewer: Viewer, password: string, pointer: string): Promise<User> {
@@ -199,6 +219,8 @@ async function setPassword(manager: EntityManager, userId: string, password: str
   if (!user || user.disabledAt) throw new ProblemError('gone');
   refuseCommonPassword(password, [user.name, user.email, user.userName]);
   await manager.update(User, { id: userId }, { passwordHash: await hashPassword(password) });
+  // Whoever knew the old one may have links under way, such as one to an address of their own.
+  await voidTokens(manager, userId);
   await recordAudit(manager, {
     schoolId: user.schoolId,
     actorId: userId,

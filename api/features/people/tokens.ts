@@ -45,6 +45,11 @@ export async function takeToken(
   return row;
 }
 
+/** Every link and code of a person that is still under way is worth nothing from now on. */
+export async function voidTokens(manager: EntityManager, userId: string): Promise<void> {
+  await manager.delete(AccountToken, { userId, usedAt: IsNull() });
+}
+
 function gone(): ProblemError {
   return new ProblemError('gone', { detail: 'The link was used already or is too old. Ask for a new one.' });
 }
