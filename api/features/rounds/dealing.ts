@@ -85,8 +85,10 @@ export async function dealLater(manager: EntityManager, round: Round, at: Date, 
     .filter((person) => !person.excused && !mayStillHandIn(person, at, takesLate))
     .map(({ userId }) => {
       const load = counted.filter(({ reviewer_id }) => reviewer_id === userId).length;
-      const gaveBack = rows.some(({ reviewer_id, set_aside }) => set_aside && reviewer_id === userId);
-      return { person: userId, load, wants: load === 0 || gaveBack ? Math.max(0, each - load) : 0, room: each };
+      const gaveBack = rows.filter(({ reviewer_id, set_aside }) => set_aside && reviewer_id === userId).length;
+      // Each may give back as many as they owe: nobody leafs through the class until a friend's turns up.
+      const owed = Math.max(0, each - Math.max(load, gaveBack - each + load));
+      return { person: userId, load, wants: load === 0 || gaveBack > 0 ? owed : 0, room: each };
     });
   if (![...derivations, ...reviewers].some(({ wants }) => wants > 0)) return 0;
   const seed = `${dealSeed}/${rows.length}`;

@@ -39,7 +39,7 @@ export function createRoundStages(deps: StagesDeps) {
       objectKind: 'round',
       objectId: round.id,
       before: { stage: from },
-      after: { stage: round.stage },
+      after: { stage: round.stage, ...(order.force && { force: true }) },
       reason: order.reason ?? '',
     });
   }

@@ -57,7 +57,9 @@ export function createRoundTimeService({ db, now, stages }: RoundTimeDeps) {
         if (round.stage !== 'reviewing') {
           throw new ProblemError('wrong-stage', { detail: 'Late derivations are dealt while reviewing is open.' });
         }
-        return { reviews: await stages.dealLateNow(manager, round) };
+        const reviews = await stages.dealLateNow(manager, round);
+        await record(manager, viewer, round, 'round.late-dealt', { before: null, after: { reviews }, reason: '' });
+        return { reviews };
       });
     },
   };

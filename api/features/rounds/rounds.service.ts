@@ -18,6 +18,7 @@ import { toRoundAnswer } from './round-answer.ts';
 import { getStaffRound } from './round-access.ts';
 import { listRounds, listRoundChoices } from './round-lists.ts';
 import { previewNext } from './round-preview.ts';
+import { createRoundRecord } from './round-record.ts';
 import type { RoundStages } from './round-stages.ts';
 import { Round } from './rounds.entity.ts';
 
@@ -30,6 +31,8 @@ export type RoundsService = ReturnType<typeof createRoundsService>;
 
 /** Planning, changing and moving rounds; a round is open to the staff of its class only. */
 export function createRoundsService({ db, now, stages }: RoundsDeps) {
+  const record = createRoundRecord(now);
+
   return {
     listRounds: (viewer: Viewer, classId: string | null): Promise<RoundListItem[]> =>
       listRounds(db.manager, viewer.userId, classId),
@@ -62,6 +65,7 @@ export function createRoundsService({ db, now, stages }: RoundsDeps) {
           }),
         );
         await stages.schedule(manager, round);
+        await record(manager, viewer, round, 'round.planned', { before: null, after: toFacts(round), reason: '' });
         return { id: round.id };
       });
     },
@@ -79,10 +83,12 @@ export function createRoundsService({ db, now, stages }: RoundsDeps) {
         }
         refuseFixedChanges(round, form, now());
         if (form.taskId !== round.taskId) await refuseForeignTask(manager, viewer, form.taskId);
+        const before = toFacts(round);
         await manager.save(
           Object.assign(round, { ...toColumns(form), taskId: form.taskId, version: round.version + 1 }),
         );
         await stages.schedule(manager, round);
+        await record(manager, viewer, round, 'round.changed', { before, after: toFacts(round), reason: '' });
         return await toRoundAnswer(manager, await getStaffRound(manager, viewer, roundId));
       });
     },
@@ -94,6 +100,7 @@ export function createRoundsService({ db, now, stages }: RoundsDeps) {
           throw new ProblemError('wrong-stage', { detail: 'A round that has opened cannot be deleted.' });
         }
         await manager.delete(Round, { id: round.id });
+        await record(manager, viewer, round, 'round.deleted', { before: toFacts(round), after: null, reason: '' });
       });
     },
 
@@ -120,6 +127,13 @@ function toColumns(form: Omit<RoundChange, 'version' | 'taskId'>) {
     reviewsPerDerivation: form.reviewsPerDerivation,
     lateRule: form.lateRule,
   };
+}
+
+/** What of a round's plan may touch a mark, for the trail. */
+function toFacts(round: Round) {
+  const instants = Object.fromEntries(INSTANTS.map((name) => [name, round[name].toISOString()]));
+  const { taskId, reviewsPerDerivation, lateRule } = round;
+  return { ...instants, taskId, reviewsPerDerivation, lateRule };
 }
 
 function refusePast(instant: string, now: Date, pointer: string): void {
@@ -154,7 +168,7 @@ async function lockOwnClass(manager: EntityManager, viewer: Viewer, classId: str
     `select c.id from class c where c.id = $1 and c.archived_at is null and exists (
        select 1 from membership m
         where m.class_id = c.id and m.user_id = $2 and m.role = 'teacher' and m.removed_at is null)
-     for update`,
+     for no key update`,
     [classId, viewer.userId],
   );
   if (!row) throw notFound();

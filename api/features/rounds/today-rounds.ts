@@ -24,6 +24,8 @@ export interface OwnRound {
   readonly excused: boolean;
   readonly own: { readonly writingEndsAt: Date | null; readonly reviewingEndsAt: Date | null };
   readonly derivation: { readonly id: string; readonly versionId: string | null } | null;
+  /** Has reviews to do, so writing is over. */
+  readonly dealt: boolean;
 }
 
 interface Tools {
@@ -55,7 +57,8 @@ const OWN_SQL = `
          r.settles_at as "settlesAt", r.settled_at as "settledAt", r.late_rule as "lateRule",
          r.late_dealt_at as "lateDealtAt", r.frozen->'settings' as settings, x.id is not null as excused,
          e.writing_ends_at as "ownWritingEndsAt", e.reviewing_ends_at as "ownReviewingEndsAt",
-         d.id as "derivationId", d.current_version_id as "versionId"
+         d.id as "derivationId", d.current_version_id as "versionId",
+         exists (select 1 from review v where v.round_id = r.id and v.reviewer_id = m.user_id) as dealt
     from membership m
     join class c on c.id = m.class_id and c.archived_at is null
     join round r on r.class_id = c.id and r.stage <> 'planned' and (r.stage <> 'settled' or r.settled_at >= $2)
@@ -84,7 +87,7 @@ function base({ roundId, title, className, timeZone, number }: OwnRound) {
 }
 
 function mayWrite(round: OwnRound, at: Date): boolean {
-  if (round.derivation?.versionId) return false;
+  if (round.derivation?.versionId || round.dealt) return false;
   const inTime = at.getTime() <= ownWritingEnd(round, round.own).getTime() + GRACE_MS;
   if (round.stage === 'writing') return inTime || round.lateRule !== 'closed';
   if (round.stage !== 'reviewing' || round.lateDealtAt) return false;
