@@ -9,8 +9,9 @@ describe('names of the class list in an author’s words', () => {
   const list = ['Ana Brandão', 'Li Wu', 'Hanno Pell'];
 
   it.each([
-    ['by first name', 'as hanno showed', ['Hanno Pell']],
-    ['by surname, whatever its accents', 'see Brandao', ['Ana Brandão']],
+    ['by first name, and the surname is not told', 'as hanno showed', ['hanno']],
+    ['by surname, whatever its accents', 'see Brandao', ['Brandao']],
+    ['once, as they were written', 'Ana, ANA and Ana’s', ['Ana', 'ANA']],
     ['not inside another word', 'analysis and bananas', []],
     ['not by parts of two letters', 'li and wu', []],
   ])('are found %s', (_how, words, found) => {
