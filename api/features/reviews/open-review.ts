@@ -3,17 +3,24 @@ import { GRACE_MS, ownReviewingEnd } from '../../../shared/lib/round-times.ts';
 import { notFound, ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
 import { lockRound } from '../../lib/lock-round.ts';
+import { Membership } from '../classes/classes.entity.ts';
 import { Extension, type Round } from '../rounds/rounds.entity.ts';
 import { Finding, Review } from './reviews.entity.ts';
 
-/** @throws {ProblemError} not-found for everyone but the reviewer. */
+/** @throws {ProblemError} not-found for everyone but the reviewer, who must still be in the class until the round is settled. */
 export async function getReview(manager: EntityManager, reviewId: string, viewer: Viewer): Promise<Review> {
   const review = await manager.findOne(Review, {
     where: { id: reviewId, reviewerId: viewer.userId },
     relations: { round: { class: true }, version: true },
   });
   if (!review) throw notFound();
+  const { stage, classId } = loaded(review.round);
+  if (stage !== 'settled' && !(await isStudent(manager, classId, viewer.userId))) throw notFound();
   return review;
+}
+
+async function isStudent(manager: EntityManager, classId: string, userId: string): Promise<boolean> {
+  return await manager.existsBy(Membership, { classId, userId, role: 'student', removedAt: IsNull() });
 }
 
 /** What is handed in now. */

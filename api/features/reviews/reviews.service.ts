@@ -6,6 +6,7 @@ import { ProblemError } from '../../http/problem-error.ts';
 import type { Viewer } from '../../http/route.ts';
 import { laterThan } from '../../lib/later-than.ts';
 import { lockRound } from '../../lib/lock-round.ts';
+import { recordAudit } from '../audit/record.ts';
 import { Membership } from '../classes/classes.entity.ts';
 import { findEnd, findInForce, getReview, isOpen, loaded, lockOpenReview, requireOpen } from './open-review.ts';
 import { Finding, Review } from './reviews.entity.ts';
@@ -85,11 +86,23 @@ export function createReviewsService(deps: ReviewsDeps) {
     reason: NonNullable<Review['setAside']>,
   ): Promise<ReviewAnswer> {
     await db.transaction(async (manager) => {
-      await lockOpenReview(manager, reviewId, viewer, now());
+      const review = await lockOpenReview(manager, reviewId, viewer, now());
       if (await findInForce(manager, reviewId)) {
         throw new ProblemError('conflict', { detail: 'Take your finding back first.' });
       }
       await manager.update(Review, reviewId, { setAside: reason });
+      // It takes the review out of the reviewer's mark.
+      await recordAudit(manager, {
+        schoolId: viewer.schoolId,
+        actorId: viewer.userId,
+        at: now(),
+        action: 'review.set-aside',
+        objectKind: 'review',
+        objectId: review.id,
+        before: { setAside: review.setAside },
+        after: { setAside: reason },
+        reason,
+      });
     });
     return await read(viewer, reviewId);
   }
