@@ -36,6 +36,9 @@ export async function syncDispute(
     await manager.update(Dispute, open.id, { words: form.reason });
     return;
   }
+  // The teacher has ruled on it: saying the same again does not bring it back to the desk.
+  const asked = { findingId: finding.id, kind: 'contested-finding' as const };
+  if (await manager.existsBy(Dispute, { ...asked, closedBy: 'ruling' })) return;
   const verdict = (await findCurrentVerdicts(manager, [review.versionId])).get(review.versionId) ?? null;
   if (!isForTheDesk(finding, verdict)) return;
   await manager.insert(Dispute, {

@@ -2,8 +2,10 @@ import type { DataSource, EntityManager } from 'typeorm';
 import type { TryTask } from '../../../shared/schemas/derivation.ts';
 import type { DerivationInput, Verdict } from '../../../shared/schemas/verdict.ts';
 import type { Now } from '../../lib/clock.ts';
+import { lockRound } from '../../lib/lock-round.ts';
 import type { Queue } from '../../lib/queue.ts';
 import { Derivation, DerivationVersion } from '../derivations/derivations.entity.ts';
+import { Score } from '../reviews/reviews.entity.ts';
 import { Round } from '../rounds/rounds.entity.ts';
 import { toCheckInput } from './check-input.ts';
 import { VerdictRecord } from './verdicts.entity.ts';
@@ -52,13 +54,16 @@ export function createVerdictsService({ db, now, queue, check, checkerVersion }:
       return toVerdict(await check(toCheckInput(terms, written)));
     },
 
-    /** Checks a version unless this checker has done so already. */
+    /** Checks a version unless this checker has done so already, or its findings were scored without. */
     async checkVersion(versionId: string): Promise<void> {
-      const input = await findInput(db.manager, versionId);
+      const found = await findInput(db.manager, versionId);
       // A version whose round has been deleted in the meantime needs no verdict.
-      if (!input || (await isChecked(db.manager, versionId, checkerVersion))) return;
-      const verdict = await check(input);
+      if (!found || (await isChecked(db.manager, versionId, checkerVersion))) return;
+      const verdict = await check(found.input);
       await db.transaction(async (manager) => {
+        // A settled round does not change by itself: what was undecided then stays so until a teacher acts.
+        await lockRound(manager, found.roundId, 'read');
+        if (await isScored(manager, versionId)) return;
         // Two runs of one job at once would both have found nothing: the row's lock lets one of them write.
         await manager.findOne(DerivationVersion, { where: { id: versionId }, lock: { mode: 'pessimistic_write' } });
         if (await isChecked(manager, versionId, checkerVersion)) return;
@@ -86,9 +91,16 @@ async function isChecked(manager: EntityManager, versionId: string, checkerVersi
   return await manager.existsBy(VerdictRecord, { versionId, source: 'checker', checkerVersion });
 }
 
-async function findInput(manager: EntityManager, versionId: string): Promise<DerivationInput | null> {
+async function isScored(manager: EntityManager, versionId: string): Promise<boolean> {
+  return await manager.existsBy(Score, { review: { versionId } });
+}
+
+async function findInput(
+  manager: EntityManager,
+  versionId: string,
+): Promise<{ input: DerivationInput; roundId: string } | null> {
   const version = await manager.findOneBy(DerivationVersion, { id: versionId });
   const derivation = version && (await manager.findOneBy(Derivation, { id: version.derivationId }));
   const round = derivation && (await manager.findOneBy(Round, { id: derivation.roundId }));
-  return round?.frozen && version ? toCheckInput(round.frozen, version.lines) : null;
+  return round?.frozen && version ? { input: toCheckInput(round.frozen, version.lines), roundId: round.id } : null;
 }
