@@ -40,7 +40,7 @@ export function mountRoutes(routes: readonly Route[], options: MountOptions): Ro
       call.set(req, { viewer, params });
       if (options.onCall) observe(options.onCall, route, res, { viewer, params });
       enforce(route, viewer, params);
-      await limitTries(route, req, options.rateLimiter);
+      await limitTries(route, req, viewer, options.rateLimiter);
       next();
     };
     const answer: RequestHandler = async (req, res) => {
@@ -82,9 +82,11 @@ function enforce(route: Route, viewer: Viewer | null, params: Call['params']): v
   }
 }
 
-async function limitTries(route: Route, req: Request, limiter: RateLimiter): Promise<void> {
+/** Counted by address; where one must be signed in by person, because a whole class may sit behind one address. */
+async function limitTries(route: Route, req: Request, viewer: Viewer | null, limiter: RateLimiter): Promise<void> {
   if (route.triesPerMinute === undefined) return;
-  await limiter.count(`${route.method} ${route.path} ${req.ip ?? ''}`, route.triesPerMinute, 60);
+  const who = route.who === 'anyone' || !viewer ? (req.ip ?? '') : viewer.userId;
+  await limiter.count(`${route.method} ${route.path} ${who}`, route.triesPerMinute, 60);
 }
 
 async function callHandler(route: Route, req: Request, known: Call): Promise<unknown> {

@@ -51,7 +51,7 @@ export interface Route {
   readonly who: Who;
   readonly body?: ZodType;
   readonly query?: ZodType;
-  /** Tries a minute from one address, where a route must be slow to guess at. */
+  /** Tries a minute from one address (of one person, where the route is for signed-in people). */
   readonly triesPerMinute?: number;
   /** true: callable without a cookie or an Origin header (one-click unsubscribe only). */
   readonly fromAnywhere?: boolean;
