@@ -34,7 +34,7 @@ import {
   quotientExpr,
   sumExpr,
 } from './build-expr.ts';
-import { judgeSameEquation } from './formula.ts';
+import { judgeSameEquation } from './same-equation.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
 /** The solutions of a statement about one complex letter. */

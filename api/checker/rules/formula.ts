@@ -8,7 +8,7 @@ import { lettersOf } from '../../../shared/maths/letters.ts';
 import { freeLetters } from './meaning.ts';
 import { judgeOneLetter, type OneLetterAnswer, type OneLetterQuestion } from './one-letter.ts';
 import { meetsAssumptions } from './parameters.ts';
-import { sameUpToFactor } from './same-equation.ts';
+import { judgeSameEquation } from './same-equation.ts';
 import { holds, undecided, type StepResult } from './step-result.ts';
 
 export type FormulaQuestion = Omit<OneLetterQuestion, 'given'>;
@@ -23,18 +23,18 @@ export function isolatedLetter(statement: Statement): string | null {
   return isolates ? name : null;
 }
 
+/** The letter inside a power or function that a line says outright: r in r^2=..., A in \cos A=... */
+export function nearlyIsolatedLetter(statement: Statement): string | null {
+  if (statement.kind !== 'compare' || statement.sign !== '=') return null;
+  if (!['power', 'call', 'root', 'log'].includes(statement.left.kind)) return null;
+  const [letter, ...others] = lettersOf(statement.left);
+  return letter && others.length === 0 && !lettersOf(statement.right).includes(letter) ? letter : null;
+}
+
 function countCompares(statement: Statement): number {
   if (statement.kind === 'all' || statement.kind === 'any')
     return statement.parts.reduce((n, part) => n + countCompares(part), 0);
   return 1;
-}
-
-/** The same equation up to a constant factor, in any number of letters; null where it is not. */
-export function judgeSameEquation(above: Statement, below: Statement, context: CheckContext): StepResult | null {
-  if (above.kind !== 'compare' || below.kind !== 'compare') return null;
-  if (above.sign !== '=' || below.sign !== '=') return null;
-  const same = sameUpToFactor(above, below, new Map(), context);
-  return same?.sameDomain ? holds(same.reached) : null;
 }
 
 /** Rule 2 on formulas: compared in the unknown, the other letters at fractions where both lines have a value. */
@@ -54,7 +54,8 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
     const found = judgeAt({ ...question, isSpecial: isSpecial(given) }, given);
     if (found === 'no-value-below') excluded.push(...zeroNames(given));
     if (typeof found === 'string') continue;
-    if (found.ruling === 'fails') return found;
+    if (found.ruling === 'fails' && !(isSpecial(given) && !found.evidence.lost)) return found;
+    if (found.ruling === 'fails') continue;
     if (found.ruling === 'undecided') open += 1;
     else seen.push(found);
   }

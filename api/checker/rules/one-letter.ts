@@ -21,6 +21,7 @@ import { wholeNumbersOf } from '../solving/whole-numbers.ts';
 import { truthAt } from '../statements/truth.ts';
 import { comparesOf, isListOfValues, type Statement } from '../statements/statement.ts';
 import { haveSameComplexRoots } from './complex-roots.ts';
+import { judgeComplexStep } from './complex-step.ts';
 import { explainGain } from './one-way.ts';
 import { universeOf, windowFor } from './one-letter-env.ts';
 import { sameUpToFactor } from './same-equation.ts';
@@ -171,7 +172,14 @@ function areSameStatements(question: OneLetterQuestion, env: SolveEnv): Reached 
     const same = sameUpToFactor(above, below, given, context);
     if (same && keepsDirection(above.sign, below.sign, same.factor.num > 0n)) return same.reached;
   }
-  return null;
+  return given.size === 0 && roots === null ? haveSameComplexValues(question) : null;
+}
+
+/** x=\\pm\\sqrt{-4} after x^2=-4: no real solutions, the same complex ones. */
+function haveSameComplexValues({ above, below, letter, settings, context }: OneLetterQuestion): Reached | null {
+  const asked = { above, below, settings, context: { ...context, numbers: 'complex' as const } };
+  const found = judgeComplexStep(asked, [letter]);
+  return found.ruling === 'holds' && found.notes.length === 0 ? found.reached : null;
 }
 
 function keepsDirection(above: string, below: string, isPositive: boolean): boolean {
@@ -200,7 +208,8 @@ function judgeGain(question: OneLetterQuestion, solved: Solved, gained: RealSet)
     const notes: Note[] = candidates.length > 0 ? ['one-way', 'candidates'] : ['one-way'];
     return answer(holds(reachedBy(solved), notes, { gained: names, operation }), solved, candidates);
   }
-  if (candidates.length > 0)
+  // In a formula no later line rejects a value for some of the other letters' values.
+  if (candidates.length > 0 && question.given.size === 0)
     return answer(holds(reachedBy(solved), ['candidates'], { gained: names }), solved, candidates);
   return answer(failWith(question, 'gained', gained, solved), solved, []);
 }

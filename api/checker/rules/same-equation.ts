@@ -5,11 +5,12 @@ import { lettersOf } from '../../../shared/maths/letters.ts';
 import { div, isZero, rational, type Rational } from '../numbers/rational.ts';
 import type { Assignment } from '../solving/fraction.ts';
 import type { Reached } from '../solving/real-set.ts';
-import type { CompareStatement } from '../statements/statement.ts';
+import type { CompareStatement, Statement } from '../statements/statement.ts';
 import { isKnown, toBall } from '../values/arithmetic.ts';
 import { prepare, evaluatePrepared } from '../values/evaluate.ts';
 import type { KnownValue, Value } from '../values/value.ts';
 import { differenceExpr, numberExpr, productExpr } from './build-expr.ts';
+import { holds, type StepResult } from './step-result.ts';
 
 export interface SameUpToFactor {
   readonly reached: Reached;
@@ -98,4 +99,12 @@ function middleOf(value: Value): bigint | null {
   if (!isKnown(value)) return null;
   const { re, im } = toBall(value, 128);
   return im === null ? re.mid : null;
+}
+
+/** The same equation up to a constant factor, in any number of letters; null where it is not. */
+export function judgeSameEquation(above: Statement, below: Statement, context: CheckContext): StepResult | null {
+  if (above.kind !== 'compare' || below.kind !== 'compare') return null;
+  if (above.sign !== '=' || below.sign !== '=') return null;
+  const same = sameUpToFactor(above, below, new Map(), context);
+  return same?.sameDomain ? holds(same.reached) : null;
 }

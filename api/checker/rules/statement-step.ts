@@ -3,7 +3,8 @@ import type { RealNumber } from '../solving/real-number.ts';
 import { comparesOf, isListOfValues, type Statement } from '../statements/statement.ts';
 import { judgeApproximation } from './approximation.ts';
 import { judgeComplexStep } from './complex-step.ts';
-import { isolatedLetter, judgeFormula, judgeSameEquation } from './formula.ts';
+import { isolatedLetter, judgeFormula, nearlyIsolatedLetter } from './formula.ts';
+import { judgeSameEquation } from './same-equation.ts';
 import { freeLetters } from './meaning.ts';
 import { judgeOneLetter } from './one-letter.ts';
 import { undecided, type StepResult } from './step-result.ts';
@@ -72,5 +73,11 @@ function chooseUnknown(question: StatementQuestion, letters: readonly string[]):
   const { unknown, below, above } = question;
   if (unknown !== null && letters.includes(unknown)) return unknown;
   if (letters.length === 0) return 'x';
-  return isolatedLetter(below) ?? isolatedLetter(above) ?? letters.find((name) => isListOfValues(below, name)) ?? null;
+  return (
+    isolatedLetter(below) ??
+    isolatedLetter(above) ??
+    letters.find((name) => isListOfValues(below, name)) ??
+    nearlyIsolatedLetter(below) ??
+    nearlyIsolatedLetter(above)
+  );
 }

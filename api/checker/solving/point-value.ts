@@ -22,15 +22,16 @@ export interface SignAtPoint {
   readonly certain: boolean;
 }
 
-/** Bits at which values are looked at. */
+/** Bits at which values are looked at, and looked at again where they seem to be zero: up to 1200 digits. */
 const wideBits = 288;
-/** A sum that cancels to less than 2^-180 of its largest part, and below 2^-140, is zero: more than 50 digits agree. */
-const cancelledBits = 180n;
-const tinyBits = 140;
+const closerBits: readonly number[] = [1024, 4096];
+/** A sum that cancels to all but 108 bits of its largest part, and to all but 148 bits in size, is taken for zero. */
+const spareBits = 108;
+const spareSizeBits = 148;
 
 /**
- * The sign of a graph's value at a point. A sum that cancels to 50 digits is zero: so that a root or a denominator at the
- * very edge of its domain gets its meaning. Null sign: no value there; null answer: not known.
+ * The sign of a graph's value at a point. A sum that cancels to a thousand digits is zero: so that a root or a
+ * denominator at the very edge of its domain gets its meaning. Null sign: no value there; null answer: not known.
  */
 export function signAtPoint(
   graph: Graph,
@@ -39,15 +40,67 @@ export function signAtPoint(
   given: Assignment,
   context: CheckContext,
 ): SignAtPoint | null {
-  let nodes: readonly GraphNode[] = graph.nodes.slice(0, graph.root + 1);
+  const first = signWithin(graph, letter, at, given, context, wideBits);
+  if (!first || first.certain || !mayBeTiny(graph, letter, at, given, context)) return first;
+  for (const bits of closerBits) {
+    if (!isSharp(at, bits)) return first;
+    const closer = signWithin(graph, letter, at, given, context, bits);
+    if (!closer || closer.certain) return closer ?? first;
+  }
+  return first;
+}
+
+/** Whether the point is known to about as many digits as are asked for. */
+function isSharp(at: RealNumber, bits: number): boolean {
+  if (at.kind === 'rational' || (at.kind === 'computed' && at.exact)) return true;
+  return enclose(at, bits).rad < 1n << 40n;
+}
+
+/**
+ * Whether something in the graph is so small, or written with so many digits, that two numbers may differ by no more
+ * than that: e^{-200}, 10^{-80}.
+ */
+function mayBeTiny(graph: Graph, letter: string, at: RealNumber, given: Assignment, context: CheckContext): boolean {
+  const nodes = graph.nodes.slice(0, graph.root + 1);
+  const longBits = 1n << 100n;
+  if (nodes.some((node) => node.op === 'number' && (node.value.den > longBits || magnitude(node.value.num) > longBits))) {
+    return true;
+  }
   const point = new Map<string, KnownValue>([[letter, toKnownValue(at, wideBits)]]);
+  for (const [name, value] of given) point.set(name, { kind: 'rational', value });
+  const values = evaluateNodes(nodes, point, wideBits, context);
+  const isSmall = (index: number): boolean => {
+    const value = values[index];
+    if (value?.kind !== 'ball') return false;
+    return magnitude(value.re.mid) - value.re.rad < 1n << BigInt(wideBits - 60);
+  };
+  return nodes.some(
+    (node, k) =>
+      isSmall(k) &&
+      node.op !== 'add' &&
+      node.op !== 'letter' &&
+      !(node.op === 'call' && vanishing.has(node.name)) &&
+      !(node.args as readonly number[]).some(isSmall),
+  );
+}
+
+function signWithin(
+  graph: Graph,
+  letter: string,
+  at: RealNumber,
+  given: Assignment,
+  context: CheckContext,
+  bits: number,
+): SignAtPoint | null {
+  let nodes: readonly GraphNode[] = graph.nodes.slice(0, graph.root + 1);
+  const point = new Map<string, KnownValue>([[letter, toKnownValue(at, bits)]]);
   for (const [name, value] of given) point.set(name, { kind: 'rational', value });
   let certain = true;
   for (let tries = 0; tries < 12; tries += 1) {
-    const values = evaluateNodes(nodes, point, wideBits, context);
+    const values = evaluateNodes(nodes, point, bits, context);
     const found = signOfValue(values[graph.root]);
     if (found !== undefined) return { sign: found, certain };
-    const zero = nodes.findIndex((node, k) => isCancelled(node, values, k));
+    const zero = nodes.findIndex((node, k) => isCancelled(node, values, k, bits));
     if (zero < 0) return null;
     certain = false;
     if (zero === graph.root) return { sign: 0, certain };
@@ -74,22 +127,23 @@ function signOfValue(value: Value | undefined): Sign | undefined {
 /** Functions that have zeros where their argument has none; their values near a zero are small beside 1. */
 const vanishing: ReadonlySet<string> = new Set(['sin', 'cos', 'tan', 'cot', 'ln', 'log', 'arccos', 'arcosh']);
 
-function isCancelled(node: GraphNode, values: readonly Value[], index: number): boolean {
+function isCancelled(node: GraphNode, values: readonly Value[], index: number, bits: number): boolean {
   const value = values[index];
   if (value?.kind !== 'ball' || value.im !== null || ballSign(value.re) !== 0) return false;
   const size = magnitude(value.re.mid) + value.re.rad;
+  const cancelledBits = BigInt(bits - spareBits);
   if (node.op === 'add') {
-    const parts = node.args.map((arg) => sizeOf(values[arg]));
+    const parts = node.args.map((arg) => sizeOf(values[arg], bits));
     const largest = parts.reduce((most, part) => (part > most ? part : most), 0n);
-    return size << cancelledBits < largest && size < 1n << BigInt(wideBits - tinyBits);
+    return size << cancelledBits < largest && size < 1n << BigInt(spareSizeBits);
   }
-  return node.op === 'call' && vanishing.has(node.name) && size << cancelledBits < 1n << BigInt(wideBits);
+  return node.op === 'call' && vanishing.has(node.name) && size << cancelledBits < 1n << BigInt(bits);
 }
 
-/** A lower bound of the size of a value, as a multiple of 2^-wideBits. */
-function sizeOf(value: Value | undefined): bigint {
+/** A lower bound of the size of a value, as a multiple of 2^-bits. */
+function sizeOf(value: Value | undefined, bits: number): bigint {
   if (!value || value.kind === 'undefined' || value.kind === 'unknown') return 0n;
-  const { re } = toBall(value, wideBits);
+  const { re } = toBall(value, bits);
   const size = magnitude(re.mid) - re.rad;
   return size > 0n ? size : 0n;
 }

@@ -97,8 +97,8 @@ export interface Order {
   readonly certain: boolean;
 }
 
-/** Bits to which two computed numbers are compared before they are called the same: more than 70 digits. */
-const comparedBits = 288;
+/** Bits to which two computed numbers are compared before they are called the same: 300 digits. */
+const comparedBits = 1024;
 
 export function compareNumbers(a: RealNumber, b: RealNumber): Order {
   if (a === b) return { order: 0, certain: true };
@@ -136,7 +136,7 @@ function sameRoot(a: Algebraic, b: Algebraic): boolean {
 }
 
 function compareByDigits(a: RealNumber, b: RealNumber, most: number): Order | null {
-  for (let bits = 64; bits <= most; bits = bits === 64 ? 160 : bits === 160 ? 288 : bits * 2) {
+  for (let bits = 64; bits <= most; bits = bits === 64 ? 160 : bits === 160 ? 288 : bits === 288 ? 512 : bits * 2) {
     const x = enclose(a, bits);
     const y = enclose(b, bits);
     if (isApart(x, y)) return { order: x.mid < y.mid ? -1 : 1, certain: true };

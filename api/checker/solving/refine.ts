@@ -16,7 +16,7 @@ export interface BallFunction {
 }
 
 const extraBits = 64;
-const mostBits = 420;
+const mostBits = 1100;
 
 function valueAt(f: BallFunction, mid: bigint, bits: number): Ball | null {
   const wide = bits + extraBits;
