@@ -20,6 +20,7 @@ export class Dispute {
   @JoinColumn()
   round?: Relation<Round>;
 
+  @Index()
   @Column({ type: 'uuid' })
   versionId!: string;
 

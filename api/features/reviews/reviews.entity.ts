@@ -39,6 +39,7 @@ export class Review {
   @JoinColumn()
   derivation?: Relation<Derivation>;
 
+  @Index()
   @Column({ type: 'uuid' })
   versionId!: string;
 
@@ -46,6 +47,7 @@ export class Review {
   @JoinColumn()
   version?: Relation<DerivationVersion>;
 
+  @Index()
   @Column({ type: 'uuid' })
   reviewerId!: string;
 

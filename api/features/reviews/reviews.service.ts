@@ -91,18 +91,7 @@ export function createReviewsService(deps: ReviewsDeps) {
         throw new ProblemError('conflict', { detail: 'Take your finding back first.' });
       }
       await manager.update(Review, reviewId, { setAside: reason });
-      // It takes the review out of the reviewer's mark.
-      await recordAudit(manager, {
-        schoolId: viewer.schoolId,
-        actorId: viewer.userId,
-        at: now(),
-        action: 'review.set-aside',
-        objectKind: 'review',
-        objectId: review.id,
-        before: { setAside: review.setAside },
-        after: { setAside: reason },
-        reason,
-      });
+      await recordSetAside(manager, viewer, review, reason, now());
     });
     return await read(viewer, reviewId);
   }
@@ -118,6 +107,27 @@ export function createReviewsService(deps: ReviewsDeps) {
   }
 
   return { read, saveDraft, handIn, takeBack, setAside, contest };
+}
+
+/** It takes the review out of the reviewer's mark, so it stands in the trail. */
+async function recordSetAside(
+  manager: EntityManager,
+  viewer: Viewer,
+  review: Review,
+  reason: NonNullable<Review['setAside']>,
+  at: Date,
+): Promise<void> {
+  await recordAudit(manager, {
+    schoolId: viewer.schoolId,
+    actorId: viewer.userId,
+    at,
+    action: 'review.set-aside',
+    objectKind: 'review',
+    objectId: review.id,
+    before: { setAside: review.setAside },
+    after: { setAside: reason },
+    reason,
+  });
 }
 
 /** @throws {ProblemError} conflict, with what stands there, when the draft is no longer at this version. */

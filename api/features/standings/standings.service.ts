@@ -49,7 +49,7 @@ export function createStandingsService({ db, now }: StandingsDeps) {
     for (const of of classes) {
       await db.transaction(async (manager) => {
         // One at a time for each class, also with several processes.
-        await manager.findOneOrFail(Class, { where: { id: of.id }, lock: { mode: 'pessimistic_write' } });
+        await manager.findOneOrFail(Class, { where: { id: of.id }, lock: { mode: 'for_no_key_update' } });
         if (!(await isSheetDue(manager, of, now()))) return;
         await manager.insert(StandingsSheet, {
           classId: of.id,
