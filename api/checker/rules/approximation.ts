@@ -29,8 +29,11 @@ export function judgeApproximation(question: OneLetterQuestion): StepResult {
   });
 }
 
+/** Two stretches of numbers that round to different values have an end in common: that is no fit. */
 function meets(a: RealSet, b: RealSet): boolean {
-  return !isEmptySet(intersection(a, b));
+  const common = intersection(a, b);
+  const isStretch = (set: RealSet): boolean => set.between.some(Boolean);
+  return !isEmptySet(common) && (isStretch(common) || !isStretch(a) || !piecesOf(b).every(isStretch));
 }
 
 /** The points and intervals of a set, each as a set. */

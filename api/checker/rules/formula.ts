@@ -4,7 +4,10 @@ import type { Assignment } from '../solving/fraction.ts';
 import { isEmptySet } from '../solving/real-set.ts';
 import { solveDefined, type SolveEnv } from '../statements/solve.ts';
 import { comparesOf, isLetter, type Statement } from '../statements/statement.ts';
+import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
+import { sameExpr } from '../../../shared/maths/same.ts';
+import { mapChildren } from '../../../shared/maths/walk.ts';
 import { freeLetters } from './meaning.ts';
 import { judgeOneLetter, type OneLetterAnswer, type OneLetterQuestion } from './one-letter.ts';
 import { meetsAssumptions } from './parameters.ts';
@@ -62,6 +65,34 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
   const informative = seen.filter((answer) => answer.solutions && !isEmptySet(answer.solutions));
   if (informative.length < 2) return undecided(open > 0 ? 'not-settled' : 'no-domain');
   return summarise(seen, excluded);
+}
+
+/**
+ * A line that says r^2 or \cos A outright, where the line above has the letter in that form only: the form may stand for
+ * a letter of its own. Holds for it is holds; anything else says nothing. Null where there is no such form.
+ */
+export function judgeAsLetter(question: FormulaQuestion): StepResult | null {
+  const letter = nearlyIsolatedLetter(question.below);
+  if (letter === null || question.below.kind !== 'compare') return null;
+  const form = question.below.left;
+  const whole: Expr = { kind: 'letter', name: `${letter}_{*}`, span: form.span };
+  const put = (statement: Statement): Statement => replaceIn(statement, form, whole);
+  const above = put(question.above);
+  if (comparesOf(above).length !== 1 || freeLetters(above, question.context).includes(letter)) return null;
+  return judgeFormula({
+    ...question,
+    above,
+    below: put(question.below),
+    reference: put(question.reference),
+    letter: `${letter}_{*}`,
+  });
+}
+
+function replaceIn(statement: Statement, form: Expr, whole: Expr): Statement {
+  const put = (expr: Expr): Expr => (sameExpr(expr, form) ? whole : mapChildren(expr, put));
+  if (statement.kind === 'compare') return { ...statement, left: put(statement.left), right: put(statement.right) };
+  if (statement.kind !== 'all' && statement.kind !== 'any') return statement;
+  return { ...statement, parts: statement.parts.map((part) => replaceIn(part, form, whole)) };
 }
 
 const mostSampled = 12;

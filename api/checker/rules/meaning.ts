@@ -5,7 +5,12 @@ import { lowerAll } from '../values/lower.ts';
 
 /** What a line leaves for the step that starts from it. */
 export type Meaning =
-  | { readonly kind: 'expression'; readonly expr: Expr }
+  | {
+      readonly kind: 'expression';
+      readonly expr: Expr;
+      /** What the expression was before it was rounded. */
+      readonly exact?: Expr;
+    }
   | {
       readonly kind: 'statement';
       readonly statement: Statement;

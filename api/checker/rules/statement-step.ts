@@ -3,7 +3,7 @@ import type { RealNumber } from '../solving/real-number.ts';
 import { comparesOf, isListOfValues, type Statement } from '../statements/statement.ts';
 import { judgeApproximation } from './approximation.ts';
 import { judgeComplexStep } from './complex-step.ts';
-import { isolatedLetter, judgeFormula, nearlyIsolatedLetter } from './formula.ts';
+import { isolatedLetter, judgeAsLetter, judgeFormula, nearlyIsolatedLetter } from './formula.ts';
 import { judgeSameEquation } from './same-equation.ts';
 import { freeLetters } from './meaning.ts';
 import { judgeOneLetter } from './one-letter.ts';
@@ -37,7 +37,10 @@ export function judgeStatements(question: StatementQuestion): StatementAnswer {
     settings: question.settings,
     context,
   };
-  if (letters.length > 1) return withoutCandidates(judgeFormula(shared));
+  if (letters.length > 1) {
+    const whole = judgeAsLetter(shared);
+    return withoutCandidates(whole?.ruling === 'holds' ? whole : judgeFormula(shared));
+  }
   if (isApproximate(above) || isApproximate(below)) {
     return withoutCandidates(judgeApproximation({ ...shared, given: new Map() }));
   }

@@ -1,4 +1,4 @@
-import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import type { Expr, Line, RelationSign } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckSettings, Note } from '../../../shared/schemas/verdict.ts';
@@ -12,6 +12,7 @@ import { continueFrom, toStatement, type Statement } from '../statements/stateme
 import { solveStatement } from '../statements/solve.ts';
 import { judgeExpressions, judgeLinks } from './expression-step.ts';
 import { freeLetters, meaningOf, type Meaning } from './meaning.ts';
+import { judgeRoundedLinks } from './rounded-links.ts';
 import { judgeRunningEquals } from './running-equals.ts';
 import { judgeStatements } from './statement-step.ts';
 import { judgeAside } from './aside.ts';
@@ -68,6 +69,7 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   if (meaning.kind === 'expression') {
     if (from === null && usesDefinition(meaning.expr, context)) return answer(holds('proved'), meaning);
     if (from?.kind !== 'expression') return answer(undecided('change-of-kind'), meaning);
+    if (from.exact) return judgeRounded(from.expr, from.exact, [meaning.expr], ['='], context);
     const found = judgeExpressions(from.expr, meaning.expr, context);
     return answer(found, meaning, { shrunk: found.shrunk });
   }
@@ -270,7 +272,14 @@ function continueExpression(
   above: Expr,
   question: StepQuestion,
 ): StepAnswer {
-  const { context, settings } = question;
+  const { context, settings, from } = question;
+  const exact = from?.kind === 'expression' ? from.exact : undefined;
+  if (exact || line.signs.includes('approx')) {
+    if (line.signs.every((sign) => sign === '=' || sign === 'approx')) {
+      const found = judgeRounded(above, exact ?? null, line.members, line.signs, context);
+      return { ...found, result: withNote(found.result, 'continued') };
+    }
+  }
   const last: Meaning = { kind: 'expression', expr: line.members[line.members.length - 1] as Expr };
   if (line.signs.every((sign) => sign === '=')) {
     const found = judgeLinks(above, line.members, context);
@@ -296,4 +305,17 @@ function continueExpression(
   if (letters.length === 0)
     return answer(fails(truth.reached, { witness: { at: {}, above: 'true', below: 'false' } }, ['continued']), last);
   return answer(undecided('change-of-kind'), last);
+}
+
+/** Rule 9 after an approximation sign. */
+function judgeRounded(
+  above: Expr,
+  exact: Expr | null,
+  members: readonly Expr[],
+  signs: readonly RelationSign[],
+  context: CheckContext,
+): StepAnswer {
+  const start = { expr: above, exact: exact ?? above, isRounded: exact !== null };
+  const { result, last } = judgeRoundedLinks(start, members, signs, context);
+  return answer(result, { kind: 'expression', expr: last.expr, ...(last.isRounded ? { exact: last.exact } : {}) });
 }

@@ -1,11 +1,12 @@
 import type { Expr, NumberExpr, SetExpr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { roundingHalf } from './rounding.ts';
-import type { Rational } from '../numbers/rational.ts';
+import { isApart, type Ball } from '../numbers/ball.ts';
+import { mayBeRounded, rangeBits, rangeOf, roundingHalf } from './rounding.ts';
+import { rational, type Rational } from '../numbers/rational.ts';
 import type { Sign, SignMap } from '../solving/fraction-signs.ts';
 import type { LineEnv } from '../solving/line-env.ts';
 import { computedNumber } from '../solving/linear.ts';
-import type { RealNumber } from '../solving/real-number.ts';
+import { rationalNumber, type RealNumber } from '../solving/real-number.ts';
 import {
   complement,
   difference,
@@ -25,7 +26,7 @@ import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import type { Graph } from '../values/graph.ts';
 import { lowerAll } from '../values/lower.ts';
 import { familyPoints } from './family.ts';
-import { isListOfValues, type CompareStatement, type MemberStatement, type Statement } from './statement.ts';
+import { isLetter, isListOfValues, type CompareStatement, type MemberStatement, type Statement } from './statement.ts';
 
 /** How a statement about one letter is solved, and what its other letters stand for. */
 export interface SolveEnv extends LineEnv {
@@ -123,10 +124,27 @@ export function solveDefined(statement: Statement, env: SolveEnv): RealSet {
 /** A value after an approximation sign stands for all numbers that round to it (rule 9). */
 function solveApproximation(statement: CompareStatement, env: SolveEnv): RealSet {
   const half = roundingHalf(statement.right) ?? roundingHalf(statement.left);
-  if (!half) throw new Unsettled('not-covered');
+  if (!half) return solveRange(statement, env);
   const above = withSign(signsOf(shifted(statement, half, env), env), '>=');
   const below = withSign(signsOf(shifted(statement, { num: -half.num, den: half.den }, env), env), '<=');
   return intersection(above, below);
+}
+
+/** letter = an expression with rounded numbers in it, or two numbers of which some are rounded. */
+function solveRange({ left, right }: CompareStatement, env: SolveEnv): RealSet {
+  const isOpen = (expr: Expr): boolean => lettersOf(expr).some((name) => !env.given.has(name));
+  if (isOpen(right) || !mayBeRounded(right)) throw new Unsettled('not-covered');
+  const range = rangeOf(right, env.given, env.context);
+  if (!range) throw new Unsettled('not-settled');
+  if (isLetter(left, env.letter)) return rangeSet(range);
+  const value = isOpen(left) ? null : rangeOf(left, env.given, env.context);
+  if (!value) throw new Unsettled('not-covered');
+  return isApart(value, range) ? emptySet : wholeLine;
+}
+
+function rangeSet({ mid, rad }: Ball): RealSet {
+  const at = (num: bigint): RealNumber => rationalNumber(rational(num, 1n << BigInt(rangeBits)));
+  return { points: [at(mid - rad), at(mid + rad)], at: [true, true], between: [false, true, false], reached: 'proved' };
 }
 
 function shifted(statement: CompareStatement, by: Rational, env: SolveEnv): Graph {

@@ -171,7 +171,7 @@ export const equationRows: readonly Row[] = [
   ['9', tex`\sqrt{2} ;; \approx 1.41`, null],
   ['9', tex`\sqrt{2} ;; \approx 1.42`, 1],
   ['9', tex`\sqrt{2}\cdot 3 ;; \approx 1.41\cdot 3 ;; \approx 4.23`, null],
-  ['9', tex`\pi r^2 ;; \approx 3.14r^2`, 'undecided'],
+  ['9', tex`\pi r^2 ;; \approx 3.14r^2`, null],
   ['9', tex`2\pi\cdot 5 ;; =10\pi ;; \approx 31.4`, null],
   ['9', tex`2\pi\cdot 5 ;; =10\pi ;; =31.4`, 2],
   ['9', tex`a=\sqrt{2} ;; a\approx 1.41 ;; 10a\approx 14.1`, null],
@@ -196,4 +196,48 @@ export const equationRows: readonly Row[] = [
   ['2', tex`7-2x=1 ;; -2x=-6 ;; x=-3`, 2],
   ['2', tex`7-2x=1 ;; 2x=8 ;; x=4`, 1],
   ['2', tex`7-2x=1 ;; 7-3x=1 ;; x=2`, 1, { note: 'given-miscopied' }],
+];
+
+/** Rule 9. */
+export const roundingRows: readonly Row[] = [
+  ['9', tex`\sqrt{2}+\sqrt{3} ;; \approx 1.41+1.73 ;; =3.14`, null],
+  ['9', tex`\sqrt{2}+\sqrt{3} ;; \approx 1.41+1.73 ;; =3.15`, 2],
+  ['9', tex`\sqrt{2}+\sqrt{3} ;; \approx 1.41+1.73 ;; \approx 3.15`, null],
+  ['9', tex`\sqrt{2}+\sqrt{3} ;; \approx 3.15`, null],
+  ['9', tex`\sqrt{2}+\sqrt{3} ;; \approx 3.14`, 1],
+  ['9', tex`\pi\cdot 3^2 ;; =9\pi\approx 28.3`, null],
+  ['9', tex`\pi\cdot 3^2 ;; =9\pi\approx 28.2`, 1],
+  ['9', tex`\pi r^2 ;; \approx 3.14r^2`, null],
+  ['9', tex`\pi r^2 ;; \approx 3.15r^2`, 1],
+  ['9', tex`\frac{2}{3} ;; \approx 0.667 ;; \approx 0.67 ;; \approx 0.7`, null],
+  ['9', tex`\frac{2}{3} ;; \approx 0.667 ;; \approx 0.66`, 2],
+  ['9', tex`\frac{1}{8} ;; \approx 0.13`, null],
+  ['9', tex`\frac{1}{8} ;; =0.13`, 1],
+  ['9', tex`\frac{1}{8} ;; =0.125`, null],
+  ['9', tex`x=2\sqrt{2} ;; \approx 2\cdot 1.41 ;; =2.82`, null],
+  ['9', tex`x=2\sqrt{2} ;; \approx 2\cdot 1.42`, 1],
+  ['9', tex`3^x=20 ;; x=\frac{\ln 20}{\ln 3} ;; x\approx\frac{2.996}{1.099} ;; x\approx 2.73`, null],
+  ['9', tex`3^x=20 ;; x=\frac{\ln 20}{\ln 3} ;; x\approx\frac{2.996}{1.099} ;; x\approx 2.37`, 3],
+  ['9', tex`3^x=20 ;; x=\frac{\ln 20}{\ln 3} ;; x\approx\frac{2.996}{1.199}`, 2],
+  ['9', tex`3^x=20 ;; x=\frac{\ln 3}{\ln 20} ;; x\approx 0.37`, 1],
+  ['9', tex`x^2-x-1=0 ;; x=\frac{1\pm\sqrt{5}}{2} ;; x\approx 1.62\text{ or }x\approx -0.62`, null],
+  ['9', tex`x^2-x-1=0 ;; x=\frac{1\pm\sqrt{5}}{2} ;; x\approx 1.62`, 2],
+  ['9', tex`x^2-x-1=0 ;; x=\frac{1\pm\sqrt{5}}{2} ;; x\approx 1.61\text{ or }x\approx -0.62`, 2],
+  ['9', tex`\sin x=0.3 ;; x\approx 0.305\text{ or }x\approx 2.837`, null, { assume: [tex`0\le x<2\pi`] }],
+  ['9', tex`\sin x=0.3 ;; x\approx 0.305\text{ or }x\approx 3.447`, 1, { assume: [tex`0\le x<2\pi`] }],
+  ['9', tex`A=\pi\cdot 4^2 ;; A=16\pi ;; A\approx 50.3`, null],
+  ['9', tex`A=\pi\cdot 4^2 ;; A=16\pi ;; A\approx 50.2`, 2],
+  ['9', tex`e^{0.5} ;; \approx 1.65`, null],
+  ['9', tex`1200\cdot 1.05^3 ;; \approx 1389.15`, null],
+  ['9', tex`1200\cdot 1.05^3 ;; \approx 1389`, null],
+  ['9', tex`1200\cdot 1.05^3 ;; =1389.15`, null],
+  ['9', tex`1200\cdot 1.05^3 ;; =1389`, 1],
+];
+
+/** Numbers that lie closer together than anybody writes. */
+export const closeRows: readonly Row[] = [
+  ['2', tex`x=200 ;; x+e^{-x}=200`, 1, { assume: ['x>0'] }],
+  ['2', tex`x=3.14159265358979323846264338327950288419716939937510582097494459230781640628620899 ;; x=\pi`, 1],
+  ['2', tex`x^2=2 ;; x=\sqrt{2}+e^{-300}`, 1, { assume: ['x>0'] }],
+  ['2', tex`x^2+a^2+1=0 ;; x=a`, 1],
 ];

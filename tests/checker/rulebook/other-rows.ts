@@ -58,7 +58,6 @@ export const otherRows: readonly Row[] = [
   ['8', tex`\int x^2\,dx ;; \frac{x^3}{2}+C`, 1],
   ['8', tex`\frac{d}{dx}(x^2\sin x) ;; 2x\sin x+x^2\cos x`, null],
   ['8', tex`\frac{d}{dx}(x^2\sin x) ;; 2x\cos x`, 1],
-  ['8', tex`\int_{-1}^{1}\frac{1}{x^2}\,dx ;; \left[-\frac{1}{x}\right]_{-1}^{1} ;; -2`, 'undecided'],
   ['8', tex`\lim_{x\to 0}\frac{\sin x}{x} ;; 1`, null],
   ['8', tex`\lim_{x\to 2}\frac{x^2-4}{x-2} ;; \lim_{x\to 2}(x+2) ;; 4`, null],
   ['8', tex`\lim_{x\to 2}\frac{x^2-4}{x-2} ;; \frac{0}{0} ;; 0`, 1],
