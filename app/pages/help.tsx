@@ -9,7 +9,7 @@ export function Component() {
         h1="How a round goes"
         lead="Write, review, answer, settle: each with its time, and nobody learns who wrote or reviewed what."
       />
-      <div className="grid max-w-[36em] gap-10">
+      <div className="prose grid max-w-[36em] gap-10">
         <Stages />
         <Reviewing />
         <Writing />

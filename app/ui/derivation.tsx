@@ -52,6 +52,19 @@ function numbersOf(lines: readonly EdgeLine[], from: number): readonly number[] 
   });
 }
 
+/** How many lines below have nothing in the margin, so that a tall note may reach down beside them. */
+function freeBelow(lines: readonly EdgeLine[], index: number): number {
+  if (!lines[index]?.note) return 0;
+  const next = lines.slice(index + 1).findIndex((line) => line.note || line.reason);
+  return next < 0 ? lines.length - 1 - index : next;
+}
+
+function rowStyle(lines: readonly EdgeLine[], index: number, isReview: boolean): CSSProperties | undefined {
+  if (isReview) return { '--i': index + 1 } as CSSProperties;
+  const free = freeBelow(lines, index);
+  return free > 0 ? ({ '--free': free } as CSSProperties) : undefined;
+}
+
 function layoutClass(lines: readonly EdgeLine[], layout: DerivationProps['layout']): string | false {
   if (layout === 'review') return 'rev';
   if (layout === 'ruling') return 'two-l';
@@ -89,7 +102,7 @@ export function Derivation(props: DerivationProps) {
               number={numbers[index] ?? 0}
               isFirst={index === 0}
               mend={places[index] ?? null}
-              style={isReview ? ({ '--i': index + 1 } as CSSProperties) : undefined}
+              style={rowStyle(lines, index, isReview)}
             />
             {isReview && aside && index === foldAfter ? <Fold runsOn={index < lines.length - 1}>{aside}</Fold> : null}
           </Fragment>

@@ -30,10 +30,26 @@ function isAt(item: NavItem, pathname: string): boolean {
   return roots.some((root) => pathname === root || pathname.startsWith(`${root}/`));
 }
 
+const NAV_CLASSES = ['nav-one', 'nav-one', 'nav-few', 'nav-few', 'nav-few'] as const;
+
+/** On a phone the row of words runs off the side; the one that is current is brought into sight. */
+function useCurrentInSight(pathname: string) {
+  const nav = useRef<HTMLElement>(null);
+  useEffect(() => {
+    const row = nav.current;
+    const current = row?.querySelector<HTMLElement>('[aria-current]');
+    if (!row || !current) return;
+    const right = current.offsetLeft + current.offsetWidth + 24;
+    row.scrollLeft = right > row.clientWidth ? right - row.clientWidth : 0;
+  }, [pathname]);
+  return nav;
+}
+
 function Nav({ items }: { items: readonly NavItem[] }) {
   const { pathname } = useLocation();
+  const nav = useCurrentInSight(pathname);
   return (
-    <nav aria-label="Main" className={classNames('strokes', items.length <= 4 ? 'nav-few' : 'nav-many')}>
+    <nav ref={nav} aria-label="Main" className={classNames('strokes', NAV_CLASSES[items.length] ?? 'nav-many')}>
       {items.map((item) => (
         <Link key={item.to} to={item.to} className="stroke" aria-current={isAt(item, pathname) ? 'page' : undefined}>
           {item.label}
@@ -76,7 +92,7 @@ export function Shell({ nav = [], who, foot, children }: ShellProps) {
           <p className="who">
             <NavLink to={paths.account()} className="who-link">
               <b>{who.name}</b>
-              {who.place ? ` · ${who.place}` : null}
+              {who.place ? <span className="who-place"> · {who.place}</span> : null}
             </NavLink>
           </p>
         ) : null}

@@ -55,7 +55,8 @@ export function problemWords(error: unknown): { title: string; detail: string } 
 /** What failed, in the server's words, and a way to try again. */
 export function ErrorState({ error, onRetry, acts }: { error: unknown; onRetry?: () => void; acts?: ReactNode }) {
   const { title, detail } = problemWords(error);
-  const requestId = error instanceof ApiProblem ? error.requestId : undefined;
+  // Only where somebody at school would have to look into it.
+  const requestId = error instanceof ApiProblem && error.status >= 500 ? error.requestId : undefined;
   return (
     <div role="alert">
       <p className="aside-words text-ink">{title}</p>

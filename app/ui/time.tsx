@@ -28,9 +28,11 @@ export function Time({ iso, zone, style = 'due' }: TimeProps) {
   const own = zone ?? around;
   const words =
     style === 'due' ? `${sayDay(iso, own)}, ${formatInstant(iso, own, 'time')}` : formatInstant(iso, own, style);
+  const clock = /\d\d:\d\d$/.exec(words)?.[0] ?? '';
   return (
     <time dateTime={iso} title={`${formatInstant(iso, own, 'date-time')} (${own})`}>
-      {words}
+      {words.slice(0, words.length - clock.length)}
+      {clock ? <span className="num">{clock}</span> : null}
     </time>
   );
 }
@@ -44,5 +46,5 @@ export function TimeLeft({ iso }: { iso: string }) {
     const timer = setInterval(() => setNow(new Date()), TICK_MS);
     return () => clearInterval(timer);
   }, []);
-  return <span className="num">{sayDistance(iso, now)}</span>;
+  return <span className="whitespace-nowrap">{sayDistance(iso, now)}</span>;
 }

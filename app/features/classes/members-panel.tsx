@@ -19,7 +19,7 @@ export function MembersPanel({ found }: { readonly found: ClassAnswer }) {
     <div className="grid gap-10">
       <Requests found={found} />
       <section>
-        <h2>People</h2>
+        <h2 className="sr-only">People</h2>
         <Table
           caption="People of the class"
           rows={found.members}

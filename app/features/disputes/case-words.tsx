@@ -24,7 +24,8 @@ export function AuthorWords({ dispute, names }: { dispute: DisputeCase; names: D
       {words || line?.prose || line?.reason ? null : <p className="muted">None at this step.</p>}
       {raisedBy ? (
         <p className="small muted">
-          {raisedBy === 'author' ? (names?.author ?? 'the author') : 'a reviewer'}, <Time iso={dispute.openedAt} />
+          {raisedBy === 'author' && names?.author ? `${names.author}, ` : null}
+          <Time iso={dispute.openedAt} />
         </p>
       ) : null}
       {dispute.question ? (
@@ -57,6 +58,7 @@ export function Findings({
           finding={finding}
           name={names?.reviewers[finding.findingId] ?? `Reviewer ${i + 1}`}
           isContested={finding.findingId === dispute.findingId}
+          said={dispute.raisedBy === 'author' ? dispute.words : null}
         />
       ))}
       {names ? null : dispute.mayReveal ? (
@@ -70,11 +72,19 @@ export function Findings({
   );
 }
 
-function FindingEntry({ finding, name, isContested }: { finding: TeacherFinding; name: string; isContested: boolean }) {
+interface FindingEntryProps {
+  readonly finding: TeacherFinding;
+  readonly name: string;
+  readonly isContested: boolean;
+  /** The author's words that stand beside the findings already. */
+  readonly said: string | null;
+}
+
+function FindingEntry({ finding, name, isContested, said }: FindingEntryProps) {
   const kind = slipKindLabel(finding.slipKind);
   const place = finding.noFault ? 'no fault' : finding.pick === null ? 'can’t tell' : `step ${finding.pick}`;
   return (
-    <>
+    <div className="found-entry">
       <p className="small">
         <b>{name}</b>: {place}
         {finding.pick !== null || finding.noFault ? `, ${SURE_WORDS[finding.sureness]}` : null}
@@ -92,7 +102,9 @@ function FindingEntry({ finding, name, isContested }: { finding: TeacherFinding;
           Should be: <Maths tex={finding.shouldBe} />
         </p>
       ) : null}
-      {finding.answer?.kind === 'contest' ? <p className="small muted">The author: “{finding.answer.reason}”</p> : null}
-    </>
+      {finding.answer?.kind === 'contest' && finding.answer.reason !== said ? (
+        <p className="small muted">The author: “{finding.answer.reason}”</p>
+      ) : null}
+    </div>
   );
 }

@@ -23,13 +23,13 @@ export function DemoAccounts({ onChoose }: { readonly onChoose: (name: string, p
   return (
     <section className="join" aria-label="Try it as">
       <p className="flabel">This is a demo. Try it as</p>
-      <ul>
+      <ul className="demo-people">
         {accounts.data.map((account) => (
           <li key={account.signInName} className="small">
             <Button kind="quiet" small onClick={() => onChoose(account.signInName, account.password)}>
               {account.name}
             </Button>
-            <span className="muted">, {account.what}</span>
+            <span className="muted">{account.what}</span>
           </li>
         ))}
       </ul>

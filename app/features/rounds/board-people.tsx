@@ -225,7 +225,7 @@ function reviewingLists({ people, alerts }: BoardAnswer): Omit<ListsProps, 'onCh
       {
         title: 'Has nothing to review yet',
         people: waiting,
-        row: (person) => ({ ...row(person), words: waitingWords(person) }),
+        row: (person) => ({ ...row(person), words: waitingWords(person), isTime: false }),
       },
     ],
     right: [{ title: 'Under way', people: begun, row }],
@@ -234,7 +234,7 @@ function reviewingLists({ people, alerts }: BoardAnswer): Omit<ListsProps, 'onCh
       {
         title: 'Excused',
         people: people.filter(({ state }) => state === 'excused'),
-        row: (p) => ({ ...row(p), words: 'excused' }),
+        row: (p) => ({ ...row(p), words: 'excused', isTime: false }),
       },
     ],
   };

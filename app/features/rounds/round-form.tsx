@@ -126,7 +126,7 @@ export function RoundForm({ choices, initial, stage, isNew, submitLabel, onSubmi
                 onChange={(iso) => field.onChange(iso ?? '')}
                 onBlur={field.onBlur}
                 disabled={i < passed}
-                hint={i < passed ? 'has happened' : undefined}
+                hint={i < passed ? 'has happened' : i === passed ? `All times are ${cityOf(zone)} time.` : ''}
                 error={fieldState.error?.message}
               />
             )}
@@ -169,6 +169,10 @@ export function RoundForm({ choices, initial, stage, isNew, submitLabel, onSubmi
       </div>
     </form>
   );
+}
+
+function cityOf(zone: string): string {
+  return zone.split('/').at(-1)?.replaceAll('_', ' ') ?? zone;
 }
 
 function Rhythms({ onChoose }: { readonly onChoose: (rhythm: Rhythm) => void }) {

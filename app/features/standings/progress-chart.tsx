@@ -34,14 +34,11 @@ export function ProgressChart({ rounds }: { readonly rounds: OwnStanding['rounds
         <path className="own-line" d={pathOf(own)} />
         {shown.map(({ number, mean }, i) => {
           const [at, y] = own[i] ?? [0, 0];
-          const isLow = isValley(
-            shown.map((round) => round.mean),
-            i,
-          );
+          const isLow = standsBelow(own, others, i);
           return (
             <g key={number}>
               <path className="own-line" d={`M${at} ${y - 6}V${y + 6}`} />
-              <text className="v" x={at} y={isLow ? y + 23 : y - 13} textAnchor="middle">
+              <text className="v halo" x={at} y={isLow ? y + 23 : y - 13} textAnchor="middle">
                 {figure(mean)}
               </text>
               <text x={at} y={HEIGHT - 4} textAnchor="middle">
@@ -79,16 +76,19 @@ function scaleOf(values: readonly number[]) {
   return { marks, y };
 }
 
-function pathOf(points: readonly (readonly [number, number])[]): string {
+function pathOf(points: readonly Point[]): string {
   return points.map(([x, y], i) => `${i === 0 ? 'M' : 'L'}${x} ${y}`).join('');
 }
 
-/** Whether the number stands better below its tick. */
-function isValley(values: readonly number[], i: number): boolean {
-  const own = values[i] ?? 0;
-  const next = values[i + 1];
-  const before = values[i - 1];
-  return (next === undefined || next > own) && (before === undefined ? next !== undefined && next > own : before > own);
+type Point = readonly [number, number];
+
+/** Whether the number stands better below its tick: in a valley of the own line, unless the class's line runs there. */
+function standsBelow(own: readonly Point[], others: readonly Point[], i: number): boolean {
+  const [x, y] = own[i] ?? [0, 0];
+  const neighbours = [own[i - 1], own[i + 1]].filter((point) => point !== undefined);
+  const isValley = neighbours.length > 0 && neighbours.every(([, beside]) => beside < y);
+  const isFree = others.every(([at, other]) => Math.abs(at - x) > 1 || other < y || other > y + 34);
+  return isValley && isFree && y + 30 < HEIGHT - 18;
 }
 
 function apart(y: number, from: number): number {

@@ -43,7 +43,7 @@ export function StandingsView({
       </section>
       <div className="decides mt-10">
         <p>
-          The checker advises, your teacher decides.{' '}
+          The checker advises, {own ? 'your teacher decides' : 'you decide'}.{' '}
           {own ? 'Points can be contested for a week, from the review itself.' : null}{' '}
           <span className="muted">School rules and local law on pupils’ data and marks stand above this list.</span>
         </p>
