@@ -106,6 +106,7 @@ function* pointsToTry(
   yield* pointsOf(region, context.seed, 6);
   const moving = pair.names.filter((name) => !region.whole.has(name));
   const base = samples.common[1] ?? samples.common[0];
+  yield* mirrored(base, moving, region);
   for (const letter of region.equations.length === 0 && pair.nodes.length < 400 ? moving : []) {
     const given = new Map<string, Rational>();
     for (const name of region.names) {
@@ -117,6 +118,19 @@ function* pointsToTry(
       point.set(letter, value);
       if (region.admits(point)) yield point;
     }
+  }
+}
+
+/** A known point with the signs of two or more letters changed: ln(xy) has a value where x and y are both negative. */
+function* mirrored(base: Sample | undefined, moving: readonly string[], region: Region): Generator<Point> {
+  if (!base || moving.length < 2 || moving.length > 3 || region.equations.length > 0) return;
+  for (let signs = 1; signs < 1 << moving.length; signs += 1) {
+    const point = new Map(base.point);
+    moving.forEach((name, k) => {
+      const value = point.get(name);
+      if ((signs >> k) % 2 === 1 && value?.kind === 'rational') point.set(name, fromRational(Q.negate(value.value)));
+    });
+    if (region.admits(point)) yield point;
   }
 }
 
