@@ -29,6 +29,7 @@ export function Component() {
         {classes.data && running.length === 0 && !making ? (
           <EmptyState title="No class yet">Make one, hand out its code, and people ask to join.</EmptyState>
         ) : null}
+        {running.length > 0 ? <h2 className="sr-only">Classes that run</h2> : null}
         <ClassList items={running} />
         {making ? (
           <NewClass onCancel={() => setMaking(false)} />

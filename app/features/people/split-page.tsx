@@ -28,11 +28,11 @@ export function SplitPage({ h1, lead, children }: SplitPageProps) {
         {lead ? <p className="lead muted mt-1.5">{lead}</p> : null}
         {children}
       </main>
-      <div className="split-figure slate">
+      <aside className="split-figure slate" aria-label="What it is about">
         <Suspense fallback={null}>
           <SplitFigure />
         </Suspense>
-      </div>
+      </aside>
       <footer className="split-foot fine muted">Authors and reviewers never learn each other’s names.</footer>
     </div>
   );
