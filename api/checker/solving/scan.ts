@@ -93,11 +93,11 @@ function zerosBetween(
   const zeros: RealNumber[] = [];
   const low = env.window?.low ?? -Infinity;
   const high = env.window?.high ?? Infinity;
-  const all = [
-    low - (env.window ? 1e-6 : 0),
-    ...ends.filter((x) => x > low && x < high),
-    high + (env.window ? 1e-6 : 0),
-  ];
+  // A little beyond the window, for zeros at its ends; where such a zero is known already, from there on.
+  const isEnd = (end: number): boolean => ends.some((x) => Math.abs(x - end) < 1e-9);
+  const margin = (end: number): number => (env.window && !isEnd(end) ? 1e-6 : 0);
+  const inner = ends.filter((x) => x > low + 1e-9 && x < high - 1e-9);
+  const all = [low - margin(low), ...inner, high + margin(high)];
   for (let k = 0; k + 1 < all.length; k += 1) {
     const [a, b] = [all[k] as number, all[k + 1] as number];
     const share = env.window ? (waves * (b - a)) / (high - low) : 0;
@@ -132,7 +132,17 @@ function zerosAt(
   // Signs that are noise: the function is zero all along, or the zero is not to be pinned down.
   const middle = rationalNumber(rational(BigInt(Math.round(at * 2 ** 40)), 1n << 40n));
   if (signAtPoint(graph, env.letter, middle, env.given, env.context)?.sign === 0) return [];
+  if (isNoise(graph, crossing, env)) return [];
   throw new Unsettled('not-settled');
+}
+
+/** Whether the signs on both sides are the same after all: doubles lose them close to a zero that is known. */
+function isNoise(graph: Graph, { low, high }: { low: number; high: number }, env: LineEnv): boolean {
+  const [a, b] = [low, high].map((x) => {
+    const at = rationalNumber(rational(BigInt(Math.round(x * 2 ** 60)), 1n << 60n));
+    return signAtPoint(graph, env.letter, at, env.given, env.context);
+  });
+  return a?.certain === true && b?.certain === true && a.sign === b.sign;
 }
 
 /** Two zeros close together, or a zero without change of sign, or neither. */
