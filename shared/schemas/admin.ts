@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { timeZoneSchema } from './class.ts';
-import { emailSchema } from './people.ts';
+import { emailSchema, personName } from './people.ts';
 
 export const schoolSettingsSchema = z.object({
   name: z.string().trim().min(1, 'Write the name of the school.').max(120),
@@ -10,7 +10,7 @@ export const schoolSettingsSchema = z.object({
 export type SchoolSettings = z.infer<typeof schoolSettingsSchema>;
 
 export const staffInvitationSchema = z.object({
-  name: z.string().trim().min(1, 'Write a name.').max(80),
+  name: personName('Write a name.'),
   email: emailSchema,
   role: z.enum(['teacher', 'admin']),
 });

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { isAlias } from '../lib/aliases.ts';
-import { emailSchema, userNameSchema } from './people.ts';
+import { emailSchema, personName, userNameSchema } from './people.ts';
 
 function isTimeZone(zone: string): boolean {
   try {
@@ -35,7 +35,7 @@ export const classSettingsSchema = z
   .partial();
 
 export const personLineSchema = z.object({
-  name: z.string().trim().min(1, 'A name is missing.').max(80, 'A name holds at most 80 characters.'),
+  name: personName('A name is missing.'),
   email: emailSchema.optional(),
   userName: userNameSchema.optional(),
 });

@@ -3,7 +3,17 @@ import { z } from 'zod';
 export const PASSWORD_MIN = 10;
 export const PASSWORD_MAX = 200;
 
-const name = z.string().trim().min(1, 'Write your name.').max(80, 'A name holds at most 80 characters.');
+/** Letters that end a line or turn the direction of writing would let a name pose as the text around it. */
+const PLAIN_TEXT = /^[^\p{Cc}\u2028\u2029\u202a-\u202e\u2066-\u2069]*$/u;
+/** A person's name; `missing` is said where there is none. */
+export const personName = (missing: string) =>
+  z
+    .string()
+    .trim()
+    .min(1, missing)
+    .max(80, 'A name holds at most 80 characters.')
+    .regex(PLAIN_TEXT, 'A name is written on one line, with letters that can be seen.');
+const name = personName('Write your name.');
 export const emailSchema = z
   .string()
   .trim()

@@ -333,6 +333,18 @@ describe('what touches marks in a round’s plan', () => {
   });
 });
 
+describe('a name', () => {
+  it.each([
+    ['a second line', 'Ida\nhttp://elsewhere.test'],
+    ['a turn of the direction of writing', 'Ida \u202eoimaS'],
+    ['a sign that no text holds', 'Ida\u0000'],
+  ])('holds no %s', async (_what, name) => {
+    const user = await server.create.user('student');
+    const answer = await (await server.signIn(user)).patch('/account', { name }).expect(422);
+    expect(answer.body.errors[0].pointer).toBe('/name');
+  });
+});
+
 describe('a class behind one address', () => {
   it('does not share one person’s tries where people are signed in', async () => {
     const { students } = await server.create.classWith({ students: 2 });

@@ -279,6 +279,7 @@ async function askToJoin(
   const teachers = await manager.find(Membership, {
     where: { classId: target.id, role: 'teacher', removedAt: IsNull() },
     relations: { user: true },
+    order: { userId: 'ASC' },
   });
   for (const { user: teacher } of teachers) {
     if (!teacher?.email) continue;

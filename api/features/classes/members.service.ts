@@ -35,10 +35,9 @@ export interface MembersDeps {
 }
 export type MembersService = ReturnType<typeof createMembersService>;
 
-/** A link that the teacher hands over, shown once. */
+/** A link that the teacher hands over, shown once; one that is mailed is known to its reader alone. */
 export interface InvitationLink {
   readonly name: string;
-  readonly email: string | null;
   readonly token: string;
 }
 
@@ -103,7 +102,8 @@ async function invite(
   return await asTeacher(deps, viewer, classId, async (manager, found) => {
     const links: InvitationLink[] = [];
     const inviter = await manager.findOneByOrFail(User, { id: viewer.userId });
-    for (const person of form.people) links.push(await inviteOne(deps, manager, found, form.role, person, inviter));
+    for (const person of form.people)
+      links.push(...(await inviteOne(deps, manager, found, form.role, person, inviter)));
     await recordAudit(manager, {
       ...trail(deps, viewer, classId),
       action: 'class.invited',
@@ -280,7 +280,7 @@ async function inviteOne(
   role: Invitation['role'],
   person: PersonLine,
   inviter: User,
-): Promise<InvitationLink> {
+): Promise<InvitationLink[]> {
   const email = person.email ?? null;
   const token = await createInvitation(manager, {
     schoolId: found.schoolId,
@@ -292,21 +292,20 @@ async function inviteOne(
     asksToJoin: false,
     expiresAt: new Date(deps.now().getTime() + INVITATION_DAYS * 86_400_000),
   });
-  if (email) {
-    await deps.queueMail(manager, {
-      kind: 'invitation',
-      userId: null,
-      to: email,
-      data: {
-        name: person.name,
-        invitedBy: inviter.name,
-        schoolName: found.school?.name ?? '',
-        className: found.name,
-        token,
-      },
-    });
-  }
-  return { name: person.name, email, token };
+  if (email === null) return [{ name: person.name, token }];
+  await deps.queueMail(manager, {
+    kind: 'invitation',
+    userId: null,
+    to: email,
+    data: {
+      name: person.name,
+      invitedBy: inviter.name,
+      schoolName: found.school?.name ?? '',
+      className: found.name,
+      token,
+    },
+  });
+  return [];
 }
 
 async function refuseLastTeacher(manager: EntityManager, classId: string): Promise<void> {

@@ -33,7 +33,6 @@ export const aliasesQuery = (classId: string) =>
 
 export interface InvitationLink {
   readonly name: string;
-  readonly email: string | null;
   readonly token: string;
 }
 export type ClassSettings = Partial<

@@ -97,16 +97,12 @@ function LinkPart({ found }: { readonly found: ClassAnswer }) {
       </form>
       {invite.data ? (
         <Notice title="Invited." isLive>
-          {invite.data.links.some((link) => link.email === null)
-            ? 'These links are shown only now.'
-            : 'The letters are on their way.'}
+          {invite.data.links.length > 0 ? 'These links are shown only now.' : 'The letters are on their way.'}
         </Notice>
       ) : null}
-      {invite.data?.links
-        .filter((link) => link.email === null)
-        .map((link) => (
-          <CopyField key={link.token} label={link.name} value={`${window.location.origin}${paths.join(link.token)}`} />
-        ))}
+      {invite.data?.links.map((link) => (
+        <CopyField key={link.token} label={link.name} value={`${window.location.origin}${paths.join(link.token)}`} />
+      ))}
       {found.invitations.length > 0 ? (
         <ul className="small mt-4" aria-label="Open invitations">
           {found.invitations.map((open) => (
