@@ -53,6 +53,7 @@ import { toCheckInput } from './features/verdicts/check-input.ts';
 import { createVerdictsService } from './features/verdicts/verdicts.service.ts';
 import { readLine } from '../shared/maths/read.ts';
 import { isWithinOneTerm } from '../shared/lib/within-one-term.ts';
+import type { Verdict } from '../shared/schemas/verdict.ts';
 import type { UniqueConflicts } from './http/problems.ts';
 import type { Route, Viewer } from './http/route.ts';
 import type { Now } from './lib/clock.ts';
@@ -61,6 +62,7 @@ import type { Logger } from './lib/logger.ts';
 import type { MailCatcher } from './lib/mail-catcher.ts';
 import type { Mailer } from './lib/mailer.ts';
 import { job, type JobKind, type Queue } from './lib/queue.ts';
+import { remember } from './lib/remember.ts';
 import type { RateLimiter } from './lib/rate-limit.ts';
 
 /** What every feature may be handed; main opens the real ones, the tests their own. */
@@ -174,11 +176,13 @@ function composePeople({ db, now, rateLimiter }: Platform, queueMail: QueueMail)
 function composeReviewing({ db, now, checks }: Platform, queueMail: QueueMail) {
   const scoring = createScoringService({ now, isWithinOneTerm });
   const { findCurrentVerdicts, findFindingsInForce } = scoring;
+  // What was handed in and its task never change, so however often a page is read, its line is checked once.
+  const checkOnce = remember<Pick<Verdict, 'steps'>>(1000);
   const reviews = createReviewsService({
     db,
     now,
     findCurrentVerdicts,
-    checkLines: (task, lines) => checks.check(toCheckInput(task, lines)),
+    checkLines: (findingId, task, lines) => checkOnce(findingId, () => checks.check(toCheckInput(task, lines))),
   });
   const answers = createAnswersService({ db, now, findCurrentVerdicts, findFindingsInForce });
   const disputes = createDisputesService({ db, now, scoring, findFindingsInForce, queueMail });

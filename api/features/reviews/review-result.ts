@@ -13,8 +13,9 @@ import { Score, type Finding, type Review } from './reviews.entity.ts';
 
 export interface ResultDeps {
   readonly now: () => Date;
-  /** Rules on lines under a task's terms, without keeping anything. */
+  /** Rules on the lines of a finding under a task's terms, once. */
   readonly checkLines: (
+    findingId: string,
     task: FrozenTask,
     lines: readonly Pick<HandedInLine, 'tex' | 'uses'>[],
   ) => Promise<Pick<Verdict, 'steps'>>;
@@ -65,7 +66,7 @@ async function ruleShouldBe(
   const pick = finding?.pick;
   if (!finding || !pick || finding.shouldBe.trim() === '' || !round?.frozen || !version) return null;
   const lines = [...version.lines.slice(0, pick), { tex: finding.shouldBe, uses: version.lines[pick]?.uses ?? null }];
-  const { steps } = await checkLines(round.frozen, lines);
+  const { steps } = await checkLines(finding.id, round.frozen, lines);
   return steps.find(({ step }) => step === pick)?.ruling ?? 'undecided';
 }
 

@@ -94,13 +94,17 @@ function mayWrite(round: OwnRound, at: Date): boolean {
   return round.lateRule === 'late-batch' || (inTime && round.own.writingEndsAt !== null);
 }
 
+/** Characters of a sheet that are read for the first page; the sheet itself shows every line. */
+const READ_AT_MOST = 20_000;
+
 async function toWrite(manager: EntityManager, round: OwnRound, { readLine }: Tools): Promise<WriteThing> {
   const lines: { tex: string }[] = round.derivation ? await manager.query(LINES_SQL, [round.derivation.id]) : [];
   const decimal = round.settings?.decimal ?? 'point';
   const settings: ReadSettings = { numbers: round.settings?.numbers ?? 'real', decimal, functions: [] };
-  const readings = lines.map(({ tex }) => readLine(tex, settings));
+  let left = READ_AT_MOST;
+  const readings = lines.map(({ tex }) => ((left -= tex.length) < 0 ? null : readLine(tex, settings)));
   const numbersOf = (test: (reading: Reading) => boolean) =>
-    readings.flatMap((reading, i) => (test(reading) ? [i + 1] : []));
+    readings.flatMap((reading, i) => (reading && test(reading) ? [i + 1] : []));
   const last = lines.at(-1);
   return {
     kind: 'write',
