@@ -208,7 +208,7 @@ function judgeAfterDefinitions(members: readonly Expr[], meaning: Meaning, conte
 
 /** f(x), where f was defined as f(x). */
 function isPlainValue(expr: Expr, { definitions }: CheckContext): boolean {
-  if (expr.kind !== 'apply') return false;
+  if (expr.kind !== 'apply' || expr.primes > 0) return false;
   const own = definitions.functions.get(expr.name);
   return expr.args.every((arg, k) => arg.kind === 'letter' && arg.name === own?.params[k]);
 }
