@@ -58,10 +58,15 @@ export function planRoute(input: DerivationInput, read: ReadDerivation): Route {
     unknown: findUnknown(input, read),
     given: first?.ok ? toStatement(first.line) : null,
     calculus: scopeOf(
-      read.lines.map((result) => (result.ok ? result.line : null)),
+      input.lines.some(mayHaveCalculus) ? read.lines.map((result) => (result.ok ? result.line : null)) : [],
       input.settings.constant ?? false,
     ),
   };
+}
+
+/** Most derivations have no integral or derivative, and are not walked for them. */
+function mayHaveCalculus(tex: string): boolean {
+  return /\\(?:[io]*int|partial|prime|mathrm|operatorname|d?dot|lim)(?![a-z])|['′]|(?:^|[^a-zA-Z\\])d|D/.test(tex);
 }
 
 /** The letter that the settings or the goal name, else the one that the last line to isolate a letter isolates. */

@@ -42,35 +42,38 @@ function addLine(line: Line, found: Set<string>): void {
 }
 
 function addExpr(expr: Expr, bound: ReadonlySet<string>, found: Set<string>): void {
-  const add = (name: string) => {
-    if (!bound.has(name)) found.add(name);
-  };
-  const inside = (name: string) => new Set([...bound, name]);
   switch (expr.kind) {
+    case 'number':
+    case 'constant':
+      return;
     case 'letter':
-      return add(expr.name);
+      return addName(expr.name, bound, found);
     case 'rate':
-      add(expr.of);
-      return add(expr.by);
+      addName(expr.of, bound, found);
+      return addName(expr.by, bound, found);
     case 'apply':
-      if (expr.args.length === 0) add(expr.name);
+      if (expr.args.length === 0) addName(expr.name, bound, found);
       break;
     case 'derivative':
-      add(expr.variable);
+      addName(expr.variable, bound, found);
       break;
     case 'series':
       addExpr(expr.from, bound, found);
       addExpr(expr.to, bound, found);
-      return addExpr(expr.body, inside(expr.index), found);
+      return addExpr(expr.body, new Set([...bound, expr.index]), found);
     case 'limit':
       addExpr(expr.to, bound, found);
-      return addExpr(expr.operand, inside(expr.variable), found);
+      return addExpr(expr.operand, new Set([...bound, expr.variable]), found);
     case 'integral':
       if (!expr.from || !expr.to) break;
       addExpr(expr.from, bound, found);
       addExpr(expr.to, bound, found);
-      return addExpr(expr.integrand, inside(expr.variable), found);
+      return addExpr(expr.integrand, new Set([...bound, expr.variable]), found);
     default:
   }
   for (const part of childrenOf(expr)) addExpr(part, bound, found);
+}
+
+function addName(name: string, bound: ReadonlySet<string>, found: Set<string>): void {
+  if (!bound.has(name)) found.add(name);
 }

@@ -28,6 +28,7 @@ export type AntiderivativeRuling =
 
 /** Whether the step has an indefinite integral or a constant of integration; then its lines are compared by derivatives. */
 export function concernsConstants(above: Expr, below: Expr, context: CheckContext): boolean {
+  if (context.calculus?.variables.size === 0 && context.calculus.constants.size === 0) return false;
   if (indefiniteVariables(above).length + indefiniteVariables(below).length > 0) return true;
   return (
     [...constantsIn(above, context), ...constantsIn(below, context)].length > 0 &&
