@@ -301,6 +301,28 @@ describe('an admin', () => {
   });
 });
 
+describe('an answer in the last minute', () => {
+  it('has its two minutes also where the round settles the moment answering ends', async () => {
+    const { round, students, move } = await openReviewing('closed', 3, 3);
+    await server.dataSource.getRepository(Round).update(round.id, { settlesAt: round.answeringEndsAt });
+    await move('reviewing');
+    const [review] = await listReviews(server.dataSource, round.id);
+    const reviewer = await server.signIn({ id: review!.reviewerId });
+    await reviewer.post(`/reviews/${review!.id}/finding`, finding()).expect(200);
+    await move('answering');
+    const author = await server.signIn(students.find(({ id }) => id === review!.derivation.authorId)!);
+    const { key } = (await author.get(`/derivations/${review!.derivation.id}`).expect(200)).body.findings[0];
+    server.clock.set(round.answeringEndsAt);
+    server.clock.advance({ minutes: 1 });
+    await server.runJobs();
+    await author.put(`/findings/${key}/answer`, { kind: 'accept' }).expect(204);
+    server.clock.advance({ minutes: 2 });
+    await server.platform.queue.enqueueInTransaction(server.dataSource.manager, 'rounds-sweep', {});
+    await server.runJobs();
+    await author.put(`/findings/${key}/answer`, { kind: 'accept' }).expect(409);
+  });
+});
+
 describe('what touches marks in a round’s plan', () => {
   it('stands in the trail with before and after', async () => {
     const { class: of, teacher } = await server.create.classWith();

@@ -24,7 +24,9 @@ export function nextStage(stage: Stage): LaterStage | null {
  */
 export async function findStageEnd(manager: EntityManager, round: Round): Promise<Date | null> {
   if (round.stage === 'planned') return round.opensAt;
-  if (round.stage === 'answering') return round.settlesAt;
+  // Where both are one instant, answers still have their grace.
+  if (round.stage === 'answering')
+    return new Date(Math.max(round.settlesAt.getTime(), round.answeringEndsAt.getTime() + GRACE_MS));
   if (round.stage === 'writing') return new Date(round.writingEndsAt.getTime() + GRACE_MS);
   if (round.stage === 'settled') return null;
   const [own]: { longest: Date | null }[] = await manager.query(
