@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { storableText } from '../lib/storable-text.ts';
 import { texSchema } from './task.ts';
 import { spanSchema } from './verdict.ts';
 
@@ -22,7 +23,7 @@ export type SlipKind = z.infer<typeof slipKindSchema>;
 export const MAX_SURENESS = 8;
 
 const pickSchema = z.union([z.number().int().min(1).max(400), z.literal('none'), z.null()]);
-const whySchema = z.string().max(2000, 'Why holds at most 2000 characters.');
+const whySchema = z.string().overwrite(storableText).max(2000, 'Why holds at most 2000 characters.');
 const surenessSchema = z.number().int().min(0).max(MAX_SURENESS);
 
 /** A reviewer's finding while it is being made: everything may be missing. */

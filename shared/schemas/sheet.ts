@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { storableText } from '../lib/storable-text.ts';
 
 /** Limits of one sheet. */
 export const MAX_STEPS = 200;
@@ -11,8 +12,8 @@ export const MAX_SHEET_BYTES = 200_000;
  */
 export const stepAttributesSchema = z.object({
   stepId: z.uuid(),
-  tex: z.string().max(4000, 'A line holds at most 4000 characters.'),
-  reason: z.string().max(300, 'A reason holds at most 300 characters.'),
+  tex: z.string().overwrite(storableText).max(4000, 'A line holds at most 4000 characters.'),
+  reason: z.string().overwrite(storableText).max(300, 'A reason holds at most 300 characters.'),
   /** Step ids (or 'given') that the line is judged from; null: the line above. */
   uses: z.array(z.string().max(40)).max(20, 'A line names at most 20 lines.').nullable(),
 });
@@ -56,7 +57,12 @@ const inlineSchema = z.discriminatedUnion(
   [
     z.object({
       type: z.literal('text'),
-      text: z.string().min(1).max(10_000),
+      // A space stands for text of which nothing can be kept, because a text node is never empty.
+      text: z
+        .string()
+        .min(1)
+        .overwrite((text) => storableText(text) || ' ')
+        .max(10_000),
       marks: z.array(markSchema).max(2).optional(),
     }),
     z.object({ type: z.literal('hardBreak'), marks: z.array(markSchema).max(2).optional() }),

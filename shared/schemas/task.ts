@@ -1,8 +1,9 @@
 import { z } from 'zod';
+import { storableText } from '../lib/storable-text.ts';
 import { goalSchema } from './verdict.ts';
 
 /** A line of maths as TeX. */
-export const texSchema = z.string().trim().max(4000, 'A line holds at most 4000 characters.');
+export const texSchema = z.string().overwrite(storableText).trim().max(4000, 'A line holds at most 4000 characters.');
 export const filledTexSchema = texSchema.min(1, 'Write this line.');
 
 export const taskSettingsSchema = z.object({

@@ -115,6 +115,33 @@ describe('a first name on one’s own sheet', () => {
   });
 });
 
+describe('what a sheet may hold', () => {
+  it('is kept but for signs that no database keeps, and a name within a line is noticed', async () => {
+    const { students, class: of, round } = await openReviewing('closed', 1, 0);
+    const classmate = await server.create.user('student', { schoolId: of.schoolId, name: 'Perpetua Lane' });
+    await server.create.membership(of, classmate);
+    const client = await server.signIn(students[0]!);
+    const { draft } = (await client.get(`/rounds/${round.id}/sheet`).expect(200)).body;
+    const document = {
+      type: 'doc',
+      content: [
+        {
+          type: 'paragraph',
+          content: [
+            { type: 'text', text: 'half \ud83d of it\u0000' },
+            { type: 'text', text: '\ud83d' },
+          ],
+        },
+        ...sheetOf(['x\u0000+1 \\text{ for Perpetua}']).content,
+      ],
+    };
+    await client.put(`/rounds/${round.id}/sheet`, { document, baseVersion: draft.version }).expect(200);
+    const { body } = await client.get(`/rounds/${round.id}/sheet/preview`).expect(200);
+    expect(body.lines[1]).toMatchObject({ tex: 'x+1 \\text{ for Perpetua}', prose: 'half  of it' });
+    expect(body.names).toEqual(['Perpetua']);
+  });
+});
+
 describe('an assistant who may not see names', () => {
   it('cannot reckon them back from the class list and the round', async () => {
     const { students, class: of, round } = await openReviewing('closed', 9, 9);

@@ -19,7 +19,7 @@ import {
   saveDraft,
   tooLate,
 } from './drafts.ts';
-import { namesInWords } from './names-in-words.ts';
+import { namesInWords, wordsInTex } from './names-in-words.ts';
 import { openRound, type OpenedRound } from './sheet-access.ts';
 import { toSheetView } from './sheet.presenter.ts';
 import { writingWindow, type WritingWindow } from './writing-window.ts';
@@ -201,6 +201,10 @@ function toPreview({ document, version }: Draft, frozen: FrozenTask, names: read
   };
 }
 
+/** Prose, reasons, and words set within a line of maths. */
 function wordsOf(document: SheetDocument): string[] {
-  return document.content.map((block) => stepOf(block)?.reason ?? proseOf(block));
+  return document.content.flatMap((block) => {
+    const step = stepOf(block);
+    return step ? [step.reason, ...wordsInTex(step.tex)] : [proseOf(block)];
+  });
 }

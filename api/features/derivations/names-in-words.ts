@@ -13,6 +13,11 @@ export function namesInWords(names: readonly string[], words: readonly string[])
   return [...new Set(words.flatMap(wordsOf))].filter((word) => parts.has(plain(word)));
 }
 
+/** What stands in braces of a line: words are set there, as in \text{by Ana}. */
+export function wordsInTex(tex: string): string[] {
+  return [...tex.matchAll(/\{([^{}]*)\}/g)].map(([, words = '']) => words);
+}
+
 function wordsOf(text: string): string[] {
   return text.match(/[\p{L}\p{M}\p{N}]+/gu) ?? [];
 }
