@@ -234,16 +234,28 @@ async function addPair(
     }
     if (await manager.existsBy(ConflictPair, { classId, firstId, secondId }))
       throw new ProblemError('conflict', { detail: 'This pair is listed already.' });
-    return {
-      id: (await manager.save(manager.create(ConflictPair, { classId, firstId, secondId, note: form.note }))).id,
-    };
+    const { id } = await manager.save(manager.create(ConflictPair, { classId, firstId, secondId, note: form.note }));
+    await recordAudit(manager, {
+      ...trail(deps, viewer, classId),
+      action: 'class.pair-added',
+      after: { firstId, secondId },
+      reason: form.note,
+    });
+    return { id };
   });
 }
 
 async function removePair(deps: MembersDeps, viewer: Viewer, classId: string, pairId: string): Promise<void> {
   await asTeacher(deps, viewer, classId, async (manager) => {
-    const { affected } = await manager.delete(ConflictPair, { id: pairId, classId });
-    if (affected !== 1) throw notFound();
+    const pair = await manager.findOneBy(ConflictPair, { id: pairId, classId });
+    if (!pair) throw notFound();
+    await manager.delete(ConflictPair, { id: pairId });
+    const { firstId, secondId } = pair;
+    await recordAudit(manager, {
+      ...trail(deps, viewer, classId),
+      action: 'class.pair-removed',
+      before: { firstId, secondId },
+    });
   });
 }
 

@@ -38,7 +38,13 @@ async function findHandedIn(manager: EntityManager, roundIds: readonly string[])
   if (roundIds.length === 0) return [];
   const derivations = await manager.find(Derivation, { where: { roundId: In([...new Set(roundIds)]) } });
   const ids = derivations.flatMap((derivation) => derivation.currentVersionId ?? []);
-  const versions = ids.length === 0 ? [] : await manager.find(DerivationVersion, { where: { id: In(ids) } });
+  const versions =
+    ids.length === 0
+      ? []
+      : await manager.find(DerivationVersion, {
+          where: { id: In(ids) },
+          select: { id: true, derivationId: true, lines: true },
+        });
   const roundOf = new Map(derivations.map((derivation) => [derivation.id, derivation.roundId]));
   return versions.map((version) => ({ version, roundId: roundOf.get(version.derivationId) ?? '' }));
 }
