@@ -8,7 +8,6 @@ const NAV = [
   { to: '/parts', label: 'Parts' },
   { to: '/tasks', label: 'Tasks' },
   { to: '/disputes', label: 'Disputes', count: 5 },
-  { to: '/insights', label: 'Insights' },
   { to: '/standings', label: 'Standings' },
 ];
 

@@ -1,4 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
+import { Navigate } from 'react-router-dom';
 import { viewerQuery } from '../features/people/viewer.queries.ts';
 import { StaffToday } from '../features/today/staff-today.tsx';
 import { StudentToday } from '../features/today/student-today.tsx';
@@ -18,6 +19,8 @@ export function Component() {
   const zone = useZone();
   const name = viewer.data?.user.name.split(' ')[0] ?? '';
   const isTeacher = viewer.data?.user.role !== 'student';
+  // An admin runs the school, and no rounds.
+  if (viewer.data?.user.role === 'admin') return <Navigate to={paths.admin()} replace />;
   const where = today.data ? formatInstant(today.data.now, zone, 'date') : null;
   if (!today.data || !viewer.data) {
     return (
