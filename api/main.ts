@@ -81,7 +81,7 @@ function openChecks(config: Config, logger: Logger, life: Lifetime): CheckPool {
   const pool = createCheckPool({
     workerUrl: new URL(name, import.meta.url),
     threads: config.checkWorkers ?? Math.max(1, Math.min(4, availableParallelism() - 1)),
-    onEnded: ({ step, reason }) => logger.warn({ step, reason }, 'a check was ended at its limit'),
+    onEnded: ({ step, reason, cause }) => logger.warn({ step, reason, err: cause }, 'a check was ended'),
   });
   life.onStop(() => pool.close());
   return pool;

@@ -12,11 +12,12 @@ export interface CheckPoolOptions {
   readonly stepMs?: number;
   readonly derivationMs?: number;
   readonly memoryMb?: number;
-  /** Told of each worker that was ended, so that it can be logged. */
+  /** Told of each run that was ended, or that broke on an error of ours (`cause`), so that it can be logged. */
   readonly onEnded?: (event: {
     readonly step: number;
-    readonly reason: 'time' | 'memory';
+    readonly reason: 'time' | 'memory' | 'broken';
     readonly input: DerivationInput;
+    readonly cause?: unknown;
   }) => void;
 }
 
@@ -53,7 +54,7 @@ export function createCheckPool(options: CheckPoolOptions = {}): CheckPool {
     for (;;) {
       const run = await runOnce(piscina, { input, timedOut: [...timedOut] }, { stepMs, deadline });
       if (run.kind === 'done') return { ...run.answer.verdict, ms: run.answer.ms };
-      options.onEnded?.({ step: run.step, reason: run.kind, input });
+      options.onEnded?.({ step: run.step, reason: run.kind, input, cause: run.cause });
       const explaining = input.lines.length;
       if (timedOut.includes(explaining) && performance.now() > deadline) return givenUp(input, derivationMs);
       if (run.step === explaining) timedOut.push(explaining);
@@ -89,8 +90,8 @@ function loaderUrl(): string {
 
 type Run =
   | { readonly kind: 'done'; readonly answer: CheckAnswer }
-  /** The worker was ended at this step, 0 while it was still reading. */
-  | { readonly kind: 'time' | 'memory'; readonly step: number };
+  /** The run ended at this step, 0 while it was still reading. */
+  | { readonly kind: 'time' | 'memory' | 'broken'; readonly step: number; readonly cause?: unknown };
 
 interface Limits {
   readonly stepMs: number;
@@ -121,7 +122,7 @@ async function runOnce(piscina: Piscina, task: Omit<CheckTask, 'progress'>, limi
   } catch (cause) {
     if (ending.signal.aborted) return { kind: 'time', step: Math.max(0, Atomics.load(at, 0)) };
     if (isOutOfMemory(cause)) return { kind: 'memory', step: Math.max(0, Atomics.load(at, 0)) };
-    throw cause;
+    return { kind: 'broken', step: Math.max(0, Atomics.load(at, 0)), cause };
   } finally {
     clearInterval(watch);
   }

@@ -36,4 +36,19 @@ describe('the pool of checks', () => {
     expect(verdict.outcome).toBe('undecided');
     await slow.close();
   }, 30_000);
+
+  it('leaves the step undecided at which the checker itself breaks, tells of it, and rules on the rest', async () => {
+    const told: string[] = [];
+    const broken = createCheckPool({
+      threads: 1,
+      stepMs: 5000,
+      derivationMs: 20_000,
+      workerUrl: new URL('./data/broken.worker.ts', import.meta.url),
+      onEnded: ({ step, reason, cause }) => told.push(`${step} ${reason} ${String(cause)}`),
+    });
+    const verdict = await broken.check({ lines: ['x+x', '2x', '2x', 'x'], assume: [], settings: {} });
+    expect(told).toEqual(['2 broken TypeError: broken on purpose']);
+    expect(verdict.steps.map((step) => step.ruling)).toEqual(['holds', 'undecided', 'fails']);
+    await broken.close();
+  }, 30_000);
 });

@@ -10,7 +10,15 @@ import { explainVerdict } from './explain.ts';
  */
 async function main(): Promise<void> {
   const explain = process.argv.includes('--explain');
-  const pool = createCheckPool({ threads: 1, stepMs: 250, derivationMs: 2000 });
+  const pool = createCheckPool({
+    threads: 1,
+    stepMs: 250,
+    derivationMs: 2000,
+    onEnded: ({ reason, cause }) => {
+      if (reason === 'broken')
+        process.stderr.write(`An error of the checker itself left a step undecided: ${String(cause)}\n`);
+    },
+  });
   for await (const text of createInterface({ input: process.stdin, crlfDelay: Infinity })) {
     if (text.trim() === '') continue;
     const parsed = parseDerivationLine(text);
