@@ -24,7 +24,7 @@ function sessionRoutes(people: PeopleService): Route[] {
       who: 'anyone',
       body: signInSchema,
       triesPerMinute: 120,
-      handle: async ({ body, userAgent }) => signedIn(await people.signIn(body.name, body.password, userAgent)),
+      handle: async ({ body, ip, userAgent }) => signedIn(await people.signIn({ ...body, ip, userAgent })),
     }),
     route({
       method: 'delete',
