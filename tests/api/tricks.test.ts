@@ -85,6 +85,25 @@ describe('places in a class', () => {
   });
 });
 
+describe('somebody who leaves while others review', () => {
+  it('leaves no derivation behind with a review less', async () => {
+    const { students, class: of, desk, round, move } = await openReviewing('closed', 7, 7);
+    await move('reviewing');
+    const gone = students[3]!;
+    const place = { classId: of.id, userId: gone.id };
+    const { id } = await server.dataSource.getRepository(Membership).findOneByOrFail(place);
+    await desk.delete(`/classes/${of.id}/members/${id}`).expect(204);
+    await server.platform.queue.enqueueInTransaction(server.dataSource.manager, 'rounds-sweep', {});
+    await server.runJobs();
+    const reviews = await listReviews(server.dataSource, round.id);
+    expect(reviews.filter(({ reviewerId }) => reviewerId === gone.id)).toEqual([]);
+    for (const { id: author } of students.filter((student) => student !== gone)) {
+      expect(reviews.filter(({ derivation }) => derivation.authorId === author)).toHaveLength(2);
+    }
+    for (const { reviewerId, derivation } of reviews) expect(reviewerId).not.toBe(derivation.authorId);
+  });
+});
+
 describe('the letter about somebody who asks to join', () => {
   it('names who asks', async () => {
     const { class: of, teacher } = await server.create.classWith();

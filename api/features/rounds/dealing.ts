@@ -128,6 +128,23 @@ const RELEASE_SQL = `
     returning r.derivation_id)
   select derivation_id from gone`;
 
+/** Finds others for the reviews, not begun, of people who have left the class or may no longer sign in. Answers how many. */
+export async function releaseGone(manager: EntityManager, round: Round, at: Date): Promise<number> {
+  const gone: { user_id: string }[] = await manager.query(GONE_SQL, [round.id, round.classId]);
+  let taken = 0;
+  for (const { user_id } of gone) taken += await releaseReviews(manager, round, user_id, at);
+  return taken;
+}
+
+const GONE_SQL = `
+  select distinct r.reviewer_id as user_id from review r
+   where r.round_id = $1 and r.draft is null
+     and not exists (select 1 from finding f where f.review_id = r.id)
+     and not exists (
+       select 1 from membership m join person p on p.id = m.user_id and p.disabled_at is null
+        where m.class_id = $2 and m.user_id = r.reviewer_id and m.role = 'student' and m.removed_at is null)
+   order by 1`;
+
 async function insertReviews(
   manager: EntityManager,
   round: Round,

@@ -4,7 +4,7 @@ import type { Stage } from '../../../shared/schemas/round.ts';
 import { notFound, ProblemError } from '../../http/problem-error.ts';
 import type { Queue } from '../../lib/queue.ts';
 import { recordAudit } from '../audit/record.ts';
-import { dealLater } from './dealing.ts';
+import { dealLater, releaseGone } from './dealing.ts';
 import { createStageEntries, type EnterDeps, type MoveOrder } from './enter-stages.ts';
 import { lockRound } from './round-access.ts';
 import { lateBatchInstant, listRoundPeople, mayStillHandIn } from './round-people.ts';
@@ -47,13 +47,14 @@ export function createRoundStages(deps: StagesDeps) {
   /** The late batch, and reviews for people who had to wait for them, as far as they are due. */
   async function catchUp(manager: EntityManager, round: Round): Promise<void> {
     if (round.stage !== 'reviewing') return;
+    const released = await releaseGone(manager, round, now());
     const isLateDue = !round.lateDealtAt && lateBatchInstant(round, await listRoundPeople(manager, round)) <= now();
     const added = await dealLater(manager, round, now(), { lateDerivations: isLateDue, isLast: isLateDue });
     if (isLateDue) {
       round.lateDealtAt = now();
       await manager.update(Round, { id: round.id }, { lateDealtAt: now() });
     }
-    if (added > 0) await mail.reviewingOpened(manager, round);
+    if (added + released > 0) await mail.reviewingOpened(manager, round);
   }
 
   return {
