@@ -313,6 +313,7 @@ export type ReadErrorCode =
   | 'bad-series'
   | 'ragged-matrix'
   | 'mixed-joins'
+  | 'piecewise'
   | 'text';
 
 /** What could not be read: where, what stands there and what was expected. Worded by the client. */

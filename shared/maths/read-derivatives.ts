@@ -1,121 +1,74 @@
 import type { Expr } from './expression.ts';
 import type { Reader } from './reader.ts';
-import type { Token } from './scanner.ts';
+import { groupAhead } from './look-ahead.ts';
 
 /** `\frac{d}{dx}`, `\frac{dy}{dx}`, `\frac{\partial f}{\partial x}` and their like; null for an ordinary fraction. */
 export function readDerivativeFraction(reader: Reader): Expr | null {
-  const shape = derivativeShape(reader);
-  if (!shape) return null;
-  const { start } = reader.token;
+  const sign = derivativeSign(reader);
+  if (!sign) return null;
+  const { start } = reader.next();
+  const isBraced = reader.take('{');
   reader.next();
-  const braced = reader.take('{');
-  reader.next();
-  const above = readOrder(reader);
-  const rest = braced && !reader.is('}') ? readRest(reader) : null;
-  if (braced) reader.expect('}', 'missing-bracket', '}');
-  reader.next();
-  reader.next();
+  const order = readOrder(reader);
+  const rest = isBraced && !reader.is('}') ? reader.inside((inner) => inner.grammar.product(inner)) : null;
+  if (isBraced) reader.expect('}');
+  reader.skip(2);
   const by = readVariable(reader);
   const below = readOrder(reader);
-  reader.expect('}', 'missing-bracket', '}');
-  if (above !== below) reader.fail('bad-derivative', [String(above)], { start, end: reader.lastEnd });
-  return finish(reader, { start, by, order: above, partial: shape.text === '\\partial', rest });
+  reader.expect('}');
+  if (order !== below) reader.fail(`bad-derivative ${order}`, { start, end: reader.lastEnd });
+  return finish(reader, start, by, order, rest, sign === '\\partial');
 }
 
 /** `d/dx` and `dy/dx` as typed, at the d. */
 export function readPlainDerivative(reader: Reader): Expr | null {
-  const isOperator = reader.peek(1).kind === '/';
-  const slash = isOperator ? 1 : 2;
-  if (!isOperator && (reader.peek(1).kind !== 'letter' || reader.peek(2).kind !== '/')) return null;
-  if (reader.peek(slash + 1).text !== 'd' || reader.peek(slash + 2).kind !== 'letter') return null;
+  const { length } = reader.ahead(/aa?\//y);
+  if (!length || reader.peek(length).text !== 'd' || reader.peek(length + 1).kind !== 'a') return null;
   const { start } = reader.next();
-  const rest = isOperator ? null : reader.grammar.atoms.letter!(reader);
-  reader.next();
-  reader.next();
-  const by = readVariable(reader);
-  return finish(reader, { start, by, order: 1, partial: false, rest });
+  const rest = reader.is('/') ? null : reader.grammar.atoms.a!(reader);
+  reader.skip(2);
+  return finish(reader, start, readVariable(reader), 1, rest, false);
 }
 
-interface Operator {
-  readonly start: number;
-  readonly by: string;
-  readonly order: number;
-  readonly partial: boolean;
-  readonly rest: Expr | null;
-}
-
-function finish(reader: Reader, operator: Operator): Expr {
-  const { start, by, order, partial, rest } = operator;
+function finish(reader: Reader, start: number, by: string, order: number, rest: Expr | null, partial: boolean): Expr {
   if (rest?.kind === 'letter') {
     const rate: Expr = { kind: 'rate', of: rest.name, by, order, span: reader.span(start) };
     return partial ? { ...rate, partial } : rate;
   }
-  const operand = rest ?? reader.binding(by, () => readOperand(reader));
+  const operand = rest ?? reader.binding(by, readOperand);
   return { kind: 'derivative', variable: by, order, partial, operand, span: reader.span(start) };
-}
-
-function readRest(reader: Reader): Expr {
-  return reader.inside((inner) => inner.grammar.product(inner));
 }
 
 /** Brackets hold the whole operand; without them it is the product that follows. */
 function readOperand(reader: Reader): Expr {
-  reader.enter();
-  const { kind } = reader.token;
-  let operand: Expr;
-  if (kind !== '(' && kind !== '[') operand = reader.grammar.product(reader);
-  else {
-    operand = reader.grammar.power(reader);
-    if (reader.startsFactor() && reader.choose('operand')) operand = reader.grammar.product(reader, operand);
-  }
-  reader.leave();
-  return operand;
+  const { product, power } = reader.grammar;
+  if (!reader.is('([')) return product(reader);
+  const operand = power(reader);
+  return reader.startsFactor() && reader.choose('operand') ? product(reader, operand) : operand;
 }
 
 function readVariable(reader: Reader): string {
-  const { token } = reader;
-  reader.next();
-  if (!reader.is('_')) return token.text;
-  reader.next();
-  const digit = reader.next();
-  return digit.text.length === 1 ? `${token.text}_${digit.text}` : reader.fail('bad-derivative', ['dx'], digit);
+  const { text } = reader.next();
+  if (!reader.take('_')) return text;
+  const index = reader.next();
+  return index.text.length === 1 ? `${text}_${index.text}` : reader.fail('bad-derivative dx', index);
 }
 
 function readOrder(reader: Reader): number {
   if (!reader.take('^')) return 1;
-  const braced = reader.take('{');
-  if (!reader.is('number')) return reader.fail('bad-derivative', ['2']);
-  const { text } = braced ? reader.next() : reader.takeDigit();
-  if (braced) reader.expect('}', 'missing-bracket', '}');
-  const order = Number(text);
-  return order >= 1 && order <= 20 ? order : reader.fail('bad-derivative', ['2']);
+  const isBraced = reader.take('{');
+  if (!reader.is('0')) reader.fail('bad-derivative 2');
+  const order = Number((isBraced ? reader.next() : reader.takeDigit()).text);
+  if (isBraced) reader.expect('}');
+  return order >= 1 && order <= 20 ? order : reader.fail('bad-derivative 2');
 }
 
-/** Looks ahead from a `\frac`: the d or rounded d that stands above and below, if so. */
-function derivativeShape(reader: Reader): Token | null {
-  let at = 1;
-  const braced = reader.peek(at).kind === '{';
-  if (braced) at += 1;
-  const top = reader.peek(at);
-  if (top.kind !== 'letter' || (top.text !== 'd' && top.text !== '\\partial')) return null;
-  at += 1;
-  if (braced) at = closing(reader, at) + 1;
-  if (reader.peek(at).kind !== '{' || reader.peek(at + 1).text !== top.text || reader.peek(at + 2).kind !== 'letter') {
-    return null;
-  }
-  let end = at + 3;
-  if (reader.peek(end).kind === '_') end += 2;
-  if (reader.peek(end).kind === '^') end += reader.peek(end + 1).kind === '{' ? 4 : 2;
-  return reader.peek(end).kind === '}' ? top : null;
-}
-
-/** Index, ahead of here, of the brace that closes the group that is open at `from`. */
-function closing(reader: Reader, from: number): number {
-  let depth = 1;
-  for (let at = from; ; at += 1) {
-    const { kind } = reader.peek(at);
-    if (kind === '{') depth += 1;
-    else if (kind === '}') depth -= 1;
-    if (depth === 0 || kind === 'end-of-line') return at;
-  }
+/** Looks ahead from a `\frac`: the d or rounded d that stands above and below; empty where none does. */
+function derivativeSign(reader: Reader): string {
+  const isBraced = reader.ahead(/F\{/y) !== '';
+  const { kind, text } = reader.peek(isBraced ? 2 : 1);
+  if (kind !== 'a' || (text !== 'd' && text !== '\\partial')) return '';
+  const below = isBraced ? groupAhead(reader, 1).end + 1 : 2;
+  const fits = reader.peek(below + 1).text === text && reader.ahead(/\{.a(?:_.)?(?:\^\{..|\^.)?\}/y, below);
+  return fits ? text : '';
 }

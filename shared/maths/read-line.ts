@@ -1,91 +1,69 @@
 import type { Expr, Line, RelationSign } from './expression.ts';
+import { groupAhead } from './look-ahead.ts';
+import { readEnd } from './read-atoms.ts';
 import { joinParts, type Join, type Part } from './read-joins.ts';
 import { readInterval, readSet, startsSet } from './read-sets.ts';
 import { readSentence, startsDefinition } from './read-sentences.ts';
 import type { Reader } from './reader.ts';
-import type { TokenKind } from './token-table.ts';
 
-const RELATIONS: Partial<Record<TokenKind, RelationSign>> = {
+const RELATIONS: Partial<Record<string, RelationSign>> = {
   '=': '=',
   '<': '<',
   '>': '>',
-  '<=': '<=',
-  '>=': '>=',
-  '!=': '!=',
-  approx: 'approx',
+  '≤': '<=',
+  '≥': '>=',
+  '≠': '!=',
+  '≈': 'approx',
 };
 
 /** All that one line says. */
 export function readWholeLine(reader: Reader): Line {
-  skipConnectives(reader);
-  if (reader.is('end-of-line')) reader.fail('empty', ['number', 'letter']);
+  // An arrow or "so" before a line says only that it follows.
+  while (reader.is('⇒') || CONNECTIVE.test(wordsOf(reader))) reader.next();
+  if (reader.is('$')) reader.fail('empty number letter');
   const line = RELATIONS[reader.token.kind] ? readContinuation(reader) : readStatements(reader);
-  if (reader.is('.') && reader.peek(1).kind === 'end-of-line') reader.next();
-  if (!reader.is('end-of-line')) unexpected(reader);
+  reader.takeAll(/\.(?=\$)/y);
+  if (!reader.is('$')) unexpected(reader);
   return line;
 }
 
-/** An arrow or "so" before a line says only that it follows. */
-function skipConnectives(reader: Reader): void {
-  while (reader.is('implies') || (reader.is('text') && CONNECTIVES.has(wordsOf(reader)))) reader.next();
-}
+const CONNECTIVE = /^T(?:|so|hence|thus|therefore|then|i\.e\.|and so|that is)$/;
 
-const CONNECTIVES = new Set(['', 'so', 'hence', 'thus', 'therefore', 'then', 'i.e.', 'and so', 'that is']);
-
-function wordsOf(reader: Reader): string {
-  return reader.token.text
-    .toLowerCase()
-    .replace(/[\s,:~]+/g, ' ')
-    .trim();
+/** The words of a `\text` after a T; empty for other tokens. */
+function wordsOf({ token }: Reader): string {
+  return token.kind === 'T'
+    ? 'T' +
+        token.text
+          .toLowerCase()
+          .replace(/[\s,:~]+/g, ' ')
+          .trim()
+    : '';
 }
 
 function unexpected(reader: Reader): never {
-  const { kind } = reader.token;
-  if (CLOSERS.has(kind)) return reader.fail('extra-bracket', []);
-  if (kind === '|') return reader.fail('missing-bracket', ['|']);
-  if (kind === 'text' || kind === 'or' || kind === 'and') return reader.fail('text', []);
-  if (kind === 'implies') return reader.fail('bad-relation', ['=']);
-  return reader.fail('missing-operand', ['+', '=']);
+  if (reader.is(')]}⦄⌋⌉E›&')) return reader.fail('extra-bracket');
+  if (reader.is('|')) return reader.fail('missing-bracket |');
+  if (reader.is('T∨∧')) return reader.fail('text');
+  return reader.fail(reader.is('⇒') ? 'bad-relation =' : 'missing-operand + =');
 }
-
-const CLOSERS = new Set<TokenKind>([')', ']', '}', 'set)', 'floor)', 'ceil)', 'end', 'close.', '&']);
 
 /** Statements joined by or, and, commas; also the content of a `cases` block. */
 export function readStatements(reader: Reader): Line {
   const { start } = reader.token;
-  const first = readStatement(reader);
-  let join = takeJoin(reader);
-  if (!join) return first;
-  const parts: Part[] = [{ line: first, join: 'and' }];
-  while (join) {
-    parts.push({ line: readStatement(reader), join });
-    join = takeJoin(reader);
-  }
-  return joinParts(reader, parts, start);
+  const parts: Part[] = [];
+  for (let join: Join | null = 'and'; join; join = takeJoin(reader)) parts.push({ line: readStatement(reader), join });
+  return parts.length === 1 ? parts[0]!.line : joinParts(reader, parts, start);
 }
 
 function takeJoin(reader: Reader): Join | null {
-  const { kind } = reader.token;
-  if (kind === 'or' || kind === 'and') {
-    reader.next();
-    return kind;
-  }
-  if (kind === 'text') return takeWordJoin(reader);
-  if (kind !== ',' && kind !== ';') return null;
-  reader.next();
-  return takeJoin(reader) ?? 'comma';
-}
-
-function takeWordJoin(reader: Reader): Join | null {
   const words = wordsOf(reader);
-  const join =
-    words === 'or'
-      ? 'or'
-      : words === 'and' || words === 'where' || words === 'for' || words === 'with' || words === 'if'
-        ? 'and'
-        : null;
-  if (join || words === '') reader.next();
-  return words === '' ? takeJoin(reader) : join;
+  const isOr = reader.is('∨') || words === 'Tor';
+  const isAnd = reader.is('∧') || /^T(?:and|where|for|with|if)$/.test(words);
+  const isComma = reader.is(',;');
+  if (!isOr && !isAnd && !isComma && words !== 'T') return null;
+  reader.next();
+  if (isOr || isAnd) return isOr ? 'or' : 'and';
+  return takeJoin(reader) ?? (isComma ? 'comma' : null);
 }
 
 function readStatement(reader: Reader): Line {
@@ -93,12 +71,10 @@ function readStatement(reader: Reader): Line {
   const sentence = readSentence(reader);
   if (sentence) return sentence;
   if (startsBlock(reader)) return readBlock(reader);
-  if (startsGroup(reader)) return readGroup(reader);
-  if (startsSetBuilder(reader)) return readSetBuilder(reader);
-  if (namesSolutions(reader)) {
-    reader.next();
-    reader.next();
-  }
+  if (reader.is('(') && /[=<>≤≥≠≈∈∉]/.test(groupAhead(reader).inner)) return readGroup(reader, ')');
+  if (reader.ahead(/⦃a(?:∈ℝ)?[|:]/y)) return readGroup(reader, '⦄');
+  // `S=\{2\}`: the set of solutions under the name that some give it.
+  if (/^[SL]$/.test(reader.token.text) && reader.ahead(/a=[⦃∅]/y)) reader.skip(2);
   if (startsSet(reader)) return readBareSet(reader);
   const name = startsDefinition(reader);
   const before = reader.functions;
@@ -109,29 +85,12 @@ function readStatement(reader: Reader): Line {
   return name ? asDefinition(line) : line;
 }
 
-/** `S=\{2\}`: the set of solutions under the name that some give it. */
-function namesSolutions(reader: Reader): boolean {
-  const after = reader.peek(2).kind;
-  return (
-    (reader.token.text === 'S' || reader.token.text === 'L') &&
-    reader.peek(1).kind === '=' &&
-    (after === 'set(' || after === 'empty')
-  );
-}
-
-/** `\{x\in\R\mid x>2\}` says what its condition says. */
-function startsSetBuilder(reader: Reader): boolean {
-  if (!reader.is('set(') || reader.peek(1).kind !== 'letter') return false;
-  const bar = reader.peek(reader.peek(2).kind === 'in' && reader.peek(3).kind === 'number-set' ? 4 : 2).kind;
-  return bar === '|' || bar === ':';
-}
-
-function readSetBuilder(reader: Reader): Line {
+/** `(x>1 and x<2) or ..`, a bracket that holds a relation; `\{x\in\R\mid x>2\}` says what its condition says. */
+function readGroup(reader: Reader, close: ')' | '⦄'): Line {
   const { start } = reader.next();
-  while (!reader.is('|') && !reader.is(':')) reader.next();
-  reader.next();
-  const line = reader.inside(readStatements);
-  reader.expect('set)', 'missing-bracket', '\\}');
+  if (close === '⦄') while (!reader.is('|:')) reader.next();
+  if (close === '⦄') reader.next();
+  const line = reader.enclosed(close, readStatements, {}, `missing-bracket ${close === ')' ? ')' : '\\}'}`);
   return { ...line, span: reader.span(start) };
 }
 
@@ -143,36 +102,35 @@ function asDefinition(line: Line): Line {
 }
 
 function readRelations(reader: Reader, left: Expr, start: number): Line {
-  if (reader.is('in') || reader.is('notin')) {
-    const negated = reader.next().kind === 'notin';
+  const isSolution = left.kind === 'letter' && reader.ahead(/=⦃[^B]/y);
+  if (isSolution || reader.is('∈∉')) {
+    const negated = reader.next().kind === '∉';
     const set = readSet(reader);
     return { kind: 'membership', letter: left, set, negated, span: reader.span(start) };
   }
-  if (reader.is('=') && left.kind === 'letter' && reader.peek(1).kind === 'set(' && reader.peek(2).kind !== 'begin') {
-    reader.next();
-    return { kind: 'membership', letter: left, set: readSet(reader), negated: false, span: reader.span(start) };
-  }
-  if (reader.take(':=')) {
+  if (reader.take('≔')) {
     const value = reader.grammar.sum(reader);
-    if (left.kind !== 'letter') return reader.fail('bad-relation', ['='], left.span);
+    if (left.kind !== 'letter') return reader.fail('bad-relation =', left.span);
     return { kind: 'definition', name: left.name, params: [], value, span: reader.span(start) };
   }
   const members = [left];
   const signs = readMembers(reader, members);
-  if (signs.length === 0) return { kind: 'expression', expr: left, span: reader.span(start) };
-  if (signs.length > 1) return { kind: 'chain', members, signs, span: reader.span(start) };
-  return { kind: 'relation', left, sign: signs[0]!, right: members[1]!, span: reader.span(start) };
+  const span = reader.span(start);
+  const [sign, more] = signs;
+  if (!sign) return { kind: 'expression', expr: left, span };
+  if (more) return { kind: 'chain', members, signs, span };
+  return { kind: 'relation', left, sign, right: members[1]!, span };
 }
 
+/** Signs and what follows each; the members are added to those given. */
 function readMembers(reader: Reader, members: Expr[]): RelationSign[] {
   const signs: RelationSign[] = [];
   for (;;) {
-    const isTyped = reader.is('!') && reader.flip === 'unequal' && reader.peek(1).kind === '=';
+    const isTyped = reader.flip === 'unequal' && reader.ahead(/!=/y);
     const sign = isTyped ? '!=' : RELATIONS[reader.token.kind];
     if (!sign) return signs;
-    if (isTyped) reader.next();
-    reader.next();
-    if (RELATIONS[reader.token.kind]) reader.fail('bad-relation', ['number', 'letter']);
+    reader.skip(isTyped ? 2 : 1);
+    if (RELATIONS[reader.token.kind]) reader.fail('bad-relation number letter');
     signs.push(sign);
     members.push(reader.grammar.sum(reader));
   }
@@ -187,76 +145,49 @@ function readContinuation(reader: Reader): Line {
 }
 
 function startsBlock(reader: Reader): boolean {
-  const at = reader.is('set(') ? 1 : 0;
-  const token = reader.peek(at);
-  return (
-    token.kind === 'begin' &&
-    (token.text === 'cases' ||
-      (at === 1 && (token.text === 'array' || token.text === 'matrix' || token.text === 'aligned')))
-  );
+  if (reader.is('B')) return reader.token.text === 'cases';
+  return reader.ahead(/⦃B/y) !== '' && /^(?:cases|array|matrix|aligned)$/.test(reader.peek(1).text);
 }
 
 /** `\begin{cases} .. \end{cases}` or a left brace before an array: one statement a row. */
 function readBlock(reader: Reader): Line {
   const { start } = reader.token;
-  const braced = reader.take('set(');
+  const isBraced = reader.take('⦃');
   const environment = reader.next().text;
   const line = reader.inside(() => {
     const parts: Part[] = [];
     do {
-      if (reader.is('end') && parts.length > 0) break;
+      if (reader.is('E') && parts.length > 0) break;
       reader.take('&');
       parts.push({ line: readRow(reader), join: 'comma' });
-      if (!reader.take(',')) reader.take(';');
-    } while (reader.take('newline'));
+      reader.take(',;');
+    } while (reader.take('N'));
     return parts.length === 1 ? parts[0]!.line : joinParts(reader, parts, start);
   });
-  if (!reader.is('end') || reader.token.text !== environment) reader.fail('missing-bracket', [`\\end{${environment}}`]);
-  reader.next();
-  if (braced && !reader.take('close.') && reader.is('set)')) reader.next();
+  readEnd(reader, environment);
+  if (isBraced) reader.take('›⦄');
   return line;
 }
 
-/** One row; alignment marks before its relation are layout only. */
+/** One row; alignment marks around its relation are layout only. */
 function readRow(reader: Reader): Line {
   const { start } = reader.token;
   const left = reader.grammar.sum(reader);
-  reader.take('&');
-  if (!RELATIONS[reader.token.kind] && !reader.is('in') && !reader.is('notin')) reader.fail('bad-relation', ['=']);
-  const sign = reader.peek(1).kind === '&' ? reader.token.kind : null;
-  if (!sign) return readRelations(reader, left, start);
-  const relation = RELATIONS[sign];
-  reader.next();
-  reader.next();
-  if (!relation) return reader.fail('bad-relation', ['=']);
+  const isParted = reader.take('&') || reader.is(',T');
+  const relation = RELATIONS[reader.token.kind];
+  // `x & x>0`: an expression for each case is no statement.
+  if (!relation && !reader.is('∈∉')) reader.fail(isParted ? 'piecewise' : 'bad-relation =');
+  if (!reader.ahead(/.&/y)) return readRelations(reader, left, start);
+  reader.skip(2);
+  if (!relation) return reader.fail('bad-relation =');
   return { kind: 'relation', left, sign: relation, right: reader.grammar.sum(reader), span: reader.span(start) };
 }
 
-/** `(x>1 and x<2) or ..`: a bracket that holds a relation. */
-function startsGroup(reader: Reader): boolean {
-  if (!reader.is('(')) return false;
-  let depth = 0;
-  for (let at = 0; ; at += 1) {
-    const { kind } = reader.peek(at);
-    if (kind === '(' || kind === '{' || kind === 'set(') depth += 1;
-    if (kind === ')' || kind === '}' || kind === 'set)') depth -= 1;
-    if (depth === 0 || kind === 'end-of-line') return false;
-    if (depth === 1 && (RELATIONS[kind] || kind === 'in' || kind === 'notin')) return true;
-  }
-}
-
-function readGroup(reader: Reader): Line {
-  const { start } = reader.next();
-  const line = reader.inside(readStatements);
-  reader.expect(')', 'missing-bracket', ')');
-  return { ...line, span: reader.span(start) };
-}
-
 function readBareSet(reader: Reader): Line {
-  const { token } = reader;
-  const isPoint = token.kind === '(' && reader.choose('interval');
-  if (isPoint) return readRelations(reader, reader.grammar.sum(reader), token.start);
-  const set = token.kind === '[' && !reader.choose('interval') ? readInterval(reader) : readSet(reader);
+  const { start } = reader.token;
+  const isOther = reader.is('([') && reader.choose('interval');
+  if (isOther && reader.is('(')) return readRelations(reader, reader.grammar.sum(reader), start);
+  const set = reader.is('[') && !isOther ? readInterval(reader) : readSet(reader);
   if (set.kind === 'empty') return { kind: 'none', span: set.span };
-  return { kind: 'membership', letter: null, set, negated: false, span: reader.span(token.start) };
+  return { kind: 'membership', letter: null, set, negated: false, span: reader.span(start) };
 }

@@ -1,47 +1,27 @@
 import type { Line } from './expression.ts';
 import { readName } from './read-arguments.ts';
 import type { Reader } from './reader.ts';
-import type { Token } from './scanner.ts';
 
-const NONE = /^(there (is|are) )?(has )?no (real |valid )?(solutions?|roots?)( exists?)?$|^never true$|^(no|never)$/;
-const ALWAYS = /^(true )?(for )?(all|any|every)( real| values of)*( numbers?)?$|^(is )?always true$/;
-const ALWAYS_LETTER = /^(?:true )?(?:for )?(?:all|any|every)(?: real| values of| numbers?)* ([a-z])$/i;
-const LET = /^(let|put|set|define|where)$/;
+const NONE = /^(there (is|are) )?(has )?no (real |valid )?(solutions?|roots?)( exists?)?$|^never true$|^(no|never)$/i;
+const ALWAYS =
+  /^(?:(?:true )?(?:for )?(?:all|any|every)(?: real| values of| numbers?)*(?: ([a-z]))?|(?:is )?always true)$/i;
 
 /** "no solution", "all real x" and definitions, in a `\text` or as plain words; null where none begins here. */
 export function readSentence(reader: Reader): Line | null {
-  const { token } = reader;
-  if (token.kind === 'forall') return readAlways(reader);
-  if (token.kind !== 'text') return null;
-  const words = normal(token);
-  const named = ALWAYS_LETTER.exec(words);
-  if (named) {
-    reader.next();
-    return { kind: 'always', letter: named[1] ?? null, span: reader.span(token.start) };
-  }
-  const lower = words.toLowerCase();
-  if (NONE.test(lower)) {
-    reader.next();
-    return { kind: 'none', span: reader.span(token.start) };
-  }
-  if (ALWAYS.test(lower)) return readAlways(reader);
-  if (!LET.test(lower)) return reader.fail('text', []);
-  reader.next();
-  return readLet(reader, token.start);
+  const { kind, text, start } = reader.token;
+  if (!reader.take('T∀')) return null;
+  const words = text.replace(/[\s,.:~]+|\\[,;: ]/g, ' ').trim();
+  const always = kind === '∀' ? [] : ALWAYS.exec(words);
+  if (always) return readAlways(reader, start, always[1]);
+  if (NONE.test(words)) return { kind: 'none', span: reader.span(start) };
+  if (/^(let|put|set|define|where)$/i.test(words)) return readLet(reader, start);
+  return reader.fail('text', { start, end: reader.lastEnd });
 }
 
-function normal(token: Token): string {
-  return token.text.replace(/[\s,.:~]+|\\[,;: ]/g, ' ').trim();
-}
-
-/** The letter after "all real", where one is written. */
-function readAlways(reader: Reader): Line {
-  const { start } = reader.next();
-  const letter = reader.is('letter') ? readName(reader) : null;
-  if (reader.is('in') && reader.peek(1).kind === 'number-set') {
-    reader.next();
-    reader.next();
-  }
+/** The letter of "all real x", where one is written. */
+function readAlways(reader: Reader, start: number, named?: string): Line {
+  const letter = named ?? (reader.is('a') ? readName(reader) : null);
+  if (!named) reader.takeAll(/∈ℝ/y);
   return { kind: 'always', letter, span: reader.span(start) };
 }
 
@@ -53,27 +33,22 @@ function readLet(reader: Reader, start: number): Line {
     reader.next();
     do params.push(readName(reader));
     while (reader.take(','));
-    reader.expect(')', 'missing-bracket', ')');
+    reader.expect(')');
   }
-  if (!reader.take('=') && !reader.take(':=')) reader.fail('bad-relation', ['=']);
+  if (!reader.take('=≔')) reader.fail('bad-relation =');
   const value = reader.grammar.sum(reader);
   return { kind: 'definition', name, params, value, span: reader.span(start) };
 }
 
 /** The name that `f(x) = ..` introduces; null where the line is an ordinary statement. */
 export function startsDefinition(reader: Reader): string | null {
-  const { token } = reader;
-  if (token.kind !== 'letter' || reader.functions.includes(token.text) || reader.peek(1).kind !== '(') return null;
-  const param = reader.peek(2);
-  if (param.kind !== 'letter' || param.text === token.text) return null;
-  let at = 3;
-  while (reader.peek(at).kind === ',' && reader.peek(at + 1).kind === 'letter') at += 2;
-  if (reader.peek(at).kind !== ')' || reader.peek(at + 1).kind !== '=') return null;
-  if ('fghFGH'.includes(token.text) || token.text === '\\phi' || token.text === '\\psi') return token.text;
-  if (!'xt'.includes(param.text) || 'abckmnxt'.includes(token.text)) return null;
-  for (let ahead = at + 2; ; ahead += 1) {
-    const { kind, text } = reader.peek(ahead);
-    if (kind === 'end-of-line') return null;
-    if (kind === 'letter' && text === param.text) return reader.choose('definition') ? null : token.text;
-  }
+  const { text } = reader.token;
+  const { length } = reader.ahead(/a\(a(?:,a)*\)=/y);
+  const param = reader.peek(2).text;
+  if (!length || param === text || reader.functions.includes(text)) return null;
+  if (/^(?:[fghFGH]|\\phi|\\psi)$/.test(text)) return text;
+  if (!/^[xt]$/.test(param) || /^[abckmnxt]$/.test(text)) return null;
+  const rest = reader.tokens.slice(reader.index + length);
+  const isUsed = rest.some((token) => token.kind === 'a' && token.text === param);
+  return isUsed && !reader.choose('definition') ? text : null;
 }

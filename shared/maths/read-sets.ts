@@ -1,6 +1,7 @@
 import type { Expr, SetExpr } from './expression.ts';
-import type { Reader } from './reader.ts';
-import type { TokenKind } from './token-table.ts';
+import { groupAhead } from './look-ahead.ts';
+import { readList } from './read-atoms.ts';
+import { numberOf, type Reader } from './reader.ts';
 
 const NUMBER_SETS: Partial<Record<string, 'reals' | 'integers' | 'naturals' | 'rationals' | 'complex'>> = {
   R: 'reals',
@@ -14,156 +15,87 @@ const NUMBER_SETS: Partial<Record<string, 'reals' | 'integers' | 'naturals' | 'r
 /** Sets joined by union, intersection and "without"; two different joins need brackets. */
 export function readSet(reader: Reader): SetExpr {
   const { start } = reader.token;
-  const first = readSimpleSet(reader);
+  const parts = [readSimpleSet(reader)];
+  const [first] = parts;
   const join = reader.token.kind;
-  if (join === 'setminus') {
-    reader.next();
-    const removed = readSimpleSet(reader);
-    if (isJoin(reader.token.kind)) reader.fail('mixed-joins', ['(']);
-    return { kind: 'without', from: first, removed, span: reader.span(start) };
-  }
-  if (join !== 'cup' && join !== 'cap') return first;
-  const parts = [first];
-  while (reader.take(join)) parts.push(readSimpleSet(reader));
-  if (isJoin(reader.token.kind)) reader.fail('mixed-joins', ['(']);
-  return { kind: join === 'cup' ? 'union' : 'intersection', parts, span: reader.span(start) };
-}
-
-function isJoin(kind: TokenKind): boolean {
-  return kind === 'cup' || kind === 'cap' || kind === 'setminus';
+  if (!'∪∩∖'.includes(join)) return first!;
+  while (reader.take(join) && (join !== '∖' || parts.length < 2)) parts.push(readSimpleSet(reader));
+  if (reader.is('∪∩∖')) reader.fail('mixed-joins (');
+  const span = reader.span(start);
+  if (join === '∖') return { kind: 'without', from: first!, removed: parts[1]!, span };
+  return { kind: join === '∪' ? 'union' : 'intersection', parts, span };
 }
 
 function readSimpleSet(reader: Reader): SetExpr {
-  const { token } = reader;
-  switch (token.kind) {
-    case 'set(':
-      return readFinite(reader);
-    case 'empty':
-      reader.next();
-      return { kind: 'empty', span: reader.span(token.start) };
-    case 'number-set':
-      return readNumberSet(reader);
-    case '(':
-    case '[':
-    case ']':
-      return token.kind === '(' && !hasComma(reader, 1) ? readGrouped(reader) : readInterval(reader);
-    default:
-      return reader.fail('bad-set', ['\\{', '(', '[', '\\R']);
-  }
-}
-
-function readGrouped(reader: Reader): SetExpr {
-  reader.next();
-  const set = reader.inside(readSet);
-  reader.expect(')', 'missing-bracket', ')');
-  return set;
-}
-
-function readFinite(reader: Reader): SetExpr {
-  const { start } = reader.next();
-  if (reader.take('set)')) return { kind: 'empty', span: reader.span(start) };
-  const items = reader.inside(() => {
-    const read: Expr[] = [];
-    do read.push(reader.grammar.sum(reader));
-    while (reader.take(',') || reader.take(';'));
-    return read;
-  });
-  reader.expect('set)', reader.is('|') ? 'bad-set' : 'missing-bracket', '\\}');
+  const { start } = reader.token;
+  if (reader.is('([]')) return readBracketed(reader);
+  if (reader.is('ℝ')) return readNumberSet(reader);
+  if (reader.take('∅') || reader.takeAll(/⦃⦄/y)) return { kind: 'empty', span: reader.span(start) };
+  if (!reader.take('⦃')) reader.fail('bad-set \\{ ( [ \\R');
+  const items = reader.inside(readList);
+  reader.expect('⦄', reader.is('|') ? 'bad-set \\}' : 'missing-bracket \\}');
   return { kind: 'finite', items, span: reader.span(start) };
+}
+
+/** An interval, or a bracket around sets. */
+function readBracketed(reader: Reader): SetExpr {
+  if (!reader.is('(') || /[,;]/.test(groupAhead(reader).inner)) return readInterval(reader);
+  reader.next();
+  return reader.enclosed(')', readSet);
 }
 
 function readNumberSet(reader: Reader): SetExpr {
   const { text, start } = reader.next();
-  const signed = (reader.is('^') || reader.is('_')) && signAfter(reader);
-  if (text === 'R' && signed) {
-    const braced = reader.peek(1).kind === '{';
-    const sign = reader.peek(braced ? 2 : 1);
-    for (let count = braced ? 4 : 2; count > 0; count -= 1) reader.next();
-    const zero: Expr = {
-      kind: 'number',
-      numerator: 0n,
-      denominator: 1n,
-      written: 'integer',
-      decimals: 0,
-      span: { start: sign.start, end: sign.end },
-    };
-    const open = { fromClosed: false, toClosed: false, span: reader.span(start) } as const;
-    return sign.kind === '+'
-      ? { kind: 'interval', from: zero, to: null, ...open }
-      : { kind: 'interval', from: null, to: zero, ...open };
-  }
-  return { kind: NUMBER_SETS[text] ?? 'reals', span: reader.span(start) };
-}
-
-function signAfter(reader: Reader): boolean {
-  const { kind } = reader.peek(reader.peek(1).kind === '{' ? 2 : 1);
-  return kind === '+' || kind === '-';
+  const mark = text === 'R' ? reader.ahead(/[_^](?:\{[+-]\}|[+-])/y) : '';
+  if (!mark) return { kind: NUMBER_SETS[text] ?? 'reals', span: reader.span(start) };
+  const zero = numberOf(reader.peek(mark.length > 2 ? 2 : 1), 0n);
+  reader.skip(mark.length);
+  const isPositive = mark.includes('+');
+  return {
+    kind: 'interval',
+    from: isPositive ? zero : null,
+    to: isPositive ? null : zero,
+    fromClosed: false,
+    toClosed: false,
+    span: reader.span(start),
+  };
 }
 
 /** `(a,b]`, `[a;b]` and `]a,b[`. */
 export function readInterval(reader: Reader): SetExpr {
   const open = reader.next();
-  const ends = reader.inside(
-    () => {
-      const from = reader.grammar.sum(reader);
-      if (!reader.take(',') && !reader.take(';')) reader.fail('bad-set', [',']);
-      return { from, to: reader.grammar.sum(reader) };
-    },
-    { reversed: true },
-  );
-  const close = reader.token.kind;
-  if (close !== ')' && close !== ']' && close !== '[') reader.fail('missing-bracket', [')', ']']);
-  reader.next();
-  const from = isInfinite(ends.from, 'minus') ? null : ends.from;
-  const to = isInfinite(ends.to, 'plus') ? null : ends.to;
+  const readEnds = () => {
+    const left = reader.grammar.sum(reader);
+    if (!reader.take(',;')) reader.fail('bad-set ,');
+    return [left, reader.grammar.sum(reader)] as const;
+  };
+  const [left, right] = reader.inside(readEnds, { reversed: true });
+  if (!reader.is(')][')) reader.fail('missing-bracket ) ]');
+  const close = reader.next();
+  const from = isInfinite(left, 'minus') ? null : left;
+  const to = isInfinite(right, 'plus') ? null : right;
   return {
     kind: 'interval',
     from,
     to,
     fromClosed: open.kind === '[' && from !== null,
-    toClosed: close === ']' && to !== null,
+    toClosed: close.kind === ']' && to !== null,
     span: reader.span(open.start),
   };
 }
 
 function isInfinite(expr: Expr, sign: 'plus' | 'minus'): boolean {
   if (expr.kind === 'constant') return expr.name === 'infinity' && sign === 'plus';
-  if (expr.kind !== 'sum' || expr.terms.length !== 1) return false;
-  const [term] = expr.terms;
-  return term?.sign === sign && term.expr.kind === 'constant' && term.expr.name === 'infinity';
+  const [term, more] = expr.kind === 'sum' ? expr.terms : [];
+  return !more && term?.sign === sign && isInfinite(term.expr, 'plus');
 }
-
-/** Is there a comma directly within the bracket that opens here? Bounded by the length of the line. */
-export function hasComma(reader: Reader, ahead: number): boolean {
-  let depth = 0;
-  for (let at = ahead; ; at += 1) {
-    const { kind } = reader.peek(at);
-    if (kind === 'end-of-line') return false;
-    if (depth === 0 && (kind === ',' || kind === ';')) return true;
-    if (OPENING.has(kind)) depth += 1;
-    if (CLOSING.has(kind)) depth -= 1;
-    if (depth < 0) return false;
-  }
-}
-
-const OPENING = new Set<TokenKind>(['(', '[', '{', 'set(', 'floor(', 'ceil(']);
-const CLOSING = new Set<TokenKind>([')', ']', '}', 'set)', 'floor)', 'ceil)']);
 
 /** `[1,2)`, `(-1,3]`, `]a,b[` or a number set at the start of a line: a bare set. */
 export function startsSet(reader: Reader): boolean {
-  const { kind } = reader.token;
-  if (kind === 'set(' || kind === 'empty' || kind === 'number-set' || kind === ']') return true;
-  if (kind !== '(' && kind !== '[') return false;
-  let depth = 0;
-  let commas = 0;
-  for (let at = 0; ; at += 1) {
-    const inner = reader.peek(at).kind;
-    if (inner === 'end-of-line') return false;
-    if (depth === 1 && (inner === ',' || inner === ';')) commas += 1;
-    if (OPENING.has(inner)) depth += 1;
-    if (CLOSING.has(inner)) depth -= 1;
-    if (depth > 0) continue;
-    const after = reader.peek(at + 1).kind;
-    return commas === 1 && (after === 'end-of-line' || isJoin(after) || (inner === ']') !== (kind === '['));
-  }
+  if (reader.is('⦃∅ℝ]')) return true;
+  if (!reader.is('([')) return false;
+  const { inner, end } = groupAhead(reader);
+  const isSquare = reader.is('[');
+  if (!/^[^,;]*[,;][^,;]*$/.test(inner)) return false;
+  return reader.ahead(isSquare ? /[^\]$]|\][$∪∩∖]/y : /\]|[^$][$∪∩∖]/y, end) !== '';
 }

@@ -108,6 +108,10 @@ const ADVICE: Record<ReadErrorCode, (error: ReadError) => readonly [what: string
     `Give each row ${expected[0] ?? 'as many'} entries`,
   ],
   'mixed-joins': () => ['Both “or” and “and” join the statements', 'Put brackets around the ones that belong together'],
+  piecewise: () => [
+    'An expression given case by case is not read',
+    'Write each case as a step of its own, or as statements joined by “or”',
+  ],
   text: ({ found }) => [
     `The words “${found.replace(/^\\[a-z]+\{|\}$/g, '').trim()}” are not read as maths`,
     'Put them into the reason beside the line',

@@ -1,8 +1,8 @@
-import type { ReadErrorCode, ReadSettings, Span } from './expression.ts';
+import type { ReadError, ReadErrorCode, ReadSettings, Span } from './expression.ts';
 import type { TokenKind } from './token-table.ts';
 
 export interface Token {
-  kind: TokenKind;
+  readonly kind: TokenKind;
   /** Digits, the letter or the function in its canonical spelling; the words of a `\text`. */
   text: string;
   start: number;
@@ -10,91 +10,79 @@ export interface Token {
   /** A spacing command such as `\,` stands before it. */
   readonly gap: boolean;
   /** Which of `\left` and `\right` sized it. */
-  readonly side: '' | 'left' | 'right';
+  readonly side: Side;
 }
+
+export type Side = '' | 'left' | 'right';
+
+/** An error's code and, parted by blanks, what was expected. */
+export type Complaint = ReadErrorCode | `${ReadErrorCode} ${string}`;
 
 /** Thrown inside the reader only; `readLine` turns it into a value. */
 export class ReadFailure extends Error {
-  constructor(
-    readonly code: ReadErrorCode,
-    readonly span: Span,
-    readonly found: string,
-    readonly expected: readonly string[],
-  ) {
-    super(code);
+  readonly error: ReadError;
+
+  constructor(complaint: Complaint, source: string, { start, end }: Span) {
+    super(complaint);
+    // The blank in `\to 0` parts nothing.
+    const [code, ...expected] = complaint.split(/ (?!0)/);
+    this.error = { code: code as ReadErrorCode, span: { start, end }, found: source.slice(start, end), expected };
   }
 }
+
+export const BLANKS = /[ \t-\r]*/y;
 
 /** The text being cut into tokens. */
 export class Scanner {
   at = 0;
   gap = false;
-  side: '' | 'left' | 'right' = '';
+  side: Side = '';
   /** A run of four letters or more that names no function. */
   longRun = false;
   /** Closing braces that group nothing. */
   readonly passedOver = new Set<number>();
   readonly tokens: Token[] = [];
+  readonly source: string;
+  readonly settings: ReadSettings;
 
-  constructor(
-    readonly source: string,
-    readonly settings: ReadSettings,
-  ) {}
+  constructor(source: string, settings: ReadSettings) {
+    this.source = source;
+    this.settings = settings;
+  }
 
-  push(kind: TokenKind, text: string, start: number): void {
-    this.tokens.push({ kind, text, start, end: this.at, gap: this.gap, side: this.side });
+  push(kind: TokenKind, text: string, start: number, end = this.at): void {
+    this.tokens.push({ kind, text, start, end, gap: this.gap, side: this.side });
     this.gap = false;
     this.side = '';
   }
 
-  fail(code: ReadErrorCode, start: number, end: number, expected: readonly string[] = []): never {
-    throw new ReadFailure(code, { start, end }, this.source.slice(start, end), expected);
+  fail(complaint: Complaint, start: number, end = this.at): never {
+    throw new ReadFailure(complaint, this.source, { start, end });
   }
 
-  skipBlanks(): void {
-    while (isBlank(this.source.charCodeAt(this.at))) this.at += 1;
+  /** Takes what fits the sticky pattern here; empty where nothing does. */
+  take(pattern: RegExp): string {
+    pattern.lastIndex = this.at;
+    const found = pattern.exec(this.source)?.[0] ?? '';
+    this.at += found.length;
+    return found;
   }
 
-  /** The braced text after a command, without its braces; a single character where there are none. */
+  /** The braced text after a command, without its braces; a single character or command where there are none. */
   rawArgument(): string {
-    this.skipBlanks();
-    const { source } = this;
-    if (source[this.at] !== '{') {
-      const name = source[this.at] === '\\' ? commandName(source, this.at + 1) : '';
-      const start = this.at;
-      this.at += name ? name.length + 1 : 1;
-      return source.slice(start, this.at);
+    this.take(BLANKS);
+    const start = this.at;
+    if (!this.take(/\{/y)) return this.take(/\\(?:[a-zA-Z]+|[^])|[^]/y);
+    for (let depth = 1; depth > 0;) {
+      const piece = this.take(/\\?[^]/y);
+      if (!piece) this.fail('missing-bracket }', start);
+      if (piece === '{') depth += 1;
+      if (piece === '}') depth -= 1;
     }
-    const start = this.at + 1;
-    let depth = 0;
-    for (let at = this.at; at < source.length; at += 1) {
-      const char = source[at];
-      if (char === '\\') at += 1;
-      else if (char === '{') depth += 1;
-      else if (char === '}' && --depth === 0) {
-        this.at = at + 1;
-        return source.slice(start, at);
-      }
-    }
-    return this.fail('missing-bracket', this.at, source.length, ['}']);
+    return this.source.slice(start + 1, this.at - 1);
   }
-}
-
-/** Letters of a command, or its one other character. */
-export function commandName(source: string, from: number): string {
-  let end = from;
-  while (isLetter(source.charCodeAt(end))) end += 1;
-  return source.slice(from, end === from ? from + 1 : end);
-}
-
-export function isDigit(code: number): boolean {
-  return code >= 48 && code <= 57;
 }
 
 export function isLetter(code: number): boolean {
   return (code >= 97 && code <= 122) || (code >= 65 && code <= 90);
-}
-
-export function isBlank(code: number): boolean {
-  return code === 32 || (code >= 9 && code <= 13);
 }

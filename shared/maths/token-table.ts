@@ -1,257 +1,134 @@
-/** What a token is to the grammar; a sign or a bracket is its own kind. */
-export type TokenKind =
-  | 'number'
-  | 'letter'
-  | 'function'
-  | 'log'
-  | 'log2'
-  | 'exp'
-  | 'text'
-  | 'end-of-line'
-  | 'hole'
-  | '+'
-  | '-'
-  | 'pm'
-  | 'mp'
-  | '*'
-  | 'x'
-  | '/'
-  | 'div'
-  | '^'
-  | '_'
-  | '!'
-  | "'"
-  | 'degree'
-  | '%'
-  | 'raised'
-  | '('
-  | ')'
-  | '['
-  | ']'
-  | '{'
-  | '}'
-  | 'set('
-  | 'set)'
-  | '|'
-  | 'open.'
-  | 'close.'
-  | 'floor('
-  | 'floor)'
-  | 'ceil('
-  | 'ceil)'
-  | ','
-  | ';'
-  | '.'
-  | '&'
-  | 'newline'
-  | ':='
-  | ':'
-  | '='
-  | '<'
-  | '>'
-  | '<='
-  | '>='
-  | '!='
-  | 'approx'
-  | 'frac'
-  | 'binom'
-  | 'sqrt'
-  | 'int'
-  | 'sum'
-  | 'prod'
-  | 'lim'
-  | 'to'
-  | 'begin'
-  | 'end'
-  | 'over'
-  | 'accent'
-  | 'infinity'
-  | 'e'
-  | 'i'
-  | 'top'
-  | 'in'
-  | 'notin'
-  | 'cup'
-  | 'cap'
-  | 'setminus'
-  | 'empty'
-  | 'number-set'
-  | 'or'
-  | 'and'
-  | 'forall'
-  | 'implies';
+/**
+ * What a token is to the grammar: one character, so that the kinds of a line can be searched like text. A sign or a
+ * bracket is its own kind, whichever way it was typed; the others are:
+ * `0` number, `a` letter, `e` and `i` constants, `f` function, `l` logarithm, `L` limit, `F` fraction, `C` binomial,
+ * `O` overline, `T` words, `B` and `E` begin and end of an environment, `N` new row, `H` empty box, `²` raised digits,
+ * `⦃` and `⦄` braces of a set, `‹` and `›` a bracket left out with `\left.` and `\right.`, `ℝ` a set of numbers,
+ * `≔` is defined as, `$` end of the line.
+ */
+export type TokenKind = string;
 
-/** One kind a line, then the commands that mean it. */
-const COMMAND_KINDS = String.raw`
-* cdot ast bullet
-x times
-div div
-pm pm
-mp mp
+/**
+ * One kind a line, then the commands and characters that mean it; `a@b`: a means b. The kinds that no token has: `~` a gap,
+ * `S` without meaning, `A` an accent, `M` a letter style, `X` an adornment, `D` blackboard letters, `n` a negated sign,
+ * `h` a space of some width.
+ */
+const ROWS = String.raw`
+* cdot ast bullet · ⋅ ∗
+× times
+÷ div
+± pm
+∓ mp
++
+- − –
 / slash
-= eq
+^ **
+_
+!
+= eq ==
 < lt
 > gt
-<= le leq leqslant
->= ge geq geqslant
-!= ne neq
-approx approx thickapprox
-in in isin
-notin notin
-cup cup
-cap cap
-setminus setminus smallsetminus backslash
-empty varnothing emptyset
-number-set R Z N Q C reals Reals integers naturals
-or lor vee
-and land wedge
-forall forall
-to to rightarrow longrightarrow
-implies Rightarrow implies Longrightarrow Leftrightarrow iff Longleftrightarrow therefore
-infinity infty infin
-e exponentialE
-i imaginaryI imaginaryJ
-degree degree circ
-top top intercal
-' prime
-| vert lvert rvert mid
-set( lbrace {
-set) rbrace }
+≤ le leq leqslant <= ⩽
+≥ ge geq geqslant >= ⩾
+≠ ne neq
+≈ approx thickapprox
+∈ in isin
+∉ notin
+∪ cup
+∩ cap
+∖ setminus smallsetminus backslash
+∅ varnothing emptyset
+ℝ R Z N Q C reals Reals integers naturals ℤ ℕ ℚ ℂ
+∨ or lor vee
+∧ and land wedge
+∀ forall
+→ to rightarrow longrightarrow ->
+⇒ implies Rightarrow Longrightarrow iff Leftrightarrow Longleftrightarrow therefore => ⇔ ∴
+∞ infty infin infinity
+e exponentialE@e
+i imaginaryI@i imaginaryJ@i
+° degree circ
+⊤ top intercal
+' prime ′ ’
+| vert lvert rvert mid ∣
+⦃ lbrace \{
+⦄ rbrace \}
+{
+}
 [ lbrack
 ] rbrack
 ( lparen
 ) rparen
-floor( lfloor
-floor) rfloor
-ceil( lceil
-ceil) rceil
-frac frac dfrac tfrac cfrac
-binom binom dbinom tbinom
-sqrt sqrt
-int int
-sum sum
-prod prod
-lim lim
-log log lg
-log2 lb
-exp exp
-begin begin
-end end
-over overline bar
-accent vec hat tilde mathbf bm boldsymbol
-hole placeholder
-text text mbox textrm textnormal
+⌊ lfloor
+⌋ rfloor
+⌈ lceil
+⌉ rceil
+,
+;
+.
+&
 : colon
-% %
-:= coloneq coloneqq
-newline \ cr`;
+≔ := coloneq coloneqq
+% \%
+F frac dfrac tfrac cfrac
+C binom dbinom tbinom
+√ sqrt
+∫ int
+∑ sum
+∏ prod
+L lim
+l log lg lb
+O overline bar
+B begin
+E end
+N cr \\
+H placeholder
+T text mbox textrm textnormal
+A vec hat tilde mathbf bm boldsymbol
+M mathrm operatorname mathit mathsf textup rm
+X boxed fbox cancel bcancel xcancel underline
+D mathbb
+S $ \! displaystyle textstyle scriptstyle limits nolimits mathstrut strut nonumber
+~ \, \: \; \> quad qquad thinspace enspace enskip medspace thickspace
+h hspace mspace
+n not
+f sin cos tan cot sec csc arcsin arccos arctan arccot arcsec arccsc sinh cosh tanh coth sech csch arsinh arcosh artanh
+f ln exp gcd lcm min max arg det abs sign floor ceil conj Re@re Im@im sgn@sign cosec@csc tg@tan ctg@cot cotan@cot
+f asin@arcsin acos@arccos atan@arctan arcsinh@arsinh arccosh@arcosh arctanh@artanh asinh@arsinh acosh@arcosh atanh@artanh
+a αalpha βbeta γgamma δdelta epsilon εvarepsilon ζzeta ηeta θtheta vartheta ιiota κkappa λlambda μmu νnu ξxi πpi ρrho
+a σsigma varsigma τtau υupsilon phi φvarphi χchi ψpsi ωomega ΓGamma ΔDelta ΘTheta ΛLambda ΞXi ΠPi ΣSigma Upsilon ΦPhi
+a ΨPsi ΩOmega ell hbar ∂partial differentialD@d`;
 
-/** Functions of one or more arguments, by TeX command or plain word. */
-const FUNCTIONS =
-  'sin cos tan cot sec csc arcsin arccos arctan arccot arcsec arccsc sinh cosh tanh coth sech csch arsinh arcosh artanh ' +
-  'ln gcd lcm min max arg det';
-const FUNCTION_NAMES =
-  'cosec=csc tg=tan ctg=cot cotan=cot asin=arcsin acos=arccos atan=arctan arcsinh=arsinh arccosh=arcosh arctanh=artanh ' +
-  'asinh=arsinh acosh=arcosh atanh=artanh abs=abs sgn=sign sign=sign floor=floor ceil=ceil Re=re Im=im conj=conj';
+/** What a command or character is, and the text that its token carries. */
+export interface Entry {
+  readonly kind: TokenKind;
+  readonly text: string;
+}
 
-const GREEK =
-  'alpha beta gamma delta epsilon varepsilon zeta eta theta vartheta iota kappa lambda mu nu xi pi rho sigma varsigma tau ' +
-  'upsilon phi varphi chi psi omega Gamma Delta Theta Lambda Xi Pi Sigma Upsilon Phi Psi Omega ell hbar partial';
+const TABLE = new Map<string, Entry>();
+for (const row of ROWS.trim().split('\n')) {
+  const [kind = '', ...names] = row.split(' ');
+  for (const name of /[a-zA-Z]/.test(kind) ? names : [kind, ...names]) addName(kind, name);
+}
 
-export const SKIPPED = new Set(
-  'displaystyle textstyle scriptstyle limits nolimits mathstrut strut nonumber'.split(' '),
-);
-export const SPACES = new Set(', : ; > quad qquad thinspace enspace enskip medspace thickspace'.split(' '));
-export const LETTER_STYLES = new Set('mathrm operatorname mathit mathsf textup rm'.split(' '));
+function addName(kind: TokenKind, entry: string): void {
+  const [, char = '', name = '', meaning] = /^([^ -~]?)([^@]*)@?(.*)$/.exec(entry)!;
+  const text = meaning || (kind === 'a' ? `\\${name}` : kind === 'ℝ' ? initialOf(name || char) : name);
+  for (const key of [char, name]) if (key) TABLE.set(key, { kind, text });
+}
 
-const FUNCTION_OF = new Map<string, string>();
-for (const name of FUNCTIONS.split(' ')) FUNCTION_OF.set(name, name);
-for (const pair of FUNCTION_NAMES.split(' ')) {
-  const [word = '', name = ''] = pair.split('=');
-  if (name) FUNCTION_OF.set(word, name);
+/** `ℝ`, `R` and `reals` are all the set R. */
+function initialOf(name: string): string {
+  return name.normalize('NFKD').slice(0, 1).toUpperCase();
+}
+
+/** Looks up the letters of a command or a word, `\{` and its like, or a character or two. */
+export function findEntry(name: string): Entry | undefined {
+  return TABLE.get(name);
 }
 
 /** The function that a command or plain word names, if any. */
 export function functionOf(word: string): string | undefined {
-  return FUNCTION_OF.get(word);
+  const entry = TABLE.get(word);
+  return entry?.kind === 'f' ? entry.text : undefined;
 }
-
-/** Command name (no backslash) to its kind. */
-export const COMMANDS: ReadonlyMap<string, TokenKind> = commandTable();
-
-function commandTable(): ReadonlyMap<string, TokenKind> {
-  const table = new Map<string, TokenKind>();
-  for (const entry of COMMAND_KINDS.trim().split('\n')) {
-    const [kind, ...names] = entry.split(' ');
-    for (const name of names) table.set(name, kind as TokenKind);
-  }
-  for (const name of GREEK.split(' ')) table.set(name, 'letter');
-  for (const word of FUNCTION_OF.keys()) table.set(word, 'function');
-  return table;
-}
-
-/** Single characters, typed or pasted, to their kind. */
-export const CHARACTERS: ReadonlyMap<string, TokenKind> = new Map<string, TokenKind>([
-  ...[..."+-*/^_!'()[]{}|,;.&=<>:%"].map((char): [string, TokenKind] => [char, char as TokenKind]),
-  ['×', 'x'],
-  ['·', '*'],
-  ['⋅', '*'],
-  ['∗', '*'],
-  ['÷', 'div'],
-  ['−', '-'],
-  ['–', '-'],
-  ['±', 'pm'],
-  ['∓', 'mp'],
-  ['≤', '<='],
-  ['≥', '>='],
-  ['⩽', '<='],
-  ['⩾', '>='],
-  ['≠', '!='],
-  ['≈', 'approx'],
-  ['∞', 'infinity'],
-  ['°', 'degree'],
-  ['′', "'"],
-  ['’', "'"],
-  ['√', 'sqrt'],
-  ['∫', 'int'],
-  ['∑', 'sum'],
-  ['∏', 'prod'],
-  ['∈', 'in'],
-  ['∉', 'notin'],
-  ['∪', 'cup'],
-  ['∩', 'cap'],
-  ['∖', 'setminus'],
-  ['∅', 'empty'],
-  ['→', 'to'],
-  ['∨', 'or'],
-  ['∧', 'and'],
-  ['∀', 'forall'],
-  ['⇒', 'implies'],
-  ['⇔', 'implies'],
-  ['∴', 'implies'],
-  ['∣', '|'],
-  ['ℝ', 'number-set'],
-  ['ℤ', 'number-set'],
-  ['ℕ', 'number-set'],
-  ['ℚ', 'number-set'],
-  ['ℂ', 'number-set'],
-]);
-
-/** Greek typed as such. */
-export const GREEK_CHARACTERS: ReadonlyMap<string, string> = new Map(
-  [...'αβγδεζηθικλμνξπρστυφχψωΓΔΘΛΞΠΣΦΨΩ∂'].map((char, at) => [
-    char,
-    '\\' +
-      (
-        'alpha beta gamma delta varepsilon zeta eta theta iota kappa lambda mu nu xi pi rho sigma tau upsilon varphi chi psi ' +
-        'omega Gamma Delta Theta Lambda Xi Pi Sigma Phi Psi Omega partial'
-      ).split(' ')[at],
-  ]),
-);
-
-export const RAISED_DIGITS = '⁰¹²³⁴⁵⁶⁷⁸⁹';
-export const VULGAR_FRACTIONS: ReadonlyMap<string, string> = new Map(
-  '½=1/2 ⅓=1/3 ⅔=2/3 ¼=1/4 ¾=3/4 ⅕=1/5 ⅖=2/5 ⅗=3/5 ⅘=4/5 ⅙=1/6 ⅚=5/6 ⅛=1/8 ⅜=3/8 ⅝=5/8 ⅞=7/8'
-    .split(' ')
-    .map((pair): [string, string] => [pair.slice(0, 1), pair.slice(2)]),
-);

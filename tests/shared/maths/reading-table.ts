@@ -43,6 +43,8 @@ export const READINGS: readonly (readonly [tex: string, outline: string])[] = [
   [raw`|a|b|c|`, raw`(* (call abs [a]) b (call abs [c])) ? \left|a\left|b\right|c\right|`],
   [raw`|2|x|-3|`, raw`(* (call abs [2]) x (call abs [(-3)])) ? \left|2\left|x\right|-3\right|`],
   [raw`||x|-5|`, raw`(call abs [(+(call abs [x]) -5)])`],
+  [raw`\left|{x-3}\right|`, raw`(call abs [(+x -3)])`],
+  [raw`2\left|{x-3}\right|^2`, raw`(* 2 (^ (call abs [(+x -3)]) 2))`],
   [raw`\left|x\right|\left|y\right|`, raw`(* (call abs [x]) (call abs [y]))`],
   [raw`\ln|x|+C`, raw`(+(call ln [(call abs [x])]) +C)`],
   [raw`n!`, raw`(factorial n)`],
@@ -362,4 +364,9 @@ export const REFUSALS: readonly (readonly [tex: string, outline: string])[] = [
   [raw`@`, raw`unknown-character 0-1`],
   [raw`x+*y`, raw`missing-operand 2-3 number letter (`],
   [raw`\mathrm{km}`, raw`unknown-command 0-11`],
+  [raw`|x|=\begin{cases}x&x\ge0\\-x&x<0\end{cases}`, raw`piecewise 4-17`],
+  [raw`\begin{cases}x&x\ge0\\-x&x<0\end{cases}`, raw`piecewise 15-16`],
+  [raw`\begin{cases}x,&\text{if }x\ge0\\-x&x<0\end{cases}`, raw`piecewise 14-15`],
+  [raw`\left\{\begin{array}{ll}x&\text{if }x\ge0\\-x&x<0\end{array}\right.`, raw`piecewise 26-36`],
+  [raw`\begin{cases}x\\y\end{cases}`, raw`bad-relation 14-16 =`],
 ];
