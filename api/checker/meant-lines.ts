@@ -6,8 +6,20 @@ type Relation = Extract<Line, { kind: 'relation' }>;
 /** Reads lines in the light of those before them, where the line by itself leaves open what it says. */
 export function readInPlace(line: Line, tex: string, before: readonly Line[]): Line {
   if (line.kind !== 'any' && line.kind !== 'all' && line.kind !== 'relation') return line;
-  return joinTogether(numberedValues(line, before), tex, before);
+  return joinApart(joinTogether(numberedValues(line, before), tex, before), tex, before);
 }
+
+/** `x-2=0, x+2=0` after a line: equations of one letter are its cases, where nothing says that they hold together. */
+function joinApart(line: Line, tex: string, before: readonly Line[]): Line {
+  if (line.kind !== 'all' || before.length === 0 || saysTogether.test(tex)) return line;
+  if (line.parts.some((part) => part.kind !== 'relation' || part.sign !== '=')) return line;
+  const letters = new Set(line.parts.flatMap((part) => lettersOf(part)));
+  return letters.size === 1 && before.some((other) => lettersOf(other).includes([...letters][0] as string))
+    ? { ...line, kind: 'any' }
+    : line;
+}
+
+const saysTogether = /\\text|\\mathrm|\\land|\\wedge|\\begin|\\&|\band\b/;
 
 /**
  * `y=x^2, y=x+2` may list two values of y or state two equations. It is a system where it is given, stands in a cases
@@ -16,7 +28,8 @@ export function readInPlace(line: Line, tex: string, before: readonly Line[]): L
 function joinTogether(line: Line, tex: string, before: readonly Line[]): Line {
   if (line.kind !== 'any' || /\\text|\\lor|\\vee|\\pm|\bor\b/.test(tex)) return line;
   const saysWithLetters = line.parts.every(
-    (part) => part.kind === 'relation' && part.sign === '=' && part.left.kind === 'letter' && lettersOf(part.right).length > 0,
+    (part) =>
+      part.kind === 'relation' && part.sign === '=' && part.left.kind === 'letter' && lettersOf(part.right).length > 0,
   );
   if (!saysWithLetters || new Set(line.parts.map((part) => JSON.stringify(lettersOfLeft(part)))).size > 1) return line;
   const above = before[before.length - 1];
@@ -48,4 +61,18 @@ function numberedLetter(part: Line): string | null {
   if (part.sign !== '=' && part.sign !== 'approx') return null;
   const name = /^([A-Za-z])_(?:\d|\{\d(?:,\d)+\})$/.exec(part.left.name)?.[1] ?? null;
   return name !== null && !lettersOf(part.right).some((other) => other.startsWith(name)) ? name : null;
+}
+
+const RELATION = /[=<>]|\\(?:le|ge|ne|leq|geq|neq|approx|in)(?![a-zA-Z])/;
+
+/** `x=0\quad x=-1`: a wide blank between two statements parts them as a comma does. Places in the text stay. */
+export function partWideBlanks(tex: string): string {
+  if (!tex.includes('quad')) return tex;
+  return tex.replace(/\\q?quad(?![a-zA-Z])/g, (blank, at: number) => {
+    const before = tex.slice(0, at).trimEnd();
+    const after = tex.slice(at + blank.length).trimStart();
+    const isParted = /(?:[,;:&]|\\(?:text|mathrm)\{[^}]*\})$/.test(before) || !/^[-+0-9a-zA-Z\\{]/.test(after);
+    if (isParted || /^\\(?:text|mathrm|lor|land|vee|wedge|q?quad|[LR]|imp|iff|to)/.test(after)) return blank;
+    return RELATION.test(before) && RELATION.test(after) ? `,${' '.repeat(blank.length - 1)}` : blank;
+  });
 }

@@ -3,7 +3,7 @@ import { lettersOf } from '../../shared/maths/letters.ts';
 import { readLine } from '../../shared/maths/read.ts';
 import { childrenOf, exprsOf } from '../../shared/maths/walk.ts';
 import { nameRates, usualVariable } from './calculus/name-rates.ts';
-import { readInPlace } from './meant-lines.ts';
+import { partWideBlanks, readInPlace } from './meant-lines.ts';
 import type { DerivationInput } from '../../shared/schemas/verdict.ts';
 
 /** A line as it was read, or why it could not be. */
@@ -14,6 +14,8 @@ export type ReadResult =
 export interface ReadDerivation {
   readonly lines: readonly ReadResult[];
   readonly assumptions: readonly Line[];
+  /** False where an assumption could not be read: then nothing is certain to fail. */
+  readonly knowsAssumptions: boolean;
   readonly numbers: 'real' | 'complex';
   readonly wholeLetters: ReadonlySet<string>;
   readonly settings: ReadSettings;
@@ -27,7 +29,7 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
   const defined = new Set<string>();
   const by = usualVariable(input.lines);
   const read = (tex: string): ReadResult => {
-    const reading = readLine(tex, { numbers, decimal, functions: [...functions] });
+    const reading = readLine(partWideBlanks(tex), { numbers, decimal, functions: [...functions] });
     if (!reading.ok) return { ok: false, tex, error: reading.error };
     for (const name of functionsIn(reading.line)) functions.push(name);
     for (const name of definedIn(reading.line)) defined.add(name);
@@ -52,6 +54,7 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
   return {
     lines,
     assumptions,
+    knowsAssumptions: assumptions.length === assumed.length,
     numbers,
     wholeLetters,
     settings: { numbers, decimal, functions },

@@ -45,20 +45,20 @@ function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: W
   const before: WalkState[] = [];
   let state = startWalk(route);
   for (let step = 1; step < lines.length; step += 1) {
-    const result = lines[step];
+    const line = lines[step];
     before[step] = state;
     watch.onStep?.(step);
-    if (result?.ok && watch.timedOut?.includes(step)) {
+    if (line?.ok && watch.timedOut?.includes(step)) {
       rulings.push(undecided('time'));
-      state = passStep(state, result.line);
+      state = passStep(state, line.line);
       continue;
     }
-    if (!result?.ok) {
+    if (!line?.ok) {
       rulings.push(notReadResult(route.read, step));
       state = skipLine(state);
       continue;
     }
-    const found = judgeLine(route, state, step, result.line);
+    const found = judgeLine(route, state, step, line.line);
     if (found.result.evidence.reason === 'not-read') {
       rulings.push(notReadResult(route.read, step));
       state = found.state;
@@ -68,11 +68,17 @@ function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: W
       found.result.ruling === 'fails'
         ? (joinCases(route, state, step, found) ?? putBrackets(route, state, step, found))
         : null;
-    rulings.push(...(better ? better.results : [found.result]));
+    const results = better ? better.results : [found.result];
+    rulings.push(...results.map((result) => (isCertain(result, route) ? result : undecided('not-read'))));
     state = better ? better.state : found.state;
     if (better) step += better.results.length - 1;
   }
   return { rulings, last: state, before };
+}
+
+/** A loss may be what an assumption shuts out that could not be read. */
+function isCertain({ ruling }: StepResult, { read }: Route): boolean {
+  return ruling !== 'fails' || read.knowsAssumptions;
 }
 
 /** The step to a line that was not read, or from one, carries the error with its place. */

@@ -25,15 +25,7 @@ import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import { valueTex } from '../values/value-tex.ts';
 import type { KnownValue } from '../values/value.ts';
 import { substitute } from './solve-system.ts';
-import {
-  differenceExpr,
-  minusExpr,
-  numberExpr,
-  powerExpr,
-  productExpr,
-  quotientExpr,
-  sumExpr,
-} from './build-expr.ts';
+import { differenceExpr, minusExpr, numberExpr, powerExpr, productExpr, quotientExpr, sumExpr } from './build-expr.ts';
 import { judgeSameEquation } from './same-equation.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 

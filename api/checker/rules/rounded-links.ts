@@ -29,10 +29,19 @@ export function judgeRoundedLinks(
   let result: StepResult = holds('proved');
   for (const [k, member] of members.entries()) {
     const isAbout = signs[k] === 'approx';
-    const link = !isAbout && !current.isRounded ? judgeLinks(current.expr, [member], context) : judgeLink(current, member, isAbout, context);
-    current = isAbout || current.isRounded ? { ...current, expr: member, isRounded: true } : { expr: member, exact: member, isRounded: false };
+    const link =
+      !isAbout && !current.isRounded
+        ? judgeLinks(current.expr, [member], context)
+        : judgeLink(current, member, isAbout, context);
+    current =
+      isAbout || current.isRounded
+        ? { ...current, expr: member, isRounded: true }
+        : { expr: member, exact: member, isRounded: false };
     if (result.ruling === 'holds') {
-      result = link.ruling === 'holds' || members.length === 1 ? link : { ...link, evidence: { ...link.evidence, link: k + 1 } };
+      result =
+        link.ruling === 'holds' || members.length === 1
+          ? link
+          : { ...link, evidence: { ...link.evidence, link: k + 1 } };
     }
   }
   return { result, last: current };
@@ -58,7 +67,9 @@ const places: readonly Rational[] = [rational(2), rational(3), rational(7, 2), r
 
 function placesFor(letters: readonly string[]): ReadonlyMap<string, Rational>[] {
   if (letters.length === 0) return [new Map()];
-  return places.map((_, k) => new Map(letters.map((name, j) => [name, places[(k + 2 * j) % places.length] as Rational])));
+  return places.map(
+    (_, k) => new Map(letters.map((name, j) => [name, places[(k + 2 * j) % places.length] as Rational])),
+  );
 }
 
 function namesOf(given: ReadonlyMap<string, Rational>): Record<string, string> {

@@ -57,7 +57,12 @@ function asPoint({ below, known, context }: StatementQuestion): Statement | null
   if (letters.length !== 2 || !from || !to || fromClosed || toClosed) return null;
   return {
     kind: 'all',
-    parts: [from, to].map((right, k) => ({ kind: 'compare', left: letterExpr(letters[k] as string), sign: '=', right })),
+    parts: [from, to].map((right, k) => ({
+      kind: 'compare',
+      left: letterExpr(letters[k] as string),
+      sign: '=',
+      right,
+    })),
   };
 }
 

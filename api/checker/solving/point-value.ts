@@ -63,7 +63,9 @@ function isSharp(at: RealNumber, bits: number): boolean {
 function mayBeTiny(graph: Graph, letter: string, at: RealNumber, given: Assignment, context: CheckContext): boolean {
   const nodes = graph.nodes.slice(0, graph.root + 1);
   const longBits = 1n << 100n;
-  if (nodes.some((node) => node.op === 'number' && (node.value.den > longBits || magnitude(node.value.num) > longBits))) {
+  if (
+    nodes.some((node) => node.op === 'number' && (node.value.den > longBits || magnitude(node.value.num) > longBits))
+  ) {
     return true;
   }
   const point = new Map<string, KnownValue>([[letter, toKnownValue(at, wideBits)]]);

@@ -29,9 +29,7 @@ export interface MemberStatement {
 export function toStatement(line: Line): Statement | null {
   switch (line.kind) {
     case 'relation':
-      return withChoices([line.left, line.right], ([left, right]) =>
-        toCompare(left as Expr, line.sign, right as Expr),
-      );
+      return withChoices([line.left, line.right], ([left, right]) => toCompare(left as Expr, line.sign, right as Expr));
     case 'chain':
       return withChoices(line.members, (members) => toLinks(members, line.signs));
     case 'any':

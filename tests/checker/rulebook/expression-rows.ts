@@ -153,7 +153,11 @@ export const expressionRows: readonly Row[] = [
   ['1', tex`\sin\frac{\pi}{3} ;; \frac{1}{2}`, 1],
   ['1', tex`\cos\frac{5\pi}{6} ;; -\frac{\sqrt{3}}{2}`, null],
   ['1', tex`\tan\frac{3\pi}{4} ;; 1`, 1],
-  ['1', tex`\sin 75^\circ ;; \sin 45^\circ\cos 30^\circ+\cos 45^\circ\sin 30^\circ ;; \frac{\sqrt{6}+\sqrt{2}}{4}`, null],
+  [
+    '1',
+    tex`\sin 75^\circ ;; \sin 45^\circ\cos 30^\circ+\cos 45^\circ\sin 30^\circ ;; \frac{\sqrt{6}+\sqrt{2}}{4}`,
+    null,
+  ],
   ['1', tex`\cos 15^\circ ;; \frac{\sqrt{6}+\sqrt{2}}{4}`, null],
   ['1', tex`\sin^{-1}\frac{1}{2} ;; \frac{\pi}{6}`, null],
   ['1', tex`\arcsin x+\arccos x ;; \frac{\pi}{2}`, null],

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { checkDerivation } from '../../../api/checker/rule-derivation.ts';
-import { collegeRows } from './college-rows.ts';
+import { collegeRows, joinedRows } from './college-rows.ts';
 import { closeRows, equationRows, roundingRows } from './equation-rows.ts';
 import { expressionRows } from './expression-rows.ts';
 import { formulaRows } from './formula-rows.ts';
@@ -22,10 +22,11 @@ const tables: Record<string, readonly Row[]> = {
   definitions: definitionRows,
   'goals, settings, calculus, matrices': otherRows,
   'whole derivations': collegeRows,
+  'joined statements': joinedRows,
 };
 
 describe.each(Object.entries(tables))('the rules on %s', (_, rows) => {
-  it.each(rows)('rule %s: %s', (...row) => {
+  it.each(rows.map((row) => [row[0], row[1], row] as const))('rule %s: %s', (_rule, _lines, row) => {
     const [, , ruling, options = {}] = row;
     const { assume = [], settings = {}, uses, note } = options;
     const verdict = checkDerivation({ lines: linesOf(row), assume, settings, ...(uses ? { uses } : {}) });

@@ -8,10 +8,26 @@ export const systemRows: readonly Row[] = [
   ['6a', tex`x+y=7,\ x-y=1 ;; 2y=8 ;; y=4 ;; x=3`, 1],
   ['6a', tex`y=2x-1,\ 3x+y=9 ;; 3x+2x-1=9 ;; 5x=10 ;; x=2 ;; y=3`, null],
   ['6a', tex`y=2x-1,\ 3x+y=9 ;; 3x+2x+1=9 ;; 5x=8 ;; x=\frac{8}{5}`, 1],
-  ['6a', tex`\begin{cases}2x+3y=8\\x-2y=-3\end{cases} ;; x=2y-3 ;; 2(2y-3)+3y=8 ;; 7y-6=8 ;; y=2 ;; x=1 ;; x=1\text{ and }y=2`, null],
-  ['6a', tex`\begin{cases}2x+3y=8\\x-2y=-3\end{cases} ;; x=2y-3 ;; 2(2y-3)+3y=8 ;; 4y-3+3y=8 ;; 7y=11 ;; y=\frac{11}{7}`, 3],
-  ['6a', tex`\begin{cases}2x+3y=8\\x-2y=-3\end{cases} ;; \begin{cases}2x+3y=8\\2x-4y=-6\end{cases} ;; 7y=14 ;; y=2 ;; x=1`, null],
-  ['6a', tex`\begin{cases}2x+3y=8\\x-2y=-3\end{cases} ;; \begin{cases}2x+3y=8\\2x-4y=-6\end{cases} ;; -y=14 ;; y=-14`, 2],
+  [
+    '6a',
+    tex`\begin{cases}2x+3y=8\\x-2y=-3\end{cases} ;; x=2y-3 ;; 2(2y-3)+3y=8 ;; 7y-6=8 ;; y=2 ;; x=1 ;; x=1\text{ and }y=2`,
+    null,
+  ],
+  [
+    '6a',
+    tex`\begin{cases}2x+3y=8\\x-2y=-3\end{cases} ;; x=2y-3 ;; 2(2y-3)+3y=8 ;; 4y-3+3y=8 ;; 7y=11 ;; y=\frac{11}{7}`,
+    3,
+  ],
+  [
+    '6a',
+    tex`\begin{cases}2x+3y=8\\x-2y=-3\end{cases} ;; \begin{cases}2x+3y=8\\2x-4y=-6\end{cases} ;; 7y=14 ;; y=2 ;; x=1`,
+    null,
+  ],
+  [
+    '6a',
+    tex`\begin{cases}2x+3y=8\\x-2y=-3\end{cases} ;; \begin{cases}2x+3y=8\\2x-4y=-6\end{cases} ;; -y=14 ;; y=-14`,
+    2,
+  ],
   ['6a', tex`\begin{cases}x+y=3\\2x+2y=6\end{cases} ;; 0=0`, null],
   ['6a', tex`\begin{cases}x+y=3\\2x+2y=8\end{cases} ;; \text{no solution}`, null],
   ['6a', tex`\begin{cases}x+y=3\\x-y=1\end{cases} ;; \text{no solution}`, 1],
@@ -19,12 +35,28 @@ export const systemRows: readonly Row[] = [
   ['6a', tex`\begin{cases}x+y=3\\x-y=1\end{cases} ;; x=1\text{ and }y=2`, 1],
   ['6e', tex`\begin{cases}x+y=3\\x-y=1\end{cases} ;; 2x=4 ;; x=2`, null],
   // Three letters.
-  ['6a', tex`\begin{cases}x+y+z=6\\x-y+z=2\\2x+y-z=1\end{cases} ;; 2y=4 ;; y=2 ;; x+z=4,\ 2x-z=-1 ;; 3x=3 ;; x=1 ;; z=3 ;; x=1,\ y=2,\ z=3`, null],
-  ['6a', tex`\begin{cases}x+y+z=6\\x-y+z=2\\2x+y-z=1\end{cases} ;; 2y=4 ;; y=2 ;; x+z=4,\ 2x-z=1 ;; 3x=5 ;; x=\frac{5}{3}`, 3],
+  [
+    '6a',
+    tex`\begin{cases}x+y+z=6\\x-y+z=2\\2x+y-z=1\end{cases} ;; 2y=4 ;; y=2 ;; x+z=4,\ 2x-z=-1 ;; 3x=3 ;; x=1 ;; z=3 ;; x=1,\ y=2,\ z=3`,
+    null,
+  ],
+  [
+    '6a',
+    tex`\begin{cases}x+y+z=6\\x-y+z=2\\2x+y-z=1\end{cases} ;; 2y=4 ;; y=2 ;; x+z=4,\ 2x-z=1 ;; 3x=5 ;; x=\frac{5}{3}`,
+    3,
+  ],
   ['6a', tex`\begin{cases}x+y+z=6\\x-y+z=2\\2x+y-z=1\end{cases} ;; x=1,\ y=2,\ z=4`, 1],
-  ['6a', tex`\begin{cases}2x-y+z=3\\x+2y-z=2\\3x+y+2z=11\end{cases} ;; 3x+y=5 ;; 5x+5y=15 ;; x+y=3 ;; x=1,\ y=2 ;; z=3`, null],
+  [
+    '6a',
+    tex`\begin{cases}2x-y+z=3\\x+2y-z=2\\3x+y+2z=11\end{cases} ;; 3x+y=5 ;; 5x+5y=15 ;; x+y=3 ;; x=1,\ y=2 ;; z=3`,
+    null,
+  ],
   // Nonlinear.
-  ['6a', tex`y=x^2,\ y=x+2 ;; x^2=x+2 ;; x^2-x-2=0 ;; (x-2)(x+1)=0 ;; x=2\text{ or }x=-1 ;; (x=2\text{ and }y=4)\text{ or }(x=-1\text{ and }y=1)`, null],
+  [
+    '6a',
+    tex`y=x^2,\ y=x+2 ;; x^2=x+2 ;; x^2-x-2=0 ;; (x-2)(x+1)=0 ;; x=2\text{ or }x=-1 ;; (x=2\text{ and }y=4)\text{ or }(x=-1\text{ and }y=1)`,
+    null,
+  ],
   ['6a', tex`y=x^2,\ y=x+2 ;; x^2=x+2 ;; x^2-x-2=0 ;; (x-2)(x+1)=0 ;; x=2\text{ or }x=-1`, null],
   ['6a', tex`y=x^2,\ y=x+2 ;; x^2=x+2 ;; x^2+x-2=0 ;; (x+2)(x-1)=0`, 2],
   ['6a', tex`x^2+y^2=25,\ x+y=7 ;; y=7-x ;; x^2+(7-x)^2=25 ;; 2x^2-14x+24=0 ;; x^2-7x+12=0 ;; x=3\text{ or }x=4`, null],
