@@ -1,6 +1,6 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
-import { childrenOf, mapExpr } from '../../../shared/maths/walk.ts';
+import { childrenOf, mapExpr, countNodes } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
@@ -76,7 +76,7 @@ function written(expr: Expr, letter: string, context: CheckContext): Expr {
 const deepest = 4;
 
 function integrate(expr: Expr, letter: string, context: CheckContext, depth: number): Expr | null {
-  context.budget.spend(20);
+  context.budget.spend(20 + 4 * countNodes(expr));
   if (depth > deepest) return null;
   if (isFree(expr, letter)) return mulExprs(expr, letterOf(letter));
   if (expr.kind === 'sum') {

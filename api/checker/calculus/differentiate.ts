@@ -42,7 +42,7 @@ export function differentiate(expr: Expr, variable: string, context: CheckContex
   const scope: Scope = { variable, context, partial, isConstant: constantTest(variable, context, partial) };
   const visit = (node: Expr): Expr => {
     if ((spent += 1) > mostNodes) throw new Unsettled('limit');
-    if ((spent & 63) === 0) context.budget.spend(16);
+    if ((spent & 63) === 0) context.budget.spend(64);
     return scope.isConstant(node) ? zeroExpr : rule(node, scope, visit);
   };
   const result = visit(expr);

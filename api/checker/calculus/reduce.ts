@@ -1,7 +1,7 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
-import { childrenOf, mapExpr } from '../../../shared/maths/walk.ts';
+import { childrenOf, countNodes, mapExpr } from '../../../shared/maths/walk.ts';
 import type { CheckContext } from '../context.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { isKnown } from '../values/arithmetic.ts';
@@ -24,6 +24,7 @@ export function reduceCalculus(expr: Expr, context: CheckContext): Expr | null {
   if (known && !known.has(context.definitions)) known.set(context.definitions, memory);
   const found = memory.get(expr);
   if (found !== undefined) return found;
+  context.budget.spend(8 + 2 * countNodes(expr));
   const result = attempt(expr, context);
   memory.set(expr, result);
   return result;

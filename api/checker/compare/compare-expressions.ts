@@ -26,6 +26,7 @@ export function compareExpressions(above: Expr, below: Expr, context: CheckConte
 }
 
 function compareWithin(above: Expr, below: Expr, context: CheckContext): Comparison {
+  context.budget.spend(24);
   const { builder, roots } = lowerAll([above, below], context);
   const [first, second] = roots;
   if (first === undefined || second === undefined) return { kind: 'undecided', reason: 'not-covered' };

@@ -166,9 +166,9 @@ function calculusValue(expr: CalculusExpr, at: Place): Complex {
       );
     }
     case 'integral':
-      return integralValue(expr, at);
+      return estimateCost(expr) > mostNested ? missing : integralValue(expr, at);
     case 'series':
-      return seriesValue(expr, at);
+      return estimateCost(expr) > mostNested ? missing : seriesValue(expr, at);
     case 'apply': {
       const own = at.definitions.functions.get(expr.name);
       if (!own || expr.primes > 0 || own.params.length !== expr.args.length) return missing;
@@ -213,6 +213,9 @@ function derivativeValue({ operand, variable }: Extract<Expr, { kind: 'derivativ
   const derived = derive(operand, variable);
   return derived ? estimate(derived, at) : missing;
 }
+
+/** Sums within sums and integrals within integrals take too long from here on, in nodes. */
+const mostNested = 20_000;
 
 function moved(at: Place, letter: string, value: Complex): Place {
   return { ...at, letters: new Map(at.letters).set(letter, value) };

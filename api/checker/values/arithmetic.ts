@@ -188,10 +188,10 @@ export function powKnown(a: KnownValue, exponent: number, bits: number): Value {
   }
   if (a.kind === 'gaussian' && Math.abs(exponent) <= 64) return powBySquares(a, exponent, bits);
   const ball = toBall(a, bits);
-  if (ball.im !== null) return powBySquares(ball, exponent, bits);
   // A number beyond that is of no use to anybody and costs much to hold.
-  const size = Q.bitLength(ball.re.mid) - bits;
+  const size = Math.max(Q.bitLength(ball.re.mid), ball.im ? Q.bitLength(ball.im.mid) : 0) - bits;
   if (Math.abs(size * exponent) > largestPowerBits) return unknown('limit');
+  if (ball.im !== null) return powBySquares(ball, exponent, bits);
   const result = powBall(ball.re, exponent, bits);
   return result === null ? unknown('precision') : fromBall(result);
 }

@@ -52,6 +52,8 @@ export function evaluateNodes(nodes: readonly GraphNode[], point: Point, bits: n
     const value = evaluateNode(node, values, point, field, context);
     values.push(value);
     cost += costOf(node) + costOfSize(value);
+    // The steps of a root's approximation are as long as what is under it.
+    if (node.op === 'root') cost += 8 * costOfSize(values[node.args[0]] ?? value);
   }
   context.budget.spend(Math.ceil((cost * bits * bits) / 2_000_000) + (nodes.length >> 4));
   return values;

@@ -64,6 +64,9 @@ export interface GraphBuilder {
 const foldBits = 2_000;
 /** Longer fractions are left in parts: their common denominators would cost more than they tell. */
 const longest = 1n << 600n;
+/** The same in sums and products of many numbers, such as the written-out sum of 1/k^2. */
+const longestOfMany = 1n << 96n;
+const many = 60;
 const largestExponent = 1_000_000;
 
 /** Room for 2^17 nodes and exponents up to 2^21 in a double. */
@@ -146,12 +149,13 @@ export function createGraphBuilder(onPush: () => void): GraphBuilder {
     const join = op === 'add' ? Q.add : Q.mul;
     const neutral = op === 'add' ? Q.zero : Q.one;
     let total = neutral;
+    const most = args.length > many ? longestOfMany : longest;
     const rest: number[] = [];
     for (const arg of args) {
       const value = valueOf(arg);
       if (value === null) rest.push(arg);
       else total = join(total, value);
-      if (total.den > longest || total.num > longest || total.num < -longest) {
+      if (total.den > most || total.num > most || total.num < -most) {
         rest.push(push({ op: 'number', args: [], value: total }));
         total = neutral;
       }

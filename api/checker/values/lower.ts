@@ -25,9 +25,10 @@ interface Lowering {
 /** Adds the meaning of expressions to one graph; the answer holds the index of each. */
 export function lowerAll(exprs: readonly Expr[], context: CheckContext): { builder: GraphBuilder; roots: number[] } {
   let pushed = 0;
+  context.budget.spend(12);
   const builder = createGraphBuilder(() => {
     pushed += 1;
-    if ((pushed & 63) === 0) context.budget.spend(8);
+    if ((pushed & 63) === 0) context.budget.spend(32);
   });
   const lowering: Lowering = { builder, context, bound: nothingBound, open: noNames, nesting: { depth: 0 } };
   return { builder, roots: exprs.map((expr) => lower(expr, lowering)) };
@@ -246,6 +247,7 @@ function lowerSeries(expr: SeriesExpr, at: Lowering): number {
     if (high.num - low.num >= BigInt(maximumTerms)) return lowerReduced(expr, at, 'limit');
     const terms: number[] = [];
     for (let k = low.num; k <= high.num; k += 1n) {
+      at.context.budget.spend(1);
       const bound = new Map(at.bound).set(expr.index, at.builder.number({ num: k, den: 1n }));
       terms.push(lower(expr.body, { ...at, bound }));
     }
