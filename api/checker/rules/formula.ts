@@ -3,7 +3,9 @@ import { rational, type Rational } from '../numbers/rational.ts';
 import type { Assignment } from '../solving/fraction.ts';
 import { isEmptySet } from '../solving/real-set.ts';
 import { solveDefined, type SolveEnv } from '../statements/solve.ts';
-import { comparesOf, isLetter, type Statement } from '../statements/statement.ts';
+import { comparesOf, exprsOfStatement, isLetter, type Statement } from '../statements/statement.ts';
+import { fromRational, isKnown } from '../values/arithmetic.ts';
+import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
@@ -126,10 +128,22 @@ function judgeAt(question: FormulaQuestion, given: Assignment): OneLetterAnswer 
     hints: [],
     families: question.families,
   };
-  const hasValue = (statement: Statement): boolean => !isEmptySet(solveDefined(statement, env));
+  const hasValue = (statement: Statement): boolean =>
+    hasValueNearby(statement, env) || !isEmptySet(solveDefined(statement, env));
   if (!hasValue(question.above)) return 'no-value';
   if (!hasValue(question.below)) return 'no-value-below';
   return judgeOneLetter({ ...question, given });
+}
+
+const nearby: readonly Rational[] = [rational(2, 3), rational(-5, 7), rational(17, 5)];
+
+/** Whether a line has a value at one of a few places: most have, and then need not be looked at more closely. */
+function hasValueNearby(statement: Statement, env: SolveEnv): boolean {
+  const exprs = exprsOfStatement(statement);
+  return nearby.some((place) => {
+    const point = new Map([...env.given, [env.letter, place] as const].map(([n, value]) => [n, fromRational(value)]));
+    return exprs.every((expr) => isKnown(evaluatePrepared(prepare(expr, env.context), point, 96, env.context)));
+  });
 }
 
 const values: readonly Rational[] = [

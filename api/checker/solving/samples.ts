@@ -53,6 +53,9 @@ export function findCrossings(f: (x: number) => number, positions: readonly numb
 
 function isLowest(a: number, b: number, c: number): boolean {
   if (b === 0) return a !== 0 && c !== 0;
+  // Where doubles do not change any more the function runs level, as exponentials far out: nothing is touched there.
+  const flat = 1e-12 * Math.abs(b);
+  if (Math.abs(a - b) <= flat && Math.abs(c - b) <= flat) return false;
   return Math.abs(b) <= Math.abs(a) && Math.abs(b) <= Math.abs(c) && Math.sign(a) === Math.sign(c);
 }
 
