@@ -13,14 +13,17 @@ import { MendSection } from '../features/verdict/mend-section.tsx';
 import { MendVerdict } from '../features/verdict/mend-verdict.tsx';
 import { TeacherDerivationView } from '../features/verdict/teacher-derivation.tsx';
 import { answerQuestion, contestVerdict, overrule } from '../features/verdict/verdict.queries.ts';
+import { ApiProblem } from '../lib/api.ts';
 import { Page } from '../ui/page.tsx';
 import { ErrorState, Waiting } from '../ui/states.tsx';
 import { ZoneProvider } from '../ui/time.tsx';
+import { NotFound } from './not-found.tsx';
 
 /** A derivation: to its author with findings to answer, then the verdict and the mend; to the teacher from both sides. */
 export function Component() {
   const { derivationId = '' } = useParams();
   const derivation = useQuery(derivationQuery(derivationId));
+  if (derivation.error instanceof ApiProblem && derivation.error.type === 'not-found') return <NotFound />;
   if (!derivation.data) {
     return (
       <Page>

@@ -7,14 +7,17 @@ import { ReviewDone } from '../features/reviews/review-done.tsx';
 import { ReviewHead } from '../features/reviews/review-head.tsx';
 import { contestPoints, reviewQuery } from '../features/reviews/reviews.queries.ts';
 import { ReviewerResult } from '../features/verdict/reviewer-result.tsx';
+import { ApiProblem } from '../lib/api.ts';
 import { Page } from '../ui/page.tsx';
 import { ErrorState, Waiting } from '../ui/states.tsx';
 import { ZoneProvider } from '../ui/time.tsx';
+import { NotFound } from './not-found.tsx';
 
 /** One review: the desk while reviewing is open, what was handed in until settling, the result after it. */
 export function Component() {
   const { reviewId = '' } = useParams();
   const review = useQuery(reviewQuery(reviewId));
+  if (review.error instanceof ApiProblem && review.error.type === 'not-found') return <NotFound />;
   if (!review.data) {
     return (
       <Page work>

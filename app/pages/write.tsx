@@ -3,14 +3,17 @@ import { useParams } from 'react-router-dom';
 import { viewerQuery } from '../features/people/viewer.queries.ts';
 import { Sheet } from '../features/sheet/sheet.tsx';
 import { sheetQuery } from '../features/sheet/sheet.queries.ts';
+import { ApiProblem } from '../lib/api.ts';
 import { Page } from '../ui/page.tsx';
 import { ErrorState, Waiting } from '../ui/states.tsx';
+import { NotFound } from './not-found.tsx';
 
 /** The author's own sheet in a round. */
 export function Component() {
   const { roundId = '' } = useParams();
   const viewer = useQuery(viewerQuery);
   const sheet = useQuery(sheetQuery(roundId));
+  if (sheet.error instanceof ApiProblem && sheet.error.type === 'not-found') return <NotFound />;
   if (sheet.data && viewer.data) {
     // A sheet taken back is written on anew.
     const state = sheet.data.handedIn ? 'handed-in' : 'open';
