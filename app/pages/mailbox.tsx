@@ -45,7 +45,7 @@ export function Component() {
         {mailbox.data && letters.length === 0 ? (
           <EmptyState title="No letters yet">Invite somebody, or ask for a new password.</EmptyState>
         ) : null}
-        <div className="grid gap-10 md:grid-cols-[minmax(0,22rem)_minmax(0,1fr)]">
+        <div className="grid gap-10 desk:grid-cols-[minmax(0,22rem)_minmax(0,1fr)]">
           <ul aria-label="Letters">
             {letters.map((letter) => (
               <li key={letter.id} className="border-b border-rule">
@@ -69,7 +69,7 @@ export function Component() {
             ))}
           </ul>
           {open ? (
-            <article aria-label={open.subject}>
+            <article aria-label={open.subject} className="desk:sticky desk:top-4 desk:self-start">
               <iframe
                 title={open.subject}
                 srcDoc={open.html}

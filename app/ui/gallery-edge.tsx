@@ -169,8 +169,15 @@ function Review() {
       lines={lines}
       foot={
         <>
-          <Kbd>↑</Kbd> <Kbd>↓</Kbd> walk the steps <Kbd>Enter</Kbd> close the bracket <Kbd>←</Kbd> <Kbd>→</Kbd> choose
-          the term
+          <span className="whitespace-nowrap">
+            <Kbd>↑</Kbd> <Kbd>↓</Kbd> walk the steps
+          </span>{' '}
+          <span className="whitespace-nowrap">
+            <Kbd>Enter</Kbd> close the bracket
+          </span>{' '}
+          <span className="whitespace-nowrap">
+            <Kbd>←</Kbd> <Kbd>→</Kbd> choose the term
+          </span>
         </>
       }
       aside={

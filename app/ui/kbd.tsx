@@ -2,5 +2,9 @@ import type { ReactNode } from 'react';
 
 /** A key to press. */
 export function Kbd({ children }: { children: ReactNode }) {
-  return <kbd>{children}</kbd>;
+  return (
+    <kbd>
+      <span>{children}</span>
+    </kbd>
+  );
 }

@@ -34,7 +34,12 @@ export function PeoplePanel() {
         empty={people.isPending ? null : <EmptyState title="Nobody found" />}
         columns={[
           { id: 'name', head: 'Name', cell: (person) => person.name },
-          { id: 'signin', head: 'Signs in with', cell: (person) => person.email ?? person.userName ?? '' },
+          {
+            id: 'signin',
+            head: 'Signs in with',
+            foldHead: '',
+            cell: (person) => person.email ?? person.userName ?? '',
+          },
           { id: 'role', head: 'Role', cell: (person) => person.role },
           { id: 'classes', head: 'Classes', cell: (person) => person.classes.join(', ') },
           {

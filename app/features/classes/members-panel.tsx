@@ -27,7 +27,12 @@ export function MembersPanel({ found }: { readonly found: ClassAnswer }) {
           empty={<EmptyState title="Nobody yet">Hand out the class code, or invite people.</EmptyState>}
           columns={[
             { id: 'name', head: 'Name', cell: (member) => member.name },
-            { id: 'signin', head: 'Signs in with', cell: (member) => member.email ?? member.userName ?? '' },
+            {
+              id: 'signin',
+              head: 'Signs in with',
+              foldHead: '',
+              cell: (member) => member.email ?? member.userName ?? '',
+            },
             { id: 'alias', head: 'Alias', cell: (member) => member.alias ?? '' },
             { id: 'role', head: 'Role', cell: (member) => <RoleChoice found={found} member={member} /> },
             {

@@ -110,7 +110,8 @@ function solutionWords({ lost, gained, solutions, operation }: Evidence, other: 
     ]);
   }
   if (operation) words.push([OPERATIONS[operation]]);
-  if (solutions && (lost?.length || gained?.length)) words.push(['The solutions of this line: ', tex(solutions), '.']);
+  // Where solutions were gained, they have been named already.
+  if (solutions && lost?.length && !gained?.length) words.push(['The solutions of this line: ', tex(solutions), '.']);
   return words;
 }
 
@@ -146,7 +147,8 @@ export function slipWords(id: string): string {
 function undecidedWords({ reason, error }: Evidence): Sentence[] {
   if (error) {
     const line = error.line === 0 ? 'The given' : `Line ${error.line}`;
-    return [[`${line} could not be read${error.found ? ` at “${error.found}”` : ''}.`]];
+    const found = error.found?.replace(/\\text\{([^}]*)\}/g, '$1').trim();
+    return [[`${line} could not be read${found ? ` at “${found}”` : ''}.`]];
   }
   return reason ? [[REASONS[reason]]] : [];
 }

@@ -126,13 +126,13 @@ function Algebra({ ruled }: { ruled: ReadStep | null }) {
       <h2>The algebra</h2>
       {difference ? (
         <p>
-          Line above minus this line: <Maths tex={difference} />
+          Line above minus this line: <Maths tex={difference} display />
         </p>
       ) : null}
       {mended ? (
         <p>
           This would follow:{' '}
-          <Maths tex={mended.line} spans={mended.changed.map((span) => ({ ...span, as: 'right' as const }))} />
+          <Maths tex={mended.line} display spans={mended.changed.map((span) => ({ ...span, as: 'right' as const }))} />
         </p>
       ) : null}
       {solutions ? (

@@ -99,7 +99,7 @@ function FindingEntry({ finding, name, isContested, said }: FindingEntryProps) {
       {finding.why ? <p className="q s">“{finding.why}”</p> : null}
       {finding.shouldBe ? (
         <p className="small">
-          Should be: <Maths tex={finding.shouldBe} />
+          Should be: <Maths tex={finding.shouldBe} display />
         </p>
       ) : null}
       {finding.answer?.kind === 'contest' && finding.answer.reason !== said ? (

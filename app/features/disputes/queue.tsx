@@ -65,5 +65,5 @@ export function Queue({ items, openId, isUnfolded, onUnfold }: QueueProps) {
 
 function ageWords(openedAt: string, now: number): string {
   const ms = now - Date.parse(openedAt);
-  return ms < 60_000 ? 'now' : sayDuration(ms);
+  return ms < 60_000 ? 'now' : sayDuration(ms).split(' ').slice(0, 2).join(' ');
 }

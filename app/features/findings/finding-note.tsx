@@ -23,7 +23,7 @@ export function FindingNote({ finding, lines, children }: FindingNoteProps) {
       {finding.why ? <p className="fwhy">“{finding.why}”</p> : null}
       {finding.shouldBe ? (
         <p className="small">
-          Should be: <Maths tex={finding.shouldBe} />
+          Should be: <Maths tex={finding.shouldBe} display />
         </p>
       ) : null}
       <p className="small muted">

@@ -70,8 +70,15 @@ export function ReviewDesk({ review }: { readonly review: ReviewAnswer }) {
       }
       foot={
         <p>
-          <Kbd>↑</Kbd> <Kbd>↓</Kbd> walk the steps <Kbd>Enter</Kbd> close the bracket <Kbd>←</Kbd> <Kbd>→</Kbd> choose
-          the term
+          <span className="whitespace-nowrap">
+            <Kbd>↑</Kbd> <Kbd>↓</Kbd> walk the steps
+          </span>{' '}
+          <span className="whitespace-nowrap">
+            <Kbd>Enter</Kbd> close the bracket
+          </span>{' '}
+          <span className="whitespace-nowrap">
+            <Kbd>←</Kbd> <Kbd>→</Kbd> choose the term
+          </span>
         </p>
       }
     />

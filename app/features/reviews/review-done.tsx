@@ -65,7 +65,7 @@ function FindingFacts({ review }: { review: ReviewAnswer }) {
       {kind ? <p className="small">Kind of slip: {kind.toLowerCase()}.</p> : null}
       {finding.shouldBe ? (
         <p className="small">
-          Should be: <Maths tex={finding.shouldBe} />
+          Should be: <Maths tex={finding.shouldBe} display />
         </p>
       ) : null}
       {finding.why ? <p className="small">“{finding.why}”</p> : null}

@@ -103,8 +103,8 @@ function WhatIsPosted({ preview, settings }: WhatIsPostedProps) {
           <li key={line.stepId}>
             {line.prose ? <p className="small">{line.prose}</p> : null}
             <span className="no">{number === 0 ? 'given' : number}</span> <Maths tex={line.tex} display />
-            {line.reason ? <span className="aside-words"> {line.reason}</span> : null}
-            {line.uses ? <span className="aside-words"> from {line.uses.map(lineName).join(', ')}</span> : null}
+            {line.reason ? <span className="aside-words">{line.reason}</span> : null}
+            {line.uses ? <span className="aside-words">from {line.uses.map(lineName).join(', ')}</span> : null}
           </li>
         ))}
       </ol>
@@ -117,7 +117,9 @@ function WhatIsPosted({ preview, settings }: WhatIsPostedProps) {
       {unread.length > 0 ? (
         <p className="small">
           <b>
-            {unread.length === 1 ? `Line ${unread[0]} cannot be read.` : `Lines ${unread.join(', ')} cannot be read.`}
+            {unread.length === 1
+              ? `Line ${unread[0]} cannot be read.`
+              : `Lines ${unread.slice(0, -1).join(', ')} and ${unread.at(-1)} cannot be read.`}
           </b>{' '}
           The steps to and from there stay undecided and go to your teacher.
         </p>

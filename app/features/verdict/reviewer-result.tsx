@@ -79,7 +79,7 @@ function OwnWords({ review }: { review: ReviewAnswer }) {
       {finding.why ? <p>You wrote: “{finding.why}”</p> : null}
       {finding.shouldBe ? (
         <p>
-          You would have written <Maths tex={finding.shouldBe} />
+          You would have written <Maths tex={finding.shouldBe} display />
           {review.result?.shouldBe ? SHOULD_BE[review.result.shouldBe] : '.'}
         </p>
       ) : null}
