@@ -1,7 +1,11 @@
 /** The names of all letters in some part of a reading, bound ones too; quick, for the reader's own questions. */
 export function namesIn(part: unknown, into: Set<string> = new Set()): Set<string> {
-  if (typeof part !== 'object' || part === null) return into;
-  if ('kind' in part && part.kind === 'letter' && 'name' in part && typeof part.name === 'string') into.add(part.name);
-  for (const key in part) if (key !== 'span' && key !== 'bracketed') namesIn(part[key as keyof typeof part], into);
+  if (!isRecord(part)) return into;
+  if (part['kind'] === 'letter') into.add(String(part['name']));
+  for (const key in part) if (key !== 'span' && key !== 'bracketed') namesIn(part[key], into);
   return into;
+}
+
+function isRecord(value: unknown): value is Readonly<Record<string, unknown>> {
+  return typeof value === 'object' && value !== null;
 }

@@ -46,9 +46,12 @@ export function readConstant(reader: Reader): Expr {
   return { kind: 'constant', name, span: reader.span(start) };
 }
 
+const PRIMES = /(?:\^?'|\^\{'+\})+/y;
+
 /** Counts `'`, `''` and `^{\prime}`. */
 export function readPrimes(reader: Reader): number {
-  const marks = reader.ahead(/(?:\^?'|\^\{'+\})*/y);
+  const marks = reader.ahead(PRIMES);
+  if (!marks) return 0;
   reader.skip(marks.length);
   return marks.split("'").length - 1;
 }

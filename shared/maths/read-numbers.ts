@@ -1,5 +1,5 @@
 import type { Expr, NumberExpr } from './expression.ts';
-import type { Reader } from './reader.ts';
+import { numberOf, type Reader } from './reader.ts';
 import type { Token } from './scanner.ts';
 
 /** A number token with the percent sign after it, if any. */
@@ -13,15 +13,16 @@ export function readNumberAtom(reader: Reader): Expr {
 
 /** The value of the digits: `12`, `3.5`, `0.1(6)`. */
 export function numberFrom({ text, start, end }: Pick<Token, 'text' | 'start' | 'end'>): NumberExpr {
+  if (!text.includes('.')) return numberOf({ start, end }, BigInt(text));
   const span = { start, end };
-  const [, whole = '', decimals = '', period] = /^(\d+)\.?(\d*)(?:\((\d+)\))?$/.exec(text)!;
+  const [, whole = '', decimals = '', period] = /^(\d+)\.(\d*)(?:\((\d+)\))?$/.exec(text)!;
   const fixed = BigInt(whole + decimals);
   const scale = 10n ** BigInt(decimals.length);
   if (period) {
     const nines = 10n ** BigInt(period.length) - 1n;
     return numberIn(fixed * nines + BigInt(period), scale * nines, 'repeating', span);
   }
-  return numberIn(fixed, scale, decimals ? 'decimal' : 'integer', span, decimals.length);
+  return numberIn(fixed, scale, 'decimal', span, decimals.length);
 }
 
 function numberIn(

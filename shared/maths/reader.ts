@@ -1,4 +1,4 @@
-import type { Expr, ReadingFlag, ReadSettings, Span } from './expression.ts';
+import type { Expr, NumberExpr, ReadingFlag, ReadSettings, Span } from './expression.ts';
 import { type Complaint, ReadFailure, type Scanner, type Token } from './scanner.ts';
 import type { TokenKind } from './token-table.ts';
 
@@ -109,8 +109,9 @@ export class Reader {
 
   /** The kinds from here on that fit a sticky pattern; empty where they do not. */
   ahead(pattern: RegExp, from = 0): string {
-    pattern.lastIndex = this.index + from;
-    return pattern.exec(this.kinds)?.[0] ?? '';
+    const start = this.index + from;
+    pattern.lastIndex = start;
+    return pattern.test(this.kinds) ? this.kinds.slice(start, pattern.lastIndex) : '';
   }
 
   /** Takes the kinds that fit a sticky pattern, if they do. */
@@ -218,6 +219,6 @@ export function outer(expr: Expr): Span {
   return expr.bracketed ?? expr.span;
 }
 
-export function numberOf({ start, end }: Span, numerator: bigint): Expr {
+export function numberOf({ start, end }: Span, numerator: bigint): NumberExpr {
   return { kind: 'number', numerator, denominator: 1n, written: 'integer', decimals: 0, span: { start, end } };
 }

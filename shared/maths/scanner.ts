@@ -30,7 +30,7 @@ export class ReadFailure extends Error {
   }
 }
 
-export const BLANKS = /[ \t-\r]*/y;
+export const BLANKS = /[ \t-\r]+/y;
 
 /** The text being cut into tokens. */
 export class Scanner {
@@ -62,10 +62,11 @@ export class Scanner {
 
   /** Takes what fits the sticky pattern here; empty where nothing does. */
   take(pattern: RegExp): string {
-    pattern.lastIndex = this.at;
-    const found = pattern.exec(this.source)?.[0] ?? '';
-    this.at += found.length;
-    return found;
+    const { source, at } = this;
+    pattern.lastIndex = at;
+    if (!pattern.test(source)) return '';
+    this.at = pattern.lastIndex;
+    return source.slice(at, this.at);
   }
 
   /** The braced text after a command, without its braces; a single character or command where there are none. */

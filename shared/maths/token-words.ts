@@ -2,6 +2,7 @@ import type { Scanner } from './scanner.ts';
 import { type Entry, findEntry } from './token-table.ts';
 
 const PHRASE = /(?:no (?:real )?solutions?|all real(?: numbers)?|always true)(?![a-z])|let(?= )/iy;
+const LETTERS = /[a-zA-Z]+/y;
 /** The short names are found before one more letter, as in `sinx`; any name before what it applies to. */
 const SHORT = /^(?:sin|cos|tan|ln|log|sqrt)(?=.$)/;
 const OPENS = /[ \t-\r]*(?:[(^_\d]|\\left)/y;
@@ -13,7 +14,8 @@ export function readWords(scanner: Scanner): void {
   const { source, at: start } = scanner;
   const phrase = scanner.take(PHRASE);
   if (phrase) return scanner.push('T', phrase.toLowerCase(), start);
-  const run = scanner.take(/[a-zA-Z]+/y);
+  const run = scanner.take(LETTERS);
+  if (run.length === 1) return scanner.push('a', run, start);
   OPENS.lastIndex = scanner.at;
   const opens = OPENS.test(source);
   for (let from = 0; from < run.length - 1 && from < 64; from += 1) {

@@ -1,7 +1,7 @@
 import type { ReadSettings } from './expression.ts';
-import { BLANKS, Scanner } from './scanner.ts';
+import { BLANKS, isLetter, Scanner } from './scanner.ts';
 import { readNumber } from './token-number.ts';
-import { findEntry } from './token-table.ts';
+import { type Entry, findEntry } from './token-table.ts';
 import { readWords } from './token-words.ts';
 
 /** Cuts a line into tokens; the last one is the end of the line. Throws a ReadFailure on what is no part of a line. */
@@ -19,25 +19,27 @@ export function tokenize(source: string, settings: ReadSettings): Scanner {
 function readToken(scanner: Scanner): void {
   const { source, at } = scanner;
   if (source[at] === '\\') readCommand(scanner);
-  else if (/(?:\d|\.\d)/y.test(source.slice(at, at + 2))) readNumber(scanner);
-  else if (/[a-zA-Z]/.test(source[at]!)) readWords(scanner);
+  else if (isLetter(source.charCodeAt(at))) readWords(scanner);
+  else if (/^\.?\d/.test(source.slice(at, at + 2))) readNumber(scanner);
   else readCharacter(scanner);
 }
 
 function readCharacter(scanner: Scanner): void {
   const { source, at } = scanner;
-  if (source[at] === '}' && scanner.passedOver.has(at)) return void (scanner.at += 1);
-  if (scanner.take(/[\u00a0\u2009]/y)) return pushName(scanner, '~', at);
+  if (scanner.passedOver.has(at)) return void (scanner.at += 1);
+  const pair = source.slice(at, at + 2);
+  const name = findEntry(pair) ? pair : source.charAt(at);
+  const entry = findEntry(name);
+  if (entry) {
+    scanner.at += name.length;
+    return pushEntry(scanner, entry, name, at);
+  }
   const raised = scanner.take(/[⁰¹²³⁴-⁹]+/y);
   if (raised) return scanner.push('²', raised.normalize('NFKD'), at);
   const fraction = scanner.take(/[¼-¾⅓-⅞]/y);
   if (fraction) return scanner.push('F', fraction.normalize('NFKD'), at);
-  for (const name of [source.slice(at, at + 2), source[at]!]) {
-    if (!findEntry(name)) continue;
-    scanner.at += name.length;
-    return pushName(scanner, name, at);
-  }
-  scanner.fail('unknown-character', at, at + String.fromCodePoint(source.codePointAt(at)!).length);
+  if (scanner.take(/[\u00a0\u2009]/y)) scanner.gap = true;
+  else scanner.fail('unknown-character', at, at + String.fromCodePoint(source.codePointAt(at)!).length);
 }
 
 /** `\left`, `\mright`, `\middle`, `\big`, `\Biggl` and their like. */
@@ -45,17 +47,19 @@ const SIZED = /^(?:m?(?:left|right)|middle|[bB]igg?[lrm]?)$/;
 
 function readCommand(scanner: Scanner): void {
   const start = scanner.at;
-  const name = scanner.take(/\\(?:[a-zA-Z]+|[^]?)/y).slice(1);
-  if (SIZED.test(name)) return readSized(scanner, name, start);
-  pushName(scanner, /^[a-zA-Z]/.test(name) ? name : /^\s/.test(name) ? '~' : `\\${name}`, start);
+  const name = scanner.take(COMMAND).slice(1);
+  const entry = findEntry(/^[a-zA-Z]/.test(name) ? name : /^\s/.test(name) ? '~' : `\\${name}`);
+  if (entry) pushEntry(scanner, entry, name, start);
+  else if (SIZED.test(name)) readSized(scanner, name, start);
+  else scanner.fail('unknown-command', start);
 }
 
-function pushName(scanner: Scanner, name: string, start: number): void {
-  const entry = findEntry(name);
-  if (!entry) return scanner.fail('unknown-command', start);
-  const act = ACTIONS[entry.kind];
-  if (act) act(scanner, start, name, entry.kind);
-  else scanner.push(entry.kind, entry.text, start);
+const COMMAND = /\\(?:[a-zA-Z]+|[^]?)/y;
+
+function pushEntry(scanner: Scanner, { kind, text }: Entry, name: string, start: number): void {
+  const act = ACTIONS[kind];
+  if (act) act(scanner, start, name, kind);
+  else scanner.push(kind, text, start);
 }
 
 /** What takes more than the command itself, or leaves no token. */

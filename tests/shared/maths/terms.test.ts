@@ -48,7 +48,7 @@ describe('marking', () => {
     expect(markSpans('a+b+c', marks)).toBe('{\\htmlClass{one}{a+b}}+c');
   });
 
-  it('gives TeX that KaTeX renders for every part of many lines, alone and all at once', () => {
+  it('gives TeX that KaTeX renders for every part of many lines, alone and all at once', { timeout: 30_000 }, () => {
     const lines = [...READINGS.map(([tex]) => tex), ...caseLines.flatMap((group) => group.lines.slice(0, 2))];
     for (const tex of lines) {
       const parts = selectableParts(tex);
