@@ -1,6 +1,7 @@
 import { difference, isEmptySet } from '../solving/real-set.ts';
 import { solveStatement, type SolveEnv } from '../statements/solve.ts';
 import type { Statement } from '../statements/statement.ts';
+import { BudgetSpent } from '../context.ts';
 import { contextOf, judgeLine, type Route, type WalkState, type WalkStep } from '../walk-derivation.ts';
 import { freeLetters, meaningOf } from './meaning.ts';
 import type { StepResult } from './step-result.ts';
@@ -70,7 +71,7 @@ function isPartOf(part: Statement, whole: Statement, env: SolveEnv): boolean {
     const all = solveStatement(whole, { ...env, hints: inside.points });
     return isEmptySet(difference(inside, all)) && !isEmptySet(difference(all, inside)) && !isEmptySet(inside);
   } catch (cause) {
-    if (cause instanceof Unsettled) return false;
+    if (cause instanceof Unsettled || cause instanceof BudgetSpent) return false;
     throw cause;
   }
 }

@@ -1,4 +1,6 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckContext } from '../context.ts';
 import { exprsOfStatement, toStatement, type Statement } from '../statements/statement.ts';
 import { lowerAll } from '../values/lower.ts';
@@ -32,6 +34,27 @@ function lastMember(line: Line): Expr | null {
 
 /** The letters that a statement depends on once definitions are put in, in order of appearance. */
 export function freeLetters(statement: Statement, context: CheckContext): string[] {
-  const { builder } = lowerAll(exprsOfStatement(statement), context);
+  const exprs = exprsOfStatement(statement);
+  if (context.definitions.letters.size === 0 && exprs.every(isPlain))
+    return [...new Set(exprs.flatMap((expr) => [...lettersOf(expr)]))];
+  const { builder } = lowerAll(exprs, context);
   return [...new Set(builder.nodes.flatMap((node) => (node.op === 'letter' ? [node.name] : [])))];
+}
+
+const plainKinds: ReadonlySet<Expr['kind']> = new Set([
+  'number',
+  'letter',
+  'constant',
+  'sum',
+  'product',
+  'quotient',
+  'power',
+  'root',
+  'call',
+  'log',
+]);
+
+/** Without anything that has letters of its own or stands for something else. */
+function isPlain(expr: Expr): boolean {
+  return plainKinds.has(expr.kind) && childrenOf(expr).every(isPlain);
 }

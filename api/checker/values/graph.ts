@@ -118,84 +118,97 @@ function foldedPower(value: Rational, exponent: number): Rational | null {
 }
 
 export function createGraphBuilder(onPush: () => void): GraphBuilder {
-  const nodes: GraphNode[] = [];
-  const known = new Map<string | number, number>();
-  const smallNumbers = new Map<bigint, number>();
+  return new Builder(onPush);
+}
 
-  function push(node: GraphNode): number {
-    // Two series or two unknowns are never merged: nothing says that they are equal.
-    const key = node.op === 'series' || node.op === 'opaque' ? `${node.op}${nodes.length}` : keyOf(node);
-    const found = known.get(key);
-    if (found !== undefined) return found;
-    onPush();
-    known.set(key, nodes.length);
-    return nodes.push(node) - 1;
+/** A class, for one is made for every comparison: making as many functions each time would cost more than their work. */
+class Builder implements GraphBuilder {
+  readonly nodes: GraphNode[] = [];
+  private readonly known = new Map<string | number, number>();
+  private readonly smallNumbers = new Map<bigint, number>();
+  private readonly onPush: () => void;
+
+  constructor(onPush: () => void) {
+    this.onPush = onPush;
   }
-  function valueOf(index: number): Rational | null {
-    const node = nodes[index];
+
+  push(node: GraphNode): number {
+    // Two series or two unknowns are never merged: nothing says that they are equal.
+    const key = node.op === 'series' || node.op === 'opaque' ? `${node.op}${this.nodes.length}` : keyOf(node);
+    const found = this.known.get(key);
+    if (found !== undefined) return found;
+    this.onPush();
+    this.known.set(key, this.nodes.length);
+    return this.nodes.push(node) - 1;
+  }
+
+  valueOf(index: number): Rational | null {
+    const node = this.nodes[index];
     return node?.op === 'number' ? node.value : null;
   }
-  function number(value: Rational): number {
-    if (value.den !== 1n) return push({ op: 'number', args: [], value });
-    let found = smallNumbers.get(value.num);
+
+  number(value: Rational): number {
+    if (value.den !== 1n) return this.push({ op: 'number', args: [], value });
+    let found = this.smallNumbers.get(value.num);
     if (found === undefined) {
-      found = push({ op: 'number', args: [], value });
-      smallNumbers.set(value.num, found);
+      found = this.push({ op: 'number', args: [], value });
+      this.smallNumbers.set(value.num, found);
     }
     return found;
   }
+
   /** Numbers among the arguments become one, and what is left is sorted: a sum or product has no order. */
-  function fold(op: 'add' | 'mul', args: readonly number[]): number {
+  private fold(op: 'add' | 'mul', args: readonly number[]): number {
     const join = op === 'add' ? Q.add : Q.mul;
     const neutral = op === 'add' ? Q.zero : Q.one;
     let total = neutral;
     const most = args.length > many ? longestOfMany : longest;
     const rest: number[] = [];
     for (const arg of args) {
-      const value = valueOf(arg);
+      const value = this.valueOf(arg);
       if (value === null) rest.push(arg);
       else total = join(total, value);
       if (total.den > most || total.num > most || total.num < -most) {
-        rest.push(push({ op: 'number', args: [], value: total }));
+        rest.push(this.push({ op: 'number', args: [], value: total }));
         total = neutral;
       }
     }
-    if (rest.length === 0) return number(total);
-    if (!Q.equals(total, neutral)) rest.push(number(total));
+    if (rest.length === 0) return this.number(total);
+    if (!Q.equals(total, neutral)) rest.push(this.number(total));
     if (rest.length === 1) return rest[0] ?? 0;
-    return push({ op, args: rest.sort((a, b) => a - b) });
+    return this.push({ op, args: rest.sort((a, b) => a - b) });
   }
-  function negate(arg: number): number {
-    const value = valueOf(arg);
-    return value === null ? push({ op: 'negate', args: [arg] }) : number(Q.negate(value));
+
+  negate(arg: number): number {
+    const value = this.valueOf(arg);
+    return value === null ? this.push({ op: 'negate', args: [arg] }) : this.number(Q.negate(value));
   }
-  function div(top: number, bottom: number): number {
-    const divisor = valueOf(bottom);
-    const value = valueOf(top);
-    if (divisor !== null && value !== null && !Q.isZero(divisor)) return number(Q.div(value, divisor));
-    return push({ op: 'div', args: [top, bottom] });
+
+  div(top: number, bottom: number): number {
+    const divisor = this.valueOf(bottom);
+    const value = this.valueOf(top);
+    if (divisor !== null && value !== null && !Q.isZero(divisor)) return this.number(Q.div(value, divisor));
+    return this.push({ op: 'div', args: [top, bottom] });
   }
-  function power(base: number, exponent: number): number {
+
+  power(base: number, exponent: number): number {
     if (exponent === 1) return base;
-    const inner = nodes[base];
+    const inner = this.nodes[base];
     const joined = inner?.op === 'power' ? joinedExponent(inner.exponent, exponent) : null;
-    if (inner?.op === 'power' && joined !== null) return power(inner.args[0], joined);
-    const value = valueOf(base);
+    if (inner?.op === 'power' && joined !== null) return this.power(inner.args[0], joined);
+    const value = this.valueOf(base);
     const folded = value === null ? null : foldedPower(value, exponent);
-    if (folded !== null) return number(folded);
-    return push({ op: 'power', args: [base], exponent });
+    if (folded !== null) return this.number(folded);
+    return this.push({ op: 'power', args: [base], exponent });
   }
-  return {
-    nodes,
-    push,
-    number,
-    valueOf,
-    add: (args) => fold('add', args),
-    mul: (args) => fold('mul', args),
-    negate,
-    div,
-    power,
-  };
+
+  add(args: readonly number[]): number {
+    return this.fold('add', args);
+  }
+
+  mul(args: readonly number[]): number {
+    return this.fold('mul', args);
+  }
 }
 
 /** The free letters that a node depends on. */
