@@ -1,0 +1,55 @@
+import { readFileSync } from 'node:fs';
+
+/** Two lines with the truth that independent programs agreed on, in TeX and in plain notation. */
+export interface BenchPair {
+  readonly topic: string;
+  readonly tex: readonly [string, string];
+  readonly plain: readonly [string, string];
+  readonly right: boolean;
+  readonly settings: Record<string, unknown>;
+}
+
+interface Row {
+  readonly topic: string;
+  readonly kind: string;
+  readonly lines: [string, string];
+  readonly right: boolean;
+  readonly plain: [string, string];
+  readonly settings?: Record<string, unknown>;
+}
+
+const file = new URL('../../../tests/checker/data/steps.jsonl', import.meta.url);
+
+/** Steps from expression to expression of the kept set, spread evenly over it. */
+export function readPairs(most: number): BenchPair[] {
+  const rows = readFileSync(file, 'utf8')
+    .split('\n')
+    .filter(Boolean)
+    .map((line) => JSON.parse(line) as Row)
+    .filter((row) => row.kind === 'expression');
+  const every = Math.max(1, rows.length / most);
+  const picked = Array.from({ length: Math.min(most, rows.length) }, (_, k) => rows[Math.floor(k * every)] as Row);
+  return picked.map(({ topic, lines, right, plain, settings }) => ({
+    topic,
+    tex: lines,
+    plain,
+    right,
+    settings: settings ?? {},
+  }));
+}
+
+export interface StatementRow {
+  readonly lines: [string, string];
+  readonly assume: readonly string[];
+  readonly settings: Record<string, unknown>;
+}
+
+/** Steps from statement to statement in one letter. */
+export function readStatements(): StatementRow[] {
+  return readFileSync(file, 'utf8')
+    .split('\n')
+    .filter(Boolean)
+    .map((line) => JSON.parse(line) as Row & { assume?: string[] })
+    .filter((row) => row.kind === 'statement')
+    .map(({ lines, assume, settings }) => ({ lines, assume: assume ?? [], settings: settings ?? {} }));
+}
