@@ -20,6 +20,7 @@ const warmUp: readonly (readonly string[])[] = [
   ['x^2-5x+6=0', '(x-2)(x-3)=0', 'x=2\\text{ or }x=3'],
   ['\\sqrt{x+6}=x', 'x+6=x^2', 'x=3'],
   ['3(x-2)-x', '3x-2-x', '2x-2'],
+  ['\\sin 2x=1', 'x=\\frac{\\pi}{4}+k\\pi'],
   ['\\frac{x+9}{x+6}', '\\frac{3}{2}'],
 ];
 for (const lines of warmUp) checkDerivation({ lines, assume: [], settings: {} });

@@ -8,7 +8,10 @@ export interface CheckPoolOptions {
   /** The worker's file: the source under tsx, or its own bundle. */
   readonly workerUrl?: URL;
   readonly threads?: number;
-  /** Wall time for one step and for a whole derivation; counts of operations end a step long before. */
+  /**
+   * Time at work for one step and for a whole derivation; counts of operations end a step long before. A machine that is
+   * busy with other things is not charged for, up to eight times as long.
+   */
   readonly stepMs?: number;
   readonly derivationMs?: number;
   readonly memoryMb?: number;
@@ -29,6 +32,22 @@ export interface CheckPool {
 }
 
 const watchMs = 20;
+const mostStretch = 8;
+
+/** A clock that goes with the wall's, but no faster than this process gets to work. */
+function createWorkClock(): () => number {
+  let ms = 0;
+  let lastWall = performance.now();
+  let lastCpu = process.cpuUsage();
+  return () => {
+    const wall = performance.now();
+    const cpu = process.cpuUsage();
+    const worked = (cpu.user + cpu.system - lastCpu.user - lastCpu.system) / 1000;
+    ms += Math.max(0, Math.min(wall - lastWall, worked));
+    [lastWall, lastCpu] = [wall, cpu];
+    return ms;
+  };
+}
 
 /** Checks run in workers that are ended and replaced at their limit; what they had left is then ruled by another. */
 export function createCheckPool(options: CheckPoolOptions = {}): CheckPool {
@@ -45,20 +64,21 @@ export function createCheckPool(options: CheckPoolOptions = {}): CheckPool {
   });
   // A worker that runs out of memory is also reported to the run that it was on.
   piscina.on('error', () => {});
+  const workMs = createWorkClock();
   let isClosed = false;
 
   async function check(input: DerivationInput): Promise<Verdict & { ms: number }> {
     const timedOut: number[] = [];
     const slow = new Set<number>();
-    const deadline = performance.now() + derivationMs;
+    const deadline = workMs() + derivationMs;
     for (;;) {
-      const run = await runOnce(piscina, { input, timedOut: [...timedOut] }, { stepMs, deadline });
+      const run = await runOnce(piscina, { input, timedOut: [...timedOut] }, { stepMs, deadline, workMs });
       if (run.kind === 'done') return { ...run.answer.verdict, ms: run.answer.ms };
       options.onEnded?.({ step: run.step, reason: run.kind, input, cause: run.cause });
       const explaining = input.lines.length;
-      if (timedOut.includes(explaining) && performance.now() > deadline) return givenUp(input, derivationMs);
+      if (timedOut.includes(explaining) && workMs() > deadline) return givenUp(input, derivationMs);
       if (run.step === explaining) timedOut.push(explaining);
-      else if (performance.now() > deadline) {
+      else if (workMs() > deadline) {
         // No time is left for the rest: every step from here on stays open.
         for (let step = run.step; step <= explaining; step += 1) timedOut.push(step);
       } else if (run.kind === 'time' && !slow.has(run.step)) slow.add(run.step);
@@ -96,6 +116,7 @@ type Run =
 interface Limits {
   readonly stepMs: number;
   readonly deadline: number;
+  readonly workMs: () => number;
 }
 
 async function runOnce(piscina: Piscina, task: Omit<CheckTask, 'progress'>, limits: Limits): Promise<Run> {
@@ -104,15 +125,16 @@ async function runOnce(piscina: Piscina, task: Omit<CheckTask, 'progress'>, limi
   Atomics.store(at, 0, -1);
   const ending = new AbortController();
   let seen = -1;
-  let since = performance.now();
+  let since = limits.workMs();
+  let wallSince = performance.now();
   const watch = setInterval(() => {
     const step = Atomics.load(at, 0);
-    const now = performance.now();
-    if (step !== seen) [seen, since] = [step, now];
+    const now = limits.workMs();
+    if (step !== seen) [seen, since, wallSince] = [step, now, performance.now()];
     // Before its first step a task may only be waiting for a worker.
-    const isLate =
-      step >= 0 && (now - since > limits.stepMs || (now > limits.deadline && now - since > limits.stepMs / 2));
-    if (isLate) ending.abort();
+    const isOver = now - since > limits.stepMs || (now > limits.deadline && now - since > limits.stepMs / 2);
+    const isStalled = performance.now() - wallSince > mostStretch * limits.stepMs;
+    if (step >= 0 && (isOver || isStalled)) ending.abort();
   }, watchMs);
   try {
     const answer = (await piscina.run({ ...task, progress } satisfies CheckTask, {
