@@ -13,6 +13,11 @@ const baseUrl = z.url({
   protocol: /^https?$/,
   error: 'must be the address people type, such as https://slipstone.example.org',
 });
+function isSafe(address: string): boolean {
+  const { protocol, hostname } = new URL(address);
+  return protocol === 'https:' || hostname === 'localhost' || hostname === '127.0.0.1' || hostname === '[::1]';
+}
+
 const mailFrom = z
   .string()
   .regex(
@@ -35,7 +40,10 @@ const productionSchema = z.object({
   NODE_ENV: z.literal('production'),
   LOG_LEVEL: logLevel.default('info'),
   DATABASE_URL: databaseUrl,
-  BASE_URL: baseUrl,
+  BASE_URL: baseUrl.refine(
+    isSafe,
+    'must begin with https, so that the session cookie never crosses the network in the open',
+  ),
   SLIPSTONE_SECRET: secret,
   SMTP_URL: smtpUrl,
   MAIL_FROM: mailFrom,

@@ -62,12 +62,17 @@ export const roundChangeSchema = z
   .superRefine(inOrder);
 export type RoundChange = z.infer<typeof roundChangeSchema>;
 
-export const stageMoveSchema = z.object({
-  to: z.enum(['writing', 'reviewing', 'answering', 'settled']),
-  /** Settles although disputes are open, which voids the findings they touch. */
-  force: z.boolean().default(false),
-  reason: z.string().trim().max(300, 'A reason holds at most 300 characters.').default(''),
-});
+export const stageMoveSchema = z
+  .object({
+    to: z.enum(['writing', 'reviewing', 'answering', 'settled']),
+    /** Settles although disputes are open, which voids the findings they touch. */
+    force: z.boolean().default(false),
+    reason: z.string().trim().max(300, 'A reason holds at most 300 characters.').default(''),
+  })
+  .refine(({ force, reason }) => !force || reason !== '', {
+    path: ['reason'],
+    message: 'Say why; it is kept in the trail.',
+  });
 export type StageMove = z.infer<typeof stageMoveSchema>;
 
 /** The end of the running stage and every later instant move by this much. */

@@ -117,7 +117,7 @@ describe('the stage machine', () => {
     for (const { id } of students)
       await handIn(server.dataSource, { roundId: round.id, authorId: id, at: server.clock.now() });
     const move = (to: string) =>
-      Promise.all([1, 2, 3].map(() => desk.post(`/rounds/${round.id}/stage`, { to, force: true })));
+      Promise.all([1, 2, 3].map(() => desk.post(`/rounds/${round.id}/stage`, { to, force: true, reason: 'test' })));
     expect(statuses(await move('reviewing'))).toEqual([200, 409, 409]);
     expect(await server.dataSource.getRepository(Review).countBy({ roundId: round.id })).toBe(10);
     await server.runJobs();

@@ -98,6 +98,13 @@ describe('a class', () => {
   });
 });
 
+it('is not put away while a round of it is not settled', async () => {
+  const { desk, path, class: of, teacher } = await openDesk();
+  await server.create.round(of, await server.create.task(teacher));
+  const { body } = await desk.post(`${path}/archive`).expect(409);
+  expect(body.detail).toContain('not settled yet');
+});
+
 describe('the class code', () => {
   it('tells its holder the class, and nobody else anything', async () => {
     const { class: of } = await openDesk();

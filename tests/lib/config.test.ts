@@ -54,4 +54,11 @@ describe('settings', () => {
   it('refuse an environment that nobody knows', () => {
     expect(() => readConfig({ DATABASE_URL: database, NODE_ENV: 'staging' })).toThrow(/NODE_ENV/);
   });
+
+  it('takes an address in the open only on the machine itself', () => {
+    expect(() => readConfig({ ...production, BASE_URL: 'http://slipstone.school.test' })).toThrow(
+      /BASE_URL: must begin with https/,
+    );
+    expect(readConfig({ ...production, BASE_URL: 'http://127.0.0.1:4600' }).baseUrl).toBe('http://127.0.0.1:4600');
+  });
 });

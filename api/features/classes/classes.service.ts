@@ -135,12 +135,26 @@ async function startTerm(deps: ClassesDeps, viewer: Viewer, classId: string): Pr
 async function setArchived(deps: ClassesDeps, viewer: Viewer, classId: string, archived: boolean): Promise<void> {
   await deps.db.transaction(async (manager) => {
     await getAccess(manager, classId, viewer, ['teacher']);
+    if (archived) await refuseWhileRunning(manager, classId);
     await manager.update(Class, { id: classId }, { archivedAt: archived ? deps.now() : null });
     await recordAudit(manager, {
       ...trail(deps, viewer, classId),
       action: archived ? 'class.archived' : 'class.brought-back',
     });
   });
+}
+
+/** A class that is put away is not seen; its rounds would go on, deal and mail all the same. */
+async function refuseWhileRunning(manager: EntityManager, classId: string): Promise<void> {
+  const rows: { number: number }[] = await manager.query(
+    `select number from round where class_id = $1 and stage <> 'settled' order by number limit 1`,
+    [classId],
+  );
+  if (rows[0]) {
+    throw new ProblemError('conflict', {
+      detail: `Round ${rows[0].number} is not settled yet. Settle it, or delete it while it is planned, and then put the class away.`,
+    });
+  }
 }
 
 /** One's own place in a class, for students and assistants. */

@@ -1,7 +1,9 @@
 import { useQuery } from '@tanstack/react-query';
+import { useState } from 'react';
 import type { RoundAnswer } from '../../../shared/schemas/round.ts';
 import { ConfirmDialog, Dialog } from '../../ui/dialog.tsx';
 import { ErrorState, Waiting } from '../../ui/states.tsx';
+import { TextField } from '../../ui/text-field.tsx';
 import { MOVE_WORDS, sayEffect, sayWarning } from './round-words.ts';
 import { nextStageQuery, roundActs } from './rounds.queries.ts';
 import { refusalOf, useRoundAct } from './use-round-act.ts';
@@ -15,6 +17,7 @@ const DONE = {
 
 /** Moves a round on by hand, after showing what that will do. */
 export function StageDialog({ round, onClose }: { readonly round: RoundAnswer; readonly onClose: () => void }) {
+  const [reason, setReason] = useState('');
   const preview = useQuery(nextStageQuery(round.id));
   const move = useRoundAct(
     roundActs(round.id).move,
@@ -42,13 +45,21 @@ export function StageDialog({ round, onClose }: { readonly round: RoundAnswer; r
       error={refusalOf(move.error)}
       effects={effects.map(sayEffect)}
       onClose={onClose}
-      onConfirm={() => move.mutate({ to, force: needsForce, reason: '' })}
+      onConfirm={() => move.mutate({ to, force: needsForce, reason: reason.trim() })}
     >
       {warnings.map((warning) => (
         <p key={warning.kind} className="mt-1">
           <b>{sayWarning(warning)}</b>
         </p>
       ))}
+      {needsForce ? (
+        <TextField
+          label="Reason, kept in the trail"
+          value={reason}
+          maxLength={300}
+          onChange={(event) => setReason(event.target.value)}
+        />
+      ) : null}
     </ConfirmDialog>
   );
 }
