@@ -1,5 +1,5 @@
 import { lettersOf } from '../../shared/maths/letters.ts';
-import type { Line } from '../../shared/maths/expression.ts';
+import type { Expr, Line } from '../../shared/maths/expression.ts';
 import type { DerivationInput, UndecidedReason } from '../../shared/schemas/verdict.ts';
 import { reduceCalculus } from './calculus/reduce.ts';
 import { scopeOf } from './calculus/scope.ts';
@@ -96,7 +96,7 @@ export function startWalk(route: Route): WalkState {
     known: [],
     afterFault: false,
     assumptions: read.assumptions,
-    definitions: { letters: new Map(), functions: new Map() },
+    definitions: { letters: assumedValues(read), functions: new Map() },
     candidates: [],
   };
   const first = read.lines[0];
@@ -106,6 +106,16 @@ export function startWalk(route: Route): WalkState {
     return state;
   }
   return startAgain(empty, meaningOf(first.line));
+}
+
+/** Letters whose value the task states: a line may have the one or the other. */
+function assumedValues({ assumptions }: ReadDerivation): ReadonlyMap<string, Expr> {
+  const values = new Map<string, Expr>();
+  for (const line of assumptions) {
+    if (line.kind !== 'relation' || line.sign !== '=' || line.left.kind !== 'letter') continue;
+    if (lettersOf(line.right).length === 0) values.set(line.left.name, line.right);
+  }
+  return values;
 }
 
 function isDefinition(line: Line): boolean {

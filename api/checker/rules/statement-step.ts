@@ -4,6 +4,7 @@ import { comparesOf, isListOfValues, type Statement } from '../statements/statem
 import { judgeApproximation } from './approximation.ts';
 import { judgeComplexStep } from './complex-step.ts';
 import { isolatedLetter, judgeAsLetter, judgeFormula, nearlyIsolatedLetter } from './formula.ts';
+import { isPutIn } from './put-in.ts';
 import { judgeSameEquation } from './same-equation.ts';
 import { freeLetters } from './meaning.ts';
 import { judgeOneLetter } from './one-letter.ts';
@@ -39,7 +40,8 @@ export function judgeStatements(question: StatementQuestion): StatementAnswer {
   };
   if (letters.length > 1) {
     const whole = judgeAsLetter(shared);
-    return withoutCandidates(whole?.ruling === 'holds' ? whole : judgeFormula(shared));
+    const found = whole?.ruling === 'holds' ? whole : judgeFormula(shared);
+    return withoutCandidates(found.ruling === 'fails' && isPutIn(above, below) ? undecided('not-covered') : found);
   }
   if (isApproximate(above) || isApproximate(below)) {
     return withoutCandidates(judgeApproximation({ ...shared, given: new Map() }));

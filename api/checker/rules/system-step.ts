@@ -12,6 +12,7 @@ import { Unsettled } from '../solving/unsettled.ts';
 import { comparesOf, type CompareStatement, type Statement } from '../statements/statement.ts';
 import { letterExpr, numberExpr } from './build-expr.ts';
 import { freeLetters } from './meaning.ts';
+import { isCombination } from './linear-combination.ts';
 import {
   isTrueStatement,
   openLetters,
@@ -70,7 +71,8 @@ function judgeKnown(known: readonly Statement[], below: Statement, context: Chec
   const solutions = branchesOf({ kind: 'all', parts: known }).flatMap((branch) => solveSystem(branch, context));
   if (below.kind === 'never')
     return solutions.length === 0 ? holds('proved') : failAt(solutions[0] as SystemSolution, context, 'lost');
-  if (solutions.length === 0) return undecided('not-settled', ['empty']);
+  if (solutions.length === 0)
+    return isCombination(known, below, context) ? holds('proved') : undecided('not-settled', ['empty']);
   let sampled = false;
   for (const solution of solutions) {
     const truth = isTrueOn(solution, below, context);

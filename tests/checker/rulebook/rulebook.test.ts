@@ -7,7 +7,7 @@ import { formulaRows } from './formula-rows.ts';
 import { inequalityRows } from './inequality-rows.ts';
 import { complexRows, definitionRows, otherRows } from './other-rows.ts';
 import { linesOf, type Row, type Ruling } from './row.ts';
-import { systemRows } from './system-rows.ts';
+import { furtherSystemRows, systemRows } from './system-rows.ts';
 
 /** Each row is a derivation with the ruling that the rule beside it demands, written by hand from the rules' text. */
 const tables: Record<string, readonly Row[]> = {
@@ -18,6 +18,7 @@ const tables: Record<string, readonly Row[]> = {
   inequalities: inequalityRows,
   formulas: formulaRows,
   systems: systemRows,
+  'further systems': furtherSystemRows,
   'complex equations': complexRows,
   definitions: definitionRows,
   'goals, settings, calculus, matrices': otherRows,

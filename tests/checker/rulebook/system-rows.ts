@@ -86,3 +86,23 @@ export const systemRows: readonly Row[] = [
   ['6a', tex`x+y=10,\ y+z=12,\ x+z=8 ;; 2x+2y+2z=30 ;; x+y+z=15 ;; z=5 ;; x=3 ;; y=7`, null],
   ['6a', tex`x+y=10,\ y+z=12,\ x+z=8 ;; x+y+z=30`, 1],
 ];
+
+/** Systems without solutions, systems with roots of higher degree, numbers put into formulas. */
+export const furtherSystemRows: readonly Row[] = [
+  ['6a', tex`x+y=2,\ 2x+2y=5 ;; 2x+2y=4 ;; 4=5 ;; \text{no solution}`, null],
+  ['6a', tex`x+y=2,\ 2x+2y=5 ;; 2x+2y=4 ;; 0=1 ;; \text{no solution}`, null],
+  ['6a', tex`x+y=2,\ 2x+2y=5 ;; 2x-2y=4`, 'undecided'],
+  ['6a', tex`x^2-y=1,\ x+y=5 ;; x^2+x=6 ;; x=2\text{ or }x=-3 ;; y=3\text{ or }y=8`, null],
+  ['6a', tex`x^2-y=1,\ x+y=5 ;; x^2+x=6 ;; x=2\text{ or }x=-3 ;; y=3\text{ or }y=2`, 3],
+  ['6a', tex`\ln x+\ln y=0,\ x+y=2 ;; xy=1 ;; x=1,\ y=1`, null],
+  ['6a', tex`x^2+y^2=10,\ y=3x ;; x^2+9x^2=10 ;; x=\pm 1 ;; (x,y)=(1,3)\text{ or }(x,y)=(-1,-3)`, null],
+  ['6a', tex`x^2+y^2=10,\ y=3x ;; x^2+3x^2=10`, 1],
+  ['2', tex`y=2x+3 ;; y=2(4)+3 ;; y=11`, 'undecided'],
+  ['2', tex`y=mx+2 ;; 5=m(3)+2 ;; m=1`, 'undecided'],
+  ['2', tex`y=2x+3 ;; y=2x+4`, 1],
+  ['assume', tex`y=2x+3 ;; y=2(4)+3 ;; y=11`, null, { assume: ['x=4'] }],
+  ['assume', tex`y=2x+3 ;; y=2(4)+3 ;; y=14`, 2, { assume: ['x=4'] }],
+  ['assume', tex`A=P(1+rt) ;; A=100(1+0.05t) ;; A=100+5t`, null, { assume: ['P=100', 'r=0.05'] }],
+  ['assume', tex`A=P(1+rt) ;; A=100(1+0.05t) ;; A=100+0.05t`, 2, { assume: ['P=100', 'r=0.05'] }],
+  ['assume', tex`x^2+kx ;; x^2+3x ;; x(x+3)`, null, { assume: ['k=3'] }],
+];

@@ -1,0 +1,30 @@
+import type { Expr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { sameExpr } from '../../../shared/maths/same.ts';
+import { childrenOf } from '../../../shared/maths/walk.ts';
+import type { Statement } from '../statements/statement.ts';
+
+/**
+ * Whether a line is the one above with numbers in the place of some letters, `y=2(4)+3` after `y=2x+3`: where the numbers
+ * come from is not said, so that the step is neither right nor wrong.
+ */
+export function isPutIn(above: Statement, below: Statement): boolean {
+  if (above.kind !== 'compare' || below.kind !== 'compare' || above.sign !== below.sign) return false;
+  const values = new Map<string, Expr>();
+  return matches(above.left, below.left, values) && matches(above.right, below.right, values) && values.size > 0;
+}
+
+function matches(above: Expr, below: Expr, values: Map<string, Expr>): boolean {
+  if (above.kind === 'letter' && lettersOf(below).length === 0) {
+    const known = values.get(above.name);
+    values.set(above.name, known ?? below);
+    return known === undefined || sameExpr(known, below);
+  }
+  const [parts, others] = [childrenOf(above), childrenOf(below)];
+  if (above.kind !== below.kind || parts.length !== others.length) return false;
+  if (parts.length === 0) return sameExpr(above, below);
+  if (above.kind === 'sum' && below.kind === 'sum') {
+    if (above.terms.some(({ sign }, k) => sign !== below.terms[k]?.sign)) return false;
+  }
+  return parts.every((part, k) => matches(part, others[k] as Expr, values));
+}
