@@ -66,7 +66,14 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
   }
   const informative = seen.filter((answer) => answer.solutions && !isEmptySet(answer.solutions));
   if (informative.length < 2) return undecided(open > 0 ? 'not-settled' : 'no-domain');
+  // A value that is gained wherever there is one was never right: both lines never have a solution together.
+  if (informative.every(isOnlyGained)) return undecided('no-domain');
   return summarise(seen, excluded);
+}
+
+function isOnlyGained({ solutions, candidates }: OneLetterAnswer): boolean {
+  const listed = solutions?.at.filter(Boolean).length ?? 0;
+  return candidates.length > 0 && candidates.length >= listed && !solutions?.between.some(Boolean);
 }
 
 /**
