@@ -32,7 +32,7 @@ def points_for(names, topic):
         return [()]
     if topic == 'factorials' or names == ['n']:
         return [(k + 1,) * len(names) for k in range(9)] if len(names) == 1 else [(k + 2, 1 + k % 3) for k in range(9)]
-    return [tuple(VALUES[(k * (j + 1) + 3 * j) % len(VALUES)] for j in range(len(names))) for k in range(len(VALUES))]
+    return [tuple(VALUES[(5 * k + 7 * j * (k + 1) + j * j) % len(VALUES)] for j in range(len(names))) for k in range(len(VALUES))]
 
 
 def label(above, below, topic, loose=False):
@@ -99,7 +99,8 @@ def statement_rows(topic):
     maker, domain = {'equations': (st.equation, None), 'inequalities': (st.inequality, None), 'interval': (st.circular, 1)}[topic]
     above, below = maker(rng)
     for candidate in [below] + [st.nearly(below, rng) for _ in range(2)]:
-        if candidate is None:
+        # A true line without the letter is a remark and holds (rule 6c).
+        if candidate is None or any(not names_in(left) + names_in(right) for left, _, right in candidate):
             continue
         if domain:
             seen = [st.gp_sets(above, candidate, '0', '(2*Pi-1e-12)'),
