@@ -19,7 +19,9 @@ export function FindingNote({ finding, lines, children }: FindingNoteProps) {
       <h3>
         <FindingPlace finding={finding} lines={lines} />
       </h3>
-      {finding.outcome ? <p className={`fstate is-${finding.outcome}`}>{OUTCOME_WORDS[finding.outcome]}</p> : null}
+      {finding.outcome && finding.outcome !== 'no-pick' ? (
+        <p className={`fstate is-${finding.outcome}`}>{OUTCOME_WORDS[finding.outcome]}</p>
+      ) : null}
       {finding.why ? <p className="fwhy">“{finding.why}”</p> : null}
       {finding.shouldBe ? (
         <p className="small">

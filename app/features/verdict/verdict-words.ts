@@ -81,7 +81,8 @@ function stepsIn(steps: readonly ReadStep[], state: ReadStep['state']): number[]
 
 function holdWords(count: number): string {
   if (count === 0) return '';
-  return count === 1 ? 'Step 1 holds.' : `Steps 1 to ${count} hold.`;
+  if (count === 1) return 'Step 1 holds.';
+  return count === 2 ? 'Steps 1 and 2 hold.' : `Steps 1 to ${count} hold.`;
 }
 
 function carriedWords(carried: readonly number[]): string {
