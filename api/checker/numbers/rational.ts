@@ -11,8 +11,31 @@ export const minusOne: Rational = { num: -1n, den: 1n };
 export function gcd(a: bigint, b: bigint): bigint {
   let x = a < 0n ? -a : a;
   let y = b < 0n ? -b : b;
+  if (x < y) [x, y] = [y, x];
+  while (y > longNumber) [x, y] = lehmerStep(x, y);
   while (y !== 0n) [x, y] = [y, x % y];
   return x;
+}
+
+const longNumber = 1n << 256n;
+
+/**
+ * Many steps of Euclid's algorithm at once on the leading 48 bits of x >= y, exact in doubles (Lehmer 1938; Knuth, The Art
+ * of Computer Programming 2, 4.5.2, Algorithm L).
+ */
+function lehmerStep(x: bigint, y: bigint): [bigint, bigint] {
+  const shift = BigInt(bitLength(x) - 48);
+  let [u, v] = [Number(x >> shift), Number(y >> shift)];
+  let [a, b, c, d] = [1, 0, 0, 1];
+  while (v + c !== 0 && v + d !== 0) {
+    const q = Math.floor((u + a) / (v + c));
+    if (q !== Math.floor((u + b) / (v + d))) break;
+    [a, c] = [c, a - q * c];
+    [b, d] = [d, b - q * d];
+    [u, v] = [v, u - q * v];
+  }
+  if (b === 0) return [y, x % y];
+  return [BigInt(a) * x + BigInt(b) * y, BigInt(c) * x + BigInt(d) * y];
 }
 
 export function lcm(a: bigint, b: bigint): bigint {

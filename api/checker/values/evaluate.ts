@@ -76,8 +76,9 @@ function costOf(node: GraphNode): number {
   switch (node.op) {
     case 'call':
     case 'pow':
-    case 'root':
       return 600;
+    case 'root':
+      return 1_500;
     case 'power':
       return 200;
     default:

@@ -19,7 +19,7 @@ interface Lowering {
   /** Definitions being replaced, so that a definition by itself ends. */
   readonly open: ReadonlySet<string>;
   /** Shared by all lowerings of one graph. */
-  readonly nesting: { depth: number };
+  readonly nesting: { depth: number; visits: number };
 }
 
 /** Adds the meaning of expressions to one graph; the answer holds the index of each. */
@@ -30,13 +30,13 @@ export function lowerAll(exprs: readonly Expr[], context: CheckContext): { build
     pushed += 1;
     if ((pushed & 63) === 0) context.budget.spend(32);
   });
-  const lowering: Lowering = { builder, context, bound: nothingBound, open: noNames, nesting: { depth: 0 } };
+  const lowering: Lowering = { builder, context, bound: nothingBound, open: noNames, nesting: { depth: 0, visits: 0 } };
   return { builder, roots: exprs.map((expr) => lower(expr, lowering)) };
 }
 
 /** Adds one more expression to a graph that is being built. */
 export function lowerInto(builder: GraphBuilder, expr: Expr, context: CheckContext): number {
-  return lower(expr, { builder, context, bound: nothingBound, open: noNames, nesting: { depth: 0 } });
+  return lower(expr, { builder, context, bound: nothingBound, open: noNames, nesting: { depth: 0, visits: 0 } });
 }
 
 export function lowerOne(expr: Expr, context: CheckContext): Graph {
@@ -55,6 +55,8 @@ function lower(expr: Expr, at: Lowering): number {
   const { builder, nesting } = at;
   if (nesting.depth > maximumDepth || builder.nodes.length > maximumNodes) return opaque(at, 'limit');
   nesting.depth += 1;
+  nesting.visits += 1;
+  if ((nesting.visits & 63) === 0) at.context.budget.spend(16);
   const index = lowerKind(expr, at, builder);
   nesting.depth -= 1;
   return index;
@@ -192,9 +194,12 @@ function lowerCall(name: Extract<Expr, { kind: 'call' }>['name'], args: readonly
     return at.builder.mul([...lowered, pi, at.builder.number(Q.rational(1, 180))]);
   }
   const [a] = lowered;
-  const written = a === undefined || lowered.length !== 1 ? null : lowerInverseHyperbolic(name, a, at);
+  const isWritten = a !== undefined && lowered.length === 1 && inverseHyperbolic.has(name);
+  const written = isWritten ? lowerInverseHyperbolic(name, a, at) : null;
   return written ?? at.builder.push({ op: 'call', name, args: lowered });
 }
+
+const inverseHyperbolic: ReadonlySet<string> = new Set(['arsinh', 'arcosh', 'artanh']);
 
 /** By logarithms, so that they meet the logarithms that people write for them: DLMF 4.37. */
 function lowerInverseHyperbolic(name: string, a: number, at: Lowering): number | null {

@@ -13,6 +13,17 @@ describe('fractions', () => {
     expect(() => Q.rational(1, 0)).toThrow(RangeError);
   });
 
+  it('have the same greatest common divisor by long steps as by short ones', () => {
+    const long = fc.bigInt(0n, 10n ** 300n);
+    const short = (a: bigint, b: bigint): bigint => (b === 0n ? a : short(b, a % b));
+    fc.assert(
+      fc.property(long, long, fc.bigInt(1n, 10n ** 90n), (a, b, common) => {
+        expect(Q.gcd(a * common, -b * common)).toBe(short(a * common, b * common));
+      }),
+      { seed: 3 },
+    );
+  });
+
   it('form a field', () => {
     fc.assert(
       fc.property(fraction, fraction, fraction, (a, b, c) => {
