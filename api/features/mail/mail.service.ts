@@ -76,9 +76,16 @@ export function createMailService(deps: MailDeps) {
       return { words: OPTIONAL_KINDS[kind] };
     },
 
-    async listPreferences({ userId }: Viewer): Promise<{ kind: OptionalMailKind; words: string; wanted: boolean }[]> {
+    /** The kinds that may reach this person; only teachers are asked to let somebody in. */
+    async listPreferences({
+      userId,
+      role,
+    }: Viewer): Promise<{ kind: OptionalMailKind; words: string; wanted: boolean }[]> {
       const refused = new Set((await db.getRepository(MailPreference).findBy({ userId })).map(({ kind }) => kind));
-      return Object.entries(OPTIONAL_KINDS).map(([kind, words]) => ({
+      const reaching = Object.entries(OPTIONAL_KINDS).filter(
+        ([kind]) => (kind === 'join-request') === (role === 'teacher'),
+      );
+      return reaching.map(([kind, words]) => ({
         kind: kind as OptionalMailKind,
         words,
         wanted: !refused.has(kind),
