@@ -65,6 +65,7 @@ export default defineConfig(({ isSsrBuild }) => ({
           include: ['tests/app/**/*.test.{ts,tsx}'],
           environment: 'jsdom',
           setupFiles: ['tests/support/dom.setup.ts'],
+          testTimeout: 30_000,
         },
       },
     ],

@@ -1,6 +1,9 @@
 import '@testing-library/jest-dom/vitest';
-import { cleanup } from '@testing-library/react';
+import { cleanup, configure } from '@testing-library/react';
 import { afterEach, beforeEach, vi, type MockInstance } from 'vitest';
+
+// A page whose parts load lazily takes its time on a busy machine.
+configure({ asyncUtilTimeout: 8_000 });
 
 /** What jsdom lacks and the interface's parts ask for. */
 window.matchMedia ??= (query: string) =>

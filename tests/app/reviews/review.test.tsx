@@ -185,8 +185,13 @@ describe('after reviewing', () => {
   });
 
   it('says what failed and offers to try again', async () => {
-    show(new FakeProblem({ type: 'not-found', title: 'There is nothing here', status: 404 }));
-    expect(await screen.findByRole('alert')).toHaveTextContent('There is nothing here');
+    show(new FakeProblem({ type: 'conflict', title: 'This has changed in the meantime', status: 409 }));
+    expect(await screen.findByRole('alert')).toHaveTextContent('This has changed in the meantime');
     expect(screen.getByRole('button', { name: 'Try again' })).toBeInTheDocument();
+  });
+
+  it('is a page that is not found where the review is not one’s own', async () => {
+    show(new FakeProblem({ type: 'not-found', title: 'There is nothing here', status: 404 }));
+    expect(await screen.findByRole('heading', { name: 'There is nothing at this address.' })).toBeInTheDocument();
   });
 });
