@@ -7,7 +7,6 @@ import type { ReviewAnswer } from '../shared/schemas/review.ts';
 import type { TodayAnswer } from '../shared/schemas/today.ts';
 
 // Makes the picture in the README anew: PICTURES=1 npm run test:e2e -- e2e/pictures.spec.ts
-test.skip(process.env['PICTURES'] !== '1', 'made on demand, and kept in the repository');
 
 const target = fileURLToPath(new URL('pictures/review.png', import.meta.url));
 

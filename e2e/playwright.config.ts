@@ -11,6 +11,8 @@ process.env['E2E_DATABASE_FILE'] ??= path.join(root, 'test-results/e2e-database'
 export default defineConfig({
   testDir: root,
   testMatch: 'e2e/**/*.spec.ts',
+  // Pictures are made on demand and kept in the repository.
+  testIgnore: process.env['PICTURES'] === '1' ? [] : ['e2e/pictures.spec.ts'],
   outputDir: path.join(root, 'test-results/e2e'),
   fullyParallel: false,
   workers: 2,
