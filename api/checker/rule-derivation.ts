@@ -1,4 +1,5 @@
 import type { DerivationInput, StepRuling, Verdict } from '../../shared/schemas/verdict.ts';
+import { BudgetSpent } from './context.ts';
 import { addEvidence } from './evidence/add-evidence.ts';
 import { readDerivation, type ReadDerivation } from './read-derivation.ts';
 import { applyGoal } from './goals/apply-goal.ts';
@@ -21,7 +22,8 @@ export function checkDerivation(input: DerivationInput, watch: Watch = {}): Verd
   const read = readDerivation(input);
   const route = planRoute(input, read);
   const { rulings, last, before } = ruleSteps(route, watch);
-  const noted = noteMiscopied(read, rejectCandidates(rulings, last, route), route);
+  const kept = unlessSpent(() => rejectCandidates(rulings, last, route), rulings);
+  const noted = noteMiscopied(read, kept, route);
   const steps = noted.map((result, k): StepRuling => ({ step: k + 1, ...result }));
   const verdict = applyGoal(toVerdict(steps), last, route);
   // What explains the rulings counts as one step more: should it take too long, the rulings stand without it.
@@ -66,7 +68,7 @@ function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: W
     }
     const better =
       found.result.ruling === 'fails'
-        ? (joinCases(route, state, step, found) ?? putBrackets(route, state, step, found))
+        ? unlessSpent(() => joinCases(route, state, step, found) ?? putBrackets(route, state, step, found), null)
         : null;
     const results = better ? better.results : [found.result];
     rulings.push(...results.map((result) => (isCertain(result, route) ? result : undecided('not-read'))));
@@ -74,6 +76,16 @@ function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: W
     if (better) step += better.results.length - 1;
   }
   return { rulings, last: state, before };
+}
+
+/** A second look at a ruling is left out where it takes more work than is allowed; the ruling stands. */
+function unlessSpent<T>(look: () => T, otherwise: T): T {
+  try {
+    return look();
+  } catch (cause) {
+    if (cause instanceof BudgetSpent || cause instanceof RangeError) return otherwise;
+    throw cause;
+  }
 }
 
 /** A loss may be what an assumption shuts out that could not be read. */
