@@ -8,6 +8,7 @@ import { putBrackets } from './rules/lost-brackets.ts';
 import { noteMiscopied } from './rules/miscopied.ts';
 import { rejectCandidates } from './rules/candidates.ts';
 import { undecided, type StepResult } from './rules/step-result.ts';
+import { Unsettled } from './solving/unsettled.ts';
 import { judgeLine, passStep, planRoute, skipLine, startWalk, type Route, type WalkState } from './walk-derivation.ts';
 
 /** How a worker that is watched rules: without the steps that ran out of time before, telling where it is. */
@@ -25,7 +26,8 @@ export function checkDerivation(input: DerivationInput, watch: Watch = {}): Verd
   const kept = unlessSpent(() => rejectCandidates(rulings, last, route), rulings);
   const noted = noteMiscopied(read, kept, route);
   const steps = noted.map((result, k): StepRuling => ({ step: k + 1, ...result }));
-  const verdict = applyGoal(toVerdict(steps), last, route);
+  const ruled = toVerdict(steps);
+  const verdict = unlessSpent(() => applyGoal(ruled, last, route), ruled);
   // What explains the rulings counts as one step more: should it take too long, the rulings stand without it.
   const explaining = read.lines.length;
   if (watch.timedOut?.includes(explaining)) return verdict;
@@ -83,7 +85,7 @@ function unlessSpent<T>(look: () => T, otherwise: T): T {
   try {
     return look();
   } catch (cause) {
-    if (cause instanceof BudgetSpent || cause instanceof RangeError) return otherwise;
+    if (cause instanceof BudgetSpent || cause instanceof RangeError || cause instanceof Unsettled) return otherwise;
     throw cause;
   }
 }

@@ -1,6 +1,7 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { BudgetSpent } from '../context.ts';
 import type { CheckContext } from '../context.ts';
+import { Unsettled } from '../solving/unsettled.ts';
 import { lettersBelow } from '../values/graph.ts';
 import type { GraphBuilder, GraphNode } from '../values/graph.ts';
 import { lowerAll, lowerInto, usuallyWhole } from '../values/lower.ts';
@@ -21,6 +22,7 @@ export function compareExpressions(above: Expr, below: Expr, context: CheckConte
   } catch (error) {
     // A RangeError is a number that grew beyond what the machine holds.
     if (error instanceof BudgetSpent || error instanceof RangeError) return { kind: 'undecided', reason: 'limit' };
+    if (error instanceof Unsettled) return { kind: 'undecided', reason: 'limit' };
     throw error;
   }
 }

@@ -1,3 +1,4 @@
+import { addMod, bigMod, inverseMod, mulMod, negateMod, primes } from '../numbers/modular.ts';
 import { gcd, type Rational } from '../numbers/rational.ts';
 
 /** Whole coefficients, lowest power first, no zero at the end; the zero polynomial is empty. */
@@ -89,8 +90,41 @@ function pseudoRemainder(a: Polynomial, b: Polynomial): Polynomial {
   return rest;
 }
 
+/**
+ * Whether a and b have no common factor modulo a prime that divides neither leading coefficient: then they have none over
+ * the rationals either. False says nothing.
+ */
+function areCoprimeModulo(a: Polynomial, b: Polynomial, prime: number): boolean {
+  let x = a.map((c) => bigMod(c, prime));
+  let y = b.map((c) => bigMod(c, prime));
+  if (x[x.length - 1] === 0 || y[y.length - 1] === 0) return false;
+  while (y.length > 1) [x, y] = [y, remainderModulo(x, y, prime)];
+  return y.length === 1;
+}
+
+function remainderModulo(x: readonly number[], y: readonly number[], prime: number): number[] {
+  const rest = [...x];
+  const inverse = inverseMod(y[y.length - 1] ?? 1, prime);
+  while (rest.length >= y.length) {
+    const factor = mulMod(rest[rest.length - 1] ?? 0, inverse, prime);
+    const shift = rest.length - y.length;
+    for (let k = 0; k < y.length - 1; k += 1) {
+      const less = mulMod(factor, y[k] ?? 0, prime);
+      rest[k + shift] = addMod(rest[k + shift] ?? 0, negateMod(less, prime), prime);
+    }
+    rest.pop();
+    while (rest.length > 0 && rest[rest.length - 1] === 0) rest.pop();
+  }
+  return rest;
+}
+
+/** Below this degree the exact way is as fast. */
+const leastModular = 6;
+
 /** Greatest common divisor, primitive. */
 export function gcdPolynomials(a: Polynomial, b: Polynomial): Polynomial {
+  const isLong = a.length > leastModular && b.length > leastModular;
+  if (isLong && areCoprimeModulo(a, b, primes[0] ?? 0)) return onePolynomial;
   let x = primitivePart(a);
   let y = primitivePart(b);
   if (x.length < y.length) [x, y] = [y, x];

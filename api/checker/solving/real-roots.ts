@@ -1,5 +1,6 @@
-import { rational, type Rational } from '../numbers/rational.ts';
+import { bitLength, rational, type Rational } from '../numbers/rational.ts';
 import { derivePolynomial, leading, scaledValueAt, signAt, signOf, type Polynomial } from './polynomial.ts';
+import { Unsettled } from './unsettled.ts';
 
 /** One real root: `low` = `high` where it is a fraction, else the root lies strictly between them. */
 export interface RootInterval {
@@ -7,9 +8,22 @@ export interface RootInterval {
   readonly high: Rational;
 }
 
+/** Additions of numbers of 512 bits that the roots of one polynomial may take. */
+const mostAdditions = 500_000;
+
+interface Work {
+  left: number;
+}
+
+function spend(work: Work, count: number, bits: number): void {
+  work.left -= count * (1 + bits / 512);
+  if (work.left < 0) throw new Unsettled('limit');
+}
+
 /** p(x + 1) by repeated addition. */
-function shiftByOne(p: Polynomial): bigint[] {
+function shiftByOne(p: Polynomial, work: Work): bigint[] {
   const result = [...p];
+  spend(work, (p.length * p.length) / 2, Math.max(bitLength(leading(p)), bitLength(p[0] ?? 0n)) + p.length);
   for (let i = 0; i < result.length - 1; i += 1) {
     for (let j = result.length - 2; j >= i; j -= 1) result[j] = (result[j] ?? 0n) + (result[j + 1] ?? 0n);
   }
@@ -28,8 +42,8 @@ function signChanges(p: readonly bigint[]): number {
 }
 
 /** Descartes bound on the roots strictly between 0 and 1. */
-function boundInUnit(p: Polynomial): number {
-  return signChanges(shiftByOne([...p].reverse()));
+function boundInUnit(p: Polynomial, work: Work): number {
+  return signChanges(shiftByOne([...p].reverse(), work));
 }
 
 /** 2^n p(x / 2). */
@@ -50,18 +64,18 @@ function rootBoundBits(p: Polynomial): number {
 }
 
 /** Isolates the roots in (0, 1) of a square-free p by bisection with Descartes' rule; ends for every square-free p. */
-function isolateInUnit(start: Polynomial): { numerator: bigint; bits: number; exact: boolean }[] {
+function isolateInUnit(start: Polynomial, work: Work): { numerator: bigint; bits: number; exact: boolean }[] {
   const found: { numerator: bigint; bits: number; exact: boolean }[] = [];
   const open: { p: Polynomial; numerator: bigint; bits: number }[] = [{ p: start, numerator: 0n, bits: 0 }];
   for (let job = open.pop(); job; job = open.pop()) {
-    const bound = boundInUnit(job.p);
+    const bound = boundInUnit(job.p, work);
     if (bound === 0) continue;
     if (bound === 1) {
       found.push({ numerator: job.numerator, bits: job.bits, exact: false });
       continue;
     }
     const left = halve(job.p);
-    let right: Polynomial = shiftByOne(left);
+    let right: Polynomial = shiftByOne(left, work);
     if (right[0] === 0n) {
       found.push({ numerator: 2n * job.numerator + 1n, bits: job.bits + 1, exact: true });
       right = right.slice(1);
@@ -73,19 +87,20 @@ function isolateInUnit(start: Polynomial): { numerator: bigint; bits: number; ex
 }
 
 /** The roots above zero of p, as roots of `whole`, which may be zero at zero as well. */
-function positiveRoots(p: Polynomial, whole: Polynomial): RootInterval[] {
+function positiveRoots(p: Polynomial, whole: Polynomial, work: Work): RootInterval[] {
   const bits = BigInt(rootBoundBits(p));
   const scaled = p.map((c, k) => c << (bits * BigInt(k)));
-  return isolateInUnit(scaled).map(({ numerator, bits: depth, exact }) => {
+  return isolateInUnit(scaled, work).map(({ numerator, bits: depth, exact }) => {
     const scale = 1n << BigInt(depth);
     const low = rational(numerator << bits, scale);
-    return exact ? { low, high: low } : toRoot(whole, { low, high: rational((numerator + 1n) << bits, scale) });
+    return exact ? { low, high: low } : toRoot(whole, { low, high: rational((numerator + 1n) << bits, scale) }, work);
   });
 }
 
 /** Halves until the interval is narrower than 1 / leading, where at most one fraction can be a root, and tries that one. */
-function toRoot(p: Polynomial, interval: RootInterval): RootInterval {
+function toRoot(p: Polynomial, interval: RootInterval, work: Work): RootInterval {
   const lead = leading(p) < 0n ? -leading(p) : leading(p);
+  const bits = bitLength(lead);
   let { low, high } = interval;
   if (signAt(p, low) === 0) low = nudge(p, low, high);
   if (signAt(p, high) === 0) high = nudge(p, high, low);
@@ -94,6 +109,8 @@ function toRoot(p: Polynomial, interval: RootInterval): RootInterval {
     (current.high.num * current.low.den - current.low.num * current.high.den) * lead >=
     current.low.den * current.high.den
   ) {
+    // The sign at the middle, and a fraction brought to lowest terms.
+    spend(work, 8 * p.length * (1 + bits / 2000), bits * p.length);
     current = halveInterval(p, current);
     if (current.low === current.high) return current;
   }
@@ -126,13 +143,17 @@ function halveInterval(p: Polynomial, { low, high }: RootInterval): RootInterval
   return sign === signAt(p, low) ? { low: middle, high } : { low, high: middle };
 }
 
-/** All real roots of a square-free polynomial, smallest first; fractions are found exactly. */
+/**
+ * All real roots of a square-free polynomial, smallest first; fractions are found exactly. Throws Unsettled where that is
+ * too much work.
+ */
 export function isolateRealRoots(p: Polynomial): RootInterval[] {
   if (p.length <= 1) return [];
   if (p.length === 2) {
     const root = rational(-(p[0] ?? 0n), p[1] ?? 1n);
     return [{ low: root, high: root }];
   }
+  const work: Work = { left: mostAdditions };
   const roots: RootInterval[] = [];
   let rest = p;
   if (rest[0] === 0n) {
@@ -140,9 +161,9 @@ export function isolateRealRoots(p: Polynomial): RootInterval[] {
     roots.push({ low: none, high: none });
     rest = rest.slice(1);
   }
-  roots.push(...positiveRoots(rest, p));
+  roots.push(...positiveRoots(rest, p, work));
   const mirror = (q: Polynomial): Polynomial => q.map((c, k) => (k % 2 === 0 ? c : -c));
-  for (const root of positiveRoots(mirror(rest), mirror(p))) {
+  for (const root of positiveRoots(mirror(rest), mirror(p), work)) {
     roots.push({ low: negated(root.high), high: negated(root.low) });
   }
   return roots

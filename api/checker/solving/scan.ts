@@ -26,6 +26,8 @@ const defaultWindow = { low: -41, high: 41 };
  */
 export function scanSigns(graph: Graph, outer: LineEnv, solvePart: SolvePart): SignMap {
   const given = new Map([...outer.given].map(([name, value]) => [name, toNumber(value)] as const));
+  // Some thousand samples in doubles.
+  outer.context.budget.spend(graph.nodes.length * 60);
   if (!isDoubleReady(graph, outer.letter, given)) throw new Unsettled('not-covered');
   const isCircular = circularArguments(graph, outer.letter).length > 0;
   const env = isCircular && !outer.window ? { ...outer, window: defaultWindow } : outer;

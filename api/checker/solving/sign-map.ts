@@ -12,7 +12,12 @@ import { Unsettled } from './unsettled.ts';
 /** Where a function of one letter is negative, zero, positive or without a value; throws Unsettled. */
 export function signsOf(graph: Graph, env: LineEnv): SignMap {
   const fraction = toFraction(graph, env.letter, env.given);
-  if (fraction) return signsOfFraction(fraction);
+  if (fraction) {
+    const signs = signsOfFraction(fraction);
+    // Each root will be looked at closely, at the cost of some values of the polynomial.
+    env.context.budget.spend((signs.points.length * fraction.num.length ** 2) / 2);
+    return signs;
+  }
   env.context.budget.spend(200);
   const degree = degreeIn(graph, env.letter);
   if (degree === 0) return signsOfConstant(graph, env);
