@@ -1,4 +1,4 @@
-import { exactRoot, rational, type Rational } from '../numbers/rational.ts';
+import { bitLength, exactRoot, rational, type Rational } from '../numbers/rational.ts';
 import type { Graph, GraphNode } from '../values/graph.ts';
 import {
   addPolynomials,
@@ -161,7 +161,12 @@ export function divideFractions(a: PolynomialFraction, b: PolynomialFraction): P
   };
 }
 
+/** Bits of the largest coefficient; longer ones cost more than they tell. */
+const longestCoefficient = 20_000;
+
 function raise(base: PolynomialFraction, power: number): PolynomialFraction | null {
+  const bits = [...base.num, ...base.den].reduce((most, c) => Math.max(most, bitLength(c)), 0);
+  if (bits > 1 && bits * Math.abs(power) > longestCoefficient) return null;
   if (power > 0) {
     return { num: powerPolynomial(base.num, power), den: powerPolynomial(base.den, power), holes: base.holes };
   }

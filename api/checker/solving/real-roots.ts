@@ -100,7 +100,7 @@ function positiveRoots(p: Polynomial, whole: Polynomial, work: Work): RootInterv
 /** Halves until the interval is narrower than 1 / leading, where at most one fraction can be a root, and tries that one. */
 function toRoot(p: Polynomial, interval: RootInterval, work: Work): RootInterval {
   const lead = leading(p) < 0n ? -leading(p) : leading(p);
-  const bits = bitLength(lead);
+  const bits = Math.max(bitLength(lead), bitLength(p[0] ?? 0n));
   let { low, high } = interval;
   if (signAt(p, low) === 0) low = nudge(p, low, high);
   if (signAt(p, high) === 0) high = nudge(p, high, low);
