@@ -1,6 +1,6 @@
 import { spawn, type ChildProcessWithoutNullStreams } from 'node:child_process';
 import { performance } from 'node:perf_hooks';
-import type { BenchPair } from './bench-pairs.ts';
+import type { BenchPairs } from './bench-pairs.ts';
 
 export type BenchAnswer = 'equal' | 'different' | 'undecided' | 'timeout';
 
@@ -20,12 +20,15 @@ export interface Engine {
 
 const limitMs = 2000;
 
-/** Asks an engine about every pair, one process for all; a new one after a time-out. Null where it is not installed. */
-export async function runEngine(engine: Engine, pairs: readonly BenchPair[]): Promise<Timed[] | null> {
+/**
+ * Asks an engine about every pair, one process for all; a new one after a time-out. Only the pairs to measure are among the
+ * answers. Null where it is not installed.
+ */
+export async function runEngine(engine: Engine, { before, measured }: BenchPairs): Promise<Timed[] | null> {
   const results: Timed[] = [];
   let session = await startSession(engine);
   if (!session) return null;
-  for (const { plain } of pairs) {
+  for (const { plain } of [...before, ...measured]) {
     if (!session) session = await startSession(engine);
     if (!session) return null;
     const began = performance.now();
@@ -37,7 +40,7 @@ export async function runEngine(engine: Engine, pairs: readonly BenchPair[]): Pr
     session = null;
   }
   session?.stop();
-  return results;
+  return results.slice(before.length);
 }
 
 function toAnswer(text: string): BenchAnswer {

@@ -20,22 +20,29 @@ interface Row {
 
 const file = new URL('../../../tests/checker/data/steps.jsonl', import.meta.url);
 
-/** Steps from expression to expression of the kept set, spread evenly over it. */
-export function readPairs(most: number): BenchPair[] {
+export interface BenchPairs {
+  readonly measured: readonly BenchPair[];
+  /** Other pairs, which every engine is asked about before: code is compiled and tables are filled, no answer is known. */
+  readonly before: readonly BenchPair[];
+}
+
+/** Steps from expression to expression of the kept set: some to measure, spread evenly over it, and the rest. */
+export function readPairs(most: number): BenchPairs {
   const rows = readFileSync(file, 'utf8')
     .split('\n')
     .filter(Boolean)
     .map((line) => JSON.parse(line) as Row)
     .filter((row) => row.kind === 'expression');
   const every = Math.max(1, rows.length / most);
-  const picked = Array.from({ length: Math.min(most, rows.length) }, (_, k) => rows[Math.floor(k * every)] as Row);
-  return picked.map(({ topic, lines, right, plain, settings }) => ({
-    topic,
-    tex: lines,
-    plain,
-    right,
-    settings: settings ?? {},
-  }));
+  const picked = new Set(Array.from({ length: Math.min(most, rows.length) }, (_, k) => Math.floor(k * every)));
+  return {
+    measured: rows.filter((_, k) => picked.has(k)).map(toPair),
+    before: rows.filter((_, k) => !picked.has(k)).map(toPair),
+  };
+}
+
+function toPair({ topic, lines, right, plain, settings }: Row): BenchPair {
+  return { topic, tex: lines, plain, right, settings: settings ?? {} };
 }
 
 export interface StatementRow {
