@@ -24,13 +24,16 @@ export function boundSizes(
   return bounds;
 }
 
+function boundAt(bounds: readonly SizeBound[], index: number): SizeBound {
+  return bounds[index] ?? constant;
+}
+
 function boundOf(
   node: GraphNode,
   index: number,
   bounds: readonly SizeBound[],
   kernel: (index: number) => SizeBound,
 ): SizeBound {
-  const of = (arg: number): SizeBound => bounds[arg] ?? constant;
   switch (node.op) {
     case 'number':
       return {
@@ -41,16 +44,17 @@ function boundOf(
     case 'letter':
       return { topDegree: 1, bottomDegree: 0, topBits: 0, bottomBits: 0 };
     case 'add':
-      return boundSum(node.args.map(of));
+      return boundSum(node.args.map((arg) => boundAt(bounds, arg)));
     case 'mul':
-      return node.args.map(of).reduce(boundProduct);
+      return node.args.map((arg) => boundAt(bounds, arg)).reduce(boundProduct);
     case 'negate':
-      return of(node.args[0]);
+      return boundAt(bounds, node.args[0]);
     case 'div':
-      return boundProduct(of(node.args[0]), inverted(of(node.args[1])));
+      return boundProduct(boundAt(bounds, node.args[0]), inverted(boundAt(bounds, node.args[1])));
     case 'power': {
       const n = Math.abs(node.exponent);
-      const base = node.exponent < 0 ? inverted(of(node.args[0])) : of(node.args[0]);
+      const bound = boundAt(bounds, node.args[0]);
+      const base = node.exponent < 0 ? inverted(bound) : bound;
       return scaled(base, n);
     }
     default:

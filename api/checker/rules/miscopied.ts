@@ -1,5 +1,5 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
-import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
+import { childrenOf, countNodes, exprsOf } from '../../../shared/maths/walk.ts';
 import type { ReadDerivation } from '../read-derivation.ts';
 import type { Route } from '../walk-derivation.ts';
 import type { StepResult } from './step-result.ts';
@@ -15,10 +15,14 @@ export function noteMiscopied(read: ReadDerivation, rulings: readonly StepResult
 }
 
 function isMiscopy(given: Line, copy: Line): boolean {
-  if (given.kind !== copy.kind) return false;
+  if (given.kind !== copy.kind || sizeOf(given) !== sizeOf(copy)) return false;
   const [a, b] = [exprsOf(given).flatMap(leavesOf), exprsOf(copy).flatMap(leavesOf)];
   if (a.length !== b.length || a.length < 4 || shapeOf(given) !== shapeOf(copy)) return false;
   return a.filter((leaf, k) => leaf !== b[k]).length === 1;
+}
+
+function sizeOf(line: Line): number {
+  return exprsOf(line).reduce((nodes, expr) => nodes + countNodes(expr), 0);
 }
 
 function shapeOf(line: Line): string {
