@@ -2,7 +2,7 @@ import type { Expr, Line, ReadError, ReadSettings } from '../../shared/maths/exp
 import { lettersOf } from '../../shared/maths/letters.ts';
 import { readLine } from '../../shared/maths/read.ts';
 import { childrenOf, exprsOf } from '../../shared/maths/walk.ts';
-import { nameRates, usualVariable } from './calculus/name-rates.ts';
+import { mayHaveCalculus, nameRates, usualVariable } from './calculus/name-rates.ts';
 import { partWideBlanks, readInPlace } from './meant-lines.ts';
 import type { DerivationInput } from '../../shared/schemas/verdict.ts';
 
@@ -33,7 +33,7 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
     if (!reading.ok) return { ok: false, tex, error: reading.error };
     for (const name of functionsIn(reading.line)) functions.push(name);
     for (const name of definedIn(reading.line)) defined.add(name);
-    return { ok: true, tex, line: nameRates(reading.line, defined, by) };
+    return { ok: true, tex, line: mayHaveCalculus(tex) ? nameRates(reading.line, defined, by) : reading.line };
   };
   const assumed = input.assume.map(read);
   const before: Line[] = [];

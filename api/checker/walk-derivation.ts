@@ -1,6 +1,7 @@
 import { lettersOf } from '../../shared/maths/letters.ts';
 import type { Expr, Line } from '../../shared/maths/expression.ts';
 import type { DerivationInput, UndecidedReason } from '../../shared/schemas/verdict.ts';
+import { mayHaveCalculus } from './calculus/name-rates.ts';
 import { reduceCalculus } from './calculus/reduce.ts';
 import { scopeOf } from './calculus/scope.ts';
 import {
@@ -29,6 +30,8 @@ export interface Route {
   readonly unknown: string | null;
   readonly given: Statement | null;
   readonly calculus: CalculusScope;
+  /** Whether an i can come up that the given did not have. */
+  readonly mayBringUnit: boolean;
 }
 
 /** What a derivation has come to know before a step. */
@@ -57,6 +60,7 @@ export function planRoute(input: DerivationInput, read: ReadDerivation): Route {
     givenLetters: first?.ok ? [...lettersOf(first.line)] : [],
     unknown: findUnknown(input, read),
     given: first?.ok ? toStatement(first.line) : null,
+    mayBringUnit: read.numbers === 'real' && input.lines.some(hasLetterI),
     calculus: scopeOf(
       input.lines.some(mayHaveCalculus) ? read.lines.map((result) => (result.ok ? result.line : null)) : [],
       input.settings.constant ?? false,
@@ -64,9 +68,8 @@ export function planRoute(input: DerivationInput, read: ReadDerivation): Route {
   };
 }
 
-/** Most derivations have no integral or derivative, and are not walked for them. */
-function mayHaveCalculus(tex: string): boolean {
-  return /\\(?:[io]*int|partial|prime|mathrm|operatorname|d?dot|lim)(?![a-z])|['′]|(?:^|[^a-zA-Z\\])d|D/.test(tex);
+function hasLetterI(tex: string): boolean {
+  return tex.includes('i') && tex.replace(/\\[a-zA-Z]+/g, '').includes('i');
 }
 
 /** The letter that the settings or the goal name, else the one that the last line to isolate a letter isolates. */
@@ -151,7 +154,7 @@ export function judgeLine(
   const answer = start === 'not-read' ? notRead(line) : attempt(route, state, step, line, start, context);
   const { ruling, reached, notes, evidence } = answer.result;
   return {
-    result: { ruling, reached, notes: [...new Set(notes)], evidence },
+    result: { ruling, reached, notes: notes.length > 1 ? [...new Set(notes)] : notes, evidence },
     state: advance(route, state, step, answer),
   };
 }
@@ -215,7 +218,8 @@ function attempt(
       given: route.given,
       afterFault: state.afterFault,
       isLast: step === route.read.lines.length - 1,
-      later: laterLetters(route, step),
+      later: () => laterLetters(route, step),
+      mayBringUnit: route.mayBringUnit,
       settings: route.input.settings,
       context,
     });

@@ -1,7 +1,8 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { Evidence, Note } from '../../../shared/schemas/verdict.ts';
-import { compareExpressions } from '../compare/compare-expressions.ts';
+import { compareAtLength, compareExpressions } from '../compare/compare-expressions.ts';
+import { compareQuickly } from '../compare/compare-quickly.ts';
 import type { Comparison } from '../compare/comparison.ts';
 import type { CheckContext } from '../context.ts';
 import { compareAntiderivatives, concernsConstants, type AntiderivativeRuling } from './judge-antiderivative.ts';
@@ -18,8 +19,11 @@ export interface CalculusComparison {
 
 /** Rule 8 on two expressions: up to a constant where one is free, by values that may be infinite or missing, else rule 1. */
 export function compareWithCalculus(above: Expr, below: Expr, context: CheckContext): CalculusComparison {
-  const first = compareAsRead(above, below, context);
   const { calculus } = context;
+  const isCalculus = calculus && calculus.variables.size + calculus.constants.size + calculus.ambiguous.size > 0;
+  const quick = isCalculus ? null : compareQuickly(above, below, context);
+  if (quick !== null) return plain(quick);
+  const first = compareAsRead(above, below, context);
   if (!calculus || calculus.ambiguous.size === 0 || first.found.kind === 'equal') return first;
   // The other reading: y depends on x. A fault has to be one under both.
   const moving = {
@@ -35,7 +39,7 @@ export function compareWithCalculus(above: Expr, below: Expr, context: CheckCont
 
 function compareAsRead(above: Expr, below: Expr, context: CheckContext): CalculusComparison {
   if (concernsConstants(above, below, context)) return compareFreely(above, below, context);
-  if (!hasOperator(above) && !hasOperator(below)) return plain(compareExpressions(above, below, context));
+  if (!hasOperator(above) && !hasOperator(below)) return plain(compareAtLength(above, below, context));
   const [a, b] = [worthOf(above, context), worthOf(below, context)];
   if (a.kind !== 'ordinary' || b.kind !== 'ordinary') return plain(compareWorth(a, b));
   if (openIntegrals(above, context).length + openIntegrals(below, context).length > 0)
@@ -45,8 +49,10 @@ function compareAsRead(above: Expr, below: Expr, context: CheckContext): Calculu
   return plain(compareExpressions(carriedOut(above, context), carriedOut(below, context), within));
 }
 
+export const noEvidence: Evidence = {};
+
 function plain(found: Comparison): CalculusComparison {
-  return { found, notes: [], evidence: {} };
+  return { found, notes: [], evidence: noEvidence };
 }
 
 const operators: ReadonlySet<Expr['kind']> = new Set(['limit', 'integral', 'evaluated', 'series', 'derivative']);

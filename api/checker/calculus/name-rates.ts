@@ -2,6 +2,11 @@ import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { mapExpr, mapLine } from '../../../shared/maths/walk.ts';
 import { rateName } from './rates.ts';
 
+/** Most derivations have no integral, derivative or limit, and are not walked for them. */
+export function mayHaveCalculus(tex: string): boolean {
+  return /\\(?:[io]*int|partial|prime|mathrm|operatorname|d?dot|lim)(?![a-z])|['′]|(?:^|[^a-zA-Z\\])d|D/.test(tex);
+}
+
 /**
  * The line with dy/dx and y' as letters of their own, so that equations are solved for them like for any letter; those of
  * what was defined stay operators. A bare prime is by `by`.

@@ -9,6 +9,7 @@ import { compareConstants } from './compare-constants.ts';
 import { compareMatrices, concernsMatrices } from './compare-matrices.ts';
 import { compareFunctions } from './compare-functions.ts';
 import { compareRationals } from './compare-rationals.ts';
+import { compareQuickly } from './compare-quickly.ts';
 import type { Comparison } from './comparison.ts';
 import { createPair } from './pair.ts';
 import type { Fact, Pair } from './pair.ts';
@@ -17,6 +18,11 @@ import { rationalOps } from './rational-identity.ts';
 
 /** Compares two expressions where both have a value, by rule 1 of the checker. Never throws for what a person wrote. */
 export function compareExpressions(above: Expr, below: Expr, context: CheckContext): Comparison {
+  return compareQuickly(above, below, context) ?? compareAtLength(above, below, context);
+}
+
+/** The same for what is no matter for a quick comparison. */
+export function compareAtLength(above: Expr, below: Expr, context: CheckContext): Comparison {
   try {
     return compareWithin(above, below, context);
   } catch (error) {

@@ -131,7 +131,8 @@ function marksOfLines(tree: unknown, found: Rational[] = []): Rational[] {
 
 /** The first points of a complex comparison are real all the same. */
 export const firstComplex = 30;
-const friendly = [1, 2, 3, -1, -2, 0, 4, 5, -3, 6, 7, -4, 10].map((n) => Q.rational(n));
+const friendlyNumbers = [1, 2, 3, -1, -2, 0, 4, 5, -3, 6, 7, -4, 10];
+const friendly = friendlyNumbers.map((n) => Q.rational(n));
 const friendlyWhole = [1, 2, 3, 4, 5, 6, 0, 7, 8, 10, -1, -2].map((n) => Q.rational(n));
 const scales = [1, 1, 3, 1, 30, 300, 3_000, 30_000];
 const gentleScales = [1, 1, 3, 1, 6, 10, 10, 30];
@@ -153,12 +154,21 @@ export function* pointsOf(region: Region, seed: number, most: number, from = 0):
   }
 }
 
+/**
+ * The value of the letter in that position at the first points of all, which depend on nothing else; null after them. The
+ * first points of several letters are small and mostly distinct: (1, 2, 3), (2, 3, 1), ...
+ */
+export function friendlyNumber(k: number, position: number, letters: number): number | null {
+  if (letters > 1) return k < 3 ? ((k + position) % 3) + 1 : null;
+  return friendlyNumbers[k] ?? null;
+}
+
 function pickValue(k: number, position: number, region: Region, whole: boolean, random: Random): KnownValue {
   const several = region.names.length > 1;
   const list = whole ? friendlyWhole : friendly;
+  const small = whole && !several ? null : friendlyNumber(k, position, region.names.length);
+  if (small !== null) return fromRational(Q.rational(small));
   if (k < list.length && !several) return fromRational(list[k] ?? Q.one);
-  // The first points of several letters are small and mostly distinct: (1, 2, 3), (2, 3, 1), ...
-  if (k < 3 && several) return fromRational(Q.rational(((k + position) % 3) + 1));
   if (k < 14 && several) return fromRational(list[random(list.length)] ?? Q.one);
   if (whole) return fromRational(Q.rational(k % 5 === 0 ? random(30) : k % 5 === 1 ? -random(8) : random(12)));
   if (region.context.numbers === 'complex' && k % 2 === 0 && k >= firstComplex) {

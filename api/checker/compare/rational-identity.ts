@@ -14,7 +14,7 @@ export type Identity =
   | 'first-undefined'
   | 'second-undefined';
 
-const primeBits = 25.97;
+export const primeBits = 25.97;
 const mostEvaluations = 80;
 
 export const rationalOps: ReadonlySet<GraphNode['op']> = new Set([

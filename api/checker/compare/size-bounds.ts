@@ -1,4 +1,5 @@
 import { bitLength } from '../numbers/rational.ts';
+import type { Rational } from '../numbers/rational.ts';
 import type { GraphNode } from '../values/graph.ts';
 
 /** Upper bounds for a quotient N/D of polynomials: degrees, and log2 of the sums of the sizes of the coefficients. */
@@ -24,6 +25,12 @@ export function boundSizes(
   return bounds;
 }
 
+export const letterBound: SizeBound = { topDegree: 1, bottomDegree: 0, topBits: 0, bottomBits: 0 };
+
+export function boundNumber({ num, den }: Rational): SizeBound {
+  return { topDegree: 0, bottomDegree: 0, topBits: bitLength(num), bottomBits: den === 1n ? 0 : bitLength(den) };
+}
+
 function boundAt(bounds: readonly SizeBound[], index: number): SizeBound {
   return bounds[index] ?? constant;
 }
@@ -36,13 +43,9 @@ function boundOf(
 ): SizeBound {
   switch (node.op) {
     case 'number':
-      return {
-        ...constant,
-        topBits: bitLength(node.value.num),
-        bottomBits: node.value.den === 1n ? 0 : bitLength(node.value.den),
-      };
+      return boundNumber(node.value);
     case 'letter':
-      return { topDegree: 1, bottomDegree: 0, topBits: 0, bottomBits: 0 };
+      return letterBound;
     case 'add':
       return boundSum(node.args.map((arg) => boundAt(bounds, arg)));
     case 'mul':
@@ -66,7 +69,7 @@ export function inverted(a: SizeBound): SizeBound {
   return { topDegree: a.bottomDegree, bottomDegree: a.topDegree, topBits: a.bottomBits, bottomBits: a.topBits };
 }
 
-function scaled(a: SizeBound, n: number): SizeBound {
+export function scaled(a: SizeBound, n: number): SizeBound {
   return {
     topDegree: a.topDegree * n,
     bottomDegree: a.bottomDegree * n,

@@ -18,7 +18,7 @@ export interface AsideQuestion {
   /** Letters that the derivation has met before this line. */
   readonly met: readonly string[];
   /** Letters of the lines after this one. */
-  readonly later: readonly string[];
+  readonly later: () => readonly string[];
   readonly context: CheckContext;
 }
 
@@ -39,7 +39,8 @@ export function judgeAside(question: AsideQuestion): AsideAnswer | null {
   const own = lettersOf(line).filter((name) => name !== 'C');
   if (own.length === 0 || own.some((name) => met.includes(baseOf(name)) || met.includes(name) || rateNamed(name)))
     return null;
-  if (!freeLetters(from, context).some((name) => later.includes(name))) return null;
+  const ahead = later();
+  if (!freeLetters(from, context).some((name) => ahead.includes(name))) return null;
   const [first, ...rest] = members as [Expr, ...Expr[]];
   const plain = rest.filter((member) => lettersOf(member).length === 0);
   const [start, ...others] = plain;

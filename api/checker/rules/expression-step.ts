@@ -1,6 +1,6 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import type { Evidence } from '../../../shared/schemas/verdict.ts';
-import { compareWithCalculus } from '../calculus/judge.ts';
+import { compareWithCalculus, noEvidence } from '../calculus/judge.ts';
 import type { Comparison } from '../compare/comparison.ts';
 import type { CheckContext } from '../context.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
@@ -14,12 +14,14 @@ export interface ExpressionAnswer extends StepResult {
 export function judgeExpressions(above: Expr, below: Expr, context: CheckContext): ExpressionAnswer {
   const { found, notes, evidence } = compareWithCalculus(above, below, context);
   const answer = toAnswer(found);
+  if (notes.length === 0 && evidence === noEvidence) return answer;
   return { ...answer, notes: [...answer.notes, ...notes], evidence: { ...answer.evidence, ...evidence } };
 }
 
 function toAnswer(found: Comparison): ExpressionAnswer {
   switch (found.kind) {
     case 'equal': {
+      if (found.excluded.length === 0 && found.cancelled.length === 0) return { ...holds(found.reached), shrunk: [] };
       const conditions = [...found.excluded, ...found.cancelled].map((c) => c.tex);
       const evidence: Evidence = conditions.length > 0 ? { excluded: [...new Set(conditions)] } : {};
       const result = holds(found.reached, conditions.length > 0 ? ['domain'] : [], evidence);

@@ -31,7 +31,9 @@ export interface StepQuestion {
   readonly unknown: string | null;
   readonly isLast: boolean;
   /** Letters of the lines after this one. */
-  readonly later: readonly string[];
+  readonly later: () => readonly string[];
+  /** False where no line has an i. */
+  readonly mayBringUnit: boolean;
   readonly given: Statement | null;
   readonly afterFault: boolean;
   readonly settings: CheckSettings;
@@ -57,7 +59,7 @@ function answer(result: StepResult, meaning: Meaning | null, rest: Partial<StepA
 /** Rules on one step; throws Unsettled and BudgetSpent. */
 export function judgeStep(question: StepQuestion): StepAnswer {
   const { line, from, context } = question;
-  if (bringsUnit(question)) return answer(undecided('no-agreed-meaning'), meaningOf(line));
+  if (question.mayBringUnit && bringsUnit(question)) return answer(undecided('no-agreed-meaning'), meaningOf(line));
   if (line.kind === 'definition') return define([line], context);
   if (line.kind === 'all') {
     const parts = line.parts.filter((part) => part.kind === 'definition');
