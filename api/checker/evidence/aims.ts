@@ -21,6 +21,7 @@ import { differenceAt, type Aim, type MendQuestion } from './mend-question.ts';
 import { collect, keyOf, spread } from './monomials.ts';
 import { choosePlaces } from './places.ts';
 import { workOut } from './worked-out.ts';
+import { withPlus } from '../slips/may-follow.ts';
 
 type Relation = Extract<Line, { kind: 'relation' }>;
 
@@ -107,19 +108,6 @@ function aimAtRoots(above: Relation, line: Relation, places: readonly Place[]): 
   if (roots.some((pair) => pair === null)) return null;
   const targets = [0, 1].map((k) => roots.map((pair) => (pair as readonly Complex[])[k] as Complex));
   return { roots: [right], tree: upper, wanted: null, places, targets };
-}
-
-/** The upper sign; what is left of the tree keeps its nodes. */
-function withPlus(expr: Expr): Expr {
-  if (expr.kind === 'sum' && expr.terms.some((term) => term.sign === 'plusminus')) {
-    return {
-      ...expr,
-      terms: expr.terms.map((term) => (term.sign === 'plusminus' ? { ...term, sign: 'plus' as const } : term)),
-    };
-  }
-  if (expr.kind !== 'quotient') return expr;
-  const numerator = withPlus(expr.numerator);
-  return numerator === expr.numerator ? expr : { ...expr, numerator };
 }
 
 function rootsAt(f: (x: number) => Complex): readonly Complex[] | null {

@@ -1,5 +1,7 @@
-import type { Expr } from '../../../shared/maths/expression.ts';
+import type { Expr, SumExpr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
+import { neg, power, sum } from '../evidence/build.ts';
+import { expanded } from '../evidence/monomials.ts';
 import type { Bindings } from './match.ts';
 import { rule } from './rewrite.ts';
 import { memory, ruled, slip, type Slip } from './slip.ts';
@@ -19,6 +21,35 @@ function hasLetter(expr: Expr | undefined): boolean {
 
 function isNumeric(bound: Bindings): boolean {
   return ![...bound.values()].some(hasLetter);
+}
+
+/** Terms that come to nothing together were not joined in this way. */
+function areLetterTerms(bound: Bindings): boolean {
+  const [k, m] = [bound.get('k'), bound.get('m')];
+  const isNothing = k !== undefined && m !== undefined && expanded(sum(k, m))?.length === 0;
+  return hasLetter(bound.get('a')) && hasLetter(bound.get('b')) && !isNothing;
+}
+
+/** a - b + c read as a - (b + c): the term behind a subtracted one with its sign turned. */
+function* detached(part: Expr): Generator<Expr> {
+  if (part.kind !== 'sum') return;
+  for (const [k, { sign }] of part.terms.entries()) {
+    const next = part.terms[k + 1];
+    if (sign === 'minus' && next) yield withTurned(part, k + 1);
+  }
+}
+
+/** -a^n read as (-a)^n, at the front of a sum, where the minus is that of a number or letter. */
+function* drawnIn(part: Expr): Generator<Expr> {
+  const [first] = part.kind === 'sum' ? part.terms : [];
+  if (part.kind !== 'sum' || first?.sign !== 'minus' || first.expr.kind !== 'power') return;
+  const drawn = power(neg(first.expr.base), first.expr.exponent);
+  yield { ...part, terms: [{ ...first, sign: 'plus', expr: drawn }, ...part.terms.slice(1)] };
+}
+
+function withTurned(part: SumExpr, place: number): Expr {
+  const turned = { plus: 'minus', minus: 'plus', plusminus: 'minusplus', minusplus: 'plusminus' } as const;
+  return { ...part, terms: part.terms.map((term, k) => (k === place ? { ...term, sign: turned[term.sign] } : term)) };
 }
 
 /** Signs. */
@@ -59,9 +90,9 @@ const signs: readonly Slip[] = [
   ),
   ruled('two negatives were added as if they made a plus', 'sign', `Vlassis 2004; ${detachment}`, ['-a-b -> a+b'], 4),
   ruled('subtracting a negative was treated as subtracting', 'sign', memory, ['-(-b) -> -b'], 6),
-  ruled('a term was detached from the minus in front of it', 'sign', detachment, ['-b+c -> -(b+c)', '-b-c -> -b+c'], 4),
+  slip('a term was detached from the minus in front of it', 'sign', detachment, { rank: 4, rewrites: [detached] }),
   ruled('the square of a negative was taken as negative', 'sign', cangelosi, ['(-a)^n -> -a^n'], 6),
-  ruled('the minus sign was drawn into the power', 'sign', portland, ['-a^n -> (-a)^n'], 6),
+  slip('the minus sign was drawn into the power', 'sign', portland, { rank: 6, rewrites: [drawnIn] }),
   ruled(
     'a sign was lost on taking out a common factor',
     'sign',
@@ -191,7 +222,10 @@ const likeTerms: readonly Slip[] = [
     rank: 7,
     rewrites: [rule('a+kb', '(a+k)b', isNumeric), rule('a-kb', '(a-k)b', isNumeric)],
   }),
-  ruled('unlike terms were joined', 'like-terms', booth, ['ka+mb -> (k+m)ab', 'a+b -> ab'], 5),
+  slip('unlike terms were joined', 'like-terms', booth, {
+    rank: 5,
+    rewrites: [rule('ka+mb', '(k+m)ab', areLetterTerms), rule('a+b', 'ab', areLetterTerms)],
+  }),
 ];
 
 export const algebraSlips: readonly Slip[] = [

@@ -61,11 +61,10 @@ function onLimits(join: (upper: Expr, lower: Expr) => Expr): readonly Rewrite[] 
         const found = integrate(part.integrand, part.variable);
         if (found) yield join(at(found, part, part.to), at(found, part, part.from));
       }
-      if (part.kind === 'evaluated' && part.from && part.variable) {
-        yield join(
-          substituteLetter(part.operand, part.variable, part.to),
-          substituteLetter(part.operand, part.variable, part.from),
-        );
+      const [only, ...others] = part.kind === 'evaluated' ? lettersOf(part.operand) : [];
+      const name = part.kind === 'evaluated' ? (part.variable ?? (others.length === 0 ? only : null)) : null;
+      if (part.kind === 'evaluated' && part.from && name) {
+        yield join(substituteLetter(part.operand, name, part.to), substituteLetter(part.operand, name, part.from));
       }
     },
   ];
@@ -100,12 +99,14 @@ function innerOf(integrand: Expr): Expr | null {
   return inner && inner.kind !== 'letter' ? inner : null;
 }
 
+/** No letter of a line is called so. */
+const stand = '\u25a1';
+
 /** The antiderivative of the outer function, at the inner one. */
 function outerIntegral(integrand: Expr, by: string): { outer: Expr; slope: Expr } | null {
   const inner = innerOf(integrand);
   const slope = inner && derive(inner, by);
-  const stand = 't';
-  if (!inner || !slope || lettersOf(integrand).includes(stand)) return null;
+  if (!inner || !slope) return null;
   const replaced: Expr =
     integrand.kind === 'power'
       ? integrand.base === inner
@@ -147,6 +148,10 @@ function* raisedOnly(integrand: Expr, by: string): Generator<Expr> {
   }
 }
 
+function isReciprocal(expr: Expr): boolean {
+  return expr.kind === 'quotient' || (expr.kind === 'power' && expr.exponent.kind === 'sum');
+}
+
 function hasZeroBelow(expr: Expr): boolean {
   return expr.kind === 'quotient' && expr.denominator.kind === 'number' && expr.denominator.numerator === 0n;
 }
@@ -162,7 +167,7 @@ export const integralSlips: readonly Slip[] = [
   slip('the power rule was used at exponent minus one', 'calculus', dawkins, {
     rank: 8,
     *whole(above, below) {
-      if (above.kind === 'integral' && above.integrand.kind === 'quotient' && hasZeroBelow(below)) yield below;
+      if (above.kind === 'integral' && isReciprocal(above.integrand) && hasZeroBelow(below)) yield below;
     },
   }),
   slip('one over an expression was integrated to its logarithm', 'calculus', 'Dawkins, calculus errors', {

@@ -97,9 +97,13 @@ export function listOf(line: Line): { name: string; values: readonly Expr[] } | 
 
 /** An expression with a plus-or-minus sign, both ways. */
 function withSigns(expr: Expr): Expr[] {
-  const choose = (sign: 'plus' | 'minus'): Expr => chosen(expr, sign);
-  const upper = choose('plus');
-  return upper === expr ? [expr] : [upper, choose('minus')];
+  const upper = withPlus(expr);
+  return upper === expr ? [expr] : [upper, chosen(expr, 'minus')];
+}
+
+/** The upper of the two readings of an expression with a plus-or-minus sign; the expression itself where it has none. */
+export function withPlus(expr: Expr): Expr {
+  return chosen(expr, 'plus');
 }
 
 function chosen(expr: Expr, sign: 'plus' | 'minus'): Expr {

@@ -1,6 +1,7 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { exprsOf } from '../../../shared/maths/walk.ts';
+import { sameExpr } from '../../../shared/maths/same.ts';
+import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { sum } from '../evidence/build.ts';
@@ -8,8 +9,8 @@ import { expanded, sumExpr } from '../evidence/monomials.ts';
 import { estimate, estimateCost } from '../evidence/estimate.ts';
 import { choosePlaces, mayBeEqual } from '../evidence/places.ts';
 import { allSlips } from './catalogue.ts';
-import { mayFollow } from './may-follow.ts';
-import { everywhere } from './rewrite.ts';
+import { listOf, mayFollow } from './may-follow.ts';
+import { everywhere, withChild } from './rewrite.ts';
 import type { Slip } from './slip.ts';
 import { signedTerm } from './relations.ts';
 
@@ -56,15 +57,25 @@ export function nameBetween(above: Expr, wholeBelow: Expr, worksOn: boolean, con
     }
   }
   const terms = above.kind === 'sum' ? null : expanded(above);
-  if (!terms) return null;
-  const multiplied = sumExpr(terms);
-  for (const slip of allSlips.filter((one) => one.alsoExpanded)) {
-    for (const candidate of candidatesOf(slip, multiplied, below, context)) {
+  const multiplied = terms && sumExpr(terms);
+  for (const slip of multiplied ? allSlips.filter((one) => one.alsoExpanded) : []) {
+    for (const candidate of candidatesOf(slip, multiplied as Expr, below, context)) {
       context.budget.spend(cost);
       if (mayBeEqual(candidate, values, places) && confirm(candidate)) return slip;
     }
   }
-  return null;
+  const inner = onlyDifference(above, below);
+  return inner && nameBetween(inner[0], inner[1], false, context);
+}
+
+/** The one part in which two expressions of the same build differ, of each; null where they differ in more. */
+function onlyDifference(above: Expr, below: Expr): readonly [Expr, Expr] | null {
+  const [before, after] = [childrenOf(above), childrenOf(below)];
+  if (above.kind !== below.kind || before.length !== after.length) return null;
+  const [place, ...more] = [...before.keys()].filter((k) => !sameExpr(before[k] as Expr, after[k] as Expr));
+  if (place === undefined || more.length > 0) return null;
+  const [inner, own] = [before[place] as Expr, after[place] as Expr];
+  return sameExpr(withChild(above, place, own), below) ? [inner, own] : null;
 }
 
 /** Looking at a candidate at some places, in operations. */
@@ -102,7 +113,22 @@ function withoutConstant(above: Expr, below: Expr): Expr {
   return kept.length === below.terms.length || kept.length === 0 ? below : sum(...kept.map(signedTerm));
 }
 
+/** What explains nearly anything is named only where nothing else is found. */
+const tellingRank = 4;
+
 function nameBetweenStatements(above: Line, below: Line, context: CheckContext, follows: Follows): Slip | null {
+  const onSide = nameOnOneSide(above, below, context);
+  return onSide && onSide.rank >= tellingRank ? onSide : (nameByStatement(above, below, context, follows) ?? onSide);
+}
+
+/** Where one side stands as it was, what happened happened on the other. */
+function nameOnOneSide(above: Line, below: Line, context: CheckContext): Slip | null {
+  if (above.kind !== 'relation' || below.kind !== 'relation' || above.sign !== below.sign) return null;
+  if (sameExpr(above.right, below.right)) return nameBetween(above.left, below.left, false, context);
+  return sameExpr(above.left, below.left) ? nameBetween(above.right, below.right, false, context) : null;
+}
+
+function nameByStatement(above: Line, below: Line, context: CheckContext, follows: Follows): Slip | null {
   const filter = mayFollow(below, above, context);
   const cost = exprsOf(above).reduce((total, expr) => total + costOf(expr), 0);
   let confirmed = 0;
@@ -121,7 +147,8 @@ function nameBetweenStatements(above: Line, below: Line, context: CheckContext, 
 
 function* statementsOf(slip: Slip, above: Line, below: Line, context: CheckContext): Generator<Line> {
   if (slip.lines) yield* slip.lines(above, below, context);
-  if (!slip.rewrites || above.kind !== 'relation') return;
+  // Cases that are not solved yet have a mistake of their own rather than one of the line above.
+  if (!slip.rewrites || above.kind !== 'relation' || (below.kind === 'any' && !listOf(below))) return;
   for (const rewrite of slip.rewrites) {
     for (const left of everywhere(above.left, rewrite)) yield { ...above, left };
     for (const right of everywhere(above.right, rewrite)) yield { ...above, right };

@@ -101,7 +101,8 @@ export function* everywhere(expr: Expr, rewrite: Rewrite): Generator<Expr> {
   }
 }
 
-function withChild(expr: Expr, place: number, changed: Expr): Expr {
+/** The expression with the child at a place, in reading order, replaced. */
+export function withChild(expr: Expr, place: number, changed: Expr): Expr {
   let at = -1;
   return mapChildren(expr, (part) => {
     at += 1;

@@ -81,12 +81,23 @@ function isFunction(expr: Expr): boolean {
   return expr.kind === 'call' || expr.kind === 'log';
 }
 
-/** x^2 = k read as x = root of k; also for even powers and brackets. */
+/** a x^2 + b = k read as x = root of (k - b)/a; also for brackets. */
 function* positiveRoot(above: Line): Generator<Line> {
   for (const { left, sign, right } of bothWays(above)) {
-    if (sign === '=' && left.kind === 'power' && left.exponent.kind === 'number' && left.exponent.numerator === 2n)
-      yield relation(left.base, '=', root(right));
+    if (sign !== '=') continue;
+    const moving = signedTerms(left).filter((term) => lettersOf(term).length > 0);
+    const fixed = signedTerms(left).filter((term) => lettersOf(term).length === 0);
+    const [square] = moving.length === 1 ? factorsOf(moving[0] as Expr).filter(isSquare) : [];
+    if (!square || square.kind !== 'power') continue;
+    const rest = factorsOf(moving[0] as Expr).filter((factor) => factor !== square);
+    if (rest.some((factor) => lettersOf(factor).length > 0)) continue;
+    const other = sum(right, ...fixed.map(neg));
+    yield relation(square.base, '=', root(rest.length === 0 ? other : quotient(other, product(...rest))));
   }
+}
+
+function isSquare(expr: Expr): boolean {
+  return expr.kind === 'power' && expr.exponent.kind === 'number' && expr.exponent.numerator === 2n;
 }
 
 /** One or all of the roots of linear factors with the sign of the factor. */
@@ -146,6 +157,15 @@ function* logsRemoved(above: Line): Generator<Line> {
   if (above.kind !== 'relation' || above.sign !== '=') return;
   const [left, right] = [joined(above.left), joined(above.right)];
   if (left && right) yield relation(left, '=', right);
+  const base = baseIn(left ? above.left : above.right);
+  if (left && !right && lettersOf(above.right).length === 0) yield relation(left, '=', power(base, above.right));
+  if (right && !left && lettersOf(above.left).length === 0) yield relation(power(base, above.left), '=', right);
+}
+
+/** The base of the logarithms of a side, which is taken to have one only: what is named is looked at again. */
+function baseIn(side: Expr): Expr {
+  const [log] = signedTerms(side).flatMap((term) => (term.kind === 'log' ? [term] : []));
+  return log ? (log.base ?? whole(10)) : { kind: 'constant', name: 'e', span: side.span };
 }
 
 function joined(side: Expr): Expr | null {

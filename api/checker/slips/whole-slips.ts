@@ -2,9 +2,13 @@ import type { Expr, Line, NumberExpr } from '../../../shared/maths/expression.ts
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
 import { childrenOf, mapChildren, mapLine, exprsOf } from '../../../shared/maths/walk.ts';
+import { compareExpressions } from '../compare/compare-expressions.ts';
 import { letter, product, sum, whole } from '../evidence/build.ts';
 import { real } from '../evidence/complex-double.ts';
+import { spread, type Monomial } from '../evidence/monomials.ts';
+import * as Q from '../numbers/rational.ts';
 import { estimate } from '../evidence/estimate.ts';
+import { withPlus } from './may-follow.ts';
 import { everywhere, rule } from './rewrite.ts';
 import { memory, ruled, slip, type Slip } from './slip.ts';
 
@@ -28,16 +32,27 @@ function* wrongPairs(above: Expr, below: Expr): Generator<Expr> {
   }
 }
 
-/** x^2 + px + qx + c with pq = c or -c, where p + q is not the middle coefficient. */
+/** ax^2 + px + qx + c with pq = ac or -ac, where p + q is not the middle coefficient. */
 function* wrongSplits(above: Expr, below: Expr): Generator<Expr> {
-  if (below.kind !== 'sum' || above.kind !== 'sum') return;
-  const kept = above.terms.filter((term) =>
-    below.terms.some((other) => other.sign === term.sign && sameExpr(other.expr, term.expr)),
-  );
-  const rest = below.terms.filter(
-    (term) => !above.terms.some((other) => other.sign === term.sign && sameExpr(other.expr, term.expr)),
-  );
-  if (kept.length === above.terms.length - 1 && rest.length === 2) yield below;
+  const [own, parts] = [termsByDegree(above), termsByDegree(below)];
+  if (own?.length !== 3 || parts?.length !== 4) return;
+  const of = (terms: readonly Monomial[], degree: number): number[] =>
+    terms.filter((term) => degreeOf(term) === degree).map((term) => Q.toNumber(term.coefficient));
+  const [[a = 0], [c = 0]] = [of(own, 2), of(own, 0)];
+  const [p = 0, q = 0] = of(parts, 1);
+  const isKept = of(parts, 2)[0] === a && of(parts, 0)[0] === c && of(own, 1).length === 1;
+  if (isKept && a * c !== 0 && Math.abs(p * q) === Math.abs(a * c)) yield below;
+}
+
+/** The terms of a polynomial in one letter; null for anything else. */
+function termsByDegree(expr: Expr): readonly Monomial[] | null {
+  if (expr.kind !== 'sum' || lettersOf(expr).length !== 1) return null;
+  const terms = spread(expr);
+  return terms?.every(({ powers }) => [...powers.values()].every(({ base }) => base.kind === 'letter')) ? terms : null;
+}
+
+function degreeOf({ powers }: Monomial): number {
+  return [...powers.values()].reduce((degree, { exponent }) => degree + exponent, 0);
 }
 
 /** One number written as another; everything else is the same. */
@@ -95,6 +110,8 @@ function decimalsIn(expr: Expr): NumberExpr[] {
 const withoutBrackets = [
   rule('-(a+b)', '-a+b'),
   rule('-(a-b)', '-a-b'),
+  rule('-a(b+c)', '-ab+c'),
+  rule('-a(b-c)', '-ab-c'),
   rule('a(b+c)', 'ab+c'),
   rule('a(b-c)', 'ab-c'),
 ];
@@ -122,9 +139,9 @@ export const wholeSlips: readonly Slip[] = [
     'Portland State University, Common Errors in Algebra and Calculus',
     {
       rank: 8,
-      *whole(above, below) {
-        const [only] = below.kind === 'sum' && below.terms.length === 1 ? below.terms : [];
-        if (only?.sign === 'plusminus' && hasRoot(above)) yield below;
+      *whole(above, below, context) {
+        const upper = hasRoot(above) ? withPlus(below) : below;
+        if (upper !== below && compareExpressions(above, upper, context).kind === 'equal') yield below;
       },
     },
   ),

@@ -6,8 +6,11 @@ import { checkDerivation } from '../../../api/checker/rule-derivation.ts';
 import { allSlips } from '../../../api/checker/slips/catalogue.ts';
 import { nameSlip } from '../../../api/checker/slips/name-slip.ts';
 import { readLine } from '../../../shared/maths/read.ts';
+import { embeddedCases } from './embedded-cases.ts';
 import { otherCases } from './other-cases.ts';
 import document from './slip-cases.json';
+
+const r = String.raw;
 
 function slipOf(above: string, below: string): string | null {
   const verdict = checkDerivation({ lines: [above, below], assume: [], settings: {} });
@@ -58,6 +61,28 @@ describe('naming a slip', { timeout: 30_000 }, () => {
 
   it.each(otherCases)('names what happened from %s to %s', (above, below, begins) => {
     expect(slipOf(above, below)).toMatch(new RegExp(`^${begins}`));
+  });
+
+  it('names the right one inside longer lines', () => {
+    const wanted = new Map(document.cases.map(({ entry, slip }) => [entry, slip]));
+    const missed = embeddedCases.flatMap(([entry, above, below, unknown]) => {
+      const { steps } = checkDerivation({ lines: [above, below], assume: [], settings: unknown ? { unknown } : {} });
+      const found = steps[0]?.ruling === 'fails' ? (steps[0].evidence.slip?.id ?? null) : nameOf(above, below);
+      return found === wanted.get(entry) ? [] : [`${entry}: ${above} to ${below}: ${found}`];
+    });
+    expect(missed).toEqual([]);
+  });
+
+  it.each([
+    [r`\cos(3t)+x^2`, r`x^2+4\cos^3t+3\cos t`],
+    [r`\frac{13x+18}{(x+1)(x+2)}-7`, r`\frac{8}{x+2}+\frac{3}{x+1}-7`],
+    [r`\frac{3^{n+1}}{3^n}`, '1'],
+    [r`\frac{\sqrt a-3}{a-9}`, r`\frac{0}{\sqrt a+3}`],
+    ['|1-x|', '|x+1|'],
+    [r`\ln7776-x^2`, r`5\ln6+x^2`],
+    ['|2x-8|=6', r`2x-8=6\text{ or }2x+8=-6`],
+  ])('names none for what only happens to come to the same, from %s to %s', (above, below) => {
+    expect(slipOf(above, below)).toBeNull();
   });
 
   it('names none where no rule explains the line', () => {
