@@ -5,6 +5,8 @@ import { compareAtLength, compareExpressions } from '../compare/compare-expressi
 import { compareQuickly } from '../compare/compare-quickly.ts';
 import type { Comparison } from '../compare/comparison.ts';
 import type { CheckContext } from '../context.ts';
+import { compareIndexed } from './indexed.ts';
+import { hasIndexed } from './indexed-letters.ts';
 import { compareAntiderivatives, concernsConstants, type AntiderivativeRuling } from './judge-antiderivative.ts';
 import { worthOf, type Worth } from './judge-values.ts';
 import { compareOpenIntegrals, openIntegrals } from './open-integrals.ts';
@@ -40,6 +42,7 @@ export function compareWithCalculus(above: Expr, below: Expr, context: CheckCont
 function compareAsRead(above: Expr, below: Expr, context: CheckContext): CalculusComparison {
   if (concernsConstants(above, below, context)) return compareFreely(above, below, context);
   if (!hasOperator(above) && !hasOperator(below)) return plain(compareAtLength(above, below, context));
+  if (hasIndexed(above) || hasIndexed(below)) return plain(compareIndexed(above, below, context));
   const [a, b] = [worthOf(above, context), worthOf(below, context)];
   if (a.kind !== 'ordinary' || b.kind !== 'ordinary') return plain(compareWorth(a, b));
   if (openIntegrals(above, context).length + openIntegrals(below, context).length > 0)

@@ -23,6 +23,7 @@ import {
   wherever,
   zeroExpr,
 } from './build.ts';
+import { isIndexed } from './indexed-letters.ts';
 import { isFree, polynomialIn, termsIn } from './integrand.ts';
 import { infinitySign } from './limit.ts';
 import { knownInfiniteSum } from './known-sums.ts';
@@ -32,6 +33,7 @@ import { telescoped } from './telescope.ts';
 /** A sum in closed form: polynomials, geometric terms, telescoping ones; null where there is none to be proved. */
 export function closedSeries(node: SeriesExpr, context: CheckContext): Expr | null {
   const { index, from, to, body } = node;
+  if (isIndexed(node)) return null;
   if (node.operation === 'product') return closedProduct(node);
   if (isZeroExpr(body) && infinitySign(to) !== null) return zeroExpr;
   const isInfinite = infinitySign(to) === 1;

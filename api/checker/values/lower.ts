@@ -1,4 +1,5 @@
 import type { Expr, ProductExpr, SeriesExpr, SumExpr } from '../../../shared/maths/expression.ts';
+import { isIndexed } from '../calculus/indexed-letters.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import { createGraphBuilder, lettersBelow } from './graph.ts';
@@ -188,6 +189,9 @@ function pushRoot(radicand: number, degree: number, times: number, positive: boo
 function lowerCall(name: Extract<Expr, { kind: 'call' }>['name'], args: readonly Expr[], at: Lowering): number {
   if (name === 'det' || name === 'transpose')
     return lowerReduced({ kind: 'call', name, args, span: { start: 0, end: 0 } }, at);
+  // Among real numbers a bar over a letter is a name of its own, such as a mean.
+  if (name === 'conj' && at.context.numbers === 'real' && args[0]?.kind === 'letter')
+    return at.builder.push({ op: 'letter', args: [], name: `\\bar{${args[0].name}}` });
   const lowered = args.map((arg) => lower(arg, at));
   if (name === 'degrees') {
     const pi = at.builder.push({ op: 'constant', args: [], name: 'pi' });
@@ -247,6 +251,7 @@ function lowerSeries(expr: SeriesExpr, at: Lowering): number {
   const to = lower(expr.to, at);
   const low = at.builder.valueOf(from);
   const high = at.builder.valueOf(to);
+  if (low !== null && high !== null && isIndexed(expr)) return opaque(at, 'not-covered');
   if (low !== null && high !== null) {
     if (low.den !== 1n || high.den !== 1n) return opaque(at, 'not-covered');
     if (high.num - low.num >= BigInt(maximumTerms)) return lowerReduced(expr, at, 'limit');
@@ -260,7 +265,7 @@ function lowerSeries(expr: SeriesExpr, at: Lowering): number {
   }
   const reduced = at.context.reduceCalculus?.(expr, at.context) ?? null;
   if (reduced !== null && reduced.kind !== 'series') return lower(reduced, at);
-  if (at.bound.size > 0) return opaque(at, 'not-covered');
+  if (at.bound.size > 0 || isIndexed(expr)) return opaque(at, 'not-covered');
   return at.builder.push({
     op: 'series',
     args: [from, to],
