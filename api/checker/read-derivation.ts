@@ -2,6 +2,7 @@ import type { Expr, Line, ReadError, ReadSettings } from '../../shared/maths/exp
 import { lettersOf } from '../../shared/maths/letters.ts';
 import { readLine } from '../../shared/maths/read.ts';
 import { childrenOf, exprsOf } from '../../shared/maths/walk.ts';
+import { nameDifferentials } from './calculus/name-differentials.ts';
 import { mayHaveCalculus, nameRates, usualVariable } from './calculus/name-rates.ts';
 import { partWideBlanks, readInPlace } from './meant-lines.ts';
 import type { DerivationInput } from '../../shared/schemas/verdict.ts';
@@ -37,13 +38,14 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
   };
   const assumed = input.assume.map(read);
   const before: Line[] = [];
-  const lines = input.lines.map((tex): ReadResult => {
+  const asRead = input.lines.map((tex): ReadResult => {
     const result = read(tex);
     if (!result.ok) return result;
     const line = readInPlace(result.line, tex, before);
     before.push(line);
     return { ...result, line };
   });
+  const lines = input.lines.some(mayHaveCalculus) ? withDifferentials(asRead) : asRead;
   const assumptions = assumed.flatMap((result) => (result.ok ? [result.line] : []));
   const wholeLetters = new Set(assumptions.flatMap(wholeByAssumption));
   // Only these forms make a letter whole: most derivations have none of them, and are not walked for it.
@@ -59,6 +61,11 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
     wholeLetters,
     settings: { numbers, decimal, functions },
   };
+}
+
+function withDifferentials(lines: readonly ReadResult[]): readonly ReadResult[] {
+  const named = nameDifferentials(lines.map((result) => (result.ok ? result.line : null)));
+  return lines.map((result, k) => (result.ok ? { ...result, line: named[k] ?? result.line } : result));
 }
 
 /** Complex when the given has an i that no sum or subscript binds. */

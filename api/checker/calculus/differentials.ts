@@ -43,7 +43,7 @@ export function differentialsIn(expr: Expr): string[] {
   return found;
 }
 
-function isDifferential(factors: readonly Expr[], k: number): boolean {
+export function isDifferential(factors: readonly Expr[], k: number): boolean {
   const before = factors[k - 1];
   return factors[k]?.kind === 'letter' && before?.kind === 'letter' && before.name === 'd';
 }

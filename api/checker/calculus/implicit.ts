@@ -1,3 +1,4 @@
+import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import type { CheckContext } from '../context.ts';
@@ -8,8 +9,11 @@ import { judgeSameEquation } from '../rules/same-equation.ts';
 import { freeLetters } from '../rules/meaning.ts';
 import type { StatementAnswer, StatementQuestion } from '../rules/statement-step.ts';
 import { fails, holds, undecided, type StepResult } from '../rules/step-result.ts';
+import { compareExpressions } from '../compare/compare-expressions.ts';
+import { divExprs, negateExpr, subExprs } from './build.ts';
 import { tryOnCurve } from './curve.ts';
 import { differentiate } from './differentiate.ts';
+import { linearIn } from './integrand.ts';
 import { judgeIntegralEquations } from './integral-equations.ts';
 import { rateNamed } from './rates.ts';
 import { carriedOut } from './reduce.ts';
@@ -146,6 +150,22 @@ function onCurve(
   return found.kind === 'agreed' ? agreed(holds('sampled')) : undecided('not-settled');
 }
 
+/** Two equations that are linear in the one rate that both have: they say the same of it where both have a value. */
+function compareRates(above: CompareStatement | null, below: CompareStatement, question: StatementQuestion) {
+  const { context, known } = question;
+  const [rate, ...more] = new Set([...ratesIn(question.above, context), ...ratesIn(question.below, context)]);
+  const isFirst = [...known].every((statement) => ratesIn(statement, context).length > 0);
+  if (!above || rate === undefined || more.length > 0 || !isFirst) return null;
+  const [a, b] = [above, below].map(({ left, right }) => linearIn(subExprs(left, right), rate));
+  if (!a || !b) return null;
+  const [p, q] = [a, b].map(({ slope, constant }) => negateExpr(divExprs(constant, slope))) as [Expr, Expr];
+  const found = compareExpressions(p, q, context);
+  if (found.kind === 'equal') return holds(found.reached);
+  if (found.kind !== 'different') return null;
+  const { atTex, above: worthAbove, below: worthBelow } = found.witness;
+  return fails('proved', { witness: { at: { ...atTex }, above: worthAbove, below: worthBelow } });
+}
+
 /** What the lines say of independent letters is tried on the curve that they belong to before it counts as a fault. */
 function confirmed(question: StatementQuestion, judge: Judge): StatementAnswer {
   const { known, above, context } = question;
@@ -159,6 +179,8 @@ function confirmed(question: StatementQuestion, judge: Judge): StatementAnswer {
   const result = judge({ ...question, reference: above });
   const below = equationOf(question.below);
   if (result.ruling === 'holds' || !below) return result;
+  const slopes = result.ruling === 'undecided' ? compareRates(equationOf(above), below, question) : null;
+  if (slopes) return { ...slopes, candidates: [] };
   const equations = [above, ...known].flatMap(comparesOf).filter(({ sign }) => sign === '=');
   const relations = equations.filter(
     (equation) =>

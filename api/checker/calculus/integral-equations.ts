@@ -13,7 +13,9 @@ import { divExprs, isZeroExpr, mulExprs, negateExpr, subExprs } from './build.ts
 import { tryOnCurve } from './curve.ts';
 import { differentiate } from './differentiate.ts';
 import { rateName, rateNamed } from './rates.ts';
+import { judgeFamilies, type Axes } from './families.ts';
 import { carriedOut } from './reduce.ts';
+import { judgeSolutionCurve } from './solution-curves.ts';
 import { indefiniteVariables } from './scope.ts';
 
 /** Equations with indefinite integrals or a constant of integration on the way; null for all others. */
@@ -24,14 +26,8 @@ export function judgeIntegralEquations({
   context,
   families,
 }: StatementQuestion & { readonly families?: ReadonlySet<string> }): StepResult | null {
-  if (
-    !context.calculus?.hasIntegral ||
-    above.kind !== 'compare' ||
-    below.kind !== 'compare' ||
-    above.sign !== '=' ||
-    below.sign !== '='
-  )
-    return null;
+  if (!context.calculus?.hasIntegral) return null;
+  if (!isEquation(above) || !isEquation(below)) return isEquation(above) ? judgeChoices(above, below, context) : null;
   const constants = [above, below].map((statement) =>
     lettersIn(statement).filter((name) => context.calculus?.constants.has(name)),
   );
@@ -48,7 +44,33 @@ export function judgeIntegralEquations({
   const isFreeAbove = constants[0]?.length !== 0 || integrals[0]?.length !== 0;
   const notes: Note[] = isFreeAbove && !isFreeBelow ? ['constant'] : [];
   if (notes.length > 0 && context.calculus.constantNeeded) return noConstant(below);
+  const areFamilies = constants.every((names) => names.length === 1) && integrals.flat().length === 0;
+  const axes = areFamilies ? axesOf(above, below, context) : null;
+  const found = axes && judgeFamilies(above, below, axes, context);
+  if (found && found.ruling !== 'undecided') return found;
   return sameCurves(above, below, notes, integrals.flat().length > 0, context);
+}
+
+function isEquation(statement: Statement): statement is CompareStatement {
+  return statement.kind === 'compare' && statement.sign === '=';
+}
+
+/** y = the one or the other curve. */
+function judgeChoices(above: CompareStatement, below: Statement, context: CheckContext): StepResult | null {
+  if (below.kind !== 'any' || !below.parts.every(isEquation)) return null;
+  const axes = axesOf(above, below, context);
+  const found = axes && judgeFamilies(above, below, axes, context);
+  return found?.ruling === 'undecided' ? null : found;
+}
+
+/** The two letters that vary: those of dy/dx, or those that the derivation integrates by. */
+function axesOf(above: Statement, below: Statement, { calculus }: CheckContext): Axes | null {
+  const letters = new Set([...lettersIn(above), ...lettersIn(below)]);
+  const pairs = [...(calculus?.dependents ?? [])].filter(([y, x]) => letters.has(y) && letters.has(x));
+  if (pairs.length === 1 && pairs[0]) return { y: pairs[0][0], x: pairs[0][1] };
+  const [a, b, ...more] = [...(calculus?.variables ?? [])].filter((name) => letters.has(name));
+  if (pairs.length > 0 || a === undefined || b === undefined || more.length > 0) return null;
+  return b === 'x' || b === 't' ? { x: b, y: a } : { x: a, y: b };
 }
 
 function lettersIn(statement: Statement): string[] {
@@ -71,7 +93,11 @@ function solved(
   const names = lettersIn(above).filter((name) => rateNamed(name) !== null);
   const rate = names.length === 1 ? rateNamed(names[0] as string) : null;
   const lower = rate && rate.order > 1 ? rateName({ ...rate, order: rate.order - 1 }) : rate?.of;
-  if (!rate || lower === undefined || !lettersIn(below).includes(lower)) return undecided('not-covered');
+  const direct = judgeSolutionCurve(above, below, context);
+  if (direct?.ruling === 'holds' || (direct?.ruling === 'fails' && isFree)) return direct;
+  const open = exprsOfStatement(below).flatMap(indefiniteVariables);
+  if (!rate || lower === undefined || !(lettersIn(below).includes(lower) || open.includes(lower)))
+    return direct ?? undecided('not-covered');
   if (!isFree && context.calculus?.constantNeeded) return noConstant(below);
   const sides = [below.left, below.right].map((side) => differentiate(carriedOut(side, context), rate.by, context)) as [
     Expr,

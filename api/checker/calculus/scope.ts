@@ -42,7 +42,7 @@ export function scopeOf(lines: readonly (Line | null)[], constantNeeded: boolean
     (isRelation ? dependents : ambiguous).set('y', variable);
   }
   for (const name of variables) constants.delete(name);
-  for (const name of dependents.keys()) constants.delete(name);
+  for (const name of [...dependents.keys(), ...dependents.values()]) constants.delete(name);
   return { dependents, ambiguous, variables, constants, hasIntegral, constantNeeded, known: new WeakMap() };
 }
 

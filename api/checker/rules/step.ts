@@ -4,11 +4,12 @@ import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckSettings, Note } from '../../../shared/schemas/verdict.ts';
 import { judgeWithRates } from '../calculus/implicit.ts';
 import { rateNamed } from '../calculus/rates.ts';
+import { indefiniteVariables } from '../calculus/scope.ts';
 import { isOperatorValue, judgeSubstitution, withDefinition } from '../calculus/substitution-line.ts';
 import type { CheckContext, Definitions } from '../context.ts';
 import type { RealNumber } from '../solving/real-number.ts';
 import { isEmptySet, isWholeLine } from '../solving/real-set.ts';
-import { continueFrom, toStatement, type Statement } from '../statements/statement.ts';
+import { continueFrom, exprsOfStatement, toStatement, type Statement } from '../statements/statement.ts';
 import { solveStatement } from '../statements/solve.ts';
 import { judgeExpressions, judgeLinks } from './expression-step.ts';
 import { freeLetters, meaningOf, type Meaning } from './meaning.ts';
@@ -84,7 +85,10 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   if (aside) return answer(aside.result, null, { defines: aside.defines });
   const helper = from?.kind === 'expression' ? judgeSubstitution(line, from.expr, context) : null;
   if (helper) return answer(helper.result, null, { defines: helper.defines });
-  if (freeLetters(meaning.statement, context).length === 0 && !isValueOf(from)) {
+  const isAboutNumbers =
+    freeLetters(meaning.statement, context).length === 0 &&
+    exprsOfStatement(meaning.statement).every((expr) => indefiniteVariables(expr).length === 0);
+  if (isAboutNumbers && !isValueOf(from)) {
     const remark = judgeRemark(meaning, question);
     if (remark) return remark;
   }
