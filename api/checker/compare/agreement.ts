@@ -61,6 +61,8 @@ function knownAgreement(above: KnownValue, below: KnownValue, bits: number): Agr
   if (difference.kind === 'rational') return difference.value.num === 0n ? 'same' : 'apart';
   if (difference.kind !== 'ball') return 'apart';
   if (isNonZero(difference)) return 'apart';
+  // No fraction is a multiple of pi, however close.
+  if (above.kind !== 'ball' && below.kind !== 'ball') return 'blurred';
   const size = Math.max(sizeOf(toBall(above, bits)), sizeOf(toBall(below, bits)));
   const doubt = Math.max(bitLength(difference.re.rad), difference.im === null ? 0 : bitLength(difference.im.rad));
   // At high precision most of the bits have to agree, not only the first few.

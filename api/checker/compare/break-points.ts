@@ -1,6 +1,7 @@
 import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
 import { toDoubleFunction } from '../solving/double-evaluator.ts';
+import type { DoubleFunction } from '../solving/double-evaluator.ts';
 import { toFraction } from '../solving/fraction.ts';
 import { squareFreePart } from '../solving/polynomial.ts';
 import { approximate, between, rationalNumber, realRoots } from '../solving/real-number.ts';
@@ -10,11 +11,12 @@ import type { GraphNode } from '../values/graph.ts';
 import type { KnownValue, Point } from '../values/value.ts';
 import type { Pair } from './pair.ts';
 import type { Region } from './points.ts';
+import { signChanges } from './sign-changes.ts';
 
-/** Where one letter makes a node, or a node plus or minus 1, vanish. */
+/** Where one letter makes a node plus a whole number vanish. */
 interface Break {
   readonly node: number;
-  readonly shift: -1 | 0 | 1;
+  readonly shift: number;
 }
 
 const mostBreaks = 24;
@@ -25,7 +27,7 @@ function breaksOf(pair: Pair): Break[] {
   const found: Break[] = [];
   pair.nodes.forEach((node, index) => {
     if (pair.needed[index] !== 1 || found.length >= mostBreaks) return;
-    found.push(...breaksOfNode(node));
+    found.push(...breaksOfNode(node), ...turnsOfInverse(node, pair.nodes));
   });
   return found.filter(({ node }) => pair.moving[node] === 1);
 }
@@ -47,6 +49,22 @@ function breaksOfNode(node: GraphNode): Break[] {
     default:
       return [];
   }
+}
+
+const circular: ReadonlySet<string> = new Set(['sin', 'cos', 'tan', 'cot', 'sec', 'csc']);
+/** One between pi/2 and pi, the other beyond it, and the same on the other side. */
+const turns = [-2, 2, -5, 5];
+
+/** An inverse function of a circular one goes on differently after each half turn. */
+function turnsOfInverse(node: GraphNode, nodes: readonly GraphNode[]): Break[] {
+  if (node.op !== 'call' || !node.name.startsWith('arc')) return [];
+  const inner = nodes[node.args[0] ?? -1];
+  const parts = inner?.op === 'div' || inner?.op === 'negate' || inner?.op === 'power' ? inner.args : node.args;
+  return parts.flatMap((index) => {
+    const part = nodes[index];
+    if (part?.op !== 'call' || !circular.has(part.name)) return [];
+    return turns.map((shift) => ({ node: part.args[0] as number, shift }));
+  });
 }
 
 function breaksOfCall(
@@ -87,7 +105,8 @@ function rootsAlong(
     if (roots.length > mostRoots) break;
     const fraction = toFraction({ nodes: pair.nodes, root: node }, letter, given);
     if (fraction === null) {
-      roots.push(...scannedRoots(pair, node, shift, letter, given));
+      for (const part of partsThatVanish(pair.nodes, node, shift))
+        roots.push(...scannedRoots(pair, { node: part, shift }, letter, given));
       continue;
     }
     const shifted = addScaled(fraction.num, fraction.den, BigInt(shift));
@@ -103,12 +122,27 @@ function addScaled(a: readonly bigint[], b: readonly bigint[], factor: bigint): 
   return sum;
 }
 
+/** A power or product vanishes where its base or a factor does, which changes its sign there. */
+function partsThatVanish(nodes: readonly GraphNode[], index: number, shift: number): number[] {
+  const node = nodes[index];
+  if (shift !== 0) return [index];
+  if (node?.op === 'power' || node?.op === 'root' || node?.op === 'negate')
+    return partsThatVanish(nodes, node.args[0], 0);
+  if (node?.op === 'mul' || node?.op === 'div') return node.args.flatMap((arg) => partsThatVanish(nodes, arg, 0));
+  return node?.op === 'number' ? [] : [index];
+}
+
 /** Where two arguments of a minimum or maximum are equal. */
 function differencesOfExtremes(pair: Pair, letter: string, given: ReadonlyMap<string, Rational>): RealNumber[] {
   return pair.nodes.flatMap((node, index) => {
     if (pair.needed[index] !== 1 || node.op !== 'call' || (node.name !== 'min' && node.name !== 'max')) return [];
-    const [a, b] = node.args.map((arg) => toFraction({ nodes: pair.nodes, root: arg }, letter, given));
-    if (!a || !b) return [];
+    const [first, second] = node.args;
+    if (first === undefined || second === undefined) return [];
+    const [a, b] = [first, second].map((root) => toFraction({ nodes: pair.nodes, root }, letter, given));
+    if (!a || !b) {
+      const [f, g] = [first, second].map((root) => doubleFunctionOf(pair, root, letter, given));
+      return f && g ? signChanges((x) => f(x) - g(x)).map((root) => rationalNumber(fromDouble(root))) : [];
+    }
     const difference = addScaled(multiply(a.num, b.den), multiply(b.num, a.den), -1n);
     return difference.length > 1 && difference.length < 40 ? realRoots(squareFreePart(difference)) : [];
   });
@@ -120,58 +154,38 @@ function multiply(a: readonly bigint[], b: readonly bigint[]): bigint[] {
   return product;
 }
 
-const grid = [
-  0, 0.01, 0.1, 0.3, 0.6, 1, 1.5, 2, 2.5, 3, 4, 5, 7, 10, 15, 20, 30, 50, 100, 300, 1_000, 3_000, 10_000, 30_000,
-  100_000, 1_000_000,
-];
-
 /** Sign changes of a part that is no quotient of polynomials, by doubles: places to look at, nothing more. */
 function scannedRoots(
   pair: Pair,
-  node: number,
-  shift: number,
+  { node, shift }: Break,
   letter: string,
   given: ReadonlyMap<string, Rational>,
 ): RealNumber[] {
+  const f = doubleFunctionOf(pair, node, letter, given);
+  return signChanges((x) => f(x) + shift).map((root) => rationalNumber(fromDouble(root)));
+}
+
+function doubleFunctionOf(
+  pair: Pair,
+  root: number,
+  letter: string,
+  given: ReadonlyMap<string, Rational>,
+): DoubleFunction {
   const numbers = new Map([...given].map(([name, value]) => [name, Q.toNumber(value)]));
-  const f = toDoubleFunction({ nodes: pair.nodes, root: node }, letter, numbers);
-  const at = (x: number): number => f(x) + shift;
-  const points = [
-    ...grid
-      .slice(1)
-      .map((x) => -x)
-      .reverse(),
-    ...grid,
-  ];
-  const roots: RealNumber[] = [];
-  for (let k = 1; k < points.length && roots.length < 6; k += 1) {
-    const root = bisect(at, points[k - 1] ?? 0, points[k] ?? 0);
-    if (root !== null) roots.push(rationalNumber(fromDouble(root)));
-  }
-  return roots;
+  return toDoubleFunction({ nodes: pair.nodes, root }, letter, numbers);
 }
 
-function bisect(f: (x: number) => number, from: number, to: number): number | null {
-  let [low, high] = [from, to];
-  const sign = Math.sign(f(low));
-  if (sign === 0) return low;
-  if (!(sign * f(high) < 0)) return null;
-  for (let k = 0; k < 40; k += 1) {
-    const middle = (low + high) / 2;
-    if (sign * f(middle) > 0) low = middle;
-    else high = middle;
-  }
-  return (low + high) / 2;
-}
-
+/** To about 20 bits behind the first that counts. */
 function fromDouble(x: number): Rational {
-  return Q.rational(Math.round(x * 2 ** 20), 2 ** 20);
+  if (x === 0) return Q.zero;
+  const scale = 2 ** Math.max(0, 30 - Math.floor(Math.log2(Math.abs(x))));
+  return Q.rational(Math.round(x * scale), scale);
 }
 
 function sorted(roots: readonly RealNumber[]): RealNumber[] {
   const byValue = roots.map((root) => ({ root, value: approximate(root) })).sort((a, b) => a.value - b.value);
   return byValue
-    .filter(({ value }, k) => k === 0 || value - (byValue[k - 1]?.value ?? 0) > 1e-9 * (1 + Math.abs(value)))
+    .filter(({ value }, k) => k === 0 || value - (byValue[k - 1]?.value ?? 0) > 1e-9 * Math.abs(value))
     .map(({ root }) => root);
 }
 

@@ -20,7 +20,7 @@ export function compareConstants(pair: Pair, context: CheckContext): Comparison 
       return witness === null ? { kind: 'undecided', reason: 'not-settled' } : { kind: 'different', witness };
     }
     case 'same': {
-      const exact = pair.above === pair.below || (above.kind !== 'ball' && below.kind !== 'ball');
+      const exact = pair.above === pair.below || (above.kind !== 'ball' && above.kind === below.kind);
       if (exact || provesIdentity(pair, context) || provesEqualConstants(pair, context)) return equal('proved');
       return confirmSampled(pair, context);
     }

@@ -130,7 +130,7 @@ function marksOfLines(tree: unknown, found: Rational[] = []): Rational[] {
 }
 
 /** The first points of a complex comparison are real all the same. */
-export const firstComplex = 30;
+const firstComplex = 12;
 const friendlyNumbers = [1, 2, 3, -1, -2, 0, 4, 5, -3, 6, 7, -4, 10];
 const friendly = friendlyNumbers.map((n) => Q.rational(n));
 const friendlyWhole = [1, 2, 3, 4, 5, 6, 0, 7, 8, 10, -1, -2].map((n) => Q.rational(n));
@@ -171,14 +171,24 @@ function pickValue(k: number, position: number, region: Region, whole: boolean, 
   if (k < list.length && !several) return fromRational(list[k] ?? Q.one);
   if (k < 14 && several) return fromRational(list[random(list.length)] ?? Q.one);
   if (whole) return fromRational(Q.rational(k % 5 === 0 ? random(30) : k % 5 === 1 ? -random(8) : random(12)));
-  if (region.context.numbers === 'complex' && k % 2 === 0 && k >= firstComplex) {
-    return fromParts(Q.rational(random(15) - 7, 1 + random(3)), Q.rational(random(15) - 7, 1 + random(3)));
-  }
+  if (region.context.numbers === 'complex' && k % 2 === 0 && k >= firstComplex) return complexValue(k, region, random);
   if (region.traits.turns && k % 4 === 1) return fromPi(Q.rational(random(49) - 24, [12, 6, 4, 3, 1][random(5)] ?? 1));
   if (region.marks.length > 0 && k % 4 === 3)
     return nearMark(region.marks[random(region.marks.length)] ?? Q.one, random);
   const range = region.traits.gentle ? gentleScales : scales;
   return fromRational(scattered(range[random(range.length)] ?? 1, random));
+}
+
+/** Small parts, or parts as large as the written numbers: the logarithm of e^(z/100) goes on differently from 100 pi i on. */
+function complexValue(k: number, region: Region, random: Random): KnownValue {
+  const re = Q.rational(random(15) - 7, 1 + random(3));
+  const im = Q.rational(random(15) - 7, 1 + random(3));
+  if (k % 8 === 2 || region.marks.length === 0) return fromParts(re, im);
+  const mark = Q.absolute(region.marks[random(region.marks.length)] ?? Q.one);
+  const scale = mark.num < mark.den ? Q.div(Q.one, mark) : mark;
+  return k % 8 === 0
+    ? fromParts(re, Q.mul(im, Q.mul(scale, Q.rational(5))))
+    : fromParts(Q.mul(re, scale), Q.mul(im, scale));
 }
 
 function nearMark(mark: Rational, random: Random): KnownValue {

@@ -12,7 +12,7 @@ import type { Ball } from '../numbers/ball.ts';
 import { piBall } from '../numbers/elementary.ts';
 import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
-import type { BallValue, KnownValue, UnknownValue, Value } from './value.ts';
+import type { BallValue, GaussianValue, KnownValue, UnknownValue, Value } from './value.ts';
 
 /** Sums, products, quotients and whole powers: exact where both are exact, else balls of `bits` bits. */
 
@@ -186,7 +186,8 @@ export function powKnown(a: KnownValue, exponent: number, bits: number): Value {
     const size = Q.bitLength(a.value.num) + Q.bitLength(a.value.den);
     if (size * Math.abs(exponent) <= exactBits || size === 2) return fromRational(Q.pow(a.value, exponent));
   }
-  if (a.kind === 'gaussian' && Math.abs(exponent) <= 64) return powBySquares(a, exponent, bits);
+  if (a.kind === 'gaussian' && (isUnit(a) || gaussianBits(a) * Math.abs(exponent) <= exactBits))
+    return powBySquares(a, exponent, bits);
   const ball = toBall(a, bits);
   // A number beyond that is of no use to anybody and costs much to hold.
   const size = Math.max(Q.bitLength(ball.re.mid), ball.im ? Q.bitLength(ball.im.mid) : 0) - bits;
@@ -194,6 +195,15 @@ export function powKnown(a: KnownValue, exponent: number, bits: number): Value {
   if (ball.im !== null) return powBySquares(ball, exponent, bits);
   const result = powBall(ball.re, exponent, bits);
   return result === null ? unknown('precision') : fromBall(result);
+}
+
+/** i or -i, whose powers stay small. */
+function isUnit({ re, im }: GaussianValue): boolean {
+  return Q.isZero(re) && im.den === 1n && (im.num === 1n || im.num === -1n);
+}
+
+function gaussianBits({ re, im }: GaussianValue): number {
+  return Q.bitLength(re.num) + Q.bitLength(re.den) + Q.bitLength(im.num) + Q.bitLength(im.den);
 }
 
 function powBySquares(a: KnownValue, exponent: number, bits: number): Value {
