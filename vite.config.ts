@@ -12,7 +12,12 @@ export default defineConfig(({ isSsrBuild }) => ({
         target: 'node20',
         copyPublicDir: false,
         rollupOptions: {
-          input: { main: 'api/main.ts', 'check.worker': 'api/checker/check.worker.ts' },
+          input: {
+            main: 'api/main.ts',
+            'check.worker': 'api/checker/check.worker.ts',
+            verdicts: 'api/checker/cli/verdicts.ts',
+            bench: 'api/checker/cli/bench.ts',
+          },
           output: { entryFileNames: '[name].js' },
         },
       }

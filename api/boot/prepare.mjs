@@ -41,6 +41,11 @@ const SERVER_SOURCES = ['api', 'shared', 'vite.config.ts', 'tsconfig.json', 'pac
 /** Builds client and server when their sources are not those of the last build. */
 export async function buildWhatChanged(root) {
   await buildIfChanged(root, { name: 'client', sources: CLIENT_SOURCES, out: 'dist/app', args: [] });
+  await buildServer(root);
+}
+
+/** The server and the commands of the checker; they speak on standard error, where a command's output is read. */
+export async function buildServer(root) {
   await buildIfChanged(root, { name: 'server', sources: SERVER_SOURCES, out: 'dist/api', args: ['--ssr'] });
 }
 
@@ -51,9 +56,9 @@ async function buildIfChanged(root, { name, sources, out, args }) {
     sources.flatMap((each) => listFiles(root, each)),
   );
   if (readQuietly(stamp) === hash && fs.existsSync(path.join(root, out))) return;
-  console.log(`Building the ${name} ...`);
+  console.error(`Building the ${name} ...`);
   fs.rmSync(stamp, { force: true });
-  await run(process.execPath, ['node_modules/vite/bin/vite.js', 'build', '--logLevel', 'warn', ...args], root);
+  await run(process.execPath, ['node_modules/vite/bin/vite.js', 'build', '--logLevel', 'error', ...args], root);
   fs.writeFileSync(stamp, hash);
 }
 
@@ -83,10 +88,10 @@ function readQuietly(file) {
   }
 }
 
-/** Runs a command to its end, showing what it says. */
+/** Runs a command to its end, showing what it says on standard error. */
 export function run(command, args, cwd, env = process.env) {
   return new Promise((resolve, reject) => {
-    const child = spawn(command, args, { cwd, env, stdio: ['ignore', 'inherit', 'inherit'] });
+    const child = spawn(command, args, { cwd, env, stdio: ['ignore', 2, 2] });
     child.once('error', (error) => reject(new Error(`${command} could not be started: ${error.message}`)));
     child.once('exit', (code, signal) => {
       if (code === 0) resolve();

@@ -24,8 +24,11 @@ export interface CheckPoolOptions {
   }) => void;
 }
 
+/** A verdict with the time that it took: reading and ruling, and finding what explains the faults. */
+export type Checked = Verdict & { readonly ms: number; readonly explainMs: number };
+
 export interface CheckPool {
-  readonly check: (input: DerivationInput) => Promise<Verdict & { readonly ms: number }>;
+  readonly check: (input: DerivationInput) => Promise<Checked>;
   /** Whether a small derivation gets its answer; false once closed. */
   readonly healthy: () => Promise<boolean>;
   readonly close: () => Promise<void>;
@@ -67,13 +70,13 @@ export function createCheckPool(options: CheckPoolOptions = {}): CheckPool {
   const workMs = createWorkClock();
   let isClosed = false;
 
-  async function check(input: DerivationInput): Promise<Verdict & { ms: number }> {
+  async function check(input: DerivationInput): Promise<Checked> {
     const timedOut: number[] = [];
     const slow = new Set<number>();
     const deadline = workMs() + derivationMs;
     for (;;) {
       const run = await runOnce(piscina, { input, timedOut: [...timedOut] }, { stepMs, deadline, workMs });
-      if (run.kind === 'done') return { ...run.answer.verdict, ms: run.answer.ms };
+      if (run.kind === 'done') return { ...run.answer.verdict, ms: run.answer.ms, explainMs: run.answer.explainMs };
       options.onEnded?.({ step: run.step, reason: run.kind, input, cause: run.cause });
       const explaining = input.lines.length;
       if (timedOut.includes(explaining) && workMs() > deadline) return givenUp(input, derivationMs);
@@ -155,9 +158,15 @@ function isOutOfMemory(cause: unknown): boolean {
 }
 
 /** Nothing could be read within the limits. */
-function givenUp(input: DerivationInput, derivationMs: number): Verdict & { ms: number } {
+function givenUp(input: DerivationInput, derivationMs: number): Checked {
   const steps = input.lines.slice(1).map((_, k): StepRuling => {
     return { step: k + 1, ruling: 'undecided', reached: null, notes: [], evidence: { reason: 'time' } };
   });
-  return { outcome: steps.length === 0 ? 'sound' : 'undecided', firstFault: null, steps, ms: derivationMs };
+  return {
+    outcome: steps.length === 0 ? 'sound' : 'undecided',
+    firstFault: null,
+    steps,
+    ms: derivationMs,
+    explainMs: 0,
+  };
 }

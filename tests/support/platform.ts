@@ -37,7 +37,7 @@ export async function createPlatform(dataSource: DataSource, databaseUrl: string
     mailer: keepLetters(mails, mailServer),
     mailbox: { list: () => [] },
     // The same rules as in the worker threads, without waiting for one to start in every test file.
-    checks: { check: async (input) => ({ ...checkDerivation(input), ms: 0 }), healthy: async () => true },
+    checks: { check: async (input) => ({ ...checkDerivation(input), ms: 0, explainMs: 0 }), healthy: async () => true },
   };
   return { platform, clock, mails, mailServer, close: () => queue.stop() };
 }

@@ -18,7 +18,8 @@ interface Row {
   readonly settings?: Record<string, unknown>;
 }
 
-const file = new URL('../../../tests/checker/data/steps.jsonl', import.meta.url);
+// Both npm run and the tests start in the root of the repository.
+const file = 'tests/checker/data/steps.jsonl';
 
 export interface BenchPairs {
   readonly measured: readonly BenchPair[];

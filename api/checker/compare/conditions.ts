@@ -33,6 +33,7 @@ export function needsOf(nodes: readonly GraphNode[], needed: Uint8Array, complex
     else if (node?.op === 'power' && node.exponent > 0) askNonzero(node.args[0]);
     else if (node?.op === 'div') askNonzero(node.args[0]);
     else if (node?.op === 'root' && node.times > 0) askNonzero(node.args[0]);
+    else if (isNeverZero(nodes, arg)) return;
     else if (node?.op !== 'number' || Q.isZero(node.value)) ask(arg, 'nonzero');
   };
   nodes.forEach((node, index) => {
@@ -44,6 +45,14 @@ export function needsOf(nodes: readonly GraphNode[], needed: Uint8Array, complex
     else if (node.op === 'call') askOfCall(node.name, node.args, complex, ask, askNonzero);
   });
   return [...found.values()];
+}
+
+/** Powers of e and of positive numbers: those of other bases ask for the base by themselves. */
+function isNeverZero(nodes: readonly GraphNode[], arg: number): boolean {
+  const node = nodes[arg];
+  if (node?.op === 'call') return node.name === 'exp';
+  const base = node?.op === 'pow' ? nodes[node.args[0]] : undefined;
+  return base?.op === 'number' && Q.sign(base.value) > 0;
 }
 
 function askOfRoot(

@@ -5,6 +5,7 @@ import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
 import { toFraction } from '../solving/fraction.ts';
 import { fromPi, fromRational } from '../values/arithmetic.ts';
+import { evaluateNodes } from '../values/evaluate.ts';
 import { lettersBelow } from '../values/graph.ts';
 import { callExpr, letterExpr, nodeToExpr, numberExpr } from '../values/node-expr.ts';
 import type { KnownValue, Point } from '../values/value.ts';
@@ -16,6 +17,7 @@ import type { Condition } from './comparison.ts';
 import { meets, relationOf } from './conditions.ts';
 import type { Need } from './conditions.ts';
 import type { Pair } from './pair.ts';
+import { markNeeded } from './modular-values.ts';
 import { pointsOf } from './points.ts';
 import { ownZeros } from './polynomial-conditions.ts';
 import type { OwnZeros } from './polynomial-conditions.ts';
@@ -36,15 +38,23 @@ const ladder = [128] as const;
  * value and the need is not met.
  */
 export function findConditions(pair: Pair, samples: Samples, region: Region, context: CheckContext): FoundConditions {
-  const onlyBelow = unshared(pair.needsBelow, pair.needsAbove);
-  const onlyAbove = unshared(pair.needsAbove, pair.needsBelow);
+  const onlyBelow = needsOfOne(pair.needsBelow, pair.needsAbove);
+  const onlyAbove = needsOfOne(pair.needsAbove, pair.needsBelow);
   if (onlyBelow.length === 0 && onlyAbove.length === 0) return none;
   const exact = exactConditions(pair, onlyBelow, onlyAbove, region);
   if (exact !== null) return exact;
   const tried: Sample[] = [...samples.aboveOnly, ...samples.belowOnly];
   let count = 0;
-  for (const point of pointsToTry(pair, [...onlyBelow, ...onlyAbove], samples, region, context)) {
+  const unshared = [...onlyBelow, ...onlyAbove];
+  const wanted = markNeeded(
+    pair.nodes,
+    unshared.map(({ arg }) => arg),
+  );
+  for (const point of pointsToTry(pair, unshared, samples, region, context)) {
     if ((count += 1) > mostTries) break;
+    // Only points that break a need tell something, and few do.
+    const values = evaluateNodes(pair.nodes, point, ladder[0], context, wanted);
+    if (!unshared.some((need) => meets(need, values[need.arg], ladder[0]) === false)) continue;
     const result = compareAt(pair, point, context, ladder);
     if (result.agreement === 'above-only' || result.agreement === 'below-only') tried.push({ point, result });
   }
@@ -91,7 +101,7 @@ function conditionsOfZeros(zeros: readonly OwnZeros[], letter: string, pair: Pai
   return [...found.values()];
 }
 
-function unshared(own: readonly Need[], other: readonly Need[]): Need[] {
+function needsOfOne(own: readonly Need[], other: readonly Need[]): Need[] {
   return own.filter((need) => !other.some(({ arg, kind }) => arg === need.arg && kind === need.kind));
 }
 

@@ -111,5 +111,12 @@ function nonResidue(p: number): number {
 
 /** A square root of -1 for a prime that is 1 mod 4. */
 export function imaginaryMod(p: number): number {
-  return powMod(nonResidue(p), (p - 1) / 4, p);
+  const known = imaginaryUnits.get(p);
+  if (known !== undefined) return known;
+  const unit = powMod(nonResidue(p), (p - 1) / 4, p);
+  imaginaryUnits.set(p, unit);
+  return unit;
 }
+
+/** By prime: at most as many as the tables of primes hold. */
+const imaginaryUnits = new Map<number, number>();

@@ -25,6 +25,7 @@ import { powOf, rootOf } from './powers.ts';
 import type { KnownValue, Point, Value } from './value.ts';
 
 const seriesLimit = 400n;
+const notWanted = unknown('not-covered');
 
 /** Expressions that are evaluated often: lower them once, evaluate at many points. */
 export type Prepared = Graph;
@@ -43,12 +44,22 @@ export function evaluatePrepared(graph: Prepared, point: Point, bits: number, co
   return values[graph.root] ?? unknown('not-covered');
 }
 
-/** The value of every node, in the order of the nodes. */
-export function evaluateNodes(nodes: readonly GraphNode[], point: Point, bits: number, context: CheckContext): Value[] {
+/** The value of every node, in the order of the nodes; those that are not wanted count as not covered. */
+export function evaluateNodes(
+  nodes: readonly GraphNode[],
+  point: Point,
+  bits: number,
+  context: CheckContext,
+  wanted?: Uint8Array,
+): Value[] {
   const field: Field = { bits, complex: context.numbers === 'complex' };
   const values: Value[] = [];
   let cost = 0;
   for (const node of nodes) {
+    if (wanted !== undefined && wanted[values.length] === 0) {
+      values.push(notWanted);
+      continue;
+    }
     const value = evaluateNode(node, values, point, field, context);
     values.push(value);
     cost += costOf(node) + costOfSize(value);

@@ -60,10 +60,10 @@ test('is what the general comparison says on random quotients', () => {
       if (expectSame(a, `\\left(${a}\\right)+0`)) ruled += 1;
       if (expectSame(`${a}-\\left(${b}\\right)`, `\\left(${a}\\right)+\\left(${b}\\right)`)) ruled += 1;
     }),
-    { seed: 20_261_201, numRuns: 500 },
+    { seed: 20_261_201, numRuns: 250 },
   );
-  expect(ruled).toBeGreaterThan(600);
-});
+  expect(ruled).toBeGreaterThan(300);
+}, 60_000);
 
 test.each([
   ['\\frac{1}{x-x}', '\\frac{2}{x-x}'],

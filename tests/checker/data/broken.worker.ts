@@ -11,5 +11,5 @@ export default function check({ input, timedOut, progress }: CheckTask): CheckAn
       if (step === 2 && !timedOut.includes(2)) throw new TypeError('broken on purpose');
     },
   });
-  return { verdict, ms: 1 };
+  return { verdict, ms: 1, explainMs: 0 };
 }

@@ -12,5 +12,5 @@ export default function check({ input, timedOut, progress }: CheckTask): CheckAn
       while (step === 2 && !timedOut.includes(2));
     },
   });
-  return { verdict, ms: 1 };
+  return { verdict, ms: 1, explainMs: 0 };
 }
