@@ -13,6 +13,7 @@ import {
   type CheckContext,
   type Definitions,
 } from './context.ts';
+import { letterNamed } from './letter-named.ts';
 import type { ReadDerivation } from './read-derivation.ts';
 import { isolatedLetter, nearlyIsolatedLetter } from './rules/formula.ts';
 import { meaningOf, type Meaning } from './rules/meaning.ts';
@@ -74,8 +75,8 @@ function hasLetterI(tex: string): boolean {
 
 /** The letter that the settings or the goal name, else the one that the last line to isolate a letter isolates. */
 function findUnknown(input: DerivationInput, read: ReadDerivation): string | null {
-  if (input.settings.unknown) return input.settings.unknown;
-  if (input.settings.goal?.kind === 'solved') return input.settings.goal.letter;
+  if (input.settings.unknown) return letterNamed(input.settings.unknown);
+  if (input.settings.goal?.kind === 'solved') return letterNamed(input.settings.goal.letter);
   const statements = read.lines.slice(1).flatMap((result) => (result.ok ? (toStatement(result.line) ?? []) : []));
   return lastNotNull(statements, isolatedLetter) ?? lastNotNull(statements, nearlyIsolatedLetter);
 }

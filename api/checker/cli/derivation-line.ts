@@ -6,8 +6,25 @@ const lineSchema = z.object({
   lines: z.array(z.string()).min(1).max(1000),
   assume: z.array(z.string()).max(50).nullish(),
   uses: z.array(z.array(z.number().int().min(0)).nullable()).nullish(),
-  settings: checkSettingsSchema.nullish(),
+  settings: z.preprocess(plainSettings, checkSettingsSchema.nullish()),
 });
+
+const kindsOfGoal: ReadonlySet<string> = new Set(['free', 'expanded', 'factored', 'simplified']);
+
+/** Short forms that a person types: a goal by its name or as the target's TeX, `presentation: true`, the decimal sign. */
+function plainSettings(settings: unknown): unknown {
+  if (typeof settings !== 'object' || settings === null) return settings;
+  const plain: Record<string, unknown> = { ...settings };
+  if (typeof plain.presentation === 'boolean') plain.presentation = plain.presentation ? 'note' : undefined;
+  if (plain.decimal === ',') plain.decimal = 'comma';
+  if (plain.decimal === '.') plain.decimal = 'point';
+  if (plain.goal === 'solved') plain.goal = { kind: 'solved' };
+  if (typeof plain.goal === 'string')
+    plain.goal = kindsOfGoal.has(plain.goal) ? { kind: plain.goal } : { kind: 'target', target: plain.goal };
+  if (typeof plain.goal === 'object' && plain.goal !== null && 'kind' in plain.goal && plain.goal.kind === 'solved')
+    plain.goal = { letter: plain.unknown ?? 'x', ...plain.goal };
+  return plain;
+}
 
 export type DerivationLine =
   | { readonly ok: true; readonly id: string | number | null; readonly input: DerivationInput }
@@ -17,7 +34,7 @@ export type DerivationLine =
 export function parseDerivationLine(text: string): DerivationLine {
   let data: unknown;
   try {
-    data = JSON.parse(text);
+    data = JSON.parse(text.replace(/^\uFEFF/, ''));
   } catch (cause) {
     return { ok: false, id: null, message: cause instanceof Error ? cause.message : 'not JSON' };
   }

@@ -2,6 +2,7 @@ import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { readLine } from '../../../shared/maths/read.ts';
 import type { Goal } from '../../../shared/schemas/verdict.ts';
+import { letterNamed } from '../letter-named.ts';
 import type { Meaning } from '../rules/meaning.ts';
 import { isLetter, type Statement } from '../statements/statement.ts';
 import type { Route, WalkState } from '../walk-derivation.ts';
@@ -21,7 +22,7 @@ export function isGoalReached(goal: Goal, last: WalkState, route: Route): boolea
     case 'factored':
       return sidesOf(meaning).some(isFactored);
     case 'solved':
-      return meaning?.kind === 'statement' && isSolved(meaning.statement, goal.letter);
+      return meaning?.kind === 'statement' && isSolved(meaning.statement, letterNamed(goal.letter));
     case 'target':
       return isTarget(goal.target, route);
   }
