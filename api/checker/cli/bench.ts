@@ -22,7 +22,7 @@ const rows: (readonly [string, readonly Timed[] | null])[] = [
 for (const engine of engines) rows.push([engine.name, await runEngine(engine, all)]);
 
 print(
-  `${pairs.length} pairs of expressions, one process for each engine, 2 s a question, asked ${all.before.length} others before; times in ms\n`,
+  `${pairs.length} pairs of expressions, one process for each engine, 2 s a question, asked ${all.before.length} other questions before; times in ms\n`,
 );
 printTable(
   ['engine', 'right', 'false equal', 'false different', 'undecided', 'time-outs', 'median', '99th', 'times slower'],

@@ -1,7 +1,7 @@
 import type { CheckContext } from '../context.ts';
 import { compareAt } from './agreement.ts';
 import type { Comparison } from './comparison.ts';
-import { findConditions } from './find-conditions.ts';
+import { conditionsWithoutPoints, findConditions } from './find-conditions.ts';
 import { marksOf } from './pair.ts';
 import type { Pair } from './pair.ts';
 import { createRegion, pointsOf } from './points.ts';
@@ -28,6 +28,9 @@ export function compareRationals(pair: Pair, context: CheckContext): Comparison 
   const isPolynomial = pair.needsAbove.length === 0 && pair.needsBelow.length === 0;
   if (isPolynomial && context.assumptions.length === 0) return { kind: 'equal', reached, excluded: [], cancelled: [] };
   const region = createRegion(pair.names, pair.whole, marksOf(pair), plain, context);
+  // Without assumptions a quotient has a value almost everywhere.
+  const found = context.assumptions.length === 0 ? conditionsWithoutPoints(pair, region) : null;
+  if (found !== null) return { kind: 'equal', reached, ...found };
   const samples = takeSamples(pair, pointsOf(region, context.seed, mostPoints), context, { agreements: 2 });
   if (samples.apart !== null) return { kind: 'undecided', reason: 'not-settled' };
   if (!samples.inside) return { kind: 'undecided', reason: samples.counts.limit > 0 ? 'limit' : 'no-domain' };

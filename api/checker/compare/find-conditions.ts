@@ -38,11 +38,10 @@ const ladder = [128] as const;
  * value and the need is not met.
  */
 export function findConditions(pair: Pair, samples: Samples, region: Region, context: CheckContext): FoundConditions {
+  const found = conditionsWithoutPoints(pair, region);
+  if (found !== null) return found;
   const onlyBelow = needsOfOne(pair.needsBelow, pair.needsAbove);
   const onlyAbove = needsOfOne(pair.needsAbove, pair.needsBelow);
-  if (onlyBelow.length === 0 && onlyAbove.length === 0) return none;
-  const exact = exactConditions(pair, onlyBelow, onlyAbove, region);
-  if (exact !== null) return exact;
   const tried: Sample[] = [...samples.aboveOnly, ...samples.belowOnly];
   let count = 0;
   const unshared = [...onlyBelow, ...onlyAbove];
@@ -62,6 +61,14 @@ export function findConditions(pair: Pair, samples: Samples, region: Region, con
     excluded: conditionsFrom(pair, onlyBelow, tried, 'above-only'),
     cancelled: conditionsFrom(pair, onlyAbove, tried, 'below-only'),
   };
+}
+
+/** What can be told without any points; null where it takes some. */
+export function conditionsWithoutPoints(pair: Pair, region: Region): FoundConditions | null {
+  const onlyBelow = needsOfOne(pair.needsBelow, pair.needsAbove);
+  const onlyAbove = needsOfOne(pair.needsAbove, pair.needsBelow);
+  if (onlyBelow.length === 0 && onlyAbove.length === 0) return none;
+  return exactConditions(pair, onlyBelow, onlyAbove, region);
 }
 
 /** Lines in one letter that only divide need no points. */

@@ -1,5 +1,5 @@
-import type { Expr, Line } from '../../../shared/maths/expression.ts';
-import { childrenOf, countNodes, exprsOf } from '../../../shared/maths/walk.ts';
+import type { Expr, Line, Term } from '../../../shared/maths/expression.ts';
+import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
 import type { ReadDerivation } from '../read-derivation.ts';
 import type { Route } from '../walk-derivation.ts';
 import type { StepResult } from './step-result.ts';
@@ -15,30 +15,38 @@ export function noteMiscopied(read: ReadDerivation, rulings: readonly StepResult
 }
 
 function isMiscopy(given: Line, copy: Line): boolean {
-  if (given.kind !== copy.kind || sizeOf(given) !== sizeOf(copy)) return false;
-  const [a, b] = [exprsOf(given).flatMap(leavesOf), exprsOf(copy).flatMap(leavesOf)];
-  if (a.length !== b.length || a.length < 4 || shapeOf(given) !== shapeOf(copy)) return false;
-  return a.filter((leaf, k) => leaf !== b[k]).length === 1;
+  if (given.kind !== copy.kind) return false;
+  const [own, other] = [exprsOf(given), exprsOf(copy)];
+  const count = { leaves: 0, changed: 0 };
+  const isAlike = own.length === other.length && own.every((expr, k) => compareLeaves(expr, other[k] as Expr, count));
+  return isAlike && count.leaves >= fewestLeaves && count.changed === 1;
 }
 
-function sizeOf(line: Line): number {
-  return exprsOf(line).reduce((nodes, expr) => nodes + countNodes(expr), 0);
-}
+const fewestLeaves = 4;
 
-function shapeOf(line: Line): string {
-  const shape = (expr: Expr): string => `${expr.kind}(${childrenOf(expr).map(shape).join()})`;
-  return exprsOf(line).map(shape).join(';');
-}
-
-/** Numbers and letters with the sign in front of their term. */
-function leavesOf(expr: Expr): string[] {
-  if (expr.kind === 'number') return [`${expr.numerator}/${expr.denominator}`];
-  if (expr.kind === 'letter') return [expr.name];
-  if (expr.kind === 'sum') {
-    return expr.terms.flatMap((term, k) => {
-      const sign: string[] = k === 0 && term.sign === 'plus' ? [] : [term.sign];
-      return [...sign, ...leavesOf(term.expr)];
+/** Counts numbers, letters and the signs between terms, and those that differ; false where the shapes do or too many differ. */
+function compareLeaves(a: Expr, b: Expr, count: { leaves: number; changed: number }): boolean {
+  if (a.kind === 'number' && b.kind === 'number')
+    return addLeaf(a.numerator === b.numerator && a.denominator === b.denominator, count);
+  if (a.kind === 'letter' && b.kind === 'letter') return addLeaf(a.name === b.name, count);
+  if (a.kind === 'sum' && b.kind === 'sum') {
+    if (a.terms.length !== b.terms.length || a.terms[0]?.sign !== b.terms[0]?.sign) return false;
+    return a.terms.every(({ sign, expr }, k) => {
+      const other = b.terms[k] as Term;
+      const isSignAlike = (k === 0 && sign === 'plus') || addLeaf(sign === other.sign, count);
+      return isSignAlike && compareLeaves(expr, other.expr, count);
     });
   }
-  return childrenOf(expr).flatMap(leavesOf);
+  const [own, other] = [childrenOf(a), childrenOf(b)];
+  return (
+    a.kind === b.kind &&
+    own.length === other.length &&
+    own.every((part, k) => compareLeaves(part, other[k] as Expr, count))
+  );
+}
+
+function addLeaf(isAlike: boolean, count: { leaves: number; changed: number }): boolean {
+  count.leaves += 1;
+  if (!isAlike) count.changed += 1;
+  return count.changed <= 1;
 }
