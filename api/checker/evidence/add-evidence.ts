@@ -1,4 +1,4 @@
-import type { Line } from '../../../shared/maths/expression.ts';
+import type { Line, RelationSign } from '../../../shared/maths/expression.ts';
 import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
 import type { Evidence, StepRuling, Verdict } from '../../../shared/schemas/verdict.ts';
 import { BudgetSpent, createBudget, type CheckContext } from '../context.ts';
@@ -10,7 +10,7 @@ import { followsFrom } from './follows-from.ts';
 import { carryOn } from './mend-ending.ts';
 import { mendLine } from './mend-line.ts';
 import type { MendQuestion } from './mend-question.ts';
-import { meaningToLine } from './meaning-line.ts';
+import { knownLines, meaningToLine } from './meaning-line.ts';
 import { followsPlainly } from './plainly-held.ts';
 import { findWrongPart } from './wrong-part.ts';
 
@@ -82,6 +82,8 @@ function askAbout(fault: StepRuling, route: Route, state: WalkState, context: Ch
     link: evidence.link ?? 1,
     isLarge: size > mostNodes,
     solutions: solutionsOf(above.line, route, state, fault.step),
+    known: knownLines(state),
+    carried: [],
     lost: evidence.lost ?? [],
     gained: evidence.gained ?? [],
     settings: route.read.settings,
@@ -92,8 +94,14 @@ function askAbout(fault: StepRuling, route: Route, state: WalkState, context: Ch
 
 /** Asked for inequalities only, whose solutions are not among what was lost or gained by name. */
 function solutionsOf(above: Line, route: Route, state: WalkState, step: number): string | null {
-  if (above.kind !== 'relation' || above.sign === '=') return null;
+  const signs = signsOf(above);
+  if (signs.length === 0 || signs.includes('=')) return null;
   return judgeLine(route, state, step, above).result.evidence.solutions ?? null;
+}
+
+function signsOf(line: Line): readonly RelationSign[] {
+  if (line.kind === 'any' || line.kind === 'all') return line.parts.flatMap(signsOf);
+  return line.kind === 'relation' ? [line.sign] : line.kind === 'chain' ? line.signs : [];
 }
 
 function sizeOf(line: Line): number {

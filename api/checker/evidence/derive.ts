@@ -187,6 +187,10 @@ function integrateQuotient(top: Expr, bottom: Expr, by: string): Expr | null {
     return inner && quotient(inner, bottom);
   }
   if (lettersOf(top).includes(by)) return null;
+  if (bottom.kind === 'root' && !bottom.degree) {
+    const slope = slopeOf(bottom.radicand, by);
+    return slope && product(top, quotient(product(whole(2), bottom), slope));
+  }
   if (bottom.kind === 'power' && bottom.exponent.kind === 'number') {
     const inner = integratePower({ ...bottom, exponent: neg(bottom.exponent) }, by);
     return inner && product(top, inner);

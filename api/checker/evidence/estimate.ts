@@ -1,4 +1,5 @@
 import type { Expr, FunctionName } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { Definitions } from '../context.ts';
 import {
@@ -159,10 +160,11 @@ function calculusValue(expr: CalculusExpr, at: Place): Complex {
     case 'derivative':
       return expr.order === 1 ? derivativeValue(expr, at) : missing;
     case 'evaluated': {
-      if (!expr.from || !expr.variable) return missing;
+      const name = expr.variable ?? lettersOf(expr.operand)[0];
+      if (!expr.from || !name) return missing;
       return minus(
-        estimate(expr.operand, moved(at, expr.variable, estimate(expr.to, at))),
-        estimate(expr.operand, moved(at, expr.variable, estimate(expr.from, at))),
+        estimate(expr.operand, moved(at, name, estimate(expr.to, at))),
+        estimate(expr.operand, moved(at, name, estimate(expr.from, at))),
       );
     }
     case 'integral':
@@ -179,10 +181,37 @@ function calculusValue(expr: CalculusExpr, at: Place): Complex {
       return estimate(own.value, { letters, definitions: { ...at.definitions, functions: functionsLeft } });
     }
     case 'limit':
+      return limitValue(expr, at);
     case 'rate':
     case 'matrix':
       return missing;
   }
+}
+
+/** From values near the place, or far out, by the rule of Richardson; good to some ten digits where the limit is a plain one. */
+function limitValue(expr: Extract<Expr, { kind: 'limit' }>, at: Place): Complex {
+  const value = (x: number): Complex => estimate(expr.operand, moved(at, expr.variable, real(x)));
+  const [first] = expr.to.kind === 'sum' ? expr.to.terms : [];
+  const far = expr.to.kind === 'constant' ? expr.to : first?.expr;
+  if (far?.kind === 'constant' && far.name === 'infinity') {
+    const out = first?.sign === 'minus' ? -farOut : farOut;
+    return extrapolated([value(out), value(2 * out), value(4 * out)]);
+  }
+  const place = estimate(expr.to, at).re;
+  const near = (h: number): Complex =>
+    expr.side === 'both'
+      ? times(plus(value(place + h), value(place - h)), real(0.5))
+      : value(expr.side === 'left' ? place - h : place + h);
+  return extrapolated([near(nearBy), near(nearBy / 2), near(nearBy / 4)]);
+}
+
+const farOut = 1024;
+const nearBy = 2 ** -9;
+
+/** What values at h, h/2 and h/4 tend to, where the error falls as h and h squared. */
+function extrapolated([a, b, c]: readonly [Complex, Complex, Complex]): Complex {
+  const [one, two] = [minus(times(b, real(2)), a), minus(times(c, real(2)), b)];
+  return minus(times(two, real(4 / 3)), times(one, real(1 / 3)));
 }
 
 const analytic: ReadonlySet<string> = new Set(['sin', 'cos', 'tan', 'cot', 'sec', 'csc', 'ln', 'exp', 'degrees']);
@@ -236,7 +265,7 @@ function seriesValue(expr: Extract<Expr, { kind: 'series' }>, at: Place): Comple
 export function estimateCost(expr: Expr): number {
   const inside = childrenOf(expr).reduce((cost, part) => cost + estimateCost(part), 1);
   if (expr.kind === 'integral') return inside * gauss.length * panels;
-  if (expr.kind === 'derivative') return inside * 6;
+  if (expr.kind === 'derivative' || expr.kind === 'limit') return inside * 6;
   return expr.kind === 'series' ? inside * 8 : inside;
 }
 

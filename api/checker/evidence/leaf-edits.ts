@@ -1,8 +1,9 @@
-import type { Expr, TermSign } from '../../../shared/maths/expression.ts';
+import type { Expr, NumberExpr, TermSign } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
-import { fraction, letter, neg, power, product, whole } from './build.ts';
+import { fraction, isOne, letter, neg, power, product, whole } from './build.ts';
 import type { Complex } from './complex-double.ts';
 import type { Candidate, Edit } from './edits.ts';
 import { hole, replaceNode, solveHole } from './holes.ts';
@@ -21,13 +22,14 @@ const costs = {
 } as const;
 /** Fractions where none was written are rarely what was meant. */
 const fractionCost = 1.5;
+/** What stands under a root or in a function was rather copied than worked out. */
+const functionCost = 0.15;
 
 /** Changes of one number, sign, exponent, coefficient or letter after which the tree has the wanted values. */
 export function* leafEdits(
   aim: Aim,
   letters: readonly string[],
   tex: string,
-  isRight: (node: Expr) => boolean,
   isWanted: (node: Expr) => boolean = () => true,
 ): Generator<Candidate> {
   const nodes = aim.roots.flatMap(nodesOf).filter(({ node }) => isWanted(node));
@@ -35,7 +37,7 @@ export function* leafEdits(
     for (const place of nodes) {
       aim.budget.spend(aim.cost);
       for (const found of editsAt(place, aim, target, letters, tex))
-        yield { ...found, touchesRight: isRight(place.node) };
+        yield { ...found, cost: found.cost + aim.extra, touchesRight: aim.isRight(place.node) };
     }
   }
 }
@@ -58,10 +60,10 @@ function* editsAt(
       target,
     );
     if (value) yield* changedNumber(place, value, tex);
-    return;
-  }
-  if (place.leads && place.leads.term.expr === node && !place.isFactor)
+  } else if (place.leads && place.leads.term.expr === node && !place.isFactor)
     yield* changedTerm(place, place.leads, aim, target, tex);
+  if (place.leads?.term.expr === node && !place.isFactor) yield* letterPutIn(node, aim, target, letters);
+  if (node.kind === 'product') yield* letterTakenOut(node, aim, target);
   if (node.kind === 'letter') yield* changedLetter(place, aim, target, letters);
 }
 
@@ -71,16 +73,18 @@ function costOfFraction(tex: string): number {
 }
 
 function* changedNumber(place: PlacedNode, value: Rational, tex: string): Generator<Found> {
-  const { node, leads, isExponent, isFactor } = place;
+  const { node, leads, isExponent, isFactor, isInFunction } = place;
   if (node.kind !== 'number') return;
   const before = { num: node.numerator, den: node.denominator };
   if (Q.equals(value, before)) return;
+  const inside = isInFunction ? functionCost : 0;
   const extra =
-    value.den !== 1n && isWholeNumber(node)
+    inside +
+    (value.den !== 1n && isWholeNumber(node)
       ? place.isFactor || place.isExponent || place.isInQuotient
         ? fractionCost
         : costOfFraction(tex)
-      : 0;
+      : 0);
   const span = outer(node);
   if (Q.isZero(value) && leads && !leads.isOnly) {
     yield { edits: [{ ...leads.term.span, text: '' }], cost: costs.drop + 0.1 * leavesOf(leads.term.expr).length };
@@ -88,22 +92,24 @@ function* changedNumber(place: PlacedNode, value: Rational, tex: string): Genera
   }
   if (isExponent && Q.equals(value, Q.one)) {
     const start = tex.lastIndexOf('^', span.start);
-    const end = tex[span.end] === '}' ? span.end + 1 : span.end;
+    const isBraced = tex.slice(start + 1, span.start).trim() === '{' && tex[span.end] === '}';
+    const end = isBraced ? span.end + 1 : span.end;
     if (start >= 0) yield { edits: [{ start, end, text: '' }], cost: costs.drop };
     return;
   }
   if (value.num >= 0n) {
     const isUnit =
       isFactor && leads !== null && Q.equals(value, Q.one) && !/^\s*(\\cdot|\\times|[0-9])/.test(tex.slice(span.end));
-    yield { edits: [{ ...span, text: isUnit ? '' : numberText(value) }], cost: costs.number + extra };
+    yield { edits: [{ ...span, text: isUnit ? '' : numberTextFor(node, value, tex) }], cost: costs.number + extra };
     return;
   }
   const size = Q.negate(value);
   const turned = leads && turnedSign(leads, tex);
-  if (leads && turned && Q.equals(size, before)) yield { edits: [turned], cost: costs.sign + frontMinus(leads) };
+  if (leads && turned && Q.equals(size, before))
+    yield { edits: [turned], cost: costs.sign + frontMinus(leads) + below(place) };
   else if (leads && turned)
     yield {
-      edits: [turned, { ...span, text: numberText(size) }],
+      edits: [turned, { ...span, text: numberTextFor(node, size, tex) }],
       cost: costs.signedNumber + extra + frontMinus(leads),
     };
   else if (!isFactor)
@@ -115,11 +121,35 @@ function* changedNumber(place: PlacedNode, value: Rational, tex: string): Genera
 
 /** A sum that comes to begin with a minus reads worse than one whose other terms change. */
 function frontMinus({ term, isFirst, isOnly }: PlacedTerm): number {
-  return isFirst && !isOnly && term.sign === 'plus' ? 0.15 : 0;
+  if (!isFirst || term.sign !== 'plus') return 0;
+  const isDifference = term.expr.kind === 'quotient' && term.expr.numerator.kind === 'sum';
+  return isOnly && !isDifference ? 0 : 0.15;
+}
+
+/** A minus for a whole denominator is rather written in front or above. */
+function below({ leads, isInQuotient }: PlacedNode): number {
+  return leads?.isOnly && isInQuotient && leads.term.sign === 'plus' ? 0.15 : 0;
 }
 
 export function numberText(value: Rational): string {
   return printExpr(fraction(value));
+}
+
+/** As a decimal where one stood there and the value has one that is not much longer. */
+function numberTextFor(node: NumberExpr, value: Rational, tex: string): string {
+  if (node.written !== 'decimal' || value.den === 1n) return numberText(value);
+  const decimal = decimalText(value, node.decimals + 2);
+  return decimal && tex.slice(node.span.start, node.span.end).includes(',')
+    ? decimal.replace('.', ',')
+    : (decimal ?? numberText(value));
+}
+
+/** All digits of a positive decimal; null where it has more than so many after the point. */
+function decimalText({ num, den }: Rational, most: number): string | null {
+  const scale = 10n ** BigInt(most);
+  if (num < 0n || (num * scale) % den !== 0n) return null;
+  const digits = String((num * scale) / den).padStart(most + 1, '0');
+  return `${digits.slice(0, -most)}.${digits.slice(-most)}`.replace(/\.?0+$/, '');
 }
 
 /** The edit that turns the sign of a term; null for a plus-or-minus. */
@@ -130,6 +160,41 @@ export function turnedSign(placed: PlacedTerm, tex: string): Edit | null {
   if (text === undefined) return null;
   const isBlank = tex.slice(span.start, span.end).trim() === '' && placed.term.sign === 'minus';
   return isBlank ? null : { ...span, text };
+}
+
+/** A letter as one more factor of a term; in place of a 1. */
+function* letterPutIn(node: Expr, aim: Aim, target: readonly Complex[], letters: readonly string[]): Generator<Found> {
+  if (node.kind === 'sum' && !node.bracketed) return;
+  const { start, end } = outer(node);
+  const factors = node.kind === 'product' ? node.factors : [node];
+  const [first] = factors;
+  const isNumber = first?.kind === 'number';
+  for (const name of letters) {
+    if (factors.some((factor) => lettersOf(factor.kind === 'power' ? factor.base : factor).includes(name))) continue;
+    aim.budget.spend(aim.cost >> 2);
+    if (!hits(replaceNode(aim.tree, node, product(letter(name), node)), target, aim.places)) continue;
+    if (isOne(node)) yield { edits: [{ start, end, text: name }], cost: costs.letter };
+    else {
+      const at = isNumber && first ? outer(first).end : start;
+      yield { edits: [{ start: at, end: at, text: name }], cost: costs.factor };
+    }
+  }
+}
+
+/** A letter that a product has too much, in front of it, at its end or between. */
+function* letterTakenOut(
+  node: Extract<Expr, { kind: 'product' }>,
+  aim: Aim,
+  target: readonly Complex[],
+): Generator<Found> {
+  for (const [k, factor] of node.factors.entries()) {
+    if (factor.kind !== 'letter') continue;
+    const others = node.factors.filter((other) => other !== factor);
+    if (!hits(replaceNode(aim.tree, node, product(...others)), target, aim.places)) continue;
+    const [before, after] = [node.factors[k - 1], node.factors[k + 1]];
+    const start = before && !after ? outer(before).end : outer(factor).start;
+    yield { edits: [{ start, end: after ? outer(after).start : outer(factor).end, text: '' }], cost: costs.drop };
+  }
 }
 
 /** A coefficient put in front of a term that has none; with it its sign, or the whole term taken out. */
@@ -154,7 +219,7 @@ function* changedTerm(
   if (value.num < 0n && !turned) return;
   const front: Edit[] = turned ? [turned] : [];
   if (Q.equals(size, Q.one)) {
-    if (turned) yield { edits: front, cost: costs.sign + frontMinus(leads) };
+    if (turned) yield { edits: front, cost: costs.sign + frontMinus(leads) + below(place) };
     return;
   }
   const at = outer(node).start;
@@ -221,14 +286,47 @@ export function smallChanges(aim: Aim, tex: string): SmallChange[] {
   return found;
 }
 
+const mostFlipped = 6;
+
+/**
+ * Two or three signs turned, the numbers as they are: two terms of one sum, as a pair of factors the wrong way round
+ * leaves, or signs within a sum of products.
+ */
+export function* signChanges(aim: Aim, tex: string): Generator<Candidate> {
+  const flips = aim.roots.flatMap(nodesOf).flatMap(({ node, leads, isFactor, isBase }): SmallChange[] => {
+    const turned = leads?.term.expr === node && !isFactor && !isBase ? turnedSign(leads, tex) : null;
+    return leads && turned ? [{ node, by: neg(node), edit: turned, cost: 1 + frontMinus(leads) }] : [];
+  });
+  if (flips.length < 2 || flips.length > mostFlipped) return;
+  for (const chosen of subsets(flips)) {
+    aim.budget.spend(aim.cost >> 2);
+    const changed = chosen.reduce((tree, { node, by }) => replaceNode(tree, node, by), aim.tree);
+    if (!aim.targets.some((target) => hits(changed, target, aim.places))) continue;
+    const fronts = chosen.reduce((total, { cost }) => total + cost - 1, 0);
+    yield {
+      edits: chosen.map(({ edit }) => edit),
+      cost: 1.05 + 0.02 * (chosen.length - 2) + fronts + aim.extra,
+      touchesRight: chosen.some(({ node }) => aim.isRight(node)),
+    };
+  }
+}
+
+function subsets(flips: readonly SmallChange[]): SmallChange[][] {
+  const pairs = flips.flatMap((one, k) => flips.slice(k + 1).map((other) => [one, other]));
+  const triples = pairs.flatMap((pair) =>
+    flips.slice(flips.indexOf(pair[1] as SmallChange) + 1).map((one) => [...pair, one]),
+  );
+  return [...pairs, ...triples];
+}
+
 const widestSearch = 24;
 const mostNumbers = 4;
 
 /** Two numbers changed at once: the first tried from small whole numbers, the second solved for. */
-export function* numberPairs(aim: Aim, tex: string, isRight: (node: Expr) => boolean): Generator<Candidate> {
+export function* numberPairs(aim: Aim, tex: string): Generator<Candidate> {
   const numbers = aim.roots
     .flatMap(nodesOf)
-    .filter(({ node, isExponent }) => isWholeNumber(node) && !isExponent && !isRight(node));
+    .filter(({ node, isExponent }) => isWholeNumber(node) && !isExponent && !aim.isRight(node));
   if (numbers.length < 2 || numbers.length > mostNumbers) return;
   for (const [k, one] of numbers.entries()) {
     for (const other of numbers.slice(k + 1)) {
@@ -250,7 +348,7 @@ function* pairAt(one: PlacedNode, other: PlacedNode, value: number, aim: Aim, te
       for (const second of changedNumber(other, found, tex)) {
         yield {
           edits: [...first.edits, ...second.edits],
-          cost: first.cost + second.cost + 0.001 * far,
+          cost: first.cost + second.cost + 0.001 * far + aim.extra,
           touchesRight: false,
         };
       }

@@ -15,6 +15,8 @@ export interface PlacedNode {
   readonly isFactor: boolean;
   /** Part of a numerator or denominator. */
   readonly isInQuotient: boolean;
+  /** Under a root or in the argument of a function. */
+  readonly isInFunction: boolean;
 }
 export interface PlacedTerm {
   readonly term: Term;
@@ -29,6 +31,7 @@ interface Spot {
   readonly isBase?: boolean;
   readonly isFactor?: boolean;
   readonly isInQuotient?: boolean;
+  readonly isInFunction?: boolean;
 }
 
 /** Every node of an expression in reading order, outer first. A side without a sign is a term by itself. */
@@ -43,9 +46,19 @@ function standAlone(expr: Expr): PlacedTerm {
 }
 
 function visit(node: Expr, spot: Spot, found: PlacedNode[]): void {
-  const { leads, isExponent = false, isBase = false, isFactor = false, isInQuotient = false } = spot;
-  found.push({ node, leads, isExponent, isBase, isFactor, isInQuotient });
-  const within = { isInQuotient: isInQuotient || node.kind === 'quotient' };
+  const {
+    leads,
+    isExponent = false,
+    isBase = false,
+    isFactor = false,
+    isInQuotient = false,
+    isInFunction = false,
+  } = spot;
+  found.push({ node, leads, isExponent, isBase, isFactor, isInQuotient, isInFunction });
+  const within = {
+    isInQuotient: isInQuotient || node.kind === 'quotient',
+    isInFunction: isInFunction || node.kind === 'root' || node.kind === 'call' || node.kind === 'log',
+  };
   switch (node.kind) {
     case 'sum':
       for (const [k, term] of node.terms.entries()) {

@@ -1,5 +1,6 @@
 import type { Line } from '../../../shared/maths/expression.ts';
 import type { Meaning } from '../rules/meaning.ts';
+import type { WalkState } from '../walk-derivation.ts';
 import type { Statement } from '../statements/statement.ts';
 
 const span = { start: 0, end: 0 };
@@ -9,6 +10,11 @@ export function meaningToLine(meaning: Meaning): Line | null {
   return meaning.kind === 'expression'
     ? { kind: 'expression', expr: meaning.expr, span }
     : statementToLine(meaning.statement);
+}
+
+/** What a derivation knows before a step, as lines. */
+export function knownLines({ known }: Pick<WalkState, 'known'>): Line[] {
+  return known.flatMap((statement) => statementToLine(statement) ?? []);
 }
 
 function statementToLine(statement: Statement): Line | null {

@@ -1,20 +1,24 @@
-import type { Expr, Line, RelationSign, Span } from '../../../shared/maths/expression.ts';
+import type { Line, RelationSign, Span } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { readLine } from '../../../shared/maths/read.ts';
+import { sameLine } from '../../../shared/maths/same.ts';
 import { BudgetSpent, createBudget } from '../context.ts';
 import { aimsOf, expressionsIn } from './aims.ts';
 import { termsOf } from './build.ts';
 import { splice, type Candidate, type Edit } from './edits.ts';
 import { replaceNode } from './holes.ts';
-import { leafEdits, numberPairs, numberText, smallChanges } from './leaf-edits.ts';
+import { leafEdits, numberPairs, numberText, signChanges, smallChanges } from './leaf-edits.ts';
 import { nodesOf } from './line-parts.ts';
 import { hits, outer, type Aim, type MendQuestion } from './mend-question.ts';
-import { missingTerms } from './missing-terms.ts';
-import { findRightParts, findRightTerms } from './right-parts.ts';
-import { shapeEdits } from './shape-edits.ts';
+import { missingTerms, termByTerm, termByTermOfRelation } from './missing-terms.ts';
+import { lostCases } from './case-edits.ts';
+import { roundedValues } from './rounded-values.ts';
+import { systemEdits } from './system-edits.ts';
+import { tidied } from './tidy-edits.ts';
+import { shapeEdits, wholeShapes } from './shape-edits.ts';
 import { solutionSet } from './solution-set.ts';
 import { signChoices, valueListEdits } from './value-lists.ts';
-import { rewritten } from './worked-out.ts';
+import { rewritten, valuesAtLimits } from './worked-out.ts';
 import { simpleFraction } from './holes.ts';
 
 /** The author's line changed as little as makes it follow, as the checker itself has ruled. */
@@ -28,7 +32,7 @@ export interface MendedLine {
   readonly isRewritten: boolean;
 }
 
-const mostRuled = 14;
+const mostRuled = 24;
 const rightCost = 1.2;
 const rewrittenCost = 4;
 /** Beyond this two changes may be better than one. */
@@ -37,65 +41,70 @@ const likelyCost = 2.15;
 /** The mended line of a step that fails; null where none was found. */
 export function mendLine(question: MendQuestion): MendedLine | null {
   const aims = aimsOf(question);
-  const isRight = rightParts(question, aims[0]?.wanted ?? null);
-  if (question.isLarge) return firstThatHolds([...changesOfWrongTerms(question, aims, isRight)], question);
-  const single = [...singleChanges(question, aims, isRight)];
-  const likely = single.filter((candidate) => weight(candidate) < likelyCost);
-  const unlikely = single.filter((candidate) => weight(candidate) >= likelyCost);
-  const first = firstThatHolds(likely, question);
-  if (first) return first;
-  const pairs = aims.flatMap((aim) => findPairs(aim, question, isRight));
-  return firstThatHolds([...pairs, ...unlikely], question);
+  const trials = createTrials(question);
+  if (question.isLarge)
+    return trials.firstThatHolds([...aims.narrow, ...aims.wide].flatMap((aim) => largeChanges(aim, question)));
+  const told = [...statementChanges(question)];
+  for (const group of aims.narrow.length > 0 ? [aims.narrow, aims.wide] : [aims.wide]) {
+    const single = [...told, ...group.flatMap((aim) => limited(aim, (own) => singleChanges(own, question)))];
+    const found =
+      trials.firstThatHolds(single.filter((candidate) => weight(candidate) < likelyCost)) ??
+      trials.firstThatHolds([
+        ...group.flatMap((aim) => limited(aim, (own) => pairedChanges(own, question))),
+        ...single.filter((candidate) => weight(candidate) >= likelyCost),
+      ]);
+    if (found) return found;
+  }
+  return trials.firstThatHolds([...wholeChanges(question, aims.wide)]);
 }
 
-function* singleChanges(
-  question: MendQuestion,
-  aims: readonly Aim[],
-  isRight: (node: Expr) => boolean,
-): Generator<Candidate> {
-  const { line, above, tex } = question;
+/** What is read off the line above as a statement: signs, values, cases. */
+function* statementChanges(question: MendQuestion): Generator<Candidate> {
   yield* signChoices(question);
   yield* valueListEdits(question);
-  yield* relationSigns(line);
+  yield* relationSigns(question.line);
   yield* solutionSet(question);
+  yield* roundedValues(question);
+  yield* lostCases(question);
+  yield* systemEdits(question);
+  yield* termByTermOfRelation(question);
+  yield* valuesAtLimits(question);
+  yield* question.carried;
+}
+
+function* singleChanges(aim: Aim, { line, above, tex }: MendQuestion): Generator<Candidate> {
   const letters = [...new Set([...lettersOf(above), ...lettersOf(line)])];
-  for (const aim of aims) {
-    yield* leafEdits(aim, letters, tex, isRight);
-    yield* shapeEdits(aim, tex, isRight);
-    yield* missingTerms(aim, isRight);
-    yield* valueItself(aim);
-  }
+  yield* leafEdits(aim, letters, tex);
+  yield* signChanges(aim, tex);
+  yield* shapeEdits(aim, tex);
+  if (isSolved(line)) yield* wholeShapes(aim, letters, tex);
+  yield* valueItself(aim);
+  yield* missingTerms(aim);
+  yield* termByTerm(aim);
+}
+
+function isSolved(line: Line): boolean {
+  return line.kind === 'relation' && (line.left.kind === 'letter' || line.right.kind === 'letter');
+}
+
+/** The line written anew, where no small change mends it. */
+function* wholeChanges(question: MendQuestion, aims: readonly Aim[]): Generator<Candidate> {
   const pair = expressionsIn(question);
   const [aim] = aims;
   if (pair && aim) yield* rewritten(aim, pair.above, question.link === 1 ? question.aboveTex : null, question.context);
 }
 
 /** In a long line only those terms are looked at that do not match the line above. */
-function* changesOfWrongTerms(
-  { tex }: MendQuestion,
-  aims: readonly Aim[],
-  isRight: (node: Expr) => boolean,
-): Generator<Candidate> {
-  for (const aim of aims) {
-    const wrong = aim.roots.flatMap((root) => termsOf(root).map((term) => term.expr)).filter((node) => !isRight(node));
-    if (wrong.length > mostWrong) continue;
-    const within = new Set(wrong.flatMap((node) => nodesOf(node).map((placed) => placed.node)));
-    yield* leafEdits(aim, [], tex, isRight, (node) => within.has(node));
-  }
+function largeChanges(aim: Aim, { tex }: MendQuestion): Candidate[] {
+  const wrong = aim.roots
+    .flatMap((root) => termsOf(root).map((term) => term.expr))
+    .filter((node) => !aim.isRight(node));
+  if (wrong.length > mostWrong) return [];
+  const within = new Set(wrong.flatMap((node) => nodesOf(node).map((placed) => placed.node)));
+  return [...leafEdits(aim, [], tex, (node) => within.has(node))];
 }
 
 const mostWrong = 3;
-
-function rightParts(question: MendQuestion, wanted: Expr | null): (node: Expr) => boolean {
-  const pair = expressionsIn(question);
-  const { above, line } = question;
-  const found = pair
-    ? findRightParts(wanted ?? pair.above, pair.focus)
-    : above.kind === 'relation' && line.kind === 'relation'
-      ? findRightTerms([above.left, above.right], [line.left, line.right])
-      : new Set<Expr>();
-  return (node) => found.has(node);
-}
 
 const signTex: Partial<Record<RelationSign, string>> = { '<': '<', '>': '>', '<=': '\\le', '>=': '\\ge' };
 
@@ -123,27 +132,32 @@ function* valueItself(aim: Aim): Generator<Candidate> {
     yield { edits: [{ ...outer(focus), text: numberText(found) }], cost: 1.9, touchesRight: false };
 }
 
-const pairOperations = 50_000;
+const aimOperations = 50_000;
 
-/** Two changes at once, as many as can be looked at; what was found before the work ran out is kept. */
-function findPairs(aim: Aim, question: MendQuestion, isRight: (node: Expr) => boolean): Candidate[] {
-  const limited: Aim = { ...aim, budget: createBudget(Math.min(pairOperations, Math.max(0, aim.budget.left()))) };
+/** What was found before the work on one aim ran out. */
+function limited(aim: Aim, find: (own: Aim) => Iterable<Candidate>): Candidate[] {
+  const budget = createBudget(Math.min(aimOperations, Math.max(0, aim.budget.left())));
   const found: Candidate[] = [];
   try {
-    for (const candidate of pairsOfChanges(limited, question, isRight)) found.push(candidate);
-    for (const candidate of numberPairs(limited, question.tex, isRight)) found.push(candidate);
+    for (const candidate of find({ ...aim, budget })) found.push(candidate);
   } catch (cause) {
     if (!(cause instanceof BudgetSpent)) throw cause;
   }
   return found;
 }
 
+/** Two changes at once. */
+function* pairedChanges(aim: Aim, question: MendQuestion): Generator<Candidate> {
+  yield* pairsOfChanges(aim, question);
+  yield* numberPairs(aim, question.tex);
+}
+
 const mostSmall = 18;
 
 /** Two changes, the first of them small. */
-function* pairsOfChanges(aim: Aim, { tex }: MendQuestion, isRight: (node: Expr) => boolean): Generator<Candidate> {
+function* pairsOfChanges(aim: Aim, { tex }: MendQuestion): Generator<Candidate> {
   const small = smallChanges(aim, tex)
-    .filter(({ node }) => !isRight(node))
+    .filter(({ node }) => !aim.isRight(node))
     .slice(0, mostSmall);
   for (const [k, one] of small.entries()) {
     const changed: Aim = { ...aim, tree: replaceNode(aim.tree, one.node, one.by) };
@@ -151,9 +165,9 @@ function* pairsOfChanges(aim: Aim, { tex }: MendQuestion, isRight: (node: Expr) 
       aim.budget.spend(aim.cost);
       const both = replaceNode(changed.tree, other.node, other.by);
       if (aim.targets.some((target) => hits(both, target, aim.places)))
-        yield { edits: [one.edit, other.edit], cost: one.cost + other.cost, touchesRight: false };
+        yield { edits: [one.edit, other.edit], cost: one.cost + other.cost + aim.extra, touchesRight: false };
     }
-    for (const found of leafEdits(changed, [], tex, isRight)) {
+    for (const found of leafEdits(changed, [], tex)) {
       yield { ...found, edits: [one.edit, ...found.edits], cost: one.cost + found.cost };
     }
   }
@@ -167,18 +181,39 @@ function placeOf(candidate: Candidate): number {
   return Math.min(...candidate.edits.map((edit) => edit.start));
 }
 
-/** In the order of their costs, leftmost on ties. */
-function firstThatHolds(candidates: readonly Candidate[], question: MendQuestion): MendedLine | null {
-  const ordered = [...candidates].sort((a, b) => weight(a) - weight(b) || placeOf(a) - placeOf(b));
+interface Trials {
+  /** In the order of their costs, leftmost on ties. */
+  readonly firstThatHolds: (candidates: readonly Candidate[]) => MendedLine | null;
+}
+
+/** The checker's own ruling on changed lines, each looked at once and not too many of them. */
+function createTrials(question: MendQuestion): Trials {
   const seen = new Set<string>([question.tex]);
-  for (const candidate of ordered) {
-    const spliced = splice(question.tex, candidate.edits);
-    if (!spliced || seen.has(spliced.tex)) continue;
+  const attempt = (candidate: Candidate): MendedLine | null => {
+    const edits = tidied(question.tex, candidate.edits, question.settings);
+    const spliced = splice(question.tex, edits);
+    if (!spliced || seen.has(spliced.tex)) return null;
     seen.add(spliced.tex);
-    if (seen.size > mostRuled) return null;
     const reading = readLine(spliced.tex, question.settings);
-    if (!reading.ok || reading.alternatives.length > 0 || !question.holds(reading.line)) continue;
-    return { ...spliced, line: reading.line, edits: candidate.edits, isRewritten: candidate.cost >= rewrittenCost };
-  }
-  return null;
+    if (!reading.ok || reading.alternatives.length > 0 || isEmptyCopy(reading.line, candidate, question)) return null;
+    if (!question.holds(reading.line)) return null;
+    return { ...spliced, line: reading.line, edits, isRewritten: candidate.cost >= rewrittenCost };
+  };
+  return {
+    firstThatHolds(candidates) {
+      const ordered = [...candidates].sort((a, b) => weight(a) - weight(b) || placeOf(a) - placeOf(b));
+      for (const candidate of ordered) {
+        if (seen.size > mostRuled) return null;
+        const found = attempt(candidate);
+        if (found) return found;
+      }
+      return null;
+    },
+  };
+}
+
+/** The line above once more says nothing of the step, unless the author only miscopied it. */
+function isEmptyCopy(line: Line, { edits, cost }: Candidate, { above }: MendQuestion): boolean {
+  const isExchange = edits.every(({ start, end, text }) => end > start && text !== '');
+  return cost < rewrittenCost && !isExchange && sameLine(line, above);
 }

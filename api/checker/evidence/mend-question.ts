@@ -1,7 +1,8 @@
 import type { Expr, Line, ReadSettings, Span } from '../../../shared/maths/expression.ts';
 import type { Budget, CheckContext } from '../context.ts';
 import { isFiniteNumber, isNear, minus, over, sizeOf, type Complex } from './complex-double.ts';
-import { estimate, type Place } from './estimate.ts';
+import type { Candidate } from './edits.ts';
+import { estimate, estimateCost, type Place } from './estimate.ts';
 
 /** A line that does not follow, and what it should follow from. */
 export interface MendQuestion {
@@ -14,8 +15,12 @@ export interface MendQuestion {
   readonly link: number;
   /** The solutions of the line above as TeX, where it has one letter. */
   readonly solutions: string | null;
+  /** What is known beside the line above: the equations of a system. */
+  readonly known: readonly Line[];
   readonly lost: readonly string[];
   readonly gained: readonly string[];
+  /** Changes of a line above that was mended, made here as well. */
+  readonly carried: readonly Candidate[];
   /** Too long for more than a look at its terms. */
   readonly isLarge: boolean;
   readonly settings: ReadSettings;
@@ -38,6 +43,15 @@ export interface Aim {
   readonly budget: Budget;
   /** Values that the tree must take; several sets where the scale is open. */
   readonly targets: readonly (readonly Complex[])[];
+  /** What matches the line above as it stands, and is rather left alone. */
+  readonly isRight: (node: Expr) => boolean;
+  /** What a change costs more where it takes the line for another than the nearest one. */
+  readonly extra: number;
+}
+
+/** The work of looking at some expressions; a number that is solved for is looked at some ten times over. */
+export function costOf(...exprs: readonly Expr[]): number {
+  return 4 + exprs.reduce((count, expr) => count + 2 * estimateCost(expr), 0);
 }
 
 export function outer(expr: Expr): Span {

@@ -12,7 +12,20 @@ import { collect, keyOf, negated, spread, type Monomial } from './monomials.ts';
 export function findRightParts(above: Expr, below: Expr): ReadonlySet<Expr> {
   const found = new Set<Expr>();
   matchParts(above, below, found);
+  matchArguments(above, below, found);
   return found;
+}
+
+/** Numbers that stand in the arguments of functions above and below were copied. */
+function matchArguments(above: Expr, below: Expr, found: Set<Expr>): void {
+  const known = numbersInArguments(above);
+  for (const own of numbersInArguments(below)) if (known.some((other) => sameExpr(own, other))) found.add(own);
+}
+
+function numbersInArguments(expr: Expr, isInside = false): Expr[] {
+  if (expr.kind === 'number') return isInside ? [expr] : [];
+  const within = isInside || expr.kind === 'call' || expr.kind === 'log';
+  return childrenOf(expr).flatMap((part) => numbersInArguments(part, within));
 }
 
 /** The same for both sides of a relation, what stands on the right counted as moved to the left. */
@@ -44,7 +57,19 @@ function matchParts(above: Expr, below: Expr, found: Set<Expr>): void {
     }
     return;
   }
-  if (below.kind === 'sum') return matchTerms(spread(above), below.terms, found);
+  if (above.kind === 'integral' && below.kind === 'evaluated') {
+    for (const [limit, own] of [
+      [above.from, below.from],
+      [above.to, below.to],
+    ] as const)
+      if (limit && own && sameExpr(limit, own)) mark(own, found);
+    return;
+  }
+  if (below.kind === 'sum') {
+    matchTerms(spread(above), below.terms, found);
+    if (above.kind === 'sum') matchInside(above.terms, below.terms, found);
+    return;
+  }
   if (below.kind === 'product') return matchFactors(above, below.factors, found);
   const [before, after] = [childrenOf(above), childrenOf(below)];
   if (above.kind === below.kind && before.length === after.length)
@@ -64,7 +89,7 @@ function matchTerms(above: readonly Monomial[] | null, terms: readonly Term[], f
   const own = terms.map((term) => ({ term, parts: spread(term.sign === 'minus' ? neg(term.expr) : term.expr) }));
   for (const { term, parts } of own) {
     const [only] = parts ?? [];
-    if (!only || parts?.length !== 1) continue;
+    if (!only || parts?.length !== 1 || isJoined(only, above, own)) continue;
     const place = left.findIndex(
       (other) => keyOf(other) === keyOf(only) && Q.equals(other.coefficient, only.coefficient),
     );
@@ -77,6 +102,27 @@ function matchTerms(above: readonly Monomial[] | null, terms: readonly Term[], f
   for (const { term, parts } of own) {
     if (parts && parts.length > 0 && parts.every((part) => !wrong.has(keyOf(part)))) mark(term.expr, found);
   }
+}
+
+/** Term against term where there are as many, and none of the two is known to be right as a whole. */
+function matchInside(above: readonly Term[], below: readonly Term[], found: Set<Expr>): void {
+  if (above.length !== below.length) return;
+  for (const [k, term] of below.entries()) {
+    const other = above[k];
+    if (other?.sign === term.sign && !found.has(term.expr) && other.expr.kind === term.expr.kind)
+      matchParts(other.expr, term.expr, found);
+  }
+}
+
+interface OwnTerm {
+  readonly parts: readonly Monomial[] | null;
+}
+
+/** All like terms above were joined to this one: that its number is among theirs says nothing. */
+function isJoined(term: Monomial, above: readonly Monomial[], own: readonly OwnTerm[]): boolean {
+  const key = keyOf(term);
+  const alike = own.flatMap(({ parts }) => parts ?? []).filter((other) => keyOf(other) === key);
+  return alike.length === 1 && above.filter((other) => keyOf(other) === key).length > 1;
 }
 
 function matchFactors(above: Expr, factors: readonly Expr[], found: Set<Expr>): void {

@@ -1,8 +1,8 @@
 import type { Expr, FunctionName } from '../../../shared/maths/expression.ts';
 import { glue } from '../../../shared/maths/print-expression.ts';
-import { call, neg, power, product, quotient, sum } from './build.ts';
+import { call, letter, neg, power, product, quotient, root, sum, whole } from './build.ts';
 import type { Candidate, Edit } from './edits.ts';
-import { replaceNode } from './holes.ts';
+import { hole, replaceNode, solveHole } from './holes.ts';
 import { nodesOf } from './line-parts.ts';
 import { hits, outer, type Aim } from './mend-question.ts';
 
@@ -13,13 +13,13 @@ interface Shape {
 }
 
 /** Changes of how parts are joined after which the tree has the wanted values. */
-export function* shapeEdits(aim: Aim, tex: string, isRight: (node: Expr) => boolean): Generator<Candidate> {
+export function* shapeEdits(aim: Aim, tex: string): Generator<Candidate> {
   for (const { node } of aim.roots.flatMap(nodesOf)) {
     for (const { by, edits, cost } of shapesOf(node, tex)) {
       aim.budget.spend(aim.cost);
       const changed = replaceNode(aim.tree, node, by);
       if (aim.targets.some((target) => hits(changed, target, aim.places)))
-        yield { edits, cost, touchesRight: isRight(node) };
+        yield { edits, cost: cost + aim.extra, touchesRight: aim.isRight(node) };
     }
   }
 }
@@ -28,7 +28,8 @@ function* shapesOf(node: Expr, tex: string): Generator<Shape> {
   switch (node.kind) {
     case 'product':
       yield* productAsSum(node);
-      yield* numberBelow(node, tex);
+      yield* factorBelow(node, tex);
+      yield* squared(node);
       return;
     case 'quotient':
       yield* turnedOver(node, tex);
@@ -36,6 +37,8 @@ function* shapesOf(node: Expr, tex: string): Generator<Shape> {
       return;
     case 'sum':
       yield* lastTermBelow(node);
+      yield* exchanged(node, tex);
+      yield* squared(node);
       return;
     case 'call':
     case 'log':
@@ -84,13 +87,57 @@ function* multipliedInstead(node: Extract<Expr, { kind: 'quotient' }>, tex: stri
   };
 }
 
-/** 4y for y/4, the other way round. */
-function* numberBelow(node: Extract<Expr, { kind: 'product' }>, tex: string): Generator<Shape> {
-  const [first, ...rest] = node.factors;
-  const [second] = rest;
-  if (!first || !second || first.kind !== 'number') return;
-  const text = `\\frac{${tex.slice(outer(second).start, node.span.end)}}{${tex.slice(outer(first).start, outer(first).end)}}`;
-  yield { by: quotient(product(...rest), first), edits: [{ ...node.span, text }], cost: 1.45 };
+/** 4y for y/4, the other way round; also with a letter or a bracket. */
+function* factorBelow(node: Extract<Expr, { kind: 'product' }>, tex: string): Generator<Shape> {
+  for (const [k, factor] of node.factors.entries()) {
+    if (factor.kind !== 'number' && factor.kind !== 'letter') continue;
+    const rest = node.factors.filter((other) => other !== factor);
+    const [first, last] = [rest[0], rest[rest.length - 1]];
+    if (!first || !last || (k > 0 && k < node.factors.length - 1)) continue;
+    const inner = rest.length === 1 ? first.span : { start: outer(first).start, end: outer(last).end };
+    const text = `\\frac{${tex.slice(inner.start, inner.end)}}{${tex.slice(outer(factor).start, outer(factor).end)}}`;
+    yield { by: quotient(product(...rest), factor), edits: [{ ...outer(node), text }], cost: 1.45 };
+  }
+}
+
+/** A sum or product that should have been squared. */
+function* squared(node: Expr): Generator<Shape> {
+  const { start, end } = outer(node);
+  const isBare = !node.bracketed;
+  const edits: Edit[] = [{ start: end, end, text: isBare ? ')^2' : '^2' }];
+  if (isBare) edits.unshift({ start, end: start, text: '(' });
+  yield { by: power(node, whole(2)), edits, cost: 1.35 };
+}
+
+/** b - a for a - b. */
+function* exchanged(node: Extract<Expr, { kind: 'sum' }>, tex: string): Generator<Shape> {
+  const [first, second, ...more] = node.terms;
+  if (!first || !second || more.length > 0 || first.sign !== 'plus' || second.sign !== 'minus') return;
+  const [a, b] = [outer(first.expr), outer(second.expr)];
+  const edits: Edit[] = [
+    { start: first.span.start, end: a.end, text: tex.slice(b.start, b.end) },
+    { ...b, text: tex.slice(a.start, a.end) },
+  ];
+  yield { by: sum(second.expr, neg(first.expr)), edits, cost: 1.1 };
+}
+
+/** The whole of a side or expression: under a root, or divided by a letter or a number. */
+export function* wholeShapes(aim: Aim, letters: readonly string[], tex: string): Generator<Candidate> {
+  const [focus] = aim.roots;
+  if (!focus || aim.roots.length !== 1 || aim.tree !== focus) return;
+  const { start, end } = outer(focus);
+  const inner = tex.slice(focus.span.start, focus.span.end);
+  const anew = (text: string, cost: number): Candidate => ({
+    edits: [{ start, end, text }],
+    cost,
+    touchesRight: false,
+  });
+  const fits = (by: Expr): boolean => aim.targets.some((target) => hits(by, target, aim.places));
+  aim.budget.spend(aim.cost);
+  if (fits(root(focus))) yield anew(`\\sqrt{${inner}}`, 1.5);
+  for (const name of letters) if (fits(quotient(focus, letter(name)))) yield anew(`\\frac{${inner}}{${name}}`, 1.5);
+  const value = focus.kind === 'number' ? null : solveHole(quotient(focus, hole), 2, aim, aim.targets[0] ?? []);
+  if (value?.den === 1n && value.num > 1n) yield anew(`\\frac{${inner}}{${value.num}}`, 1.5);
 }
 
 /** A - B for A over B: subtracted where it should have been divided by. */

@@ -1,4 +1,4 @@
-import type { Expr, SetExpr } from '../../../shared/maths/expression.ts';
+import type { Expr, Line, SetExpr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import { readLine } from '../../../shared/maths/read.ts';
@@ -7,13 +7,28 @@ import type { MendQuestion } from './mend-question.ts';
 
 /** An inequality that is solved for its letter: what the line above really says of it, written out. */
 export function* solutionSet({ line, solutions, settings, tex }: MendQuestion): Generator<Candidate> {
-  const isSolved = line.kind === 'relation' && line.left.kind === 'letter' && lettersOf(line.right).length === 0;
-  if (!isSolved || line.sign === '=' || solutions === null || line.left.kind !== 'letter') return;
-  const { name } = line.left;
+  const name = solutions === null ? null : boundedLetter(line);
+  if (name === null) return;
   const reading = readLine(`${name}\\in ${solutions}`, settings);
   if (!reading.ok || reading.line.kind !== 'membership') return;
   const text = describe(name, reading.line.set);
   if (text !== null) yield { edits: [{ start: 0, end: tex.length, text }], cost: 1.8, touchesRight: false };
+}
+
+/** The letter of a line such as x < 2, 1 < x < 2 or x < 1 or x > 2; null for any other. */
+function boundedLetter(line: Line): string | null {
+  if (line.kind === 'any' || line.kind === 'all') {
+    const names = line.parts.map(boundedLetter);
+    return names.every((name) => name === names[0]) ? (names[0] ?? null) : null;
+  }
+  if (line.kind === 'relation') {
+    const isBounded = line.sign !== '=' && line.left.kind === 'letter' && lettersOf(line.right).length === 0;
+    return isBounded && line.left.kind === 'letter' ? line.left.name : null;
+  }
+  const [low, middle, high] = line.kind === 'chain' ? line.members : [];
+  if (line.kind !== 'chain' || line.members.length !== 3 || line.signs.includes('=')) return null;
+  if (!low || !high || middle?.kind !== 'letter' || lettersOf(low).length + lettersOf(high).length > 0) return null;
+  return middle.name;
 }
 
 function describe(name: string, set: SetExpr): string | null {

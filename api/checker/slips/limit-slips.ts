@@ -59,7 +59,7 @@ function* signOfInfinity({ to, operand, variable }: Limit): Generator<Expr> {
 }
 
 export const limitSlips: readonly Slip[] = [
-  slip('zero over zero was taken as zero or one', 'calculus', memory, { rank: 6, rewrites: onLimits(zeroOverZero) }),
+  slip('zero over zero was taken as zero or one', 'calculus', memory, { rank: 8, rewrites: onLimits(zeroOverZero) }),
   slip('derivatives were taken of a form that is not indeterminate', 'calculus', memory, {
     rank: 6,
     rewrites: onLimits(derivativesEverywhere),

@@ -1,16 +1,17 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
-import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
+import { exprsOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { sum } from '../evidence/build.ts';
 import { expanded, sumExpr } from '../evidence/monomials.ts';
 import { estimate, estimateCost } from '../evidence/estimate.ts';
+import { onlyDifference } from '../evidence/only-difference.ts';
 import { choosePlaces, mayBeEqual } from '../evidence/places.ts';
 import { allSlips } from './catalogue.ts';
 import { listOf, mayFollow } from './may-follow.ts';
-import { everywhere, withChild } from './rewrite.ts';
+import { everywhere } from './rewrite.ts';
 import type { Slip } from './slip.ts';
 import { signedTerm } from './relations.ts';
 
@@ -66,16 +67,6 @@ export function nameBetween(above: Expr, wholeBelow: Expr, worksOn: boolean, con
   }
   const inner = onlyDifference(above, below);
   return inner && nameBetween(inner[0], inner[1], false, context);
-}
-
-/** The one part in which two expressions of the same build differ, of each; null where they differ in more. */
-function onlyDifference(above: Expr, below: Expr): readonly [Expr, Expr] | null {
-  const [before, after] = [childrenOf(above), childrenOf(below)];
-  if (above.kind !== below.kind || before.length !== after.length) return null;
-  const [place, ...more] = [...before.keys()].filter((k) => !sameExpr(before[k] as Expr, after[k] as Expr));
-  if (place === undefined || more.length > 0) return null;
-  const [inner, own] = [before[place] as Expr, after[place] as Expr];
-  return sameExpr(withChild(above, place, own), below) ? [inner, own] : null;
 }
 
 /** Looking at a candidate at some places, in operations. */

@@ -1,7 +1,8 @@
 import type { Expr, SumExpr } from '../../../shared/maths/expression.ts';
 import { readLine } from '../../../shared/maths/read.ts';
-import { childrenOf, mapChildren } from '../../../shared/maths/walk.ts';
+import { childrenOf } from '../../../shared/maths/walk.ts';
 import { neg, product, sum } from '../evidence/build.ts';
+import { withChild } from '../evidence/only-difference.ts';
 import { factorsOf, fill, matchExpr, matchFactors, matchTerms, type Bindings } from './match.ts';
 
 /** A wrong rule: what a part of a line becomes under it, in all the ways in which it applies there. */
@@ -99,13 +100,4 @@ export function* everywhere(expr: Expr, rewrite: Rewrite): Generator<Expr> {
   for (const [place, part] of childrenOf(expr).entries()) {
     for (const changed of everywhere(part, rewrite)) yield withChild(expr, place, changed);
   }
-}
-
-/** The expression with the child at a place, in reading order, replaced. */
-export function withChild(expr: Expr, place: number, changed: Expr): Expr {
-  let at = -1;
-  return mapChildren(expr, (part) => {
-    at += 1;
-    return at === place ? changed : part;
-  });
 }
