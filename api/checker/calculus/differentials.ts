@@ -1,11 +1,11 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { mapExpr } from '../../../shared/maths/walk.ts';
+import { mapChildren, mapExpr } from '../../../shared/maths/walk.ts';
 import { fails, holds, undecided, type StepResult } from '../rules/step-result.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { Unsettled } from '../solving/unsettled.ts';
-import { letterOf, mulExprs } from './build.ts';
+import { letterOf, mulExprs, oneExpr } from './build.ts';
 import { differentiate } from './differentiate.ts';
 
 /** A line such as du = 2x dx after u was introduced: a remark that has to be true; null for any other line. */
@@ -67,4 +67,19 @@ function written(expr: Expr, variable: string, context: CheckContext): Expr {
     });
     return mulExprs(...factors);
   });
+}
+
+/** An expression with 1 for the differentials of the letters, or `first` for that of the first one. */
+export function withoutDifferentials(expr: Expr, names: readonly string[], first: Expr = oneExpr): Expr {
+  if (expr.kind !== 'product') return mapChildren(expr, (part) => withoutDifferentials(part, names, first));
+  const factors: Expr[] = [];
+  for (const [k, factor] of expr.factors.entries()) {
+    const next = expr.factors[k + 1];
+    if (next?.kind === 'letter' && names.includes(next.name) && isDifferential(expr.factors, k + 1)) continue;
+    if (factor.kind !== 'letter' || !names.includes(factor.name) || !isDifferential(expr.factors, k))
+      factors.push(withoutDifferentials(factor, names, first));
+    else factors.push({ ...(factor.name === names[0] ? first : oneExpr), span: factor.span });
+  }
+  const [only] = factors;
+  return factors.length === 1 && only ? only : { ...expr, factors, joins: expr.joins.slice(0, factors.length - 1) };
 }

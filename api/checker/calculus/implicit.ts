@@ -1,9 +1,10 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
+import { mapExpr } from '../../../shared/maths/walk.ts';
 import type { CheckContext } from '../context.ts';
 import { Unsettled } from '../solving/unsettled.ts';
-import { comparesOf, type CompareStatement, type Statement } from '../statements/statement.ts';
+import { comparesOf, isLetter, type CompareStatement, type Statement } from '../statements/statement.ts';
 import { judgeFormula } from '../rules/formula.ts';
 import { judgeSameEquation } from '../rules/same-equation.ts';
 import { freeLetters } from '../rules/meaning.ts';
@@ -11,6 +12,7 @@ import type { StatementAnswer, StatementQuestion } from '../rules/statement-step
 import { fails, holds, undecided, type StepResult } from '../rules/step-result.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import { divExprs, negateExpr, subExprs } from './build.ts';
+import { judgeChainRule } from './chain-rule.ts';
 import { tryOnCurve } from './curve.ts';
 import { differentiate } from './differentiate.ts';
 import { linearIn } from './integrand.ts';
@@ -24,6 +26,8 @@ type Judge = (question: StatementQuestion) => StatementAnswer;
 export function judgeWithRates(asked: StatementQuestion, judge: Judge): StatementAnswer {
   const question = withoutOperators(asked);
   const { above, below, context } = question;
+  const chained = context.calculus?.dependents.size ? judgeChainRule(question) : null;
+  if (chained) return { ...chained, candidates: [] };
   const integrals = judgeIntegralEquations(question);
   if (integrals) return { ...integrals, candidates: [] };
   const [before, after] = [ratesIn(above, context), ratesIn(below, context)];
@@ -137,6 +141,27 @@ function oneWay(found: StepResult, source: CompareStatement, { settings }: State
   });
 }
 
+/** Of several rates by one letter all but one may be anything: they are letters like others. */
+function withOneRate(below: CompareStatement, rated: readonly CompareStatement[], context: CheckContext) {
+  const rates = [...new Set([below, ...rated].flatMap((equation) => ratesIn(equation, context)))];
+  const bys = new Set(rates.map((name) => rateNamed(name)?.by));
+  const isPlain = rates.length > 1 && bys.size === 1 && rates.every((name) => orderOf(name) === 1);
+  if (!isPlain) return { claim: below, others: rated };
+  const kept = rates.find((name) => isLetter(below.left, name)) ?? rates[0];
+  const change = (expr: Expr): Expr =>
+    mapExpr(expr, (node) =>
+      node.kind === 'letter' && rates.includes(node.name) && node.name !== kept
+        ? { ...node, name: `q_{${rates.indexOf(node.name) + 1}}` }
+        : node,
+    );
+  const renamed = (equation: CompareStatement): CompareStatement => ({
+    ...equation,
+    left: change(equation.left),
+    right: change(equation.right),
+  });
+  return { claim: renamed(below), others: rated.map(renamed) };
+}
+
 function onCurve(
   relations: readonly CompareStatement[],
   rated: readonly CompareStatement[],
@@ -144,7 +169,8 @@ function onCurve(
   { context }: StatementQuestion,
   agreed: (found: StepResult) => StepResult,
 ): StepResult {
-  const found = tryOnCurve(relations, rated, below, context);
+  const { claim, others } = withOneRate(below, rated, context);
+  const found = tryOnCurve(relations, others, claim, context);
   if (found.kind === 'apart')
     return fails('proved', { witness: { at: { ...found.at }, above: 'true', below: 'false' } });
   return found.kind === 'agreed' ? agreed(holds('sampled')) : undecided('not-settled');

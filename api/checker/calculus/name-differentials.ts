@@ -1,8 +1,7 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { childrenOf, exprsOf, mapChildren, mapLine } from '../../../shared/maths/walk.ts';
-import { differentialsIn, isDifferential } from './differentials.ts';
-import { oneExpr } from './build.ts';
+import { childrenOf, exprsOf, mapLine } from '../../../shared/maths/walk.ts';
+import { differentialsIn, isDifferential, withoutDifferentials } from './differentials.ts';
 import { rateExpr, rateNamed } from './rates.ts';
 
 /** A pair of letters that the derivation is about: y and the x that it depends on. */
@@ -30,7 +29,7 @@ function nameIn(line: Line, pairs: readonly Pair[]): Line {
   const names = new Set([...differentialsIn(line.left), ...differentialsIn(line.right)]);
   const pair = pairs.find(({ of, by }) => names.size === 2 && names.has(of) && names.has(by));
   if (!pair || ![line.left, line.right].every(isOfFirstDegree)) return line;
-  return mapLine(line, (expr) => named(expr, pair));
+  return mapLine(line, (expr) => withoutDifferentials(expr, [pair.of, pair.by], rateExpr({ ...pair, order: 1 })));
 }
 
 /** From dy/dx, and from an equation of two integrals. */
@@ -86,18 +85,4 @@ function degreeOf(expr: Expr): number | null {
 
 function hasLooseD(expr: Expr): boolean {
   return lettersOf(expr).includes('d');
-}
-
-function named(expr: Expr, { of, by }: Pair): Expr {
-  if (expr.kind !== 'product') return mapChildren(expr, (part) => named(part, { of, by }));
-  const factors: Expr[] = [];
-  for (const [k, factor] of expr.factors.entries()) {
-    if (isDifferential(expr.factors, k + 1)) continue;
-    if (!isDifferential(expr.factors, k)) factors.push(named(factor, { of, by }));
-    else if (factor.kind === 'letter' && factor.name === of)
-      factors.push({ ...rateExpr({ of, by, order: 1 }), span: factor.span });
-    else factors.push({ ...oneExpr, span: factor.span });
-  }
-  const [only] = factors;
-  return factors.length === 1 && only ? only : { ...expr, factors, joins: expr.joins.slice(0, factors.length - 1) };
 }

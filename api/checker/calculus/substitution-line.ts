@@ -2,8 +2,12 @@ import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckContext, Definitions } from '../context.ts';
-import { holds, type StepResult } from '../rules/step-result.ts';
-import { differentialsIn, judgeDifferentials } from './differentials.ts';
+import { compareExpressions } from '../compare/compare-expressions.ts';
+import { fails, holds, undecided, type StepResult } from '../rules/step-result.ts';
+import { withoutDefinition } from './antiderivative.ts';
+import { differentialsIn, judgeDifferentials, withoutDifferentials } from './differentials.ts';
+import { differentiate } from './differentiate.ts';
+import { solvedFor } from './inverse.ts';
 import { rateName, rateNamed } from './rates.ts';
 
 export interface SubstitutionLine {
@@ -39,27 +43,84 @@ function judgePart(line: Line, from: Expr, context: CheckContext): SubstitutionL
   const judged = judgeDifferentials(line, context);
   if (judged) return { result: judged, defines: null };
   if (line.kind !== 'relation' || line.sign !== '=') return null;
-  // dv = e^x dx before v is known: it says what v will be.
-  const [own, ...others] = differentialsIn(line.left);
-  if (
-    own !== undefined &&
-    others.length === 0 &&
-    isNew(own, from, context) &&
-    differentialsIn(line.right).length === 1
-  ) {
-    return { result: holds('proved', ['definition']), defines: null };
-  }
-  if (line.left.kind !== 'letter' || !hasIntegral(from)) return null;
+  const announced = announcedOf(line.left, line.right, from, context);
+  if (announced) return defined(announced.name, announced.value, context);
+  if (line.left.kind === 'rate' && context.definitions.letters.has(line.left.of))
+    return { result: judgeRemark(line.left, line.right, context), defines: null };
+  if (line.left.kind !== 'letter') return null;
   const { name } = line.left;
+  if (context.definitions.letters.has(name)) return judgeKnown(name, line.left, line.right, context);
+  if (!hasIntegral(from) || rateNamed(name)) return null;
   const inside = lettersOf(line.right);
-  if (
-    !isNew(name, from, context) ||
-    inside.includes(name) ||
-    rateNamed(name) ||
-    !inside.some((letter) => lettersWithin(from).has(letter))
-  )
+  if (isNew(name, from, context))
+    return !inside.includes(name) && inside.some((letter) => lettersWithin(from).has(letter))
+      ? defined(name, line.right, context)
+      : null;
+  return judgeOldLetter(name, line.right, from, context);
+}
+
+function defined(name: string, value: Expr, context: CheckContext): SubstitutionLine {
+  return { result: holds('proved', ['definition']), defines: withDefinition(context.definitions, name, value) };
+}
+
+/** dv = e^x dx or v' = e^x before v is known: v will be an integral of it. */
+function announcedOf(left: Expr, right: Expr, from: Expr, context: CheckContext): { name: string; value: Expr } | null {
+  const rate = left.kind === 'letter' ? rateNamed(left.name) : null;
+  if (rate) {
+    const isFresh = rate.order === 1 && hasIntegral(from) && isNew(rate.of, from, context);
+    return isFresh && lettersOf(right).includes(rate.by) ? { name: rate.of, value: integralOf(right, rate.by) } : null;
+  }
+  const [own, ...more] = differentialsIn(left);
+  const [by, ...others] = differentialsIn(right);
+  if (own === undefined || by === undefined || more.length + others.length > 0 || !isNew(own, from, context))
     return null;
-  return { result: holds('proved', ['definition']), defines: withDefinition(context.definitions, name, line.right) };
+  const names = [own, by];
+  const [dv, f] = [left, right].map((side) => withoutDifferentials(side, names)) as [Expr, Expr];
+  return isOne(dv) ? { name: own, value: integralOf(f, by) } : null;
+}
+
+function integralOf(integrand: Expr, variable: string): Expr {
+  return { kind: 'integral', integrand, variable, from: null, to: null, span: integrand.span };
+}
+
+function isOne(expr: Expr): boolean {
+  return expr.kind === 'number' && expr.numerator === expr.denominator;
+}
+
+/** What is said of a letter that was defined before: v = e^x after dv = e^x dx, u' = 2x after u = x^2. */
+function judgeKnown(name: string, left: Expr, right: Expr, context: CheckContext): SubstitutionLine | null {
+  const value = context.definitions.letters.get(name);
+  if (value?.kind !== 'integral' || value.from) return { result: judgeRemark(left, right, context), defines: null };
+  const known = withoutDefinition(context, name);
+  const result = judgeRemark(value.integrand, differentiate(right, value.variable, known), known);
+  return { result, defines: result.ruling === 'holds' ? withDefinition(context.definitions, name, right) : null };
+}
+
+function judgeRemark(left: Expr, right: Expr, context: CheckContext): StepResult {
+  const found = compareExpressions(left, right, context);
+  if (found.kind === 'equal') return holds(found.reached, ['remark']);
+  if (found.kind !== 'different') return undecided('not-settled');
+  const { atTex, above, below } = found.witness;
+  return fails('proved', { witness: { at: { ...atTex }, above, below } });
+}
+
+/** x = 2 sin t for the letter of the integral defines t; x = u^2 after u was defined is a remark. */
+function judgeOldLetter(name: string, right: Expr, from: Expr, context: CheckContext): SubstitutionLine | null {
+  const inside = lettersOf(right);
+  const known = inside.filter((letter) => context.definitions.letters.has(letter));
+  if (known.length > 0)
+    return { result: judgeRemark({ kind: 'letter', name, span: right.span }, right, context), defines: null };
+  const fresh = inside.filter((letter) => isNew(letter, from, context));
+  const [letter] = fresh;
+  if (letter === undefined || fresh.length > 1 || inside.includes(name) || !variablesIn(from).includes(name))
+    return null;
+  const value = solvedFor(right, letter, { kind: 'letter', name, span: right.span });
+  return value && defined(letter, value, context);
+}
+
+function variablesIn(expr: Expr): string[] {
+  const inside = childrenOf(expr).flatMap(variablesIn);
+  return expr.kind === 'integral' ? [expr.variable, ...inside] : inside;
 }
 
 function isNew(name: string, from: Expr, context: CheckContext): boolean {

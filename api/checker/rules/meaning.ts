@@ -12,6 +12,8 @@ export type Meaning =
       readonly expr: Expr;
       /** What the expression was before it was rounded. */
       readonly exact?: Expr;
+      /** Whether it is not known that the author goes on from here. */
+      readonly isUnsure?: boolean;
     }
   | {
       readonly kind: 'statement';

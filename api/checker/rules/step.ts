@@ -74,6 +74,7 @@ export function judgeStep(question: StepQuestion): StepAnswer {
     if (from?.kind !== 'expression') return answer(undecided('change-of-kind'), meaning);
     if (from.exact) return judgeRounded(from.expr, from.exact, [meaning.expr], ['='], context);
     const found = judgeExpressions(from.expr, meaning.expr, context);
+    if (from.isUnsure && found.ruling === 'fails') return answer(undecided('change-of-kind'), meaning);
     return answer(found, meaning, { shrunk: found.shrunk });
   }
   const fresh = freshDefinition(line, question);
@@ -191,13 +192,13 @@ function judgeAfterExpression(line: Line, meaning: Meaning, question: StepQuesti
   const members = line.kind === 'relation' ? [line.left, line.right] : line.kind === 'chain' ? line.members : [];
   const signs = line.kind === 'relation' ? [line.sign] : line.kind === 'chain' ? line.signs : [];
   if (members.length === 0 || signs.some((sign) => sign !== '=')) return answer(undecided('change-of-kind'), meaning);
-  const last: Meaning = { kind: 'expression', expr: members[members.length - 1] as Expr };
+  const last = { kind: 'expression', expr: members[members.length - 1] as Expr } as const;
   if (from === null) return judgeAfterDefinitions(members, meaning, context);
   if (from.kind !== 'expression') return answer(undecided('change-of-kind'), meaning);
   const found = judgeLinks(from.expr, members, context);
   if (found.ruling === 'holds') return answer(found, last, { shrunk: found.shrunk });
   if (isValueOf(from)) return answer(found, last);
-  return answer(undecided('change-of-kind'), last);
+  return answer(undecided('change-of-kind'), { ...last, isUnsure: true });
 }
 
 /**
