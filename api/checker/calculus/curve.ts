@@ -121,7 +121,8 @@ function solutionsOf(
   given: ReadonlyMap<string, Q.Rational>,
   context: CheckContext,
 ): KnownValue[] {
-  const env: SolveEnv = { letter, given, context, window: { low: -8, high: 8 }, hints: [], families: new Set() };
+  const window = { low: -8, high: 8, isAll: true };
+  const env: SolveEnv = { letter, given, context, window, hints: [], families: new Set() };
   try {
     const set = solveStatement(relation, env);
     return set.points.filter((_, k) => set.at[k]).map((point) => toKnownValue(point, bits));

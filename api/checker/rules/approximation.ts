@@ -1,24 +1,29 @@
-import { intersection, isEmptySet, weaker, type RealSet } from '../solving/real-set.ts';
+import { intersection, isEmptySet, openIf, weaker, type RealSet } from '../solving/real-set.ts';
 import { nameNumber, nameSet } from '../solving/naming.ts';
 import { recogniseNumber } from '../solving/recognise.ts';
+import { Unsettled } from '../solving/unsettled.ts';
 import { solveStatement, type SolveEnv } from '../statements/solve.ts';
 import type { OneLetterQuestion } from './one-letter.ts';
-import { universeOf, windowFor } from './one-letter-env.ts';
+import { frameFor, universeOf } from './one-letter-env.ts';
 import { fails, holds, type StepResult } from './step-result.ts';
 
 /** Rule 9: each solution above fits a value below, and each value below fits a solution above; throws Unsettled. */
 export function judgeApproximation(question: OneLetterQuestion): StepResult {
   const { letter, given, context, families } = question;
   const universe = universeOf(letter, given, context);
-  const window = windowFor([question.above, question.below], universe, letter, given, families, context);
-  const env: SolveEnv = { letter, given, context, window, hints: [], families };
+  const start: SolveEnv = { letter, given, context, window: null, hints: [], families };
+  const frame = frameFor([question.above, question.below], universe, start);
+  const env: SolveEnv = { ...start, window: frame?.window ?? null };
   const above = intersection(solveStatement(question.above, env), universe);
   const below = intersection(solveStatement(question.below, { ...env, hints: above.points }), universe);
   const reference = solveStatement(question.reference, env);
   const lost = piecesOf(above).filter((piece) => meets(piece, reference) && !meets(piece, below));
   const gained = piecesOf(below).filter((piece) => !meets(piece, above));
   const reached = weaker(above.reached, below.reached);
-  if (lost.length === 0 && gained.length === 0) return holds(reached);
+  if (lost.length === 0 && gained.length === 0) {
+    if (above.open || below.open || frame?.isWhole === false) throw new Unsettled('not-settled');
+    return holds(reached);
+  }
   const names = (pieces: readonly RealSet[]): string[] => pieces.map(nameOf);
   const point = nameOf((lost[0] ?? gained[0]) as RealSet);
   const [worthAbove, worthBelow] = lost.length > 0 ? ['true', 'false'] : ['false', 'true'];
@@ -66,6 +71,7 @@ function only(set: RealSet, keepPoint: (k: number) => boolean, keepBetween: (k: 
     at: set.at.map((inside, k) => inside && keepPoint(k)),
     between: set.between.map((inside, k) => inside && keepBetween(k)),
     reached: set.reached,
+    ...openIf(set),
   };
 }
 

@@ -23,7 +23,7 @@ import { comparesOf, isListOfValues, type Statement } from '../statements/statem
 import { haveSameComplexRoots } from './complex-roots.ts';
 import { judgeComplexStep } from './complex-step.ts';
 import { explainGain } from './one-way.ts';
-import { universeOf, windowFor } from './one-letter-env.ts';
+import { frameFor, universeOf } from './one-letter-env.ts';
 import { sameUpToFactor } from './same-equation.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
@@ -55,12 +55,18 @@ interface Solved {
   readonly reference: RealSet;
   readonly env: SolveEnv;
   readonly isStretch: boolean;
+  /** The lines may differ outside of the stretch. */
+  readonly isPartial: boolean;
 }
 
 /** Rules 2 to 4 on statements about one letter; throws Unsettled. */
 export function judgeOneLetter(question: OneLetterQuestion): OneLetterAnswer {
   try {
-    return judgeBySolutions(question, solveAll(question));
+    const solved = solveAll(question);
+    const found = judgeBySolutions(question, solved);
+    // That there are no further solutions is more than the places show that were looked at.
+    if (found.ruling === 'holds' && isOpen(solved)) throw new Unsettled('not-settled');
+    return found;
   } catch (cause) {
     if (!(cause instanceof Unsettled)) throw cause;
     // What cannot be solved may still be the same equation.
@@ -68,6 +74,10 @@ export function judgeOneLetter(question: OneLetterQuestion): OneLetterAnswer {
     if (!same) throw cause;
     return { ...holds(same), solutions: null, candidates: [] };
   }
+}
+
+function isOpen({ above, below, isPartial }: Solved): boolean {
+  return isPartial || above.open === true || below.open === true;
 }
 
 function sameAsWritten({ above, below, given, context }: OneLetterQuestion): Reached | null {
@@ -104,16 +114,12 @@ function recognise(point: RealNumber): string | null {
 function solveAll(question: OneLetterQuestion): Solved {
   const { letter, given, context, families } = question;
   const universe = universeOf(letter, given, context);
-  const window = windowFor(
-    [question.above, question.below, question.reference],
-    universe,
-    letter,
-    given,
-    families,
-    context,
-  );
+  const start: SolveEnv = { letter, given, context, window: null, hints: universe.points, families };
+  const statements = [question.above, question.below, question.reference];
+  const frame = frameFor(statements, universe, start);
+  const window = frame?.window ?? null;
   const inside = window && isWholeLine(universe) ? intersection(universe, windowSet(window)) : universe;
-  const env: SolveEnv = { letter, given, context, window, hints: universe.points, families };
+  const env: SolveEnv = { ...start, window };
   const restrict = context.wholeLetters.has(letter) ? wholeNumbersOf : (set: RealSet): RealSet => set;
   const solve = (statement: Statement, hints: readonly RealNumber[]): RealSet =>
     restrict(
@@ -126,7 +132,8 @@ function solveAll(question: OneLetterQuestion): Solved {
   const below = needsHints(first) ? solve(question.below, above.points) : first;
   const reference =
     question.reference === question.above ? above : solve(question.reference, [...above.points, ...below.points]);
-  return { above, below, reference, env, isStretch: window !== null && isWholeLine(universe) };
+  const isStretch = window !== null && isWholeLine(universe);
+  return { above, below, reference, env, isStretch, isPartial: frame?.isWhole === false };
 }
 
 function needsHints(set: RealSet): boolean {
@@ -220,6 +227,10 @@ function failWith(question: OneLetterQuestion, side: 'lost' | 'gained', values: 
   const expected = side === 'lost' ? [true, false] : [false, true];
   const truths = [question.above, question.below].map((statement) => truthAt(statement, point, solved.env));
   if (truths.some((truth, k) => truth !== null && truth.isTrue !== expected[k])) throw new Unsettled('not-settled');
+  // Between places that were looked at only the value at the place itself counts.
+  const isSeen = [solved.above, solved.below].every((set, k) => truths[k] !== null || set.open !== true);
+  const isReferred = side === 'gained' || truthAt(question.reference, point, solved.env)?.isTrue !== false;
+  if (!isSeen || !isReferred) throw new Unsettled('not-settled');
   const at: Record<string, string> = { [question.letter]: nameNumber(point, recognise) };
   for (const [name, value] of question.given) at[name] = nameNumber(rationalNumber(value));
   const [above, below] = expected.map(String) as [string, string];

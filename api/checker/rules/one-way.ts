@@ -2,9 +2,18 @@ import type { CheckContext } from '../context.ts';
 import type { Evidence } from '../../../shared/schemas/verdict.ts';
 import { reduceFraction } from '../solving/fraction.ts';
 import { dividePolynomials, gcdPolynomials, squareFreePart } from '../solving/polynomial.ts';
-import { complement, difference, intersection, isEmptySet, isFiniteSet, type RealSet } from '../solving/real-set.ts';
+import {
+  difference,
+  emptySet,
+  intersection,
+  isEmptySet,
+  isFiniteSet,
+  setOfPoints,
+  type RealSet,
+} from '../solving/real-set.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { solveDefined, solveStatement, type SolveEnv } from '../statements/solve.ts';
+import { truthAt } from '../statements/truth.ts';
 import { comparesOf, type CompareStatement, type Statement } from '../statements/statement.ts';
 import { equationFraction } from './complex-roots.ts';
 import { deriveEquations } from './derived-equations.ts';
@@ -43,9 +52,11 @@ function explainByCases(
   return isEmptySet(rest) ? operation : null;
 }
 
+/** What is left of a set without the solutions of a statement; single points are put in. */
 function withoutSolutions(rest: RealSet, statement: Statement, env: SolveEnv): RealSet {
-  const left = difference(rest, solveOrNothing(statement, env) ?? complement(rest));
-  return left.points.length === rest.points.length ? rest : left;
+  if (!isFiniteSet(rest)) return difference(rest, solveOrNothing(statement, env) ?? emptySet);
+  const points = rest.points.filter((point, k) => rest.at[k] && truthAt(statement, point, env)?.isTrue !== true);
+  return points.length === rest.points.length ? rest : setOfPoints(points);
 }
 
 /** Several equations at once: one of them was changed, the others are still there or were dropped by mistake. */
@@ -61,10 +72,9 @@ function explainParts(above: Statement, below: Statement, gained: RealSet, env: 
 function explainEquation(above: CompareStatement, below: Statement, gained: RealSet, env: SolveEnv): Operation | null {
   const multiplied = explainMultiple(above, below, gained, env);
   if (multiplied) return multiplied;
-  const solutions = solveStatement(below, env);
   for (const derived of deriveEquations(above)) {
-    const from = solveOrNothing(derived.statement, env);
-    if (from && isEmptySet(difference(intersection(solutions, gained), from))) return derived.operation;
+    const rest = withoutSolutions(gained, derived.statement, env);
+    if (isEmptySet(rest)) return derived.operation;
   }
   return explainRemoved(above, below, gained, env, env.context);
 }

@@ -138,7 +138,7 @@ function fromOneLetter(
   const set = solveStatement(equation, envFor(letter, search.context));
   const rest = equations.filter((other) => other !== equation);
   if (isWholeLine(set)) return eliminate(rest, values, search, depth + 1);
-  if (!isFiniteSet(set)) throw new Unsettled('not-covered');
+  if (!isFiniteSet(set) || set.open) throw new Unsettled('not-covered');
   return set.points.flatMap((point) => {
     const expr = toExpr(point);
     if (expr) return bind(letter, expr, rest, values, search, depth);

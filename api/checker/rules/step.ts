@@ -308,7 +308,7 @@ function continueExpression(
     families: new Set<string>(),
   };
   const truth = solveStatement(statement, env);
-  if (isWholeLine(truth)) return answer(holds(truth.reached, ['continued']), last);
+  if (isWholeLine(truth) && !truth.open) return answer(holds(truth.reached, ['continued']), last);
   if (letters.length === 0)
     return answer(fails(truth.reached, { witness: { at: {}, above: 'true', below: 'false' } }, ['continued']), last);
   return answer(undecided('change-of-kind'), last);

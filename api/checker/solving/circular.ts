@@ -70,3 +70,24 @@ export function countWaves(graph: Graph, env: LineEnv): number {
   }
   return most;
 }
+
+/** Whether a graph depends on the letter through sines and the like of linear arguments only. */
+export function isPeriodic(graph: Graph, letter: string): boolean {
+  const free = new Map<number, boolean>();
+  // Whether a node depends on the letter outside of circular functions.
+  const visit = (index: number): boolean => {
+    const known = free.get(index);
+    if (known !== undefined) return known;
+    const node = graph.nodes[index];
+    const isRound = node?.op === 'call' && circularNames.includes(node.name);
+    const args = (node?.args ?? []) as readonly number[];
+    const result = isRound
+      ? args.some((arg) => degreeIn({ nodes: graph.nodes, root: arg }, letter) > 1)
+      : node?.op === 'letter'
+        ? node.name === letter
+        : args.some(visit);
+    free.set(index, result);
+    return result;
+  };
+  return !visit(graph.root);
+}

@@ -6,6 +6,8 @@ import type { RealNumber } from './real-number.ts';
 export interface Window {
   readonly low: number;
   readonly high: number;
+  /** Nothing outside of it is asked about, so that it counts for functions that do not repeat themselves too. */
+  readonly isAll: boolean;
 }
 
 /** What a statement about one letter is solved with. */

@@ -1,5 +1,6 @@
 import type { CheckContext } from '../context.ts';
-import { rational } from '../numbers/rational.ts';
+import { rescale, type Ball } from '../numbers/ball.ts';
+import { bitLength, rational } from '../numbers/rational.ts';
 import {
   addKnown,
   divKnown,
@@ -106,18 +107,32 @@ function slopeOf(node: GraphNode, forms: readonly (LinearForm | null)[], letter:
 
 /** A number that is computed again at each precision asked for. */
 export function computedNumber(compute: (bits: number) => KnownValue | null): RealNumber | null {
-  const value = compute(160);
+  const value = compute(firstBits);
   if (value === null || value.kind === 'gaussian' || (value.kind === 'ball' && value.im !== null)) return null;
   if (value.kind === 'rational') return rationalNumber(value.value);
   return {
     kind: 'computed',
     expr: null,
     ...(value.kind === 'pi' ? { exact: value } : {}),
-    enclose: (bits) => {
-      const again = compute(bits) ?? value;
-      return toBall(again, bits).re;
-    },
+    enclose: (bits) => encloseBy(compute, value, bits),
   };
+}
+
+/** Bits that `computedNumber` looks at first, and that are added where a number is so large that digits are missing. */
+const firstBits = 160;
+
+function encloseBy(compute: (bits: number) => KnownValue | null, first: KnownValue, bits: number): Ball {
+  let best = rescale(toBall(first, firstBits).re, firstBits, bits);
+  let wide = Math.max(bits, firstBits) + 8;
+  for (let k = 0; k < 3; k += 1) {
+    const value = compute(wide);
+    if (value === null || value.kind === 'gaussian') return best;
+    best = rescale(toBall(value, wide).re, wide, bits);
+    const missing = bitLength(best.rad) - 20;
+    if (missing <= 0 || missing > 4000) return best;
+    wide += missing + 16;
+  }
+  return best;
 }
 
 /** Where slope * x + offset equals target: exact where it is a fraction, a surd or a multiple of pi. */

@@ -1,6 +1,6 @@
 import type { CheckContext } from '../context.ts';
 import { ballSign, magnitude } from '../numbers/ball.ts';
-import { sign } from '../numbers/rational.ts';
+import { bitLength, sign, type Rational } from '../numbers/rational.ts';
 import { evaluateNodes } from '../values/evaluate.ts';
 import type { Graph, GraphNode } from '../values/graph.ts';
 import { toBall } from '../values/arithmetic.ts';
@@ -41,13 +41,13 @@ export function signAtPoint(
   context: CheckContext,
 ): SignAtPoint | null {
   const first = signWithin(graph, letter, at, given, context, wideBits);
-  if (!first || first.certain || !mayBeTiny(graph, letter, at, given, context)) return first;
+  if (!first || first.certain || !mayBeTiny(graph, letter, at, given, context, wideBits)) return first;
   for (const bits of closerBits) {
-    if (!isSharp(at, bits)) return first;
+    if (!isSharp(at, bits)) return null;
     const closer = signWithin(graph, letter, at, given, context, bits);
-    if (!closer || closer.certain) return closer ?? first;
+    if (!closer || closer.certain || !mayBeTiny(graph, letter, at, given, context, bits)) return closer;
   }
-  return first;
+  return null;
 }
 
 /** Whether the point is known to about as many digits as are asked for. */
@@ -58,23 +58,30 @@ function isSharp(at: RealNumber, bits: number): boolean {
 
 /**
  * Whether something in the graph is so small, or written with so many digits, that two numbers may differ by no more
- * than that: e^{-200}, 10^{-80}.
+ * than that and still be called the same with this many bits: e^{-200}, 10^{-80} with 288.
  */
-function mayBeTiny(graph: Graph, letter: string, at: RealNumber, given: Assignment, context: CheckContext): boolean {
+function mayBeTiny(
+  graph: Graph,
+  letter: string,
+  at: RealNumber,
+  given: Assignment,
+  context: CheckContext,
+  bits: number,
+): boolean {
   const nodes = graph.nodes.slice(0, graph.root + 1);
-  const longBits = 1n << 100n;
-  if (
-    nodes.some((node) => node.op === 'number' && (node.value.den > longBits || magnitude(node.value.num) > longBits))
-  ) {
-    return true;
-  }
-  const point = new Map<string, KnownValue>([[letter, toKnownValue(at, wideBits)]]);
+  const longest = 1n << BigInt(Math.floor(bits / 3));
+  const isLong = ({ num, den }: Rational): boolean => den > longest || magnitude(num) > longest;
+  if (nodes.some((node) => node.op === 'number' && isLong(node.value))) return true;
+  if (at.kind === 'rational' ? isLong(at.value) : magnitude(enclose(at, 96).mid) > longest << 96n) return true;
+  const point = new Map<string, KnownValue>([[letter, toKnownValue(at, bits)]]);
   for (const [name, value] of given) point.set(name, { kind: 'rational', value });
-  const values = evaluateNodes(nodes, point, wideBits, context);
+  const values = evaluateNodes(nodes, point, bits, context);
   const isSmall = (index: number): boolean => {
     const value = values[index];
+    if (value?.kind === 'rational' && value.value.num !== 0n)
+      return bitLength(value.value.den) - bitLength(value.value.num) > bits / 5;
     if (value?.kind !== 'ball') return false;
-    return magnitude(value.re.mid) - value.re.rad < 1n << BigInt(wideBits - 60);
+    return magnitude(value.re.mid) - value.re.rad < 1n << BigInt(Math.ceil((bits * 4) / 5));
   };
   return nodes.some(
     (node, k) =>

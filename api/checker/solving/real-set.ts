@@ -12,6 +12,8 @@ export interface Piecewise<T> {
   readonly at: readonly T[];
   readonly between: readonly T[];
   readonly reached: Reached;
+  /** There may be further points: what is said between the known ones was looked at in places only. */
+  readonly open?: boolean;
 }
 
 /** A set of real numbers: finitely many points and intervals. */
@@ -85,7 +87,12 @@ export function combine<A, B, C>(a: Piecewise<A>, b: Piecewise<B>, join: (x: A, 
     if (takeB) j += 1;
     between.push(join(a.between[i] as A, b.between[j] as B));
   }
-  return simplify({ points, at, between, reached });
+  return simplify({ points, at, between, reached, ...openIf(a, b) });
+}
+
+/** The mark of maps that may lack points, for what is made from them. */
+export function openIf(...maps: readonly { readonly open?: boolean }[]): { readonly open?: true } {
+  return maps.some((map) => map.open === true) ? { open: true } : {};
 }
 
 /** Drops points at which nothing changes. */
@@ -97,6 +104,7 @@ export function simplify<T>(map: Piecewise<T>): Piecewise<T> {
     at: map.at.filter((_, k) => keep[k]),
     between: map.between.filter((_, k) => k === 0 || keep[k - 1]),
     reached: map.reached,
+    ...openIf(map),
   };
 }
 
@@ -106,6 +114,7 @@ export function mapPieces<A, B>(map: Piecewise<A>, change: (value: A) => B): Pie
     at: map.at.map(change),
     between: map.between.map(change),
     reached: map.reached,
+    ...openIf(map),
   });
 }
 

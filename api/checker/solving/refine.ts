@@ -5,7 +5,7 @@ import { toBall } from '../values/arithmetic.ts';
 import type { Graph } from '../values/graph.ts';
 import type { KnownValue } from '../values/value.ts';
 import type { Assignment } from './fraction.ts';
-import type { RealNumber } from './real-number.ts';
+import { enclose, type RealNumber } from './real-number.ts';
 
 /** A function of one letter that can be evaluated in balls. */
 export interface BallFunction {
@@ -42,21 +42,38 @@ function toFixed(value: number, bits: number): bigint {
 export function zeroBetween(f: BallFunction, low: number, high: number): RealNumber | null {
   const start = { low: toFixed(low, 96), high: toFixed(high, 96) };
   const first = narrow(f, start, 96);
-  if (first === null) return null;
+  return first && computedFrom(f, first, 96);
+}
+
+/** The zero inside a bracket that was found with some bits, narrowed further as more are asked for. */
+function computedFrom(f: BallFunction, first: Bracket, known: number): RealNumber {
   return {
     kind: 'computed',
     expr: null,
     enclose: (bits) => {
-      const used = Math.min(bits, mostBits);
-      const shift = BigInt(Math.max(0, used - 96));
-      const wide = used >= 96 ? { low: first.low << shift, high: first.high << shift } : first;
-      const found = narrow(f, wide, Math.max(used, 96)) ?? wide;
-      const at = BigInt(bits - Math.max(used, 96));
+      const used = Math.max(Math.min(bits, mostBits), known);
+      const shift = BigInt(used - known);
+      const wide = { low: first.low << shift, high: first.high << shift };
+      const found = narrow(f, wide, used) ?? wide;
+      const at = BigInt(bits - used);
       return at >= 0n
         ? ballBetween(found.low << at, found.high << at)
         : ballBetween(found.low >> -at, (found.high >> -at) + 1n);
     },
   };
+}
+
+/**
+ * The same between two numbers, however close they are: 320 bits to begin with where 96 cannot tell them apart. Null
+ * where the signs there are not certain or not different.
+ */
+export function zeroBetweenNumbers(f: BallFunction, a: RealNumber, b: RealNumber): RealNumber | null {
+  for (const bits of [96, 320]) {
+    const start = { low: enclose(a, bits).mid, high: enclose(b, bits).mid };
+    const first = start.high - start.low > 1n << 40n ? narrow(f, start, bits) : null;
+    if (first) return computedFrom(f, first, bits);
+  }
+  return null;
 }
 
 interface Bracket {

@@ -1,6 +1,6 @@
 import { floor, rational } from '../numbers/rational.ts';
 import { enclose, rationalNumber, type RealNumber } from './real-number.ts';
-import { simplify, type RealSet } from './real-set.ts';
+import { openIf, simplify, type RealSet } from './real-set.ts';
 import { Unsettled } from './unsettled.ts';
 
 const mostNumbers = 500n;
@@ -59,5 +59,6 @@ function withRays(found: Set<bigint>, leftEnd: bigint | null, rightStart: bigint
     at: all.map(() => true),
     between: [left !== null, ...all.map((_, k) => k === all.length - 1 && right !== null)],
     reached: set.reached,
+    ...openIf(set),
   });
 }
