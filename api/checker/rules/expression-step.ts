@@ -3,6 +3,7 @@ import type { Evidence } from '../../../shared/schemas/verdict.ts';
 import { compareWithCalculus, noEvidence } from '../calculus/judge.ts';
 import type { Comparison } from '../compare/comparison.ts';
 import type { CheckContext } from '../context.ts';
+import { compareChoices } from './plus-minus.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
 export interface ExpressionAnswer extends StepResult {
@@ -12,10 +13,16 @@ export interface ExpressionAnswer extends StepResult {
 
 /** Rules 1 and 8 on two expressions. */
 export function judgeExpressions(above: Expr, below: Expr, context: CheckContext): ExpressionAnswer {
-  const { found, notes, evidence } = compareWithCalculus(above, below, context);
+  const { found: plain, notes, evidence } = compareWithCalculus(above, below, context);
+  const isOpen = plain.kind === 'undecided' && plain.reason === 'not-covered';
+  const found = (isOpen ? compareChoices(above, below, context, compareOne) : null) ?? plain;
   const answer = toAnswer(found);
   if (notes.length === 0 && evidence === noEvidence) return answer;
   return { ...answer, notes: [...answer.notes, ...notes], evidence: { ...answer.evidence, ...evidence } };
+}
+
+function compareOne(above: Expr, below: Expr, context: CheckContext): Comparison {
+  return compareWithCalculus(above, below, context).found;
 }
 
 function toAnswer(found: Comparison): ExpressionAnswer {

@@ -77,7 +77,7 @@ export function judgeStep(question: StepQuestion): StepAnswer {
     if (from.isUnsure && found.ruling === 'fails') return answer(undecided('change-of-kind'), meaning);
     return answer(found, meaning, { shrunk: found.shrunk });
   }
-  const fresh = freshDefinition(line, question);
+  const fresh = from?.kind === 'statement' ? freshDefinition(line, question) : null;
   if (fresh) return define([fresh], context);
   const aside =
     from?.kind === 'statement'
@@ -86,6 +86,8 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   if (aside) return answer(aside.result, null, { defines: aside.defines });
   const helper = from?.kind === 'expression' ? judgeSubstitution(line, from.expr, context) : null;
   if (helper) return answer(helper.result, null, { defines: helper.defines });
+  const named = from?.kind === 'expression' ? freshDefinition(line, question) : null;
+  if (named && question.later().includes(named.name)) return define([named], context);
   const isAboutNumbers =
     freeLetters(meaning.statement, context).length === 0 &&
     exprsOfStatement(meaning.statement).every((expr) => indefiniteVariables(expr).length === 0);
@@ -134,8 +136,8 @@ function freshDefinition(line: Line, question: StepQuestion): Extract<Line, { ki
   const { name } = line.left;
   if (rateNamed(name) !== null) return null;
   const { context, from } = question;
-  const used = metLetters(question);
-  if (from?.kind !== 'statement' || used.includes(name) || context.definitions.letters.has(name)) return null;
+  const used = [...metLetters(question), ...(from?.kind === 'expression' ? lettersOf(from.expr) : [])];
+  if (from === null || used.includes(name) || context.definitions.letters.has(name)) return null;
   const right = toStatement({ kind: 'relation', left: line.right, sign: '=', right: line.right, span: line.span });
   const letters = right ? freeLetters(right, context) : [];
   const isKnown = letters.length > 0 && letters.every((letter) => used.includes(letter));

@@ -76,20 +76,29 @@ const mostSigns = 4;
  * of its line; without one, several plus-or-minus signs are chosen apart.
  */
 function withChoices(exprs: readonly Expr[], build: (chosen: readonly Expr[]) => Statement): Statement {
+  const choices = chooseAll(exprs);
+  return choices.length === 1 ? build(exprs) : { kind: 'any', parts: choices.map(build) };
+}
+
+/** The expressions that one with plus-or-minus signs stands for; itself where it has none. */
+export function choicesOf(expr: Expr): Expr[] {
+  return chooseAll([expr]).flat();
+}
+
+function chooseAll(exprs: readonly Expr[]): (readonly Expr[])[] {
   const signs = exprs.flatMap(listChoices);
-  if (signs.length === 0) return build(exprs);
+  if (signs.length === 0) return [exprs];
   const together = signs.includes('minusplus');
   const count = together ? 1 : Math.min(signs.length, mostSigns);
-  const parts = Array.from({ length: 2 ** count }, (_, choice) => {
+  return Array.from({ length: 2 ** count }, (_, choice) => {
     let seen = 0;
     const isUpper = (): boolean => {
       const bit = together ? 0 : Math.min(seen, mostSigns - 1);
       seen += 1;
       return ((choice >> bit) & 1) === 0;
     };
-    return build(exprs.map((expr) => chooseSigns(expr, isUpper)));
+    return exprs.map((expr) => chooseSigns(expr, isUpper));
   });
-  return { kind: 'any', parts };
 }
 
 function listChoices(expr: Expr): TermSign[] {
