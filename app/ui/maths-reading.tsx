@@ -26,7 +26,7 @@ export function MathsReading({ id, tex, reading, decimal, onChange }: MathsReadi
       <TwoReadings
         id={id}
         name={`${id}-choice`}
-        choices={[now, ...reading.alternatives]}
+        choices={[reading.line, ...reading.alternatives].map((line) => printLine(line, decimal))}
         {...{ decimal }}
         onChoose={onChange}
       />

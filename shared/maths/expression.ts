@@ -336,7 +336,7 @@ export type Reading =
       readonly ok: true;
       readonly line: Line;
       readonly flags: readonly ReadingFlag[];
-      /** A second way to read the line, as TeX that is unambiguous, where there is one: the author is asked. */
-      readonly alternatives: readonly string[];
+      /** The other ways to read the line, where there are any: the author is asked. Each is printed without ambiguity. */
+      readonly alternatives: readonly Line[];
     }
   | { readonly ok: false; readonly error: ReadError };

@@ -1,8 +1,7 @@
 import type { Expr, NumberExpr, ProductExpr, ReadSettings, SumExpr } from './expression.ts';
 import { numberText } from './print-number.ts';
-import { isLetter } from './scanner.ts';
-import { functionOf } from './token-table.ts';
-import { hidesWord } from './token-words.ts';
+
+import { functionOf, hidesWord } from './token-table.ts';
 
 type Decimal = ReadSettings['decimal'];
 
@@ -378,4 +377,8 @@ function printDerivative(expr: Extract<Expr, { kind: 'derivative' }>, style: Pri
     ['letter', 'power', 'quotient', 'root'].includes(operand.kind) &&
     !(operand.kind === 'quotient' && operand.written !== 'fraction');
   return head + (isPlain ? print(operand, style) : bracket(print(operand, style)));
+}
+
+function isLetter(code: number): boolean {
+  return (code >= 97 && code <= 122) || (code >= 65 && code <= 90);
 }

@@ -1,63 +1,99 @@
 import type { Expr } from './expression.ts';
 import { numberFrom } from './read-numbers.ts';
-import type { Context, Reader } from './reader.ts';
+import {
+  atoms,
+  type Change,
+  enclosed,
+  expect,
+  fail,
+  flag,
+  holding,
+  inside,
+  is,
+  kind,
+  lastEnd,
+  next,
+  type Read,
+  span,
+  start,
+  sum,
+  take,
+  takeDigit,
+} from './reader.ts';
+import type { TokenKind } from './token-table.ts';
+import { type Complaint, source } from './tokens.ts';
 
 /** An argument as TeX takes it: a braced group, or the next single digit, letter or command. */
-export function readArgument(reader: Reader, change?: Partial<Context>): Expr {
-  const { sum, atoms } = reader.grammar;
-  if (reader.take('{')) {
-    if (reader.is('}')) reader.fail('missing-operand number letter');
-    return reader.enclosed('}', sum, change);
+export function readArgument(change?: Change): Expr {
+  if (take('{')) {
+    if (is('}')) fail('missing-operand number letter');
+    return enclosed('}', sum, change);
   }
-  if (reader.is('0')) {
-    const digit = reader.takeDigit();
-    return { ...numberFrom(digit), span: reader.span(digit.start) };
+  if (is('0')) {
+    const digit = takeDigit();
+    return { ...numberFrom(digit), span: span(digit.start) };
   }
-  if (!reader.is('aei∞F√C(')) reader.fail('missing-argument {');
-  return reader.inside(atoms[reader.token.kind]!, reader.is('aei') ? { side: 'argument' } : change);
+  if (!is('aei∞F√C(')) fail('missing-argument {');
+  return inside(readAtom, is('aei') ? { side: 'argument' } : change);
 }
 
 /** The exponent or bound after `^` or `_`. */
-export function readExponent(reader: Reader): Expr {
-  if (reader.is('0') && /\d/.test(reader.source[reader.token.start + 1] ?? '')) reader.flags.add('power-digits');
-  if (reader.is('-+')) reader.fail('missing-bracket {');
-  return readArgument(reader);
+export function readExponent(): Expr {
+  if (is('0') && /\d/.test(source[start + 1] ?? '')) flag('power-digits');
+  if (is('-+')) fail('missing-bracket {');
+  return readArgument();
+}
+
+/** Takes the token as the beginning of what its kind stands for. */
+export function readAtom(): Expr {
+  return atoms[kind]!(next());
 }
 
 /** What is set below and above a sign, in either order and each at most once. */
 export function readScripts<Below, Above>(
-  reader: Reader,
-  readBelow: (reader: Reader) => Below,
-  readAbove: (reader: Reader) => Above,
+  readBelow: Read<Below>,
+  readAbove: Read<Above>,
 ): readonly [below: Below | null, above: Above | null] {
   let below: Below | null = null;
   let above: Above | null = null;
-  while (reader.is('_^')) {
-    const isBelow = reader.next().kind === '_';
-    if (isBelow ? below : above) reader.fail('extra-bracket');
-    if (isBelow) below = readBelow(reader);
-    else above = readAbove(reader);
+  while (is('_^')) {
+    const isBelow = next().kind === '_';
+    if (isBelow ? below : above) fail('extra-bracket');
+    if (isBelow) below = readBelow();
+    else above = readAbove();
   }
   return [below, above];
 }
 
+/** Expressions parted by commas or semicolons, up to the bracket that closes them. */
+export function readItems(close: TokenKind, complaint?: Complaint): Expr[] {
+  return enclosed(close, readList, holding(), complaint);
+}
+
+/** Expressions parted by commas or semicolons. */
+export function readList(): Expr[] {
+  const items = [];
+  do items.push(sum());
+  while (take(',;'));
+  return items;
+}
+
 /** The letter after a `_`, in canonical spelling: `_1`, `_{max}`; empty where there is none. */
-export function readSubscript(reader: Reader): string {
-  if (!reader.take('_')) return '';
-  const { token } = reader;
-  if (reader.is('0')) return `_${reader.takeDigit().text}`;
-  if (!reader.is('{aei∞T')) reader.fail('missing-argument letter number');
+export function readSubscript(): string {
+  if (!take('_')) return '';
+  if (is('0')) return `_${takeDigit().text}`;
+  const from = start;
   let depth = 0;
+  if (!is('{aei∞T')) fail('missing-argument letter number');
   do {
-    if (reader.is('{')) depth += 1;
-    if (reader.is('}')) depth -= 1;
-    if (reader.is('$')) reader.fail('missing-bracket }');
-    reader.next();
+    if (is('$')) fail('missing-bracket }');
+    if (is('{')) depth += 1;
+    if (next().kind === '}') depth -= 1;
   } while (depth > 0);
-  const text = reader.source
-    .slice(token.start, reader.lastEnd)
+  const text = source
+    .slice(from, lastEnd)
     .replace(SUBSCRIPT_LAYOUT, (_, command: string | undefined) => (command ? `${command} ` : ''));
-  if (!/^(?:[\w,+\-' ]|\\[a-zA-Z])+$/.test(text)) reader.fail('missing-argument letter number');
+  if (!/^(?:[\w,+\-' ]|\\[a-zA-Z])+$/.test(text)) fail('missing-argument letter number');
   return text.length === 1 ? `_${text}` : `_{${text}}`;
 }
 
@@ -66,7 +102,6 @@ const SUBSCRIPT_LAYOUT =
   /\\(?:text|mathrm|mathit|operatorname|textrm|mbox)(?![a-zA-Z]) *|(\\[a-zA-Z]+)\s+(?=[a-zA-Z])|[{}\s]|\\[,;:! ]/g;
 
 /** A letter that a calculus sign names: the x of dx, the k of a sum. */
-export function readName(reader: Reader): string {
-  if (!reader.is('ai')) reader.fail('missing-argument letter');
-  return reader.next().text + readSubscript(reader);
+export function readName(): string {
+  return expect('ai', 'missing-argument letter').text + readSubscript();
 }

@@ -1,67 +1,75 @@
 import type { Expr } from './expression.ts';
 import { readExponent, readName, readScripts } from './read-arguments.ts';
-import { takeDifferential } from './read-expression.ts';
-import { numberOf, type Reader } from './reader.ts';
+import { readProduct } from './read-expression.ts';
+import {
+  atDifferential,
+  binding,
+  context,
+  enclosed,
+  expect,
+  fail,
+  integrating,
+  numberOf,
+  span,
+  start,
+  startsFactor,
+  sum,
+  takeDifferential,
+} from './reader.ts';
+import type { Token } from './tokens.ts';
 
 /** An integral up to and with its dx, which may stand anywhere in the integrand. */
-export function readIntegral(reader: Reader): Expr {
-  const { start } = reader.next();
-  const [from, to] = readScripts(reader, readExponent, readExponent);
-  if (!from !== !to) reader.fail(`bad-integral ${from ? '^' : '_'}`);
-  const before = reader.variable;
-  reader.variable = null as string | null;
-  const integrand = reader.inside(readIntegrand, { ...reader.context, dx: 'ends' });
-  const variable = reader.variable ?? reader.fail('bad-integral dx');
-  reader.variable = before;
-  return { kind: 'integral', integrand, variable, from, to, span: reader.span(start) };
+export function readIntegral({ start: from }: Token): Expr {
+  const [lower, upper] = readScripts(readExponent, readExponent);
+  if (!lower !== !upper) fail(`bad-integral ${lower ? '^' : '_'}`);
+  const [integrand, variable] = integrating(readIntegrand);
+  return { kind: 'integral', integrand, variable, from: lower, to: upper, span: span(from) };
 }
 
-function readIntegrand(reader: Reader): Expr {
-  const { start } = reader.token;
-  if (reader.atDifferential()) {
-    takeDifferential(reader);
-    return reader.startsFactor() ? reader.grammar.product(reader) : numberOf(reader.span(start), 1n);
+function readIntegrand(): Expr {
+  const from = start;
+  if (atDifferential()) {
+    takeDifferential();
+    return startsFactor() ? readProduct() : numberOf(span(from), 1n);
   }
-  const integrand = reader.grammar.sum(reader);
-  if (reader.atDifferential()) takeDifferential(reader);
+  const integrand = sum();
+  if (atDifferential()) takeDifferential();
   return integrand;
 }
 
 /** `\sum_{k=1}^{n} ..` and `\prod`: what follows up to the next sign belongs to it. */
-export function readSeries(reader: Reader): Expr {
-  const { start, kind } = reader.next();
+export function readSeries({ start: from, kind }: Token): Expr {
   let index = '';
   const readStart = () => {
-    reader.expect('{', 'bad-series {k=1}');
-    return reader.enclosed('}', () => {
-      index = readName(reader);
-      reader.expect('=', 'bad-series =');
-      return reader.grammar.sum(reader);
+    expect('{', 'bad-series {k=1}');
+    return enclosed('}', () => {
+      index = readName();
+      expect('=', 'bad-series =');
+      return sum();
     });
   };
-  const [from, to] = readScripts(reader, readStart, readExponent);
-  if (!from || !to) return reader.fail(`bad-series ${from ? '^' : '_'}`);
+  const [lower, upper] = readScripts(readStart, readExponent);
+  if (!lower || !upper) return fail(`bad-series ${lower ? '^' : '_'}`);
   const operation = kind === '∏' ? 'product' : 'sum';
-  const body = reader.binding(index, reader.grammar.product);
-  return { kind: 'series', operation, index, from, to, body, span: reader.span(start) };
+  const body = binding(index, readProduct);
+  return { kind: 'series', operation, index, from: lower, to: upper, body, span: span(from) };
 }
 
 /** `\lim_{x\to a^+} ..`: what follows up to the next sign belongs to it. */
-export function readLimit(reader: Reader): Expr {
-  const { start } = reader.next();
-  if (!reader.take('_') || !reader.take('{')) reader.fail('bad-limit _{x\\to 0}');
+export function readLimit({ start: from }: Token): Expr {
+  expect('_', 'bad-limit _{x\\to 0}');
+  expect('{', 'bad-limit _{x\\to 0}');
   let variable = '';
   let side: 'both' | 'left' | 'right' = 'both';
   const readAim = () => {
-    variable = readName(reader);
-    reader.expect('→', 'bad-limit \\to');
-    reader.context = { ...reader.context, side: 'limit' };
-    const aim = reader.grammar.sum(reader);
-    const found = reader.context.side;
+    variable = readName();
+    expect('→', 'bad-limit \\to');
+    const aim = sum();
+    const found = context.side;
     if (found === 'left' || found === 'right') side = found;
     return aim;
   };
-  const to = reader.enclosed('}', readAim);
-  const operand = reader.binding(variable, reader.grammar.product);
-  return { kind: 'limit', variable, to, side, operand, span: reader.span(start) };
+  const to = enclosed('}', readAim, { side: 'limit' });
+  const operand = binding(variable, readProduct);
+  return { kind: 'limit', variable, to, side, operand, span: span(from) };
 }

@@ -1,60 +1,92 @@
-import type { Expr, ProductExpr, QuotientExpr, Term, TermSign } from './expression.ts';
+import type { Expr, ProductExpr, Term, TermSign } from './expression.ts';
 import { readExponent, readScripts } from './read-arguments.ts';
 import { mixedNumber } from './read-numbers.ts';
-import { numberOf, outer, type Read, READ_LIMITS, type Reader } from './reader.ts';
+import { readPower } from './read-power.ts';
+import {
+  ahead,
+  atDifferential,
+  atoms,
+  barIsScripted,
+  choose,
+  context,
+  deeper,
+  depth,
+  enclosed,
+  fail,
+  flag,
+  is,
+  kind,
+  lastEnd,
+  next,
+  numberOf,
+  peek,
+  type Read,
+  READ_LIMITS,
+  skip,
+  span,
+  start,
+  startsFactor,
+  sum,
+  take,
+  takeAll,
+  takeDifferential,
+  token,
+  variable,
+} from './reader.ts';
 
 const SIGNS: Partial<Record<string, TermSign>> = { '+': 'plus', '-': 'minus', '±': 'plusminus', '∓': 'minusplus' };
 
 /** Terms joined by signs. */
-export function readSum(reader: Reader): Expr {
-  const { start, kind } = reader.token;
+export function readSum(): Expr {
+  const from = start;
+  const isBare = !SIGNS[kind];
   const terms: Term[] = [];
-  const addTerm = (sign: TermSign, expr: Expr, from: number) =>
-    terms.push({ sign, expr, span: { start: from, end: reader.lastEnd } });
-  if (!SIGNS[kind]) addTerm('plus', readProduct(reader), start);
-  for (;;) {
-    const sign = SIGNS[reader.token.kind];
+  do {
+    const place = start;
+    const sign = SIGNS[kind];
+    if (sign) next();
+    const expr = readSigned(readProduct);
+    terms.push({ sign: sign ?? 'plus', expr, span: { start: place, end: lastEnd } });
     // After `\int\frac{dx}{x}` the integrand is over.
-    if (!sign || (reader.context.dx === 'ends' && reader.variable !== null)) break;
-    const from = reader.next().start;
-    addTerm(sign, readSigned(reader, readProduct), from);
-  }
-  const isBare = terms.length === 1 && !SIGNS[kind];
-  return withBar(reader, isBare ? terms[0]!.expr : { kind: 'sum', terms, span: reader.span(start) }, start);
+  } while (SIGNS[kind] && (context.dx !== 'ends' || variable === null));
+  const expr: Expr = isBare && !terms[1] ? terms[0]!.expr : { kind: 'sum', terms, span: span(from) };
+  return is('|') && context.bars === 0 && barIsScripted() ? readBar(expr, from) : expr;
 }
 
 /** A second sign, as in `3--2` and `2\cdot-3`, makes a term of its own. */
-export function readSigned(reader: Reader, read: Read): Expr {
-  const { start, kind } = reader.token;
+export function readSigned(read: Read): Expr {
+  const from = start;
   const sign = SIGNS[kind];
-  if (!sign) return read(reader);
-  const expr = reader.deeper(() => {
-    reader.next();
-    return readSigned(reader, read);
-  });
-  const span = reader.span(start);
-  return { kind: 'sum', terms: [{ sign, expr, span }], span };
+  if (!sign) return read();
+  next();
+  const expr = deeper(() => readSigned(read));
+  const place = span(from);
+  return { kind: 'sum', terms: [{ sign, expr, span: place }], span: place };
 }
 
 /** `F|_a^b` without a `\left.`: the whole sum is meant, or only its last term. */
-function withBar(reader: Reader, expr: Expr, start: number): Expr {
-  if (!reader.is('|') || !reader.barIsScripted() || reader.context.bars > 0) return expr;
-  const isSum = expr.kind === 'sum' && expr.terms.length > 1 && reader.choose('evaluated');
-  reader.next();
-  if (!isSum) return readEvaluation(reader, expr, start);
+function readBar(expr: Expr, from: number): Expr {
+  const isLast = expr.kind === 'sum' && expr.terms.length > 1 && choose('evaluated');
+  next();
+  if (!isLast) return readEvaluation(expr, from);
   const last = expr.terms[expr.terms.length - 1]!;
-  const operand = readEvaluation(reader, last.expr, last.expr.span.start);
-  const term = { ...last, expr: operand, span: { start: last.span.start, end: reader.lastEnd } };
-  return { ...expr, terms: [...expr.terms.slice(0, -1), term], span: reader.span(start) };
+  const operand = readEvaluation(last.expr, last.expr.span.start);
+  const term = { ...last, expr: operand, span: { start: last.span.start, end: lastEnd } };
+  return { ...expr, terms: [...expr.terms.slice(0, -1), term], span: span(from) };
 }
 
 /** The `_a^b` after an evaluation bracket or bar; the bracket itself was taken. */
-export function readEvaluation(reader: Reader, operand: Expr, start: number): Expr {
-  const [lower, upper] = readScripts(reader, readBound, readBound);
-  const to = upper ?? lower ?? reader.fail('missing-operand _');
-  const variable = lower?.variable ?? to.variable;
-  const from = upper && lower && lower.value;
-  return { kind: 'evaluated', operand, variable, from, to: to.value, span: reader.span(start) };
+export function readEvaluation(operand: Expr, from: number): Expr {
+  const [lower, upper] = readScripts(readBound, readBound);
+  const to = upper ?? lower ?? fail('missing-operand _');
+  return {
+    kind: 'evaluated',
+    operand,
+    variable: lower?.variable ?? to.variable,
+    from: upper && lower && lower.value,
+    to: to.value,
+    span: span(from),
+  };
 }
 
 interface Bound {
@@ -62,124 +94,101 @@ interface Bound {
   readonly value: Expr;
 }
 
-function readBound(reader: Reader): Bound {
-  const variable = reader.ahead(/\{a=/y) ? reader.peek(1).text : null;
-  if (variable === null) return { variable, value: readExponent(reader) };
-  reader.skip(3);
-  return { variable, value: reader.enclosed('}', reader.grammar.sum) };
+function readBound(): Bound {
+  if (!ahead(/\{a=/y)) return { variable: null, value: readExponent() };
+  const { text } = peek(1);
+  skip(3);
+  return { variable: text, value: enclosed('}', sum) };
 }
 
 /** Factors and divisions, from left to right. */
-export function readProduct(reader: Reader, first?: Expr): Expr {
-  const run = startRun(first ? outer(first).start : reader.token.start);
-  addFactor(reader, run, first ?? readFactor(reader));
+export function readProduct(from = start, first = readFactor()): Expr {
+  let run = startRun(first);
+  let levels = depth;
   for (;;) {
-    const { kind, gap } = reader.token;
-    if (reader.take('*×')) {
-      if (reader.context.dx === 'ends' && reader.atDifferential()) return productOf(reader, run);
-      addFactor(reader, run, readSigned(reader, readFactor), kind === '*' ? 'dot' : 'times');
-    } else if (reader.is('/÷:')) divide(reader, run, kind === '/' ? 'slash' : 'divide');
-    else if (reader.takeAll(/\{\}/y)) continue;
-    else if (!opensInnerBar(reader) && !reader.startsFactor()) return productOf(reader, run);
-    else if (reader.context.dx === 'held' && reader.atDifferential()) takeDifferential(reader);
-    else addFactor(reader, run, readFactor(reader), 'implicit', gap);
+    const { gap } = token;
+    const isDot = is('*');
+    if (take('*×')) {
+      if (context.dx === 'ends' && atDifferential()) break;
+      addFactor(run, readSigned(readFactor), isDot ? 'dot' : 'times');
+    } else if (is('/÷:')) {
+      levels += 1;
+      if (levels > READ_LIMITS.levels) fail('too-deep');
+      const numerator = productOf(run, from);
+      const written = next().kind === '/' ? 'slash' : 'divide';
+      run = startRun({ kind: 'quotient', numerator, denominator: readDivisor(), written, span: span(from) });
+    } else if (takeAll(/\{\}/y)) continue;
+    else if (!opensInnerBar() && !startsFactor()) break;
+    else if (context.dx === 'held' && atDifferential()) takeDifferential();
+    else addFactor(run, readFactor(), 'implicit', gap);
   }
+  return productOf(run, from);
 }
 
 /** `|a|b|c|`: the second bar may also open an inner pair. */
-function opensInnerBar(reader: Reader): boolean {
-  const after = reader.peek(1).kind;
+function opensInnerBar(): boolean {
+  const after = peek(1).kind;
   return (
-    reader.is('|') &&
-    reader.token.side === '' &&
-    reader.context.bars === 1 &&
-    after !== '|' &&
-    reader.grammar.atoms[after] !== undefined &&
-    reader.choose('bars')
+    is('|') && token.side === '' && context.bars === 1 && after !== '|' && atoms[after] !== undefined && choose('bars')
   );
 }
 
-/** The d and the letter after it. */
-export function takeDifferential(reader: Reader): void {
-  reader.next();
-  reader.variable = reader.next().text;
-}
-
-function readFactor(reader: Reader): Expr {
-  const { token } = reader;
-  if (reader.context.dx !== 'held' || !reader.atDifferential()) return reader.grammar.power(reader);
-  takeDifferential(reader);
-  return reader.startsFactor() ? readFactor(reader) : numberOf(reader.span(token.start), 1n);
+function readFactor(): Expr {
+  if (context.dx !== 'held' || !atDifferential()) return readPower();
+  const from = start;
+  takeDifferential();
+  return startsFactor() ? readFactor() : numberOf(span(from), 1n);
 }
 
 type Join = ProductExpr['joins'][number];
 
-/** One product while it is read: factors so far, folded into a quotient at each division. */
+/** One product while it is read. */
 export interface Run {
-  readonly start: number;
-  factors: Expr[];
-  joins: Join[];
-  divisions: number;
-  /** The last division, which what stands directly after it may or may not belong to. */
-  divided: Expr | null;
+  readonly factors: Expr[];
+  readonly joins: Join[];
 }
 
-export function startRun(start: number): Run {
-  return { start, factors: [], joins: [], divisions: 0, divided: null };
+export function startRun(first: Expr): Run {
+  return first.kind === 'product' && !first.bracketed
+    ? { factors: [...first.factors], joins: [...first.joins] }
+    : { factors: [first], joins: [] };
 }
 
 /** `gap`: a space parts the factor from the one before it. */
-export function addFactor(reader: Reader, run: Run, expr: Expr, join: Join = 'implicit', gap = false): void {
-  const { factors, joins } = run;
-  const last = factors[factors.length - 1];
-  if (last && join === 'implicit') {
-    const mixed = gap ? null : mixedNumber(reader, last, expr);
-    if (mixed) {
-      factors[factors.length - 1] = mixed;
-      return;
-    }
-    if (last === run.divided) reader.flags.add('slash-product');
+export function addFactor({ factors, joins }: Run, expr: Expr, join: Join = 'implicit', gap = false): void {
+  const last = factors.pop()!;
+  if (join === 'implicit') {
+    const mixed = gap ? null : mixedNumber(last, expr);
+    if (mixed) return void factors.push(mixed);
+    if (isDivided(last)) flag('slash-product');
     if (expr.kind === 'number' && last.kind === 'number' && !expr.bracketed && !last.bracketed) {
-      reader.fail('bad-number *', expr.span);
+      fail('bad-number *', expr.span);
     }
   }
-  if (last) joins.push(join);
-  if (expr.kind === 'product' && !expr.bracketed) {
-    factors.push(...expr.factors);
-    joins.push(...expr.joins);
-  } else factors.push(expr);
+  const more = startRun(expr);
+  factors.push(last, ...more.factors);
+  joins.push(join, ...more.joins);
+}
+
+/** Written with a sign of division, so that what stands directly after it may or may not belong to it. */
+function isDivided(expr: Expr): boolean {
+  return expr.kind === 'quotient' && expr.written !== 'fraction' && !expr.bracketed;
 }
 
 /** The run as one expression. */
-export function productOf(reader: Reader, { factors, joins, start }: Run): Expr {
-  return factors.length === 1 ? factors[0]! : { kind: 'product', factors, joins, span: reader.span(start) };
+export function productOf({ factors, joins }: Run, from: number): Expr {
+  return factors.length === 1 ? factors[0]! : { kind: 'product', factors, joins, span: span(from) };
 }
 
-function divide(reader: Reader, run: Run, written: QuotientExpr['written']): void {
-  run.divisions += 1;
-  if (run.divisions + reader.depth > READ_LIMITS.levels) reader.fail('too-deep');
-  const numerator = productOf(reader, run);
-  reader.next();
-  const first = readSigned(reader, readFactor);
-  const denominator = takesMore(reader, first) ? readJuxtaposed(reader, first) : first;
-  run.divided = { kind: 'quotient', numerator, denominator, written, span: reader.span(run.start) };
-  run.factors = [run.divided];
-  run.joins = [];
-}
-
-/** `1/2x`: does what stands beside the divisor belong to it? */
-function takesMore(reader: Reader, divisor: Expr): boolean {
-  if (!reader.startsFactor()) return false;
-  return (reader.is('F') && !reader.token.gap && divisor.kind === 'number') || reader.choose('slash');
-}
-
-/** All that stands directly beside the divisor, read as one product. */
-function readJuxtaposed(reader: Reader, first: Expr): Expr {
-  const run = startRun(outer(first).start);
-  addFactor(reader, run, first);
-  while (reader.startsFactor()) {
-    const { gap } = reader.token;
-    addFactor(reader, run, readFactor(reader), 'implicit', gap);
-  }
-  return productOf(reader, run);
+/** `1/2x`: the divisor with what stands directly beside it, where that belongs to it. */
+function readDivisor(): Expr {
+  const from = start;
+  const first = readSigned(readFactor);
+  if (!startsFactor() || !((is('F') && !token.gap && first.kind === 'number') || choose('slash'))) return first;
+  const run = startRun(first);
+  do {
+    const { gap } = token;
+    addFactor(run, readFactor(), 'implicit', gap);
+  } while (startsFactor());
+  return productOf(run, from);
 }

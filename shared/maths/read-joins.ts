@@ -1,6 +1,6 @@
 import type { Expr, Line, RelationSign } from './expression.ts';
 import { namesIn } from './names-in.ts';
-import { outer, type Reader } from './reader.ts';
+import { choose, flag, outer, span } from './reader.ts';
 
 export type Join = 'or' | 'and' | 'comma';
 
@@ -11,37 +11,38 @@ export interface Part {
 }
 
 /** Statements with their joins as one line; says what a comma means, or that it could mean two things. */
-export function joinParts(reader: Reader, parts: readonly Part[], start: number): Line {
+export function joinParts(parts: readonly Part[], start: number): Line {
   const last = parts[parts.length - 1]!;
+  if (parts.length === 1) return last.line;
   // `.. , k in Z` at the end goes with all that stands before it.
   const isCondition = last.line.kind === 'membership' && last.join !== 'or' && parts.length > 1;
   const rest = isCondition ? parts.slice(0, -1) : parts;
-  const joined = joinByOr(reader, saysAnd(rest) ? rest : spreadValues(rest), start);
+  const joined = joinByOr(saysAnd(rest) ? rest : spreadValues(rest), start);
   if (!isCondition) return joined;
-  reader.flags.add('comma-and');
-  return combine(reader, 'all', joined.kind === 'all' ? [...joined.parts, last.line] : [joined, last.line], start);
+  flag('comma-and');
+  return combine('all', joined.kind === 'all' ? [...joined.parts, last.line] : [joined, last.line], start);
 }
 
 function saysAnd(parts: readonly Part[]): boolean {
   return parts.slice(1).some((part) => part.join === 'and');
 }
 
-function combine(reader: Reader, kind: 'any' | 'all', parts: readonly Line[], start: number): Line {
-  return parts.length === 1 ? parts[0]! : { kind, parts, span: reader.span(start) };
+function combine(kind: 'any' | 'all', parts: readonly Line[], start: number): Line {
+  return parts.length === 1 ? parts[0]! : { kind, parts, span: span(start) };
 }
 
 /** "and" and commas hold tighter than "or", unless the letters leave it open: then the author is asked. */
-function joinByOr(reader: Reader, parts: readonly Part[], start: number): Line {
+function joinByOr(parts: readonly Part[], start: number): Line {
   const groups = splitAt(parts, true);
-  if (groups.length === 1) return joinTightly(reader, parts);
+  if (groups.length === 1) return joinTightly(parts);
   const isOpen = saysAnd(parts) && new Set(groups.map((group) => [...namesIn(group)].sort().join())).size > 1;
-  if (isOpen && reader.choose('joins')) {
-    const wide = splitAt(parts, false).map((group) => combine(reader, 'any', linesOf(group), startOf(group)));
-    return combine(reader, 'all', wide, start);
+  if (isOpen && choose('joins')) {
+    const wide = splitAt(parts, false).map((group) => combine('any', linesOf(group), startOf(group)));
+    return combine('all', wide, start);
   }
-  const lines = groups.map((group) => joinTightly(reader, group));
+  const lines = groups.map((group) => joinTightly(group));
   const flat = lines.flatMap((line) => (line.kind === 'any' ? line.parts : [line]));
-  return combine(reader, 'any', flat, start);
+  return combine('any', flat, start);
 }
 
 /** The parts split at each "or", or at all else. */
@@ -63,22 +64,22 @@ function startOf(parts: readonly Part[]): number {
   return parts[0]!.line.span.start;
 }
 
-function joinTightly(reader: Reader, parts: readonly Part[]): Line {
+function joinTightly(parts: readonly Part[]): Line {
   if (parts.length === 1) return parts[0]!.line;
   const start = startOf(parts);
   const spread = spreadValues(parts);
   const lines = linesOf(spread);
   if (saysAnd(parts)) {
     const isOdd = spread !== parts && valuedLetter(lines[0]!) === valuedLetter(lines[1]!);
-    return combine(reader, isOdd && reader.choose('comma') ? 'any' : 'all', lines, start);
+    return combine(isOdd && choose('comma') ? 'any' : 'all', lines, start);
   }
   const items = lines.flatMap((line) => (line.kind === 'expression' ? [line.expr] : []));
   const isSet = items.length === lines.length;
-  const kind = isSet ? 'any' : commaKind(reader, lines);
-  reader.flags.add(kind === 'any' ? 'comma-or' : 'comma-and');
-  if (!isSet) return combine(reader, kind, lines, start);
-  const span = reader.span(start);
-  return { kind: 'membership', letter: null, set: { kind: 'finite', items, span }, negated: false, span };
+  const kind = isSet ? 'any' : commaKind(lines);
+  flag(kind === 'any' ? 'comma-or' : 'comma-and');
+  if (!isSet) return combine(kind, lines, start);
+  const place = span(start);
+  return { kind: 'membership', letter: null, set: { kind: 'finite', items, span: place }, negated: false, span: place };
 }
 
 /** `x=2 or 3` and `x,y>0`: the letter and sign stand for each value or letter beside them. */
@@ -120,12 +121,12 @@ function hasLetter(expr: Expr, letter: Expr): boolean {
 }
 
 /** Rule for commas: values of one letter are alternatives, different letters hold together, all else is asked about. */
-function commaKind(reader: Reader, lines: readonly Line[]): 'any' | 'all' {
+function commaKind(lines: readonly Line[]): 'any' | 'all' {
   const names = new Set(lines.map(valuedLetter));
   if (!names.has(null) && names.size === 1) return [...names][0]!.endsWith('!') ? 'all' : 'any';
   const isClear = names.has(null) === false ? names.size === lines.length : namesIn(lines).size > 1;
   if (isClear || lines.some(({ kind }) => /^(?:expression|definition|always|membership)$/.test(kind))) return 'all';
-  return reader.choose('comma') ? 'any' : 'all';
+  return choose('comma') ? 'any' : 'all';
 }
 
 /** The letter of `letter = value` (or about; with a ! for not equal), where the value does not hold it. */

@@ -4,7 +4,28 @@ import { readEnd } from './read-atoms.ts';
 import { joinParts, type Join, type Part } from './read-joins.ts';
 import { readInterval, readSet, startsSet } from './read-sets.ts';
 import { readSentence, startsDefinition } from './read-sentences.ts';
-import type { Reader } from './reader.ts';
+import {
+  ahead,
+  choose,
+  enclosed,
+  fail,
+  flag,
+  flip,
+  functions,
+  inside,
+  is,
+  kind,
+  next,
+  peek,
+  skip,
+  span,
+  start,
+  sum,
+  take,
+  takeAll,
+  token,
+  withFunctions,
+} from './reader.ts';
 
 const RELATIONS: Partial<Record<string, RelationSign>> = {
   '=': '=',
@@ -17,21 +38,24 @@ const RELATIONS: Partial<Record<string, RelationSign>> = {
 };
 
 /** All that one line says. */
-export function readWholeLine(reader: Reader): Line {
+export function readWholeLine(): Line {
   // An arrow or "so" before a line says only that it follows.
-  while (reader.is('⇒') || CONNECTIVE.test(wordsOf(reader))) reader.next();
-  if (reader.is('$')) reader.fail('empty number letter');
-  const line = RELATIONS[reader.token.kind] ? readContinuation(reader) : readStatements(reader);
-  reader.takeAll(/\.(?=\$)/y);
-  if (!reader.is('$')) unexpected(reader);
+  while (is('⇒') || CONNECTIVE.test(wordsOf())) next();
+  if (is('$')) fail('empty number letter');
+  const line = RELATIONS[kind] ? readContinuation() : readStatements();
+  takeAll(/\.(?=\$)/y);
+  if (is(')]}⦄⌋⌉E›&')) fail('extra-bracket');
+  if (is('|')) fail('missing-bracket |');
+  if (is('T∨∧')) fail('text');
+  if (!is('$')) fail(is('⇒') ? 'bad-relation =' : 'missing-operand + =');
   return line;
 }
 
 const CONNECTIVE = /^T(?:|so|hence|thus|therefore|then|i\.e\.|and so|that is)$/;
 
 /** The words of a `\text` after a T; empty for other tokens. */
-function wordsOf({ token }: Reader): string {
-  return token.kind === 'T'
+function wordsOf(): string {
+  return is('T')
     ? 'T' +
         token.text
           .toLowerCase()
@@ -40,58 +64,47 @@ function wordsOf({ token }: Reader): string {
     : '';
 }
 
-function unexpected(reader: Reader): never {
-  if (reader.is(')]}⦄⌋⌉E›&')) return reader.fail('extra-bracket');
-  if (reader.is('|')) return reader.fail('missing-bracket |');
-  if (reader.is('T∨∧')) return reader.fail('text');
-  return reader.fail(reader.is('⇒') ? 'bad-relation =' : 'missing-operand + =');
-}
-
 /** Statements joined by or, and, commas; also the content of a `cases` block. */
-export function readStatements(reader: Reader): Line {
-  const { start } = reader.token;
+export function readStatements(): Line {
+  const from = start;
   const parts: Part[] = [];
-  for (let join: Join | null = 'and'; join; join = takeJoin(reader)) parts.push({ line: readStatement(reader), join });
-  return parts.length === 1 ? parts[0]!.line : joinParts(reader, parts, start);
+  for (let join: Join | null = 'and'; join; join = takeJoin()) parts.push({ line: readStatement(), join });
+  return joinParts(parts, from);
 }
 
-function takeJoin(reader: Reader): Join | null {
-  const words = wordsOf(reader);
-  const isOr = reader.is('∨') || words === 'Tor';
-  const isAnd = reader.is('∧') || /^T(?:and|where|for|with|if)$/.test(words);
-  const isComma = reader.is(',;');
+function takeJoin(): Join | null {
+  const words = wordsOf();
+  const isOr = is('∨') || words === 'Tor';
+  const isAnd = is('∧') || /^T(?:and|where|for|with|if)$/.test(words);
+  const isComma = is(',;');
   if (!isOr && !isAnd && !isComma && words !== 'T') return null;
-  reader.next();
+  next();
   if (isOr || isAnd) return isOr ? 'or' : 'and';
-  return takeJoin(reader) ?? (isComma ? 'comma' : null);
+  return takeJoin() ?? (isComma ? 'comma' : null);
 }
 
-function readStatement(reader: Reader): Line {
-  const { start } = reader.token;
-  const sentence = readSentence(reader);
+function readStatement(): Line {
+  const from = start;
+  const sentence = readSentence();
   if (sentence) return sentence;
-  if (startsBlock(reader)) return readBlock(reader);
-  if (reader.is('(') && /[=<>≤≥≠≈∈∉]/.test(groupAhead(reader).inner)) return readGroup(reader, ')');
-  if (reader.ahead(/⦃a(?:∈ℝ)?[|:]/y)) return readGroup(reader, '⦄');
+  if (startsBlock()) return readBlock();
+  if (is('(') && /[=<>≤≥≠≈∈∉]/.test(groupAhead().inner)) return readGroup(')');
+  if (ahead(/⦃a(?:∈ℝ)?[|:]/y)) return readGroup('⦄');
   // `S=\{2\}`: the set of solutions under the name that some give it.
-  if (/^[SL]$/.test(reader.token.text) && reader.ahead(/a=[⦃∅]/y)) reader.skip(2);
-  if (startsSet(reader)) return readBareSet(reader);
-  const name = startsDefinition(reader);
-  const before = reader.functions;
-  if (name) reader.functions = [...before, name];
-  const left = reader.grammar.sum(reader);
-  reader.functions = before;
-  const line = readRelations(reader, left, start);
+  if (/^[SL]$/.test(token.text) && ahead(/a=[⦃∅]/y)) skip(2);
+  if (startsSet()) return readBareSet();
+  const name = startsDefinition();
+  const line = readRelations(name ? withFunctions([...functions, name], sum) : sum(), from);
   return name ? asDefinition(line) : line;
 }
 
 /** `(x>1 and x<2) or ..`, a bracket that holds a relation; `\{x\in\R\mid x>2\}` says what its condition says. */
-function readGroup(reader: Reader, close: ')' | '⦄'): Line {
-  const { start } = reader.next();
-  if (close === '⦄') while (!reader.is('|:')) reader.next();
-  if (close === '⦄') reader.next();
-  const line = reader.enclosed(close, readStatements, {}, `missing-bracket ${close === ')' ? ')' : '\\}'}`);
-  return { ...line, span: reader.span(start) };
+function readGroup(close: ')' | '⦄'): Line {
+  const from = start;
+  if (close === '⦄') while (!is('|:')) next();
+  next();
+  const line = enclosed(close, readStatements, {}, `missing-bracket ${close === ')' ? ')' : '\\}'}`);
+  return { ...line, span: span(from) };
 }
 
 /** `f(x) = ..` introduces f; a chain is left as it is. */
@@ -101,93 +114,94 @@ function asDefinition(line: Line): Line {
   return { kind: 'definition', name: line.left.name, params, value: line.right, span: line.span };
 }
 
-function readRelations(reader: Reader, left: Expr, start: number): Line {
-  const isSolution = left.kind === 'letter' && reader.ahead(/=⦃[^B]/y);
-  if (isSolution || reader.is('∈∉')) {
-    const negated = reader.next().kind === '∉';
-    const set = readSet(reader);
-    return { kind: 'membership', letter: left, set, negated, span: reader.span(start) };
+function readRelations(left: Expr, from: number): Line {
+  if (is('∈∉') || (left.kind === 'letter' && ahead(/=⦃[^B]/y))) {
+    const negated = next().kind === '∉';
+    return { kind: 'membership', letter: left, set: readSet(), negated, span: span(from) };
   }
-  if (reader.take('≔')) {
-    const value = reader.grammar.sum(reader);
-    if (left.kind !== 'letter') return reader.fail('bad-relation =', left.span);
-    return { kind: 'definition', name: left.name, params: [], value, span: reader.span(start) };
+  if (take('≔')) {
+    const value = sum();
+    if (left.kind !== 'letter') return fail('bad-relation =', left.span);
+    return { kind: 'definition', name: left.name, params: [], value, span: span(from) };
   }
   const members = [left];
-  const signs = readMembers(reader, members);
-  const span = reader.span(start);
+  const signs = readMembers(members);
   const [sign, more] = signs;
-  if (!sign) return { kind: 'expression', expr: left, span };
-  if (more) return { kind: 'chain', members, signs, span };
-  return { kind: 'relation', left, sign, right: members[1]!, span };
+  const place = span(from);
+  if (!sign) return { kind: 'expression', expr: left, span: place };
+  if (more) return { kind: 'chain', members, signs, span: place };
+  return { kind: 'relation', left, sign, right: members[1]!, span: place };
 }
 
 /** Signs and what follows each; the members are added to those given. */
-function readMembers(reader: Reader, members: Expr[]): RelationSign[] {
+function readMembers(members: Expr[]): RelationSign[] {
   const signs: RelationSign[] = [];
   for (;;) {
-    const isTyped = reader.flip === 'unequal' && reader.ahead(/!=/y);
-    const sign = isTyped ? '!=' : RELATIONS[reader.token.kind];
+    const isTyped = flip === 'unequal' && ahead(/!=/y);
+    const sign = isTyped ? '!=' : RELATIONS[kind];
     if (!sign) return signs;
-    reader.skip(isTyped ? 2 : 1);
-    if (RELATIONS[reader.token.kind]) reader.fail('bad-relation number letter');
+    skip(isTyped ? 2 : 1);
+    if (RELATIONS[kind]) fail('bad-relation number letter');
     signs.push(sign);
-    members.push(reader.grammar.sum(reader));
+    members.push(sum());
   }
 }
 
-function readContinuation(reader: Reader): Line {
-  const { start } = reader.token;
-  reader.flags.add('continues');
+function readContinuation(): Line {
+  const from = start;
+  flag('continues');
   const members: Expr[] = [];
-  const signs = readMembers(reader, members);
-  return { kind: 'continuation', members, signs, span: reader.span(start) };
+  const signs = readMembers(members);
+  return { kind: 'continuation', members, signs, span: span(from) };
 }
 
-function startsBlock(reader: Reader): boolean {
-  if (reader.is('B')) return reader.token.text === 'cases';
-  return reader.ahead(/⦃B/y) !== '' && /^(?:cases|array|matrix|aligned)$/.test(reader.peek(1).text);
+function startsBlock(): boolean {
+  if (is('B')) return token.text === 'cases';
+  return ahead(/⦃B/y) !== '' && /^(?:cases|array|matrix|aligned)$/.test(peek(1).text);
 }
 
 /** `\begin{cases} .. \end{cases}` or a left brace before an array: one statement a row. */
-function readBlock(reader: Reader): Line {
-  const { start } = reader.token;
-  const isBraced = reader.take('⦃');
-  const environment = reader.next().text;
-  const line = reader.inside(() => {
-    const parts: Part[] = [];
-    do {
-      if (reader.is('E') && parts.length > 0) break;
-      reader.take('&');
-      parts.push({ line: readRow(reader), join: 'comma' });
-      reader.take(',;');
-    } while (reader.take('N'));
-    return parts.length === 1 ? parts[0]!.line : joinParts(reader, parts, start);
-  });
-  readEnd(reader, environment);
-  if (isBraced) reader.take('›⦄');
+function readBlock(): Line {
+  const from = start;
+  const isBraced = take('⦃');
+  const environment = next().text;
+  const parts = inside(readRows);
+  const line = joinParts(parts, from);
+  readEnd(environment);
+  if (isBraced) take('›⦄');
   return line;
 }
 
-/** One row; alignment marks around its relation are layout only. */
-function readRow(reader: Reader): Line {
-  const { start } = reader.token;
-  const left = reader.grammar.sum(reader);
-  const isParted = reader.take('&') || reader.is(',T');
-  const relation = RELATIONS[reader.token.kind];
-  // `x & x>0`: an expression for each case is no statement.
-  if (!relation && !reader.is('∈∉')) reader.fail(isParted ? 'piecewise' : 'bad-relation =');
-  if (!reader.ahead(/.&/y)) return readRelations(reader, left, start);
-  reader.skip(2);
-  if (!relation) return reader.fail('bad-relation =');
-  return { kind: 'relation', left, sign: relation, right: reader.grammar.sum(reader), span: reader.span(start) };
+function readRows(): Part[] {
+  const parts: Part[] = [];
+  do {
+    if (is('E') && parts.length > 0) break;
+    take('&');
+    parts.push({ line: readRow(), join: 'comma' });
+    take(',;');
+  } while (take('N'));
+  return parts;
 }
 
-function readBareSet(reader: Reader): Line {
-  const { start } = reader.token;
-  const isOther = reader.is('([') && reader.choose('interval');
-  if (isOther && reader.is('(')) return readRelations(reader, reader.grammar.sum(reader), start);
-  const set = reader.is('[') && !isOther ? readInterval(reader) : readSet(reader);
+/** One row; alignment marks around its relation are layout only. */
+function readRow(): Line {
+  const from = start;
+  const left = sum();
+  const isParted = take('&') || is(',T');
+  const relation = RELATIONS[kind];
+  // `x & x>0`: an expression for each case is no statement.
+  if (!relation && !is('∈∉')) fail(isParted ? 'piecewise' : 'bad-relation =');
+  if (!ahead(/.&/y)) return readRelations(left, from);
+  skip(2);
+  if (!relation) return fail('bad-relation =');
+  return { kind: 'relation', left, sign: relation, right: sum(), span: span(from) };
+}
+
+function readBareSet(): Line {
+  const from = start;
+  const isOther = is('([') && choose('interval');
+  if (isOther && is('(')) return readRelations(sum(), from);
+  const set = is('[') && !isOther ? readInterval() : readSet();
   if (set.kind === 'empty') return { kind: 'none', span: set.span };
-  return { kind: 'membership', letter: null, set, negated: false, span: reader.span(start) };
+  return { kind: 'membership', letter: null, set, negated: false, span: span(from) };
 }

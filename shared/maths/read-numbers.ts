@@ -1,40 +1,32 @@
-import type { Expr, NumberExpr } from './expression.ts';
-import { numberOf, type Reader } from './reader.ts';
-import type { Token } from './scanner.ts';
+import type { Expr, NumberExpr, Span } from './expression.ts';
+import { flag, numberOf, span, take } from './reader.ts';
+import type { Token } from './tokens.ts';
 
 /** A number token with the percent sign after it, if any. */
-export function readNumberAtom(reader: Reader): Expr {
-  const token = reader.next();
+export function readNumberAtom(token: Token): Expr {
   const number = numberFrom(token);
-  if (!reader.take('%')) return { ...number, span: reader.span(token.start) };
-  reader.flags.add('percent');
-  return numberIn(number.numerator, number.denominator * 100n, 'percent', reader.span(token.start));
+  if (!take('%')) return { ...number, span: span(token.start) };
+  flag('percent');
+  return numberIn(number.numerator, number.denominator * 100n, 'percent', span(token.start));
 }
 
 /** The value of the digits: `12`, `3.5`, `0.1(6)`. */
 export function numberFrom({ text, start, end }: Pick<Token, 'text' | 'start' | 'end'>): NumberExpr {
-  if (!text.includes('.')) return numberOf({ start, end }, BigInt(text));
-  const span = { start, end };
-  const [, whole = '', decimals = '', period] = /^(\d+)\.(\d*)(?:\((\d+)\))?$/.exec(text)!;
-  const fixed = BigInt(whole + decimals);
-  const scale = 10n ** BigInt(decimals.length);
-  if (period) {
-    const nines = 10n ** BigInt(period.length) - 1n;
-    return numberIn(fixed * nines + BigInt(period), scale * nines, 'repeating', span);
-  }
-  return numberIn(fixed, scale, 'decimal', span, decimals.length);
+  const place = { start, end };
+  const [whole = '', decimals] = text.split('.');
+  if (decimals === undefined) return numberOf(place, BigInt(whole));
+  const [fixed = '', period] = decimals.split(/[()]/);
+  const top = BigInt(whole + fixed);
+  const bottom = 10n ** BigInt(fixed.length);
+  if (!period) return numberIn(top, bottom, 'decimal', place, fixed.length);
+  const nines = 10n ** BigInt(period.length) - 1n;
+  return numberIn(top * nines + BigInt(period), bottom * nines, 'repeating', place);
 }
 
-function numberIn(
-  top: bigint,
-  bottom: bigint,
-  written: NumberExpr['written'],
-  span: NumberExpr['span'],
-  decimals = 0,
-): NumberExpr {
+function numberIn(top: bigint, bottom: bigint, written: NumberExpr['written'], place: Span, decimals = 0): NumberExpr {
   let [a, b] = [top, bottom];
   while (b > 0n) [a, b] = [b, a % b];
-  return { kind: 'number', numerator: top / a, denominator: bottom / a, written, decimals, span };
+  return { kind: 'number', numerator: top / a, denominator: bottom / a, written, decimals, span: place };
 }
 
 /** A number of digits alone, without brackets. */
@@ -43,11 +35,11 @@ function isWhole(expr: Expr): expr is NumberExpr {
 }
 
 /** `2\frac12`: a whole number directly followed by a fraction of digits is their sum. */
-export function mixedNumber(reader: Reader, whole: Expr, part: Expr): Expr | null {
+export function mixedNumber(whole: Expr, part: Expr): Expr | null {
   if (!isWhole(whole) || part.kind !== 'quotient' || part.written !== 'fraction' || part.bracketed) return null;
   const { numerator: top, denominator: bottom } = part;
   if (!isWhole(top) || !isWhole(bottom) || bottom.numerator === 0n) return null;
-  reader.flags.add('mixed-number');
+  flag('mixed-number');
   const above = whole.numerator * bottom.numerator + top.numerator;
-  return numberIn(above, bottom.numerator, 'mixed', reader.span(whole.span.start));
+  return numberIn(above, bottom.numerator, 'mixed', span(whole.span.start));
 }

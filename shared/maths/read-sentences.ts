@@ -1,54 +1,69 @@
 import type { Line } from './expression.ts';
 import { readName } from './read-arguments.ts';
-import type { Reader } from './reader.ts';
+import {
+  ahead,
+  choose,
+  expect,
+  fail,
+  functions,
+  index,
+  is,
+  lastEnd,
+  next,
+  peek,
+  span,
+  sum,
+  take,
+  takeAll,
+  token,
+} from './reader.ts';
+import { tokens } from './tokens.ts';
 
 const NONE = /^(there (is|are) )?(has )?no (real |valid )?(solutions?|roots?)( exists?)?$|^never true$|^(no|never)$/i;
 const ALWAYS =
   /^(?:(?:true )?(?:for )?(?:all|any|every)(?: real| values of| numbers?)*(?: ([a-z]))?|(?:is )?always true)$/i;
 
 /** "no solution", "all real x" and definitions, in a `\text` or as plain words; null where none begins here. */
-export function readSentence(reader: Reader): Line | null {
-  const { kind, text, start } = reader.token;
-  if (!reader.take('T∀')) return null;
+export function readSentence(): Line | null {
+  if (!is('T∀')) return null;
+  const { kind, text, start } = next();
   const words = text.replace(/[\s,.:~]+|\\[,;: ]/g, ' ').trim();
   const always = kind === '∀' ? [] : ALWAYS.exec(words);
-  if (always) return readAlways(reader, start, always[1]);
-  if (NONE.test(words)) return { kind: 'none', span: reader.span(start) };
-  if (/^(let|put|set|define|where)$/i.test(words)) return readLet(reader, start);
-  return reader.fail('text', { start, end: reader.lastEnd });
+  if (always) return readAlways(start, always[1]);
+  if (NONE.test(words)) return { kind: 'none', span: span(start) };
+  if (/^(let|put|set|define|where)$/i.test(words)) return readLet(start);
+  return fail('text', { start, end: lastEnd });
 }
 
 /** The letter of "all real x", where one is written. */
-function readAlways(reader: Reader, start: number, named?: string): Line {
-  const letter = named ?? (reader.is('a') ? readName(reader) : null);
-  if (!named) reader.takeAll(/∈ℝ/y);
-  return { kind: 'always', letter, span: reader.span(start) };
+function readAlways(start: number, named?: string): Line {
+  const letter = named ?? (is('a') ? readName() : null);
+  if (!named) takeAll(/∈ℝ/y);
+  return { kind: 'always', letter, span: span(start) };
 }
 
-function readLet(reader: Reader, start: number): Line {
-  const isFunction = reader.peek(1).kind === '(';
-  const name = readName(reader);
+function readLet(start: number): Line {
+  const isFunction = peek(1).kind === '(';
+  const name = readName();
   const params: string[] = [];
   if (isFunction) {
-    reader.next();
-    do params.push(readName(reader));
-    while (reader.take(','));
-    reader.expect(')');
+    next();
+    do params.push(readName());
+    while (take(','));
+    expect(')');
   }
-  if (!reader.take('=≔')) reader.fail('bad-relation =');
-  const value = reader.grammar.sum(reader);
-  return { kind: 'definition', name, params, value, span: reader.span(start) };
+  expect('=≔', 'bad-relation =');
+  return { kind: 'definition', name, params, value: sum(), span: span(start) };
 }
 
 /** The name that `f(x) = ..` introduces; null where the line is an ordinary statement. */
-export function startsDefinition(reader: Reader): string | null {
-  const { text } = reader.token;
-  const { length } = reader.ahead(/a\(a(?:,a)*\)=/y);
-  const param = reader.peek(2).text;
-  if (!length || param === text || reader.functions.includes(text)) return null;
+export function startsDefinition(): string | null {
+  const { text } = token;
+  const { length } = ahead(/a\(a(?:,a)*\)=/y);
+  const param = peek(2).text;
+  if (!length || param === text || functions.includes(text)) return null;
   if (/^(?:[fghFGH]|\\phi|\\psi)$/.test(text)) return text;
   if (!/^[xt]$/.test(param) || /^[abckmnxt]$/.test(text)) return null;
-  const rest = reader.tokens.slice(reader.index + length);
-  const isUsed = rest.some((token) => token.kind === 'a' && token.text === param);
-  return isUsed && !reader.choose('definition') ? text : null;
+  const isUsed = tokens.slice(index + length).some((other) => other.kind === 'a' && other.text === param);
+  return isUsed && !choose('definition') ? text : null;
 }

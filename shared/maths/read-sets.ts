@@ -1,7 +1,24 @@
 import type { Expr, SetExpr } from './expression.ts';
 import { groupAhead } from './look-ahead.ts';
-import { readList } from './read-atoms.ts';
-import { numberOf, type Reader } from './reader.ts';
+import { readList } from './read-arguments.ts';
+import {
+  ahead,
+  enclosed,
+  expect,
+  fail,
+  inside,
+  is,
+  kind,
+  next,
+  numberOf,
+  peek,
+  skip,
+  span,
+  start,
+  sum,
+  take,
+  takeAll,
+} from './reader.ts';
 
 const NUMBER_SETS: Partial<Record<string, 'reals' | 'integers' | 'naturals' | 'rationals' | 'complex'>> = {
   R: 'reals',
@@ -13,43 +30,43 @@ const NUMBER_SETS: Partial<Record<string, 'reals' | 'integers' | 'naturals' | 'r
 };
 
 /** Sets joined by union, intersection and "without"; two different joins need brackets. */
-export function readSet(reader: Reader): SetExpr {
-  const { start } = reader.token;
-  const parts = [readSimpleSet(reader)];
+export function readSet(): SetExpr {
+  const from = start;
+  const parts = [readSimpleSet()];
   const [first] = parts;
-  const join = reader.token.kind;
-  if (!'∪∩∖'.includes(join)) return first!;
-  while (reader.take(join) && (join !== '∖' || parts.length < 2)) parts.push(readSimpleSet(reader));
-  if (reader.is('∪∩∖')) reader.fail('mixed-joins (');
-  const span = reader.span(start);
-  if (join === '∖') return { kind: 'without', from: first!, removed: parts[1]!, span };
-  return { kind: join === '∪' ? 'union' : 'intersection', parts, span };
+  const join = kind;
+  if (!is('∪∩∖')) return first!;
+  while ((join !== '∖' || parts.length < 2) && take(join)) parts.push(readSimpleSet());
+  if (is('∪∩∖')) fail('mixed-joins (');
+  const place = span(from);
+  if (join === '∖') return { kind: 'without', from: first!, removed: parts[1]!, span: place };
+  return { kind: join === '∪' ? 'union' : 'intersection', parts, span: place };
 }
 
-function readSimpleSet(reader: Reader): SetExpr {
-  const { start } = reader.token;
-  if (reader.is('([]')) return readBracketed(reader);
-  if (reader.is('ℝ')) return readNumberSet(reader);
-  if (reader.take('∅') || reader.takeAll(/⦃⦄/y)) return { kind: 'empty', span: reader.span(start) };
-  if (!reader.take('⦃')) reader.fail('bad-set \\{ ( [ \\R');
-  const items = reader.inside(readList);
-  reader.expect('⦄', reader.is('|') ? 'bad-set \\}' : 'missing-bracket \\}');
-  return { kind: 'finite', items, span: reader.span(start) };
+function readSimpleSet(): SetExpr {
+  const from = start;
+  if (is('([]')) return readBracketed();
+  if (is('ℝ')) return readNumberSet();
+  if (take('∅') || takeAll(/⦃⦄/y)) return { kind: 'empty', span: span(from) };
+  expect('⦃', 'bad-set \\{ ( [ \\R');
+  const items = inside(readList);
+  expect('⦄', is('|') ? 'bad-set \\}' : 'missing-bracket \\}');
+  return { kind: 'finite', items, span: span(from) };
 }
 
 /** An interval, or a bracket around sets. */
-function readBracketed(reader: Reader): SetExpr {
-  if (!reader.is('(') || /[,;]/.test(groupAhead(reader).inner)) return readInterval(reader);
-  reader.next();
-  return reader.enclosed(')', readSet);
+function readBracketed(): SetExpr {
+  if (!is('(') || /[,;]/.test(groupAhead().inner)) return readInterval();
+  next();
+  return enclosed(')', readSet);
 }
 
-function readNumberSet(reader: Reader): SetExpr {
-  const { text, start } = reader.next();
-  const mark = text === 'R' ? reader.ahead(/[_^](?:\{[+-]\}|[+-])/y) : '';
-  if (!mark) return { kind: NUMBER_SETS[text] ?? 'reals', span: reader.span(start) };
-  const zero = numberOf(reader.peek(mark.length > 2 ? 2 : 1), 0n);
-  reader.skip(mark.length);
+function readNumberSet(): SetExpr {
+  const { text, start: from } = next();
+  const mark = text === 'R' ? ahead(/[_^](?:\{[+-]\}|[+-])/y) : '';
+  if (!mark) return { kind: NUMBER_SETS[text] ?? 'reals', span: span(from) };
+  const zero = numberOf(peek(mark.length > 2 ? 2 : 1), 0n);
+  skip(mark.length);
   const isPositive = mark.includes('+');
   return {
     kind: 'interval',
@@ -57,21 +74,20 @@ function readNumberSet(reader: Reader): SetExpr {
     to: isPositive ? null : zero,
     fromClosed: false,
     toClosed: false,
-    span: reader.span(start),
+    span: span(from),
   };
 }
 
 /** `(a,b]`, `[a;b]` and `]a,b[`. */
-export function readInterval(reader: Reader): SetExpr {
-  const open = reader.next();
+export function readInterval(): SetExpr {
+  const open = next();
   const readEnds = () => {
-    const left = reader.grammar.sum(reader);
-    if (!reader.take(',;')) reader.fail('bad-set ,');
-    return [left, reader.grammar.sum(reader)] as const;
+    const left = sum();
+    expect(',;', 'bad-set ,');
+    return [left, sum()] as const;
   };
-  const [left, right] = reader.inside(readEnds, { reversed: true });
-  if (!reader.is(')][')) reader.fail('missing-bracket ) ]');
-  const close = reader.next();
+  const [left, right] = inside(readEnds, { reversed: true });
+  const close = expect(')][', 'missing-bracket ) ]');
   const from = isInfinite(left, 'minus') ? null : left;
   const to = isInfinite(right, 'plus') ? null : right;
   return {
@@ -80,7 +96,7 @@ export function readInterval(reader: Reader): SetExpr {
     to,
     fromClosed: open.kind === '[' && from !== null,
     toClosed: close.kind === ']' && to !== null,
-    span: reader.span(open.start),
+    span: span(open.start),
   };
 }
 
@@ -91,11 +107,10 @@ function isInfinite(expr: Expr, sign: 'plus' | 'minus'): boolean {
 }
 
 /** `[1,2)`, `(-1,3]`, `]a,b[` or a number set at the start of a line: a bare set. */
-export function startsSet(reader: Reader): boolean {
-  if (reader.is('⦃∅ℝ]')) return true;
-  if (!reader.is('([')) return false;
-  const { inner, end } = groupAhead(reader);
-  const isSquare = reader.is('[');
+export function startsSet(): boolean {
+  if (is('⦃∅ℝ]')) return true;
+  if (!is('([')) return false;
+  const { inner, end } = groupAhead();
   if (!/^[^,;]*[,;][^,;]*$/.test(inner)) return false;
-  return reader.ahead(isSquare ? /[^\]$]|\][$∪∩∖]/y : /\]|[^$][$∪∩∖]/y, end) !== '';
+  return ahead(is('[') ? /[^\]$]|\][$∪∩∖]/y : /\]|[^$][$∪∩∖]/y, end) !== '';
 }

@@ -1,5 +1,4 @@
 import type { Line, Reading, ReadSettings } from './expression.ts';
-import { printLine } from './print.ts';
 import {
   readBars,
   readBinomial,
@@ -14,46 +13,39 @@ import {
 } from './read-atoms.ts';
 import { readIntegral, readLimit, readSeries } from './read-calculus.ts';
 import { readDerivativeFraction } from './read-derivatives.ts';
-import { readProduct, readSum } from './read-expression.ts';
+import { readSum } from './read-expression.ts';
 import { readFunction, readLog } from './read-functions.ts';
 import { readConstant, readLetter } from './read-letters.ts';
 import { readWholeLine } from './read-line.ts';
 import { readNumberAtom } from './read-numbers.ts';
-import { readPower } from './read-power.ts';
-import { type Choice, type Grammar, READ_LIMITS, Reader } from './reader.ts';
-import { ReadFailure } from './scanner.ts';
-import { tokenize } from './tokens.ts';
+import { begin, type Choice, choices, flags, useGrammar } from './reader.ts';
+import { ReadFailure } from './tokens.ts';
 
-const GRAMMAR: Grammar = {
-  sum: readSum,
-  product: readProduct,
-  power: readPower,
-  atoms: {
-    0: readNumberAtom,
-    a: readLetter,
-    e: readConstant,
-    i: readConstant,
-    '∞': readConstant,
-    '(': readBracket,
-    '[': readBracket,
-    '{': readBraces,
-    '|': readBars,
-    '‹': readOpenBracket,
-    '⌊': readFenced,
-    '⌈': readFenced,
-    O: readOverline,
-    F: (reader) => readDerivativeFraction(reader) ?? readFraction(reader),
-    C: readBinomial,
-    '√': readRoot,
-    B: readMatrix,
-    f: readFunction,
-    l: readLog,
-    '∫': readIntegral,
-    '∑': readSeries,
-    '∏': readSeries,
-    L: readLimit,
-  },
-};
+useGrammar(readSum, {
+  0: readNumberAtom,
+  a: readLetter,
+  e: readConstant,
+  i: readConstant,
+  '∞': readConstant,
+  '(': readBracket,
+  '[': readBracket,
+  '{': readBraces,
+  '|': readBars,
+  '‹': readOpenBracket,
+  '⌊': readFenced,
+  '⌈': readFenced,
+  O: readOverline,
+  F: (token) => readDerivativeFraction(token.start) ?? readFraction(token),
+  C: readBinomial,
+  '√': readRoot,
+  B: readMatrix,
+  f: readFunction,
+  l: readLog,
+  '∫': readIntegral,
+  '∑': readSeries,
+  '∏': readSeries,
+  L: readLimit,
+});
 
 export const DEFAULT_READ_SETTINGS: ReadSettings = { numbers: 'real', decimal: 'point', functions: [] };
 
@@ -62,37 +54,39 @@ export const DEFAULT_READ_SETTINGS: ReadSettings = { numbers: 'real', decimal: '
  * read is an error with its place. Where the line can be read in two ways, `alternatives` holds the others.
  */
 export function readLine(tex: string, settings: ReadSettings = DEFAULT_READ_SETTINGS): Reading {
-  const result = attempt(tex, settings, null);
-  if (result instanceof ReadFailure) return { ok: false, error: result.error };
-  const { reader, line } = result;
-  return { ok: true, line, flags: [...reader.flags], alternatives: readOthers(reader, line) };
-}
-
-/** One reading with all decisions taken as usual but one. */
-function attempt(
-  tex: string,
-  settings: ReadSettings,
-  flip: Choice | null,
-): { reader: Reader; line: Line } | ReadFailure {
-  const most = READ_LIMITS.characters;
   try {
-    if (tex.length > most) throw new ReadFailure(`too-long ${most}`, '', { start: most, end: tex.length });
-    const reader = new Reader(tokenize(tex, settings), GRAMMAR, flip);
-    return { reader, line: readWholeLine(reader) };
+    const line = attempt(tex, settings, null);
+    return { ok: true, line, flags: [...flags], alternatives: readOthers(tex, settings, line) };
   } catch (failure) {
-    if (failure instanceof ReadFailure) return failure;
+    if (failure instanceof ReadFailure) return { ok: false, error: failure.error };
     throw failure;
   }
 }
 
+/** One reading with all decisions taken as usual but one. */
+function attempt(tex: string, settings: ReadSettings, flip: Choice | null): Line {
+  begin(tex, settings, flip);
+  return readWholeLine();
+}
+
 /** The line read again with one decision taken the other way, for each decision that was open. */
-function readOthers({ source, settings, choices }: Reader, line: Line): readonly string[] {
+function readOthers(tex: string, settings: ReadSettings, line: Line): readonly Line[] {
   if (choices.size === 0) return [];
-  const print = (other: Line) => printLine(other, settings.decimal);
-  const known = new Set([print(line)]);
+  const others = new Map([[shapeOf(line), line]]);
   for (const choice of choices) {
-    const other = attempt(source, settings, choice);
-    if (!(other instanceof ReadFailure)) known.add(print(other.line));
+    try {
+      const other = attempt(tex, settings, choice);
+      others.set(shapeOf(other), other);
+    } catch (failure) {
+      if (!(failure instanceof ReadFailure)) throw failure;
+    }
   }
-  return [...known].slice(1);
+  return [...others.values()].slice(1);
+}
+
+/** The same text for lines that differ only in places and in brackets that change nothing. */
+function shapeOf(line: Line): string {
+  return JSON.stringify(line, (key, value: unknown) => {
+    if (key !== 'span' && key !== 'bracketed') return typeof value === 'bigint' ? `${value}` : value;
+  });
 }

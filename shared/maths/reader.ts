@@ -1,8 +1,18 @@
 import type { Expr, NumberExpr, ReadingFlag, ReadSettings, Span } from './expression.ts';
-import { type Complaint, ReadFailure, type Scanner, type Token } from './scanner.ts';
 import type { TokenKind } from './token-table.ts';
+import {
+  type Complaint,
+  kinds,
+  hasLongRun,
+  READ_LIMITS,
+  refuse,
+  source,
+  type Token,
+  tokenize,
+  tokens,
+} from './tokens.ts';
 
-export const READ_LIMITS = { characters: 4000, levels: 60, nodes: 3000 } as const;
+export { READ_LIMITS };
 
 /** A decision that the text leaves open; the reader takes one way and remembers that there is another. */
 export type Choice =
@@ -22,196 +32,237 @@ export type Choice =
   | 'joins';
 
 /** What depends on where the reader stands; kept and put back around every bracket and group. */
-export interface Context {
+interface Context {
   /** Plain bars that are open here. */
-  bars: number;
+  readonly bars: number;
   /** `[` ends an interval such as `]a,b[` instead of opening a bracket. */
-  reversed: boolean;
+  readonly reversed: boolean;
   /** dx ends the integrand here, or may stand as a factor (numerators and brackets within an integrand). */
-  dx: '' | 'ends' | 'held';
+  readonly dx: '' | 'ends' | 'held';
   /** Within `\lim_{x\to ..}`, where a trailing `^+` tells the side. */
   side: '' | 'argument' | 'limit' | 'left' | 'right';
 }
 
+export type Change = Partial<Context>;
+
 const OUTSIDE: Context = { bars: 0, reversed: false, dx: '', side: '' };
 
-export type Read = (reader: Reader) => Expr;
+export type Read<Result = Expr> = () => Result;
+export type Atoms = Partial<Record<TokenKind, (token: Token) => Expr>>;
+
+/** One line is read at a time, so the place in it and all that the reading gathers are the state of the module. */
+export let token: Token;
+export let kind: TokenKind;
+/** Where the token begins, and where the one before it ended. */
+export let start: number;
+export let lastEnd: number;
+export let index: number;
+export let depth: number;
+export let context: Context;
+/** Variable of the innermost integral, once dx was met. */
+export let variable: string | null;
+/** Letters that name functions here. */
+export let functions: readonly string[];
+export let flags: Set<ReadingFlag>;
+export let choices: Set<Choice>;
+/** The one decision to take the other way. */
+export let flip: Choice | null;
+let bound: string[];
+let nodes: number;
 
 /** The grammar's parts that call each other; handed over so that no module imports in a circle. */
-export interface Grammar {
-  readonly sum: Read;
-  /** `first`: a factor that was read already. */
-  readonly product: (reader: Reader, first?: Expr) => Expr;
-  readonly power: Read;
-  readonly atoms: Partial<Record<TokenKind, Read>>;
+export let sum: Read;
+export let atoms: Atoms;
+
+export function useGrammar(readSum: Read, readAtoms: Atoms): void {
+  sum = readSum;
+  atoms = readAtoms;
 }
 
-/** The place in the tokens and all that the reading gathers on its way. */
-export class Reader {
-  index = 0;
-  token: Token;
-  lastEnd = 0;
-  depth = 0;
-  nodes = 0;
+/** Goes to the beginning of a line. */
+export function begin(tex: string, settings: ReadSettings, flipped: Choice | null): void {
+  tokenize(tex, settings);
+  index = lastEnd = depth = nodes = 0;
   context = OUTSIDE;
-  /** Variable of the innermost integral, once dx was met. */
-  variable: string | null = null;
-  readonly bound: string[] = [];
-  readonly flags = new Set<ReadingFlag>();
-  readonly choices = new Set<Choice>();
-  functions: readonly string[];
-  readonly source: string;
-  readonly tokens: readonly Token[];
-  /** The kinds of the tokens, one character each. */
-  readonly kinds: string;
-  readonly settings: ReadSettings;
-  readonly grammar: Grammar;
-  /** The one decision to take the other way. */
-  readonly flip: Choice | null;
+  variable = null;
+  functions = settings.functions;
+  flags = new Set(hasLongRun ? ['letter-product'] : []);
+  choices = new Set();
+  flip = flipped;
+  bound = [];
+  look();
+}
 
-  constructor(scanner: Scanner, grammar: Grammar, flip: Choice | null) {
-    this.settings = scanner.settings;
-    this.source = scanner.source;
-    this.tokens = scanner.tokens;
-    this.kinds = this.tokens.map((token) => token.kind).join('');
-    this.token = this.peek(0);
-    this.functions = this.settings.functions;
-    this.grammar = grammar;
-    this.flip = flip;
-    if (scanner.longRun) this.flags.add('letter-product');
-  }
+function look(): void {
+  token = tokens[index]!;
+  ({ kind, start } = token);
+}
 
-  peek(ahead: number): Token {
-    return this.tokens[this.index + ahead] ?? this.tokens[this.tokens.length - 1]!;
-  }
+export function peek(ahead: number): Token {
+  return tokens[index + ahead] ?? tokens[tokens.length - 1]!;
+}
 
-  next(): Token {
-    const { token } = this;
-    this.lastEnd = token.end;
-    if (token.kind !== '$') this.index += 1;
-    this.token = this.peek(0);
-    return token;
-  }
+export function next(): Token {
+  const taken = token;
+  lastEnd = taken.end;
+  if (kind !== '$') index += 1;
+  look();
+  return taken;
+}
 
-  skip(count: number): void {
-    for (let at = 0; at < count; at += 1) this.next();
-  }
+export function skip(count: number): void {
+  for (let left = count; left > 0; left -= 1) next();
+}
 
-  /** Is the token one of these kinds? */
-  is(kinds: string): boolean {
-    return kinds.includes(this.token.kind);
-  }
+/** Is the token one of these kinds? */
+export function is(some: string): boolean {
+  return some.includes(kind);
+}
 
-  /** Takes the token if it is one of these kinds. */
-  take(kinds: string): boolean {
-    return this.is(kinds) && !!this.next();
-  }
+/** Takes the token if it is one of these kinds. */
+export function take(some: string): boolean {
+  return is(some) && !!next();
+}
 
-  /** The kinds from here on that fit a sticky pattern; empty where they do not. */
-  ahead(pattern: RegExp, from = 0): string {
-    const start = this.index + from;
-    pattern.lastIndex = start;
-    return pattern.test(this.kinds) ? this.kinds.slice(start, pattern.lastIndex) : '';
-  }
+/** Takes the token, which has to be one of these kinds. */
+export function expect(some: string, complaint: Complaint = `missing-bracket ${some}`): Token {
+  return is(some) ? next() : fail(complaint);
+}
 
-  /** Takes the kinds that fit a sticky pattern, if they do. */
-  takeAll(pattern: RegExp): boolean {
-    const { length } = this.ahead(pattern);
-    this.skip(length);
-    return length > 0;
-  }
+/** The kinds from here on that fit a sticky pattern; empty where they do not. */
+export function ahead(pattern: RegExp, from = 0): string {
+  const first = index + from;
+  pattern.lastIndex = first;
+  return pattern.test(kinds) ? kinds.slice(first, pattern.lastIndex) : '';
+}
 
-  expect(kind: TokenKind, complaint: Complaint = `missing-bracket ${kind}`): void {
-    if (!this.take(kind)) this.fail(complaint);
-  }
+/** Takes the kinds that fit a sticky pattern, if they do. */
+export function takeAll(pattern: RegExp): string {
+  const found = ahead(pattern);
+  skip(found.length);
+  return found;
+}
 
-  fail(complaint: Complaint, from: Span = this.token): never {
-    throw new ReadFailure(complaint, this.source, from);
-  }
+export function fail(complaint: Complaint, from: Span = token): never {
+  return refuse(complaint, from.start, from.end);
+}
 
-  /** True when the other way is to be taken. */
-  choose(choice: Choice): boolean {
-    this.choices.add(choice);
-    return this.flip === choice;
-  }
+export function flag(what: ReadingFlag): void {
+  flags.add(what);
+}
 
-  span(start: number): Span {
-    const span = { start, end: this.lastEnd };
-    this.nodes += 1;
-    if (this.nodes > READ_LIMITS.nodes) this.fail('too-many-nodes', span);
-    return span;
-  }
+/** True when the other way is to be taken. */
+export function choose(choice: Choice): boolean {
+  choices.add(choice);
+  return flip === choice;
+}
 
-  /** Reads one level down. */
-  deeper<T>(read: (reader: Reader) => T): T {
-    this.depth += 1;
-    if (this.depth > READ_LIMITS.levels) this.fail('too-deep');
-    const value = read(this);
-    this.depth -= 1;
-    return value;
-  }
+/** The span of a node that ends here. */
+export function span(from: number): Span {
+  const found = { start: from, end: lastEnd };
+  nodes += 1;
+  if (nodes > READ_LIMITS.nodes) fail('too-many-nodes', found);
+  return found;
+}
 
-  /** Reads within a bracket or group, where the outer bars and differentials do not count. */
-  inside<T>(read: (reader: Reader) => T, change?: Partial<Context>): T {
-    const outer = this.context;
-    this.context = change ? { ...OUTSIDE, ...change } : OUTSIDE;
-    const value = this.deeper(read);
-    this.context = outer;
-    return value;
-  }
+/** Reads one level down. */
+export function deeper<Result>(read: Read<Result>): Result {
+  depth += 1;
+  if (depth > READ_LIMITS.levels) fail('too-deep');
+  const value = read();
+  depth -= 1;
+  return value;
+}
 
-  /** Reads up to the bracket that closes the one just taken. */
-  enclosed<T>(close: TokenKind, read: (reader: Reader) => T, change?: Partial<Context>, complaint?: Complaint): T {
-    const value = this.inside(read, change);
-    this.expect(close, complaint);
-    return value;
-  }
+/** Reads within a bracket or group, where the outer bars and differentials do not count. */
+export function inside<Result>(read: Read<Result>, change?: Change): Result {
+  const before = context;
+  context = change ? { ...OUTSIDE, ...change } : OUTSIDE;
+  const value = deeper(read);
+  context = before;
+  return value;
+}
 
-  /** Reads the product that a sign applies to, with a letter bound, so that an i is never the unit. */
-  binding(name: string, read: Read): Expr {
-    this.bound.push(name);
-    const value = this.deeper(read);
-    this.bound.pop();
-    return value;
-  }
+/** Reads up to the bracket that closes the one just taken. */
+export function enclosed<Result>(close: TokenKind, read: Read<Result>, change?: Change, complaint?: Complaint): Result {
+  const value = inside(read, change);
+  expect(close, complaint);
+  return value;
+}
 
-  /** Brackets and numerators within an integrand may hold its dx. */
-  holding(): Partial<Context> {
-    return { dx: this.context.dx && 'held' };
-  }
+/** Brackets and numerators within an integrand may hold its dx. */
+export function holding(): Change {
+  return { dx: context.dx && 'held' };
+}
 
-  /** Can the token begin a factor, so that it multiplies what stands before it? */
-  startsFactor(): boolean {
-    const { token, context } = this;
-    const { kind, side } = token;
-    if (kind === '|') return side === 'left' || (side === '' && context.bars === 0 && !this.barIsScripted());
-    if (kind === '[') return !context.reversed || side === 'left';
-    if (kind === '{') return !this.ahead(/\{\}/y);
-    if (kind === 'a') return context.dx !== 'ends' || !this.atDifferential();
-    return this.grammar.atoms[kind] !== undefined;
-  }
+/** Reads what a sign applies to, with a letter bound, so that an i is never the unit. */
+export function binding(name: string, read: Read): Expr {
+  bound.push(name);
+  const value = deeper(read);
+  bound.pop();
+  return value;
+}
 
-  barIsScripted(): boolean {
-    return this.ahead(this.context.bars === 0 ? /\|(?:_|\^[^$])/y : /\|_/y) !== '';
-  }
+export function isBound(name: string): boolean {
+  return bound.includes(name);
+}
 
-  /** At the d of dx, with no dx met before. */
-  atDifferential(): boolean {
-    if (this.token.text !== 'd' || this.variable !== null || !this.ahead(/a[ai]/y)) return false;
-    return this.peek(1).text !== 'd' || this.kinds[this.index + 2] !== 'a';
-  }
+/** Reads with other letters as functions. */
+export function withFunctions<Result>(names: readonly string[], read: Read<Result>): Result {
+  const before = functions;
+  functions = names;
+  const value = read();
+  functions = before;
+  return value;
+}
 
-  /** Splits a number token as TeX does where one digit is an argument: `x^23` is x^2 followed by 3. */
-  takeDigit(): Token {
-    const { token } = this;
-    if (token.text.length === 1) return this.next();
-    const [digit] = /^\d[ \t-\r]*(?=\d)/.exec(this.source.slice(token.start, token.end)) ?? this.fail('bad-number {');
-    const first = { ...token, text: token.text.slice(0, 1), end: token.start + 1 };
-    token.text = token.text.slice(1);
-    token.start += digit.length;
-    this.lastEnd = first.end;
-    return first;
-  }
+/** Reads an integrand, and gives the letter of its dx. */
+export function integrating(read: Read): readonly [integrand: Expr, variable: string] {
+  const before = variable;
+  variable = null;
+  const integrand = inside(read, { ...context, dx: 'ends' });
+  const found = variable ?? fail('bad-integral dx');
+  variable = before;
+  return [integrand, found];
+}
+
+/** Takes the d of dx and the letter after it. */
+export function takeDifferential(): void {
+  next();
+  variable = next().text;
+}
+
+/** At the d of dx, with no dx met before. */
+export function atDifferential(): boolean {
+  if (token.text !== 'd' || variable !== null || !ahead(/a[ai]/y)) return false;
+  return peek(1).text !== 'd' || kinds[index + 2] !== 'a';
+}
+
+/** Can the token begin a factor, so that it multiplies what stands before it? */
+export function startsFactor(): boolean {
+  const { side } = token;
+  if (kind === '|') return side === 'left' || (side === '' && context.bars === 0 && !barIsScripted());
+  if (kind === '[') return !context.reversed || side === 'left';
+  if (kind === '{') return !ahead(/\{\}/y);
+  if (kind === 'a') return context.dx !== 'ends' || !atDifferential();
+  return atoms[kind] !== undefined;
+}
+
+export function barIsScripted(): boolean {
+  return ahead(context.bars === 0 ? /\|(?:_|\^[^$])/y : /\|_/y) !== '';
+}
+
+/** Splits a number token as TeX does where one digit is an argument: `x^23` is x^2 followed by 3. */
+export function takeDigit(): Token {
+  const { text } = token;
+  if (text.length === 1) return next();
+  const [digit] = /^\d[ \t-\r]*(?=\d)/.exec(source.slice(start, token.end)) ?? fail('bad-number {');
+  const first = { ...token, text: text.slice(0, 1), end: start + 1 };
+  token.text = text.slice(1);
+  token.start += digit.length;
+  lastEnd = first.end;
+  look();
+  return first;
 }
 
 /** The span with the brackets, where there are any. */
@@ -219,6 +270,7 @@ export function outer(expr: Expr): Span {
   return expr.bracketed ?? expr.span;
 }
 
-export function numberOf({ start, end }: Span, numerator: bigint): NumberExpr {
-  return { kind: 'number', numerator, denominator: 1n, written: 'integer', decimals: 0, span: { start, end } };
+export function numberOf({ start: from, end }: Span, numerator: bigint): NumberExpr {
+  const place = { start: from, end };
+  return { kind: 'number', numerator, denominator: 1n, written: 'integer', decimals: 0, span: place };
 }

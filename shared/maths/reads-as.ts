@@ -24,15 +24,13 @@ export function readsAs(tex: string, settings: ReadSettings = DEFAULT_READ_SETTI
   const words = lineInWords(line);
   const printed = printLine(line, settings.decimal);
   if (alternatives.length > 0) {
-    const others = alternatives.map((other) => ({ tex: other, words: wordsOf(other, settings) }));
+    const others = alternatives.map((other) => ({
+      tex: printLine(other, settings.decimal),
+      words: lineInWords(other),
+    }));
     return { kind: 'ask', choices: [{ tex: printed, words }, ...others], flags };
   }
   return flags.length > 0 ? { kind: 'note', tex: printed, words, flags } : { kind: 'silent', words };
-}
-
-function wordsOf(tex: string, settings: ReadSettings): string {
-  const reading = readLine(tex, settings);
-  return reading.ok ? lineInWords(reading.line) : '';
 }
 
 const NAMES: Partial<Record<string, string>> = {

@@ -127,8 +127,28 @@ export function findEntry(name: string): Entry | undefined {
   return TABLE.get(name);
 }
 
+/** Functions, roots, or, and; pi and longer Greek letters; infinity. All else needs its backslash. */
+const WORD = /^(?:[fl√∨∧](?!lb$)|api$|a(?!hbar).{4}|∞infinity)/;
+
+/** Looks up what is a word without its backslash. */
+export function findWord(word: string): Entry | undefined {
+  const entry = findEntry(word);
+  return entry && WORD.test(entry.kind + word) ? entry : undefined;
+}
+
 /** The function that a command or plain word names, if any. */
 export function functionOf(word: string): string | undefined {
   const entry = TABLE.get(word);
   return entry?.kind === 'f' ? entry.text : undefined;
+}
+
+/** Would these letters, printed side by side, be read as a word? */
+export function hidesWord(letters: string): boolean {
+  for (let from = 0; from < letters.length; from += 1) {
+    for (let to = from + 2; to <= Math.min(letters.length, from + 8); to += 1) {
+      const part = letters.slice(from, to);
+      if (part === 'let' || findWord(part)) return true;
+    }
+  }
+  return false;
 }

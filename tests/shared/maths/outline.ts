@@ -1,4 +1,5 @@
 import type { Expr, Line, ReadSettings } from '../../../shared/maths/expression.ts';
+import { printLine } from '../../../shared/maths/print.ts';
 import { DEFAULT_READ_SETTINGS, readLine } from '../../../shared/maths/read.ts';
 
 const SIGNS = { plus: '+', minus: '-', plusminus: '±', minusplus: '∓' } as const;
@@ -55,5 +56,9 @@ export function outlineOfReading(tex: string, settings: Partial<ReadSettings> = 
     return [`${code} ${span.start}-${span.end}`, ...expected].join(' ');
   }
   const flags = reading.flags.map((flag) => ` !${flag}`).join('');
-  return outlineOfLine(reading.line) + flags + reading.alternatives.map((other) => ` ? ${other}`).join('');
+  return (
+    outlineOfLine(reading.line) +
+    flags +
+    reading.alternatives.map((other) => ` ? ${printLine(other, settings.decimal)}`).join('')
+  );
 }
