@@ -1,8 +1,7 @@
 import type { Expr } from './expression.ts';
-import { numberFrom } from './read-numbers.ts';
 import {
   atoms,
-  type Change,
+  type Context,
   enclosed,
   expect,
   fail,
@@ -13,6 +12,8 @@ import {
   kind,
   lastEnd,
   next,
+  numberOf,
+  OUTSIDE,
   type Read,
   span,
   start,
@@ -23,18 +24,20 @@ import {
 import type { TokenKind } from './token-table.ts';
 import { type Complaint, source } from './tokens.ts';
 
+const ARGUMENT: Context = { ...OUTSIDE, side: 'argument' };
+
 /** An argument as TeX takes it: a braced group, or the next single digit, letter or command. */
-export function readArgument(change?: Change): Expr {
+export function readArgument(within?: Context): Expr {
   if (take('{')) {
     if (is('}')) fail('missing-operand number letter');
-    return enclosed('}', sum, change);
+    return enclosed('}', sum, within);
   }
   if (is('0')) {
     const digit = takeDigit();
-    return { ...numberFrom(digit), span: span(digit.start) };
+    return numberOf(span(digit.start), BigInt(digit.text));
   }
   if (!is('aei∞F√C(')) fail('missing-argument {');
-  return inside(readAtom, is('aei') ? { side: 'argument' } : change);
+  return inside(readAtom, is('aei') ? ARGUMENT : within);
 }
 
 /** The exponent or bound after `^` or `_`. */

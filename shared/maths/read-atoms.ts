@@ -1,7 +1,6 @@
 import type { Expr } from './expression.ts';
 import { readArgument, readAtom, readItems } from './read-arguments.ts';
 import { readEvaluation } from './read-expression.ts';
-import { numberFrom } from './read-numbers.ts';
 import { readPower } from './read-power.ts';
 import {
   ahead,
@@ -17,6 +16,8 @@ import {
   kind,
   lastEnd,
   next,
+  numberOf,
+  OUTSIDE,
   span,
   sum,
   take,
@@ -36,7 +37,7 @@ export function readBracket(open: Token): Expr {
 
 /** `\left. F \right|_a^b`. */
 export function readOpenBracket({ start }: Token): Expr {
-  const operand = inside(sum, { bars: 1 });
+  const operand = inside(sum, { ...OUTSIDE, bars: 1 });
   expect('|]', 'missing-bracket \\right|');
   return readEvaluation(operand, start);
 }
@@ -66,8 +67,8 @@ function readChoose(start: number): Expr {
 
 /** `|..|`: the absolute value. */
 export function readBars({ start }: Token): Expr {
-  const args = [inside(sum, { bars: context.bars + 1 })];
-  if (token.side === 'left') fail('missing-bracket |');
+  const args = [inside(sum, { ...OUTSIDE, bars: context.bars + 1 })];
+  if (token.side === 'l') fail('missing-bracket |');
   expect('|');
   return { kind: 'call', name: 'abs', args, span: span(start) };
 }
@@ -76,7 +77,7 @@ export function readBars({ start }: Token): Expr {
 export function readFenced({ start, kind: open }: Token): Expr {
   const isFloor = open === '⌊';
   const name = isFloor ? 'floor' : 'ceil';
-  const args = [enclosed(isFloor ? '⌋' : '⌉', sum, {}, `missing-bracket \\r${name}`)];
+  const args = [enclosed(isFloor ? '⌋' : '⌉', sum, OUTSIDE, `missing-bracket \\r${name}`)];
   return { kind: 'call', name, args, span: span(start) };
 }
 
@@ -85,15 +86,17 @@ export function readOverline({ start }: Token): Expr {
 }
 
 export function readRoot({ start, text }: Token): Expr {
-  const degree = take('[') ? enclosed(']', sum, { reversed: true }) : null;
+  const degree = take('[') ? enclosed(']', sum, { ...OUTSIDE, reversed: true }) : null;
   const isTyped = text === '' && atoms[kind] && !is('({');
   return { kind: 'root', degree, radicand: isTyped ? inside(readAtom) : readArgument(), span: span(start) };
 }
 
 export function readFraction({ start, end, text }: Token): Expr {
   const [top = '', bottom] = text.split('⁄');
-  const numerator = bottom ? numberFrom({ text: top, start, end }) : readArgument(holding());
-  const denominator = bottom ? numberFrom({ text: bottom, start, end }) : readArgument();
+  // A fraction of one character.
+  const part = (digits: string) => numberOf({ start, end }, BigInt(digits));
+  const numerator = bottom ? part(top) : readArgument(holding());
+  const denominator = bottom ? part(bottom) : readArgument();
   return { kind: 'quotient', numerator, denominator, written: 'fraction', span: span(start) };
 }
 

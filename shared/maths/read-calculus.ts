@@ -10,6 +10,7 @@ import {
   fail,
   integrating,
   numberOf,
+  OUTSIDE,
   span,
   start,
   startsFactor,
@@ -69,7 +70,7 @@ export function readLimit({ start: from }: Token): Expr {
     if (found === 'left' || found === 'right') side = found;
     return aim;
   };
-  const to = enclosed('}', readAim, { side: 'limit' });
+  const to = enclosed('}', readAim, { ...OUTSIDE, side: 'limit' });
   const operand = binding(variable, readProduct);
   return { kind: 'limit', variable, to, side, operand, span: span(from) };
 }

@@ -7,6 +7,7 @@ import {
   atDifferential,
   atoms,
   barIsScripted,
+  checkDepth,
   choose,
   context,
   deeper,
@@ -21,7 +22,6 @@ import {
   numberOf,
   peek,
   type Read,
-  READ_LIMITS,
   skip,
   span,
   start,
@@ -106,6 +106,7 @@ export function readProduct(from = start, first = readFactor()): Expr {
   let run = startRun(first);
   let levels = depth;
   for (;;) {
+    if (is('$)+-=')) break;
     const { gap } = token;
     const isDot = is('*');
     if (take('*×')) {
@@ -113,11 +114,11 @@ export function readProduct(from = start, first = readFactor()): Expr {
       addFactor(run, readSigned(readFactor), isDot ? 'dot' : 'times');
     } else if (is('/÷:')) {
       levels += 1;
-      if (levels > READ_LIMITS.levels) fail('too-deep');
+      checkDepth(levels);
       const numerator = productOf(run, from);
       const written = next().kind === '/' ? 'slash' : 'divide';
       run = startRun({ kind: 'quotient', numerator, denominator: readDivisor(), written, span: span(from) });
-    } else if (takeAll(/\{\}/y)) continue;
+    } else if (is('{') && takeAll(/\{\}/y)) continue;
     else if (!opensInnerBar() && !startsFactor()) break;
     else if (context.dx === 'held' && atDifferential()) takeDifferential();
     else addFactor(run, readFactor(), 'implicit', gap);
@@ -165,9 +166,12 @@ export function addFactor({ factors, joins }: Run, expr: Expr, join: Join = 'imp
       fail('bad-number *', expr.span);
     }
   }
-  const more = startRun(expr);
-  factors.push(last, ...more.factors);
-  joins.push(join, ...more.joins);
+  factors.push(last);
+  joins.push(join);
+  if (expr.kind === 'product' && !expr.bracketed) {
+    factors.push(...expr.factors);
+    joins.push(...expr.joins);
+  } else factors.push(expr);
 }
 
 /** Written with a sign of division, so that what stands directly after it may or may not belong to it. */

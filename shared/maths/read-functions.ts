@@ -50,7 +50,7 @@ function raised(base: Expr, exponent: Expr | null): Expr {
 export function readLog(head: Token): Expr {
   const { start: from, text } = head;
   const [below, power] = readScripts(readArgument, readExponent);
-  const base = text === 'lb' ? numberOf(head, 2n) : below;
+  const base = text === 'lb' ? numberOf({ start: from, end: head.end }, 2n) : below;
   if (base !== below && below) fail('extra-bracket', below.span);
   if (power && isMinusOne(power)) fail('missing-bracket (', head);
   if (!base && text === 'log') flag('log-base');

@@ -1,4 +1,4 @@
-import type { Expr, Line, RelationSign } from './expression.ts';
+import type { Expr, LetterExpr, Line } from './expression.ts';
 import { namesIn } from './names-in.ts';
 import { choose, flag, outer, span } from './reader.ts';
 
@@ -10,54 +10,58 @@ export interface Part {
   readonly join: Join;
 }
 
+type Relation = Extract<Line, { kind: 'relation' }>;
+
 /** Statements with their joins as one line; says what a comma means, or that it could mean two things. */
-export function joinParts(parts: readonly Part[], start: number): Line {
-  const last = parts[parts.length - 1]!;
-  if (parts.length === 1) return last.line;
+export function joinParts(parts: readonly Part[], from: number): Line {
+  const { line, join } = parts.at(-1)!;
+  if (parts.length < 2) return line;
   // `.. , k in Z` at the end goes with all that stands before it.
-  const isCondition = last.line.kind === 'membership' && last.join !== 'or' && parts.length > 1;
-  const rest = isCondition ? parts.slice(0, -1) : parts;
-  const joined = joinByOr(saysAnd(rest) ? rest : spreadValues(rest), start);
-  if (!isCondition) return joined;
+  if (line.kind !== 'membership' || join === 'or') return joinByOr(parts, from);
+  const joined = joinByOr(parts.slice(0, -1), from);
   flag('comma-and');
-  return combine('all', joined.kind === 'all' ? [...joined.parts, last.line] : [joined, last.line], start);
+  return combine('all', joined.kind === 'all' ? [...joined.parts, line] : [joined, line], from);
 }
 
 function saysAnd(parts: readonly Part[]): boolean {
-  return parts.slice(1).some((part) => part.join === 'and');
+  return parts.some(({ join }, at) => at > 0 && join === 'and');
 }
 
-function combine(kind: 'any' | 'all', parts: readonly Line[], start: number): Line {
-  return parts.length === 1 ? parts[0]! : { kind, parts, span: span(start) };
+function combine(kind: 'any' | 'all', parts: readonly Line[], from: number): Line {
+  return parts.length < 2 ? parts[0]! : { kind, parts, span: span(from) };
 }
 
 /** "and" and commas hold tighter than "or", unless the letters leave it open: then the author is asked. */
-function joinByOr(parts: readonly Part[], start: number): Line {
+function joinByOr(written: readonly Part[], from: number): Line {
+  const parts = saysAnd(written) ? written : spreadValues(written);
   const groups = splitAt(parts, true);
-  if (groups.length === 1) return joinTightly(parts);
   const isOpen = saysAnd(parts) && new Set(groups.map((group) => [...namesIn(group)].sort().join())).size > 1;
   if (isOpen && choose('joins')) {
     const wide = splitAt(parts, false).map((group) => combine('any', linesOf(group), startOf(group)));
-    return combine('all', wide, start);
+    return combine('all', wide, from);
   }
-  const lines = groups.map((group) => joinTightly(group));
-  const flat = lines.flatMap((line) => (line.kind === 'any' ? line.parts : [line]));
-  return combine('any', flat, start);
+  const lines = groups.map(joinTightly);
+  return groups.length < 2
+    ? lines[0]!
+    : combine(
+        'any',
+        lines.flatMap((line) => (line.kind === 'any' ? line.parts : [line])),
+        from,
+      );
 }
 
 /** The parts split at each "or", or at all else. */
 function splitAt(parts: readonly Part[], atOr: boolean): readonly (readonly Part[])[] {
   const groups: Part[][] = [];
   for (const part of parts) {
-    const last = groups[groups.length - 1];
-    if (last && (part.join === 'or') !== atOr) last.push(part);
+    if (groups[0] && (part.join === 'or') !== atOr) groups.at(-1)!.push(part);
     else groups.push([part]);
   }
   return groups;
 }
 
 function linesOf(parts: readonly Part[]): readonly Line[] {
-  return parts.map((part) => part.line);
+  return parts.map(({ line }) => line);
 }
 
 function startOf(parts: readonly Part[]): number {
@@ -65,73 +69,78 @@ function startOf(parts: readonly Part[]): number {
 }
 
 function joinTightly(parts: readonly Part[]): Line {
-  if (parts.length === 1) return parts[0]!.line;
-  const start = startOf(parts);
+  const from = startOf(parts);
   const spread = spreadValues(parts);
   const lines = linesOf(spread);
+  const [first, second] = lines;
+  if (!second) return first!;
   if (saysAnd(parts)) {
-    const isOdd = spread !== parts && valuedLetter(lines[0]!) === valuedLetter(lines[1]!);
-    return combine(isOdd && choose('comma') ? 'any' : 'all', lines, start);
+    const isOdd = spread !== parts && valuedLetter(first!) === valuedLetter(second);
+    return combine(isOdd && choose('comma') ? 'any' : 'all', lines, from);
   }
   const items = lines.flatMap((line) => (line.kind === 'expression' ? [line.expr] : []));
   const isSet = items.length === lines.length;
   const kind = isSet ? 'any' : commaKind(lines);
   flag(kind === 'any' ? 'comma-or' : 'comma-and');
-  if (!isSet) return combine(kind, lines, start);
-  const place = span(start);
-  return { kind: 'membership', letter: null, set: { kind: 'finite', items, span: place }, negated: false, span: place };
+  const all = combine(kind, lines, from);
+  return isSet
+    ? {
+        kind: 'membership',
+        letter: null,
+        set: { kind: 'finite', items, span: all.span },
+        negated: false,
+        span: all.span,
+      }
+    : all;
 }
 
 /** `x=2 or 3` and `x,y>0`: the letter and sign stand for each value or letter beside them. */
 function spreadValues(parts: readonly Part[]): readonly Part[] {
   const first = parts[0]!.line;
-  const last = parts[parts.length - 1]!.line;
-  if (first.kind === 'relation' && first.left.kind === 'letter') {
-    const { left, sign } = first;
-    return spreadOver(parts, first, (expr) => (hasLetter(expr, left) ? null : [left, sign, expr]));
-  }
-  if (last.kind !== 'relation' || last.left.kind !== 'letter') return parts;
-  const { left, sign, right } = last;
-  return spreadOver(parts, last, (expr) =>
-    expr.kind === 'letter' && !hasLetter(left, expr) ? [expr, sign, right] : null,
-  );
-}
-
-type Sides = readonly [left: Expr, sign: RelationSign, right: Expr];
-
-/** The parts with each but the given one made a relation; unchanged where one of them can be none. */
-function spreadOver(parts: readonly Part[], from: Line, sidesOf: (expr: Expr) => Sides | null): readonly Part[] {
+  const model = [first, parts.at(-1)!.line].find(isOfLetter);
+  if (!model) return parts;
+  const { left, sign, right } = model;
   const changed: Part[] = [];
-  for (const { line, join } of parts) {
-    const sides = line.kind === 'expression' ? sidesOf(line.expr) : null;
-    if (!sides && line !== from) return parts;
-    changed.push({ line: sides ? relationOf(sides) : line, join });
+  for (const part of parts) {
+    const { line, join } = part;
+    if (line === model) changed.push(part);
+    else if (line.kind !== 'expression') return parts;
+    else if (model === first) {
+      if (hasLetter(line.expr, left)) return parts;
+      changed.push({ line: relate(left, sign, line.expr), join });
+    } else {
+      if (line.expr.kind !== 'letter' || hasLetter(left, line.expr)) return parts;
+      changed.push({ line: relate(line.expr, sign, right), join });
+    }
   }
   return changed;
 }
 
-function relationOf([left, sign, right]: Sides): Line {
-  const [one, other] = [outer(left), outer(right)];
-  const span = { start: Math.min(one.start, other.start), end: Math.max(one.end, other.end) };
-  return { kind: 'relation', left, sign, right, span };
+function isOfLetter(line: Line): line is Relation & { readonly left: LetterExpr } {
+  return line.kind === 'relation' && line.left.kind === 'letter';
 }
 
-function hasLetter(expr: Expr, letter: Expr): boolean {
-  return letter.kind === 'letter' && namesIn(expr).has(letter.name);
+function relate(left: Expr, sign: Relation['sign'], right: Expr): Line {
+  return { kind: 'relation', left, sign, right, span: { start: outer(left).start, end: outer(right).end } };
+}
+
+function hasLetter(expr: Expr, letter: LetterExpr): boolean {
+  return namesIn(expr).has(letter.name);
 }
 
 /** Rule for commas: values of one letter are alternatives, different letters hold together, all else is asked about. */
 function commaKind(lines: readonly Line[]): 'any' | 'all' {
   const names = new Set(lines.map(valuedLetter));
-  if (!names.has(null) && names.size === 1) return [...names][0]!.endsWith('!') ? 'all' : 'any';
-  const isClear = names.has(null) === false ? names.size === lines.length : namesIn(lines).size > 1;
-  if (isClear || lines.some(({ kind }) => /^(?:expression|definition|always|membership)$/.test(kind))) return 'all';
+  const isKnown = !names.has('');
+  if (isKnown && names.size === 1) return [...names][0]!.endsWith('!') ? 'all' : 'any';
+  const isClear = isKnown ? names.size === lines.length : namesIn(lines).size > 1;
+  if (isClear || lines.some(({ kind }) => /^(?:exp|def|alw|mem)/.test(kind))) return 'all';
   return choose('comma') ? 'any' : 'all';
 }
 
-/** The letter of `letter = value` (or about; with a ! for not equal), where the value does not hold it. */
-function valuedLetter(line: Line): string | null {
-  if (line.kind !== 'relation' || line.left.kind !== 'letter' || hasLetter(line.right, line.left)) return null;
-  if (line.sign === '!=') return `${line.left.name}!`;
-  return line.sign === '=' || line.sign === 'approx' ? line.left.name : null;
+/** The letter of `letter = value` (or about; with a ! for not equal), where the value does not hold it; else empty. */
+function valuedLetter(line: Line): string {
+  if (!isOfLetter(line) || hasLetter(line.right, line.left)) return '';
+  const { left, sign } = line;
+  return sign === '!=' ? `${left.name}!` : sign === '=' || sign === 'approx' ? left.name : '';
 }

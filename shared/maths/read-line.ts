@@ -16,6 +16,7 @@ import {
   is,
   kind,
   next,
+  OUTSIDE,
   peek,
   skip,
   span,
@@ -40,7 +41,7 @@ const RELATIONS: Partial<Record<string, RelationSign>> = {
 /** All that one line says. */
 export function readWholeLine(): Line {
   // An arrow or "so" before a line says only that it follows.
-  while (is('⇒') || CONNECTIVE.test(wordsOf())) next();
+  while (is('⇒') || (is('T') && CONNECTIVE.test(wordsOf()))) next();
   if (is('$')) fail('empty number letter');
   const line = RELATIONS[kind] ? readContinuation() : readStatements();
   takeAll(/\.(?=\$)/y);
@@ -73,6 +74,7 @@ export function readStatements(): Line {
 }
 
 function takeJoin(): Join | null {
+  if (is('$')) return null;
   const words = wordsOf();
   const isOr = is('∨') || words === 'Tor';
   const isAnd = is('∧') || /^T(?:and|where|for|with|if)$/.test(words);
@@ -87,13 +89,13 @@ function readStatement(): Line {
   const from = start;
   const sentence = readSentence();
   if (sentence) return sentence;
-  if (startsBlock()) return readBlock();
+  if (is('B⦃') && startsBlock()) return readBlock();
   if (is('(') && /[=<>≤≥≠≈∈∉]/.test(groupAhead().inner)) return readGroup(')');
-  if (ahead(/⦃a(?:∈ℝ)?[|:]/y)) return readGroup('⦄');
+  if (is('⦃') && ahead(/⦃a(?:∈ℝ)?[|:]/y)) return readGroup('⦄');
   // `S=\{2\}`: the set of solutions under the name that some give it.
-  if (/^[SL]$/.test(token.text) && ahead(/a=[⦃∅]/y)) skip(2);
+  if (is('a') && /^[SL]$/.test(token.text) && ahead(/a=[⦃∅]/y)) skip(2);
   if (startsSet()) return readBareSet();
-  const name = startsDefinition();
+  const name = is('a') ? startsDefinition() : null;
   const line = readRelations(name ? withFunctions([...functions, name], sum) : sum(), from);
   return name ? asDefinition(line) : line;
 }
@@ -103,7 +105,7 @@ function readGroup(close: ')' | '⦄'): Line {
   const from = start;
   if (close === '⦄') while (!is('|:')) next();
   next();
-  const line = enclosed(close, readStatements, {}, `missing-bracket ${close === ')' ? ')' : '\\}'}`);
+  const line = enclosed(close, readStatements, OUTSIDE, `missing-bracket ${close === ')' ? ')' : '\\}'}`);
   return { ...line, span: span(from) };
 }
 
@@ -115,7 +117,7 @@ function asDefinition(line: Line): Line {
 }
 
 function readRelations(left: Expr, from: number): Line {
-  if (is('∈∉') || (left.kind === 'letter' && ahead(/=⦃[^B]/y))) {
+  if (is('∈∉') || (is('=') && left.kind === 'letter' && ahead(/=⦃[^B]/y))) {
     const negated = next().kind === '∉';
     return { kind: 'membership', letter: left, set: readSet(), negated, span: span(from) };
   }

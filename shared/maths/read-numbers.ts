@@ -4,17 +4,17 @@ import type { Token } from './tokens.ts';
 
 /** A number token with the percent sign after it, if any. */
 export function readNumberAtom(token: Token): Expr {
-  const number = numberFrom(token);
-  if (!take('%')) return { ...number, span: span(token.start) };
+  const isPercent = take('%');
+  const number = numberFrom(token, span(token.start));
+  if (!isPercent) return number;
   flag('percent');
-  return numberIn(number.numerator, number.denominator * 100n, 'percent', span(token.start));
+  return numberIn(number.numerator, number.denominator * 100n, 'percent', number.span);
 }
 
 /** The value of the digits: `12`, `3.5`, `0.1(6)`. */
-export function numberFrom({ text, start, end }: Pick<Token, 'text' | 'start' | 'end'>): NumberExpr {
-  const place = { start, end };
-  const [whole = '', decimals] = text.split('.');
-  if (decimals === undefined) return numberOf(place, BigInt(whole));
+export function numberFrom({ text }: Pick<Token, 'text'>, place: Span): NumberExpr {
+  if (!text.includes('.')) return numberOf(place, BigInt(text));
+  const [whole = '', decimals = ''] = text.split('.');
   const [fixed = '', period] = decimals.split(/[()]/);
   const top = BigInt(whole + fixed);
   const bottom = 10n ** BigInt(fixed.length);

@@ -25,7 +25,7 @@ import {
 export function readPower(): Expr {
   const from = start;
   const isGroup = is('{');
-  if (!atoms[kind] || (is('|') && token.side === 'right')) return missingOperand();
+  if (!atoms[kind] || (is('|') && token.side === 'r')) return missingOperand();
   let base = readAtom();
   let hasPower = false;
   while (is("^!°'²")) {

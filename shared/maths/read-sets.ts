@@ -11,6 +11,7 @@ import {
   kind,
   next,
   numberOf,
+  OUTSIDE,
   peek,
   skip,
   span,
@@ -65,7 +66,8 @@ function readNumberSet(): SetExpr {
   const { text, start: from } = next();
   const mark = text === 'R' ? ahead(/[_^](?:\{[+-]\}|[+-])/y) : '';
   if (!mark) return { kind: NUMBER_SETS[text] ?? 'reals', span: span(from) };
-  const zero = numberOf(peek(mark.length > 2 ? 2 : 1), 0n);
+  const sign = peek(mark.length > 2 ? 2 : 1);
+  const zero = numberOf({ start: sign.start, end: sign.end }, 0n);
   skip(mark.length);
   const isPositive = mark.includes('+');
   return {
@@ -86,7 +88,7 @@ export function readInterval(): SetExpr {
     expect(',;', 'bad-set ,');
     return [left, sum()] as const;
   };
-  const [left, right] = inside(readEnds, { reversed: true });
+  const [left, right] = inside(readEnds, { ...OUTSIDE, reversed: true });
   const close = expect(')][', 'missing-bracket ) ]');
   const from = isInfinite(left, 'minus') ? null : left;
   const to = isInfinite(right, 'plus') ? null : right;

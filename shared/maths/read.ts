@@ -19,7 +19,7 @@ import { readConstant, readLetter } from './read-letters.ts';
 import { readWholeLine } from './read-line.ts';
 import { readNumberAtom } from './read-numbers.ts';
 import { begin, type Choice, choices, flags, useGrammar } from './reader.ts';
-import { ReadFailure } from './tokens.ts';
+import { refusal } from './tokens.ts';
 
 useGrammar(readSum, {
   0: readNumberAtom,
@@ -54,32 +54,30 @@ export const DEFAULT_READ_SETTINGS: ReadSettings = { numbers: 'real', decimal: '
  * read is an error with its place. Where the line can be read in two ways, `alternatives` holds the others.
  */
 export function readLine(tex: string, settings: ReadSettings = DEFAULT_READ_SETTINGS): Reading {
-  try {
-    const line = attempt(tex, settings, null);
-    return { ok: true, line, flags: [...flags], alternatives: readOthers(tex, settings, line) };
-  } catch (failure) {
-    if (failure instanceof ReadFailure) return { ok: false, error: failure.error };
-    throw failure;
-  }
+  const line = attempt(tex, settings);
+  return line
+    ? { ok: true, line, flags, alternatives: readOthers(tex, settings, line) }
+    : { ok: false, error: refusal };
 }
 
-/** One reading with all decisions taken as usual but one. */
-function attempt(tex: string, settings: ReadSettings, flip: Choice | null): Line {
-  begin(tex, settings, flip);
-  return readWholeLine();
+/** One reading with all decisions taken as usual but one; null where it was refused. */
+function attempt(tex: string, settings: ReadSettings, flip?: Choice): Line | null {
+  try {
+    begin(tex, settings, flip);
+    return readWholeLine();
+  } catch (failure) {
+    if (failure !== refusal) throw failure;
+    return null;
+  }
 }
 
 /** The line read again with one decision taken the other way, for each decision that was open. */
 function readOthers(tex: string, settings: ReadSettings, line: Line): readonly Line[] {
-  if (choices.size === 0) return [];
+  if (!choices[0]) return [];
   const others = new Map([[shapeOf(line), line]]);
   for (const choice of choices) {
-    try {
-      const other = attempt(tex, settings, choice);
-      others.set(shapeOf(other), other);
-    } catch (failure) {
-      if (!(failure instanceof ReadFailure)) throw failure;
-    }
+    const other = attempt(tex, settings, choice);
+    if (other) others.set(shapeOf(other), other);
   }
   return [...others.values()].slice(1);
 }

@@ -4,7 +4,7 @@ import {
   type Complaint,
   kinds,
   hasLongRun,
-  READ_LIMITS,
+  MOST_CHARACTERS,
   refuse,
   source,
   type Token,
@@ -12,7 +12,9 @@ import {
   tokens,
 } from './tokens.ts';
 
-export { READ_LIMITS };
+const MOST_LEVELS = 60;
+const MOST_NODES = 3000;
+export const READ_LIMITS = { characters: MOST_CHARACTERS, levels: MOST_LEVELS, nodes: MOST_NODES } as const;
 
 /** A decision that the text leaves open; the reader takes one way and remembers that there is another. */
 export type Choice =
@@ -32,7 +34,7 @@ export type Choice =
   | 'joins';
 
 /** What depends on where the reader stands; kept and put back around every bracket and group. */
-interface Context {
+export interface Context {
   /** Plain bars that are open here. */
   readonly bars: number;
   /** `[` ends an interval such as `]a,b[` instead of opening a bracket. */
@@ -43,9 +45,8 @@ interface Context {
   side: '' | 'argument' | 'limit' | 'left' | 'right';
 }
 
-export type Change = Partial<Context>;
-
-const OUTSIDE: Context = { bars: 0, reversed: false, dx: '', side: '' };
+export const OUTSIDE: Context = { bars: 0, reversed: false, dx: '', side: '' };
+const HOLDING: Context = { ...OUTSIDE, dx: 'held' };
 
 export type Read<Result = Expr> = () => Result;
 export type Atoms = Partial<Record<TokenKind, (token: Token) => Expr>>;
@@ -63,10 +64,10 @@ export let context: Context;
 export let variable: string | null;
 /** Letters that name functions here. */
 export let functions: readonly string[];
-export let flags: Set<ReadingFlag>;
-export let choices: Set<Choice>;
+export let flags: ReadingFlag[];
+export let choices: Choice[];
 /** The one decision to take the other way. */
-export let flip: Choice | null;
+export let flip: Choice | undefined;
 let bound: string[];
 let nodes: number;
 
@@ -80,14 +81,14 @@ export function useGrammar(readSum: Read, readAtoms: Atoms): void {
 }
 
 /** Goes to the beginning of a line. */
-export function begin(tex: string, settings: ReadSettings, flipped: Choice | null): void {
+export function begin(tex: string, settings: ReadSettings, flipped?: Choice): void {
   tokenize(tex, settings);
   index = lastEnd = depth = nodes = 0;
   context = OUTSIDE;
   variable = null;
   functions = settings.functions;
-  flags = new Set(hasLongRun ? ['letter-product'] : []);
-  choices = new Set();
+  flags = hasLongRun ? ['letter-product'] : [];
+  choices = [];
   flip = flipped;
   bound = [];
   look();
@@ -99,7 +100,7 @@ function look(): void {
 }
 
 export function peek(ahead: number): Token {
-  return tokens[index + ahead] ?? tokens[tokens.length - 1]!;
+  return tokens[index + ahead] ?? tokens.at(-1)!;
 }
 
 export function next(): Token {
@@ -148,12 +149,12 @@ export function fail(complaint: Complaint, from: Span = token): never {
 }
 
 export function flag(what: ReadingFlag): void {
-  flags.add(what);
+  if (!flags.includes(what)) flags.push(what);
 }
 
 /** True when the other way is to be taken. */
 export function choose(choice: Choice): boolean {
-  choices.add(choice);
+  if (!choices.includes(choice)) choices.push(choice);
   return flip === choice;
 }
 
@@ -161,38 +162,47 @@ export function choose(choice: Choice): boolean {
 export function span(from: number): Span {
   const found = { start: from, end: lastEnd };
   nodes += 1;
-  if (nodes > READ_LIMITS.nodes) fail('too-many-nodes', found);
+  if (nodes > MOST_NODES) fail('too-many-nodes', found);
   return found;
+}
+
+export function checkDepth(levels: number): void {
+  if (levels > MOST_LEVELS) fail('too-deep');
 }
 
 /** Reads one level down. */
 export function deeper<Result>(read: Read<Result>): Result {
   depth += 1;
-  if (depth > READ_LIMITS.levels) fail('too-deep');
+  checkDepth(depth);
   const value = read();
   depth -= 1;
   return value;
 }
 
 /** Reads within a bracket or group, where the outer bars and differentials do not count. */
-export function inside<Result>(read: Read<Result>, change?: Change): Result {
+export function inside<Result>(read: Read<Result>, within = OUTSIDE): Result {
   const before = context;
-  context = change ? { ...OUTSIDE, ...change } : OUTSIDE;
+  context = within;
   const value = deeper(read);
   context = before;
   return value;
 }
 
 /** Reads up to the bracket that closes the one just taken. */
-export function enclosed<Result>(close: TokenKind, read: Read<Result>, change?: Change, complaint?: Complaint): Result {
-  const value = inside(read, change);
+export function enclosed<Result>(
+  close: TokenKind,
+  read: Read<Result>,
+  within?: Context,
+  complaint?: Complaint,
+): Result {
+  const value = inside(read, within);
   expect(close, complaint);
   return value;
 }
 
 /** Brackets and numerators within an integrand may hold its dx. */
-export function holding(): Change {
-  return { dx: context.dx && 'held' };
+export function holding(): Context {
+  return context.dx ? HOLDING : OUTSIDE;
 }
 
 /** Reads what a sign applies to, with a letter bound, so that an i is never the unit. */
@@ -241,8 +251,8 @@ export function atDifferential(): boolean {
 /** Can the token begin a factor, so that it multiplies what stands before it? */
 export function startsFactor(): boolean {
   const { side } = token;
-  if (kind === '|') return side === 'left' || (side === '' && context.bars === 0 && !barIsScripted());
-  if (kind === '[') return !context.reversed || side === 'left';
+  if (kind === '|') return side === 'l' || (side === '' && context.bars === 0 && !barIsScripted());
+  if (kind === '[') return !context.reversed || side === 'l';
   if (kind === '{') return !ahead(/\{\}/y);
   if (kind === 'a') return context.dx !== 'ends' || !atDifferential();
   return atoms[kind] !== undefined;
@@ -270,7 +280,6 @@ export function outer(expr: Expr): Span {
   return expr.bracketed ?? expr.span;
 }
 
-export function numberOf({ start: from, end }: Span, numerator: bigint): NumberExpr {
-  const place = { start: from, end };
+export function numberOf(place: Span, numerator: bigint): NumberExpr {
   return { kind: 'number', numerator, denominator: 1n, written: 'integer', decimals: 0, span: place };
 }

@@ -108,21 +108,23 @@ export interface Entry {
 const TABLE = new Map<string, Entry>();
 for (const row of ROWS.trim().split('\n')) {
   const [kind = '', ...names] = row.split(' ');
-  for (const name of /[a-zA-Z]/.test(kind) ? names : [kind, ...names]) addName(kind, name);
+  for (const name of isLetter(kind) ? names : [kind, ...names]) addName(kind, name);
+}
+
+/** Is the first character a letter of the alphabet? */
+function isLetter(text: string): boolean {
+  return /^[a-zA-Z]/.test(text);
 }
 
 function addName(kind: TokenKind, entry: string): void {
   const [, char = '', name = '', meaning] = /^([^ -~]?)([^@]*)@?(.*)$/.exec(entry)!;
-  const text = meaning || (kind === 'a' ? `\\${name}` : kind === 'ℝ' ? initialOf(name || char) : name);
-  for (const key of [char, name]) if (key) TABLE.set(key, { kind, text });
+  // `ℝ`, `R` and `reals` are all the set R.
+  const set = (name || char).normalize('NFKD').charAt(0).toUpperCase();
+  const text = meaning || (kind === 'a' ? `\\${name}` : kind === 'ℝ' ? set : name);
+  for (const key of [char, isLetter(name) ? `\\${name}` : name]) if (key) TABLE.set(key, { kind, text });
 }
 
-/** `ℝ`, `R` and `reals` are all the set R. */
-function initialOf(name: string): string {
-  return name.normalize('NFKD').slice(0, 1).toUpperCase();
-}
-
-/** Looks up the letters of a command or a word, `\{` and its like, or a character or two. */
+/** Looks up a command with its backslash, or a sign of one or two characters. */
 export function findEntry(name: string): Entry | undefined {
   return TABLE.get(name);
 }
@@ -132,13 +134,13 @@ const WORD = /^(?:[fl√∨∧](?!lb$)|api$|a(?!hbar).{4}|∞infinity)/;
 
 /** Looks up what is a word without its backslash. */
 export function findWord(word: string): Entry | undefined {
-  const entry = findEntry(word);
+  const entry = findEntry(`\\${word}`);
   return entry && WORD.test(entry.kind + word) ? entry : undefined;
 }
 
 /** The function that a command or plain word names, if any. */
 export function functionOf(word: string): string | undefined {
-  const entry = TABLE.get(word);
+  const entry = findEntry(`\\${word}`);
   return entry?.kind === 'f' ? entry.text : undefined;
 }
 

@@ -1,8 +1,6 @@
 import type { ReadError, ReadErrorCode, ReadSettings } from './expression.ts';
 import { type Entry, findEntry, findWord, type TokenKind } from './token-table.ts';
 
-export const READ_LIMITS = { characters: 4000, levels: 60, nodes: 3000 } as const;
-
 export interface Token {
   readonly kind: TokenKind;
   /** Digits, the letter or the function in its canonical spelling; the words of a `\text`. */
@@ -11,25 +9,18 @@ export interface Token {
   readonly end: number;
   /** A spacing command such as `\,` stands before it. */
   readonly gap: boolean;
-  /** Which of `\left` and `\right` sized it. */
-  readonly side: Side;
+  /** `l` where `\left` sized it, `r` where `\right` did. */
+  readonly side: string;
 }
-
-type Side = '' | 'left' | 'right';
 
 /** An error's code and, parted by blanks, what was expected. */
 export type Complaint = ReadErrorCode | `${ReadErrorCode} ${string}`;
 
-/** Thrown inside the reader only; `readLine` turns it into a value. */
-export class ReadFailure {
-  readonly error: ReadError;
+/** Most characters of a line. */
+export const MOST_CHARACTERS = 4000;
 
-  constructor(complaint: Complaint, start: number, end: number) {
-    // The blank in `\to 0` parts nothing.
-    const [code, ...expected] = complaint.split(/ (?!0)/);
-    this.error = { code: code as ReadErrorCode, span: { start, end }, found: source.slice(start, end), expected };
-  }
-}
+/** Why the line was refused: what `refuse` threw last, never thrown beyond the reader. */
+export let refusal: ReadError;
 
 /** The line being read: one at a time, so its state is that of the module. */
 export let source = '';
@@ -42,34 +33,41 @@ export let hasLongRun = false;
 
 let at = 0;
 let gap = false;
-let side: Side = '';
+let side = '';
+/** Where the `\left` or its like begins that sizes the next token; null where there is none. */
+let sized: number | null = null;
 /** Closing braces that group nothing. */
-let passedOver = new Set<number>();
+let passedOver: number[];
 
-/** Cuts a line into tokens; the last one is the end of the line. Throws a ReadFailure on what is no part of a line. */
+/** Cuts a line into tokens; the last one is the end of the line. Refuses what is no part of a line. */
 export function tokenize(tex: string, how: ReadSettings): void {
-  const most = READ_LIMITS.characters;
-  source = tex.slice(0, most);
+  source = tex.slice(0, MOST_CHARACTERS);
   settings = how;
   tokens = [];
   kinds = side = '';
-  passedOver = new Set();
+  sized = null;
+  passedOver = [];
   hasLongRun = gap = false;
   at = 0;
-  if (tex.length > most) refuse(`too-long ${most}`, most, tex.length);
+  if (tex.length > MOST_CHARACTERS) refuse(`too-long ${MOST_CHARACTERS}`, MOST_CHARACTERS, tex.length);
   while (skipBlanks()) readToken();
   push('$', '', at);
 }
 
+/** Ends the reading: what is wrong from one place to another, and what was expected there. */
 export function refuse(complaint: Complaint, start: number, end = at): never {
-  throw new ReadFailure(complaint, start, end);
+  // The blank in `\to 0` parts nothing.
+  const [code, ...expected] = complaint.split(/ (?!0)/);
+  throw (refusal = { code: code as ReadErrorCode, span: { start, end }, found: source.slice(start, end), expected });
 }
 
 function push(kind: TokenKind, text: string, start: number, end = at): void {
-  tokens.push({ kind, text, start, end, gap, side });
+  if (sized !== null && !/[()[\]⦃⦄|⌈-⌋/‹›]/.test(kind)) refuse('missing-bracket (', sized);
+  tokens.push({ kind, text, start: sized ?? start, end, gap, side });
   kinds += kind;
   gap = false;
   side = '';
+  sized = null;
 }
 
 /** Does the sticky pattern fit here? */
@@ -87,8 +85,12 @@ function take(pattern: RegExp): string {
 
 /** False at the end of the line. */
 function skipBlanks(): boolean {
-  take(/[ \t-\r]+/y);
-  return at < source.length;
+  for (;;) {
+    const code = source.charCodeAt(at);
+    // A blank, or one of the controls from tab to return.
+    if (code !== 32 && !(code > 8 && code < 14)) return at < source.length;
+    at += 1;
+  }
 }
 
 /** The braced text after a command, without its braces; a single character or command where there are none. */
@@ -107,124 +109,104 @@ function rawArgument(): string {
 
 function readToken(): void {
   const start = at;
-  if (sees(/\\/y)) readCommand(start);
-  else if (sees(/[a-zA-Z]/y)) readWords(start);
-  else if (sees(/\.?\d/y)) readNumber(start);
-  else if (passedOver.has(at)) at += 1;
-  else readCharacter(start);
+  if (isLetter(source.charCodeAt(at))) readWords(start);
+  else if (isDigit(at) || (source[at] === '.' && isDigit(at + 1))) readNumber(start);
+  else if (source[at] === '}' && passedOver.includes(at)) at += 1;
+  else readSign(start);
 }
 
-function readCharacter(start: number): void {
-  const pair = source.slice(at, at + 2);
-  const name = findEntry(pair) ? pair : source.charAt(at);
-  const entry = findEntry(/\s/.test(name) ? '~' : name);
-  const typed = entry ? '' : take(/[⁰¹²³⁴-⁹]+|[¼-¾⅓-⅞]/y).normalize('NFKD');
-  if (typed) return push(typed.includes('⁄') ? 'F' : '²', typed, start);
-  if (!entry) refuse('unknown-character', at, at + String.fromCodePoint(source.codePointAt(at)!).length);
-  at += name.length;
-  pushEntry(entry!, name, start);
+function isLetter(code: number): boolean {
+  return (code > 64 && code < 91) || (code > 96 && code < 123);
 }
 
-function readCommand(start: number): void {
-  const name = take(/\\(?:[a-zA-Z]+|[^]?)/y).slice(1);
-  const entry = findEntry(/^[a-zA-Z]/.test(name) ? name : /^\s/.test(name) ? '~' : `\\${name}`);
-  if (entry) pushEntry(entry, name, start);
-  else if (SIZED.test(name)) readSized(name, start);
-  else refuse('unknown-command', start);
+function isDigit(place: number): boolean {
+  const code = source.charCodeAt(place);
+  return code > 47 && code < 58;
 }
 
 /** `\left`, `\mright`, `\middle`, `\big`, `\Biggl` and their like. */
-const SIZED = /^(?:m?(?:left|right)|middle|[bB]igg?[lrm]?)$/;
+const SIZED = /^\\(?:m?(l)eft|m?(r)ight|middle|[bB]igg?(?:([lr])|m)?)$/;
 
-function pushEntry({ kind, text }: Entry, name: string, start: number): void {
-  const act = ACTIONS[kind];
-  if (act) act(start, name, kind);
-  else push(kind, text, start);
+const SIGN = /\\(?:[a-zA-Z]+|[^]?)|\*\*|[=<>:]=|[=-]>|[⁰¹²³⁴-⁹]+|[^]/uy;
+
+/** A command, or a sign of one or two characters. */
+function readSign(start: number): void {
+  const char = source[start]!;
+  const isPair = '=>*'.includes(source.charAt(at + 1));
+  const name = isPair || char === '\\' || char > '~' ? take(SIGN) : source[at++]!;
+  const entry = findEntry(name) ?? (/^\\?\s/.test(name) ? findEntry('~') : undefined);
+  if (entry) return readEntry(entry, name, start);
+  const sides = SIZED.exec(name);
+  const typed = name.normalize('NFKD');
+  if (sides) readSized(sides.slice(1).join(''), start);
+  else if (/^[⁰¹²³⁴-⁹]/.test(name)) push('²', typed, start);
+  else if (/^[¼-¾⅓-⅞]/.test(name)) push('F', typed, start);
+  else refuse(name.startsWith('\\') ? 'unknown-command' : 'unknown-character', start);
 }
 
-/** What takes more than the command itself, or leaves no token. */
-const ACTIONS: Partial<Record<TokenKind, (start: number, name: string, kind: TokenKind) => void>> = {
-  S: () => {},
-  '~': () => void (gap = true),
-  h: rawArgument,
-  T: (start) => push('T', rawArgument(), start),
-  A: readAccent,
-  B: readEnvironment,
-  E: readEnvironment,
-  H: readHole,
-  N: readNewRow,
-  M: readStyled,
-  X: readAdorned,
-  D: readSetLetter,
-  n: readNegated,
+/** What may stand before the argument of a command. */
+const OPTIONS: Partial<Record<TokenKind, RegExp>> = {
+  H: /\s*\[[^\]]*\]/y,
+  M: /\*/y,
+  N: /\[-?[\d.]+ *[a-z]{2}\]/y,
 };
 
-function readAccent(start: number, name: string): void {
-  const body = rawArgument().trim();
-  if (!/^(?:\\?[a-zA-Z]|\\[a-zA-Z]+)$/.test(body)) refuse('unknown-command letter', start);
-  push('a', `\\${name}{${body}}`, start);
-}
-
-function readEnvironment(start: number, _: string, kind: TokenKind): void {
-  const environment = rawArgument();
-  if (kind === 'B' && environment === 'array') rawArgument();
-  push(kind, environment, start);
-}
-
-function readHole(start: number): void {
-  take(/\s*\[[^\]]*\]/y);
-  rawArgument();
-  push('H', '', start);
-}
-
-/** A row may end in `\\[2pt]`. */
-function readNewRow(start: number): void {
-  take(/\[-?[\d.]+ *[a-z]{2}\]/y);
-  push('N', '', start);
+function readEntry({ kind, text }: Entry, name: string, start: number): void {
+  if (!'hABDEHMNSTXn~'.includes(kind)) return push(kind, text, start);
+  const options = OPTIONS[kind];
+  if (options) take(options);
+  const argument = 'NSX~'.includes(kind) ? '' : rawArgument().trim();
+  const mustFit = (pattern: RegExp, expected: string) => {
+    if (!pattern.test(argument)) refuse(`unknown-command ${expected}`, start);
+  };
+  switch (kind) {
+    case 'S':
+    case 'h':
+      return;
+    case '~':
+      gap = true;
+      return;
+    case 'X':
+      return passOver();
+    case 'M':
+      return readStyled(argument, name, start);
+    case 'A':
+      mustFit(/^(?:\\?[a-zA-Z]|\\[a-zA-Z]+)$/, 'letter');
+      return push('a', `${name}{${argument}}`, start);
+    case 'D':
+      mustFit(/^[RZNQC]$/, '\\R');
+      return push('ℝ', argument, start);
+    case 'n':
+      mustFit(/^(?:=|\\in)$/, '\\ne');
+      return push(argument === '=' ? '≠' : '∉', '', start);
+  }
+  if (kind === 'B' && argument === 'array') rawArgument();
+  push(kind, argument, start);
 }
 
 /** `\boxed{..}` and `\cancel{..}` only adorn what they hold: their braces are passed over. */
-function readAdorned(): void {
+function passOver(): void {
   const from = at;
   rawArgument();
-  if (source[at - 1] === '}') passedOver.add(at - 1);
+  if (source[at - 1] === '}') passedOver.push(at - 1);
   at = source[from] === '{' ? from + 1 : from;
 }
 
-function readSetLetter(start: number): void {
-  const letter = rawArgument().trim();
-  if (!/^[RZNQC]$/.test(letter)) refuse('unknown-command \\R', start);
-  push('ℝ', letter, start);
-}
-
-function readNegated(start: number): void {
-  skipBlanks();
-  const sign = take(/=|\\in/y);
-  if (!sign) refuse('unknown-command \\ne', start);
-  push(sign === '=' ? '≠' : '∉', '', start);
-}
-
 /** `\left(`: the delimiter carries its side and the span of both. */
-function readSized(name: string, start: number): void {
+function readSized(found: string, start: number): void {
   skipBlanks();
-  const sized = /left|l$/.test(name) ? 'left' : /right|r$/.test(name) ? 'right' : '';
-  if (take(/\./y)) return push(sized === 'left' ? '‹' : '›', '', start);
-  side = sized;
-  const before = tokens.length;
-  if (at < source.length) readToken();
-  const token = tokens[before];
-  if (!token || token.end !== at || !/[()[\]⦃⦄|⌈-⌋/]/.test(token.kind)) return refuse('missing-bracket (', start);
-  token.start = start;
+  sized = start;
+  if (take(/\./y)) push(found === 'l' ? '‹' : '›', '', start);
+  else side = found;
 }
 
 /** `\mathrm{..}` and `\operatorname{..}`: a function, an upright d, e or i, or one letter. */
-function readStyled(start: number, style: string): void {
-  take(/\*/y);
-  const word = rawArgument().replace(/\s|\\[,;:! ]/g, '');
-  const entry = findEntry(word);
-  if (/^[ei]$/.test(word) && style !== 'mathit') push(word, word, start);
+function readStyled(argument: string, style: string, start: number): void {
+  const word = argument.replace(/\s|\\[,;:! ]/g, '');
+  const entry = findEntry(`\\${word}`);
+  if (/^[ei]$/.test(word) && style !== '\\mathit') push(word, word, start);
   else if (/^[a-zA-Z]$/.test(word)) push('a', word, start);
-  else if (entry && /^[flL∨∧][a-zA-Z]/.test(entry.kind + word)) push(entry.kind, entry.text, start);
+  else if (entry && 'flL∨∧'.includes(entry.kind)) push(entry.kind, entry.text, start);
   else refuse('unknown-command', start);
 }
 
@@ -236,22 +218,27 @@ const ALONE = /^(?:or|and|pi|infinity)$/;
 
 /** Letters typed without a backslash: a word that names a function or joins statements, else one letter each. */
 function readWords(start: number): void {
+  do at += 1;
+  while (isLetter(source.charCodeAt(at)));
+  const end = at;
+  if (end === start + 1) return push('a', source[start]!, start);
+  at = start;
   const phrase = take(PHRASE);
   if (phrase) return push('T', phrase.toLowerCase(), start);
-  const run = take(/[a-zA-Z]+/y);
-  for (let from = 0; from < run.length - 1 && from < 64; from += 1) {
-    const rest = run.slice(from);
-    const isWhole = from === 0 || (rest.length < 8 && !ALONE.test(rest) && sees(/[ \t-\r]*(?:[(^_\d]|\\left)/y));
+  at = end;
+  for (let from = start; from < end - 1 && from < start + 64; from += 1) {
+    const rest = source.slice(from, end);
+    const isWhole = from === start || (!ALONE.test(rest) && sees(/\s*(?:[(^_\d]|\\left)/y));
     const name = isWhole && findWord(rest) ? rest : SHORT.exec(rest)?.[0];
     if (!name) continue;
-    const middle = start + from;
     const { kind, text } = findWord(name)!;
-    pushLetters(start, middle);
-    push(kind, text, middle, middle + name.length);
-    return pushLetters(middle + name.length, at);
+    const behind = from + name.length;
+    pushLetters(start, from);
+    push(kind, text, from, behind);
+    return pushLetters(behind, end);
   }
-  if (run.length > 3) hasLongRun = true;
-  pushLetters(start, at);
+  if (end > start + 3) hasLongRun = true;
+  pushLetters(start, end);
 }
 
 function pushLetters(from: number, to: number): void {
