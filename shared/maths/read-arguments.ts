@@ -28,11 +28,12 @@ const ARGUMENT: Context = { ...OUTSIDE, side: 'argument' };
 
 /** An argument as TeX takes it: a braced group, or the next single digit, letter or command. */
 export function readArgument(within?: Context): Expr {
-  if (take('{')) {
+  if (kind === '{') {
+    next();
     if (is('}')) fail('missing-operand number letter');
     return enclosed('}', sum, within);
   }
-  if (is('0')) {
+  if (kind === '0') {
     const digit = takeDigit();
     return numberOf(span(digit.start), BigInt(digit.text));
   }
@@ -59,7 +60,7 @@ export function readScripts<Below, Above>(
 ): readonly [below: Below | null, above: Above | null] {
   let below: Below | null = null;
   let above: Above | null = null;
-  while (is('_^')) {
+  while (kind === '_' || kind === '^') {
     const isBelow = next().kind === '_';
     if (isBelow ? below : above) fail('extra-bracket');
     if (isBelow) below = readBelow();
@@ -83,7 +84,8 @@ export function readList(): Expr[] {
 
 /** The letter after a `_`, in canonical spelling: `_1`, `_{max}`; empty where there is none. */
 export function readSubscript(): string {
-  if (!take('_')) return '';
+  if (kind !== '_') return '';
+  next();
   if (is('0')) return `_${takeDigit().text}`;
   const from = start;
   let depth = 0;

@@ -91,13 +91,16 @@ export function readRoot({ start, text }: Token): Expr {
   return { kind: 'root', degree, radicand: isTyped ? inside(readAtom) : readArgument(), span: span(start) };
 }
 
-export function readFraction({ start, end, text }: Token): Expr {
-  const [top = '', bottom] = text.split('⁄');
-  // A fraction of one character.
-  const part = (digits: string) => numberOf({ start, end }, BigInt(digits));
-  const numerator = bottom ? part(top) : readArgument(holding());
-  const denominator = bottom ? part(bottom) : readArgument();
-  return { kind: 'quotient', numerator, denominator, written: 'fraction', span: span(start) };
+export function readFraction(sign: Token): Expr {
+  const [top = '', bottom] = sign.text.split('⁄');
+  const numerator = bottom ? digitsIn(sign, top) : readArgument(holding());
+  const denominator = bottom ? digitsIn(sign, bottom) : readArgument();
+  return { kind: 'quotient', numerator, denominator, written: 'fraction', span: span(sign.start) };
+}
+
+/** One of the two numbers of a fraction that is a single sign. */
+function digitsIn({ start, end }: Token, digits: string): Expr {
+  return numberOf({ start, end }, BigInt(digits));
 }
 
 export function readBinomial({ start }: Token): Expr {

@@ -27,7 +27,6 @@ import {
   start,
   startsFactor,
   sum,
-  take,
   takeAll,
   takeDifferential,
   token,
@@ -106,32 +105,49 @@ export function readProduct(from = start, first = readFactor()): Expr {
   let run = startRun(first);
   let levels = depth;
   for (;;) {
-    if (is('$)+-=')) break;
     const { gap } = token;
-    const isDot = is('*');
-    if (take('*×')) {
-      if (context.dx === 'ends' && atDifferential()) break;
-      addFactor(run, readSigned(readFactor), isDot ? 'dot' : 'times');
-    } else if (is('/÷:')) {
-      levels += 1;
-      checkDepth(levels);
-      const numerator = productOf(run, from);
-      const written = next().kind === '/' ? 'slash' : 'divide';
-      run = startRun({ kind: 'quotient', numerator, denominator: readDivisor(), written, span: span(from) });
-    } else if (is('{') && takeAll(/\{\}/y)) continue;
-    else if (!opensInnerBar() && !startsFactor()) break;
-    else if (context.dx === 'held' && atDifferential()) takeDifferential();
+    switch (kind) {
+      case '$':
+      case ')':
+      case '+':
+      case '-':
+      case '=':
+        return productOf(run, from);
+      case '*':
+      case '×': {
+        const join = next().kind === '*' ? 'dot' : 'times';
+        if (context.dx === 'ends' && atDifferential()) return productOf(run, from);
+        addFactor(run, readSigned(readFactor), join);
+        continue;
+      }
+      case '/':
+      case '÷':
+      case ':': {
+        levels += 1;
+        checkDepth(levels);
+        const numerator = productOf(run, from);
+        const written = next().kind === '/' ? 'slash' : 'divide';
+        run = startRun({ kind: 'quotient', numerator, denominator: readDivisor(), written, span: span(from) });
+        continue;
+      }
+      case '{':
+        if (takeAll(/\{\}/y)) continue;
+        break;
+      case '|':
+        if (!opensInnerBar() && !startsFactor()) return productOf(run, from);
+        break;
+      default:
+        if (!startsFactor()) return productOf(run, from);
+    }
+    if (context.dx === 'held' && atDifferential()) takeDifferential();
     else addFactor(run, readFactor(), 'implicit', gap);
   }
-  return productOf(run, from);
 }
 
 /** `|a|b|c|`: the second bar may also open an inner pair. */
 function opensInnerBar(): boolean {
   const after = peek(1).kind;
-  return (
-    is('|') && token.side === '' && context.bars === 1 && after !== '|' && atoms[after] !== undefined && choose('bars')
-  );
+  return token.side === '' && context.bars === 1 && after !== '|' && atoms[after] !== undefined && choose('bars');
 }
 
 function readFactor(): Expr {

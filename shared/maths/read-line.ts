@@ -74,7 +74,7 @@ export function readStatements(): Line {
 }
 
 function takeJoin(): Join | null {
-  if (is('$')) return null;
+  if (kind === '$') return null;
   const words = wordsOf();
   const isOr = is('∨') || words === 'Tor';
   const isAnd = is('∧') || /^T(?:and|where|for|with|if)$/.test(words);

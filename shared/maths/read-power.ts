@@ -24,8 +24,8 @@ import {
 /** An atom with what is raised or set behind it: powers, factorials, degrees, primes. */
 export function readPower(): Expr {
   const from = start;
-  const isGroup = is('{');
-  if (!atoms[kind] || (is('|') && token.side === 'r')) return missingOperand();
+  const isGroup = kind === '{';
+  if (!atoms[kind] || (kind === '|' && token.side === 'r')) return missingOperand();
   let base = readAtom();
   let hasPower = false;
   while (is("^!°'²")) {
@@ -42,6 +42,8 @@ export function readPower(): Expr {
 }
 
 function readBehind(base: Expr, from: number): Expr {
+  const behind = peek(1).kind;
+  if (is('^') && !"°⊤'".includes(behind === '{' ? peek(2).kind : behind)) return readRaised(base, from);
   const mark = takeAll(/°|\^(?:\{[°⊤]\}|[°⊤])/y);
   if (mark) return { kind: 'call', name: mark.includes('⊤') ? 'transpose' : 'degrees', args: [base], span: span(from) };
   if (is('!')) return readFactorial(base, from);
@@ -65,7 +67,7 @@ function isOpen({ kind: what, bracketed }: Expr): boolean {
 
 function readRaised(base: Expr, from: number): Expr {
   const isTyped = is('²');
-  if (ahead(/\^\(/y)) flag('power-digits');
+  if (!isTyped && peek(1).kind === '(') flag('power-digits');
   const exponent = readPowerSign();
   if (!isTyped && base.kind === 'letter' && functions.includes(base.name) && is('(')) {
     return readFunctionPower(base.name, exponent, from);
@@ -126,7 +128,7 @@ function readFactorial(base: Expr, from: number): Expr {
 
 /** Counts `'`, `''` and `^{\prime}`. */
 export function readPrimes(): number {
-  return takeAll(/(?:\^?'|\^\{'+\})+/y).split("'").length - 1;
+  return is("'^") ? takeAll(/(?:\^?'|\^\{'+\})+/y).split("'").length - 1 : 0;
 }
 
 /** `(x^2+1)'`: the derivative by the only letter in it. */

@@ -55,9 +55,18 @@ export const DEFAULT_READ_SETTINGS: ReadSettings = { numbers: 'real', decimal: '
  */
 export function readLine(tex: string, settings: ReadSettings = DEFAULT_READ_SETTINGS): Reading {
   const line = attempt(tex, settings);
-  return line
-    ? { ok: true, line, flags, alternatives: readOthers(tex, settings, line) }
-    : { ok: false, error: refusal };
+  if (!line) return { ok: false, error: refusal };
+  const open = choices;
+  if (!open[0]) return { ok: true, line, flags, alternatives: [] };
+  return {
+    ok: true,
+    line,
+    flags,
+    // Worked out when it is asked for: the checker never does.
+    get alternatives() {
+      return readOthers(tex, settings, line, open);
+    },
+  };
 }
 
 /** One reading with all decisions taken as usual but one; null where it was refused. */
@@ -72,10 +81,9 @@ function attempt(tex: string, settings: ReadSettings, flip?: Choice): Line | nul
 }
 
 /** The line read again with one decision taken the other way, for each decision that was open. */
-function readOthers(tex: string, settings: ReadSettings, line: Line): readonly Line[] {
-  if (!choices[0]) return [];
+function readOthers(tex: string, settings: ReadSettings, line: Line, open: readonly Choice[]): readonly Line[] {
   const others = new Map([[shapeOf(line), line]]);
-  for (const choice of choices) {
+  for (const choice of open) {
     const other = attempt(tex, settings, choice);
     if (other) others.set(shapeOf(other), other);
   }

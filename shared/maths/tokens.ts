@@ -151,14 +151,20 @@ const OPTIONS: Partial<Record<TokenKind, RegExp>> = {
   N: /\[-?[\d.]+ *[a-z]{2}\]/y,
 };
 
+/** What the argument of a command has to be, and what is said where it is not. */
+const ARGUMENTS: Partial<Record<TokenKind, readonly [RegExp, Complaint]>> = {
+  A: [/^(?:\\?[a-zA-Z]|\\[a-zA-Z]+)$/, 'unknown-command letter'],
+  D: [/^[RZNQC]$/, 'unknown-command \\R'],
+  n: [/^(?:=|\\in)$/, 'unknown-command \\ne'],
+};
+
 function readEntry({ kind, text }: Entry, name: string, start: number): void {
   if (!'hABDEHMNSTXn~'.includes(kind)) return push(kind, text, start);
   const options = OPTIONS[kind];
   if (options) take(options);
   const argument = 'NSX~'.includes(kind) ? '' : rawArgument().trim();
-  const mustFit = (pattern: RegExp, expected: string) => {
-    if (!pattern.test(argument)) refuse(`unknown-command ${expected}`, start);
-  };
+  const must = ARGUMENTS[kind];
+  if (must && !must[0].test(argument)) refuse(must[1], start);
   switch (kind) {
     case 'S':
     case 'h':
@@ -171,13 +177,10 @@ function readEntry({ kind, text }: Entry, name: string, start: number): void {
     case 'M':
       return readStyled(argument, name, start);
     case 'A':
-      mustFit(/^(?:\\?[a-zA-Z]|\\[a-zA-Z]+)$/, 'letter');
       return push('a', `${name}{${argument}}`, start);
     case 'D':
-      mustFit(/^[RZNQC]$/, '\\R');
       return push('ℝ', argument, start);
     case 'n':
-      mustFit(/^(?:=|\\in)$/, '\\ne');
       return push(argument === '=' ? '≠' : '∉', '', start);
   }
   if (kind === 'B' && argument === 'array') rawArgument();
