@@ -1,10 +1,10 @@
 import type { Expr, Line, ReadError, ReadSettings } from '../../shared/maths/expression.ts';
 import { lettersOf } from '../../shared/maths/letters.ts';
 import { readLine } from '../../shared/maths/read.ts';
+import { functionsIn, lineInPlace, partWideBlanks } from '../../shared/maths/read-in-place.ts';
 import { childrenOf, exprsOf } from '../../shared/maths/walk.ts';
 import { nameDifferentials } from './calculus/name-differentials.ts';
 import { mayHaveCalculus, nameRates, usualVariable } from './calculus/name-rates.ts';
-import { partWideBlanks, readInPlace } from './meant-lines.ts';
 import type { DerivationInput } from '../../shared/schemas/verdict.ts';
 
 /** A line as it was read, or why it could not be. */
@@ -41,7 +41,7 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
   const asRead = input.lines.map((tex): ReadResult => {
     const result = read(tex);
     if (!result.ok) return result;
-    const line = readInPlace(result.line, tex, before);
+    const line = lineInPlace(result.line, tex, before);
     before.push(line);
     return { ...result, line };
   });
@@ -78,11 +78,6 @@ function guessNumbers(input: DerivationInput): 'real' | 'complex' {
 
 function hasUnit(expr: Expr): boolean {
   return (expr.kind === 'constant' && expr.name === 'i') || childrenOf(expr).some(hasUnit);
-}
-
-function functionsIn(line: Line): string[] {
-  if (line.kind === 'definition' && line.params.length > 0) return [line.name];
-  return line.kind === 'all' || line.kind === 'any' ? line.parts.flatMap(functionsIn) : [];
 }
 
 function definedIn(line: Line): string[] {

@@ -23,6 +23,7 @@ export const FLAG_WORDS: Record<ReadingFlag, string> = {
   continues: 'goes on from the line above',
   'comma-or': 'the comma is read as “or”',
   'comma-and': 'the comma is read as “and”',
+  'numbered-values': 'values of the letter without its number',
   percent: 'hundredths',
   'imaginary-unit': 'i is read as the imaginary unit',
   'log-base': 'the logarithm to base 10',

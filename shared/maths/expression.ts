@@ -288,6 +288,7 @@ export type ReadingFlag =
   | 'continues'
   | 'comma-or'
   | 'comma-and'
+  | 'numbered-values'
   | 'percent'
   | 'imaginary-unit'
   | 'log-base'

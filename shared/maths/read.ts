@@ -58,13 +58,14 @@ export function readLine(tex: string, settings: ReadSettings = DEFAULT_READ_SETT
   if (!line) return { ok: false, error: refusal };
   const open = choices;
   if (!open[0]) return { ok: true, line, flags, alternatives: [] };
+  let others: readonly Line[] | undefined;
   return {
     ok: true,
     line,
     flags,
-    // Worked out when it is asked for: the checker never does.
+    // Worked out when they are asked for: the checker never does.
     get alternatives() {
-      return readOthers(tex, settings, line, open);
+      return (others ??= readOthers(tex, settings, line, open));
     },
   };
 }

@@ -1,17 +1,36 @@
-import type { Reading, ReadSettings } from '../../../shared/maths/expression.ts';
-import { readLine } from '../../../shared/maths/read.ts';
+import type { Line, Reading, ReadSettings } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { functionsIn, readInPlace } from '../../../shared/maths/read-in-place.ts';
 
-/** Letters that a line introduces as functions; later lines read them so. */
-export function introducedBy(reading: Reading): readonly string[] {
-  return reading.ok && reading.line.kind === 'definition' && reading.line.params.length > 0 ? [reading.line.name] : [];
+/** What the lines before a line say to it. */
+export interface Place {
+  readonly before: readonly Line[];
+  /** Names that they introduced as functions. */
+  readonly functions: readonly string[];
+  /** The same text for places in which every line is read alike. */
+  readonly key: string;
 }
 
-/** Lines read one after the other, each with the functions that those before it introduced. */
-export function readLines(lines: readonly string[], settings: Omit<ReadSettings, 'functions'>): Reading[] {
-  const functions: string[] = [];
-  return lines.map((tex) => {
-    const reading = readLine(tex, { ...settings, functions: [...functions] });
-    functions.push(...introducedBy(reading));
+/** Reads lines one after the other, each in its place behind those before it, as the checker does. */
+export function createLineReader(read: (tex: string, place: Place) => Reading): (tex: string) => Reading {
+  const functions = new Set<string>();
+  const letters = new Set<string>();
+  const before: Line[] = [];
+  return (tex) => {
+    const key = [before.at(-1)?.kind ?? '', [...letters].join(), [...functions].join()].join(' ');
+    const reading = read(tex, { before, functions: [...functions], key });
+    if (reading.ok) {
+      for (const name of functionsIn(reading.line)) functions.add(name);
+      for (const name of lettersOf(reading.line)) letters.add(name);
+      before.push(reading.line);
+    }
     return reading;
-  });
+  };
+}
+
+/** Lines read one after the other. */
+export function readLines(lines: readonly string[], settings: Omit<ReadSettings, 'functions'>): Reading[] {
+  return lines.map(
+    createLineReader((tex, { before, functions }) => readInPlace(tex, { ...settings, functions }, before)),
+  );
 }

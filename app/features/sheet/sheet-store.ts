@@ -2,8 +2,8 @@ import type { Editor } from '@tiptap/core';
 import { NodeSelection, type EditorState } from '@tiptap/pm/state';
 import { createContext, useContext, useSyncExternalStore } from 'react';
 import type { Reading, ReadSettings } from '../../../shared/maths/expression.ts';
-import { readLine } from '../../../shared/maths/read.ts';
-import { introducedBy } from './read-lines.ts';
+import { readInPlace } from '../../../shared/maths/read-in-place.ts';
+import { createLineReader, type Place } from './read-lines.ts';
 import { LINE_PART, placesOf, stepAttributes, type LinePart } from './sheet-commands.ts';
 
 /** What a line shows beside its own attributes; the same object as long as nothing of it changes. */
@@ -50,11 +50,11 @@ export function createSheetStore(settings: LineSettings, fixed: readonly string[
   const readings = new Map<string, Reading>();
   let facts = NONE;
 
-  function read(tex: string, functions: readonly string[]): Reading {
-    const key = `${functions.join()} ${tex}`;
+  function read(tex: string, { before, functions, key: place }: Place): Reading {
+    const key = `${place} ${tex}`;
     const known = readings.get(key);
     if (known) return known;
-    const reading = readLine(tex, { ...settings, functions });
+    const reading = readInPlace(tex, { ...settings, functions }, before);
     if (readings.size > 2_000) readings.clear();
     readings.set(key, reading);
     return reading;
@@ -97,17 +97,15 @@ interface Caret {
   readonly sent: number;
 }
 
-type Read = (tex: string, functions: readonly string[]) => Reading;
-
 function factsOf(
   state: EditorState,
   before: SheetFacts,
   caret: Caret,
   fixed: readonly string[],
-  read: Read,
+  read: (tex: string, place: Place) => Reading,
 ): SheetFacts {
-  const functions = new Set<string>();
-  for (const tex of fixed) for (const name of introducedBy(read(tex, [...functions]))) functions.add(name);
+  const readNext = createLineReader(read);
+  fixed.forEach(readNext);
   const lines = new Map<string, LineFacts>();
   const numbers = new Map<string, number>([['given', 0]]);
   const unread: number[] = [];
@@ -121,10 +119,9 @@ function factsOf(
     number += 1;
     const isHere = state.selection instanceof NodeSelection && state.selection.from === pos;
     if (isHere) activeId = stepId;
-    const reading = tex.trim() === '' ? null : read(tex, [...functions]);
+    const reading = tex.trim() === '' ? null : readNext(tex);
     if (reading) {
       written += 1;
-      for (const name of introducedBy(reading)) functions.add(name);
       if (!reading.ok) unread.push(number);
       else if (reading.alternatives.length > 0) twoWays.push(number);
     }

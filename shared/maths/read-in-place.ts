@@ -1,10 +1,42 @@
-import type { Line } from '../../shared/maths/expression.ts';
-import { lettersOf } from '../../shared/maths/letters.ts';
+import type { Line, Reading, ReadingFlag, ReadSettings } from './expression.ts';
+import { lettersOf } from './letters.ts';
+import { readLine } from './read.ts';
+import { sameLine } from './same.ts';
 
 type Relation = Extract<Line, { kind: 'relation' }>;
 
-/** Reads lines in the light of those before them, where the line by itself leaves open what it says. */
-export function readInPlace(line: Line, tex: string, before: readonly Line[]): Line {
+/**
+ * Reads a line as the checker judges it after the lines before it. Where these settle what the line says, the reading
+ * says so by its flags, and the author is asked only where the line by itself can be read in two ways.
+ */
+export function readInPlace(tex: string, settings: ReadSettings, before: readonly Line[]): Reading {
+  const reading = readLine(partWideBlanks(tex), settings);
+  if (!reading.ok) {
+    const { start, end } = reading.error.span;
+    return { ok: false, error: { ...reading.error, found: tex.slice(start, end) } };
+  }
+  const line = lineInPlace(reading.line, tex, before);
+  if (line === reading.line) return reading;
+  const ways = reading.alternatives.length > 0 ? [reading.line, ...reading.alternatives] : [];
+  const alternatives = ways.filter((other) => !sameLine(other, line));
+  return { ok: true, line, flags: flagsInPlace(reading.flags, reading.line, line), alternatives };
+}
+
+function flagsInPlace(flags: readonly ReadingFlag[], alone: Line, line: Line): readonly ReadingFlag[] {
+  const kept = flags.filter((flag) => flag !== 'comma-or' && flag !== 'comma-and');
+  const comma: ReadingFlag[] = line.kind === 'any' ? ['comma-or'] : line.kind === 'all' ? ['comma-and'] : [];
+  const isNumbered = lettersOf(alone).length > 0 && lettersOf(alone).join() !== lettersOf(line).join();
+  return [...kept, ...comma, ...(isNumbered ? (['numbered-values'] as const) : [])];
+}
+
+/** The names that a line introduces as functions; later lines read them so. */
+export function functionsIn(line: Line): readonly string[] {
+  if (line.kind === 'definition') return line.params.length > 0 ? [line.name] : [];
+  return line.kind === 'all' || line.kind === 'any' ? line.parts.flatMap(functionsIn) : [];
+}
+
+/** What a line says in the light of those before it, where the line by itself leaves that open. */
+export function lineInPlace(line: Line, tex: string, before: readonly Line[]): Line {
   if (line.kind !== 'any' && line.kind !== 'all' && line.kind !== 'relation') return line;
   return joinApart(joinTogether(numberedValues(line, before), tex, before), tex, before);
 }
