@@ -73,14 +73,15 @@ function lettersOfLeft(line: Line): readonly string[] {
   return line.kind === 'relation' ? lettersOf(line.left) : [];
 }
 
-/** `x_1=3, x_2=-1` lists the values of x where the lines before are about x and no line before has an x_1. */
+/** `x_1=3, x_2=-1` lists the values of x where the lines before are about x and the first of them has no x_1. */
 function numberedValues(line: Line, before: readonly Line[]): Line {
   const parts = line.kind === 'any' || line.kind === 'all' ? line.parts : [line];
   const letters = parts.map(numberedLetter);
   const [letter] = letters;
   if (!letter || letters.some((other) => other !== letter)) return line;
   const known = before.flatMap(lettersOf);
-  if (!known.includes(letter) || known.some((name) => name.startsWith(`${letter}_`))) return line;
+  const first = before[0] ? lettersOf(before[0]) : [];
+  if (!known.includes(letter) || first.some((name) => name.startsWith(`${letter}_`))) return line;
   const renamed = parts.map((part): Line => {
     const relation = part as Relation;
     return { ...relation, left: { ...relation.left, kind: 'letter', name: letter } as Relation['left'] };

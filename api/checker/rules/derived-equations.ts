@@ -10,6 +10,7 @@ import {
   numberExpr,
   powerExpr,
   productExpr,
+  quotientExpr,
   termsOf,
   type SignedTerm,
 } from './build-expr.ts';
@@ -47,9 +48,31 @@ function raisedEquations(equation: CompareStatement, terms: readonly SignedTerm[
   });
   return sides.flatMap(([left, right]) =>
     [2, 4].map((n): DerivedEquation => {
-      return { operation: 'power', statement: equate(powerExpr(left, rational(n)), powerExpr(right, rational(n))) };
+      return { operation: 'power', statement: equate(raised(left, n), raised(right, n)) };
     }),
   );
+}
+
+/** An expression to an even power; a root of a product's or quotient's parts goes away together with its domain. */
+function raised(expr: Expr, n: number): Expr {
+  switch (expr.kind) {
+    case 'root': {
+      const degree = expr.degree === null ? 2 : Number(constantDegree(expr.degree));
+      return n % degree === 0 ? powerExpr(expr.radicand, rational(n / degree)) : powerExpr(expr, rational(n));
+    }
+    case 'product':
+      return productExpr(expr.factors.map((factor) => raised(factor, n)));
+    case 'quotient':
+      return quotientExpr(raised(expr.numerator, n), raised(expr.denominator, n));
+    case 'sum':
+      return expr.terms.length === 1 ? raised((expr.terms[0] as { expr: Expr }).expr, n) : powerExpr(expr, rational(n));
+    default:
+      return powerExpr(expr, rational(n));
+  }
+}
+
+function constantDegree(expr: Expr): bigint {
+  return expr.kind === 'number' && expr.denominator === 1n && expr.numerator > 1n ? expr.numerator : 7n;
 }
 
 function hasRootOrBar(expr: Expr): boolean {
@@ -59,7 +82,7 @@ function hasRootOrBar(expr: Expr): boolean {
 }
 
 /** All terms over one denominator, which is then dropped. */
-function clearedEquation(terms: readonly SignedTerm[]): DerivedEquation[] {
+export function clearedEquation(terms: readonly SignedTerm[]): DerivedEquation[] {
   const parts = terms.map((term) => splitQuotient(term.expr));
   const denominators: Expr[] = [];
   for (const { below } of parts)

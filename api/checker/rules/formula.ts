@@ -9,7 +9,7 @@ import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
-import { mapChildren } from '../../../shared/maths/walk.ts';
+import { childrenOf, mapChildren } from '../../../shared/maths/walk.ts';
 import { freeLetters } from './meaning.ts';
 import { judgeOneLetter, type OneLetterAnswer, type OneLetterQuestion } from './one-letter.ts';
 import { meetsAssumptions } from './parameters.ts';
@@ -22,10 +22,16 @@ export type FormulaQuestion = Omit<OneLetterQuestion, 'given'>;
 export function isolatedLetter(statement: Statement): string | null {
   const compares = comparesOf(statement);
   const first = compares[0];
-  if (!first || first.left.kind !== 'letter' || compares.length !== countCompares(statement)) return null;
-  const name = first.left.name;
-  const isolates = compares.every((c) => isLetter(c.left, name) && !lettersOf(c.right).includes(name));
-  return isolates ? name : null;
+  if (!first || compares.length !== countCompares(statement)) return null;
+  const isolates = (name: string): boolean =>
+    compares.every(
+      ({ left, right }) =>
+        (isLetter(left, name) && !lettersOf(right).includes(name)) ||
+        // a - b < x < a + b
+        (compares.length > 1 && isLetter(right, name) && !lettersOf(left).includes(name)),
+    );
+  const alone = [first.left, first.right].flatMap((side) => (side.kind === 'letter' ? [side.name] : []));
+  return alone.find(isolates) ?? null;
 }
 
 /** The letter inside a power or function that a line says outright: r in r^2=..., A in \cos A=... */
@@ -51,6 +57,7 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
     (name) => name !== letter && !question.families.has(name),
   );
   const seen: OneLetterAnswer[] = [];
+  const places = new Map<OneLetterAnswer, Assignment>();
   const excluded: string[] = [];
   let open = 0;
   for (const [index, given] of listAssignments(names, context).entries()) {
@@ -62,13 +69,39 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
     if (found.ruling === 'fails' && !(isSpecial(given) && !found.evidence.lost)) return found;
     if (found.ruling === 'fails') continue;
     if (found.ruling === 'undecided') open += 1;
-    else seen.push(found);
+    else {
+      seen.push(found);
+      places.set(found, given);
+    }
   }
   const informative = seen.filter((answer) => answer.solutions && !isEmptySet(answer.solutions));
   if (informative.length < 2) return undecided(open > 0 ? 'not-settled' : 'no-domain');
   // A value that is gained wherever there is one was never right: both lines never have a solution together.
-  if (informative.every(isOnlyGained)) return undecided('no-domain');
+  if (informative.every(isOnlyGained)) return judgeNeverRight(question, informative[0] as OneLetterAnswer, places);
   return summarise(seen, excluded);
+}
+
+/** Fails with one of the gained values, unless it comes from taking away a root, a bar, a logarithm or a denominator. */
+function judgeNeverRight(
+  question: FormulaQuestion,
+  first: OneLetterAnswer,
+  places: ReadonlyMap<OneLetterAnswer, Assignment>,
+): StepResult {
+  const given = places.get(first) ?? new Map<string, Rational>();
+  const isRaised = first.evidence.operation === 'power' && !exprsOfStatement(question.above).some(mayLoseSign);
+  const found = isRaised
+    ? judgeOneLetter({ ...question, given, settings: { ...question.settings, reversible: true } })
+    : null;
+  return found?.ruling === 'fails' ? found : undecided('no-domain');
+}
+
+/** Whether a root, a bar or a broken power stands in an expression: what people square both sides for. */
+function mayLoseSign(expr: Expr): boolean {
+  if (expr.kind === 'root' || (expr.kind === 'call' && expr.name === 'abs')) return true;
+  const exponent = expr.kind === 'power' ? expr.exponent : null;
+  return exponent?.kind === 'quotient' || exponent?.kind === 'number'
+    ? exponent.kind === 'quotient' || exponent.denominator !== 1n || childrenOf(expr).some(mayLoseSign)
+    : childrenOf(expr).some(mayLoseSign);
 }
 
 function isOnlyGained({ solutions, candidates }: OneLetterAnswer): boolean {

@@ -9,6 +9,7 @@ import {
   difference,
   intersection,
   isEmptySet,
+  isFiniteSet,
   isWholeLine,
   weaker,
   type Reached,
@@ -208,6 +209,9 @@ function judgeGain(question: OneLetterQuestion, solved: Solved, gained: RealSet)
   if (question.settings.reversible || (isOrder && !isListOfValues(question.below, question.letter))) {
     return answer(failWith(question, 'gained', gained, solved), solved, []);
   }
+  // A set that is said to be the solutions cannot be narrowed by a later line value by value.
+  const isSaid = isSentence(question.below) || question.below.kind === 'member';
+  if (isSaid && !isFiniteSet(gained)) return answer(failWith(question, 'gained', gained, solved), solved, []);
   const names = nameEach(gained);
   const operation = explainGain(question.above, question.below, gained, solved.env);
   const candidates = listed(question, solved);

@@ -1,6 +1,9 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { mapExpr } from '../../../shared/maths/walk.ts';
+import { createForms } from '../compare/normal-forms.ts';
 import type { CheckContext } from '../context.ts';
+import { constantOf } from '../numbers/form.ts';
 import { rational, type Rational } from '../numbers/rational.ts';
 import { toFraction } from '../solving/fraction.ts';
 import { degreeIn } from '../solving/linear.ts';
@@ -12,7 +15,17 @@ import { Unsettled } from '../solving/unsettled.ts';
 import { truthAt } from '../statements/truth.ts';
 import { differenceGraph, solveStatement, type SolveEnv } from '../statements/solve.ts';
 import type { CompareStatement, Statement } from '../statements/statement.ts';
-import { differenceExpr, minusExpr, numberExpr, powerExpr, productExpr, quotientExpr, sumExpr } from './build-expr.ts';
+import {
+  differenceExpr,
+  minusExpr,
+  numberExpr,
+  powerExpr,
+  productExpr,
+  quotientExpr,
+  sumExpr,
+  termsOf,
+} from './build-expr.ts';
+import { clearedEquation } from './derived-equations.ts';
 import { freeLetters } from './meaning.ts';
 
 /** Expressions in the place of letters. */
@@ -80,10 +93,17 @@ export function openLetters(statement: Statement, context: CheckContext, anchor:
 
 /** All that satisfies several equations together; throws Unsettled where elimination does not get there. */
 export function solveSystem(equations: readonly CompareStatement[], context: CheckContext): SystemSolution[] {
-  const found = eliminate(equations, new Map(), { context, anchor: null }, 0);
+  const found = eliminate(equations.map(withoutDenominators), new Map(), { context, anchor: null }, 0);
   const solutions = found.filter((solution) => isSolution(equations, solution, context));
   if (solutions.length > mostSolutions) throw new Unsettled('limit');
   return solutions;
+}
+
+/** Letters below a line would hide what is linear; solutions are tried in the equations as they were. */
+function withoutDenominators(equation: CompareStatement): CompareStatement {
+  const terms = termsOf(differenceExpr(equation.left, equation.right));
+  const isBelow = terms.some(({ expr }) => expr.kind === 'quotient' && lettersOf(expr.denominator).length > 0);
+  return (isBelow ? clearedEquation(terms)[0]?.statement : null) ?? equation;
 }
 
 function isSolution(
@@ -112,8 +132,11 @@ function eliminate(
   const open: { equation: CompareStatement; letters: string[] }[] = [];
   for (const equation of equations) {
     const letters = openLetters(equation, context, anchor);
-    if (letters.length > 0) open.push({ equation, letters });
-    else if (isTrueStatement(equation, context, anchor) === false) return [];
+    const always = letters.length > 0 ? isAlways(equation, context) : null;
+    if (always === false) return [];
+    if (letters.length > 0) {
+      if (!always) open.push({ equation, letters });
+    } else if (isTrueStatement(equation, context, anchor) === false) return [];
   }
   if (open.length === 0) return [{ values, anchor }];
   const rest = open.map((o) => o.equation);
@@ -125,6 +148,15 @@ function eliminate(
   const best = way.find((w) => w.slope !== null) ?? way[0];
   if (!best) return eliminate(combine(rest, context), values, search, depth + 1);
   return fromLinear(best, rest, values, search, depth);
+}
+
+/** Whether left minus right is zero once it is written out, or another number; null where it depends on letters. */
+function isAlways(equation: CompareStatement, context: CheckContext): boolean | null {
+  const graph = differenceGraph(equation.left, equation.right, envFor('', context));
+  const form = createForms(graph.nodes, false).formOf(graph.root);
+  if (!form) return null;
+  const value = constantOf(form);
+  return value === null ? null : value.num === 0n;
 }
 
 function fromOneLetter(

@@ -28,7 +28,8 @@ export function judgeStatements(question: StatementQuestion): StatementAnswer {
   if (context.numbers === 'complex') return withoutCandidates(judgeComplexStep(question, letters));
   if (isSystem(question)) return withoutCandidates(judgeSystemStep(question));
   const letter = letters.length === 1 ? (letters[0] as string) : chooseUnknown(question, letters);
-  if (letter === null) return withoutCandidates(judgeSameEquation(above, below, context) ?? undecided('no-unknown'));
+  if (letter === null)
+    return withoutCandidates(judgeSameEquation(above, below, context) ?? judgeForAny(question, letters));
   const shared = {
     above,
     below,
@@ -47,6 +48,21 @@ export function judgeStatements(question: StatementQuestion): StatementAnswer {
     return withoutCandidates(judgeApproximation({ ...shared, given: new Map() }));
   }
   return judgeOneLetter({ ...shared, given: new Map() });
+}
+
+const mostUnknowns = 4;
+
+/** Which letter is the unknown is not said: a step holds that does so whichever it is. */
+function judgeForAny(question: StatementQuestion, letters: readonly string[]): StepResult {
+  const { above, below, reference, settings, context } = question;
+  if (letters.length > mostUnknowns || isPutIn(above, below)) return undecided('no-unknown');
+  let first: StepResult | null = null;
+  for (const letter of letters) {
+    const found = judgeFormula({ above, below, letter, reference, families: new Set<string>(), settings, context });
+    if (found.ruling !== 'holds') return undecided('no-unknown');
+    first ??= found;
+  }
+  return first ?? undecided('no-unknown');
 }
 
 function withoutCandidates(result: StepResult): StatementAnswer {

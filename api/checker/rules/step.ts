@@ -13,6 +13,7 @@ import { continueFrom, exprsOfStatement, toStatement, type Statement } from '../
 import { solveStatement } from '../statements/solve.ts';
 import { judgeExpressions, judgeLinks } from './expression-step.ts';
 import { freeLetters, meaningOf, type Meaning } from './meaning.ts';
+import { judgeRootPair } from './root-pair.ts';
 import { judgeRoundedLinks } from './rounded-links.ts';
 import { judgeRunningEquals } from './running-equals.ts';
 import { judgeStatements } from './statement-step.ts';
@@ -79,6 +80,8 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   }
   const fresh = from?.kind === 'statement' ? freshDefinition(line, question) : null;
   if (fresh) return define([fresh], context);
+  const pair = from?.kind === 'statement' ? judgeRootPair(line, from.statement, context) : null;
+  if (pair) return answer(pair, null);
   const aside =
     from?.kind === 'statement'
       ? judgeAside({ line, from: from.statement, met: metLetters(question), later: question.later, context })

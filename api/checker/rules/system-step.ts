@@ -43,19 +43,30 @@ export function judgeSystemStep(question: StatementQuestion): StepResult {
   const below = asPoint(question) ?? question.below;
   const first = judgeKnown(known, below, context);
   // Which number of a bare pair belongs to which letter is custom.
-  if (first.ruling === 'fails' && below !== question.below) return undecided('no-agreed-meaning');
+  if (first.ruling === 'fails' && below !== question.below) {
+    const swapped = judgeKnown(known, asPoint(question, true) ?? below, context);
+    return swapped.ruling === 'fails' ? first : undecided('no-agreed-meaning');
+  }
   if (first.ruling !== 'fails' || !question.afterFault || !question.given) return first;
   // After a fault the author goes on from the wrong line, and still has the given.
   const wider = judgeKnown([...known, question.given], below, context);
   return wider.ruling === 'holds' ? wider : undecided('not-settled');
 }
 
-/** `(3,1)` at the end of a system is a point, its letters by the alphabet. */
-function asPoint({ below, known, context }: StatementQuestion): Statement | null {
-  if (below.kind !== 'member' || below.letter || below.set.kind !== 'interval') return null;
-  const { from, to, fromClosed, toClosed } = below.set;
+/** `(3,1)` at the end of a system is a point, its letters by the alphabet; several points are joined by or. */
+function asPoint({ below, known, context }: StatementQuestion, isSwapped = false): Statement | null {
   const letters = freeLetters({ kind: 'all', parts: known }, context).sort();
-  if (letters.length !== 2 || !from || !to || fromClosed || toClosed) return null;
+  if (letters.length !== 2) return null;
+  if (isSwapped) letters.reverse();
+  if (below.kind !== 'all' && below.kind !== 'any') return pointOf(below, letters);
+  const points = below.parts.map((part) => pointOf(part, letters));
+  return points.includes(null) ? null : { kind: 'any', parts: points as Statement[] };
+}
+
+function pointOf(statement: Statement, letters: readonly string[]): Statement | null {
+  if (statement.kind !== 'member' || statement.letter || statement.set.kind !== 'interval') return null;
+  const { from, to, fromClosed, toClosed } = statement.set;
+  if (!from || !to || fromClosed || toClosed) return null;
   return {
     kind: 'all',
     parts: [from, to].map((right, k) => ({

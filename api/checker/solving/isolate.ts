@@ -22,7 +22,7 @@ type SomeSign = -1 | 0 | 1 | null;
 
 /** Derivatives that are looked at. */
 const mostDerivatives = 4;
-const mostBoxes = 600;
+const mostBoxes = 320;
 const mostScales = 34;
 
 /** Only the nodes that the root depends on, in their order. */

@@ -205,7 +205,7 @@ function isolatedZeros(graph: Graph, stretches: readonly OpenStretch[], env: Lin
     if (!known.has(key)) known.set(key, createIsolator(graph, signs, env));
     const isolator = known.get(key) ?? null;
     if (isolator === 'zero') continue;
-    if (isolator && isZeroFunction(graph, sample, env)) continue;
+    if (isolator && isZeroFunction(graph, from, sample, env)) continue;
     const zeros = isolator?.zerosOn({ from, to }) ?? null;
     if (!zeros) return null;
     found.push(...zeros);
@@ -214,10 +214,13 @@ function isolatedZeros(graph: Graph, stretches: readonly OpenStretch[], env: Lin
   return [...found, ...windowEnds.filter((end) => isZeroAt(graph, end, env))];
 }
 
-/** sin^2 x + cos^2 x - 1: zero at a sample to all digits, and as an identity. */
-function isZeroFunction(graph: Graph, sample: Rational, env: LineEnv): boolean {
-  const here = signAtPoint(graph, env.letter, rationalNumber(sample), env.given, env.context);
-  if (here?.sign !== 0 || here.certain || env.given.size > 0) return false;
+/** sin^2 x + cos^2 x - 1: zero at two places to all digits, and as an identity. */
+function isZeroFunction(graph: Graph, from: RealNumber | null, sample: Rational, env: LineEnv): boolean {
+  if (env.given.size > 0) return false;
+  const places = [rationalNumber(sample), rationalNumber(between(from, rationalNumber(sample)))];
+  const isZero = (place: RealNumber): boolean =>
+    signAtPoint(graph, env.letter, place, env.given, env.context)?.sign === 0;
+  if (!places.every(isZero)) return false;
   const expr = nodeToExpr(graph.nodes, graph.root);
   return expr !== null && compareExpressions(expr, numberExpr(zero), env.context).kind === 'equal';
 }

@@ -34,7 +34,7 @@ export function toStatement(line: Line): Statement | null {
       return withChoices(line.members, (members) => toLinks(members, line.signs));
     case 'any':
     case 'all': {
-      const parts = line.parts.map(toStatement);
+      const parts = line.parts.map((part) => toStatement(part) ?? toPoint(part));
       return parts.includes(null) ? null : { kind: line.kind, parts: parts as Statement[] };
     }
     case 'membership':
@@ -46,6 +46,19 @@ export function toStatement(line: Line): Statement | null {
     default:
       return null;
   }
+}
+
+/** `(3,4)` among other points: a pair as an open interval is written, which is how a point alone is read. */
+function toPoint(line: Line): Statement | null {
+  if (line.kind !== 'expression' || line.expr.kind !== 'matrix') return null;
+  const [from, to, ...others] = line.expr.rows.flat();
+  if (line.expr.rows.length !== 1 || !from || !to || others.length > 0) return null;
+  return {
+    kind: 'member',
+    letter: null,
+    set: { kind: 'interval', from, to, fromClosed: false, toClosed: false, span: line.expr.span },
+    negated: false,
+  };
 }
 
 /** An equation of two written vectors or matrices says that their entries are equal: (x,y)=(3,1). */
