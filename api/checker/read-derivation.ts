@@ -30,8 +30,9 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
   const defined = new Set<string>();
   const by = usualVariable(input.lines);
   const read = (tex: string): ReadResult => {
-    const reading = readLine(partWideBlanks(tex), { numbers, decimal, functions: [...functions] });
-    if (!reading.ok) return { ok: false, tex, error: reading.error };
+    const found = readLine(partWideBlanks(tex), { numbers, decimal, functions: [...functions] });
+    if (!found.ok) return { ok: false, tex, error: found.error };
+    const reading = { ...found, line: letAll(found.line) };
     for (const name of functionsIn(reading.line)) functions.push(name);
     for (const name of definedIn(reading.line)) defined.add(name);
     return { ok: true, tex, line: mayHaveCalculus(tex) ? nameRates(reading.line, defined, by) : reading.line };
@@ -60,6 +61,19 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
     numbers,
     wholeLetters,
     settings: { numbers, decimal, functions },
+  };
+}
+
+/** "Let a=2, b=3": what follows the first definition is defined as well. */
+function letAll(line: Line): Line {
+  const first = line.kind === 'all' ? line.parts[0] : undefined;
+  if (line.kind !== 'all' || first?.kind !== 'definition' || first.params.length > 0) return line;
+  return {
+    ...line,
+    parts: line.parts.map((part): Line => {
+      if (part.kind !== 'relation' || part.sign !== '=' || part.left.kind !== 'letter') return part;
+      return { kind: 'definition', name: part.left.name, params: [], value: part.right, span: part.span };
+    }),
   };
 }
 

@@ -5,16 +5,25 @@ import { judgeLinks } from './expression-step.ts';
 import type { StepResult } from './step-result.ts';
 
 /**
- * A running equals sign, `=7+2=9` after `3+4`: the first member begins with what the line above is worth and works on.
- * Null where the line is no such thing.
+ * A running equals sign, `=7+2=9` after `3+4`: a member begins with what stands before it and works on. Null where the
+ * line is no such thing.
  */
 export function judgeRunningEquals(above: Expr, members: readonly Expr[], context: CheckContext): StepResult | null {
-  const [first, ...rest] = members;
-  if (!first || !beginningsOf(first).some((start) => compareExpressions(above, start, context).kind === 'equal'))
-    return null;
-  if (rest.length === 0) return { ruling: 'holds', reached: 'proved', notes: ['presentation'], evidence: {} };
-  const found = judgeLinks(first, rest, context);
-  return found.ruling === 'holds' ? { ...found, notes: [...found.notes, 'presentation'] } : null;
+  let from = above;
+  let isRunning = false;
+  let reached: StepResult['reached'] = 'proved';
+  for (const member of members) {
+    const link = judgeLinks(from, [member], context);
+    if (link.ruling === 'holds') reached = link.reached === 'proved' ? reached : link.reached;
+    else if (!beginsWith(member, from, context)) return null;
+    else isRunning = true;
+    from = member;
+  }
+  return isRunning ? { ruling: 'holds', reached, notes: ['presentation'], evidence: {} } : null;
+}
+
+function beginsWith(member: Expr, value: Expr, context: CheckContext): boolean {
+  return beginningsOf(member).some((start) => compareExpressions(value, start, context).kind === 'equal');
 }
 
 function beginningsOf(expr: Expr): Expr[] {
