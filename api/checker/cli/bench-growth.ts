@@ -1,4 +1,8 @@
 import { performance } from 'node:perf_hooks';
+import type { Expr } from '../../../shared/maths/expression.ts';
+import { compareExpressions } from '../compare/compare-expressions.ts';
+import { createContext } from '../context.ts';
+import { letter, power, product, sum, whole } from '../evidence/build.ts';
 import { checkDerivation } from '../rule-derivation.ts';
 
 export interface Growth {
@@ -9,11 +13,16 @@ export interface Growth {
 }
 
 const runs = 7;
+const sizes = [10, 100, 1000, 10_000];
 
 /** How the cost of a ruling, reading included, grows with the size of what is ruled on: the least of some runs. */
 export function measureGrowth(): Growth[] {
   return [
     ...[10, 100, 700].map((terms) => measured('terms written in a line, reordered', terms, sumOf(terms))),
+    ...sizes.map((terms) => measuredTrees('terms in three letters, no line read', terms, termsOf(terms, manyLetters))),
+    ...sizes.map((terms) =>
+      measuredTrees('terms of a polynomial of as high a degree', terms, termsOf(terms, oneLetter)),
+    ),
     // 10 to 9880 terms, were it multiplied out: a line has no room for more than 2000 that are written.
     ...[2, 6, 17, 37].map((n) => measured('terms of (x+y+z+1)^n multiplied out', binomial(n + 3), powerOf(n))),
     ...[2, 10, 100, 1000, 10_000].map((n) =>
@@ -36,6 +45,28 @@ function measured(what: string, size: number, lines: readonly string[]): Growth 
   }
   return { what, size, outcome, ms };
 }
+
+/** The comparison alone, of trees that no line has room for: a line is read up to 4000 characters or 3000 nodes. */
+function measuredTrees(what: string, size: number, terms: readonly Expr[]): Growth {
+  const [above, below] = [sum(...terms), sum(...[...terms].reverse())];
+  let ms = Infinity;
+  let outcome = '';
+  for (let run = 0; run < runs; run += 1) {
+    const began = performance.now();
+    outcome = compareExpressions(above, below, createContext()).kind;
+    ms = Math.min(ms, performance.now() - began);
+  }
+  return { what, size, outcome, ms };
+}
+
+type TermOf = (k: number) => Expr;
+
+function termsOf(count: number, termOf: TermOf): Expr[] {
+  return Array.from({ length: count }, (_, k) => product(whole((k % 9) + 2), termOf(k)));
+}
+
+const manyLetters: TermOf = (k) => power(letter(['x', 'y', 'z'][k % 3] ?? 'x'), whole((k % 7) + 2));
+const oneLetter: TermOf = (k) => power(letter('x'), whole(k + 2));
 
 function sumOf(terms: number): string[] {
   const parts = Array.from({ length: terms }, (_, k) => `${(k % 7) + 1}${'xyz'[k % 3]}`);

@@ -9,6 +9,33 @@ export interface Practice extends MadeDerivation {
 
 const mostTasks = 8;
 
+/** What is most often done wrong in a topic, where a wrong rule for parts of a line would hide something else. */
+const ownSlips: Partial<Record<PracticeTopic, readonly string[]>> = {
+  systems: [
+    'a-term-was-moved-across-without-changing-its-sign',
+    'different-things-were-done-to-the-two-sides',
+    'only-the-first-term-was-multiplied',
+    'the-coefficient-was-subtracted-instead-of-divided-by',
+    'a-sign-was-changed-on-dividing-by-a-coefficient',
+    'a-product-of-two-negatives-was-left-negative',
+  ],
+  'quadratic-inequalities': [
+    'the-square-root-of-an-inequality-was-taken-as-of-an-equation',
+    'the-zero-product-rule-was-used-with-an-inequality',
+    'the-inequality-was-not-reversed-on-dividing-by-a-negative',
+    'the-inequality-was-reversed-when-nothing-negative-was-divided-by',
+    'a-strict-inequality-and-one-that-is-not-were-exchanged',
+    'the-factor-pair-had-the-right-product-and-the-wrong-sum',
+  ],
+  'trigonometric-equations': [
+    'both-sides-were-divided-by-a-function-that-can-be-zero',
+    'a-term-was-moved-across-without-changing-its-sign',
+    'the-coefficient-was-subtracted-instead-of-divided-by',
+    'a-sign-was-changed-on-dividing-by-a-coefficient',
+    'the-zero-product-rule-was-used-with-a-right-side-that-is-not-zero',
+  ],
+};
+
 /**
  * A random derivation to practise on, sound or with one hidden slip, confirmed by the checker; the same for the same seed.
  * Null only where no task that was drawn has a place for a slip.
@@ -29,8 +56,10 @@ export function makePractice(question: {
     // What explains nearly anything is no good practice; better known mistakes first.
     const telling = allSlips.filter(({ rank }) => rank >= 6);
     const others = allSlips.filter(({ rank, kind }) => rank >= 5 && rank < 6 && kind !== 'copying');
-    for (const slip of [...shuffled(telling, random), ...shuffled(others, random)]) {
-      const made = makeFaulty({ task, slip: slip.id, seed: random(1_000_000) });
+    const own = shuffled(ownSlips[question.topic] ?? [], random);
+    const rest = [...shuffled(telling, random), ...shuffled(others, random)].map(({ id }) => id);
+    for (const slip of new Set([...own, ...rest])) {
+      const made = makeFaulty({ task, slip, seed: random(1_000_000) });
       if (made) return { task, ...made };
     }
   }

@@ -9,6 +9,7 @@ import { listOf } from '../slips/may-follow.ts';
 import { any } from '../slips/relations.ts';
 import { nextExpression, type ExpressionAim } from './next-expression.ts';
 import { nextStatement } from './next-statement.ts';
+import { nextSystem } from './next-system.ts';
 
 const mostLines = 14;
 const longestLine = 400;
@@ -34,6 +35,7 @@ function nextLine(line: Line, goal: Goal): Line | null {
     const expr = nextExpression(line.expr, aimOf(goal));
     return expr && { ...line, expr };
   }
+  if (line.kind === 'all') return nextSystem(line);
   const name = goal.kind === 'solved' ? goal.letter : exprsOf(line).flatMap((expr) => [...lettersOf(expr)])[0];
   return name ? nextStatement(line, name) : null;
 }

@@ -9,6 +9,8 @@ import { factorsOf } from '../slips/match.ts';
 import { any, mirrored, relation, signedTerms, type Relation } from '../slips/relations.ts';
 import { coefficientsOf, degreeIn, inOrder, polynomialExpr } from './polynomial-parts.ts';
 import { factoredForm } from './next-expression.ts';
+import { nextOfQuadraticOrder } from './next-inequality.ts';
+import { nextOfTrigonometric } from './next-trigonometric.ts';
 
 type Move = (line: Relation, name: string) => Line | null;
 
@@ -283,6 +285,7 @@ function byFormula(coefficients: readonly Q.Rational[], name: string): Line | nu
 const equationMoves: readonly Move[] = [
   sidesExchanged,
   zeroProduct,
+  nextOfTrigonometric,
   takenOff,
   rootAlone,
   functionAlone,
@@ -295,4 +298,11 @@ const equationMoves: readonly Move[] = [
   polynomialSolved,
 ];
 
-const orderMoves: readonly Move[] = [sidesExchanged, multipliedOut, collected, termsMoved, divided];
+const orderMoves: readonly Move[] = [
+  nextOfQuadraticOrder,
+  sidesExchanged,
+  multipliedOut,
+  collected,
+  termsMoved,
+  divided,
+];

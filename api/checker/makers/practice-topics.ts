@@ -201,6 +201,52 @@ const trigonometry: DrawTask = (d, level) => {
   return task(r`(\sin x-${k}\cos x)^2+(${k}\sin x+\cos x)^2`, { kind: 'simplified' });
 };
 
+/** One letter has the number 1 or -1 in front of it somewhere, so that no fractions come in on the way. */
+const systems: DrawTask = (d, level) => {
+  const [x, y, a, b] = [d.signed(6), d.signed(6), d.between(2, 5), d.between(2, 4)];
+  const free: Goal = { kind: 'free' };
+  if (level === 1) return task(`y=${times(a, 'x')}${plus(y - a * x)},\\ x+y=${x + y}`, free);
+  const c = d.between(2, 6);
+  if (level === 2) return task(`x${plusTimes(a, 'y')}=${x + a * y},\\ ${c}x-${b}y=${c * x - b * y}`, free);
+  return task(`${a}(x${plus(c)})-y=${a * (x + c) - y},\\ ${b}x+${a + b}(y-1)=${b * x + (a + b) * (y - 1)}`, free);
+};
+
+const quadraticInequalities: DrawTask = (d, level) => {
+  const p = d.signed(6);
+  const q = p + d.between(1, 6);
+  const sign = d.one(['<', '>', '\\le ', '\\ge ']);
+  if (level === 1) return task(`x^2${sign}${p * p}`, forX);
+  const middle = p + q === 0 ? '' : plusTimes(-p - q, 'x');
+  const last = p * q === 0 ? '' : plus(p * q);
+  if (level === 2) return task(`x^2${middle}${last}${sign}0`, forX);
+  return task(`${times(p + q || 1, 'x')}-x^2${sign}${p + q ? p * q : p * q - p - 1}`, forX);
+};
+
+const trigonometricEquations: DrawTask = (d, level) => {
+  const [a, own] = [d.between(2, 6), d.one(['\\sin', '\\cos'])];
+  const turn = [r`0\le x<2\pi`];
+  if (level === 1) {
+    const [k, value] = d.one<[number, string]>([
+      [2, '1'],
+      [2, '-1'],
+      [2, r`\sqrt{3}`],
+      [2, r`\sqrt{2}`],
+      [1, '0'],
+      [1, '-1'],
+    ]);
+    const left = `${times(k, ` ${own} x`)}${plus(a)}`.trim();
+    return task(value.startsWith('\\') ? `${left}=${a}+${value}` : `${left}=${a + Number(value)}`, forX, turn);
+  }
+  if (level === 2) return task(`2${own}^2 x=${d.one(['', '-'])}${own} x`, forX, turn);
+  const [b, c] = d.one<[number, number]>([
+    [1, -1],
+    [-1, -1],
+    [3, 1],
+    [-3, 1],
+  ]);
+  return task(`2${own}^2 x${plusTimes(b, `${own} x`)}=${-c}`, forX, turn);
+};
+
 /** The topics of practice, each with its three levels. */
 export const practiceTopics = {
   brackets,
@@ -218,7 +264,10 @@ export const practiceTopics = {
   'absolute-values': absoluteValues,
   inequalities,
   formulas,
+  systems,
+  'quadratic-inequalities': quadraticInequalities,
   trigonometry,
+  'trigonometric-equations': trigonometricEquations,
   derivatives,
   integrals,
 } as const satisfies Record<string, DrawTask>;

@@ -1,4 +1,5 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import { sameLine } from '../../../shared/maths/same.ts';
 import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
 import { createBudget, createContext, type CheckContext } from '../context.ts';
 import { everywhere } from '../slips/rewrite.ts';
@@ -22,6 +23,10 @@ export function wrongLines(slip: Slip, above: Line, below: Line): Line[] {
 }
 
 function* candidates(slip: Slip, above: Line, below: Line, context: CheckContext): Generator<Line> {
+  if (above.kind === 'all') {
+    yield* inOnePart(slip, above, below, context);
+    return;
+  }
   if (slip.lines) yield* slip.lines(above, below, context);
   if (above.kind === 'expression') {
     const other = below.kind === 'expression' ? below.expr : above.expr;
@@ -30,6 +35,21 @@ function* candidates(slip: Slip, above: Line, below: Line, context: CheckContext
   if (above.kind === 'relation') {
     for (const left of rewritten(slip, above.left)) yield { ...above, left };
     for (const right of rewritten(slip, above.right)) yield { ...above, right };
+  }
+}
+
+/** One equation of several, the others as the next line has them. */
+function* inOnePart(
+  slip: Slip,
+  above: Extract<Line, { kind: 'any' | 'all' }>,
+  below: Line,
+  context: CheckContext,
+): Generator<Line> {
+  if (below.kind !== 'all' || below.parts.length !== above.parts.length) return;
+  const changed = [...above.parts.keys()].filter((k) => !sameLine(above.parts[k] as Line, below.parts[k] as Line));
+  for (const place of changed) {
+    for (const part of candidates(slip, above.parts[place] as Line, below.parts[place] as Line, context))
+      yield { ...below, parts: below.parts.map((own, k) => (k === place ? part : own)) };
   }
 }
 

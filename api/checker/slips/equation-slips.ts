@@ -15,7 +15,8 @@ function* movedWithSign(above: Line, wants: (term: Expr) => boolean): Generator<
     const terms = signedTerms(left);
     if (terms.length < 2) continue;
     for (const [k, term] of terms.entries()) {
-      if (!isZero(term) && wants(term)) yield relation(sumOf(without(terms, k)), sign, sum(right, term));
+      if (!isZero(term) && wants(term))
+        yield relation(sumOf(without(terms, k)), sign, isZero(right) ? term : sum(right, term));
     }
   }
 }

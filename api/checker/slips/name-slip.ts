@@ -1,6 +1,6 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { sameExpr } from '../../../shared/maths/same.ts';
+import { sameExpr, sameLine } from '../../../shared/maths/same.ts';
 import { exprsOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
@@ -108,8 +108,19 @@ function withoutConstant(above: Expr, below: Expr): Expr {
 const tellingRank = 4;
 
 function nameBetweenStatements(above: Line, below: Line, context: CheckContext, follows: Follows): Slip | null {
+  const part = onlyPart(above, below);
+  if (part) return nameSlip(part[0], part[1], context, follows);
   const onSide = nameOnOneSide(above, below, context);
   return onSide && onSide.rank >= tellingRank ? onSide : (nameByStatement(above, below, context, follows) ?? onSide);
+}
+
+/** The one equation of several that was worked on. */
+function onlyPart(above: Line, below: Line): readonly [Line, Line] | null {
+  if (above.kind !== 'all' || below.kind !== 'all' || above.parts.length !== below.parts.length) return null;
+  const [place, ...more] = [...above.parts.keys()].filter(
+    (k) => !sameLine(above.parts[k] as Line, below.parts[k] as Line),
+  );
+  return place === undefined || more.length > 0 ? null : [above.parts[place] as Line, below.parts[place] as Line];
 }
 
 /** Where one side stands as it was, what happened happened on the other. */

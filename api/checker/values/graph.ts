@@ -125,7 +125,7 @@ export function createGraphBuilder(onPush: () => void): GraphBuilder {
 class Builder implements GraphBuilder {
   readonly nodes: GraphNode[] = [];
   private readonly known = new Map<string | number, number>();
-  private readonly smallNumbers = new Map<bigint, number>();
+  private readonly smallNumbers = new Map<number, number>();
   private readonly onPush: () => void;
 
   constructor(onPush: () => void) {
@@ -148,11 +148,12 @@ class Builder implements GraphBuilder {
   }
 
   number(value: Rational): number {
-    if (value.den !== 1n) return this.push({ op: 'number', args: [], value });
-    let found = this.smallNumbers.get(value.num);
+    const small = value.den === 1n ? Number(value.num) : NaN;
+    if (!Number.isSafeInteger(small)) return this.push({ op: 'number', args: [], value });
+    let found = this.smallNumbers.get(small);
     if (found === undefined) {
       found = this.push({ op: 'number', args: [], value });
-      this.smallNumbers.set(value.num, found);
+      this.smallNumbers.set(small, found);
     }
     return found;
   }
@@ -166,8 +167,11 @@ class Builder implements GraphBuilder {
     const rest: number[] = [];
     for (const arg of args) {
       const value = this.valueOf(arg);
-      if (value === null) rest.push(arg);
-      else total = join(total, value);
+      if (value === null) {
+        rest.push(arg);
+        continue;
+      }
+      total = join(total, value);
       if (total.den > most || total.num > most || total.num < -most) {
         rest.push(this.push({ op: 'number', args: [], value: total }));
         total = neutral;

@@ -66,7 +66,7 @@ describe('the evidence of a first fault', { timeout: 30_000 }, () => {
   });
 });
 
-describe('derivations over all topics', { timeout: 60_000 }, () => {
+describe('derivations over all topics', { timeout: 120_000 }, () => {
   const rows = handMends.map((row, k) => {
     const settings = { numbers: row.numbers, ...(row.goal ? { unknown: row.goal } : {}) };
     const verdict = checkDerivation({ lines: row.lines, assume: row.assume, settings });

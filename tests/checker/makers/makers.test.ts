@@ -1,3 +1,4 @@
+import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { makeFaulty, makeSound, type MakerTask } from '../../../api/checker/makers/make-faulty.ts';
 import { makePractice } from '../../../api/checker/makers/make-practice.ts';
@@ -90,5 +91,47 @@ describe('practice', { timeout: 120_000 }, () => {
       const input = { lines, assume: given?.assumptions ?? [], settings: { ...given?.settings, goal: given?.goal } };
       expect(checkDerivation(input)).toMatchObject({ outcome: 'faulty', firstFault: made?.firstFault });
     }
+  });
+});
+
+describe('practice of systems, quadratic inequalities and trigonometric equations', { timeout: 240_000 }, () => {
+  const questions = fc.record({
+    topic: fc.constantFrom<PracticeTopic>('systems', 'quadratic-inequalities', 'trigonometric-equations'),
+    level: fc.constantFrom<1 | 2 | 3>(1, 2, 3),
+    withSlip: fc.boolean(),
+    seed: fc.integer({ min: 0, max: 1_000_000 }),
+  });
+
+  it('is what it says for any seed, and the same for the same one', () => {
+    fc.assert(
+      fc.property(questions, (question) => {
+        const made = makePractice(question);
+        expect(made).not.toBeNull();
+        expect(makePractice(question)).toEqual(made);
+        const { lines = [], task: given, slip = null, firstFault = null } = made ?? {};
+        const settings = { ...given?.settings, goal: given?.goal };
+        const verdict = checkDerivation({ lines, assume: given?.assumptions ?? [], settings });
+        expect(slip !== null).toBe(question.withSlip);
+        expect(verdict).toMatchObject({ outcome: question.withSlip ? 'faulty' : 'sound', firstFault });
+        if (firstFault === null) return;
+        expect(verdict.steps[firstFault - 1]?.evidence.slip?.id).toBe(slip);
+        expect(verdict.steps.slice(firstFault).every(({ ruling }) => ruling === 'holds')).toBe(true);
+      }),
+      { seed: 23, numRuns: 24 },
+    );
+  });
+
+  it.each<[string, MakerTask['goal'], readonly string[], string]>([
+    [r`x+2y=8,\ 3x-y=3`, { kind: 'free' }, [], r`x=2\text{ and }y=3`],
+    ['x^2-x<6', forX, [], '-2<x<3'],
+    ['x^2>4x', forX, [], r`x<0\text{ or }x>4`],
+    [
+      r`2\sin^2 x=\sin x`,
+      forX,
+      [r`0\le x<2\pi`],
+      r`x=0\text{ or }x=\pi\text{ or }x=\frac{\pi}{6}\text{ or }x=\frac{5\pi}{6}`,
+    ],
+  ])('leads from %s to the end', (given, goal, assumptions, last) => {
+    expect(makeSound({ given, goal, assumptions, settings: {} })?.lines.at(-1)).toBe(last);
   });
 });

@@ -42,7 +42,7 @@ describe('the catalogue', () => {
   });
 });
 
-describe('naming a slip', { timeout: 30_000 }, () => {
+describe('naming a slip', { timeout: 120_000 }, () => {
   const failing = document.cases.filter(({ entry }) => !noFault.has(entry));
 
   it('names the right one for every documented mistake that is a fault', () => {
