@@ -2,6 +2,7 @@ import type { CheckContext } from '../context.ts';
 import type { RealNumber } from '../solving/real-number.ts';
 import { comparesOf, isListOfValues, type Statement } from '../statements/statement.ts';
 import { judgeApproximation } from './approximation.ts';
+import { judgePlane } from './complex-plane.ts';
 import { judgeComplexStep } from './complex-step.ts';
 import { isolatedLetter, judgeAsLetter, judgeFormula, nearlyIsolatedLetter } from './formula.ts';
 import { isPutIn } from './put-in.ts';
@@ -25,7 +26,7 @@ export function judgeStatements(question: StatementQuestion): StatementAnswer {
   const letters = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter(
     (n) => !families.has(n),
   );
-  if (context.numbers === 'complex') return withoutCandidates(judgeComplexStep(question, letters));
+  if (context.numbers === 'complex') return withoutCandidates(judgeComplex(question, letters));
   if (isSystem(question)) return withoutCandidates(judgeSystemStep(question));
   const letter = letters.length === 1 ? (letters[0] as string) : chooseUnknown(question, letters);
   if (letter === null)
@@ -63,6 +64,12 @@ function judgeForAny(question: StatementQuestion, letters: readonly string[]): S
     first ??= found;
   }
   return first ?? undecided('no-unknown');
+}
+
+/** By roots where the line is about one letter, else by real and imaginary parts. */
+function judgeComplex(question: StatementQuestion, letters: readonly string[]): StepResult {
+  const found = judgeComplexStep(question, letters);
+  return found.ruling === 'undecided' ? (judgePlane(question, judgeStatements) ?? found) : found;
 }
 
 function withoutCandidates(result: StepResult): StatementAnswer {

@@ -140,6 +140,8 @@ function freshDefinition(line: Line, question: StepQuestion): Extract<Line, { ki
   if (rateNamed(name) !== null) return null;
   const { context, from } = question;
   const used = [...metLetters(question), ...(from?.kind === 'expression' ? lettersOf(from.expr) : [])];
+  if (from?.kind === 'statement' && isSplit(name, line.right, used, context))
+    return { kind: 'definition', name, params: [], value: line.right, span: line.span };
   if (from === null || used.includes(name) || context.definitions.letters.has(name)) return null;
   const right = toStatement({ kind: 'relation', left: line.right, sign: '=', right: line.right, span: line.span });
   const letters = right ? freeLetters(right, context) : [];
@@ -147,6 +149,19 @@ function freshDefinition(line: Line, question: StepQuestion): Extract<Line, { ki
   return isKnown && !letters.includes(name)
     ? { kind: 'definition', name, params: [], value: line.right, span: line.span }
     : null;
+}
+
+/** z = x + yi, with two letters that were not met before, among complex numbers. */
+function isSplit(name: string, value: Expr, used: readonly string[], { numbers, definitions }: CheckContext): boolean {
+  const letters = lettersOf(value);
+  if (numbers !== 'complex' || !used.includes(name) || definitions.letters.has(name)) return false;
+  const isNew = letters.length === 2 && letters.every((letter) => !used.includes(letter));
+  const terms = value.kind === 'sum' ? value.terms.map((term) => term.expr) : [];
+  return isNew && terms.length === 2 && terms.some((term) => hasUnit(term)) && terms.some((term) => !hasUnit(term));
+}
+
+function hasUnit(expr: Expr): boolean {
+  return (expr.kind === 'constant' && expr.name === 'i') || childrenOf(expr).some(hasUnit);
 }
 
 /** A statement without letters: a true one is a remark (rule 6c), a false one is judged as what it claims. */
