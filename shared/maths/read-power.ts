@@ -98,6 +98,9 @@ function readFunctionPower(name: string, exponent: Expr, from: number): Expr {
   next();
   const args = readItems(')');
   const place = span(from);
+  // f^{(3)}(x) is the third derivative.
+  if (exponent.bracketed && exponent.kind === 'number' && exponent.denominator === 1n && exponent.numerator < 10n)
+    return { kind: 'apply', name, primes: Number(exponent.numerator), args, span: place };
   if (isMinusOne(exponent)) return { kind: 'apply', name: `${name}^{-1}`, primes: 0, args, span: place };
   return { kind: 'power', base: { kind: 'apply', name, primes: 0, args, span: place }, exponent, span: place };
 }

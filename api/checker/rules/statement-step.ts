@@ -9,6 +9,7 @@ import { isPutIn } from './put-in.ts';
 import { judgeSameEquation } from './same-equation.ts';
 import { freeLetters } from './meaning.ts';
 import { judgeOneLetter } from './one-letter.ts';
+import { judgeUndetermined } from './undetermined.ts';
 import { undecided, type StepResult } from './step-result.ts';
 import type { StatementQuestion } from './statement-question.ts';
 import { isSystem, judgeSystemStep } from './system-step.ts';
@@ -27,6 +28,8 @@ export function judgeStatements(question: StatementQuestion): StatementAnswer {
     (n) => !families.has(n),
   );
   if (context.numbers === 'complex') return withoutCandidates(judgeComplex(question, letters));
+  const identity = letters.some(isCapital) && letters.length > 1 ? judgeUndetermined(question, judgeStatements) : null;
+  if (identity) return withoutCandidates(identity);
   if (isSystem(question)) return withoutCandidates(judgeSystemStep(question));
   const letter = letters.length === 1 ? (letters[0] as string) : chooseUnknown(question, letters);
   if (letter === null)
@@ -70,6 +73,10 @@ function judgeForAny(question: StatementQuestion, letters: readonly string[]): S
 function judgeComplex(question: StatementQuestion, letters: readonly string[]): StepResult {
   const found = judgeComplexStep(question, letters);
   return found.ruling === 'undecided' ? (judgePlane(question, judgeStatements) ?? found) : found;
+}
+
+function isCapital(name: string): boolean {
+  return name >= 'A' && name < '[';
 }
 
 function withoutCandidates(result: StepResult): StatementAnswer {
