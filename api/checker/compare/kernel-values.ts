@@ -1,9 +1,18 @@
-import { addForms, constantForm, imaginaryAtom, keyOfForm, mulForms } from '../numbers/form.ts';
+import { imaginaryAtom, keyOfForm, mulForms } from '../numbers/form.ts';
 import type { Form, Monomial } from '../numbers/form.ts';
 import { addMod, bigMod, imaginaryMod, inverseMod, mulMod, negateMod, powMod, sqrtMod } from '../numbers/modular.ts';
 import type { Random } from '../numbers/random.ts';
 import * as Q from '../numbers/rational.ts';
 import type { GraphNode } from '../values/graph.ts';
+import {
+  circularNames,
+  hyperbolicNames,
+  isWritten,
+  oneForm,
+  primitiveRoot,
+  scaled,
+  splitOffset,
+} from './kernel-forms.ts';
 import { imaginaryForm, isArc, radicandOfArc } from './kernel-plan.ts';
 import type { KernelPlan } from './kernel-plan.ts';
 import type { Atom, Forms } from './normal-forms.ts';
@@ -150,8 +159,8 @@ class KernelResidues implements KernelValues {
         return 1 + this.random(this.p - 1);
     }
   }
-  /** e to a form whose monomials all have a generator. */
 
+  /** e to a form whose monomials all have a generator. */
   private expValue(form: Form): number {
     let product = 1;
     for (const [key, monomial] of form) {
@@ -195,8 +204,8 @@ class KernelResidues implements KernelValues {
       this.p,
     );
   }
-  /** t with t^degree = |f|. */
 
+  /** t with t^degree = |f|. */
   private rootOfSize(of: number | bigint, degree: number, key: string): number {
     if (typeof of === 'bigint') return this.surd(of, degree);
     const atom = this.forms.atoms[of];
@@ -209,8 +218,8 @@ class KernelResidues implements KernelValues {
     const turn = this.choice.get(`root ${key}`) ?? 0;
     return turn === 0 ? root : mulMod(root, powMod(this.unityRoot(twos), turn, this.p), this.p);
   }
-  /** Square roots of 2, 3 and 5 lie among the roots of unity and have to agree with them. */
 
+  /** Square roots of 2, 3 and 5 lie among the roots of unity and have to agree with them. */
   private surd(prime: bigint, degree: number): number {
     if (!this.plan.turns || degree === 1 || prime > 5n) return this.rootMod(bigMod(prime, this.p), degree);
     if (degree !== 2) return this.fail();
@@ -305,8 +314,8 @@ class KernelResidues implements KernelValues {
         return this.opaqueValue(index);
     }
   }
-  /** A base that may be negative: the powers with a letter of the exponent are quantities of their own. */
 
+  /** A base that may be negative: the powers with a letter of the exponent are quantities of their own. */
   private powNode(node: Extract<GraphNode, { op: 'pow' }>, index: number): number {
     const [base, top] = node.args;
     const exponent = this.forms.formOf(top);
@@ -343,8 +352,8 @@ class KernelResidues implements KernelValues {
     if (offset >= 0) return mulMod(start, this.productOfShifts(value, 1, offset), this.p);
     return mulMod(start, this.inverse(this.productOfShifts(value, offset + 1, 0)), this.p);
   }
-  /** (value+from) ... (value+to) */
 
+  /** (value+from) ... (value+to) */
   private productOfShifts(value: number, from: number, to: number): number {
     let product = 1;
     for (let k = from; k <= to; k += 1)
@@ -381,44 +390,4 @@ class KernelResidues implements KernelValues {
     if (node.name === 'factorial') return this.factorialNode(form, index);
     return this.opaqueValue(index);
   }
-}
-
-const oneForm: Form = new Map([['', { coefficient: Q.one, powers: [] }]]);
-const circularNames = new Set(['sin', 'cos', 'tan', 'cot', 'sec', 'csc']);
-const hyperbolicNames = new Set(['sinh', 'cosh', 'tanh', 'coth', 'sech', 'csch']);
-
-function scaled(form: Form, factor: Q.Rational): Form {
-  return new Map([...form].map(([key, term]) => [key, { ...term, coefficient: Q.mul(term.coefficient, factor) }]));
-}
-
-/** A form as a whole number plus a rest whose constant lies in [0, 1). */
-function splitOffset(form: Form): { offset: number | null; rest: Form; key: string } {
-  const constant = form.get('')?.coefficient ?? Q.zero;
-  const whole = Q.floor(constant);
-  const rest = addForms(form, constantForm({ num: -whole, den: 1n })) ?? form;
-  return { offset: whole > 3_000n || whole < -60n ? null : Number(whole), rest, key: keyOfForm(rest) };
-}
-
-/** Whether a node's residue follows from generators rather than being a quantity of its own. */
-function isWritten(node: GraphNode, complex: boolean): boolean {
-  if (node.op === 'root' || node.op === 'pow') return !complex;
-  if (node.op !== 'call') return false;
-  if (node.name === 'abs' || node.name === 'log') return !complex;
-  return (
-    node.name === 'exp' || node.name === 'factorial' || circularNames.has(node.name) || hyperbolicNames.has(node.name)
-  );
-}
-
-function primitiveRoot(p: number): number {
-  const factors: number[] = [];
-  let rest = p - 1;
-  for (let q = 2; q * q <= rest; q += 1) {
-    if (rest % q !== 0) continue;
-    factors.push(q);
-    while (rest % q === 0) rest /= q;
-  }
-  if (rest > 1) factors.push(rest);
-  let g = 2;
-  while (factors.some((q) => powMod(g, (p - 1) / q, p) === 1)) g += 1;
-  return g;
 }

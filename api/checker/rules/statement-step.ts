@@ -5,6 +5,7 @@ import { judgeApproximation } from './approximation.ts';
 import { judgePlane } from './complex-plane.ts';
 import { judgeComplexStep } from './complex-step.ts';
 import { isolatedLetter, judgeAsLetter, judgeFormula, nearlyIsolatedLetter } from './formula.ts';
+import { withEntries } from './matrix-equations.ts';
 import { isPutIn } from './put-in.ts';
 import { judgeSameEquation } from './same-equation.ts';
 import { freeLetters } from './meaning.ts';
@@ -21,7 +22,8 @@ export interface StatementAnswer extends StepResult {
 }
 
 /** Rules 2 to 4, 6 and 9 on two statements; throws Unsettled. */
-export function judgeStatements(question: StatementQuestion): StatementAnswer {
+export function judgeStatements(asked: StatementQuestion): StatementAnswer {
+  const question = withEntries(asked) ?? asked;
   const { above, below, context } = question;
   const families = findFamilies(question);
   const letters = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter(
