@@ -29,7 +29,7 @@ function* shapesOf(node: Expr, tex: string): Generator<Shape> {
     case 'product':
       yield* productAsSum(node);
       yield* factorBelow(node, tex);
-      yield* squared(node);
+      yield* squared(node, tex);
       return;
     case 'quotient':
       yield* turnedOver(node, tex);
@@ -38,7 +38,7 @@ function* shapesOf(node: Expr, tex: string): Generator<Shape> {
     case 'sum':
       yield* lastTermBelow(node);
       yield* exchanged(node, tex);
-      yield* squared(node);
+      yield* squared(node, tex);
       return;
     case 'call':
     case 'log':
@@ -101,12 +101,10 @@ function* factorBelow(node: Extract<Expr, { kind: 'product' }>, tex: string): Ge
 }
 
 /** A sum or product that should have been squared. */
-function* squared(node: Expr): Generator<Shape> {
+function* squared(node: Expr, tex: string): Generator<Shape> {
   const { start, end } = outer(node);
-  const isBare = !node.bracketed;
-  const edits: Edit[] = [{ start: end, end, text: isBare ? ')^2' : '^2' }];
-  if (isBare) edits.unshift({ start, end: start, text: '(' });
-  yield { by: power(node, whole(2)), edits, cost: 1.35 };
+  const edit = node.bracketed ? { start: end, end, text: '^2' } : { start, end, text: `(${tex.slice(start, end)})^2` };
+  yield { by: power(node, whole(2)), edits: [edit], cost: 1.35 };
 }
 
 /** b - a for a - b. */

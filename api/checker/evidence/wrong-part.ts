@@ -16,8 +16,11 @@ export function findWrongPart({ tex, line, settings }: MendQuestion, mended: Men
   if (mended.isRewritten) return null;
   const { decimal, numbers } = settings;
   const sign = changedSign(line, mended);
-  const parts = sign ? [sign] : [...termsOfLine(tex, { decimal, numbers }), ...sidesOf(line)];
-  const span = parts.find((part) => mended.edits.every((edit) => isWithin(edit, part)));
+  const parts = sign ? [sign] : [...termsOfLine(tex, { decimal, numbers }), ...fractionParts(line), ...sidesOf(line)];
+  const holdsAll = (part: Span): boolean => mended.edits.every((edit) => isWithin(edit, part));
+  const found = parts.find(holdsAll);
+  const inner = exprsOf(line).flatMap(innerParts).filter(holdsAll);
+  const span = sign ? found : (inner.sort((a, b) => lengthOf(a) - lengthOf(b))[0] ?? found);
   if (!span) return null;
   const is = tex.slice(span.start, span.end).trim();
   const end = mended.tex.length - (tex.length - span.end);
@@ -42,6 +45,29 @@ function isOneOfSeveral(expr: Expr, span: Span): boolean {
 function isWithin(edit: Edit, part: Span): boolean {
   if (edit.start === edit.end && (edit.start === part.end || /^[+-]|=/.test(edit.text))) return false;
   return edit.start >= part.start && edit.end <= part.end;
+}
+
+function lengthOf({ start, end }: Span): number {
+  return end - start;
+}
+
+/** Numerators and denominators as a whole. */
+function fractionParts(line: Line): Span[] {
+  const within = (expr: Expr): Span[] => [
+    ...(expr.kind === 'quotient' ? [outer(expr.numerator), outer(expr.denominator)] : []),
+    ...childrenOf(expr).flatMap(within),
+  ];
+  return exprsOf(line).flatMap(within);
+}
+
+/** What stands inside a limit, an integral, a sum or brackets of evaluation, and the entries of a matrix: term by term. */
+function innerParts(expr: Expr): Span[] {
+  const isFrame = ['limit', 'integral', 'series', 'evaluated', 'matrix'].includes(expr.kind);
+  const parts = childrenOf(expr);
+  const own = isFrame
+    ? parts.flatMap((part) => [outer(part), ...(part.kind === 'sum' ? part.terms.map((term) => term.span) : [])])
+    : [];
+  return [...own, ...parts.flatMap(innerParts)];
 }
 
 function sidesOf(line: Line): Span[] {

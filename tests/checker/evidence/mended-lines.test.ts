@@ -6,6 +6,8 @@ import { checkDerivation } from '../../../api/checker/rule-derivation.ts';
 import { handMends } from './hand-mends.ts';
 import document from './mended-lines.json';
 
+const r = String.raw;
+
 /** One spelling for lines that read the same. */
 function canonical(tex: string, numbers: 'real' | 'complex' = 'real'): string {
   const reading = readLine(tex, { numbers, decimal: 'point', functions: [] });
@@ -39,6 +41,22 @@ describe('the evidence of a first fault', { timeout: 30_000 }, () => {
     expect(mended).toEqual({ line: '3x-7-9x+21', changed: [{ start: 7, end: 8 }] });
     expect(difference).toBe('42');
     expect(slip?.kind).toBe('sign');
+  });
+
+  it.each([
+    ['one side', '5(x-2)=3x+4', '5x-2=3x+4', '-2', '-10'],
+    ['a term of a numerator', r`\frac{4}{n}-\frac{n-2}{n}`, r`\frac{4-n-2}{n}`, '-2', '+2'],
+    ['a denominator', r`\frac{d}{dx}\frac{x}{x^2+1}`, r`\frac{x^2+1-x\cdot2x}{x^2+1}`, 'x^2+1', '(x^2+1)^2'],
+    ['a factor', '(x-2)(x+7)', '(x+2)(x+7)', '+2', '-2'],
+    ['inside a limit', r`\lim_{x\to2}\frac{(x-2)(x+2)}{x-2}`, r`\lim_{x\to2}(x-2)`, '-2', '+2'],
+    ['inside brackets of evaluation', r`\int_0^2(3x^2+1)\,dx`, '[x^3+1]_0^2', '+1', '+x'],
+    ['one case', '2x-1=7\\text{ or }2x-1=-7', r`2x=8\text{ or }2x=-8`, '-8', '-6'],
+    ['one value of a system', r`2x+y=7,\ x-y=2`, r`x=3,\ y=-1`, '-1', '1'],
+    ['a rounded value', r`7\pi`, r`\approx21.98`, '21.98', '21.99'],
+  ])('says what is wrong in %s', (_, above, below, is, shouldBe) => {
+    const { wrongPart } = evidenceOf([above, below], 1);
+    expect(wrongPart).toMatchObject({ is, shouldBe });
+    expect(below.slice(wrongPart?.span.start, wrongPart?.span.end)).toBe(is);
   });
 
   it('names no single part where a term is missing or several are wrong', () => {
