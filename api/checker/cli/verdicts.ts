@@ -38,8 +38,9 @@ async function toOutput(
 ): Promise<string> {
   const { outcome, firstFault, steps, ms, explainMs } = await pool.check(parsed.input);
   const verdict: Verdict = { outcome, firstFault, steps };
-  if (explain) return `${parsed.id ?? '-'}: ${explainVerdict(parsed.input, verdict)}\n`;
-  return JSON.stringify({ id: parsed.id, ...verdict, ms: inThousandths(ms), explainMs: inThousandths(explainMs) });
+  if (!explain) return JSON.stringify({ id: parsed.id, ...verdict, ms: inThousandths(ms) });
+  const took = `Ruled in ${inThousandths(ms)} ms, explained in ${inThousandths(explainMs)} ms.`;
+  return `${parsed.id ?? '-'}: ${explainVerdict(parsed.input, verdict)}\n${took}\n`;
 }
 
 function inThousandths(ms: number): number {

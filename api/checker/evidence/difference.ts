@@ -6,7 +6,8 @@ import type { CheckContext } from '../context.ts';
 import { suggestForm } from '../suggest/suggest-form.ts';
 import { neg, sum, termsOf } from './build.ts';
 import { expanded, spread, sumExpr } from './monomials.ts';
-import { overOneDenominator, workOut } from './worked-out.ts';
+import { overOneDenominator } from './one-denominator.ts';
+import { workOut } from './worked-out.ts';
 
 const mostTerms = 6;
 const longest = 80;

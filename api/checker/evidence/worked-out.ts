@@ -3,12 +3,13 @@ import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import { mapExpr } from '../../../shared/maths/walk.ts';
 import type { CheckContext } from '../context.ts';
-import { fraction, letter, neg, product, quotient, sum, termsOf, whole } from './build.ts';
+import { fraction, letter, neg, product, sum, termsOf, whole } from './build.ts';
 import { signedTerm } from '../slips/relations.ts';
 import { antiderivative } from './antiderivative.ts';
 import { derive } from './derive.ts';
 import type { Candidate } from './edits.ts';
-import { collect, expanded, monomialExpr, spread, sumExpr, wholeValue } from './monomials.ts';
+import { expanded, monomialExpr, sumExpr, wholeValue } from './monomials.ts';
+import { overOneDenominator } from './one-denominator.ts';
 import { outer, type Aim, type MendQuestion } from './mend-question.ts';
 import { nextExpression } from '../makers/next-expression.ts';
 import { substituteLetter } from './substitute.ts';
@@ -162,21 +163,4 @@ function limitsOf(above: Expr, context: CheckContext): readonly [Expr, Expr] | n
   return (
     found && [substituteLetter(found, above.variable, above.to), substituteLetter(found, above.variable, above.from)]
   );
-}
-
-/** Fractions added over the product of their denominators, the numerator multiplied out. */
-export function overOneDenominator(above: Expr): Expr | null {
-  if (above.kind !== 'sum' || above.terms.length > 4) return null;
-  const parts = above.terms.map(({ sign, expr }) => {
-    const [top, bottom] = expr.kind === 'quotient' ? [expr.numerator, expr.denominator] : [expr, null];
-    return { top: sign === 'minus' ? neg(top) : top, bottom };
-  });
-  const denominators = parts.flatMap(({ bottom }) => (bottom ? [bottom] : []));
-  if (denominators.length === 0) return null;
-  const tops = parts.map(({ top, bottom }) => {
-    const others = denominators.filter((other) => other !== bottom);
-    return product(top, ...others);
-  });
-  const numerator = spread(sum(...tops));
-  return numerator && quotient(sum(...collect(numerator).map(monomialExpr)), product(...denominators));
 }

@@ -6,7 +6,7 @@ import { fraction, letter, neg, product, quotient, sum, termsOf, whole } from '.
 import { derive, integrate } from '../evidence/derive.ts';
 import { expanded, spread, sumExpr } from '../evidence/monomials.ts';
 import { substituteLetter } from '../evidence/substitute.ts';
-import { overOneDenominator } from '../evidence/worked-out.ts';
+import { overOneDenominator } from '../evidence/one-denominator.ts';
 import * as Q from '../numbers/rational.ts';
 import { coefficientsOf, inOrder, polynomialExpr, rationalRoots, withWholeCoefficients } from './polynomial-parts.ts';
 import { byRule } from './right-rules.ts';

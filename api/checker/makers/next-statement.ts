@@ -3,7 +3,7 @@ import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import { call, fraction, isZero, letter, neg, power, product, quotient, root, sum, whole } from '../evidence/build.ts';
 import { expanded, monomialExpr, spread, sumExpr, type Monomial } from '../evidence/monomials.ts';
-import { overOneDenominator } from '../evidence/worked-out.ts';
+import { overOneDenominator } from '../evidence/one-denominator.ts';
 import * as Q from '../numbers/rational.ts';
 import { factorsOf } from '../slips/match.ts';
 import { any, mirrored, relation, signedTerms, type Relation } from '../slips/relations.ts';
