@@ -1,4 +1,7 @@
 import type { Expr, Line } from '../../shared/maths/expression.ts';
+import { BudgetSpent, charge, workDone } from './numbers/work.ts';
+
+export { BudgetSpent };
 
 /** A function that the derivation introduced, such as f(x)=x^2. */
 export interface OwnFunction {
@@ -49,27 +52,22 @@ export interface Budget {
   readonly left: () => number;
 }
 
-/** Thrown by `spend` when nothing is left; caught where a step begins, which is then undecided. */
-export class BudgetSpent extends Error {
-  constructor() {
-    super('the operations allowed for this step are spent');
-    this.name = 'BudgetSpent';
-  }
-}
-
-/** One operation is about the work of one multiplication of two numbers of 192 bits. */
+/** All work that is done from here on counts, also that of budgets made later and that of the arithmetic itself. */
 export function createBudget(operations: number): Budget {
-  let left = operations;
+  let end = workDone() + operations;
   return {
     spend(count) {
-      left -= count;
-      if (left < 0) throw new BudgetSpent();
+      if (workDone() + count > end) {
+        end = -1;
+        throw new BudgetSpent();
+      }
+      charge(count);
     },
-    left: () => left,
+    left: () => end - workDone(),
   };
 }
 
-export const operationsPerStep = 400_000;
+export const operationsPerStep = 240_000;
 
 const noDefinitions: Definitions = { letters: new Map(), functions: new Map() };
 

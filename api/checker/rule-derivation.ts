@@ -1,8 +1,9 @@
 import type { DerivationInput, StepRuling, Verdict } from '../../shared/schemas/verdict.ts';
-import { BudgetSpent } from './context.ts';
+import { BudgetSpent, operationsPerStep } from './context.ts';
 import { addEvidence } from './evidence/add-evidence.ts';
 import { readDerivation, type ReadDerivation } from './read-derivation.ts';
 import { applyGoal } from './goals/apply-goal.ts';
+import { within } from './numbers/work.ts';
 import { joinCases } from './rules/cases.ts';
 import { putBrackets } from './rules/lost-brackets.ts';
 import { noteMiscopied } from './rules/miscopied.ts';
@@ -10,6 +11,9 @@ import { rejectCandidates } from './rules/candidates.ts';
 import { undecided, type StepResult } from './rules/step-result.ts';
 import { Unsettled } from './solving/unsettled.ts';
 import { judgeLine, passStep, planRoute, skipLine, startWalk, type Route, type WalkState } from './walk-derivation.ts';
+
+/** For each second look at a ruling: cases, lost brackets, candidates, the goal. */
+const operationsPerLook = 30_000;
 
 /** How a worker that is watched rules: without the steps that ran out of time before, telling where it is. */
 export interface Watch {
@@ -62,7 +66,7 @@ function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: W
       state = skipLine(state);
       continue;
     }
-    const found = judgeLine(route, state, step, line.line);
+    const found = within(operationsPerStep, () => judgeLine(route, state, step, line.line));
     if (found.result.evidence.reason === 'not-read') {
       rulings.push(notReadResult(route.read, step));
       state = found.state;
@@ -83,7 +87,7 @@ function ruleSteps(route: Route, watch: Watch): { rulings: StepResult[]; last: W
 /** A second look at a ruling is left out where it takes more work than is allowed; the ruling stands. */
 function unlessSpent<T>(look: () => T, otherwise: T): T {
   try {
-    return look();
+    return within(operationsPerLook, look);
   } catch (cause) {
     if (cause instanceof BudgetSpent || cause instanceof RangeError || cause instanceof Unsettled) return otherwise;
     throw cause;

@@ -1,7 +1,17 @@
 import type { CheckContext } from '../context.ts';
-import { addBalls, ballSign, divBalls, magnitude, negateBall, sqrtBall, type Ball } from '../numbers/ball.ts';
+import {
+  addBalls,
+  ballSign,
+  costOfStep,
+  divBalls,
+  magnitude,
+  negateBall,
+  sqrtBall,
+  type Ball,
+} from '../numbers/ball.ts';
 import { expBall, sinCosBall } from '../numbers/elementary.ts';
 import * as Q from '../numbers/rational.ts';
+import { charge } from '../numbers/work.ts';
 import { isKnown, isReal, toBall } from '../values/arithmetic.ts';
 import { evaluateNodes } from '../values/evaluate.ts';
 import type { Graph, GraphNode } from '../values/graph.ts';
@@ -25,7 +35,7 @@ export function taylorOf(
     const value = values[index];
     const head = value && isKnown(value) && isReal(value) ? toBall(value, bits).re : null;
     jets.push(head && jetOf(node, head, jets, { letter, order, bits }));
-    context.budget.spend(order >> 1);
+    context.budget.spend(order >> 2);
   }
   return jets[graph.root] ?? null;
 }
@@ -95,6 +105,7 @@ function convolved(
 ): Ball {
   let mid = 0n;
   let rad = 0n;
+  charge((k + 1 - first) * costOfStep(bits));
   for (let j = first; j <= k; j += 1) {
     const [x, y] = [a[j] as Ball, b[k - j] as Ball];
     if (x.mid === 0n && x.rad === 0n) continue;

@@ -2,6 +2,7 @@ import type { Line, RelationSign } from '../../../shared/maths/expression.ts';
 import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
 import type { Evidence, StepRuling, Verdict } from '../../../shared/schemas/verdict.ts';
 import { BudgetSpent, createBudget, type CheckContext } from '../context.ts';
+import { within } from '../numbers/work.ts';
 import { nameBetween, nameSlip } from '../slips/name-slip.ts';
 import { contextOf, judgeLine, type Route, type WalkState } from '../walk-derivation.ts';
 import { expressionsIn } from './aims.ts';
@@ -17,8 +18,11 @@ import { findWrongPart } from './wrong-part.ts';
 /** Later faults get less work than the first one. */
 const mostFaults = 3;
 
-/** Operations for each kind of evidence; of larger lines than this only single terms are looked at. */
-const allowed = { slip: 50_000, mend: 90_000, ending: 60_000, difference: 30_000 } as const;
+/**
+ * Operations for all that explains a fault, and for each kind of evidence; of larger lines than this only single terms
+ * are looked at.
+ */
+const allowed = { fault: 150_000, slip: 50_000, mend: 120_000, ending: 60_000, difference: 30_000 } as const;
 const mostNodes = 160;
 const largest = 900;
 
@@ -44,31 +48,44 @@ function explainFault(
   before: readonly WalkState[],
 ): Evidence {
   const state = before[fault.step];
+  if (!state) return {};
   const share = isFirst ? 1 : 0.25;
-  const within = (operations: number, find: (question: MendQuestion) => Evidence): Evidence => {
-    if (!state) return {};
-    const context: CheckContext = { ...contextOf(route, state), budget: createBudget(operations * share) };
-    const question = askAbout(fault, route, state, context);
-    return question && (!question.isLarge || operations === allowed.mend) ? attempt(() => find(question)) : {};
+  const question = attempt(() => askAbout(fault, route, state), null);
+  if (!question) return {};
+  const look = (operations: number, find: (question: MendQuestion) => Evidence): Evidence => {
+    if (question.isLarge && operations !== allowed.mend) return {};
+    const context = { ...question.context, budget: createBudget(operations * share) };
+    return attempt(() => find(asking(question, fault.step, route, state, context)), {});
   };
-  return {
-    ...within(allowed.slip, (question) => namedSlip(question, route)),
-    ...within(allowed.mend, (question) => mends(question, fault, isFirst, verdict, route, state as WalkState)),
-    ...within(allowed.difference, difference),
-  };
+  return within(allowed.fault * share, () => ({
+    ...look(allowed.slip, (asked) => namedSlip(asked, route)),
+    ...look(allowed.mend, (asked) => mends(asked, fault, isFirst, verdict, route, state)),
+    ...look(allowed.difference, difference),
+  }));
 }
 
 /** Nothing is better than something half looked at. */
-function attempt(find: () => Evidence): Evidence {
+function attempt<T>(find: () => T, otherwise: T): T {
   try {
     return find();
   } catch (cause) {
-    if (cause instanceof BudgetSpent || cause instanceof RangeError) return {};
+    if (cause instanceof BudgetSpent || cause instanceof RangeError) return otherwise;
     throw cause;
   }
 }
 
-function askAbout(fault: StepRuling, route: Route, state: WalkState, context: CheckContext): MendQuestion | null {
+/** The same question, to be answered within the budget of the context. */
+function asking(
+  question: MendQuestion,
+  step: number,
+  route: Route,
+  state: WalkState,
+  context: CheckContext,
+): MendQuestion {
+  return { ...question, context, holds: (line) => followsPlainly(judgeLine(route, state, step, line, context), state) };
+}
+
+function askAbout(fault: StepRuling, route: Route, state: WalkState): MendQuestion | null {
   const own = route.read.lines[fault.step];
   const above = lineAbove(route, state, fault.step);
   const size = own?.ok && above ? sizeOf(own.line) + sizeOf(above.line) : Infinity;
@@ -87,8 +104,8 @@ function askAbout(fault: StepRuling, route: Route, state: WalkState, context: Ch
     lost: evidence.lost ?? [],
     gained: evidence.gained ?? [],
     settings: route.read.settings,
-    context,
-    holds: (line) => followsPlainly(judgeLine(route, state, fault.step, line, context), state),
+    context: contextOf(route, state),
+    holds: () => false,
   };
 }
 
@@ -96,7 +113,8 @@ function askAbout(fault: StepRuling, route: Route, state: WalkState, context: Ch
 function solutionsOf(above: Line, route: Route, state: WalkState, step: number): string | null {
   const signs = signsOf(above);
   if (signs.length === 0 || signs.includes('=')) return null;
-  return judgeLine(route, state, step, above).result.evidence.solutions ?? null;
+  const judged = within(allowed.slip, () => judgeLine(route, state, step, above));
+  return judged.result.evidence.solutions ?? null;
 }
 
 function signsOf(line: Line): readonly RelationSign[] {
@@ -156,7 +174,7 @@ function mends(
     const context = { ...question.context, budget: createBudget(allowed.ending) };
     const lines = carryOn(route, state, fault.step, mended, verdict.steps, context);
     return lines ? { mendedEnding: lines } : {};
-  });
+  }, {});
   return { ...found, ...ending };
 }
 

@@ -136,7 +136,7 @@ const aimOperations = 50_000;
 
 /** What was found before the work on one aim ran out. */
 function limited(aim: Aim, find: (own: Aim) => Iterable<Candidate>): Candidate[] {
-  const budget = createBudget(Math.min(aimOperations, Math.max(0, aim.budget.left())));
+  const budget = createBudget(Math.min(aimOperations, Math.max(0, aim.budget.left() / 2)));
   const found: Candidate[] = [];
   try {
     for (const candidate of find({ ...aim, budget })) found.push(candidate);

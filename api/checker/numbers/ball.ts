@@ -1,5 +1,6 @@
 import { bitLength, wholeRoot } from './rational.ts';
 import type { Rational } from './rational.ts';
+import { charge, chargeProduct } from './work.ts';
 
 /**
  * A real number known to within a radius, in fixed point: (mid +- rad) / 2^bits, where `bits` is passed along by the
@@ -12,7 +13,16 @@ export interface Ball {
 
 export function ballFromRational(value: Rational, bits: number): Ball {
   const scaled = value.num << BigInt(bits);
-  return value.den === 1n ? { mid: scaled, rad: 0n } : { mid: scaled / value.den, rad: 1n };
+  if (value.den === 1n) return { mid: scaled, rad: 0n };
+  chargeLength(scaled);
+  return { mid: scaled / value.den, rad: 1n };
+}
+
+const longMiddle = 1n << 1_000n;
+
+/** Counts work on a number that is much longer than balls are as a rule. */
+function chargeLength(value: bigint): void {
+  if (value > longMiddle || value < -longMiddle) chargeProduct(2 * bitLength(value));
 }
 
 export function addBalls(a: Ball, b: Ball): Ball {
@@ -31,9 +41,16 @@ export function magnitude(value: bigint): bigint {
   return value < 0n ? -value : value;
 }
 
+/** A multiplication of two balls of size about 1. */
+export function costOfStep(bits: number): number {
+  return 0.3 + (bits / 256) ** 1.6 / 4;
+}
+
 export function mulBalls(a: Ball, b: Ball, bits: number): Ball {
   const shift = BigInt(bits);
+  charge(costOfStep(bits));
   const mid = (a.mid * b.mid) >> shift;
+  chargeLength(mid);
   if (a.rad === 0n && b.rad === 0n) return { mid, rad: 1n };
   const spread = magnitude(a.mid) * b.rad + magnitude(b.mid) * a.rad + a.rad * b.rad;
   return { mid, rad: (spread >> shift) + 2n };
@@ -45,7 +62,9 @@ export function divBalls(a: Ball, b: Ball, bits: number): Ball | null {
   const low = size - b.rad;
   if (low <= 0n) return null;
   const shift = BigInt(bits);
+  charge(2 * costOfStep(bits));
   const mid = (a.mid << shift) / b.mid;
+  chargeLength(mid);
   if (a.rad === 0n && b.rad === 0n) return { mid, rad: 1n };
   // |a/b - mid| <= (rad_a + |a/b| rad_b) / low
   const spread = (a.rad << shift) + magnitude(mid) * b.rad + b.rad;

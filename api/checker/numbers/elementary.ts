@@ -11,6 +11,7 @@ import {
 } from './ball.ts';
 import type { Ball } from './ball.ts';
 import { bitLength } from './rational.ts';
+import { charge, costOfProduct } from './work.ts';
 
 /** Exponentials, logarithms and circular functions of balls by their Taylor series after reduction of the argument. */
 
@@ -90,6 +91,7 @@ function expReduced(x: bigint, bits: number): bigint {
   const halvings = 8 + (bits >> 6);
   const extra = halvings + 8;
   const scale = BigInt(bits + extra);
+  chargeSteps(bits, 1.5 * (halvings + bits / (halvings + 4)));
   const small = (x << BigInt(extra)) >> BigInt(halvings);
   let term = small;
   let total = small;
@@ -100,6 +102,11 @@ function expReduced(x: bigint, bits: number): bigint {
   // expm1 doubles without losing the small part: e^2x - 1 = (e^x - 1)^2 + 2 (e^x - 1).
   for (let k = 0; k < halvings; k += 1) total = ((total * total) >> scale) + 2n * total;
   return (total + (1n << scale)) >> BigInt(extra);
+}
+
+/** Counts so many steps of a series or of a doubling, of which each has one multiplication. */
+function chargeSteps(bits: number, steps: number): void {
+  charge(steps * (0.3 + 1.4 * costOfProduct(2 * bits)));
 }
 
 function shiftBy(value: bigint, places: number): bigint {
@@ -127,6 +134,7 @@ export function lnBall(a: Ball, bits: number): Ball | null {
 
 /** ln(1+x) by its series, for a small x. */
 function log1p(x: bigint, bits: number): bigint {
+  chargeSteps(bits, bits / 25);
   const scale = BigInt(bits);
   let power = x;
   let total = x;
@@ -151,6 +159,7 @@ export function sinCosBall(a: Ball, bits: number): SineCosine | null {
     return { sin: { mid: 0n, rad: 1n << BigInt(bits) }, cos: { mid: 0n, rad: 1n << BigInt(bits) } };
   const half = pi >> BigInt(constantBits - wide + 1);
   const x = a.mid << BigInt(wide - bits);
+  if (size > 500) chargeSteps(wide, 4);
   const turns = (2n * x + half) / (2n * half) - (2n * x + half < 0n ? 1n : 0n);
   const reduced = (x - turns * half) >> BigInt(size);
   const { sin, cos } = sinCosReduced(reduced, bits + 24);
@@ -168,6 +177,7 @@ function sinCosReduced(x: bigint, bits: number): { sin: bigint; cos: bigint } {
   const halvings = 6 + (bits >> 7);
   const extra = halvings + 8;
   const scale = BigInt(bits + extra);
+  chargeSteps(bits, 2 * (halvings + bits / (halvings + 4)));
   const small = (x << BigInt(extra)) >> BigInt(halvings);
   const square = (small * small) >> scale;
   let sin = small;
@@ -215,6 +225,7 @@ export function arctanBall(a: Ball, bits: number): Ball | null {
 }
 
 function arctanSeries(x: bigint, bits: number): bigint {
+  chargeSteps(bits, bits / 50);
   const scale = BigInt(bits);
   const square = (x * x) >> scale;
   let power = x;

@@ -1,4 +1,5 @@
 import { toNumber } from '../numbers/rational.ts';
+import { charge } from '../numbers/work.ts';
 import type { CallName, Graph, GraphNode } from '../values/graph.ts';
 
 /** Evaluates a graph in doubles; NaN where there is no real value. For guesses only, never for a ruling. */
@@ -12,7 +13,9 @@ export function toDoubleFunction(graph: Graph, letter: string, given: ReadonlyMa
     if (node.op === 'number') values[index] = toNumber(node.value);
     else if (needed.has(index)) steps.push({ node, index });
   });
+  const cost = 0.1 + steps.reduce((sum, { node }) => sum + (node.op === 'call' ? 0.25 : 0.08), 0);
   return (x) => {
+    charge(cost);
     for (const { node, index } of steps) values[index] = valueOf(node, values, letter, given, x);
     return values[graph.root] ?? Number.NaN;
   };

@@ -1,5 +1,6 @@
 import { addMod, bigMod, inverseMod, mulMod, negateMod, primes } from '../numbers/modular.ts';
-import { gcd, type Rational } from '../numbers/rational.ts';
+import { bitLength, gcd, type Rational } from '../numbers/rational.ts';
+import { charge, costOfProduct } from '../numbers/work.ts';
 
 /** Whole coefficients, lowest power first, no zero at the end; the zero polynomial is empty. */
 export type Polynomial = readonly bigint[];
@@ -34,8 +35,26 @@ export function subtractPolynomials(a: Polynomial, b: Polynomial): Polynomial {
   return addPolynomials(a, scalePolynomial(b, -1n));
 }
 
+/** The bits of the longest coefficient; 0 where all are short. */
+function longestBits(p: Polynomial): number {
+  let longest = 0n;
+  for (const c of p) {
+    if (c > longest) longest = c;
+    else if (-c > longest) longest = -c;
+  }
+  return longest < shortCoefficient ? 0 : bitLength(longest);
+}
+
+const shortCoefficient = 1n << 128n;
+
+/** Counts so many products of the coefficients of two polynomials. */
+function chargeProducts(count: number, a: Polynomial, b: Polynomial): void {
+  charge(count * (0.25 + costOfProduct(longestBits(a) + longestBits(b))));
+}
+
 export function multiplyPolynomials(a: Polynomial, b: Polynomial): Polynomial {
   if (a.length === 0 || b.length === 0) return [];
+  chargeProducts(a.length * b.length, a, b);
   const result = Array.from({ length: a.length + b.length - 1 }, () => 0n);
   a.forEach((x, i) => {
     if (x === 0n) return;
@@ -81,6 +100,7 @@ function pseudoRemainder(a: Polynomial, b: Polynomial): Polynomial {
     const top = rest[rest.length - 1] ?? 0n;
     const shift = rest.length - b.length;
     const factor = lead < 0n ? -top : top;
+    charge((rest.length + b.length) * (0.25 + costOfProduct(bitLength(top) + bitLength(lead))));
     for (let k = 0; k < rest.length; k += 1) rest[k] = (rest[k] ?? 0n) * size;
     b.forEach((c, k) => {
       rest[k + shift] = (rest[k + shift] ?? 0n) - factor * c;
@@ -98,6 +118,7 @@ function areCoprimeModulo(a: Polynomial, b: Polynomial, prime: number): boolean 
   let x = a.map((c) => bigMod(c, prime));
   let y = b.map((c) => bigMod(c, prime));
   if (x[x.length - 1] === 0 || y[y.length - 1] === 0) return false;
+  charge((x.length * y.length) / 20);
   while (y.length > 1) [x, y] = [y, remainderModulo(x, y, prime)];
   return y.length === 1;
 }
@@ -145,6 +166,7 @@ export function dividePolynomials(a: Polynomial, b: Polynomial): Polynomial | nu
   const quotient = Array.from({ length: a.length - b.length + 1 }, () => 0n);
   for (let shift = a.length - b.length; shift >= 0; shift -= 1) {
     const factor = (rest[shift + b.length - 1] ?? 0n) / lead;
+    charge(b.length * (0.25 + costOfProduct(bitLength(factor) + bitLength(lead))));
     quotient[shift] = factor;
     b.forEach((c, k) => {
       rest[k + shift] = (rest[k + shift] ?? 0n) - factor * c;
@@ -164,6 +186,8 @@ export function squareFreePart(p: Polynomial): Polynomial {
 export function scaledValueAt(p: Polynomial, at: Rational): bigint {
   let value = 0n;
   let power = 1n;
+  const grown = p.length * (bitLength(at.num) + bitLength(at.den));
+  charge(p.length * (0.25 + costOfProduct(grown)));
   for (let k = p.length - 1; k >= 0; k -= 1) {
     value = value * at.num + (p[k] ?? 0n) * power;
     power *= at.den;
@@ -184,5 +208,6 @@ export function areProportional(p: Polynomial, q: Polynomial): boolean {
   if (p.length !== q.length) return false;
   const a = leading(p);
   const b = leading(q);
+  chargeProducts(2 * p.length, p, q);
   return p.every((c, k) => c * b === (q[k] ?? 0n) * a);
 }

@@ -1,4 +1,5 @@
 import { bitLength, rational, type Rational } from '../numbers/rational.ts';
+import { charge } from '../numbers/work.ts';
 import { derivePolynomial, leading, scaledValueAt, signAt, signOf, type Polynomial } from './polynomial.ts';
 import { Unsettled } from './unsettled.ts';
 
@@ -17,6 +18,7 @@ interface Work {
 
 function spend(work: Work, count: number, bits: number): void {
   work.left -= count * (1 + bits / 512);
+  charge(0.15 * count * (1 + bits / 512));
   if (work.left < 0) throw new Unsettled('limit');
 }
 

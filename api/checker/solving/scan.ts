@@ -130,7 +130,6 @@ function zerosOf(graph: Graph, edges: readonly RealNumber[], env: LineEnv, solve
   const isolated = isolatedZeros(graph, stretches, env);
   if (isolated) return { points: isolated, open: false, sure: true };
   const given = new Map([...env.given].map(([name, value]) => [name, toNumber(value)] as const));
-  env.context.budget.spend(graph.nodes.length * 60);
   const f = toDoubleFunction(graph, env.letter, given);
   const known = sortNumbers([...edges, ...env.hints.filter((hint) => isZeroAt(graph, hint, env))]).points;
   const waves = env.window ? countWaves(graph, env) : 0;

@@ -83,8 +83,8 @@ function parts(value: KnownValue): { re: Rational; im: Rational } | null {
 
 /** Long fractions cost more than they tell; whole numbers may be longer. */
 function isLarge(value: Rational): boolean {
-  const size = value.num.toString(16).length * 4;
-  return value.den === 1n ? size > exactBits : size > fractionBits || value.den.toString(16).length * 4 > fractionBits;
+  const size = Q.bitLength(value.num);
+  return value.den === 1n ? size > exactBits : size > fractionBits || Q.bitLength(value.den) > fractionBits;
 }
 
 function bounded(value: Rational, bits: number): KnownValue {

@@ -54,7 +54,6 @@ export function evaluateNodes(
 ): Value[] {
   const field: Field = { bits, complex: context.numbers === 'complex' };
   const values: Value[] = [];
-  let cost = 0;
   for (const node of nodes) {
     if (wanted !== undefined && wanted[values.length] === 0) {
       values.push(notWanted);
@@ -62,39 +61,10 @@ export function evaluateNodes(
     }
     const value = evaluateNode(node, values, point, field, context);
     values.push(value);
-    cost += costOf(node) + costOfSize(value);
-    // The steps of a root's approximation are as long as what is under it.
-    if (node.op === 'root') cost += 8 * costOfSize(values[node.args[0]] ?? value);
   }
-  context.budget.spend(Math.ceil((cost * bits * bits) / 2_000_000) + (nodes.length >> 4));
+  // The arithmetic itself counts in numbers/; this is what it takes to get there.
+  context.budget.spend(nodes.length / 4);
   return values;
-}
-
-/** Long exact numbers and large balls cost by their length. */
-function costOfSize(value: Value): number {
-  const size = value.kind === 'rational' ? value.value.num : value.kind === 'ball' ? value.re.mid : 0n;
-  if (size < long && size > -long) return 0;
-  if (size < veryLong && size > -veryLong) return 1_000;
-  return size < hugelyLong && size > -hugelyLong ? 20_000 : 200_000;
-}
-
-const long = 1n << 1_500n;
-const veryLong = 1n << 8_000n;
-const hugelyLong = 1n << 40_000n;
-
-/** In fiftieths of a multiplication. */
-function costOf(node: GraphNode): number {
-  switch (node.op) {
-    case 'call':
-    case 'pow':
-      return 600;
-    case 'root':
-      return 1_500;
-    case 'power':
-      return 200;
-    default:
-      return 20;
-  }
 }
 
 function evaluateNode(

@@ -77,7 +77,10 @@ const exponentSpan = 4_194_304;
 function keyOf(node: GraphNode): string | number {
   switch (node.op) {
     case 'number':
-      return node.value.den === 1n ? `#${node.value.num}` : `#${node.value.num}/${node.value.den}`;
+      // To the base 32, which long numbers are quickly written in.
+      return node.value.den === 1n
+        ? `#${node.value.num.toString(32)}`
+        : `#${node.value.num.toString(32)}/${node.value.den.toString(32)}`;
     case 'letter':
       return `$${node.name}`;
     case 'constant':

@@ -1,4 +1,5 @@
 import { magnitude } from '../numbers/ball.ts';
+import { charge } from '../numbers/work.ts';
 import * as Q from '../numbers/rational.ts';
 import { fromRational, isExactZero, isReal, oneValue, toBall, undefinedValue, unknown } from './arithmetic.ts';
 import type { Field } from './field.ts';
@@ -26,6 +27,8 @@ export function factorialOf(a: KnownValue, field: Field): Value {
   if (n === null || n < 0n) return undefinedValue;
   if (n > largestFactorial) return unknown('limit');
   let product = 1n;
+  const count = Number(n);
+  charge(count / 4 + count ** 2 / 4_000);
   for (let k = 2n; k <= n; k += 1n) product *= k;
   return fromRational({ num: product, den: 1n });
 }

@@ -15,9 +15,9 @@ export function hostileInput(random: Random): DerivationInput {
   };
 }
 
-type Maker = (random: Random) => string;
+export type Maker = (random: Random) => string;
 
-function pick<T>(random: Random, items: readonly T[]): T {
+export function pick<T>(random: Random, items: readonly T[]): T {
   return items[random(items.length)] as T;
 }
 
@@ -84,7 +84,7 @@ const words = [
 
 const atom: Maker = (random) => pick(random, random(2) === 0 ? letters : numbers);
 
-const small: readonly Maker[] = [
+export const small: readonly Maker[] = [
   atom,
   (random) => `${atom(random)}+${atom(random)}`,
   (random) => `\\frac{${atom(random)}}{${atom(random)}}`,
@@ -223,7 +223,7 @@ const makers: readonly Maker[] = [
 ];
 
 /** The text with a small change, which may break it. */
-function damaged(text: string, random: Random): string {
+export function damaged(text: string, random: Random): string {
   const at = random(text.length + 1);
   const cut = random(Math.min(12, text.length - at + 1));
   switch (random(5)) {
