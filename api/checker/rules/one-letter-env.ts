@@ -64,7 +64,7 @@ export function frameFor(statements: readonly Statement[], universe: RealSet, en
   const periods = statements.flatMap((statement) => periodsOf(statement, env));
   const common = commonPeriod(periods);
   const far = Math.max(0, ...statements.map((statement) => farthestOf(statement, env)), farthestPoint(universe));
-  const reach = Math.max(common ?? anyReach, 3) + far;
+  const reach = Math.max(common ?? anyReach, 0.5) + far;
   if (!(reach <= longest)) throw new Unsettled('limit');
   // The ends are no multiples of pi: nothing of interest lies on them.
   return { window: { low: -reach - 0.317, high: reach + 0.317, isAll: false }, isWhole: common !== null };

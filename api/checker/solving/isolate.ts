@@ -3,13 +3,14 @@ import { aroundDouble, pointInterval, type Interval } from '../numbers/interval.
 import { isZero, rational, toNumber } from '../numbers/rational.ts';
 import type { Graph, GraphBuilder } from '../values/graph.ts';
 import { deriveNode } from './derivative.ts';
-import { reachable } from './double-evaluator.ts';
+import { reachable, toDoubleFunction, type DoubleFunction } from './double-evaluator.ts';
 import { IntervalEvaluator } from './interval-values.ts';
 import type { LineEnv } from './line-env.ts';
 import { signAtPoint } from './point-value.ts';
 import { approximate, between, compareNumbers, enclose, rationalNumber, type RealNumber } from './real-number.ts';
 import { guessNumbers } from './recognise.ts';
-import { zeroBetweenNumbers } from './refine.ts';
+import { zeroBetween, zeroBetweenNumbers } from './refine.ts';
+import { placeOfCrossing } from './samples.ts';
 import { hasNoZeroBeyond, hasNoZeroDownToZero } from './tails.ts';
 
 /** An open stretch of the line; null stands for infinity. */
@@ -64,6 +65,7 @@ export class Isolator {
   private readonly roots: (number | null)[];
   private readonly graphs: Graph[] = [];
   private readonly evaluators: IntervalEvaluator[] = [];
+  private readonly doubles: DoubleFunction[] = [];
   private boxes = 0;
 
   constructor(builder: GraphBuilder, root: number, env: LineEnv) {
@@ -236,13 +238,22 @@ export class Isolator {
   private zeroOf(k: number, a: RealNumber, b: RealNumber): RealNumber | null {
     const graph = this.graph(k);
     const { letter, context } = this.env;
-    const zero = zeroBetweenNumbers({ graph, letter, given: new Map(), context }, a, b);
-    if (!zero) return null;
-    for (const guess of [...this.env.hints, ...guessNumbers(approximate(zero))]) {
-      if (Math.abs(approximate(guess) - approximate(zero)) > 1e-6 * (1 + Math.abs(approximate(zero)))) continue;
+    const near = this.roughZero(k, a, b);
+    const scale = 1e-6 * (1 + Math.abs(near));
+    for (const guess of [...this.env.hints, ...guessNumbers(near)]) {
+      if (!(Math.abs(approximate(guess) - near) <= scale)) continue;
       const isInside = compareNumbers(guess, a).order > 0 && compareNumbers(guess, b).order < 0;
       if (isInside && signAtPoint(graph, letter, guess, new Map(), context)?.sign === 0) return guess;
     }
-    return zero;
+    const f = { graph, letter, given: new Map(), context };
+    const [low, high] = [near - scale / 1000, near + scale / 1000];
+    const isTight = low > approximate(a) && high < approximate(b);
+    return (isTight ? zeroBetween(f, low, high) : null) ?? zeroBetweenNumbers(f, a, b);
+  }
+
+  /** Where doubles have it. */
+  private roughZero(k: number, a: RealNumber, b: RealNumber): number {
+    this.doubles[k] ??= toDoubleFunction(this.graph(k), this.env.letter, new Map());
+    return placeOfCrossing(this.doubles[k], approximate(a), approximate(b));
   }
 }

@@ -269,14 +269,13 @@ function isWithin(p: RealNumber, { window }: LineEnv): boolean {
 }
 
 function samplesBetween(points: readonly RealNumber[], env: LineEnv): RealNumber[] {
-  const ends = [windowEnd(env, 'low', 1), ...points, windowEnd(env, 'high', 1)];
+  const ends = [windowEnd(env, 'low'), ...points, windowEnd(env, 'high')];
   return ends.slice(1).map((end, k) => rationalNumber(between(ends[k] ?? null, end)));
 }
 
 /** A little outside of the window, for zeros at its ends. */
-function windowEnd({ window }: LineEnv, side: 'low' | 'high', further = 0): RealNumber | null {
+function windowEnd({ window }: LineEnv, side: 'low' | 'high'): RealNumber | null {
   if (!window) return null;
-  const beyond = 2 ** -11 + further;
-  const value = side === 'low' ? window.low - beyond : window.high + beyond;
+  const value = side === 'low' ? window.low - 2 ** -11 : window.high + 2 ** -11;
   return rationalNumber(rational(BigInt(Math.round(value * 2 ** 20)), 1n << 20n));
 }
