@@ -22,7 +22,7 @@ const mostFaults = 3;
  * Operations for all that explains a fault, and for each kind of evidence; of larger lines than this only single terms
  * are looked at.
  */
-const allowed = { fault: 150_000, slip: 50_000, mend: 120_000, ending: 60_000, difference: 30_000 } as const;
+export const allowed = { fault: 150_000, slip: 50_000, mend: 120_000, ending: 60_000, difference: 30_000 } as const;
 const mostNodes = 160;
 const largest = 900;
 
@@ -50,7 +50,7 @@ function explainFault(
   const state = before[fault.step];
   if (!state) return {};
   const share = isFirst ? 1 : 0.25;
-  const question = attempt(() => askAbout(fault, route, state), null);
+  const question = within(allowed.slip * share, () => attempt(() => askAbout(fault, route, state), null));
   if (!question) return {};
   const look = (operations: number, find: (question: MendQuestion) => Evidence): Evidence => {
     if (question.isLarge && operations !== allowed.mend) return {};
@@ -113,8 +113,7 @@ function askAbout(fault: StepRuling, route: Route, state: WalkState): MendQuesti
 function solutionsOf(above: Line, route: Route, state: WalkState, step: number): string | null {
   const signs = signsOf(above);
   if (signs.length === 0 || signs.includes('=')) return null;
-  const judged = within(allowed.slip, () => judgeLine(route, state, step, above));
-  return judged.result.evidence.solutions ?? null;
+  return judgeLine(route, state, step, above).result.evidence.solutions ?? null;
 }
 
 function signsOf(line: Line): readonly RelationSign[] {

@@ -1,7 +1,6 @@
 import { performance } from 'node:perf_hooks';
-import { createRandom } from '../../../api/checker/numbers/random.ts';
 import { checkDerivation } from '../../../api/checker/rule-derivation.ts';
-import { hostileInput } from './hostile-inputs.ts';
+import { inputOf } from './hostile-kinds.ts';
 
 /*
  * Puts hostile inputs through the checker and prints the slowest, what was thrown and the memory in use:
@@ -16,7 +15,7 @@ let crashes = 0;
 let peak = 0;
 
 for (let seed = first; seed < first + count; seed += 1) {
-  const input = hostileInput(createRandom(seed));
+  const input = inputOf(seed);
   const began = process.cpuUsage();
   const start = performance.now();
   let outcome: string;
