@@ -41,11 +41,21 @@ export function binomialOf(a: KnownValue, b: KnownValue, field: Field): Value {
   if (a.kind !== 'rational') return unknown('not-covered');
   if (k < 0n) return Q.isWhole(a.value) && a.value.num >= 0n ? fromRational(Q.zero) : unknown('no-agreed-meaning');
   if (k > largestFactorial) return unknown('limit');
+  if (Q.isWhole(a.value)) return fromRational({ num: wholeBinomial(a.value.num, k), den: 1n });
   let result = Q.one;
   for (let j = 0n; j < k; j += 1n) {
     result = Q.mul(result, Q.div(Q.sub(a.value, { num: j, den: 1n }), { num: j + 1n, den: 1n }));
   }
   return fromRational(result);
+}
+
+/** Each factor leaves a whole number, also for a negative n: no fraction has to be brought to lowest terms. */
+function wholeBinomial(n: bigint, k: bigint): bigint {
+  const count = Number(k);
+  charge(count / 2 + (count ** 2 * Q.bitLength(n)) / 4_000);
+  let result = 1n;
+  for (let j = 0n; j < k; j += 1n) result = (result * (n - j)) / (j + 1n);
+  return result;
 }
 
 /** The whole number at or below a (`up`: at or above). */
