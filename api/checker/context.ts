@@ -37,6 +37,8 @@ export interface CheckContext {
   readonly assumptions: readonly Line[];
   /** Letters that stand for whole numbers. */
   readonly wholeLetters: ReadonlySet<string>;
+  /** Letters that stand for real numbers where the numbers are complex. */
+  readonly realLetters?: ReadonlySet<string>;
   readonly definitions: Definitions;
   /** The only source of randomness, so that a ruling can be repeated. */
   readonly seed: number;

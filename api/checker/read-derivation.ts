@@ -5,6 +5,10 @@ import { functionsIn, lineInPlace, partWideBlanks } from '../../shared/maths/rea
 import { childrenOf, exprsOf } from '../../shared/maths/walk.ts';
 import { nameDifferentials } from './calculus/name-differentials.ts';
 import { mayHaveCalculus, nameRates, usualVariable } from './calculus/name-rates.ts';
+import * as Q from './numbers/rational.ts';
+import { radiiOf, realLettersOf, speaksOfComplex } from './real-letters.ts';
+import { letterExpr, numberExpr } from './values/node-expr.ts';
+import { relationLine } from './values/truth.ts';
 import type { DerivationInput } from '../../shared/schemas/verdict.ts';
 
 /** A line as it was read, or why it could not be. */
@@ -19,8 +23,12 @@ export interface ReadDerivation {
   readonly knowsAssumptions: boolean;
   readonly numbers: 'real' | 'complex';
   readonly wholeLetters: ReadonlySet<string>;
+  /** Letters that stand for real numbers though the numbers are complex. */
+  readonly realLetters: ReadonlySet<string>;
   readonly settings: ReadSettings;
 }
+
+const noLetters: ReadonlySet<string> = new Set();
 
 /** Reads all lines, each with the functions that the lines before it introduced. */
 export function readDerivation(input: DerivationInput): ReadDerivation {
@@ -54,12 +62,15 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
     for (const result of lines)
       if (result.ok) for (const expr of exprsOf(result.line)) addWholeByUse(expr, wholeLetters);
   }
+  const written = numbers === 'complex' ? lines.flatMap((result) => (result.ok ? [result.line] : [])) : [];
+  const moduli = radiiOf(written).map((name) => relationLine(letterExpr(name), '>=', numberExpr(Q.zero)));
   return {
     lines,
-    assumptions,
+    assumptions: [...assumptions, ...moduli],
     knowsAssumptions: assumptions.length === assumed.length,
     numbers,
     wholeLetters,
+    realLetters: numbers === 'complex' ? realLettersOf(written) : noLetters,
     settings: { numbers, decimal, functions },
   };
 }
@@ -82,16 +93,12 @@ function withDifferentials(lines: readonly ReadResult[]): readonly ReadResult[] 
   return lines.map((result, k) => (result.ok ? { ...result, line: named[k] ?? result.line } : result));
 }
 
-/** Complex when the given has an i that no sum or subscript binds. */
+/** Complex when the given has an i that no sum or subscript binds, or asks for the parts of z or w. */
 function guessNumbers(input: DerivationInput): 'real' | 'complex' {
   const first = input.lines[0];
-  if (first === undefined || !first.includes('i')) return 'real';
+  if (first === undefined || !/i|bar|overline|Re|Im|arg/.test(first)) return 'real';
   const reading = readLine(first, { numbers: 'complex', decimal: input.settings.decimal ?? 'point', functions: [] });
-  return reading.ok && exprsOf(reading.line).some(hasUnit) ? 'complex' : 'real';
-}
-
-function hasUnit(expr: Expr): boolean {
-  return (expr.kind === 'constant' && expr.name === 'i') || childrenOf(expr).some(hasUnit);
+  return reading.ok && exprsOf(reading.line).some(speaksOfComplex) ? 'complex' : 'real';
 }
 
 function definedIn(line: Line): string[] {

@@ -176,6 +176,7 @@ export function contextOf(route: Route, state: WalkState): CheckContext {
     numbers: route.read.numbers,
     assumptions: state.assumptions,
     wholeLetters: route.read.wholeLetters,
+    realLetters: route.read.realLetters,
     definitions: state.definitions,
     calculus: route.calculus,
     reduceCalculus,

@@ -224,7 +224,11 @@ function readWords(start: number): void {
   do at += 1;
   while (isLetter(source.charCodeAt(at)));
   const end = at;
-  if (end === start + 1) return push('a', source[start]!, start);
+  // `\frac lg` is l over g: without braces a fraction takes single letters.
+  if (end === start + 1 || (/[FC]$/.test(kinds) && !tokens[tokens.length - 1]!.text.includes('⁄'))) {
+    at = start + 1;
+    return push('a', source[start]!, start);
+  }
   at = start;
   const phrase = take(PHRASE);
   if (phrase) return push('T', phrase.toLowerCase(), start);

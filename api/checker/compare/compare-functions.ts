@@ -1,4 +1,5 @@
 import type { CheckContext } from '../context.ts';
+import { isComplexLetter } from '../real-letters.ts';
 import { isKnown, isReal } from '../values/arithmetic.ts';
 import { usuallyWhole } from '../values/lower.ts';
 import type { KnownValue, Point } from '../values/value.ts';
@@ -52,7 +53,7 @@ export function compareFunctions(pair: Pair, context: CheckContext): Comparison 
 function mayBeMeantReal(samples: Samples, region: Region): boolean {
   if (region.context.numbers === 'real' || samples.counts.same < agreementsNeeded) return false;
   const point = samples.apart?.point ?? new Map<string, KnownValue>();
-  return [...point].some(([name, value]) => !isReal(value) && !complexLetters.has(name.charAt(0)));
+  return [...point].some(([name, value]) => !isReal(value) && !isComplexLetter(name));
 }
 
 /** Whether the line above has a value around some point, the given one or another. */
@@ -86,8 +87,6 @@ function mayBeMeantWhole(pair: Pair, apart: Point, context: CheckContext): boole
 function isWholeValue(value: KnownValue | undefined): boolean {
   return value?.kind === 'rational' && value.value.den === 1n;
 }
-
-const complexLetters: ReadonlySet<string> = new Set(['z', 'w', 'Z', 'W']);
 
 /** Small numbers first; then, unless an identity covers them, both sides of every break; then the rest. */
 function* pointsFor(

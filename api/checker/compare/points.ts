@@ -147,11 +147,15 @@ export function* pointsOf(region: Region, seed: number, most: number, from = 0):
   for (let k = from; k < most; k += 1) {
     const point = new Map<string, KnownValue>();
     region.names.forEach((name, position) => {
-      point.set(name, pickValue(k, position, region, region.whole.has(name), random));
+      point.set(name, pickValue(k, position, name, region, random));
     });
     const settled = settleEquations(point, region);
     if (settled !== null && region.admits(settled)) yield settled;
   }
+}
+
+function isComplex(name: string, { context }: Region): boolean {
+  return context.numbers === 'complex' && context.realLetters?.has(name) !== true;
 }
 
 /**
@@ -163,7 +167,8 @@ export function friendlyNumber(k: number, position: number, letters: number): nu
   return friendlyNumbers[k] ?? null;
 }
 
-function pickValue(k: number, position: number, region: Region, whole: boolean, random: Random): KnownValue {
+function pickValue(k: number, position: number, name: string, region: Region, random: Random): KnownValue {
+  const whole = region.whole.has(name);
   const several = region.names.length > 1;
   const list = whole ? friendlyWhole : friendly;
   const small = whole && !several ? null : friendlyNumber(k, position, region.names.length);
@@ -171,7 +176,7 @@ function pickValue(k: number, position: number, region: Region, whole: boolean, 
   if (k < list.length && !several) return fromRational(list[k] ?? Q.one);
   if (k < 14 && several) return fromRational(list[random(list.length)] ?? Q.one);
   if (whole) return fromRational(Q.rational(k % 5 === 0 ? random(30) : k % 5 === 1 ? -random(8) : random(12)));
-  if (region.context.numbers === 'complex' && k % 2 === 0 && k >= firstComplex) return complexValue(k, region, random);
+  if (isComplex(name, region) && k % 2 === 0 && k >= firstComplex) return complexValue(k, region, random);
   if (region.traits.turns && k % 4 === 1) return fromPi(Q.rational(random(49) - 24, [12, 6, 4, 3, 1][random(5)] ?? 1));
   if (region.marks.length > 0 && k % 4 === 3)
     return nearMark(region.marks[random(region.marks.length)] ?? Q.one, random);

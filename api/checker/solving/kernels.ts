@@ -11,8 +11,8 @@ import { computedNumber, degreeIn, linearForm } from './linear.ts';
 import { signAtPoint, toKnownValue } from './point-value.ts';
 import { squareFreePart, trim } from './polynomial.ts';
 import { approximate, realRoots, type RealNumber } from './real-number.ts';
-import type { SolvePart, Zeros } from './scan.ts';
 import { numeratorOf, simplifyForScan, type SignOnStretch } from './simplify-for-scan.ts';
+import type { SolvePart, Zeros } from './zeros.ts';
 
 /** coefficient * e^exponent * rest: the rest is a monomial of a form without powers of e. */
 interface Term {

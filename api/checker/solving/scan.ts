@@ -21,21 +21,9 @@ import { openIf, simplify, sortNumbers } from './real-set.ts';
 import { sampledZeros } from './sampled-zeros.ts';
 import { numeratorOf, simplifyForScan } from './simplify-for-scan.ts';
 import { Unsettled } from './unsettled.ts';
-
-/** Solves a part of the function: the recursion of the caller. */
-export type SolvePart = (graph: Graph, env: LineEnv) => SignMap;
+import type { SolvePart, Zeros } from './zeros.ts';
 
 const defaultWindow = { low: -41, high: 41, isAll: false };
-
-/** Zeros besides the breaks; open where there may be others. */
-export interface Zeros {
-  readonly points: readonly RealNumber[];
-  readonly open: boolean;
-  /** Whether each of the points is a zero wherever the function has a value. */
-  readonly sure?: boolean;
-  /** The sign of the function where it has values, for places at which its own digits do not tell. */
-  readonly signAt?: (point: RealNumber) => -1 | 0 | 1 | null;
-}
 
 /**
  * The signs of a function that is no rational one: its breaks (zeros of denominators, radicands, arguments of

@@ -129,6 +129,7 @@ export const READINGS: readonly (readonly [tex: string, outline: string])[] = [
   [raw`1\,000\,000`, raw`1000000`],
   [raw`x==2`, raw`(relation x = 2)`],
   [raw`\frac12`, raw`(/ 1 2)`],
+  [raw`\frac lg`, raw`(/ l g)`],
   [raw`\frac1{23}`, raw`(/ 1 23)`],
   [raw`\exponentialE^{\imaginaryI\pi}`, raw`(^ #e (* #i #pi))`],
   [raw`\mleft(x\mright)`, raw`x`],
