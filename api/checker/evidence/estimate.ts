@@ -156,6 +156,7 @@ type CalculusExpr = Exclude<
 >;
 
 function calculusValue(expr: CalculusExpr, at: Place): Complex {
+  if (estimateCost(expr) > mostNested) return missing;
   switch (expr.kind) {
     case 'derivative':
       return expr.order === 1 ? derivativeValue(expr, at) : missing;
@@ -168,9 +169,9 @@ function calculusValue(expr: CalculusExpr, at: Place): Complex {
       );
     }
     case 'integral':
-      return estimateCost(expr) > mostNested ? missing : integralValue(expr, at);
+      return integralValue(expr, at);
     case 'series':
-      return estimateCost(expr) > mostNested ? missing : seriesValue(expr, at);
+      return seriesValue(expr, at);
     case 'apply': {
       const own = at.definitions.functions.get(expr.name);
       if (!own || expr.primes > 0 || own.params.length !== expr.args.length) return missing;
@@ -243,7 +244,7 @@ function derivativeValue({ operand, variable }: Extract<Expr, { kind: 'derivativ
   return derived ? estimate(derived, at) : missing;
 }
 
-/** Sums within sums and integrals within integrals take too long from here on, in nodes. */
+/** Limits, sums and integrals within each other take too long from here on, in nodes. */
 const mostNested = 20_000;
 
 function moved(at: Place, letter: string, value: Complex): Place {
@@ -266,6 +267,7 @@ export function estimateCost(expr: Expr): number {
   const inside = childrenOf(expr).reduce((cost, part) => cost + estimateCost(part), 1);
   if (expr.kind === 'integral') return inside * gauss.length * panels;
   if (expr.kind === 'derivative' || expr.kind === 'limit') return inside * 6;
+  if (expr.kind === 'evaluated') return inside * 2;
   return expr.kind === 'series' ? inside * 8 : inside;
 }
 

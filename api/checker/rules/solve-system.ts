@@ -144,8 +144,7 @@ function eliminate(
     ({ equation, letters }) => letters.length === 1 && freeLetters(equation, context).length === 1,
   );
   if (single) return fromOneLetter(single.equation, single.letters[0] as string, rest, values, search, depth);
-  const way = open.flatMap(({ equation, letters }) => letters.flatMap((letter) => waysOut(equation, letter, context)));
-  const best = way.find((w) => w.slope !== null) ?? way[0];
+  const best = bestWayOut(open, context);
   if (!best) return eliminate(combine(rest, context), values, search, depth + 1);
   return fromLinear(best, rest, values, search, depth);
 }
@@ -220,13 +219,30 @@ interface WayOut {
   readonly slope: Rational | null;
 }
 
-function waysOut(equation: CompareStatement, letter: string, context: CheckContext): WayOut[] {
+/** The first letter with a constant factor that is not zero, else the first that an equation is linear in. */
+function bestWayOut(
+  open: readonly { readonly equation: CompareStatement; readonly letters: readonly string[] }[],
+  context: CheckContext,
+): WayOut | null {
+  let other: WayOut | null = null;
+  for (const { equation, letters } of open) {
+    for (const letter of letters) {
+      const way = wayOut(equation, letter, context);
+      if (way && way.slope !== null) return way;
+      other ??= way;
+    }
+  }
+  return other;
+}
+
+function wayOut(equation: CompareStatement, letter: string, context: CheckContext): WayOut | null {
+  context.budget.spend(40);
   const graph = differenceGraph(equation.left, equation.right, envFor(letter, context));
   const f = differenceExpr(equation.left, equation.right);
-  if (degreeIn(graph, letter) !== 1) return [];
+  if (degreeIn(graph, letter) !== 1) return null;
   const at = (value: number): Expr => substitute(f, new Map([[letter, numberExpr(rational(value))]]));
   const slopeExpr = differenceExpr(at(1), at(0));
-  return [{ equation, letter, slopeExpr, offset: at(0), slope: constantSlope(slopeExpr, context) }];
+  return { equation, letter, slopeExpr, offset: at(0), slope: constantSlope(slopeExpr, context) };
 }
 
 function constantSlope(slope: Expr, context: CheckContext): Rational | null {
