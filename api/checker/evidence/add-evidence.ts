@@ -3,6 +3,7 @@ import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
 import type { Evidence, StepRuling, Verdict } from '../../../shared/schemas/verdict.ts';
 import { BudgetSpent, createBudget, type CheckContext } from '../context.ts';
 import { within } from '../numbers/work.ts';
+import { nameKeptValue } from '../slips/kept-values.ts';
 import { nameBetween, nameSlip } from '../slips/name-slip.ts';
 import { contextOf, judgeLine, type Route, type WalkState } from '../walk-derivation.ts';
 import { expressionsIn } from './aims.ts';
@@ -58,7 +59,7 @@ function explainFault(
     return attempt(() => find(asking(question, fault.step, route, state, context)), {});
   };
   return within(allowed.fault * share, () => ({
-    ...look(allowed.slip, (asked) => namedSlip(asked, route)),
+    ...look(allowed.slip, (asked) => namedSlip(asked, fault, route, state)),
     ...look(allowed.mend, (asked) => mends(asked, fault, isFirst, verdict, route, state)),
     ...look(allowed.difference, difference),
   }));
@@ -144,8 +145,13 @@ function lineAbove(route: Route, state: WalkState, step: number): { line: Line; 
   return line && { line, tex: null };
 }
 
-function namedSlip(question: MendQuestion, route: Route): Evidence {
+function namedSlip(question: MendQuestion, fault: StepRuling, route: Route, state: WalkState): Evidence {
   const { above, line, link, context } = question;
+  // Such a line follows from the one above: what is wrong is that it still lists a value that the given shuts out.
+  if (fault.notes.includes('not-rejected')) {
+    const kept = state.reference && nameKeptValue(state.reference);
+    if (kept) return { slip: { id: kept.id, kind: kept.kind } };
+  }
   const pair = link > 1 ? expressionsIn(question) : null;
   const slip = pair
     ? nameBetween(pair.above, pair.focus, false, context)

@@ -1,8 +1,9 @@
 import type { Expr, SumExpr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { neg, power, sum } from '../evidence/build.ts';
-import { expanded } from '../evidence/monomials.ts';
+import { expanded, monomialExpr } from '../evidence/monomials.ts';
 import type { Bindings } from './match.ts';
+import { signedTerm } from './relations.ts';
 import { rule } from './rewrite.ts';
 import { memory, ruled, slip, type Slip } from './slip.ts';
 
@@ -39,6 +40,19 @@ function* detached(part: Expr): Generator<Expr> {
   }
 }
 
+/** -(a+b)(a-b) multiplied out as -a^2-b^2: the minus meets the first term of the product only. */
+function* firstOfProduct(part: Expr): Generator<Expr> {
+  if (part.kind !== 'sum') return;
+  for (const [k, { sign, expr }] of part.terms.entries()) {
+    const factors = expr.kind === 'product' ? expr.factors : expr.kind === 'power' ? [expr.base] : [];
+    const isOfSums = factors.length > 0 && factors.every((factor) => factor.kind === 'sum' && factor.terms.length > 1);
+    const [first, ...others] = (sign === 'minus' && isOfSums && expanded(expr)) || [];
+    if (!first || others.length === 0) continue;
+    const terms = part.terms.map(signedTerm);
+    yield sum(...terms.slice(0, k), neg(monomialExpr(first)), ...others.map(monomialExpr), ...terms.slice(k + 1));
+  }
+}
+
 /** -a^n read as (-a)^n, at the front of a sum, where the minus is that of a number or letter. */
 function* drawnIn(part: Expr): Generator<Expr> {
   const [first] = part.kind === 'sum' ? part.terms : [];
@@ -61,12 +75,14 @@ const signs: readonly Slip[] = [
     ['-\\frac{b+c}{d} -> \\frac{-b+c}{d}', '-\\frac{b-c}{d} -> \\frac{-b-c}{d}'],
     7,
   ),
-  ruled(
+  slip(
     'the minus in front of a bracket reached only its first term',
     'sign',
     `${schechter} (sign errors; lost parentheses)`,
-    ['-(a+b) -> -a+b', '-(a-b) -> -a-b'],
-    6,
+    {
+      rank: 6,
+      rewrites: [rule('-(a+b)', '-a+b'), rule('-(a-b)', '-a-b'), firstOfProduct],
+    },
   ),
   ruled('a product of two negatives was left negative', 'sign', `${schechter} (sign errors)`, [
     '-a(b-c) -> -ab-ac',
