@@ -96,9 +96,14 @@ function withDifferentials(lines: readonly ReadResult[]): readonly ReadResult[] 
 /** Complex when the given has an i that no sum or subscript binds, or asks for the parts of z or w. */
 function guessNumbers(input: DerivationInput): 'real' | 'complex' {
   const first = input.lines[0];
-  if (first === undefined || !/i|bar|overline|Re|Im|arg/.test(first)) return 'real';
+  if (first === undefined || !(hasLetterI(first) || /bar|overline|Re|Im|arg/.test(first))) return 'real';
   const reading = readLine(first, { numbers: 'complex', decimal: input.settings.decimal ?? 'point', functions: [] });
   return reading.ok && exprsOf(reading.line).some(speaksOfComplex) ? 'complex' : 'real';
+}
+
+/** Whether an i is written, apart from the names of commands. */
+export function hasLetterI(tex: string): boolean {
+  return tex.includes('i') && tex.replace(/\\[a-zA-Z]+/g, '').includes('i');
 }
 
 function definedIn(line: Line): string[] {

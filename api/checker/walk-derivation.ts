@@ -14,7 +14,7 @@ import {
   type Definitions,
 } from './context.ts';
 import { letterNamed } from './letter-named.ts';
-import type { ReadDerivation } from './read-derivation.ts';
+import { hasLetterI, type ReadDerivation } from './read-derivation.ts';
 import { isolatedLetter, nearlyIsolatedLetter } from './rules/formula.ts';
 import { meaningOf, type Meaning } from './rules/meaning.ts';
 import { judgeStep, type StepAnswer } from './rules/step.ts';
@@ -67,10 +67,6 @@ export function planRoute(input: DerivationInput, read: ReadDerivation): Route {
       input.settings.constant ?? false,
     ),
   };
-}
-
-function hasLetterI(tex: string): boolean {
-  return tex.includes('i') && tex.replace(/\\[a-zA-Z]+/g, '').includes('i');
 }
 
 /** The letter that the settings or the goal name, else the one that the last line to isolate a letter isolates. */
