@@ -1,4 +1,5 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { Evidence } from '../../../shared/schemas/verdict.ts';
@@ -77,7 +78,7 @@ function constantDegree(expr: Expr): bigint {
 
 function hasRootOrBar(expr: Expr): boolean {
   if (expr.kind === 'root' || (expr.kind === 'call' && expr.name === 'abs')) return true;
-  if (expr.kind === 'power' && expr.exponent.kind !== 'number') return true;
+  if (expr.kind === 'power' && expr.exponent.kind !== 'number' && lettersOf(expr.exponent).length === 0) return true;
   return childrenOf(expr).some(hasRootOrBar);
 }
 

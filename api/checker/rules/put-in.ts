@@ -10,8 +10,11 @@ import type { Statement } from '../statements/statement.ts';
  */
 export function isPutIn(above: Statement, below: Statement): boolean {
   if (above.kind !== 'compare' || below.kind !== 'compare' || above.sign !== below.sign) return false;
-  const values = new Map<string, Expr>();
-  return matches(above.left, below.left, values) && matches(above.right, below.right, values) && values.size > 0;
+  const isPut = (left: Expr, right: Expr): boolean => {
+    const values = new Map<string, Expr>();
+    return matches(above.left, left, values) && matches(above.right, right, values) && values.size > 0;
+  };
+  return isPut(below.left, below.right) || (above.sign === '=' && isPut(below.right, below.left));
 }
 
 function matches(above: Expr, below: Expr, values: Map<string, Expr>): boolean {

@@ -8,7 +8,7 @@ import { rational, type Rational } from '../numbers/rational.ts';
 import { toFraction } from '../solving/fraction.ts';
 import { degreeIn } from '../solving/linear.ts';
 import type { RealNumber } from '../solving/real-number.ts';
-import { isEmptySet, isFiniteSet, isWholeLine } from '../solving/real-set.ts';
+import { complement, isEmptySet, isFiniteSet, isWholeLine } from '../solving/real-set.ts';
 import { quadraticRoots, toSurd } from '../solving/surd.ts';
 import { approximate } from '../solving/real-number.ts';
 import { Unsettled } from '../solving/unsettled.ts';
@@ -168,7 +168,8 @@ function fromOneLetter(
 ): SystemSolution[] {
   const set = solveStatement(equation, envFor(letter, search.context));
   const rest = equations.filter((other) => other !== equation);
-  if (isWholeLine(set)) return eliminate(rest, values, search, depth + 1);
+  // All but some numbers: at these a denominator of the equations is zero.
+  if (isFiniteSet(complement(set)) && !set.open) return eliminate(rest, values, search, depth + 1);
   if (!isFiniteSet(set) || set.open) throw new Unsettled('not-covered');
   return set.points.flatMap((point) => {
     const expr = toExpr(point);

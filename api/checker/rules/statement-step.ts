@@ -1,9 +1,9 @@
-import type { CheckContext } from '../context.ts';
 import type { RealNumber } from '../solving/real-number.ts';
 import { comparesOf, isListOfValues, type Statement } from '../statements/statement.ts';
 import { judgeApproximation } from './approximation.ts';
 import { judgePlane } from './complex-plane.ts';
 import { judgeComplexStep } from './complex-step.ts';
+import { withFamilies } from './families.ts';
 import { isolatedLetter, judgeAsLetter, judgeFormula, nearlyIsolatedLetter } from './formula.ts';
 import { withEntries } from './matrix-equations.ts';
 import { isPutIn } from './put-in.ts';
@@ -23,9 +23,8 @@ export interface StatementAnswer extends StepResult {
 
 /** Rules 2 to 4, 6 and 9 on two statements; throws Unsettled. */
 export function judgeStatements(asked: StatementQuestion): StatementAnswer {
-  const question = withEntries(asked) ?? asked;
+  const { question, families } = withFamilies(withEntries(asked) ?? asked);
   const { above, below, context } = question;
-  const families = findFamilies(question);
   const letters = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter(
     (n) => !families.has(n),
   );
@@ -58,13 +57,17 @@ export function judgeStatements(asked: StatementQuestion): StatementAnswer {
 
 const mostUnknowns = 4;
 
-/** Which letter is the unknown is not said: a step holds that does so whichever it is. */
+/** No line after the given says which letter is the unknown: a step holds that does so whichever it is, else the given's counts. */
 function judgeForAny(question: StatementQuestion, letters: readonly string[]): StepResult {
-  const { above, below, reference, settings, context } = question;
+  const { above, below, reference, given, settings, context } = question;
   if (letters.length > mostUnknowns || isPutIn(above, below)) return undecided('no-unknown');
+  const judgeIn = (letter: string): StepResult =>
+    judgeFormula({ above, below, letter, reference, families: new Set<string>(), settings, context });
+  const isolated = given && isolatedLetter(given);
+  if (isolated && letters.includes(isolated)) return judgeIn(isolated);
   let first: StepResult | null = null;
   for (const letter of letters) {
-    const found = judgeFormula({ above, below, letter, reference, families: new Set<string>(), settings, context });
+    const found = judgeIn(letter);
     if (found.ruling !== 'holds') return undecided('no-unknown');
     first ??= found;
   }
@@ -87,23 +90,6 @@ function withoutCandidates(result: StepResult): StatementAnswer {
 
 function isApproximate(statement: Statement): boolean {
   return comparesOf(statement).some((compare) => compare.sign === 'approx');
-}
-
-/** Letters that the given does not have, stand for whole numbers by custom, and occur in what a letter is said to be. */
-function findFamilies({ above, below, givenLetters, context }: StatementQuestion): ReadonlySet<string> {
-  const found = new Set<string>();
-  for (const statement of [above, below]) {
-    for (const name of freeLetters(statement, context)) {
-      if (givenLetters.includes(name)) continue;
-      const isWhole = context.wholeLetters.has(name) || ['k', 'n', 'm'].includes(name);
-      if (isWhole && hasOtherLetter(statement, name, context)) found.add(name);
-    }
-  }
-  return found;
-}
-
-function hasOtherLetter(statement: Statement, name: string, context: CheckContext): boolean {
-  return freeLetters(statement, context).some((other) => other !== name);
 }
 
 function chooseUnknown(question: StatementQuestion, letters: readonly string[]): string | null {

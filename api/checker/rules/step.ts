@@ -80,6 +80,8 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   }
   const fresh = from?.kind === 'statement' ? freshDefinition(line, question) : null;
   if (fresh) return define([fresh], context);
+  const helped = from?.kind === 'statement' ? judgeWithHelpers(line, question) : null;
+  if (helped) return helped;
   const pair = from?.kind === 'statement' ? judgeRootPair(line, from.statement, context) : null;
   if (pair) return answer(pair, null);
   const aside =
@@ -149,6 +151,21 @@ function freshDefinition(line: Line, question: StepQuestion): Extract<Line, { ki
   return isKnown && !letters.includes(name)
     ? { kind: 'definition', name, params: [], value: line.right, span: line.span }
     : null;
+}
+
+/** t=x^2, t^2-5t+4=0: letters that occur for the first time are defined, the rest of the line is judged with them. */
+function judgeWithHelpers(line: Line, question: StepQuestion): StepAnswer | null {
+  if (line.kind !== 'all') return null;
+  const isHelper = (part: Line): Definition | null => freshDefinition(part, question);
+  const helpers = line.parts.flatMap((part) => isHelper(part) ?? []);
+  const rest = line.parts.filter((part) => !isHelper(part));
+  if (helpers.length === 0) return null;
+  const defined = define(helpers, question.context);
+  const [only] = rest;
+  if (!only || !defined.defines) return defined;
+  const context = { ...question.context, definitions: defined.defines };
+  const found = judgeStep({ ...question, line: rest.length > 1 ? { ...line, parts: rest } : only, context });
+  return { ...found, result: withNote(found.result, 'definition'), defines: found.defines ?? defined.defines };
 }
 
 /** z = x + yi, with two letters that were not met before, among complex numbers. */

@@ -9,7 +9,7 @@ import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import { nameNumber } from '../solving/naming.ts';
 import { constantNumber } from '../statements/solve.ts';
 import { Unsettled } from '../solving/unsettled.ts';
-import { comparesOf, type CompareStatement, type Statement } from '../statements/statement.ts';
+import { comparesOf, exprsOfStatement, type CompareStatement, type Statement } from '../statements/statement.ts';
 import { letterExpr, numberExpr } from './build-expr.ts';
 import { freeLetters } from './meaning.ts';
 import { isCombination } from './linear-combination.ts';
@@ -85,11 +85,13 @@ function judgeKnown(known: readonly Statement[], below: Statement, context: Chec
   if (solutions.length === 0)
     return isCombination(known, below, context) ? holds('proved') : undecided('not-settled', ['empty']);
   let sampled = false;
+  const isGeneral = ({ values }: SystemSolution): boolean => solutions.every((s) => s.values.size >= values.size);
   for (const solution of solutions) {
-    const truth = isTrueOn(solution, below, context);
-    if (truth === null) return undecided('not-settled');
-    if (truth !== true && truth !== 'sampled') return failAt(truth, context, 'lost');
-    sampled ||= truth === 'sampled';
+    const truth = isTrueOn(solution, known, below, context);
+    // For single values of the parameters a line may have no value, as x=1/(1-a) for a=1.
+    if (truth === null || (truth === 'no-value' && isGeneral(solution))) return undecided('not-settled');
+    if (typeof truth === 'object') return failAt(truth, context, 'lost');
+    sampled ||= truth !== true;
   }
   const extra = listedPoints(below, context).find((point) => !satisfies(known, point, context));
   if (extra) return failAt({ values: extra, anchor: null }, context, 'gained');
@@ -120,12 +122,16 @@ function branchesOf(statement: Statement): CompareStatement[][] {
   }
 }
 
-/** true or 'sampled' where the statement holds on the solution, a point of it where it does not, null where unknown. */
+/**
+ * true or 'sampled' where the statement holds on the solution, a point of it where it does not, 'no-value' where it has
+ * none at the points that were tried, null where unknown.
+ */
 function isTrueOn(
   solution: SystemSolution,
+  known: readonly Statement[],
   below: Statement,
   context: CheckContext,
-): true | 'sampled' | SystemSolution | null {
+): true | 'sampled' | 'no-value' | SystemSolution | null {
   const { values, anchor } = solution;
   const put = substituteIn(below, values);
   const letters = openLetters(put, context, anchor);
@@ -135,17 +141,30 @@ function isTrueOn(
   }
   const identity = isIdentity(put, context);
   if (identity !== null) return identity;
-  for (const [p, q] of [
-    [1, 2],
-    [2, 5],
-    [3, 1],
-    [0, 7],
-  ] as const) {
+  let hasValue = false;
+  for (const [p, q] of trials) {
     const free = new Map(letters.map((name, k) => [name, numberExpr(rational(k === 0 ? p : q + k))] as const));
     const at = new Map([...[...values].map(([name, expr]) => [name, substituteExpr(expr, free)] as const), ...free]);
-    if (isTrueStatement(substituteIn(below, at), context, anchor) === false) return { values: at, anchor };
+    if (![...at.values()].every((expr) => isDefined(expr, context, anchor))) continue;
+    if (isTrueStatement(substituteIn({ kind: 'all', parts: known }, at), context, anchor) !== true) continue;
+    const there = substituteIn(below, at);
+    if (!exprsOfStatement(there).every((expr) => isDefined(expr, context, anchor))) continue;
+    hasValue = true;
+    if (isTrueStatement(there, context, anchor) === false) return { values: at, anchor };
   }
-  return null;
+  return hasValue ? null : 'no-value';
+}
+
+const trials = [
+  [1, 2],
+  [2, 5],
+  [3, 1],
+  [0, 7],
+] as const;
+
+function isDefined(expr: CompareStatement['left'], context: CheckContext, anchor: Anchor | null): boolean {
+  const point = new Map(anchor ? [[anchor.letter, toKnownValue(anchor.number, 96)]] : []);
+  return evaluatePrepared(prepare(expr, context), point, 96, context).kind !== 'undefined';
 }
 
 function substituteExpr(expr: CompareStatement['left'], values: Solution): CompareStatement['left'] {

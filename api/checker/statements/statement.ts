@@ -34,7 +34,7 @@ export function toStatement(line: Line): Statement | null {
       return withChoices(line.members, (members) => toLinks(members, line.signs));
     case 'any':
     case 'all': {
-      const parts = line.parts.map((part) => toStatement(part) ?? toPoint(part));
+      const parts = withFurtherValues(line.parts).map((part) => toStatement(part) ?? toPoint(part));
       return parts.includes(null) ? null : { kind: line.kind, parts: parts as Statement[] };
     }
     case 'membership':
@@ -46,6 +46,33 @@ export function toStatement(line: Line): Statement | null {
     default:
       return null;
   }
+}
+
+/** `z=2e^{2k\\pi i/3}, k=0,1,2`: numbers after letter = number are further values of the letter. */
+function withFurtherValues(parts: readonly Line[]): readonly Line[] {
+  const joined: Line[] = [];
+  for (const part of parts) {
+    const last = joined[joined.length - 1];
+    const first = last?.kind === 'any' ? last.parts[0] : last;
+    const isNumber = (expr: Expr): boolean => expr.kind !== 'matrix' && lettersOf(expr).length === 0;
+    if (
+      last &&
+      part.kind === 'expression' &&
+      isNumber(part.expr) &&
+      first?.kind === 'relation' &&
+      first.sign === '=' &&
+      first.left.kind === 'letter' &&
+      isNumber(first.right)
+    ) {
+      const further: Line = { ...first, right: part.expr, span: part.span };
+      joined[joined.length - 1] = {
+        kind: 'any',
+        parts: [...(last.kind === 'any' ? last.parts : [last]), further],
+        span: first.span,
+      };
+    } else joined.push(part);
+  }
+  return joined;
 }
 
 /** `(3,4)` among other points: a pair as an open interval is written, which is how a point alone is read. */
