@@ -1,7 +1,7 @@
 import type { Expr, Line, ReadError, ReadSettings } from '../../shared/maths/expression.ts';
 import { lettersOf } from '../../shared/maths/letters.ts';
 import { readLine } from '../../shared/maths/read.ts';
-import { functionsIn, lineInPlace, partWideBlanks } from '../../shared/maths/read-in-place.ts';
+import { functionsIn, lineInPlace, orderSymbols, partWideBlanks } from '../../shared/maths/read-in-place.ts';
 import { childrenOf, exprsOf } from '../../shared/maths/walk.ts';
 import { nameDifferentials } from './calculus/name-differentials.ts';
 import { mayHaveCalculus, nameRates, usualVariable } from './calculus/name-rates.ts';
@@ -37,8 +37,13 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
   const functions: string[] = [];
   const defined = new Set<string>();
   const by = usualVariable(input.lines);
+  const before: Line[] = [];
   const read = (tex: string): ReadResult => {
-    const found = readLine(partWideBlanks(tex), { numbers, decimal, functions: [...functions] });
+    const found = readLine(partWideBlanks(tex), {
+      numbers,
+      decimal,
+      functions: [...functions, ...orderSymbols(tex, before)],
+    });
     if (!found.ok) return { ok: false, tex, error: found.error };
     const reading = { ...found, line: letAll(found.line) };
     for (const name of functionsIn(reading.line)) functions.push(name);
@@ -46,7 +51,6 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
     return { ok: true, tex, line: mayHaveCalculus(tex) ? nameRates(reading.line, defined, by) : reading.line };
   };
   const assumed = input.assume.map(read);
-  const before: Line[] = [];
   const asRead = input.lines.map((tex): ReadResult => {
     const result = read(tex);
     if (!result.ok) return result;

@@ -34,9 +34,23 @@ export function readDerivativeFraction(from: number): Expr | null {
   skip(2);
   const by = readVariable();
   const below = readOrder();
+  const inner = sign === '\\partial' ? readFurther() : [];
   expect('}');
-  if (order !== below) fail(`bad-derivative ${order}`, { start: from, end: lastEnd });
-  return finish(from, by, order, rest, sign === '\\partial');
+  const total = inner.reduce((sum, one) => sum + one.order, below);
+  if (order !== total) fail(`bad-derivative ${order}`, { start: from, end: lastEnd });
+  if (inner.length === 0) return finish(from, by, order, rest, sign === '\\partial');
+  const operand = inner.reduceRight<Expr | null>((part, one) => finish(from, one.by, one.order, part, true), rest);
+  return { kind: 'derivative', variable: by, order: below, partial: true, operand: operand as Expr, span: span(from) };
+}
+
+/** The letters behind the first one below a mixed partial derivative; the last one comes first when it is carried out. */
+function readFurther(): { by: string; order: number }[] {
+  const found: { by: string; order: number }[] = [];
+  while (is('a')) {
+    if (next().text !== '\\partial') fail('bad-derivative dx');
+    found.push({ by: readVariable(), order: readOrder() });
+  }
+  return found;
 }
 
 /** `d/dx` and `dy/dx` as typed, behind the d. */
@@ -87,6 +101,8 @@ function derivativeSign(): string {
   const { kind, text } = peek(isBraced ? 1 : 0);
   if (kind !== 'a' || (text !== 'd' && text !== '\\partial')) return '';
   const below = isBraced ? groupAhead().end + 1 : 1;
-  const fits = peek(below + 1).text === text && ahead(/\{.a(?:_.)?(?:\^\{..|\^.)?\}/y, below);
+  const fits =
+    peek(below + 1).text === text &&
+    ahead(text === 'd' ? /\{.a(?:_.)?(?:\^\{..|\^.)?\}/y : /\{(?:aa(?:_.)?(?:\^\{..|\^.)?)+\}/y, below);
   return fits ? text : '';
 }

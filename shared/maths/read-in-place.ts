@@ -35,6 +35,23 @@ export function functionsIn(line: Line): readonly string[] {
   return line.kind === 'all' || line.kind === 'any' ? line.parts.flatMap(functionsIn) : [];
 }
 
+const orderSign = /(?<![a-zA-Z\\])[Oo](?![a-zA-Z])(?=(\s*(?:\\left\s*)?\()?)/g;
+
+/**
+ * O and o where they stand for orders of magnitude, as in `x-\frac{x^3}{6}+O(x^5)`: always before a bracket, and no letter
+ * of an earlier line.
+ */
+export function orderSymbols(tex: string, before: readonly Line[]): readonly string[] {
+  if (!/[Oo]\s*(?:\\left\s*)?\(/.test(tex)) return [];
+  const uses = [...tex.matchAll(orderSign)].map(([name, bracket]) => ({ name, isSymbol: bracket !== undefined }));
+  return ['O', 'o'].filter((name) => {
+    const own = uses.filter((use) => use.name === name);
+    return (
+      own.length > 0 && own.every(({ isSymbol }) => isSymbol) && !before.some((line) => lettersOf(line).includes(name))
+    );
+  });
+}
+
 /** What a line says in the light of those before it, where the line by itself leaves that open. */
 export function lineInPlace(line: Line, tex: string, before: readonly Line[]): Line {
   if (line.kind !== 'any' && line.kind !== 'all' && line.kind !== 'relation') return line;

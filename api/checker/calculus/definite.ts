@@ -15,7 +15,7 @@ import {
 } from './build.ts';
 import { splitAt, type Cut } from './continuity.ts';
 import { isEverywhere, linearNeeds } from './needs.ts';
-import { infinitySign, sideLimit, type LimitValue } from './limit.ts';
+import { infinitySign, limitFromSide, type LimitValue } from './limit.ts';
 import { isFree } from './integrand.ts';
 import { substitute } from './substitute.ts';
 
@@ -72,7 +72,7 @@ function endValue(
   context: CheckContext,
 ): LimitValue {
   if (!cut.isGap) return { kind: 'finite', value: substitute(primitive, variable, cut.at) };
-  return sideLimit(primitive, variable, { to: cut.at, side }, context);
+  return limitFromSide(primitive, variable, { to: cut.at, side }, context);
 }
 
 /** Bounds or parameters with letters: certain where all that F needs is linear in the variable, and keeps its sign. */

@@ -15,6 +15,9 @@ import {
   zeroExpr,
 } from './build.ts';
 import { bodyOf, differentiateTimes } from './differentiate.ts';
+import { expandExtreme, expandFactorial, expandFloor, expandIntegral } from './expand-pieces.ts';
+import { isFree } from './integrand.ts';
+import { isOrder } from './orders.ts';
 import {
   addSeries,
   boundedSeries,
@@ -82,15 +85,40 @@ function expandNode(node: Expr, job: ExpandJob): Series {
       return visit(divExprs(callOf('ln', node.argument), callOf('ln', node.base ?? numberOf(10))));
     case 'call':
       return expandCall(node, job);
+    case 'factorial':
+      return isFree(node, variable) ? constantSeries(node) : expandFactorial(visit(node.operand), context);
+    case 'binomial':
+      return isFree(node, variable) ? constantSeries(node) : visit(throughFactorials(node));
     case 'apply':
-      return visit(bodyOf(node, context));
+      return isOrder(node, context) ? expandOrder(node, job) : visit(bodyOf(node, context));
     default: {
-      if (!lettersOf(node).includes(variable)) return constantSeries(node);
+      if (isFree(node, variable)) return constantSeries(node);
       const reduced = context.reduceCalculus?.(node, context);
-      if (!reduced || reduced.kind === node.kind) throw new Unsettled('not-covered');
-      return visit(reduced);
+      if (reduced && reduced.kind !== node.kind) return visit(reduced);
+      if (node.kind !== 'integral') throw new Unsettled('not-covered');
+      return expandIntegral(
+        node,
+        variable,
+        visit,
+        (integrand, letter, path) => expand(integrand, letter, path, context),
+        context,
+      );
     }
   }
+}
+
+/** n over k; a k that stays small is multiplied out elsewhere. */
+function throughFactorials({ top, bottom, span }: Extract<Expr, { kind: 'binomial' }>): Expr {
+  const factorialOf = (operand: Expr): Expr => ({ kind: 'factorial', operand, span });
+  const rest = subExprs(top, bottom);
+  return divExprs(factorialOf(top), mulExprs(factorialOf(bottom), factorialOf(rest)));
+}
+
+/** All of O(u); o(u) is what lies between that and each smaller power of the letter or of its logarithm. */
+function expandOrder(node: Extract<Expr, { kind: 'apply' }>, { visit }: ExpandJob): Series {
+  const size = visit(node.args[0] as Expr).terms[0]?.scale;
+  if (!size) throw new Unsettled('not-covered');
+  return boundedSeries(node.name === 'O' ? size : { ...size, q: size.q - 2 ** -20 });
 }
 
 function expandPower(base: Expr, exponent: Expr, { context, visit, variable }: ExpandJob): Series {
@@ -105,6 +133,8 @@ function expandPower(base: Expr, exponent: Expr, { context, visit, variable }: E
 function expandCall(node: Extract<Expr, { kind: 'call' }>, job: ExpandJob): Series {
   const { context, visit } = job;
   const [u] = node.args;
+  if ((node.name === 'max' || node.name === 'min') && node.args.length > 0)
+    return expandExtreme(node.name, node.args.map(visit), context);
   if (u === undefined || node.args.length !== 1) throw new Unsettled('not-covered');
   if (!lettersOf(node).includes(job.variable) && context.definitions.letters.size === 0) return constantSeries(node);
   switch (node.name) {
@@ -120,6 +150,9 @@ function expandCall(node: Extract<Expr, { kind: 'call' }>, job: ExpandJob): Seri
       return expandBars(node.name, visit(u), context);
     case 'arctan':
       return expandArctan(visit(u), context);
+    case 'floor':
+    case 'ceil':
+      return expandFloor(node.name, visit(u), context);
     default: {
       const other = rewritten(node.name, u);
       return other ? visit(other) : expandTaylor(node.name, visit(u), context);

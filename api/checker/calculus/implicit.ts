@@ -17,6 +17,7 @@ import { tryOnCurve } from './curve.ts';
 import { differentiate } from './differentiate.ts';
 import { linearIn } from './integrand.ts';
 import { judgeIntegralEquations } from './integral-equations.ts';
+import { judgeMixedPartials } from './mixed-partials.ts';
 import { rateNamed } from './rates.ts';
 import { carriedOut } from './reduce.ts';
 
@@ -24,6 +25,8 @@ type Judge = (question: StatementQuestion) => StatementAnswer;
 
 /** Rules 2 and 8 on statements with dy/dx or integrals; all others go on to `judge`. Throws Unsettled. */
 export function judgeWithRates(asked: StatementQuestion, judge: Judge): StatementAnswer {
+  const mixed = asked.context.calculus?.dependents.size ? judgeMixedPartials(asked) : null;
+  if (mixed) return { ...mixed, candidates: [] };
   const question = withoutOperators(asked);
   const { above, below, context } = question;
   const chained = context.calculus?.dependents.size ? judgeChainRule(question) : null;

@@ -5,6 +5,7 @@ import * as Q from '../numbers/rational.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { infinityExpr, negateExpr, noValueExpr, numberOf, zeroExpr } from './build.ts';
 import { expand } from './expand.ts';
+import { byParity, turnsForEver } from './turns.ts';
 import {
   compareScales,
   constantSeries,
@@ -55,9 +56,10 @@ export function sideLimit(expr: Expr, variable: string, target: Target, context:
 }
 
 /** Few terms first: most limits need no more, and zeros among many coefficients take long to prove. */
-const stepsTried = [2, 5, 9];
+export const stepsTried = [2, 5, 9];
 
-function seriesAt({ to, side }: Target): Series {
+/** What the letter is on its way there. */
+export function seriesAt({ to, side }: Target): Series {
   const beyond = infinitySign(to);
   if (beyond !== null) return powerSeries(numberOf(beyond), Q.minusOne);
   const step = powerSeries(numberOf(side === 'left' ? -1 : 1), Q.one);
@@ -77,19 +79,53 @@ function limitOfSeries(series: Series, context: Expansion): LimitValue {
   return { kind: 'infinite', sign: signOfCoefficient(lead.coef, context) as 1 | -1 };
 }
 
+/** The limit of what is defined for all real numbers near the target; none where it goes on turning. */
+export function limitFromSide(expr: Expr, variable: string, target: Target, context: CheckContext): LimitValue {
+  try {
+    return sideLimit(expr, variable, target, context);
+  } catch (cause) {
+    if (!(cause instanceof Unsettled) || cause.reason === 'no-domain' || context.numbers === 'complex') throw cause;
+    const inner = (part: Expr): LimitValue => sideLimit(part, variable, target, context);
+    if (turnsForEver(expr, variable, inner, (a, b) => haveSameValue(a, b, context) === false)) return { kind: 'none' };
+    throw cause;
+  }
+}
+
+/** Null where it is not certain. */
+function haveSameValue(a: LimitValue, b: LimitValue, context: CheckContext): boolean | null {
+  if (a.kind === 'infinite' && b.kind === 'infinite') return a.sign === b.sign;
+  if (a.kind !== 'finite' || b.kind !== 'finite') return false;
+  const found = compareExpressions(a.value, b.value, context);
+  return found.kind === 'equal' ? true : found.kind === 'different' ? false : null;
+}
+
+function joined(a: LimitValue, b: LimitValue, context: CheckContext): LimitValue {
+  if (a.kind === 'none' || b.kind === 'none') return { kind: 'none' };
+  const areSame = haveSameValue(a, b, context);
+  if (areSame === null) throw new Unsettled('not-settled');
+  return areSame ? a : { kind: 'none' };
+}
+
+/** Letters that stand for whole numbers by custom. */
+const usualWhole: ReadonlySet<string> = new Set(['n', 'k', 'm', 'N']);
+
+/** A sequence: where its terms change their sign, the limits of every other one. */
+function limitOfSequence(expr: Expr, variable: string, target: Target, context: CheckContext): LimitValue {
+  const both = byParity(expr, variable, context);
+  if (!both) return sideLimit(expr, variable, target, context);
+  const [even, odd] = both.map((part) => sideLimit(part, variable, target, context)) as [LimitValue, LimitValue];
+  return joined(even, odd, context);
+}
+
 /** The limit as it is written: from both sides it has a value only where these agree. */
 export function limitOf(node: Extract<Expr, { kind: 'limit' }>, context: CheckContext): LimitValue {
   const { operand, variable, to, side } = node;
-  if (infinitySign(to) !== null) return sideLimit(operand, variable, { to, side: 'right' }, context);
-  if (side !== 'both') return sideLimit(operand, variable, { to, side }, context);
-  const right = sideLimit(operand, variable, { to, side: 'right' }, context);
-  const left = sideLimit(operand, variable, { to, side: 'left' }, context);
-  if (right.kind === 'infinite' && left.kind === 'infinite') return right.sign === left.sign ? right : { kind: 'none' };
-  if (right.kind !== 'finite' || left.kind !== 'finite') return { kind: 'none' };
-  const found = compareExpressions(left.value, right.value, context);
-  if (found.kind === 'equal') return right;
-  if (found.kind === 'different') return { kind: 'none' };
-  throw new Unsettled('not-settled');
+  const from = (way: 'left' | 'right'): LimitValue => limitFromSide(operand, variable, { to, side: way }, context);
+  const beyond = infinitySign(to);
+  if (beyond === 1 && (usualWhole.has(variable) || context.wholeLetters.has(variable)))
+    return limitOfSequence(operand, variable, { to, side: 'right' }, context);
+  if (beyond !== null) return from('right');
+  return side === 'both' ? joined(from('right'), from('left'), context) : from(side);
 }
 
 /** A limit as an expression: an infinity, or one without a value, where it is one. */

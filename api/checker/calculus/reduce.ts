@@ -12,8 +12,8 @@ import { knownIntegral } from './known-integrals.ts';
 import { addExprs, infinityExpr, negateExpr, noValueExpr, subExprs, zeroExpr } from './build.ts';
 import { throughAntiderivative } from './definite.ts';
 import { bodyOf, differentiateTimes } from './differentiate.ts';
-import { infinitySign, limitExpr, limitOf, sideLimit } from './limit.ts';
-import { rateExpr } from './rates.ts';
+import { infinitySign, limitExpr, limitOf, limitFromSide } from './limit.ts';
+import { rateExpr, rateNamed } from './rates.ts';
 import { closedSeries } from './series.ts';
 import { substitute } from './substitute.ts';
 
@@ -45,7 +45,8 @@ function reduceNode(node: Expr, context: CheckContext): Expr | null {
       // One by one, from the inside: where an inner one is out of reach, so are those around it.
       const operand =
         node.operand.kind === 'derivative' ? reduceCalculus(node.operand, context) : carriedOut(node.operand, context);
-      if (!operand) return null;
+      // What a partial derivative of something unknown depends on is not said.
+      if (!operand || (node.partial && lettersOf(operand).some((name) => rateNamed(name) !== null))) return null;
       return differentiateTimes(operand, node.variable, node.order, context, node.partial);
     }
     case 'rate':
@@ -131,7 +132,7 @@ function valueAt(operand: Expr, variable: string, at: Expr, side: 'left' | 'righ
     return put;
   }
   try {
-    return limitExpr(sideLimit(operand, variable, { to: at, side }, context));
+    return limitExpr(limitFromSide(operand, variable, { to: at, side }, context));
   } catch (cause) {
     if (cause instanceof Unsettled && cause.reason === 'no-domain') return noValueExpr;
     throw cause;

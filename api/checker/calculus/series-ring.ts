@@ -126,6 +126,7 @@ function mulScales(a: Scale, b: Scale, context: Expansion): Scale {
 }
 
 function powScale(a: Scale, r: Rational): Scale {
+  if (!Number.isInteger(a.q)) throw new Unsettled('not-covered');
   const q = Q.mul(Q.rational(a.q), r);
   if (q.den !== 1n) throw new Unsettled('not-covered');
   return {

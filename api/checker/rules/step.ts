@@ -3,6 +3,7 @@ import { lettersOf } from '../../../shared/maths/letters.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckSettings, Note } from '../../../shared/schemas/verdict.ts';
 import { judgeWithRates } from '../calculus/implicit.ts';
+import { sidesWithOrders } from '../calculus/orders.ts';
 import { rateNamed } from '../calculus/rates.ts';
 import { indefiniteVariables } from '../calculus/scope.ts';
 import { isOperatorValue, judgeSubstitution, withDefinition } from '../calculus/substitution-line.ts';
@@ -220,6 +221,8 @@ function judgeFromStatement(
     context: question.context,
   };
   const found = judgeWithRates(asked, judgeStatements);
+  const sides = found.ruling === 'undecided' ? sidesWithOrders(above, meaning.statement, question.context) : null;
+  if (sides) return answer(judgeExpressions(...sides, question.context), meaning);
   return answer(found, meaning, { candidates: found.candidates });
 }
 

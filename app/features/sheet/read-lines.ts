@@ -1,6 +1,6 @@
 import type { Line, Reading, ReadSettings } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { functionsIn, readInPlace } from '../../../shared/maths/read-in-place.ts';
+import { functionsIn, orderSymbols, readInPlace } from '../../../shared/maths/read-in-place.ts';
 
 /** What the lines before a line say to it. */
 export interface Place {
@@ -18,7 +18,7 @@ export function createLineReader(read: (tex: string, place: Place) => Reading): 
   const before: Line[] = [];
   return (tex) => {
     const key = [before.at(-1)?.kind ?? '', [...letters].join(), [...functions].join()].join(' ');
-    const reading = read(tex, { before, functions: [...functions], key });
+    const reading = read(tex, { before, functions: [...functions, ...orderSymbols(tex, before)], key });
     if (reading.ok) {
       for (const name of functionsIn(reading.line)) functions.add(name);
       for (const name of lettersOf(reading.line)) letters.add(name);
