@@ -14,6 +14,7 @@ import {
   unitScale,
   type Expansion,
   type Series,
+  type SeriesTerm,
 } from './series-ring.ts';
 
 export type LimitValue =
@@ -109,12 +110,26 @@ function joined(a: LimitValue, b: LimitValue, context: CheckContext): LimitValue
 /** Letters that stand for whole numbers by custom. */
 const usualWhole: ReadonlySet<string> = new Set(['n', 'k', 'm', 'N']);
 
+const beyondAll: Target = { to: infinityExpr, side: 'right' };
+
+/** The limit of a sequence, or those of its even and of its odd terms. Throws Unsettled. */
+export function sequenceLimits(expr: Expr, index: string, context: CheckContext): readonly LimitValue[] {
+  return (byParity(expr, index, context) ?? [expr]).map((part) => sideLimit(part, index, beyondAll, context));
+}
+
+/** The largest term of a sequence far out, in powers of 1/k. Throws Unsettled. */
+export function leadBeyond(expr: Expr, index: string, context: CheckContext): SeriesTerm | null {
+  for (const steps of stepsTried) {
+    const [lead] = expand(expr, index, seriesAt(beyondAll), { ...context, steps }).terms;
+    if (lead) return lead;
+  }
+  return null;
+}
+
 /** A sequence: where its terms change their sign, the limits of every other one. */
-function limitOfSequence(expr: Expr, variable: string, target: Target, context: CheckContext): LimitValue {
-  const both = byParity(expr, variable, context);
-  if (!both) return sideLimit(expr, variable, target, context);
-  const [even, odd] = both.map((part) => sideLimit(part, variable, target, context)) as [LimitValue, LimitValue];
-  return joined(even, odd, context);
+function limitOfSequence(expr: Expr, variable: string, context: CheckContext): LimitValue {
+  const [even, odd] = sequenceLimits(expr, variable, context);
+  return even && odd ? joined(even, odd, context) : (even as LimitValue);
 }
 
 /** The limit as it is written: from both sides it has a value only where these agree. */
@@ -123,7 +138,7 @@ export function limitOf(node: Extract<Expr, { kind: 'limit' }>, context: CheckCo
   const from = (way: 'left' | 'right'): LimitValue => limitFromSide(operand, variable, { to, side: way }, context);
   const beyond = infinitySign(to);
   if (beyond === 1 && (usualWhole.has(variable) || context.wholeLetters.has(variable)))
-    return limitOfSequence(operand, variable, { to, side: 'right' }, context);
+    return limitOfSequence(operand, variable, context);
   if (beyond !== null) return from('right');
   return side === 'both' ? joined(from('right'), from('left'), context) : from(side);
 }

@@ -1,4 +1,5 @@
 import type { Expr, SeriesExpr } from '../../../shared/maths/expression.ts';
+import { sameExpr } from '../../../shared/maths/same.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
@@ -15,6 +16,7 @@ import {
   isZeroExpr,
   mulExprs,
   negateExpr,
+  noValueExpr,
   numberOf,
   oneExpr,
   powExprs,
@@ -26,7 +28,8 @@ import {
 import { isIndexed } from './indexed-letters.ts';
 import { isFree, polynomialIn, termsIn } from './integrand.ts';
 import { infinitySign } from './limit.ts';
-import { knownInfiniteSum } from './known-sums.ts';
+import { divergentSum } from './divergent-sums.ts';
+import { knownInfiniteProduct, knownInfiniteSum } from './known-sums.ts';
 import { substitute } from './substitute.ts';
 import { telescoped } from './telescope.ts';
 
@@ -34,11 +37,11 @@ import { telescoped } from './telescope.ts';
 export function closedSeries(node: SeriesExpr, context: CheckContext): Expr | null {
   const { index, from, to, body } = node;
   if (isIndexed(node)) return null;
-  if (node.operation === 'product') return closedProduct(node);
+  if (node.operation === 'product') return closedProduct(node, context);
   if (isZeroExpr(body) && infinitySign(to) !== null) return zeroExpr;
   const isInfinite = infinitySign(to) === 1;
   if (!isInfinite && infinitySign(to) !== null) return null;
-  const known = isInfinite ? (divergentSum(body, index, context) ?? knownInfiniteSum(body, index, from)) : null;
+  const known = isInfinite ? divergentFraction(body, index, context) : null;
   if (known) return known;
   const telescope = telescoped(body, index, context);
   if (telescope)
@@ -46,11 +49,27 @@ export function closedSeries(node: SeriesExpr, context: CheckContext): Expr | nu
       ? telescope.atInfinity && subExprs(telescope.atInfinity, at(telescope.sum, index, from))
       : between(telescope.sum, index, from, to);
   const parts = termsIn(body, index).map((term) => closedTerm(term, node, isInfinite, context));
-  return parts.every((part) => part !== null) ? addExprs(...(parts as Expr[])) : null;
+  if (parts.every((part) => part !== null)) return addExprs(...(parts as Expr[]));
+  return isInfinite ? (sumOfKnown(body, index, from, context) ?? divergentSum(body, index, context)) : null;
+}
+
+/** By terms, each of which has to converge by itself. */
+function sumOfKnown(body: Expr, index: string, from: Expr, context: CheckContext): Expr | null {
+  const whole = knownInfiniteSum(body, index, from, context);
+  if (whole) return whole;
+  const terms = termsIn(body, index);
+  if (terms.length < 2) return null;
+  const parts = terms.map((term) => closedSeries(seriesOf(term, index, from), context));
+  const isFinite = parts.every((part) => part !== null && infinitySign(part) === null && !sameExpr(part, noValueExpr));
+  return isFinite ? addExprs(...(parts as Expr[])) : null;
+}
+
+function seriesOf(body: Expr, index: string, from: Expr): SeriesExpr {
+  return { kind: 'series', operation: 'sum', index, from, to: infinityExpr, body, span: body.span };
 }
 
 /** Quotients of polynomials that do not fall faster than 1/k have no finite sum. */
-function divergentSum(body: Expr, index: string, context: CheckContext): Expr | null {
+function divergentFraction(body: Expr, index: string, context: CheckContext): Expr | null {
   const fraction = toFraction(prepare(body, context), index);
   if (!fraction) return null;
   const { num, den } = reduceFraction(fraction);
@@ -67,7 +86,8 @@ function between(sum: Expr, index: string, from: Expr, to: Expr): Expr {
   return subExprs(at(sum, index, addExprs(to, oneExpr)), at(sum, index, from));
 }
 
-function closedProduct({ index, from, to, body }: SeriesExpr): Expr | null {
+function closedProduct({ index, from, to, body }: SeriesExpr, context: CheckContext): Expr | null {
+  if (infinitySign(to) === 1) return knownInfiniteProduct(body, index, from, context);
   if (infinitySign(to) !== null || !isFree(body, index)) return null;
   return powExprs(body, addExprs(to, negateExpr(from), oneExpr));
 }
