@@ -43,6 +43,7 @@ import {
 } from './integrate-parts.ts';
 import { integrateRational } from './integrate-rational.ts';
 import { freshLetter, substitute } from './substitute.ts';
+import { withoutRoots } from './rationalise.ts';
 
 /** An antiderivative from the checker's own table, its derivative compared with the integrand; null where it has none. */
 export function findAntiderivative(integrand: Expr, letter: string, context: CheckContext): Expr | null {
@@ -95,7 +96,9 @@ function integrate(expr: Expr, letter: string, context: CheckContext, depth: num
     const parts = terms.map((term) => integrate(term, letter, context, depth + 1));
     if (parts.every((part) => part !== null)) return addExprs(...(parts as Expr[]));
   }
-  return null;
+  const free = withoutRoots(expr, letter);
+  const whole = free && integrate(free.integrand, free.letter, context, depth + 1);
+  return whole && substitute(whole, free.letter, free.root);
 }
 
 function integratePolynomial(coefs: readonly Expr[], letter: string): Expr {
@@ -301,7 +304,7 @@ function replaced(expr: Expr, inner: Expr, value: Expr): Expr {
 }
 
 /** c with rest = c g', found at a point and then compared. */
-function constantFactor(rest: Expr, slope: Expr, letter: string, context: CheckContext): Expr | null {
+export function constantFactor(rest: Expr, slope: Expr, letter: string, context: CheckContext): Expr | null {
   if (isZeroExpr(slope)) return null;
   const ratio = divExprs(rest, slope);
   for (const at of [Q.rational(3, 7), Q.rational(5, 3), Q.rational(-4, 5)]) {

@@ -195,9 +195,9 @@ export function reduceFraction(a: PolynomialFraction): PolynomialFraction {
   const num = dividePolynomials(a.num, common);
   const den = dividePolynomials(a.den, common);
   if (!num || !den) return a;
-  // The quotients come back primitive: their signs have to be put right again.
-  const flip = leading(a.num) < 0n !== leading(a.den) < 0n;
-  return { num: flip ? scalePolynomial(num, -1n) : num, den, holes: a.holes };
+  // The quotients come back primitive: the factor that this lost has to be put in again.
+  const lost = rational(leading(a.num) * leading(den), leading(a.den) * leading(num));
+  return { num: scalePolynomial(num, lost.num), den: scalePolynomial(den, lost.den), holes: a.holes };
 }
 
 export function samePolynomial(a: Polynomial, b: Polynomial): boolean {
