@@ -39,11 +39,14 @@ const orderSign = /(?<![a-zA-Z\\])[Oo](?![a-zA-Z])(?=(\s*(?:\\left\s*)?\()?)/g;
 
 /**
  * O and o where they stand for orders of magnitude, as in `x-\frac{x^3}{6}+O(x^5)`: always before a bracket, and no letter
- * of an earlier line.
+ * of an earlier line; in the first line behind a plus or minus.
  */
 export function orderSymbols(tex: string, before: readonly Line[]): readonly string[] {
   if (!/[Oo]\s*(?:\\left\s*)?\(/.test(tex)) return [];
-  const uses = [...tex.matchAll(orderSign)].map(([name, bracket]) => ({ name, isSymbol: bracket !== undefined }));
+  const uses = [...tex.matchAll(orderSign)].map((found) => ({
+    name: found[0],
+    isSymbol: found[1] !== undefined && (before.length > 0 || /[-+]\s*$/.test(tex.slice(0, found.index))),
+  }));
   return ['O', 'o'].filter((name) => {
     const own = uses.filter((use) => use.name === name);
     return (

@@ -63,12 +63,17 @@ export function compareOrders(above: Expr, below: Expr, context: CheckContext): 
   return found[0] ?? open;
 }
 
-/** The right sides of two equations with the same left side, where one of them has an order. */
-export function sidesWithOrders(above: Statement, below: Statement, context: CheckContext): [Expr, Expr] | null {
+/** The right sides of two equations with the same left side, where one has an order or the left side is f(x) of an unknown f. */
+export function sidesOfSame(above: Statement, below: Statement, context: CheckContext): [Expr, Expr] | null {
   if (above.kind !== 'compare' || below.kind !== 'compare' || above.sign !== '=' || below.sign !== '=') return null;
   if (!sameExpr(above.left, below.left)) return null;
   const sides: [Expr, Expr] = [above.right, below.right];
-  return sides.some((side) => ordersIn(side, context).length > 0) ? sides : null;
+  if (sides.some((side) => ordersIn(side, context).length > 0)) return sides;
+  return above.left.kind === 'apply' && !sides.some(hasApplied) ? sides : null;
+}
+
+function hasApplied(expr: Expr): boolean {
+  return expr.kind === 'apply' || childrenOf(expr).some(hasApplied);
 }
 
 function onSide(above: Expr, below: Expr, letter: string, target: Target, context: CheckContext): Comparison {

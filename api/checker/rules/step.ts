@@ -3,7 +3,7 @@ import { lettersOf } from '../../../shared/maths/letters.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckSettings, Note } from '../../../shared/schemas/verdict.ts';
 import { judgeWithRates } from '../calculus/implicit.ts';
-import { sidesWithOrders } from '../calculus/orders.ts';
+import { sidesOfSame } from '../calculus/orders.ts';
 import { rateNamed } from '../calculus/rates.ts';
 import { indefiniteVariables } from '../calculus/scope.ts';
 import { isOperatorValue, judgeSubstitution, withDefinition } from '../calculus/substitution-line.ts';
@@ -11,6 +11,7 @@ import type { CheckContext, Definitions } from '../context.ts';
 import type { RealNumber } from '../solving/real-number.ts';
 import { isEmptySet, isWholeLine } from '../solving/real-set.ts';
 import { continueFrom, exprsOfStatement, toStatement, type Statement } from '../statements/statement.ts';
+import { Unsettled } from '../solving/unsettled.ts';
 import { solveStatement } from '../statements/solve.ts';
 import { judgeExpressions, judgeLinks } from './expression-step.ts';
 import { freeLetters, meaningOf, type Meaning } from './meaning.ts';
@@ -220,10 +221,21 @@ function judgeFromStatement(
     settings: question.settings,
     context: question.context,
   };
-  const found = judgeWithRates(asked, judgeStatements);
-  const sides = found.ruling === 'undecided' ? sidesWithOrders(above, meaning.statement, question.context) : null;
-  if (sides) return answer(judgeExpressions(...sides, question.context), meaning);
-  return answer(found, meaning, { candidates: found.candidates });
+  try {
+    const found = judgeWithRates(asked, judgeStatements);
+    const direct = found.ruling === 'undecided' ? judgeRightSides(above, meaning.statement, question.context) : null;
+    return direct ? answer(direct, meaning) : answer(found, meaning, { candidates: found.candidates });
+  } catch (cause) {
+    const direct = cause instanceof Unsettled ? judgeRightSides(above, meaning.statement, question.context) : null;
+    if (!direct) throw cause;
+    return answer(direct, meaning);
+  }
+}
+
+/** Equations for the same unknown quantity, by their right sides; null for all others. */
+function judgeRightSides(above: Statement, below: Statement, context: CheckContext): StepResult | null {
+  const sides = sidesOfSame(above, below, context);
+  return sides && judgeExpressions(...sides, context);
 }
 
 /** A relation after an expression is a chain of identities (rule 5), else a change of kind (rule 6d). */
@@ -290,6 +302,10 @@ function judgeContinuation(line: Extract<Line, { kind: 'continuation' }>, questi
       );
     }
   }
+  const replaced = line.signs.every((sign) => sign === '=') ? replaceLast(from.statement, last) : null;
+  const direct = replaced && judgeRightSides(from.statement, replaced, context);
+  if (replaced && direct && direct.ruling !== 'undecided')
+    return answer(withNote(direct, 'continued'), { kind: 'statement', statement: replaced, last });
   const found = judgeFromStatement({ kind: 'statement', statement, last }, from.statement, question);
   return { ...found, result: withNote(found.result, 'continued') };
 }

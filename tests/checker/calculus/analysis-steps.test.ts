@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { judgeLines, lettersFor } from './judge-lines.ts';
+import firstYearSteps from './first-year-steps.json';
 import nearMisses from './near-misses.json';
 import ordinarySteps from './ordinary-steps.json';
 
@@ -34,6 +35,12 @@ describe('calculus, sums, matrices and complex numbers, written by hand', { time
     const { wrong, open } = tally(nearMisses as readonly AnalysisRow[]);
     expect(wrong).toEqual([]);
     expect(open.length).toBeLessThanOrEqual(26);
+  });
+
+  it('rules no step of a first course falsely', () => {
+    const { wrong, open } = tally(firstYearSteps as readonly AnalysisRow[]);
+    expect(wrong).toEqual([]);
+    expect(open.length).toBeLessThanOrEqual(4);
   });
 
   it('rules no ordinary step falsely', () => {
