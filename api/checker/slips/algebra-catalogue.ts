@@ -1,9 +1,9 @@
-import type { Expr, SumExpr } from '../../../shared/maths/expression.ts';
+import type { Expr, Line, SumExpr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { neg, power, sum } from '../evidence/build.ts';
+import { neg, power, sum, termsOf, whole } from '../evidence/build.ts';
 import { expanded, monomialExpr } from '../evidence/monomials.ts';
-import type { Bindings } from './match.ts';
-import { signedTerm } from './relations.ts';
+import { factorsOf, type Bindings } from './match.ts';
+import { bothWays, relation, signedTerm } from './relations.ts';
 import { rule } from './rewrite.ts';
 import { memory, ruled, slip, type Slip } from './slip.ts';
 
@@ -22,6 +22,12 @@ function hasLetter(expr: Expr | undefined): boolean {
 
 function isNumeric(bound: Bindings): boolean {
   return ![...bound.values()].some(hasLetter);
+}
+
+/** The second of two terms in a bracket has no minus. */
+function isAdded(bound: Bindings): boolean {
+  const [first] = termsOf(bound.get('c') ?? whole(0));
+  return first?.sign === 'plus';
 }
 
 /** Terms that come to nothing together were not joined in this way. */
@@ -53,6 +59,27 @@ function* firstOfProduct(part: Expr): Generator<Expr> {
   }
 }
 
+/**
+ * Both sides squared, of which the first has one term and the second is squared term by term; `wants` looks at the two
+ * terms of the second.
+ */
+function squaredTermByTerm(sign: 'plus' | 'minus', wantsRoot: boolean): (above: Line) => Generator<Line> {
+  return function* lines(above) {
+    for (const { left, sign: equals, right } of bothWays(above)) {
+      const [first, second, ...more] = right.kind === 'sum' ? right.terms : [];
+      if (equals !== '=' || !first || !second || more.length > 0 || termsOf(left).length > 1) continue;
+      const hasRoot = [first, second].some(({ expr }) => factorsOf(expr).some((factor) => factor.kind === 'root'));
+      if (hasRoot !== wantsRoot || first.sign !== 'plus' || (second.sign !== sign && !wantsRoot)) continue;
+      const [a, b] = [squareOf(first.expr), squareOf(second.expr)];
+      yield relation(power(left, whole(2)), '=', sum(a, sign === 'minus' ? neg(b) : b));
+    }
+  };
+}
+
+function squareOf(expr: Expr): Expr {
+  return expr.kind === 'root' && !expr.degree ? expr.radicand : power(expr, whole(2));
+}
+
 /** -a^n read as (-a)^n, at the front of a sum, where the minus is that of a number or letter. */
 function* drawnIn(part: Expr): Generator<Expr> {
   const [first] = part.kind === 'sum' ? part.terms : [];
@@ -81,7 +108,7 @@ const signs: readonly Slip[] = [
     `${schechter} (sign errors; lost parentheses)`,
     {
       rank: 6,
-      rewrites: [rule('-(a+b)', '-a+b'), rule('-(a-b)', '-a-b'), firstOfProduct],
+      rewrites: [rule('-(a+b)', '-a+b'), rule('-(a-b)', '-a-b'), rule('-a(b+c)', '-ab+ac', isAdded), firstOfProduct],
     },
   ),
   ruled('a product of two negatives was left negative', 'sign', `${schechter} (sign errors)`, [
@@ -95,7 +122,6 @@ const signs: readonly Slip[] = [
     'sign',
     `${schechter} (sign errors)`,
     [
-      '-a(b+c) -> -ab+ac',
       'a(b-c) -> ab+ac',
       '(a-b)(c+d) -> ac+ad+bc-bd',
       '(a-b)(c+d) -> ac+ad-bc+bd',
@@ -141,7 +167,7 @@ const brackets: readonly Slip[] = [
     ['(a+b)(c+d) -> ac+bd', '(a-b)(c-d) -> ac+bd', '(a+b)(c-d) -> ac-bd'],
     6,
   ),
-  ruled('the multiplier was applied to each factor of a product', 'brackets', memory, ['a(bc) -> (ab)(ac)']),
+  ruled('the multiplier was applied to each factor of a product', 'brackets', memory, ['k(bc) -> (kb)(kc)']),
   ruled('the multiplier went in before squaring', 'brackets', portland, ['k(a+b)^n -> (ka+kb)^n'], 6),
   ruled(
     'the power reached only the letter',
@@ -150,7 +176,11 @@ const brackets: readonly Slip[] = [
     ['(ka)^n -> ka^n'],
     6,
   ),
-  ruled('the square of a difference was taken with a minus kept', 'brackets', matz, ['(a-b)^2 -> a^2-b^2'], 7),
+  slip('the square of a difference was taken with a minus kept', 'brackets', matz, {
+    rank: 7,
+    rewrites: [rule('(a-b)^2', 'a^2-b^2')],
+    lines: squaredTermByTerm('minus', false),
+  }),
   ruled(
     'the cube of a sum was taken term by term',
     'brackets',
@@ -158,14 +188,19 @@ const brackets: readonly Slip[] = [
     ['(a+b)^3 -> a^3+b^3', '(a-b)^3 -> a^3-b^3'],
     7,
   ),
-  ruled(
-    'a sum of a root and a number was squared term by term',
-    'powers-and-roots',
-    `${pitfalls} (same family)`,
-    ['(\\sqrt{a}+b)^2 -> a+b^2', '(\\sqrt{a}-b)^2 -> a+b^2', '(\\sqrt{a}-b)^2 -> a-b^2'],
-    8,
-  ),
-  ruled('the square of a sum was taken term by term', 'brackets', pitfalls, ['(a+b)^2 -> a^2+b^2'], 6),
+  slip('a sum of a root and a number was squared term by term', 'powers-and-roots', `${pitfalls} (same family)`, {
+    rank: 8,
+    rewrites: [rule('(\\sqrt{a}+b)^2', 'a+b^2'), rule('(\\sqrt{a}-b)^2', 'a+b^2'), rule('(\\sqrt{a}-b)^2', 'a-b^2')],
+    *lines(above) {
+      yield* squaredTermByTerm('plus', true)(above);
+      yield* squaredTermByTerm('minus', true)(above);
+    },
+  }),
+  slip('the square of a sum was taken term by term', 'brackets', pitfalls, {
+    rank: 6,
+    rewrites: [rule('(a+b)^2', 'a^2+b^2')],
+    lines: squaredTermByTerm('plus', false),
+  }),
   ruled('a power of a sum was taken term by term', 'brackets', `${pitfalls} (general power)`, [
     '(a+b)^n -> a^n+b^n',
     '(a-b)^n -> a^n-b^n',

@@ -1,6 +1,7 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { isZero, neg, product, quotient, sum } from '../evidence/build.ts';
+import { expanded, sumExpr } from '../evidence/monomials.ts';
 import { isNumber } from './match.ts';
 import { bothWays, relation, signedTerms, splitFactors, sumOf, without, type Relation } from './relations.ts';
 import { memory, slip, type Slip } from './slip.ts';
@@ -19,6 +20,41 @@ function* movedWithSign(above: Line, wants: (term: Expr) => boolean): Generator<
         yield relation(sumOf(without(terms, k)), sign, isZero(right) ? term : sum(right, term));
     }
   }
+}
+
+/**
+ * The equation as the author may have had it in mind when a term was moved: as it stands, with brackets multiplied out, or
+ * a factor of a sum brought to the other side.
+ */
+function* asWorked(above: Line): Generator<Line> {
+  yield above;
+  if (above.kind !== 'relation') return;
+  const { left, sign, right } = above;
+  const [first, second] = [left, right].map((side) => (hasBrackets(side) ? expanded(side) : null));
+  if (first || second) yield relation(first ? sumExpr(first) : left, sign, second ? sumExpr(second) : right);
+  if (sign !== '=') return;
+  for (const way of bothWays(above)) {
+    const { left: side } = way;
+    const factors = side.kind === 'product' ? side.factors : [];
+    const sums = factors.filter((factor) => factor.kind === 'sum' && factor.terms.length > 1);
+    const [only] = sums;
+    if (only && sums.length === 1)
+      yield relation(only, '=', quotient(way.right, product(...factors.filter((factor) => factor !== only))));
+    if (side.kind === 'quotient' && side.numerator.kind === 'sum' && side.numerator.terms.length > 1)
+      yield relation(side.numerator, '=', product(way.right, side.denominator));
+  }
+}
+
+function hasBrackets(expr: Expr): boolean {
+  if (expr.kind === 'product') {
+    const others = expr.factors.filter((factor) => factor.kind !== 'sum');
+    return others.length === expr.factors.length - 1 && others.every((factor) => lettersOf(factor).length === 0);
+  }
+  return expr.kind === 'sum' && expr.terms.some((term) => hasBrackets(term.expr));
+}
+
+function* movedAnywhere(above: Line, wants: (term: Expr) => boolean): Generator<Line> {
+  for (const line of asWorked(above)) yield* movedWithSign(line, wants);
 }
 
 function isNegative(term: Expr): boolean {
@@ -62,7 +98,7 @@ function* onAllButOne(
 function coefficientsOf(term: Expr): Expr[] {
   return [...splitFactors(term)]
     .map(({ factor }) => factor)
-    .filter((factor) => isNumber(factor) && lettersOf(term).length > 0);
+    .filter((factor) => (isNumber(factor) || factor.kind === 'letter') && lettersOf(term).length > 0);
 }
 
 function denominatorsOf(term: Expr): Expr[] {
@@ -90,7 +126,7 @@ function isRelation(line: Line): line is Relation {
 export const equationSlips: readonly Slip[] = [
   slip('a term was moved across without changing its sign', 'both-sides', `${sleeman}; ${squibb}`, {
     rank: 6,
-    lines: (above) => movedWithSign(above, (term) => !isNegative(term)),
+    lines: (above) => movedAnywhere(above, (term) => !isNegative(term)),
   }),
   slip(
     'different things were done to the two sides',
@@ -98,7 +134,7 @@ export const equationSlips: readonly Slip[] = [
     'Kieran 1981, Educ. Stud. Math. 12:317-326 (from memory)',
     {
       rank: 6,
-      lines: (above) => movedWithSign(above, isNegative),
+      lines: (above) => movedAnywhere(above, isNegative),
     },
   ),
   slip('the coefficient was subtracted instead of divided by', 'both-sides', sleeman, {

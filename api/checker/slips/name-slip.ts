@@ -1,10 +1,11 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr, sameLine } from '../../../shared/maths/same.ts';
-import { exprsOf } from '../../../shared/maths/walk.ts';
+import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { sum } from '../evidence/build.ts';
+import { isNear, type Complex } from '../evidence/complex-double.ts';
 import { expanded, sumExpr } from '../evidence/monomials.ts';
 import { estimate, estimateCost } from '../evidence/estimate.ts';
 import { onlyDifference } from '../evidence/only-difference.ts';
@@ -51,7 +52,10 @@ export function nameBetween(above: Expr, wholeBelow: Expr, worksOn: boolean, con
   if (mayBeEqual(above, values, places)) return null;
   const confirm = createConfirmer(below, context);
   const cost = costOf(above);
-  for (const slip of inOrder(worksOn)) {
+  const order = inOrder(above, below, worksOn);
+  // That all letters went is explained by much that only happens to come to the same.
+  const isTelling = lettersOf(above).length === 0 || !isFixed(values);
+  for (const slip of isTelling ? order : order.filter(({ rank }) => rank > tellingRank)) {
     for (const candidate of candidatesOf(slip, above, below, context)) {
       context.budget.spend(cost);
       if (candidate === below || (mayBeEqual(candidate, values, places) && confirm(candidate))) return slip;
@@ -83,10 +87,28 @@ function createConfirmer(below: Expr, context: CheckContext): (candidate: Expr) 
   };
 }
 
-function inOrder(worksOn: boolean): readonly Slip[] {
-  if (!worksOn) return allSlips;
-  const lost = allSlips.filter(({ id }) => id.startsWith('brackets-were-lost'));
-  return [...lost, ...allSlips];
+/** Where the line below has done what the line above says is to be done, mistakes in doing it come first. */
+function inOrder(above: Expr, below: Expr, worksOn: boolean): readonly Slip[] {
+  const done = ['derivative', 'integral', 'limit'].some((kind) => has(above, kind) && !has(below, kind));
+  if (done) return calculusFirst;
+  return worksOn ? bracketsFirst : allSlips;
+}
+
+const calculusFirst = firstWhere(({ kind }) => kind === 'calculus');
+const bracketsFirst = firstWhere(({ id }) => id.startsWith('brackets-were-lost'));
+
+function firstWhere(isFirst: (slip: Slip) => boolean): readonly Slip[] {
+  return [...allSlips.filter(isFirst), ...allSlips.filter((slip) => !isFirst(slip))];
+}
+
+function has(expr: Expr, kind: string): boolean {
+  return expr.kind === kind || childrenOf(expr).some((part) => has(part, kind));
+}
+
+/** The same value at all places. */
+function isFixed(values: readonly Complex[]): boolean {
+  const [first] = values;
+  return first !== undefined && values.every((value) => isNear(value, first));
 }
 
 function* candidatesOf(slip: Slip, above: Expr, below: Expr, context: CheckContext): Generator<Expr> {

@@ -7,12 +7,17 @@ const cancelling = 'Brown University, Algebra Pitfalls (partial cancelling)';
 const cangelosi = 'Cangelosi, Madrid, Cooper, Olson & Hartter 2013, The negative sign and exponential expressions';
 
 const exponents: readonly Slip[] = [
-  ruled('the exponents of a product were multiplied', 'powers-and-roots', portland, ['a^m a^n -> a^{mn}'], 6),
+  ruled('the exponents of a product were multiplied', 'powers-and-roots', portland, ['a^b a^c -> a^{bc}'], 6),
   ruled(
     'the exponents of a power of a power were added',
     'powers-and-roots',
     memory,
-    ['(a^m)^n -> a^{m+n}', '(ka^m)^n -> k^n a^{m+n}', '(a^m b^p)^n -> a^{m+n} b^{p+n}'],
+    [
+      '(a^b)^c -> a^{b+c}',
+      '(ka^m)^n -> k^n a^{m+n}',
+      '(a^m b^p)^n -> a^{m+n} b^{p+n}',
+      '(ka^m b)^n -> k^n a^{m+n} b^n',
+    ],
     6,
   ),
   ruled(
@@ -42,7 +47,7 @@ const exponents: readonly Slip[] = [
     'the bases were multiplied and the exponents added together',
     'powers-and-roots',
     matz,
-    ['a^m a^n -> (aa)^{m+n}'],
+    ['a^b a^c -> (aa)^{b+c}'],
     6,
   ),
   ruled(

@@ -121,7 +121,12 @@ export const wholeSlips: readonly Slip[] = [
     'a sum of squares was factorised like a difference',
     'brackets',
     memory,
-    ['a^2+b^2 -> (a+b)(a-b)', 'a^2+k -> (a+\\sqrt{k})(a-\\sqrt{k})'],
+    [
+      'a^2+b^2 -> (a+b)(a-b)',
+      'a^2+k -> (a+\\sqrt{k})(a-\\sqrt{k})',
+      'ka^2+m -> (\\sqrt{k}a+\\sqrt{m})(\\sqrt{k}a-\\sqrt{m})',
+      'ka^2+mb^2 -> (\\sqrt{k}a+\\sqrt{m}b)(\\sqrt{k}a-\\sqrt{m}b)',
+    ],
     6,
   ),
   ruled(
