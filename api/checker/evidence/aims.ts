@@ -1,4 +1,5 @@
-import type { Expr } from '../../../shared/maths/expression.ts';
+import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
 import { exprsOf } from '../../../shared/maths/walk.ts';
 import type { CheckContext } from '../context.ts';
@@ -8,6 +9,7 @@ import { expressionAim } from './expression-aim.ts';
 import type { Aim, MendQuestion } from './mend-question.ts';
 import { onlyDifference } from './only-difference.ts';
 import { relationAims } from './relation-aims.ts';
+import { substituteLetter } from './substitute.ts';
 import { workOut } from './worked-out.ts';
 
 /** The expression that the line above says of a line's expression, and that expression; null for statements. */
@@ -33,6 +35,8 @@ export function aimsOf(question: MendQuestion): { readonly narrow: readonly Aim[
   const { above, line, context } = question;
   const pair = expressionsIn(question);
   if (pair) return expressionAims(pair.above, pair.focus, context);
+  if (above.kind === 'all' && line.kind === 'relation')
+    return { narrow: substituted(above.parts, line).flatMap((from) => relationAims(from, line, context)), wide: [] };
   if (above.kind !== 'relation' || line.kind !== 'relation') return { narrow: [], wide: [] };
   const [left, right] = [
     sameExpr(above.right, line.right) ? expressionAims(above.left, line.left, context) : null,
@@ -40,6 +44,21 @@ export function aimsOf(question: MendQuestion): { readonly narrow: readonly Aim[
   ];
   const sides = [left, right].flatMap((found) => (found ? [...found.narrow, ...found.wide] : []));
   return { narrow: sides, wide: relationAims(above, line, context) };
+}
+
+type Relation = Extract<Line, { kind: 'relation' }>;
+
+/** What a line in fewer letters may come from: one equation of a system put into another. */
+function substituted(parts: readonly Line[], line: Relation): Relation[] {
+  const equations = parts.filter((part): part is Relation => part.kind === 'relation' && part.sign === '=');
+  const letters = lettersOf(line);
+  return equations.flatMap(({ left, right }) => {
+    if (left.kind !== 'letter' || letters.includes(left.name) || lettersOf(right).includes(left.name)) return [];
+    const put = (side: Expr): Expr => substituteLetter(side, left.name, right);
+    return equations
+      .filter((other) => other.left !== left && lettersOf(other).includes(left.name))
+      .map((other) => ({ ...other, left: put(other.left), right: put(other.right) }));
+  });
 }
 
 function expressionAims(above: Expr, focus: Expr, context: CheckContext): { narrow: Aim[]; wide: Aim[] } {

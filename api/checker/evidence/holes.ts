@@ -43,13 +43,16 @@ export function solveHole(withHole: Expr, start: number, aim: Aim, target: reado
   return fits ? value : null;
 }
 
-/** Straight to the root of what is linear, or whose reciprocal is, else by the secant rule. */
+/** Straight to the root of what is linear, whose reciprocal is, or what grows by a factor; else by the secant rule. */
 function findRoot(at: (c: Complex) => Complex, wanted: Complex, start: number): Complex | null {
   const f = (c: Complex): Complex => minus(at(c), wanted);
   const straight = linearRoot(f);
   if (straight) return straight === 'constant' ? null : straight;
   const turned = linearRoot((c) => minus(over(real(1), at(c)), over(real(1), wanted)));
   if (turned && turned !== 'constant') return turned;
+  if (start !== 0 && isNear(at(real(-start)), wanted)) return real(-start);
+  const grown = growingRoot(at, wanted);
+  if (grown) return grown;
   let [a, b] = [real(start), real(start + 0.5)];
   let [fa, fb] = [f(a), f(b)];
   for (let turn = 0; turn < mostTurns; turn += 1) {
@@ -71,6 +74,18 @@ function linearRoot(f: (c: Complex) => Complex): Complex | 'constant' | null {
   const slope = minus(f2, f1);
   if (!isFiniteNumber(f1) || !isFiniteNumber(f2) || !isNear(f3, plus(f1, times(real(3), slope)))) return null;
   return sizeOf(slope) < 1e-9 * Math.max(1, sizeOf(f1)) ? 'constant' : minus(c1, over(f1, slope));
+}
+
+/** The root of A + B r^c = wanted with a positive r, as an exponent has it; null where it is of another kind. */
+function growingRoot(at: (c: Complex) => Complex, wanted: Complex): Complex | null {
+  const [f1, f2, f3, f5] = [at(real(1)), at(real(2)), at(real(3)), at(real(5))];
+  const [first, second] = [minus(f2, f1), minus(f3, f2)];
+  if (!isFiniteNumber(first) || !isFiniteNumber(second) || sizeOf(first) < 1e-12) return null;
+  const r = over(second, first).re;
+  if (!(r > 0) || Math.abs(r - 1) < 1e-9 || !isNear(f5, plus(f3, times(second, real(r + r * r))))) return null;
+  const part = over(first, real(r - 1));
+  const power = over(plus(minus(wanted, f1), part), part);
+  return power.re > 0 && Math.abs(power.im) < 1e-9 ? real(1 + Math.log(power.re) / Math.log(r)) : null;
 }
 
 /** By continued fractions, to ten digits. */

@@ -106,7 +106,7 @@ function* changedNumber(place: PlacedNode, value: Rational, tex: string): Genera
   const size = Q.negate(value);
   const turned = leads && turnedSign(leads, tex);
   if (leads && turned && Q.equals(size, before))
-    yield { edits: [turned], cost: costs.sign + frontMinus(leads) + below(place) };
+    yield { edits: [turned], cost: costs.sign + frontMinus(leads) + below(place) + inside };
   else if (leads && turned)
     yield {
       edits: [turned, { ...span, text: numberTextFor(node, size, tex) }],
@@ -219,7 +219,8 @@ function* changedTerm(
   if (value.num < 0n && !turned) return;
   const front: Edit[] = turned ? [turned] : [];
   if (Q.equals(size, Q.one)) {
-    if (turned) yield { edits: front, cost: costs.sign + frontMinus(leads) + below(place) };
+    const inside = place.isInFunction ? 2 * functionCost : 0;
+    if (turned) yield { edits: front, cost: costs.sign + frontMinus(leads) + below(place) + inside };
     return;
   }
   const at = outer(node).start;

@@ -1,12 +1,16 @@
-import type { Line } from '../../../shared/maths/expression.ts';
+import type { Expr, Line } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import type { StepRuling } from '../../../shared/schemas/verdict.ts';
 import type { CheckContext } from '../context.ts';
 import { judgeLine, type Route, type WalkState } from '../walk-derivation.ts';
-import { printExpr } from '../../../shared/maths/print.ts';
-import { termsOf } from './build.ts';
+import { printExpr, printLine } from '../../../shared/maths/print.ts';
+import { sameLine } from '../../../shared/maths/same.ts';
+import * as Q from '../numbers/rational.ts';
+import { listOf } from '../slips/may-follow.ts';
+import { neg, sum, termsOf } from './build.ts';
 import { changesAgain } from './carried-changes.ts';
 import type { Candidate, Edit } from './edits.ts';
-import { collect, spread, sumExpr } from './monomials.ts';
+import { collect, expanded, monomialExpr, negated, spread, sumExpr } from './monomials.ts';
 import { knownLines } from './meaning-line.ts';
 import { mendLine, type MendedLine } from './mend-line.ts';
 import { operationsBetween } from './operations.ts';
@@ -45,6 +49,8 @@ export function carryOn(
       context,
     });
     if (!found) return null;
+    // What the mend has done already needs no line of its own.
+    if (sameLine(found.line, last)) continue;
     const explained = operationsBetween(above.line, own.line, context);
     const mendedToo = operationsBetween(last, found.line, context);
     if (![...explained].some((operation) => mendedToo.has(operation))) return null;
@@ -74,7 +80,7 @@ function carryLine(
   state: WalkState,
   step: number,
   { own, above, sameChanges, context }: Carrying,
-): (Written & { readonly edits: readonly Edit[] }) | null {
+): Carried | null {
   const judged = judgeLine(route, state, step, own.line, context);
   const { result } = judged;
   if (followsPlainly(judged, state)) return { ...own, edits: [] };
@@ -96,22 +102,62 @@ function carryLine(
     holds,
   });
   if (!found || found.isRewritten) return null;
-  return joinedAgain(own.line, found, holds) ?? found;
+  return joinedAgain(own.line, found, holds) ?? solvedAgain(own.line, found, holds) ?? found;
 }
 
+type Carried = Written & { readonly edits: readonly Edit[] };
+
 /** Like terms that the mend leaves where the author had joined all of them are joined as well. */
-function joinedAgain(
-  own: Line,
-  found: MendedLine,
-  holds: (line: Line) => boolean,
-): (Written & { readonly edits: readonly Edit[] }) | null {
-  if (own.kind !== 'expression' || found.line.kind !== 'expression') return null;
-  const [before, after] = [spread(own.expr), spread(found.line.expr)];
-  if (!before || !after || found.line.expr.kind !== 'sum' || termsOf(found.line.expr).length !== after.length)
-    return null;
+function joinedAgain(own: Line, found: MendedLine, holds: (line: Line) => boolean): Carried | null {
+  if (own.kind === 'expression' && found.line.kind === 'expression') {
+    const expr = joinedSide(own.expr, found.line.expr);
+    return expr && accepted({ ...found.line, expr }, printExpr(expr), found, holds);
+  }
+  if (own.kind !== 'relation' || found.line.kind !== 'relation') return null;
+  const [left, right] = [joinedSide(own.left, found.line.left), joinedSide(own.right, found.line.right)];
+  if (!left && !right) return null;
+  const line: Line = { ...found.line, left: left ?? found.line.left, right: right ?? found.line.right };
+  return accepted(line, printLine(line), found, holds);
+}
+
+/** Null where there is nothing to join, or the author had not joined all either. */
+function joinedSide(own: Expr, found: Expr): Expr | null {
+  const [before, after] = [spread(own), spread(found)];
+  if (!before || !after || found.kind !== 'sum' || termsOf(found).length !== after.length) return null;
   const joined = collect(after);
-  if (collect(before).length < before.length || joined.length === after.length) return null;
-  const tex = printExpr(sumExpr(joined));
-  const line: Line = { ...found.line, expr: sumExpr(joined) };
-  return holds(line) ? { line, tex, edits: [{ ...own.span, text: tex }] } : null;
+  return collect(before).length < before.length || joined.length === after.length ? null : sumExpr(joined);
+}
+
+/** A case that the mend puts in is solved where the author's cases are. */
+function solvedAgain(own: Line, found: MendedLine, holds: (line: Line) => boolean): Carried | null {
+  if (!listOf(own) && !isBound(own)) return null;
+  if (found.line.kind !== 'any' || found.line.parts.every((part) => listOf(part) || isBound(part))) return null;
+  const parts = found.line.parts.map(solved);
+  if (parts.includes(null)) return null;
+  const line: Line = { ...found.line, parts: parts as Line[] };
+  return accepted(line, printLine(line), found, holds);
+}
+
+/** letter < number, and the like. */
+function isBound(line: Line): boolean {
+  return line.kind === 'relation' && line.left.kind === 'letter' && lettersOf(line.right).length === 0;
+}
+
+/** letter + number = number, with any sign of order. */
+function solved(line: Line): Line | null {
+  if (listOf(line) || isBound(line)) return line;
+  if (line.kind !== 'relation') return null;
+  const terms = expanded(sum(line.left, neg(line.right)));
+  const [name, ...others] = lettersOf(line);
+  const moving = terms?.filter(({ powers }) => powers.size > 0) ?? [];
+  const [only] = moving;
+  if (!terms || !name || others.length > 0 || moving.length !== 1 || !only || !Q.equals(only.coefficient, Q.one))
+    return null;
+  const rest = sumExpr(terms.filter((term) => term !== only).map(negated));
+  const base = monomialExpr(only);
+  return base.kind === 'letter' ? { ...line, left: base, right: rest } : null;
+}
+
+function accepted(line: Line, tex: string, found: MendedLine, holds: (line: Line) => boolean): Carried | null {
+  return holds(line) ? { line, tex, edits: [{ start: 0, end: found.tex.length, text: tex }] } : null;
 }

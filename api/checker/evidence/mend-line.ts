@@ -7,11 +7,12 @@ import { aimsOf, expressionsIn } from './aims.ts';
 import { termsOf } from './build.ts';
 import { splice, type Candidate, type Edit } from './edits.ts';
 import { replaceNode } from './holes.ts';
+import { barsPutIn, exchangedNumbers, letterPutUnder, monomialPutIn, rootPutIn } from './factor-edits.ts';
 import { leafEdits, numberPairs, numberText, signChanges, smallChanges } from './leaf-edits.ts';
 import { nodesOf } from './line-parts.ts';
 import { hits, outer, type Aim, type MendQuestion } from './mend-question.ts';
 import { missingTerms, termByTerm, termByTermOfRelation } from './missing-terms.ts';
-import { lostCases } from './case-edits.ts';
+import { lostCases, otherCases } from './case-edits.ts';
 import { roundedValues } from './rounded-values.ts';
 import { systemEdits } from './system-edits.ts';
 import { tidied } from './tidy-edits.ts';
@@ -66,17 +67,22 @@ function* statementChanges(question: MendQuestion): Generator<Candidate> {
   yield* solutionSet(question);
   yield* roundedValues(question);
   yield* lostCases(question);
+  yield* otherCases(question);
   yield* systemEdits(question);
   yield* termByTermOfRelation(question);
   yield* valuesAtLimits(question);
   yield* question.carried;
 }
 
-function* singleChanges(aim: Aim, { line, above, tex }: MendQuestion): Generator<Candidate> {
+function* singleChanges(aim: Aim, { line, above, aboveTex, tex }: MendQuestion): Generator<Candidate> {
   const letters = [...new Set([...lettersOf(above), ...lettersOf(line)])];
   yield* leafEdits(aim, letters, tex);
   yield* signChanges(aim, tex);
   yield* shapeEdits(aim, tex);
+  yield* exchangedNumbers(aim, tex);
+  yield* letterPutUnder(aim, letters, tex);
+  yield* barsPutIn(aim, above, tex);
+  yield* rootPutIn(aim, `${aboveTex ?? ''}${tex}`);
   if (isSolved(line)) yield* wholeShapes(aim, letters, tex);
   yield* valueItself(aim);
   yield* missingTerms(aim);
@@ -148,6 +154,7 @@ function limited(aim: Aim, find: (own: Aim) => Iterable<Candidate>): Candidate[]
 
 /** Two changes at once. */
 function* pairedChanges(aim: Aim, question: MendQuestion): Generator<Candidate> {
+  yield* monomialPutIn(aim, lettersOf(question.line));
   yield* pairsOfChanges(aim, question);
   yield* numberPairs(aim, question.tex);
 }

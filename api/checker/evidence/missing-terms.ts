@@ -103,7 +103,7 @@ export function* termByTerm(aim: Aim): Generator<Candidate> {
   if (!above || focus?.kind !== 'sum' || aim.roots.length !== 1) return;
   const own = ownTerms(focus, false);
   if (!own) return;
-  yield* corrections(own, above, focus, aim.extra);
+  yield* corrections(own, above, focus, aim.extra, aim.isRight);
   const areWhole = [...above, ...own.map(({ monomial }) => monomial)].every(
     ({ powers, coefficient }) => powers.size === 0 && coefficient.den === 1n,
   );
@@ -137,6 +137,7 @@ function* corrections(
   above: readonly Monomial[],
   focus: Expr,
   extra: number,
+  isRight: (node: Expr) => boolean = () => false,
 ): Generator<Candidate> {
   const wrong = collect([...above, ...own.map(({ monomial }) => negated(monomial))]);
   if (wrong.length < 2 || wrong.length > mostWrong) return;
@@ -144,8 +145,9 @@ function* corrections(
   const edits: Edit[] = [];
   const missing: Monomial[] = [];
   for (const rest of wrong) {
-    const [only, ...more] = own.filter(({ monomial }) => keyOf(monomial) === keyOf(rest));
-    if (more.length > 0) return;
+    const alike = own.filter(({ monomial }) => keyOf(monomial) === keyOf(rest));
+    const [only, ...more] = alike.length > 1 ? alike.filter(({ term }) => !isRight(term.expr)) : alike;
+    if (more.length > 0 || (alike.length > 0 && !only)) return;
     if (only) edits.push(corrected(only, rest.coefficient));
     else missing.push(rest);
   }

@@ -86,7 +86,7 @@ function inverse(term: Monomial): Monomial {
   return normal(Q.div(Q.one, term.coefficient), powers);
 }
 
-/** i^2 = -1, and the square of the root of a number is the number. */
+/** i^2 = -1, and the square of the root of a number or letter is the number or letter. */
 function normal(coefficient: Rational, powers: ReadonlyMap<string, Power>): Monomial {
   let factor = coefficient;
   const kept = new Map<string, Power>();
@@ -100,8 +100,14 @@ function normal(coefficient: Rational, powers: ReadonlyMap<string, Power>): Mono
       const pairs = Math.floor(exponent / 2);
       factor = Q.mul(factor, Q.pow({ num: base.radicand.numerator, den: base.radicand.denominator }, pairs));
       left = exponent - 2 * pairs;
+    } else if (base.kind === 'root' && base.radicand.kind === 'letter' && !base.degree && exponent >= 2) {
+      const { radicand } = base;
+      const pairs = Math.floor(exponent / 2);
+      const known = powers.get(radicand.name)?.exponent ?? 0;
+      kept.set(radicand.name, { base: radicand, exponent: known + pairs });
+      left = exponent - 2 * pairs;
     }
-    if (left !== 0) kept.set(key, { base, exponent: left });
+    if (left !== 0 && !kept.has(key)) kept.set(key, { base, exponent: left });
   }
   return { coefficient: factor, powers: kept };
 }

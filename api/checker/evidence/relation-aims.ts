@@ -6,7 +6,9 @@ import { withPlus } from '../slips/may-follow.ts';
 import { fraction, neg, power, product, sum, termsOf, whole } from './build.ts';
 import { expressionAim } from './expression-aim.ts';
 import {
+  expOf,
   isFiniteNumber,
+  logOf,
   isNear,
   minus,
   missing,
@@ -77,8 +79,8 @@ function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]
   return null;
 }
 
-/** The line above may be of first degree in the letter, in its reciprocal or in its square. */
-const ways: readonly ((t: Complex) => Complex)[] = [(t) => t, (t) => over(real(1), t), rootOf];
+/** The line above may be of first degree in the letter, in its reciprocal, its square, its logarithm or its exponential. */
+const ways: readonly ((t: Complex) => Complex)[] = [(t) => t, (t) => over(real(1), t), rootOf, expOf, logOf];
 
 function solvedBy(back: (t: Complex) => Complex, f: (x: Complex) => Complex): Complex {
   const at = (t: number): Complex => f(back(real(t)));

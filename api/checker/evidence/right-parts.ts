@@ -1,8 +1,12 @@
 import type { Expr, Term } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
+import { signedTerm } from '../slips/relations.ts';
 import * as Q from '../numbers/rational.ts';
 import { neg, termsOf } from './build.ts';
+import { isFiniteNumber, isNear } from './complex-double.ts';
+import { estimate, type Place } from './estimate.ts';
 import { collect, keyOf, negated, spread, type Monomial } from './monomials.ts';
 
 /**
@@ -13,7 +17,29 @@ export function findRightParts(above: Expr, below: Expr): ReadonlySet<Expr> {
   const found = new Set<Expr>();
   matchParts(above, below, found);
   matchArguments(above, below, found);
+  matchValues(above, below, found);
   return found;
+}
+
+const nowhere: Place = { letters: new Map(), definitions: { letters: new Map(), functions: new Map() } };
+
+/** Numbers worked out of functions and roots, one for each term or factor: those that are worth what stands above. */
+function matchValues(above: Expr, below: Expr, found: Set<Expr>): void {
+  if (above.kind !== below.kind || (above.kind !== 'sum' && above.kind !== 'product')) return;
+  const parts = (expr: Expr): readonly Expr[] => (expr.kind === 'sum' ? expr.terms.map(signedTerm) : childrenOf(expr));
+  const [before, after] = [parts(above), parts(below)];
+  if (before.length !== after.length) return;
+  for (const [k, own] of after.entries()) {
+    const other = before[k] as Expr;
+    if (lettersOf(own).length > 0 || lettersOf(other).length > 0 || !isWorkedOut(other)) continue;
+    const [value, wanted] = [estimate(own, nowhere), estimate(other, nowhere)];
+    if (isFiniteNumber(value) && isFiniteNumber(wanted) && isNear(value, wanted))
+      mark(childrenOf(below)[k] as Expr, found);
+  }
+}
+
+function isWorkedOut(expr: Expr): boolean {
+  return ['call', 'log', 'root'].includes(expr.kind) || childrenOf(expr).some(isWorkedOut);
 }
 
 /** Numbers that stand in the arguments of functions above and below were copied. */

@@ -39,6 +39,10 @@ function* shapesOf(node: Expr, tex: string): Generator<Shape> {
       yield* lastTermBelow(node);
       yield* exchanged(node, tex);
       yield* squared(node, tex);
+      yield* sumAsProduct(node);
+      return;
+    case 'power':
+      yield* exponentsAdded(node, tex);
       return;
     case 'call':
     case 'log':
@@ -58,6 +62,38 @@ function* productAsSum(node: Extract<Expr, { kind: 'product' }>): Generator<Shap
     const place = { start: outer(left).end, end: outer(right).start };
     yield { by: sum(product(...before), product(...after)), edits: [{ ...place, text: '+' }], cost: 1.3 };
     yield { by: sum(product(...before), neg(product(...after))), edits: [{ ...place, text: '-' }], cost: 1.35 };
+  }
+}
+
+/** a b for a + b. */
+function* sumAsProduct(node: Extract<Expr, { kind: 'sum' }>): Generator<Shape> {
+  for (const [k, term] of node.terms.entries()) {
+    const next = node.terms[k + 1];
+    if (next?.sign !== 'plus') continue;
+    const joined = { ...term, expr: product(term.expr, next.expr) };
+    yield {
+      by: { ...node, terms: [...node.terms.slice(0, k), joined, ...node.terms.slice(k + 2)] },
+      edits: [{ start: outer(term.expr).end, end: outer(next.expr).start, text: '\\cdot' }],
+      cost: 1.3,
+    };
+  }
+}
+
+/** a^{2n+3} for a^{6n}: exponents that were multiplied and should have been added. */
+function* exponentsAdded({ base, exponent }: Extract<Expr, { kind: 'power' }>, tex: string): Generator<Shape> {
+  const [first, second] = exponent.kind === 'product' ? exponent.factors : [];
+  if (exponent.kind !== 'product' || !second || first?.kind !== 'number' || first.denominator !== 1n) return;
+  const rest = product(...exponent.factors.slice(1));
+  const text = tex.slice(outer(second).start, outer(exponent).end);
+  for (let own = 1n; own < first.numerator && own < 20n; own += 1n) {
+    if (first.numerator % own !== 0n) continue;
+    const other = whole(first.numerator / own);
+    const front = own === 1n ? '' : String(own);
+    yield {
+      by: power(base, sum(product(whole(own), rest), other)),
+      edits: [{ ...outer(exponent), text: `${front}${text}+${first.numerator / own}` }],
+      cost: 1.4,
+    };
   }
 }
 
@@ -82,7 +118,15 @@ function* multipliedInstead(node: Extract<Expr, { kind: 'quotient' }>, tex: stri
   if (!isPlain(denominator) || !isPlain(numerator) || numerator.kind === 'number') return;
   yield {
     by: product(denominator, numerator),
-    edits: [{ ...node.span, text: glue(text(denominator), text(numerator)) }],
+    edits: [
+      {
+        ...node.span,
+        text:
+          denominator.kind === 'number'
+            ? glue(text(denominator), text(numerator))
+            : glue(text(numerator), text(denominator)),
+      },
+    ],
     cost: 1.45,
   };
 }

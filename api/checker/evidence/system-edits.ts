@@ -63,7 +63,10 @@ function* mendedPart(
     const isValue = part.left.kind === 'letter';
     const value = simpleFraction(estimate(part.left, place));
     const own = rowOf(part, names, question);
-    const isPlain = isValue || (own !== null && hasWholeCombination(rows, own));
+    // A number that an equation above has as well was copied.
+    const written = estimate(part.right, place).re;
+    const isCopied = written !== 0 && rows.some(({ total }) => total === written);
+    const isPlain = isValue || (!isCopied && own !== null && hasWholeCombination(rows, own));
     if (value)
       yield { edits: [{ ...outer(part.right), text: textOf(value) }], cost: isPlain ? 1 : 1.3, touchesRight: false };
   }

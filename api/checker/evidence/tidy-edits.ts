@@ -3,7 +3,7 @@ import { printExpr } from '../../../shared/maths/print.ts';
 import { readLine } from '../../../shared/maths/read.ts';
 import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
 import { rational } from '../numbers/rational.ts';
-import { fraction, isOne, isZero } from './build.ts';
+import { fraction, isOne, isZero, product, whole } from './build.ts';
 import { splice, type Edit } from './edits.ts';
 import { outer } from './mend-question.ts';
 
@@ -14,6 +14,7 @@ interface Oddity {
 }
 
 const mostTidied = 4;
+const largestRooted = 10_000n;
 
 /**
  * The edits of a line so that what comes of them reads as a person writes it: no fraction of whole numbers that is a
@@ -35,7 +36,12 @@ export function tidied(tex: string, edits: readonly Edit[], settings: ReadSettin
 
 function findOddity(line: Line, tex: string, changed: readonly Span[]): Oddity | null {
   for (const expr of exprsOf(line)) {
-    const found = oddityIn(expr, tex, (span) => changed.some((own) => own.start < span.end && span.start < own.end));
+    const looks: Looks = {
+      tex,
+      isChanged: (span) => changed.some((own) => own.start < span.end && span.start < own.end),
+      isNew: (span) => changed.some((own) => own.start <= span.start && span.end <= own.end),
+    };
+    const found = oddityIn(expr, looks);
     if (found) return found;
   }
   return null;
@@ -43,16 +49,26 @@ function findOddity(line: Line, tex: string, changed: readonly Span[]): Oddity |
 
 type Inside = 'sum' | 'function' | null;
 
-function oddityIn(expr: Expr, tex: string, isChanged: (span: Span) => boolean, inside: Inside = null): Oddity | null {
+interface Looks {
+  readonly tex: string;
+  /** In part. */
+  readonly isChanged: (span: Span) => boolean;
+  /** As a whole. */
+  readonly isNew: (span: Span) => boolean;
+}
+
+function oddityIn(expr: Expr, looks: Looks, inside: Inside = null): Oddity | null {
+  const { tex, isChanged, isNew } = looks;
   const within = insideOf(expr, inside);
   for (const part of childrenOf(expr)) {
-    const found = oddityIn(part, tex, isChanged, within);
+    const found = oddityIn(part, looks, within);
     if (found) return found;
   }
   if (!isChanged(outer(expr))) return null;
+  if (expr.kind === 'root') return isNew(expr.span) ? wholeRoot(expr) : null;
   if (expr.kind === 'quotient') return reducible(expr, inside);
   if (expr.kind === 'sum') return zeroTerm(expr, isChanged) ?? leadingPlus(expr, tex) ?? twoSigns(expr, tex, isChanged);
-  return expr.kind === 'product' ? unitFactor(expr, isChanged) : null;
+  return expr.kind === 'product' ? (unitFactor(expr, isChanged) ?? numbersApart(expr, isNew)) : null;
 }
 
 function insideOf(expr: Expr, inside: Inside): Inside {
@@ -69,6 +85,25 @@ function reducible(expr: Extract<Expr, { kind: 'quotient' }>, inside: Inside): O
   const isLeft = inside === 'function' || (inside === 'sum' && value.den !== 1n);
   const isLowest = value.den === denominator.numerator && value.den !== 1n;
   return isLeft || isLowest ? null : { span: outer(expr), text: printExpr(fraction(value)) };
+}
+
+function wholeRoot({ degree, radicand, span }: Extract<Expr, { kind: 'root' }>): Oddity | null {
+  if (degree || radicand.kind !== 'number' || radicand.denominator !== 1n || radicand.numerator > largestRooted)
+    return null;
+  const value = Math.round(Math.sqrt(Number(radicand.numerator)));
+  return BigInt(value * value) === radicand.numerator ? { span, text: String(value) } : null;
+}
+
+/** Several whole numbers in a product that is new as a whole. */
+function numbersApart(expr: Extract<Expr, { kind: 'product' }>, isNew: (span: Span) => boolean): Oddity | null {
+  const isNumber = (factor: Expr): boolean => factor.kind === 'number' && factor.written === 'integer';
+  if (expr.factors.filter(isNumber).length < 2 || !isNew(outer(expr))) return null;
+  const number = expr.factors.reduce(
+    (value, one) => (one.kind === 'number' && isNumber(one) ? value * one.numerator : value),
+    1n,
+  );
+  const text = printExpr(product(whole(number), ...expr.factors.filter((factor) => !isNumber(factor))));
+  return { span: outer(expr), text };
 }
 
 function zeroTerm(expr: Extract<Expr, { kind: 'sum' }>, isChanged: (span: Span) => boolean): Oddity | null {

@@ -6,6 +6,8 @@ import { permutations } from '../slips/match.ts';
 import { isFiniteNumber, isNear, minus, over, real, type Complex } from './complex-double.ts';
 import type { Candidate, Edit } from './edits.ts';
 import { estimate, type Place } from './estimate.ts';
+import { isZero } from './build.ts';
+import { hasTwoCases } from './case-edits.ts';
 import { expanded, sumExpr } from './monomials.ts';
 import { outer, type MendQuestion } from './mend-question.ts';
 import { substituteLetter } from './substitute.ts';
@@ -143,6 +145,8 @@ function* replacements(
 function changeCost(before: string, after: string): number {
   const bare = (text: string): string => text.replace(/[-+\s]/g, '');
   if (bare(before) === bare(after)) return 0.1;
+  // A power is rather mended in its numbers.
+  if (before.includes('^')) return 0.8;
   return before.startsWith('-') === after.startsWith('-') ? 0.2 : 0.3;
 }
 
@@ -185,9 +189,12 @@ export function* signChoices(question: MendQuestion): Generator<Candidate> {
 }
 
 /** A plus-or-minus where one of two signs was forgotten. */
-function* bothSigns({ line, lost, gained }: MendQuestion): Generator<Candidate> {
-  if (line.kind !== 'relation' || line.sign !== '=' || lost.length !== 1 || gained.length > 0) return;
-  const isBare = line.right.kind === 'number' || line.right.kind === 'root';
+function* bothSigns({ above, line, lost, gained }: MendQuestion): Generator<Candidate> {
+  if (line.kind !== 'relation' || line.sign !== '=' || gained.length > 0 || isZero(line.right)) return;
+  const { right } = line;
+  const isBare = right.kind === 'number' || right.kind === 'root' || right.kind === 'quotient';
+  const isRooted = above.kind === 'relation' && [above.left, above.right].some(hasTwoCases);
+  if (lost.length !== 1 && !(isRooted && isBare)) return;
   const { start } = outer(line.right);
   if (isBare) yield { edits: [{ start, end: start, text: '\\pm' }], cost: 1.2, touchesRight: false };
 }

@@ -2,7 +2,9 @@ import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import { mapExpr } from '../../../shared/maths/walk.ts';
+import { limitOf } from '../calculus/limit.ts';
 import type { CheckContext } from '../context.ts';
+import { Unsettled } from '../solving/unsettled.ts';
 import { fraction, letter, neg, product, sum, termsOf, whole } from './build.ts';
 import { signedTerm } from '../slips/relations.ts';
 import { antiderivative } from './antiderivative.ts';
@@ -25,6 +27,7 @@ export function workOut(expr: Expr, other: Expr, context: CheckContext): Expr {
     if (node.kind === 'series') return writtenOut(node) ?? node;
     if (node.kind === 'product') return multipliedMatrices(node) ?? node;
     if (node.kind === 'evaluated') return evaluatedTerms(node) ?? node;
+    if (node.kind === 'limit' && !hasCalculus(other)) return limitValue(node, context) ?? node;
     if (node.kind !== 'integral') return node;
     const raw = antiderivative(node.integrand, node.variable, context);
     const found = raw && joined(raw);
@@ -57,6 +60,17 @@ function evaluatedTerms(expr: Extract<Expr, { kind: 'evaluated' }>): Expr | null
   const lower = joined(substituteLetter(expr.operand, name, expr.from));
   const minus: Expr = { kind: 'sum', terms: [{ sign: 'minus', expr: lower, span: expr.span }], span: expr.span };
   return sum(...upper, lower.kind === 'number' ? minus : neg(lower));
+}
+
+function limitValue(node: Extract<Expr, { kind: 'limit' }>, context: CheckContext): Expr | null {
+  try {
+    const found = limitOf(node, context);
+    const terms = found.kind === 'finite' ? expanded(found.value) : null;
+    return terms && sumExpr(terms);
+  } catch (cause) {
+    if (cause instanceof Unsettled) return null;
+    throw cause;
+  }
 }
 
 const mostWrittenOut = 12;
@@ -120,13 +134,23 @@ export function* rewritten(
     yield anew(printExpr(terms ? sumExpr(terms) : worked), wholeCost);
   }
   const next = nextExpression(above, focus.kind === 'product' ? 'factored' : 'simplified');
-  if (next) yield anew(printExpr(next), wholeCost + 0.3);
+  const isReordered = next !== null && aboveTex !== null && sameButForOrder(next, above);
+  if (next) yield anew(isReordered ? aboveTex : printExpr(next), wholeCost + 0.3);
   const joined = focus.kind === 'quotient' ? overOneDenominator(above) : null;
   if (joined) yield anew(printExpr(joined), wholeCost);
   const multiplied = focus.kind === 'sum' ? expanded(worked) : null;
   if (multiplied && multiplied.length <= 8) yield anew(printExpr(sumExpr(multiplied)), wholeCost + 0.5);
   // Where nothing more can be done the line above is the last.
   if (aboveTex !== null && !next && !hasCalculus(above)) yield anew(aboveTex, wholeCost + 1);
+}
+
+function sameButForOrder(a: Expr, b: Expr): boolean {
+  const terms = (expr: Expr): string =>
+    termsOf(expr)
+      .map((term) => printExpr(signedTerm(term)))
+      .sort()
+      .join();
+  return terms(a) === terms(b);
 }
 
 function hasCalculus(expr: Expr): boolean {
