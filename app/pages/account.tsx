@@ -5,12 +5,12 @@ import {
   changeNameSchema,
   changePasswordSchema,
   joinByCodeSchema,
-  PASSWORD_MIN,
 } from '../../shared/schemas/people.ts';
 import { OwnPlaces } from '../features/classes/own-places.tsx';
 import { FormError } from '../features/people/form-error.tsx';
 import { MailPreferences } from '../features/people/mail-preferences.tsx';
 import { people } from '../features/people/people.queries.ts';
+import { NewPasswordField } from '../features/people/sign-up-fields.tsx';
 import { useFormSubmit } from '../features/people/use-form-submit.ts';
 import { useSignedIn } from '../features/people/use-signed-in.ts';
 import { viewerQuery, type Viewer } from '../features/people/viewer.queries.ts';
@@ -153,10 +153,9 @@ function PasswordForm() {
         error={errorOf('current')}
         {...form.register('current')}
       />
-      <PasswordField
+      <NewPasswordField
         label="New password"
-        autoComplete="new-password"
-        hint={`At least ${PASSWORD_MIN} characters. Your other devices are signed out.`}
+        also="Your other devices are signed out."
         error={errorOf('password')}
         {...form.register('password')}
       />

@@ -1,8 +1,9 @@
 import { useQuery } from '@tanstack/react-query';
 import { useParams } from 'react-router-dom';
-import { acceptInvitationSchema, PASSWORD_MIN, type InvitationAnswer } from '../../shared/schemas/people.ts';
+import { acceptInvitationSchema, type InvitationAnswer } from '../../shared/schemas/people.ts';
 import { FormError } from '../features/people/form-error.tsx';
 import { invitationQuery, people } from '../features/people/people.queries.ts';
+import { NewPasswordField, UserNameField } from '../features/people/sign-up-fields.tsx';
 import { SplitPage } from '../features/people/split-page.tsx';
 import { useFormSubmit } from '../features/people/use-form-submit.ts';
 import { useSignedIn } from '../features/people/use-signed-in.ts';
@@ -10,7 +11,7 @@ import { viewerQuery } from '../features/people/viewer.queries.ts';
 import { paths } from '../lib/paths.ts';
 import { Button, LinkButton } from '../ui/button.tsx';
 import { ErrorState, Waiting } from '../ui/states.tsx';
-import { PasswordField, TextField } from '../ui/text-field.tsx';
+import { TextField } from '../ui/text-field.tsx';
 
 export function Component() {
   const { token = '' } = useParams();
@@ -111,25 +112,11 @@ function NewAccountForm({ token, invitation }: { readonly token: string; readonl
           {...form.register('name')}
         />
         {invitation.email === null ? (
-          <TextField
-            label="User name"
-            autoComplete="username"
-            autoCapitalize="none"
-            spellCheck={false}
-            hint="For signing in. Small letters, digits, dots and dashes."
-            error={errorOf('userName')}
-            {...form.register('userName')}
-          />
+          <UserNameField error={errorOf('userName')} {...form.register('userName')} />
         ) : (
           <p className="small muted mt-4">You sign in with {invitation.email}.</p>
         )}
-        <PasswordField
-          label="Password"
-          autoComplete="new-password"
-          hint={`At least ${PASSWORD_MIN} characters. A few words in a row do well.`}
-          error={errorOf('password')}
-          {...form.register('password')}
-        />
+        <NewPasswordField error={errorOf('password')} {...form.register('password')} />
         <FormError>{rootError}</FormError>
         <div className="acts">
           <Button kind="primary" type="submit" wide busy={isBusy}>

@@ -1,18 +1,14 @@
 import { useParams } from 'react-router-dom';
-import {
-  newPasswordFormSchema,
-  PASSWORD_MIN,
-  resetRequestSchema,
-  signInCodeSchema,
-} from '../../shared/schemas/people.ts';
+import { newPasswordFormSchema, resetRequestSchema, signInCodeSchema } from '../../shared/schemas/people.ts';
 import { FormError } from '../features/people/form-error.tsx';
 import { people } from '../features/people/people.queries.ts';
+import { NewPasswordField } from '../features/people/sign-up-fields.tsx';
 import { SplitPage } from '../features/people/split-page.tsx';
 import { useFormSubmit } from '../features/people/use-form-submit.ts';
 import { useSignedIn } from '../features/people/use-signed-in.ts';
 import { paths } from '../lib/paths.ts';
 import { Button, LinkButton } from '../ui/button.tsx';
-import { PasswordField, TextField } from '../ui/text-field.tsx';
+import { TextField } from '../ui/text-field.tsx';
 
 export function Component() {
   const { token } = useParams();
@@ -95,13 +91,7 @@ function CodeForm() {
         error={errorOf('code')}
         {...form.register('code')}
       />
-      <PasswordField
-        label="New password"
-        autoComplete="new-password"
-        hint={`At least ${PASSWORD_MIN} characters.`}
-        error={errorOf('password')}
-        {...form.register('password')}
-      />
+      <NewPasswordField label="New password" error={errorOf('password')} {...form.register('password')} />
       <FormError>{rootError}</FormError>
       <div className="acts">
         <Button kind="second" type="submit" wide busy={isBusy}>
@@ -125,13 +115,7 @@ function NewPassword({ token }: { readonly token: string }) {
   return (
     <SplitPage h1="Choose a new password." lead="It ends every session you had, on every device.">
       <form onSubmit={onSubmit} noValidate>
-        <PasswordField
-          label="New password"
-          autoComplete="new-password"
-          hint={`At least ${PASSWORD_MIN} characters. A few words in a row do well.`}
-          error={errorOf('password')}
-          {...form.register('password')}
-        />
+        <NewPasswordField label="New password" error={errorOf('password')} {...form.register('password')} />
         <FormError>{rootError}</FormError>
         <div className="acts">
           <Button kind="primary" type="submit" wide busy={isBusy}>

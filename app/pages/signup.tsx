@@ -1,14 +1,15 @@
 import { useState } from 'react';
 import { Link, useSearchParams } from 'react-router-dom';
-import { joinByCodeSchema, PASSWORD_MIN, signUpByMailSchema, signUpByNameSchema } from '../../shared/schemas/people.ts';
+import { joinByCodeSchema, signUpByMailSchema, signUpByNameSchema } from '../../shared/schemas/people.ts';
 import { FormError } from '../features/people/form-error.tsx';
 import { people } from '../features/people/people.queries.ts';
+import { NewPasswordField, UserNameField } from '../features/people/sign-up-fields.tsx';
 import { SplitPage } from '../features/people/split-page.tsx';
 import { useFormSubmit } from '../features/people/use-form-submit.ts';
 import { useSignedIn } from '../features/people/use-signed-in.ts';
 import { paths } from '../lib/paths.ts';
 import { Button } from '../ui/button.tsx';
-import { PasswordField, TextField } from '../ui/text-field.tsx';
+import { TextField } from '../ui/text-field.tsx';
 
 interface FoundClass {
   readonly code: string;
@@ -110,22 +111,8 @@ function NamePage({ found }: { readonly found: FoundClass }) {
           error={errorOf('name')}
           {...form.register('name')}
         />
-        <TextField
-          label="User name"
-          autoComplete="username"
-          autoCapitalize="none"
-          spellCheck={false}
-          hint="For signing in. Small letters, digits, dots and dashes."
-          error={errorOf('userName')}
-          {...form.register('userName')}
-        />
-        <PasswordField
-          label="Password"
-          autoComplete="new-password"
-          hint={`At least ${PASSWORD_MIN} characters. A few words in a row do well.`}
-          error={errorOf('password')}
-          {...form.register('password')}
-        />
+        <UserNameField error={errorOf('userName')} {...form.register('userName')} />
+        <NewPasswordField error={errorOf('password')} {...form.register('password')} />
         <FormError>{rootError}</FormError>
         <div className="acts">
           <Button kind="primary" type="submit" wide busy={isBusy}>
