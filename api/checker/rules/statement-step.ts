@@ -1,4 +1,5 @@
 import type { RealNumber } from '../solving/real-number.ts';
+import { Unsettled } from '../solving/unsettled.ts';
 import { comparesOf, isListOfValues, type Statement } from '../statements/statement.ts';
 import { judgeApproximation } from './approximation.ts';
 import { judgePlane } from './complex-plane.ts';
@@ -6,6 +7,7 @@ import { judgeComplexStep } from './complex-step.ts';
 import { withFamilies } from './families.ts';
 import { isolatedLetter, judgeAsLetter, judgeFormula, nearlyIsolatedLetter } from './formula.ts';
 import { withEntries } from './matrix-equations.ts';
+import { withPlainForms } from './plain-statements.ts';
 import { isPutIn } from './put-in.ts';
 import { judgeSameEquation } from './same-equation.ts';
 import { freeLetters } from './meaning.ts';
@@ -22,7 +24,17 @@ export interface StatementAnswer extends StepResult {
 }
 
 /** Rules 2 to 4, 6 and 9 on two statements; throws Unsettled. */
-export function judgeStatements(asked: StatementQuestion): StatementAnswer {
+export function judgeStatements(question: StatementQuestion): StatementAnswer {
+  try {
+    return judgeWritten(question);
+  } catch (cause) {
+    const plain = cause instanceof Unsettled && cause.reason !== 'limit' ? withPlainForms(question) : null;
+    if (!plain) throw cause;
+    return judgeWritten(plain);
+  }
+}
+
+function judgeWritten(asked: StatementQuestion): StatementAnswer {
   const { question, families } = withFamilies(withEntries(asked) ?? asked);
   const { above, below, context } = question;
   const letters = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter(
