@@ -11,6 +11,7 @@ import { compareFunctions } from './compare-functions.ts';
 import { compareRationals } from './compare-rationals.ts';
 import { compareQuickly } from './compare-quickly.ts';
 import type { Comparison } from './comparison.ts';
+import { compareOnBranches } from './on-branches.ts';
 import { createPair } from './pair.ts';
 import type { Fact, Pair } from './pair.ts';
 import { flattenLines, wholeLettersOf } from './points.ts';
@@ -23,6 +24,12 @@ export function compareExpressions(above: Expr, below: Expr, context: CheckConte
 
 /** The same for what is no matter for a quick comparison. */
 export function compareAtLength(above: Expr, below: Expr, context: CheckContext): Comparison {
+  const found = compareOrStop(above, below, context);
+  if (found.kind !== 'undecided' || context.assumptions.length === 0) return found;
+  return compareOnBranches(above, below, context, compareOrStop) ?? found;
+}
+
+function compareOrStop(above: Expr, below: Expr, context: CheckContext): Comparison {
   try {
     return compareWithin(above, below, context);
   } catch (error) {
