@@ -1,4 +1,4 @@
-import type { ReadError, ReadErrorCode, ReadingFlag, ReadSettings } from './expression.ts';
+import type { ReadError, ReadErrorCode, Reading, ReadingFlag, ReadSettings } from './expression.ts';
 import { printLine } from './print.ts';
 import { DEFAULT_READ_SETTINGS, readLine } from './read.ts';
 import { lineInWords } from './words.ts';
@@ -18,14 +18,18 @@ export type ReadsAs =
 
 /** How a line is read, and whether the author needs to be told or asked. */
 export function readsAs(tex: string, settings: ReadSettings = DEFAULT_READ_SETTINGS): ReadsAs {
-  const reading = readLine(tex, settings);
+  return showReading(readLine(tex, settings), settings.decimal);
+}
+
+/** The same for a reading that is there already, such as that of a line in its place behind others. */
+export function showReading(reading: Reading, decimal: ReadSettings['decimal']): ReadsAs {
   if (!reading.ok) return { kind: 'error', error: reading.error };
   const { line, flags, alternatives } = reading;
   const words = lineInWords(line);
-  const printed = printLine(line, settings.decimal);
+  const printed = printLine(line, decimal);
   if (alternatives.length > 0) {
     const others = alternatives.map((other) => ({
-      tex: printLine(other, settings.decimal),
+      tex: printLine(other, decimal),
       words: lineInWords(other),
     }));
     return { kind: 'ask', choices: [{ tex: printed, words }, ...others], flags };

@@ -1,7 +1,7 @@
 import { useMutation } from '@tanstack/react-query';
 import { useRef, useState, type ReactNode } from 'react';
 import type { Reading } from '../../../shared/maths/expression.ts';
-import { readLine } from '../../../shared/maths/read.ts';
+import { readLines } from '../../../shared/maths/read-lines.ts';
 import type { TryTask } from '../../../shared/schemas/derivation.ts';
 import type { Verdict } from '../../../shared/schemas/verdict.ts';
 import { api } from '../../lib/api.ts';
@@ -41,6 +41,7 @@ export function TryIt({ task }: TryItProps) {
   const asked: TryTask = { ...task, lines: written.map(({ tex }) => tex) };
   // A ruling on other lines, or under other terms, says nothing about these.
   const verdict = rule.data?.asked === JSON.stringify(asked) ? rule.data.verdict : null;
+  const [, ...readings] = readLines([task.given, ...asked.lines], task.settings);
 
   const write = (id: number, tex: string) => setLines(lines.map((line) => (line.id === id ? { ...line, tex } : line)));
   const addAfter = (id: number) => {
@@ -81,7 +82,9 @@ export function TryIt({ task }: TryItProps) {
               <Under
                 line={line}
                 step={written.indexOf(line) + 1}
-                {...{ verdict, task }}
+                reading={readings[written.indexOf(line)]}
+                decimal={task.settings.decimal}
+                verdict={verdict}
                 onChange={(tex) => write(line.id, tex)}
               >
                 <Button kind="quiet" small onClick={() => remove(line.id)}>
@@ -115,19 +118,19 @@ function ruled(line: Line, index: number, verdict: Verdict | null): EdgeLine {
   return { id: String(line.id), state };
 }
 
-interface UnderProps extends TryItProps {
+interface UnderProps {
   readonly line: Line;
   /** Among the lines that hold maths; 0 for an empty one. */
   readonly step: number;
+  /** Behind the lines before it; undefined for an empty one. */
+  readonly reading: Reading | undefined;
+  readonly decimal: 'point' | 'comma';
   readonly verdict: Verdict | null;
   readonly onChange: (tex: string) => void;
   readonly children: ReactNode;
 }
 
-function Under({ line, step, verdict, task, onChange, children }: UnderProps) {
-  const { decimal, numbers } = task.settings;
-  const reading: Reading | null =
-    line.tex.trim() === '' ? null : readLine(line.tex, { decimal, numbers, functions: [] });
+function Under({ line, step, reading, decimal, verdict, onChange, children }: UnderProps) {
   const ruling = verdict?.steps.find((each) => each.step === step);
   const state = verdict && edgeStates(verdict)[step - 1];
   return (

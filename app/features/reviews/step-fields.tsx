@@ -1,4 +1,5 @@
-import { readsAs, wordReadError } from '../../../shared/maths/reads-as.ts';
+import { readLines } from '../../../shared/maths/read-lines.ts';
+import { showReading, wordReadError, type ReadsAs as Shown } from '../../../shared/maths/reads-as.ts';
 import { SLIP_KINDS, type FindingDraft } from '../../../shared/schemas/finding.ts';
 import type { ReviewAnswer } from '../../../shared/schemas/review.ts';
 import { SLIP_KIND_WORDS } from '../../lib/finding-words.ts';
@@ -38,7 +39,10 @@ export function StepFields({
 function ShouldBe({ review, keeper, draft }: { review: ReviewAnswer; keeper: DraftKeeper; draft: FindingDraft }) {
   const { decimal, numbers } = review.task.settings;
   const label = `What line ${draft.pick} should have been`;
-  const reading = draft.shouldBe.trim() === '' ? null : readsAs(draft.shouldBe, { decimal, numbers, functions: [] });
+  // It is read where it would stand, as the checker does.
+  const above = review.lines.filter((line) => line.number < Number(draft.pick)).map(({ tex }) => tex);
+  const reading =
+    draft.shouldBe.trim() === '' ? undefined : readLines([...above, draft.shouldBe], { decimal, numbers }).at(-1);
   return (
     <div className="fld">
       <span className="flabel" id="should-be-label">
@@ -53,13 +57,13 @@ function ShouldBe({ review, keeper, draft }: { review: ReviewAnswer; keeper: Dra
         keys
       />
       <p className="msg" id="should-be-reads">
-        {reading ? <ReadsAs reading={reading} /> : null}
+        {reading ? <ReadsAs reading={showReading(reading, decimal)} /> : null}
       </p>
     </div>
   );
 }
 
-function ReadsAs({ reading }: { reading: ReturnType<typeof readsAs> }) {
+function ReadsAs({ reading }: { readonly reading: Shown }) {
   if (reading.kind === 'error') return <>{wordReadError(reading.error)}</>;
   const tex = reading.kind === 'note' ? reading.tex : reading.kind === 'ask' ? reading.choices[0]?.tex : undefined;
   if (tex === undefined)

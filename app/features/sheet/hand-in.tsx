@@ -6,7 +6,7 @@ import { Button } from '../../ui/button.tsx';
 import { Dialog } from '../../ui/dialog.tsx';
 import { Maths } from '../../ui/maths.tsx';
 import { showToast } from '../../ui/toast-store.ts';
-import { readLines } from './read-lines.ts';
+import { readLines } from '../../../shared/maths/read-lines.ts';
 import type { LineSettings } from './sheet-store.ts';
 import { handInSheet, previewHandIn, sheetQuery } from './sheet.queries.ts';
 import type { SheetSync } from './sheet-sync.ts';

@@ -3,7 +3,7 @@ import { NodeSelection, type EditorState } from '@tiptap/pm/state';
 import { createContext, useContext, useSyncExternalStore } from 'react';
 import type { Reading, ReadSettings } from '../../../shared/maths/expression.ts';
 import { readInPlace } from '../../../shared/maths/read-in-place.ts';
-import { createLineReader, type Place } from './read-lines.ts';
+import { createLineReader, type Place } from '../../../shared/maths/read-lines.ts';
 import { LINE_PART, placesOf, stepAttributes, type LinePart } from './sheet-commands.ts';
 
 /** What a line shows beside its own attributes; the same object as long as nothing of it changes. */

@@ -28,11 +28,11 @@ const VERDICT: Verdict = {
   ],
 };
 
-function open(): FakeCall[] {
+function open(given: string = TASK.given): FakeCall[] {
   const calls = fakeApi({ 'POST /api/tasks/try': VERDICT });
   render(
     <QueryClientProvider client={new QueryClient()}>
-      <TryIt task={{ ...TASK, assumptions: [] }} />
+      <TryIt task={{ ...TASK, given, assumptions: [] }} />
     </QueryClientProvider>,
   );
   return calls;
@@ -71,4 +71,10 @@ it('begins the next line with a copy of the one above', async () => {
   expect((await field(2)).value).toBe('x^2+1');
   await userEvent.click(screen.getByRole('button', { name: 'Delete line 1' }));
   expect(screen.queryByRole('textbox', { name: 'line 2' })).toBeNull();
+});
+
+it('reads a line in its place behind those before it', async () => {
+  open('x^2-6x=7');
+  (await field(1)).setValue('x_1=7,x_2=-1');
+  expect(await list().findByText(/values of the letter without its number/)).toBeInTheDocument();
 });

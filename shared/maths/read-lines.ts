@@ -1,6 +1,6 @@
-import type { Line, Reading, ReadSettings } from '../../../shared/maths/expression.ts';
-import { lettersOf } from '../../../shared/maths/letters.ts';
-import { functionsIn, orderSymbols, readInPlace } from '../../../shared/maths/read-in-place.ts';
+import type { Line, Reading, ReadSettings } from './expression.ts';
+import { lettersOf } from './letters.ts';
+import { functionsIn, orderSymbols, readInPlace } from './read-in-place.ts';
 
 /** What the lines before a line say to it. */
 export interface Place {
