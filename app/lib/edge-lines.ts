@@ -1,7 +1,7 @@
 import type { ReactNode } from 'react';
 import type { ReadLine } from '../../shared/schemas/review.ts';
 import type { EdgeLine, MendedLine } from '../ui/edge-line.tsx';
-import type { StepState } from '../ui/edge-strokes.ts';
+import type { StepState } from '../../shared/lib/step-words.ts';
 import type { MarkedSpan, TermChoice } from '../ui/tex-pieces.ts';
 
 /** What a page adds to a line of a derivation. */

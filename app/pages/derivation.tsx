@@ -2,7 +2,7 @@ import { useQuery, useQueryClient } from '@tanstack/react-query';
 import { lazy, Suspense } from 'react';
 import { useParams } from 'react-router-dom';
 import type { AuthorDerivation, TeacherDerivation } from '../../shared/schemas/review.ts';
-import { stepWords } from '../features/derivations/verdict-words.ts';
+import { stepWords } from '../../shared/lib/step-words.ts';
 import { AnswerDesk } from '../features/findings/answer-desk.tsx';
 import { derivationQuery } from '../features/findings/findings.queries.ts';
 import { FoundList } from '../features/findings/found-list.tsx';

@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { useSearchParams } from 'react-router-dom';
-import { stepWords } from '../features/derivations/verdict-words.ts';
+import { stepWords } from '../../shared/lib/step-words.ts';
 import { Desk } from '../features/disputes/desk.tsx';
 import { disputesQuery } from '../features/disputes/disputes.queries.ts';
 import { paths } from '../lib/paths.ts';

@@ -1,7 +1,7 @@
 import { useQuery, useQueryClient } from '@tanstack/react-query';
 import { useParams } from 'react-router-dom';
 import type { ReviewAnswer } from '../../shared/schemas/review.ts';
-import { stepWords } from '../features/derivations/verdict-words.ts';
+import { stepWords } from '../../shared/lib/step-words.ts';
 import { ReviewDesk } from '../features/reviews/review-desk.tsx';
 import { ReviewDone } from '../features/reviews/review-done.tsx';
 import { ReviewHead } from '../features/reviews/review-head.tsx';

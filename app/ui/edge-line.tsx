@@ -1,7 +1,8 @@
 import type { CSSProperties, ReactNode } from 'react';
 import { classNames } from './class-names.ts';
 import { EdgeColumn, MendColumn } from './edge-pieces.tsx';
-import type { EdgeRow, StepState } from './edge-strokes.ts';
+import type { StepState } from '../../shared/lib/step-words.ts';
+import type { EdgeRow } from './edge-strokes.ts';
 import { SPOKEN_STATES, STEP_WORDS } from './edge-strokes.ts';
 import { markedOrPlain, Maths } from './maths.tsx';
 import type { MarkedSpan, Sides, TermChoice } from './tex-pieces.ts';

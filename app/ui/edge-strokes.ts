@@ -1,8 +1,4 @@
-/**
- * How a step fares. plain: nothing is known. fault: the first step that does not follow. carried: right for what it was
- * given. also-fails: a further, independent fault. undecided: neither shown to hold nor to fail.
- */
-export type StepState = 'plain' | 'holds' | 'fault' | 'carried' | 'undecided' | 'also-fails';
+import type { StepState } from '../../shared/lib/step-words.ts';
 
 /** A drawn stretch of the edge. */
 export type Stroke = 'none' | 'plain' | 'holds' | 'carried' | 'fault' | 'bracket';

@@ -1,4 +1,4 @@
-import type { StepState } from './edge-strokes.ts';
+import type { StepState } from '../../shared/lib/step-words.ts';
 import { SPOKEN_STATES } from './edge-strokes.ts';
 
 /** A step of the small edge; walked: a reviewer has looked at it. */

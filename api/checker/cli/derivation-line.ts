@@ -1,13 +1,28 @@
 import { z } from 'zod';
 import { checkSettingsSchema, type DerivationInput } from '../../../shared/schemas/verdict.ts';
 
-const lineSchema = z.object({
-  id: z.union([z.string(), z.number()]).nullish(),
-  lines: z.array(z.string()).min(1).max(1000),
-  assume: z.array(z.string()).max(50).nullish(),
-  uses: z.array(z.array(z.number().int().min(0)).nullable()).nullish(),
-  settings: z.preprocess(plainSettings, checkSettingsSchema.nullish()),
-});
+const example = '{"id":"1","lines":["x+x","2x"]}';
+
+const texts = (error: string) => z.array(z.string('write TeX in quotation marks'), error);
+
+const lineSchema = z.object(
+  {
+    id: z.union([z.string(), z.number()], { error: 'write a text or a number, or leave it out' }).nullish(),
+    lines: texts('write a list of TeX, the given first, such as ["x+x","2x"]')
+      .min(1, 'write at least the given line')
+      .max(1000, 'write at most 1000 lines'),
+    assume: texts('write a list of conditions in TeX, such as ["x>0"]')
+      .max(50, 'write at most 50 conditions')
+      .nullish(),
+    uses: z
+      .array(z.array(z.number().int().min(0)).nullable(), {
+        error: 'write for each line a list of the lines that it follows from, or null for the line above',
+      })
+      .nullish(),
+    settings: z.preprocess(plainSettings, checkSettingsSchema.nullish()),
+  },
+  { error: `write an object, such as ${example}` },
+);
 
 const kindsOfGoal: ReadonlySet<string> = new Set(['free', 'expanded', 'factored', 'simplified']);
 
@@ -36,7 +51,8 @@ export function parseDerivationLine(text: string): DerivationLine {
   try {
     data = JSON.parse(text.replace(/^\uFEFF/, ''));
   } catch (cause) {
-    return { ok: false, id: null, message: cause instanceof Error ? cause.message : 'not JSON' };
+    const why = cause instanceof Error ? ` (${cause.message})` : '';
+    return { ok: false, id: null, message: `not JSON${why}: write one object a line, such as ${example}` };
   }
   const parsed = lineSchema.safeParse(data);
   if (!parsed.success) {

@@ -1,50 +1,51 @@
-import type { DerivationInput, Note, StepRuling, Verdict } from '../../../shared/schemas/verdict.ts';
+import {
+  edgeStates,
+  stepWords,
+  verdictHeadline,
+  type Sentence,
+  type StepState,
+} from '../../../shared/lib/step-words.ts';
+import { wordReadError } from '../../../shared/maths/reads-as.ts';
+import type { ReadErrorCode } from '../../../shared/maths/expression.ts';
+import type { DerivationInput, Evidence, StepRuling, Verdict } from '../../../shared/schemas/verdict.ts';
 
-const noteWords: Record<Note, string> = {
-  'given-miscopied': 'a miscopy of the given',
-  domain: 'has values on a part only',
-  constant: 'the constant of integration is missing',
-  'one-way': 'cannot be turned round',
-  presentation: 'a fault of presentation',
-  empty: 'never true, or always true, on both lines',
-  meaningless: 'has no value anywhere',
-  unfinished: 'the goal is not reached',
-  candidates: 'lists values that are still to be tried',
-  'not-rejected': 'lists a value that is never rejected',
-  remark: 'a remark',
-  cases: 'one case of several',
-  definition: 'a definition',
-  continued: 'goes on from the line above',
-};
+const longest = 400;
+const margin = ' '.repeat(5);
 
-/** A verdict for people: each line with its ruling and what shows it. */
-export function explainVerdict(input: DerivationInput, verdict: Verdict): string {
-  const summary =
-    verdict.firstFault === null ? verdict.outcome : `${verdict.outcome}, first fault in step ${verdict.firstFault}`;
-  const rows = input.lines.map((line, k) => {
-    const step = verdict.steps[k - 1];
-    return step ? `  ${k}. ${line}\n     ${explainStep(step)}` : `  ${k}. ${line}\n     the given`;
+/** A verdict for people: each line with what is said of its step, as the pages of the product say it. */
+export function explainVerdict({ lines }: Pick<DerivationInput, 'lines'>, verdict: Verdict): string {
+  const states = edgeStates(verdict);
+  const rows = lines.flatMap((line, k) => {
+    const said = k === 0 ? ['The given.'] : explainStep(verdict.steps[k - 1], states[k - 1]);
+    return [`${String(k).padStart(3)}  ${shortened(line)}`, ...said.map((words) => margin + words)];
   });
-  return [summary, ...rows].join('\n');
+  return [verdictHeadline(verdict), ...rows].join('\n');
 }
 
-function explainStep(step: StepRuling): string {
-  const { evidence } = step;
-  const words = [step.reached ? `${step.ruling} (${step.reached})` : step.ruling];
-  if (step.notes.length > 0) words.push(step.notes.map((note) => noteWords[note]).join(', '));
-  if (evidence.lost) words.push(`lost: ${evidence.lost.join(', ')}`);
-  if (evidence.gained) words.push(`gained: ${evidence.gained.join(', ')}`);
-  if (evidence.witness) {
-    const at = Object.entries(evidence.witness.at).map(([letter, value]) => `${letter} = ${value}`);
-    const place = at.length > 0 ? `at ${at.join(', ')} ` : '';
-    words.push(`${place}the line above is ${evidence.witness.above}, this one is ${evidence.witness.below}`);
-  }
-  if (evidence.excluded) words.push(`needs ${evidence.excluded.join(', ')}`);
-  if (evidence.meant) words.push(`meant: ${evidence.meant}`);
-  if (evidence.solutions) words.push(`solutions: ${evidence.solutions}`);
-  if (evidence.error) {
-    const { line, place, expected } = evidence.error;
-    words.push(`line ${line} cannot be read at ${place.start}; expected ${expected.join(' or ') || 'something else'}`);
-  } else if (evidence.reason) words.push(`reason: ${evidence.reason}`);
-  return words.join('; ');
+/** What cannot be read may be of any length. */
+function shortened(line: string): string {
+  return line.length > longest ? `${line.slice(0, longest)}… (${line.length} characters)` : line;
+}
+
+function explainStep(step: StepRuling | undefined, state: StepState | undefined): string[] {
+  if (!step || !state) return [];
+  const { summary, evidence, notes, reached } = stepWords(step, state);
+  const sentences = [summary, ...evidence, ...notes].map(plainly);
+  return [...sentences, ...errorWords(step.evidence), ...endingWords(step.evidence), ...(reached ? [reached] : [])];
+}
+
+function plainly(sentence: Sentence): string {
+  return sentence.map((part) => (typeof part === 'string' ? part : part.tex)).join('');
+}
+
+function errorWords({ error }: Evidence): string[] {
+  if (!error) return [];
+  const { code, place, found, expected } = error;
+  return [wordReadError({ code: code as ReadErrorCode, span: place, found, expected })];
+}
+
+/** The author's later lines as they would have been. */
+function endingWords({ mendedEnding }: Evidence): string[] {
+  const [, ...later] = mendedEnding ?? [];
+  return later.length > 0 ? [`From there on: ${later.join(' ; ')}`] : [];
 }

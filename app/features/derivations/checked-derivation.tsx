@@ -2,7 +2,7 @@ import type { HandedInLine } from '../../../shared/schemas/sheet.ts';
 import type { Verdict } from '../../../shared/schemas/verdict.ts';
 import { Derivation } from '../../ui/derivation.tsx';
 import { StepEvidence } from './step-evidence.tsx';
-import { edgeStates, stepWords, verdictHeadline } from './verdict-words.ts';
+import { edgeStates, stepWords, verdictHeadline } from '../../../shared/lib/step-words.ts';
 
 interface CheckedDerivationProps {
   readonly lines: readonly HandedInLine[];

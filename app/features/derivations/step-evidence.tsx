@@ -1,5 +1,5 @@
 import { Words } from './words.tsx';
-import type { StepWords } from './verdict-words.ts';
+import type { StepWords } from '../../../shared/lib/step-words.ts';
 
 /** What is said of one step: how it fares, what shows it, and how that was found. */
 export function StepEvidence({ words, summary = true }: { readonly words: StepWords; readonly summary?: boolean }) {

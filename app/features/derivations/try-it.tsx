@@ -8,12 +8,12 @@ import { api } from '../../lib/api.ts';
 import { Button } from '../../ui/button.tsx';
 import { Derivation } from '../../ui/derivation.tsx';
 import type { EdgeLine } from '../../ui/edge-line.tsx';
-import type { StepState } from '../../ui/edge-strokes.ts';
+import type { StepState } from '../../../shared/lib/step-words.ts';
 import { MathsField, type MathsFieldHandle } from '../../ui/maths-field.tsx';
 import { MathsReading } from '../../ui/maths-reading.tsx';
 import { problemWords } from '../../ui/states.tsx';
 import { StepEvidence } from './step-evidence.tsx';
-import { edgeStates, stepWords, verdictHeadline } from './verdict-words.ts';
+import { edgeStates, stepWords, verdictHeadline } from '../../../shared/lib/step-words.ts';
 import './try-it.css';
 
 export interface TryItProps {

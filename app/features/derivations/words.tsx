@@ -1,6 +1,6 @@
 import { Fragment } from 'react';
 import { Maths } from '../../ui/maths.tsx';
-import type { Sentence } from './verdict-words.ts';
+import type { Sentence } from '../../../shared/lib/step-words.ts';
 
 const SHORT_TEX = 40;
 

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import type { EdgeStep, StepState } from '../../../app/ui/edge-strokes.ts';
+import type { EdgeStep } from '../../../app/ui/edge-strokes.ts';
 import { strokesOf } from '../../../app/ui/edge-strokes.ts';
+import type { StepState } from '../../../shared/lib/step-words.ts';
 
 const line = (state: StepState | null, isBracketed = false): EdgeStep => ({ state, isBracketed, isLine: true });
 const words: EdgeStep = { state: null, isBracketed: false, isLine: false };

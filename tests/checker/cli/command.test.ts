@@ -93,8 +93,8 @@ describe('the command', { timeout: 60_000 }, () => {
     const { status, out } = run(sent.map(([text]) => text).join('\n'), '--explain');
     expect(status).toBe(0);
     const text = out.join('\n');
-    expect(text).toContain('7: faulty, first fault in step 1');
-    expect(text).toContain('line 1 cannot be read at 3; expected number or letter or (');
+    expect(text).toContain('7: The first fault is step 1.');
+    expect(text).toContain('Something is missing, at “)” (character 4). Put a number, a letter or an opening bracket');
     expect(text).toContain('none: cannot be read: lines');
   });
 });

@@ -31,8 +31,17 @@ describe('a verdict for people', () => {
   it('names the first fault, what was lost and where to try', () => {
     const input = { lines: ['x^2=7x', 'x=7'], assume: [], settings: {} };
     const text = explainVerdict(input, checkDerivation(input));
-    expect(text).toContain('first fault in step 1');
-    expect(text).toContain('lost: 0');
-    expect(text).toContain('at x = 0 the line above is true, this one is false');
+    expect(text).toContain('The first fault is step 1.');
+    expect(text).toContain('0 solves the line above, but not this one: it was lost.');
+    expect(text).toContain('At x=0 the line above is true, this one is not true.');
+  });
+
+  it('tell people the slip, the mended line and the ending', () => {
+    const input = { lines: ['(x+5)^2-x^2', 'x^2+25-x^2', '25'], assume: [], settings: {} };
+    const text = explainVerdict(input, checkDerivation(input));
+    expect(text).toContain('Nearest to what was written, this would follow: x^2+10x+25-x^2.');
+    expect(text).toContain('From there on: 10x+25');
+    expect(text).toMatch(/What likely happened: [a-z ]*square/);
+    expect(text).toContain('Step 2 follows from its own line above, which carries the fault on.');
   });
 });

@@ -1,5 +1,10 @@
-import type { Evidence, Note, StepRuling, UndecidedReason, Verdict } from '../../../shared/schemas/verdict.ts';
-import type { StepState } from '../../ui/edge-strokes.ts';
+import type { Evidence, Note, StepRuling, UndecidedReason, Verdict } from '../schemas/verdict.ts';
+
+/**
+ * How a step fares. plain: nothing is known. fault: the first step that does not follow. carried: right for what it was
+ * given. also-fails: a further, independent fault. undecided: neither shown to hold nor to fail.
+ */
+export type StepState = 'plain' | 'holds' | 'fault' | 'carried' | 'undecided' | 'also-fails';
 
 /** Words, with maths as TeX between them. */
 export type WordPart = string | { readonly tex: string };

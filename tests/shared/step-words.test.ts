@@ -1,11 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import {
-  edgeStates,
-  stepWords,
-  verdictHeadline,
-  type Sentence,
-} from '../../../app/features/derivations/verdict-words.ts';
-import type { StepRuling } from '../../../shared/schemas/verdict.ts';
+import { edgeStates, stepWords, verdictHeadline, type Sentence } from '../../shared/lib/step-words.ts';
+import type { StepRuling } from '../../shared/schemas/verdict.ts';
 
 function ruling(step: number, values: Partial<StepRuling> = {}): StepRuling {
   return { step, ruling: 'holds', reached: 'proved', notes: [], evidence: {}, ...values };
