@@ -1,3 +1,5 @@
+import { lettersOf } from '../../../shared/maths/letters.ts';
+import { exprsOfStatement, type Statement } from '../statements/statement.ts';
 import { compareNumbers, type RealNumber } from '../solving/real-number.ts';
 import { nameNumber } from '../solving/naming.ts';
 import { recogniseNumber } from '../solving/recognise.ts';
@@ -16,7 +18,10 @@ export function rejectCandidates(rulings: readonly StepResult[], last: WalkState
   return rulings.map((result, k) => {
     if (k + 1 !== step || result.ruling !== 'holds') return result;
     const values = firsts.filter((first) => first.step === step).map(({ value }) => nameNumber(value, recogniseNumber));
-    const at = { [route.unknown ?? route.givenLetters[0] ?? 'x']: values[0] as string };
+    const meaning = last.meanings[step];
+    const listed = meaning?.kind === 'statement' ? lettersIn(meaning.statement) : [];
+    const name = listed.length === 1 ? listed[0] : (route.unknown ?? route.givenLetters[0]);
+    const at = { [name ?? 'x']: values[0] as string };
     return {
       ...result,
       ruling: 'fails',
@@ -24,6 +29,10 @@ export function rejectCandidates(rulings: readonly StepResult[], last: WalkState
       evidence: { ...result.evidence, gained: values, witness: { at, above: 'false', below: 'true' } },
     };
   });
+}
+
+function lettersIn(statement: Statement): string[] {
+  return [...new Set(exprsOfStatement(statement).flatMap((expr) => [...lettersOf(expr)]))];
 }
 
 function lastStatement(last: WalkState, route: Route): number {

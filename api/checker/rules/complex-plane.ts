@@ -30,6 +30,7 @@ export function judgePlane(
   const names = [...new Set(all.flatMap(exprsOfStatement).flatMap((expr) => lettersOf(expr)))];
   const letters = lettersFor(names, context);
   if (!letters) return null;
+  const isInStep = [above, below].flatMap(exprsOfStatement).some((expr) => lettersOf(expr).some(isComplex));
   const convert = (statement: Statement): Statement | null => toReal(statement, letters.of, context);
   const [a, b, r] = [above, below, reference].map(convert);
   const earlier = known.map(convert);
@@ -48,7 +49,7 @@ export function judgePlane(
   };
   const found = judgeReal(asked, judge);
   // That z is x + yi where no line says so is custom.
-  return letters.isByCustom && found.ruling === 'fails' ? undecided('no-agreed-meaning') : found;
+  return isInStep && letters.isByCustom && found.ruling === 'fails' ? undecided('no-agreed-meaning') : found;
 }
 
 function lettersIn(statement: Statement): string[] {

@@ -53,7 +53,7 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
   const { above, below, letter, context } = question;
   const same = judgeSameEquation(above, below, context);
   if (same) return same;
-  const names = [...new Set([...freeLetters(above, context), ...freeLetters(below, context)])].filter(
+  const names = [...new Set([above, below, question.reference].flatMap((line) => freeLetters(line, context)))].filter(
     (name) => name !== letter && !question.families.has(name),
   );
   const seen: OneLetterAnswer[] = [];

@@ -4,6 +4,8 @@ import { div, isZero, mul, rational, sub, type Rational } from '../numbers/ratio
 import { degreeIn } from '../solving/linear.ts';
 import { toFraction } from '../solving/fraction.ts';
 import { differenceGraph } from '../statements/solve.ts';
+import { numberExpr, productExpr, sumExpr } from './build-expr.ts';
+import { sameUpToFactor } from './same-equation.ts';
 import { comparesOf, type CompareStatement, type Statement } from '../statements/statement.ts';
 
 /**
@@ -65,4 +67,31 @@ function reduceBy(row: readonly Rational[], base: readonly (readonly Rational[])
     if (!isZero(factor)) rest = rest.map((value, k) => sub(value, mul(factor, other[k] as Rational)));
   }
   return rest;
+}
+
+const factors: readonly Rational[] = [1, -1, 2, -2, 3, -3]
+  .map((n) => rational(n))
+  .concat([rational(1, 2), rational(-1, 2)]);
+
+/** Whether each equation below is one that is known, or one plus a small multiple of another, as they are written. */
+export function followsBySums(known: readonly Statement[], below: Statement, context: CheckContext): boolean {
+  const equations = known.flatMap((statement) => (statement.kind === 'any' ? [] : comparesOf(statement)));
+  const wanted = below.kind === 'any' ? [] : comparesOf(below);
+  if (wanted.length === 0 || equations.length > 6 || [...equations, ...wanted].some(({ sign }) => sign !== '='))
+    return false;
+  const isSame = (a: CompareStatement, b: CompareStatement): boolean =>
+    sameUpToFactor(a, b, new Map(), context)?.sameDomain === true;
+  return wanted.every(
+    (equation) =>
+      equations.some((one) => isSame(one, equation)) ||
+      equations.some((one, k) =>
+        equations.slice(k + 1).some((other) => factors.some((factor) => isSame(sumOf(one, other, factor), equation))),
+      ),
+  );
+}
+
+function sumOf(a: CompareStatement, b: CompareStatement, factor: Rational): CompareStatement {
+  const plus = (x: CompareStatement['left'], y: CompareStatement['left']): CompareStatement['left'] =>
+    sumExpr([x, productExpr([numberExpr(factor), y])]);
+  return { kind: 'compare', left: plus(a.left, b.left), sign: '=', right: plus(a.right, b.right) };
 }

@@ -161,10 +161,17 @@ function factorialOf(
 ): Expr | null {
   const shift = shiftOf(operand, letter, context);
   if (!shift) return null;
-  if (shift.times === 0n) return { kind: 'factorial', operand, span: operand.span };
+  if (shift.times === 0n) return constantFactorial(shift.plus) ?? { kind: 'factorial', operand, span: operand.span };
   const more = shift.plus - least;
   needs.from = max(needs.from, -shift.plus);
   return more > mostFactors ? null : productExpr([whole, ...fallingFrom(operand, more)]);
+}
+
+function constantFactorial(n: bigint): Expr | null {
+  if (n < 0n || n > 20n) return null;
+  let product = 1n;
+  for (let k = 2n; k <= n; k += 1n) product *= k;
+  return numberExpr(rational(product));
 }
 
 /** top (top-1) ..., as many factors as said. */

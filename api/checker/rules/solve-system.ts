@@ -1,10 +1,11 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { mapExpr } from '../../../shared/maths/walk.ts';
+import { rationalOf } from '../calculus/build.ts';
 import { createForms } from '../compare/normal-forms.ts';
 import type { CheckContext } from '../context.ts';
 import { constantOf } from '../numbers/form.ts';
-import { rational, type Rational } from '../numbers/rational.ts';
+import { equals, pow, rational, type Rational } from '../numbers/rational.ts';
 import { toFraction } from '../solving/fraction.ts';
 import { degreeIn } from '../solving/linear.ts';
 import type { RealNumber } from '../solving/real-number.ts';
@@ -93,10 +94,28 @@ export function openLetters(statement: Statement, context: CheckContext, anchor:
 
 /** All that satisfies several equations together; throws Unsettled where elimination does not get there. */
 export function solveSystem(equations: readonly CompareStatement[], context: CheckContext): SystemSolution[] {
-  const found = eliminate(equations.map(withoutDenominators), new Map(), { context, anchor: null }, 0);
+  const found = eliminate(
+    equations.map(withoutPowers).map(withoutDenominators),
+    new Map(),
+    { context, anchor: null },
+    0,
+  );
   const solutions = found.filter((solution) => isSolution(equations, solution, context));
   if (solutions.length > mostSolutions) throw new Unsettled('limit');
   return solutions;
+}
+
+/** 2^{x+y}=8 is x+y=3. */
+function withoutPowers(equation: CompareStatement): CompareStatement {
+  const { left, right } = equation;
+  const base = left.kind === 'power' && lettersOf(left.exponent).length > 0 ? rationalOf(left.base) : null;
+  const value = base && rationalOf(right);
+  if (left.kind !== 'power' || !base || !value || value.num <= 0n || base.num <= 0n) return equation;
+  for (let n = 0; n <= 12; n += 1) {
+    if (equals(pow(base, n), value)) return { ...equation, left: left.exponent, right: numberExpr(rational(n)) };
+    if (equals(pow(base, -n), value)) return { ...equation, left: left.exponent, right: numberExpr(rational(-n)) };
+  }
+  return equation;
 }
 
 /** Letters below a line would hide what is linear; solutions are tried in the equations as they were. */

@@ -43,7 +43,7 @@ function judgeWritten(asked: StatementQuestion): StatementAnswer {
   if (context.numbers === 'complex') return withoutCandidates(judgeComplex(question, letters));
   const identity = letters.some(isCapital) && letters.length > 1 ? judgeUndetermined(question, judgeStatements) : null;
   if (identity) return withoutCandidates(identity);
-  if (isSystem(question)) return withoutCandidates(judgeSystemStep(question));
+  if (isSystem(question)) return { candidates: [], ...judgeSystemStep(question) };
   const letter = letters.length === 1 ? (letters[0] as string) : chooseUnknown(question, letters);
   if (letter === null)
     return withoutCandidates(judgeSameEquation(above, below, context) ?? judgeForAny(question, letters));

@@ -12,7 +12,10 @@ import { Unsettled } from '../solving/unsettled.ts';
 import { comparesOf, exprsOfStatement, type CompareStatement, type Statement } from '../statements/statement.ts';
 import { letterExpr, numberExpr } from './build-expr.ts';
 import { freeLetters } from './meaning.ts';
-import { isCombination } from './linear-combination.ts';
+import type { Note } from '../../../shared/schemas/verdict.ts';
+import type { RealNumber } from '../solving/real-number.ts';
+import { strayValues } from './stray-values.ts';
+import { followsBySums, isCombination } from './linear-combination.ts';
 import {
   isTrueStatement,
   openLetters,
@@ -37,8 +40,13 @@ function isJoint(statement: Statement, context: CheckContext): boolean {
   return equations.length > 1 && new Set(equations.flatMap((equation) => freeLetters(equation, context))).size > 1;
 }
 
+export interface SystemAnswer extends StepResult {
+  /** Values that the line lists though no solution has them. */
+  readonly candidates?: readonly RealNumber[];
+}
+
 /** Rule 6a: a line holds when every solution of what is known satisfies it; values listed are solutions, all of them. */
-export function judgeSystemStep(question: StatementQuestion): StepResult {
+export function judgeSystemStep(question: StatementQuestion): SystemAnswer {
   const { context, known } = question;
   const below = asPoint(question) ?? question.below;
   const first = judgeKnown(known, below, context);
@@ -78,7 +86,17 @@ function pointOf(statement: Statement, letters: readonly string[]): Statement | 
   };
 }
 
-function judgeKnown(known: readonly Statement[], below: Statement, context: CheckContext): StepResult {
+function judgeKnown(known: readonly Statement[], below: Statement, context: CheckContext): SystemAnswer {
+  try {
+    return judgeBySolutions(known, below, context);
+  } catch (cause) {
+    // What cannot be solved may still be added up.
+    if (cause instanceof Unsettled && followsBySums(known, below, context)) return holds('sampled');
+    throw cause;
+  }
+}
+
+function judgeBySolutions(known: readonly Statement[], below: Statement, context: CheckContext): SystemAnswer {
   const solutions = branchesOf({ kind: 'all', parts: known }).flatMap((branch) => solveSystem(branch, context));
   if (below.kind === 'never')
     return solutions.length === 0 ? holds('proved') : failAt(solutions[0] as SystemSolution, context, 'lost');
@@ -95,7 +113,9 @@ function judgeKnown(known: readonly Statement[], below: Statement, context: Chec
   }
   const extra = listedPoints(below, context).find((point) => !satisfies(known, point, context));
   if (extra) return failAt({ values: extra, anchor: null }, context, 'gained');
-  return holds(sampled ? 'sampled' : 'proved', [], solutionsEvidence(solutions, context));
+  const candidates = strayValues(below, solutions, context);
+  const notes: Note[] = candidates.length > 0 ? ['candidates'] : [];
+  return { ...holds(sampled ? 'sampled' : 'proved', notes, solutionsEvidence(solutions, context)), candidates };
 }
 
 /** Each way to choose one case of every "or": lists of equations that hold together. */

@@ -25,8 +25,15 @@ import { isKnown } from '../values/arithmetic.ts';
 import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import type { Graph } from '../values/graph.ts';
 import { lowerAll } from '../values/lower.ts';
-import { familyPoints } from './family.ts';
-import { isLetter, isListOfValues, type CompareStatement, type MemberStatement, type Statement } from './statement.ts';
+import { familyPoints, familySets } from './family.ts';
+import {
+  comparesOf,
+  isLetter,
+  isListOfValues,
+  type CompareStatement,
+  type MemberStatement,
+  type Statement,
+} from './statement.ts';
 
 /** How a statement about one letter is solved, and what its other letters stand for. */
 export interface SolveEnv extends LineEnv {
@@ -36,6 +43,8 @@ export interface SolveEnv extends LineEnv {
 
 /** The values of the letter for which a statement is true; throws Unsettled where that cannot be found. */
 export function solveStatement(statement: Statement, env: SolveEnv): RealSet {
+  const family = env.families.size > 0 ? familyOfOrders(statement, env) : null;
+  if (family !== null) return familySets(statement, family, env, solveStatement);
   switch (statement.kind) {
     case 'always':
       return wholeLine;
@@ -50,6 +59,15 @@ export function solveStatement(statement: Statement, env: SolveEnv): RealSet {
     case 'compare':
       return solveCompare(statement, env);
   }
+}
+
+/** The index of a family in inequalities, such as pi/6 + 2k pi < x < 5pi/6 + 2k pi; null for anything else. */
+function familyOfOrders(statement: Statement, { families }: SolveEnv): string | null {
+  if (statement.kind !== 'all' && statement.kind !== 'compare') return null;
+  const compares = comparesOf(statement);
+  const isIn = ({ left, right }: CompareStatement, name: string): boolean =>
+    [left, right].some((side) => lettersOf(side).includes(name));
+  return [...families].find((name) => compares.some((c) => c.sign !== '=' && isIn(c, name))) ?? null;
 }
 
 /** left - right as one graph. */
