@@ -61,7 +61,8 @@ function explainFault(
   return within(allowed.fault * share, () => ({
     ...look(allowed.slip, (asked) => namedSlip(asked, fault, route, state)),
     ...look(allowed.mend, (asked) => mends(asked, fault, isFirst, verdict, route, state)),
-    ...look(allowed.difference, difference),
+    // A line without a value differs from nothing.
+    ...(fault.evidence.witness ? look(allowed.difference, difference) : {}),
   }));
 }
 

@@ -58,10 +58,14 @@ export function product(...parts: readonly Expr[]): Expr {
         : {
             kind: 'product',
             factors: kept,
-            joins: kept.slice(1).map((factor) => (factor.kind === 'number' ? 'dot' : 'implicit')),
+            joins: kept.slice(1).map((factor) => (startsWithDigit(factor) ? 'dot' : 'implicit')),
             span,
           };
   return negative ? neg(result) : result;
+}
+
+function startsWithDigit(factor: Expr): boolean {
+  return factor.kind === 'number' || (factor.kind === 'power' && startsWithDigit(factor.base));
 }
 
 export function quotient(numerator: Expr, denominator: Expr): Expr {

@@ -4,7 +4,7 @@ import { childrenOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { suggestForm } from '../suggest/suggest-form.ts';
-import { neg, sum, termsOf } from './build.ts';
+import { isZero, neg, sum, termsOf } from './build.ts';
 import { expanded, spread, sumExpr } from './monomials.ts';
 import { overOneDenominator } from './one-denominator.ts';
 import { workOut } from './worked-out.ts';
@@ -27,7 +27,8 @@ export function shortDifference(above: Expr, below: Expr, context: CheckContext)
     .flatMap((form) => (form && !hasQuotientInside(form) ? [{ form, tex: printExpr(form) }] : []))
     .filter(({ tex }) => tex.length <= longest);
   texts.sort((a, b) => a.tex.length - b.tex.length);
-  return texts.find(({ form }) => compareExpressions(whole, form, context).kind === 'equal')?.tex ?? null;
+  const found = texts.find(({ form }) => !isZero(form) && compareExpressions(whole, form, context).kind === 'equal');
+  return found?.tex ?? null;
 }
 
 /** Shorter than the two lines written one after the other, so that something has come of it. */
@@ -63,5 +64,7 @@ function isRational(expr: Expr): boolean {
 
 function quotients(whole: Expr): (Expr | null)[] {
   const joined = overOneDenominator(whole);
-  return [joined, joined && suggestForm(joined, 'factor')];
+  const terms = expanded(whole);
+  const plain = terms && terms.length <= mostTerms ? sumExpr(terms) : null;
+  return [plain, joined, joined && suggestForm(joined, 'factor')];
 }

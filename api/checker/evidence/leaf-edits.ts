@@ -223,8 +223,14 @@ function* changedTerm(
     if (turned) yield { edits: front, cost: costs.sign + frontMinus(leads) + below(place) + inside };
     return;
   }
-  const at = outer(node).start;
-  const extra = (size.den === 1n ? 0 : fractionCost) + (node.kind === 'quotient' ? 0.4 : 0);
+  // A number before a fraction rather goes into its numerator.
+  const isAbove =
+    node.kind === 'quotient' &&
+    node.written === 'fraction' &&
+    node.numerator.kind !== 'sum' &&
+    node.denominator.kind !== 'number';
+  const at = isAbove ? outer(node.numerator).start : outer(node).start;
+  const extra = (size.den === 1n ? 0 : fractionCost) + (node.kind === 'quotient' && !isAbove ? 0.4 : 0);
   const bracketed = node.kind === 'sum' && !node.bracketed;
   if (!bracketed)
     yield {

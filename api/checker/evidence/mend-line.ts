@@ -1,7 +1,7 @@
 import type { Line, RelationSign, Span } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { readLine } from '../../../shared/maths/read.ts';
-import { sameLine } from '../../../shared/maths/same.ts';
+import { sameExpr, sameLine } from '../../../shared/maths/same.ts';
 import { BudgetSpent, createBudget } from '../context.ts';
 import { aimsOf, expressionsIn } from './aims.ts';
 import { termsOf } from './build.ts';
@@ -34,6 +34,8 @@ export interface MendedLine {
 }
 
 const mostRuled = 24;
+/** Of lines written anew, whatever was looked at before. */
+const mostAnew = 4;
 const rightCost = 1.2;
 const rewrittenCost = 4;
 /** Beyond this two changes may be better than one. */
@@ -56,7 +58,7 @@ export function mendLine(question: MendQuestion): MendedLine | null {
       ]);
     if (found) return found;
   }
-  return trials.firstThatHolds([...wholeChanges(question, aims.wide)]);
+  return trials.firstThatHolds([...wholeChanges(question, aims.wide)], mostAnew);
 }
 
 /** What is read off the line above as a statement: signs, values, cases. */
@@ -98,6 +100,20 @@ function* wholeChanges(question: MendQuestion, aims: readonly Aim[]): Generator<
   const pair = expressionsIn(question);
   const [aim] = aims;
   if (pair && aim) yield* rewritten(aim, pair.above, question.link === 1 ? question.aboveTex : null, question.context);
+  yield* sideAgain(question);
+}
+
+/** Where one side stands as it was and the other had nothing to be done: that side as it was. */
+function* sideAgain({ above, line, aboveTex }: MendQuestion): Generator<Candidate> {
+  if (above.kind !== 'relation' || line.kind !== 'relation' || aboveTex === null) return;
+  for (const [own, was, other, kept] of [
+    [line.left, above.left, line.right, above.right],
+    [line.right, above.right, line.left, above.left],
+  ] as const) {
+    if (!sameExpr(other, kept)) continue;
+    const text = aboveTex.slice(outer(was).start, outer(was).end);
+    yield { edits: [{ ...outer(own), text }], cost: rewrittenCost + 1, touchesRight: false };
+  }
 }
 
 /** In a long line only those terms are looked at that do not match the line above. */
@@ -190,7 +206,7 @@ function placeOf(candidate: Candidate): number {
 
 interface Trials {
   /** In the order of their costs, leftmost on ties. */
-  readonly firstThatHolds: (candidates: readonly Candidate[]) => MendedLine | null;
+  readonly firstThatHolds: (candidates: readonly Candidate[], more?: number) => MendedLine | null;
 }
 
 /** The checker's own ruling on changed lines, each looked at once and not too many of them. */
@@ -207,10 +223,11 @@ function createTrials(question: MendQuestion): Trials {
     return { ...spliced, line: reading.line, edits, isRewritten: candidate.cost >= rewrittenCost };
   };
   return {
-    firstThatHolds(candidates) {
+    firstThatHolds(candidates, more = 0) {
+      const most = Math.max(mostRuled, more > 0 ? seen.size + more : 0);
       const ordered = [...candidates].sort((a, b) => weight(a) - weight(b) || placeOf(a) - placeOf(b));
       for (const candidate of ordered) {
-        if (seen.size > mostRuled) return null;
+        if (seen.size > most) return null;
         const found = attempt(candidate);
         if (found) return found;
       }

@@ -13,22 +13,55 @@ type WrongPart = NonNullable<Evidence['wrongPart']>;
  * the mend reaches over several parts or puts in a new one.
  */
 export function findWrongPart({ tex, line, settings }: MendQuestion, mended: MendedLine): WrongPart | null {
-  if (mended.isRewritten) return null;
+  const isAnew = coversAll(line, mended.edits);
+  const edits = isAnew ? trimmed(tex, mended) : mended.edits;
+  if (mended.isRewritten && coversAll(line, edits)) return null;
   const { decimal, numbers } = settings;
   const sign = changedSign(line, mended);
-  const parts = sign ? [sign] : [...termsOfLine(tex, { decimal, numbers }), ...fractionParts(line), ...sidesOf(line)];
-  const holdsAll = (part: Span): boolean => mended.edits.every((edit) => isWithin(edit, part));
+  const whole = edits.length === 1 ? exprsOf(line).map(outer) : sidesOf(line);
+  const parts = sign ? [sign] : [...termsOfLine(tex, { decimal, numbers }), ...fractionParts(line), ...whole];
+  const holdsAll = (part: Span): boolean => edits.every((edit) => isWithin(edit, part, tex));
   const found = parts.find(holdsAll);
   const inner = exprsOf(line).flatMap(innerParts).filter(holdsAll);
   const span = sign ? found : (inner.sort((a, b) => lengthOf(a) - lengthOf(b))[0] ?? found);
   if (!span) return null;
   const is = tex.slice(span.start, span.end).trim();
   const end = mended.tex.length - (tex.length - span.end);
-  const shouldBe = mended.tex.slice(span.start, end).trim();
+  const shouldBe = mended.tex
+    .slice(span.start, end)
+    .trim()
+    .replace(/^\{([^{}]*(\{[^{}]*\}[^{}]*)*)\}$/, '$1');
   if (shouldBe === '' || is === shouldBe) return null;
   const lostSign =
     is.startsWith('-') && !/^[+-]/.test(shouldBe) && exprsOf(line).some((expr) => isOneOfSeveral(expr, span));
   return { span, is, shouldBe: lostSign ? `+${shouldBe}` : shouldBe };
+}
+
+function coversAll(line: Line, edits: readonly Edit[]): boolean {
+  return exprsOf(line).some((expr) =>
+    edits.some(({ start, end }) => start <= outer(expr).start && outer(expr).end <= end),
+  );
+}
+
+const token = /\\[a-zA-Z]+|\d+|\s+|./g;
+
+/** Of a longer piece that was written anew only that in which the two texts differ, from the first token to the last. */
+function trimmed(tex: string, { edits }: MendedLine): readonly Edit[] {
+  return edits.map((edit) => {
+    const [before, after] = [tex.slice(edit.start, edit.end), edit.text].map((text) => text.match(token) ?? []);
+    if (!before || !after || before.length < 2) return edit;
+    let front = 0;
+    while (front < before.length && before[front] === after[front]) front += 1;
+    let back = 0;
+    const most = Math.min(before.length, after.length) - front;
+    while (back < most && before[before.length - 1 - back] === after[after.length - 1 - back]) back += 1;
+    const length = (tokens: readonly string[]): number => tokens.join('').length;
+    return {
+      start: edit.start + length(before.slice(0, front)),
+      end: edit.end - length(before.slice(before.length - back)),
+      text: after.slice(front, after.length - back).join(''),
+    };
+  });
 }
 
 function isOneOfSeveral(expr: Expr, span: Span): boolean {
@@ -41,9 +74,15 @@ function isOneOfSeveral(expr: Expr, span: Span): boolean {
   return childrenOf(expr).some((part) => isOneOfSeveral(part, span));
 }
 
-/** What is put in at the very end of a part, a new term and a new value belong to no part. */
-function isWithin(edit: Edit, part: Span): boolean {
-  if (edit.start === edit.end && (edit.start === part.end || /^[+-]|=/.test(edit.text))) return false;
+/** A new term and a new value belong to no part; a sign belongs to what follows it, an exponent or factor to either. */
+function isWithin(edit: Edit, part: Span, tex: string): boolean {
+  if (edit.start === edit.end) {
+    const isSign = /^[+-]$/.test(edit.text);
+    if (!isSign && /^[+-]|[+-]$|=/.test(edit.text)) return false;
+    if (isSign ? edit.start === part.end : edit.start === part.start && /^[+-]/.test(tex.slice(part.start)))
+      return false;
+    if (edit.start === part.end && !/^(\^|[a-zA-Z])/.test(edit.text)) return false;
+  }
   return edit.start >= part.start && edit.end <= part.end;
 }
 

@@ -1,7 +1,8 @@
-import type { CheckContext } from '../context.ts';
+import { BudgetSpent, type CheckContext } from '../context.ts';
 import { rational, type Rational } from '../numbers/rational.ts';
 import type { Assignment } from '../solving/fraction.ts';
 import { isEmptySet } from '../solving/real-set.ts';
+import { Unsettled } from '../solving/unsettled.ts';
 import { solveDefined, type SolveEnv } from '../statements/solve.ts';
 import { comparesOf, exprsOfStatement, isLetter, type Statement } from '../statements/statement.ts';
 import { fromRational, isKnown } from '../values/arithmetic.ts';
@@ -14,6 +15,7 @@ import { freeLetters } from './meaning.ts';
 import { judgeOneLetter, type OneLetterAnswer, type OneLetterQuestion } from './one-letter.ts';
 import { meetsAssumptions } from './parameters.ts';
 import { judgeSameEquation } from './same-equation.ts';
+import { wholeAssignment } from './whole-assignment.ts';
 import { holds, undecided, type StepResult } from './step-result.ts';
 
 export type FormulaQuestion = Omit<OneLetterQuestion, 'given'>;
@@ -66,7 +68,8 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
     const found = judgeAt({ ...question, isSpecial: isSpecial(given) }, given);
     if (found === 'no-value-below') excluded.push(...zeroNames(given));
     if (typeof found === 'string') continue;
-    if (found.ruling === 'fails' && !(isSpecial(given) && !found.evidence.lost)) return found;
+    if (found.ruling === 'fails' && !(isSpecial(given) && !found.evidence.lost))
+      return inWholeNumbers(question, names) ?? found;
     if (found.ruling === 'fails') continue;
     if (found.ruling === 'undecided') open += 1;
     else {
@@ -79,6 +82,19 @@ export function judgeFormula(question: FormulaQuestion): StepResult {
   // A value that is gained wherever there is one was never right: both lines never have a solution together.
   if (informative.every(isOnlyGained)) return judgeNeverRight(question, informative[0] as OneLetterAnswer, places);
   return summarise(seen, excluded);
+}
+
+/** The same fault at small whole numbers, which a person can put in by hand. */
+function inWholeNumbers(question: FormulaQuestion, names: readonly string[]): StepResult | null {
+  try {
+    const given = wholeAssignment(question, names);
+    if (!given || !meetsAssumptions(given, question.context)) return null;
+    const found = judgeAt({ ...question, isSpecial: isSpecial(given) }, given);
+    return typeof found !== 'string' && found.ruling === 'fails' && found.evidence.lost ? found : null;
+  } catch (cause) {
+    if (cause instanceof BudgetSpent || cause instanceof Unsettled) return null;
+    throw cause;
+  }
 }
 
 /** Fails with one of the gained values, unless it comes from taking away a root, a bar, a logarithm or a denominator. */

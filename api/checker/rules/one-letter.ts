@@ -227,7 +227,22 @@ function judgeGain(question: OneLetterQuestion, solved: Solved, gained: RealSet)
 
 /** A fault is named by its values, or where they fill an interval by one of them, which is put into both lines. */
 function failWith(question: OneLetterQuestion, side: 'lost' | 'gained', values: RealSet, solved: Solved): StepResult {
-  const point = samplePoint(values);
+  const [inside, simplest] = [samplePoint(values, false), samplePoint(values, true)];
+  try {
+    return failAt(simplest, question, side, values, solved);
+  } catch (cause) {
+    if (simplest === inside || !(cause instanceof Unsettled)) throw cause;
+    return failAt(inside, question, side, values, solved);
+  }
+}
+
+function failAt(
+  point: RealNumber,
+  question: OneLetterQuestion,
+  side: 'lost' | 'gained',
+  values: RealSet,
+  solved: Solved,
+): StepResult {
   const expected = side === 'lost' ? [true, false] : [false, true];
   const truths = [question.above, question.below].map((statement) => truthAt(statement, point, solved.env));
   if (truths.some((truth, k) => truth !== null && truth.isTrue !== expected[k])) throw new Unsettled('not-settled');
@@ -265,10 +280,14 @@ function weight(a: RealNumber): number {
   return a.kind === 'rational' ? size + Number(a.value.den) * 2 - (a.value.num < 0n ? 0 : 0.5) : 1000 + size;
 }
 
-function samplePoint(set: RealSet): RealNumber {
+/** Inside an interval where there is one, or also one of its ends where that is simpler. */
+function samplePoint(set: RealSet, withEnds: boolean): RealNumber {
   const open = set.between.flatMap((inside, k) =>
     inside ? [rationalNumber(between(set.points[k - 1] ?? null, set.points[k] ?? null))] : [],
   );
-  const points = open.length > 0 ? open : set.points.filter((_, k) => set.at[k]);
+  const ends = set.points.filter(
+    (point, k) => set.at[k] && (open.length === 0 || (withEnds && point.kind === 'rational')),
+  );
+  const points = [...open, ...ends];
   return [...points].sort(bySimplicity)[0] as RealNumber;
 }
