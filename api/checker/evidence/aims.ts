@@ -38,6 +38,8 @@ export function aimsOf(question: MendQuestion): { readonly narrow: readonly Aim[
   if (above.kind === 'all' && line.kind === 'relation')
     return { narrow: substituted(above.parts, line).flatMap((from) => relationAims(from, line, context)), wide: [] };
   if (above.kind !== 'relation' || line.kind !== 'relation') return { narrow: [], wide: [] };
+  const inner = insideOf(above);
+  if (inner) return { narrow: relationAims(inner, line, context), wide: relationAims(above, line, context) };
   const [left, right] = [
     sameExpr(above.right, line.right) ? expressionAims(above.left, line.left, context) : null,
     sameExpr(above.left, line.left) ? expressionAims(above.right, line.right, context) : null,
@@ -47,6 +49,26 @@ export function aimsOf(question: MendQuestion): { readonly narrow: readonly Aim[
 }
 
 type Relation = Extract<Line, { kind: 'relation' }>;
+
+/** The exponents of powers of one number that are equal, or the arguments of logarithms that are. */
+function insideOf({ left, sign, right, span }: Relation): Relation | null {
+  if (sign !== '=') return null;
+  const isNumber = left.kind === 'power' && lettersOf(left.base).length === 0;
+  if (isNumber && right.kind === 'power' && sameExpr(left.base, right.base))
+    return { kind: 'relation', left: left.exponent, sign, right: right.exponent, span };
+  const [first, second] = [argumentOf(left), argumentOf(right)];
+  const isSame = left.kind === right.kind && (left.kind !== 'log' || right.kind !== 'log' || sameBase(left, right));
+  return first && second && isSame ? { kind: 'relation', left: first, sign, right: second, span } : null;
+}
+
+function argumentOf(expr: Expr): Expr | null {
+  if (expr.kind === 'log') return expr.argument;
+  return expr.kind === 'call' && expr.name === 'ln' ? (expr.args[0] ?? null) : null;
+}
+
+function sameBase(a: Extract<Expr, { kind: 'log' }>, b: Extract<Expr, { kind: 'log' }>): boolean {
+  return a.base && b.base ? sameExpr(a.base, b.base) : a.base === b.base;
+}
 
 /** What a line in fewer letters may come from: one equation of a system put into another. */
 function substituted(parts: readonly Line[], line: Relation): Relation[] {

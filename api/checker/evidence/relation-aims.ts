@@ -80,7 +80,14 @@ function aimAtSolution(above: Relation, line: Relation, places: readonly Place[]
 }
 
 /** The line above may be of first degree in the letter, in its reciprocal, its square, its logarithm or its exponential. */
-const ways: readonly ((t: Complex) => Complex)[] = [(t) => t, (t) => over(real(1), t), rootOf, expOf, logOf];
+const ways: readonly ((t: Complex) => Complex)[] = [
+  (t) => t,
+  (t) => over(real(1), t),
+  rootOf,
+  expOf,
+  logOf,
+  (t) => minus(real(0), logOf(t)),
+];
 
 function solvedBy(back: (t: Complex) => Complex, f: (x: Complex) => Complex): Complex {
   const at = (t: number): Complex => f(back(real(t)));
@@ -145,14 +152,26 @@ function* aimsAtMultiples(above: Relation, line: Relation, places: readonly Plac
     const sides: readonly [Expr, Expr] = [product(fraction(scale), above.left), product(fraction(scale), above.right)];
     const right = findRightTerms(sides, [line.left, line.right]);
     const target = values.map((value) => times(real(Q.toNumber(scale)), value));
-    const extra = Q.equals(scale, Q.one) ? 0 : otherScale;
+    const extra = Q.equals(scale, Q.one) ? 0 : Q.equals(scale, Q.minusOne) ? turnedScale : otherScale;
     yield { ...base, targets: [target], isRight: (node) => right.has(node), extra };
   }
   if (below.length === 0) return;
   const targets = [1, -1].map((sign) =>
     values.map((value, k) => times(real(sign), times(value, cleared[k] as Complex))),
   );
-  yield { ...base, targets, isRight: () => false, extra: 0.05 };
+  const right = findRightTerms([clear(above.left, below), clear(above.right, below)], [line.left, line.right]);
+  yield { ...base, targets, isRight: (node) => right.has(node), extra: 0.05 };
+}
+
+/** A side times all denominators, each gone where it stood. */
+function clear(side: Expr, below: readonly Expr[]): Expr {
+  return sum(
+    ...termsOf(side).map(({ sign, expr }) => {
+      const [top, bottom] = expr.kind === 'quotient' ? [expr.numerator, expr.denominator] : [expr, null];
+      const cleared = product(top, ...below.filter((other) => other !== bottom));
+      return sign === 'minus' ? neg(cleared) : cleared;
+    }),
+  );
 }
 
 /** What both sides would be multiplied by to clear fractions. */
@@ -161,7 +180,8 @@ function denominatorsIn({ left, right }: Relation): Expr[] {
 }
 
 const mostScales = 4;
-const otherScale = 0.3;
+const turnedScale = 0.3;
+const otherScale = 0.35;
 
 function scalesOf(above: Expr, below: Expr): Q.Rational[] {
   const [before, after] = [spread(above), spread(below)];

@@ -4,7 +4,7 @@ import { sameExpr } from '../../../shared/maths/same.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import { signedTerm } from '../slips/relations.ts';
 import * as Q from '../numbers/rational.ts';
-import { neg, termsOf } from './build.ts';
+import { neg, product, termsOf } from './build.ts';
 import { isFiniteNumber, isNear } from './complex-double.ts';
 import { estimate, type Place } from './estimate.ts';
 import { collect, keyOf, negated, spread, type Monomial } from './monomials.ts';
@@ -83,6 +83,8 @@ function matchParts(above: Expr, below: Expr, found: Set<Expr>): void {
     }
     return;
   }
+  if (above.kind === 'sum' && below.kind === 'quotient' && below.numerator.kind === 'sum')
+    return matchTerms(spread(product(above, below.denominator)), below.numerator.terms, found);
   if (above.kind === 'integral' && below.kind === 'evaluated') {
     for (const [limit, own] of [
       [above.from, below.from],

@@ -3,7 +3,7 @@ import { printExpr } from '../../../shared/maths/print.ts';
 import { readLine } from '../../../shared/maths/read.ts';
 import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
 import { rational } from '../numbers/rational.ts';
-import { fraction, isOne, isZero, product, whole } from './build.ts';
+import { fraction, isOne, isZero, product, quotient, whole } from './build.ts';
 import { splice, type Edit } from './edits.ts';
 import { outer } from './mend-question.ts';
 
@@ -79,6 +79,10 @@ function insideOf(expr: Expr, inside: Inside): Inside {
 /** A quotient of logarithms and one of several fractions over a common denominator are rather left as they are. */
 function reducible(expr: Extract<Expr, { kind: 'quotient' }>, inside: Inside): Oddity | null {
   const { numerator, denominator } = expr;
+  if (numerator.kind === 'quotient' && denominator.kind !== 'number' && denominator.kind !== 'sum') {
+    const below = product(numerator.denominator, denominator);
+    return { span: outer(expr), text: printExpr(quotient(numerator.numerator, below)) };
+  }
   if (numerator.kind !== 'number' || denominator.kind !== 'number' || isZero(denominator)) return null;
   if (numerator.written !== 'integer' || denominator.written !== 'integer') return null;
   const value = rational(numerator.numerator, denominator.numerator);

@@ -69,7 +69,8 @@ function squaredTermByTerm(sign: 'plus' | 'minus', wantsRoot: boolean): (above: 
       const [first, second, ...more] = right.kind === 'sum' ? right.terms : [];
       if (equals !== '=' || !first || !second || more.length > 0 || termsOf(left).length > 1) continue;
       const hasRoot = [first, second].some(({ expr }) => factorsOf(expr).some((factor) => factor.kind === 'root'));
-      if (hasRoot !== wantsRoot || first.sign !== 'plus' || (second.sign !== sign && !wantsRoot)) continue;
+      if (hasRoot !== wantsRoot || first.sign !== 'plus' || (second.sign === 'plus' && sign === 'minus' && !wantsRoot))
+        continue;
       const [a, b] = [squareOf(first.expr), squareOf(second.expr)];
       yield relation(power(left, whole(2)), '=', sum(a, sign === 'minus' ? neg(b) : b));
     }
@@ -142,13 +143,6 @@ const signs: readonly Slip[] = [
     ['ab-ac -> a(b+c)', '-ab+ac -> a(b+c)', '-ab-ac -> -a(b-c)'],
     4,
   ),
-  ruled(
-    'the square of the imaginary unit was taken as one',
-    'sign',
-    memory,
-    ['k\\mathrm{i}^2 -> k', '\\mathrm{i}^2 -> 1'],
-    7,
-  ),
 ];
 
 /** Brackets and everything taken term by term. */
@@ -198,7 +192,7 @@ const brackets: readonly Slip[] = [
   }),
   slip('the square of a sum was taken term by term', 'brackets', pitfalls, {
     rank: 6,
-    rewrites: [rule('(a+b)^2', 'a^2+b^2')],
+    rewrites: [rule('(a+b)^2', 'a^2+b^2'), rule('(a-b)^2', 'a^2+b^2')],
     lines: squaredTermByTerm('plus', false),
   }),
   ruled('a power of a sum was taken term by term', 'brackets', `${pitfalls} (general power)`, [

@@ -40,7 +40,7 @@ export function ruled(name: string, kind: SlipKind, source: string, rules: reado
   return slip(name, kind, source, { rank, rewrites: rules.map(toRule) });
 }
 
-function toRule(text: string): Rewrite {
+export function toRule(text: string): Rewrite {
   const [from, to] = text.split('->');
   return rule(from?.trim() ?? '', to?.trim() ?? '');
 }

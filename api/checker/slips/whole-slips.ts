@@ -1,16 +1,16 @@
 import type { Expr, Line, NumberExpr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
-import { childrenOf, mapChildren, mapLine, exprsOf } from '../../../shared/maths/walk.ts';
+import { childrenOf, mapChildren, mapExpr, mapLine, exprsOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import { letter, product, sum, whole } from '../evidence/build.ts';
 import { real } from '../evidence/complex-double.ts';
-import { spread, type Monomial } from '../evidence/monomials.ts';
+import { expanded, monomialExpr, spread, type Monomial } from '../evidence/monomials.ts';
 import * as Q from '../numbers/rational.ts';
 import { estimate } from '../evidence/estimate.ts';
 import { withPlus } from './may-follow.ts';
 import { everywhere, rule } from './rewrite.ts';
-import { memory, ruled, slip, type Slip } from './slip.ts';
+import { memory, ruled, slip, toRule, type Slip } from './slip.ts';
 
 const noDefinitions = { letters: new Map(), functions: new Map() };
 const largestConstant = 400;
@@ -116,19 +116,52 @@ const withoutBrackets = [
   rule('a(b-c)', 'ab-c'),
 ];
 
+const differences = [
+  'a^2+b^2 -> (a+b)(a-b)',
+  'a^2+k -> (a+\\sqrt{k})(a-\\sqrt{k})',
+  'ka^2+m -> (\\sqrt{k}a+\\sqrt{m})(\\sqrt{k}a-\\sqrt{m})',
+  'ka^2+mb^2 -> (\\sqrt{k}a+\\sqrt{m}b)(\\sqrt{k}a-\\sqrt{m}b)',
+].map(toRule);
+
+/** Only where the line below has factors: a sign that was lost comes to the same. */
+function* asDifference(above: Expr, below: Expr): Generator<Expr> {
+  if (!hasFactors(below)) return;
+  for (const rewrite of differences) yield* everywhere(above, rewrite);
+}
+
+function hasFactors(expr: Expr): boolean {
+  const isProduct = expr.kind === 'product' && expr.factors.filter((factor) => factor.kind === 'sum').length > 1;
+  return isProduct || childrenOf(expr).some(hasFactors);
+}
+
+/** Multiplied out with the unit as a letter, whose square is then taken as 1. */
+function* unitSquaredToOne(above: Expr): Generator<Expr> {
+  if (!hasUnit(above)) return;
+  const terms = expanded(mapExpr(above, (node) => (isUnit(node) ? unitLetter : node)));
+  if (!terms) return;
+  const lowered = terms.map((term): Expr => {
+    const power = term.powers.get(unitName)?.exponent ?? 0;
+    const others = new Map([...term.powers].filter(([key]) => key !== unitName));
+    const rest = monomialExpr({ coefficient: term.coefficient, powers: others });
+    return power % 2 === 0 ? rest : product(rest, unit);
+  });
+  if (terms.some((term) => (term.powers.get(unitName)?.exponent ?? 0) > 1)) yield sum(...lowered);
+}
+
+const unitName = '\u25b3';
+const unitLetter = letter(unitName);
+const unit: Expr = { kind: 'constant', name: 'i', span: { start: 0, end: 0 } };
+
+function isUnit(expr: Expr): boolean {
+  return expr.kind === 'constant' && expr.name === 'i';
+}
+
+function hasUnit(expr: Expr): boolean {
+  return isUnit(expr) || childrenOf(expr).some(hasUnit);
+}
+
 export const wholeSlips: readonly Slip[] = [
-  ruled(
-    'a sum of squares was factorised like a difference',
-    'brackets',
-    memory,
-    [
-      'a^2+b^2 -> (a+b)(a-b)',
-      'a^2+k -> (a+\\sqrt{k})(a-\\sqrt{k})',
-      'ka^2+m -> (\\sqrt{k}a+\\sqrt{m})(\\sqrt{k}a-\\sqrt{m})',
-      'ka^2+mb^2 -> (\\sqrt{k}a+\\sqrt{m}b)(\\sqrt{k}a-\\sqrt{m}b)',
-    ],
-    6,
-  ),
+  slip('a sum of squares was factorised like a difference', 'brackets', memory, { rank: 6, whole: asDifference }),
   ruled(
     'the square was completed without compensating',
     'brackets',
@@ -136,6 +169,11 @@ export const wholeSlips: readonly Slip[] = [
     ['a^2+ka -> (a+\\frac{k}{2})^2', 'a^2-ka -> (a-\\frac{k}{2})^2'],
     6,
   ),
+  slip('the square of the imaginary unit was taken as one', 'sign', memory, {
+    rank: 7,
+    rewrites: ['k\\mathrm{i}^2 -> k', '\\mathrm{i}^2 -> 1'].map(toRule),
+    whole: unitSquaredToOne,
+  }),
   slip('the factor pair had the right product and the wrong sum', 'brackets', memory, { rank: 6, whole: wrongPairs }),
   slip('the middle term was split with the wrong sum', 'sign', memory, { rank: 4, whole: wrongSplits }),
   slip(

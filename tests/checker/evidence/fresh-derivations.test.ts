@@ -8,7 +8,7 @@ function told({ row, evidence }: FreshResult): string {
   return `${row.lines.join(' // ')} => ${(mendedEnding ?? [mended?.line]).join(' // ')} (${slip?.id})`;
 }
 
-describe.each(['./fresh-derivations.txt'])('%s', { timeout: 120_000 }, (file) => {
+describe.each(['./fresh-derivations.txt', './fresh-derivations-2.txt'])('%s', { timeout: 120_000 }, (file) => {
   const results = readFresh(file).map(runFresh);
 
   it('has the faults where they are said to be, and what should have been is sound', () => {
