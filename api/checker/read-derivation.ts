@@ -3,6 +3,7 @@ import { lettersOf } from '../../shared/maths/letters.ts';
 import { readLine } from '../../shared/maths/read.ts';
 import { functionsIn, lineInPlace, orderSymbols, partWideBlanks } from '../../shared/maths/read-in-place.ts';
 import { childrenOf, exprsOf } from '../../shared/maths/walk.ts';
+import { explainRefusal } from '../../shared/maths/refusals.ts';
 import { nameDifferentials } from './calculus/name-differentials.ts';
 import { mayHaveCalculus, nameRates, usualVariable } from './calculus/name-rates.ts';
 import * as Q from './numbers/rational.ts';
@@ -44,7 +45,7 @@ export function readDerivation(input: DerivationInput): ReadDerivation {
       decimal,
       functions: [...functions, ...orderSymbols(tex, before)],
     });
-    if (!found.ok) return { ok: false, tex, error: found.error };
+    if (!found.ok) return { ok: false, tex, error: explainRefusal(found.refusal) };
     const reading = { ...found, line: letAll(found.line) };
     for (const name of functionsIn(reading.line)) functions.push(name);
     for (const name of definedIn(reading.line)) defined.add(name);

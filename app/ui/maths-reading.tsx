@@ -4,6 +4,7 @@ import { printLine } from '../../shared/maths/print.ts';
 import { DEFAULT_READ_SETTINGS, readLine } from '../../shared/maths/read.ts';
 import { wordReadError } from '../../shared/maths/reads-as.ts';
 import { lineInWords } from '../../shared/maths/words.ts';
+import { explainRefusal } from '../../shared/maths/refusals.ts';
 import { Button } from './button.tsx';
 import { Maths } from './maths.tsx';
 import { FLAG_WORDS, repairOf } from './maths-reading-words.ts';
@@ -19,7 +20,7 @@ interface MathsReadingProps {
 
 /** What is said under a line of maths on how it was read, where that is not what the eye expects. Never a word on whether it is right. */
 export function MathsReading({ id, tex, reading, decimal, onChange }: MathsReadingProps) {
-  if (!reading.ok) return <Unread id={id} tex={tex} error={reading.error} onChange={onChange} />;
+  if (!reading.ok) return <Unread id={id} tex={tex} error={explainRefusal(reading.refusal)} onChange={onChange} />;
   const now = printLine(reading.line, decimal);
   if (reading.alternatives.length > 0 && onChange) {
     return (

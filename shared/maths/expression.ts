@@ -317,6 +317,17 @@ export type ReadErrorCode =
   | 'piecewise'
   | 'text';
 
+/** What the reader expected: the bracket that is missing or a word for it, with a detail after a blank. */
+export type Complaint = string;
+
+/** Why a line was refused, as the reader says it; `explainRefusal` makes a `ReadError` of it. */
+export interface Refusal {
+  readonly complaint: Complaint;
+  readonly span: Span;
+  /** The line, as far as it is read. */
+  readonly tex: string;
+}
+
 /** What could not be read: where, what stands there and what was expected. Worded by the client. */
 export interface ReadError {
   readonly code: ReadErrorCode;
@@ -340,4 +351,4 @@ export type Reading =
       /** The other ways to read the line, where there are any: the author is asked. Each is printed without ambiguity. */
       readonly alternatives: readonly Line[];
     }
-  | { readonly ok: false; readonly error: ReadError };
+  | { readonly ok: false; readonly refusal: Refusal };

@@ -1,6 +1,6 @@
 import type { Expr } from './expression.ts';
 import { readArgument, readAtom, readItems } from './read-arguments.ts';
-import { readEvaluation } from './read-expression.ts';
+import { isDivided, readEvaluation } from './read-expression.ts';
 import { readPower } from './read-power.ts';
 import {
   ahead,
@@ -10,7 +10,6 @@ import {
   expect,
   fail,
   holding,
-  index,
   inside,
   is,
   kind,
@@ -18,122 +17,131 @@ import {
   next,
   numberOf,
   OUTSIDE,
+  peek,
+  type Read,
   span,
   sum,
   take,
   token,
 } from './reader.ts';
-import { kinds, type Token } from './tokens.ts';
+import type { Token } from './tokens.ts';
 
 /** `(..)`, the row of values `(1,2)`, and `[..]_a^b`. */
-export function readBracket(open: Token): Expr {
-  const isRound = open.kind === '(';
+export const readBracket = ({ kind: open, start }: Token): Expr => {
+  const isRound = open === '(';
   const items = readItems(isRound ? ')' : ']');
   const [only, more] = items;
-  if (more) return { kind: 'matrix', rows: [items], span: span(open.start) };
-  if (!isRound && ahead(/_|\^._/y)) return readEvaluation(only!, open.start);
-  return { ...only!, bracketed: { start: open.start, end: lastEnd } };
-}
+  if (more) return { kind: 'matrix', rows: [items], span: span(start) };
+  if (!isRound && ahead(/_|\^._/y)) return readEvaluation(only!, start);
+  return { ...only!, bracketed: { start, end: lastEnd } };
+};
 
 /** `\left. F \right|_a^b`. */
-export function readOpenBracket({ start }: Token): Expr {
+export const readOpenBracket = ({ start }: Token): Expr => {
   const operand = inside(sum, { ...OUTSIDE, bars: 1 });
-  expect('|]', 'missing-bracket \\right|');
+  expect('|]');
   return readEvaluation(operand, start);
-}
+};
 
 /** A braced group in the place of a factor: displayed without brackets, so it may not hide a sum within a product. */
-export function readBraces({ start }: Token): Expr {
-  const before = kinds[index - 2] ?? '$';
+export const readBraces = ({ start }: Token): Expr => {
+  const before = peek(-2).kind;
   if (take('}')) return take('_') ? readChoose(start) : readPower();
   const expr = enclosed('}', sum, holding());
-  const isLoose = !expr.bracketed && (expr.kind === 'sum' || (expr.kind === 'quotient' && expr.written !== 'fraction'));
+  const isLoose = (expr.kind === 'sum' && !expr.bracketed) || isDivided(expr);
   const around = before + kind;
-  if (isLoose && around !== '||' && !ALONE.test(around)) fail('missing-bracket (', { start, end: lastEnd });
+  if (isLoose && around !== '||' && !ALONE.test(around)) fail('(', { start, end: lastEnd });
   return expr;
-}
+};
 
 /** The kinds before and after a group that stands alone. */
-const ALONE = /^[${}()[\]⦃⦄,;&N=<>≤≥≠≈∈∨∧TBE]{2}$/;
+const ALONE = /^[${}()[\]sz,;&N=<≈∈VTBE]{2}$/;
 
 /** `{}_nC_r`: the number of ways to choose r of n. */
-function readChoose(start: number): Expr {
+const readChoose = (start: number): Expr => {
   const top = readArgument();
-  if (token.text !== 'C') fail('missing-operand C');
+  if (token.text !== 'C') fail('choose');
   next();
-  expect('_', 'missing-argument _');
+  expect('_', 'below');
   return { kind: 'binomial', top, bottom: readArgument(), span: span(start) };
-}
+};
 
 /** `|..|`: the absolute value. */
-export function readBars({ start }: Token): Expr {
+export const readBars = ({ start }: Token): Expr => {
   const args = [inside(sum, { ...OUTSIDE, bars: context.bars + 1 })];
-  if (token.side === 'l') fail('missing-bracket |');
+  if (token.side === 'l') fail('|');
   expect('|');
   return { kind: 'call', name: 'abs', args, span: span(start) };
-}
+};
 
 /** `\lfloor..\rfloor` and its like. */
-export function readFenced({ start, kind: open }: Token): Expr {
-  const isFloor = open === '⌊';
-  const name = isFloor ? 'floor' : 'ceil';
-  const args = [enclosed(isFloor ? '⌋' : '⌉', sum, OUTSIDE, `missing-bracket \\r${name}`)];
-  return { kind: 'call', name, args, span: span(start) };
-}
+export const readFenced = ({ start, text }: Token): Expr => {
+  const name = text === 'floor' ? 'floor' : 'ceil';
+  return { kind: 'call', name, args: [enclosed(name === 'floor' ? '⌋' : '⌉', sum)], span: span(start) };
+};
 
-export function readOverline({ start }: Token): Expr {
-  return { kind: 'call', name: 'conj', args: [readArgument()], span: span(start) };
-}
+export const readOverline = ({ start }: Token): Expr => ({
+  kind: 'call',
+  name: 'conj',
+  args: [readArgument()],
+  span: span(start),
+});
 
-export function readRoot({ start, text }: Token): Expr {
+export const readRoot = ({ start, text }: Token): Expr => {
   const degree = take('[') ? enclosed(']', sum, { ...OUTSIDE, reversed: true }) : null;
   const isTyped = text === '' && atoms[kind] && !is('({');
   return { kind: 'root', degree, radicand: isTyped ? inside(readAtom) : readArgument(), span: span(start) };
-}
+};
 
-export function readFraction(sign: Token): Expr {
-  const [top = '', bottom] = sign.text.split('⁄');
-  const numerator = bottom ? digitsIn(sign, top) : readArgument(holding());
-  const denominator = bottom ? digitsIn(sign, bottom) : readArgument();
-  return { kind: 'quotient', numerator, denominator, written: 'fraction', span: span(sign.start) };
-}
+export const readFraction = ({ text, start, end }: Token): Expr => {
+  const [top, bottom] = text.split('⁄').map((digits) => /\d/.test(digits) && numberOf({ start, end }, BigInt(digits)));
+  return {
+    kind: 'quotient',
+    numerator: (bottom && top) || readArgument(holding()),
+    denominator: bottom || readArgument(),
+    written: 'fraction',
+    span: span(start),
+  };
+};
 
-/** One of the two numbers of a fraction that is a single sign. */
-function digitsIn({ start, end }: Token, digits: string): Expr {
-  return numberOf({ start, end }, BigInt(digits));
-}
-
-export function readBinomial({ start }: Token): Expr {
-  return { kind: 'binomial', top: readArgument(), bottom: readArgument(), span: span(start) };
-}
+export const readBinomial = ({ start }: Token): Expr => ({
+  kind: 'binomial',
+  top: readArgument(),
+  bottom: readArgument(),
+  span: span(start),
+});
 
 /** A matrix or determinant; an expression given case by case is not read. */
-export function readMatrix(open: Token): Expr {
+export const readMatrix = (open: Token): Expr => {
   const { start, text } = open;
-  if (text === 'cases') fail('piecewise', open);
-  if (!/^([pbBv]|small)?matrix$|^array$/.test(text)) fail('unknown-command pmatrix', open);
-  const rows = inside(readRows);
+  if (!/^(?:[pbBv]|small)?matrix$|^array$/.test(text)) fail(text === 'cases' ? text : 'matrix', open);
+  const rows = inside(() => readRows(readRow));
   readEnd(text);
-  const width = rows[0]?.length;
+  const width = rows[0]!.length;
   const place = span(start);
-  if (rows.some((row) => row.length !== width)) fail(`ragged-matrix ${width}`, place);
+  if (rows.some((row) => row.length !== width)) fail(`rows ${width}`, place);
   const matrix: Expr = { kind: 'matrix', rows, span: place };
   return text === 'vmatrix' ? { kind: 'call', name: 'det', args: [matrix], span: place } : matrix;
-}
+};
+
+const readRow = (): Expr[] => {
+  const row = [];
+  do row.push(sum());
+  while (take('&'));
+  return row;
+};
 
 /** The `\end` of an environment. */
-export function readEnd(environment: string): void {
-  expect(token.text === environment ? 'E' : '', `missing-bracket \\end{${environment}}`);
-}
+export const readEnd = (environment: string): void => {
+  expect(token.text === environment ? 'E' : '', `\\end{${environment}}`);
+};
 
-function readRows(): Expr[][] {
-  const rows: Expr[][] = [];
+/** The rows of an environment; a last one may be empty. */
+export const readRows = <Row>(readOne: Read<Row>): Row[] => {
+  const rows: Row[] = [];
   do {
-    if (is('E') && rows.length > 0) break;
-    const row = [];
-    do row.push(sum());
-    while (take('&'));
-    rows.push(row);
+    if (is('E') && rows[0]) break;
+    rows.push(readOne());
   } while (take('N'));
   return rows;
-}
+};

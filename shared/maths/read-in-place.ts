@@ -1,6 +1,7 @@
 import type { Line, Reading, ReadingFlag, ReadSettings } from './expression.ts';
 import { lettersOf } from './letters.ts';
 import { readLine } from './read.ts';
+import { READ_LIMITS } from './reader.ts';
 import { sameLine } from './same.ts';
 
 type Relation = Extract<Line, { kind: 'relation' }>;
@@ -11,10 +12,7 @@ type Relation = Extract<Line, { kind: 'relation' }>;
  */
 export function readInPlace(tex: string, settings: ReadSettings, before: readonly Line[]): Reading {
   const reading = readLine(partWideBlanks(tex), settings);
-  if (!reading.ok) {
-    const { start, end } = reading.error.span;
-    return { ok: false, error: { ...reading.error, found: tex.slice(start, end) } };
-  }
+  if (!reading.ok) return { ok: false, refusal: { ...reading.refusal, tex: tex.slice(0, READ_LIMITS.characters) } };
   const line = lineInPlace(reading.line, tex, before);
   if (line === reading.line) return reading;
   const ways = reading.alternatives.length > 0 ? [reading.line, ...reading.alternatives] : [];

@@ -1,6 +1,6 @@
 import type { Expr, Line, RelationSign } from './expression.ts';
 import { groupAhead } from './look-ahead.ts';
-import { readEnd } from './read-atoms.ts';
+import { readEnd, readRows } from './read-atoms.ts';
 import { joinParts, type Join, type Part } from './read-joins.ts';
 import { readInterval, readSet, startsSet } from './read-sets.ts';
 import { readSentence, startsDefinition } from './read-sentences.ts';
@@ -11,12 +11,11 @@ import {
   fail,
   flag,
   flip,
-  functions,
   inside,
+  introduce,
   is,
   kind,
   next,
-  OUTSIDE,
   peek,
   skip,
   span,
@@ -25,105 +24,90 @@ import {
   take,
   takeAll,
   token,
-  withFunctions,
 } from './reader.ts';
 
-const RELATIONS: Partial<Record<string, RelationSign>> = {
-  '=': '=',
-  '<': '<',
-  '>': '>',
-  '≤': '<=',
-  '≥': '>=',
-  '≠': '!=',
-  '≈': 'approx',
-};
+const RELATIONS = '=<';
 
 /** All that one line says. */
-export function readWholeLine(): Line {
+export const readWholeLine = (): Line => {
   // An arrow or "so" before a line says only that it follows.
-  while (is('⇒') || (is('T') && CONNECTIVE.test(wordsOf()))) next();
-  if (is('$')) fail('empty number letter');
-  const line = RELATIONS[kind] ? readContinuation() : readStatements();
+  while (is('⇒') || (is('T') && CONNECTIVE.test(token.text))) next();
+  if (is('$')) fail('line');
+  const line = is(RELATIONS) ? readContinuation() : readStatements();
   takeAll(/\.(?=\$)/y);
-  if (is(')]}⦄⌋⌉E›&')) fail('extra-bracket');
-  if (is('|')) fail('missing-bracket |');
-  if (is('T∨∧')) fail('text');
-  if (!is('$')) fail(is('⇒') ? 'bad-relation =' : 'missing-operand + =');
+  if (!is('$')) fail(`end ${kind}`);
   return line;
-}
+};
 
-const CONNECTIVE = /^T(?:|so|hence|thus|therefore|then|i\.e\.|and so|that is)$/;
-
-/** The words of a `\text` after a T; empty for other tokens. */
-function wordsOf(): string {
-  return is('T')
-    ? 'T' +
-        token.text
-          .toLowerCase()
-          .replace(/[\s,:~]+/g, ' ')
-          .trim()
-    : '';
-}
+const CONNECTIVE = /^(?:|so|hence|thus|therefore|then|i e|and so|that is)$/i;
 
 /** Statements joined by or, and, commas; also the content of a `cases` block. */
-export function readStatements(): Line {
+export const readStatements = (): Line => {
   const from = start;
   const parts: Part[] = [];
   for (let join: Join | null = 'and'; join; join = takeJoin()) parts.push({ line: readStatement(), join });
   return joinParts(parts, from);
-}
+};
 
-function takeJoin(): Join | null {
-  if (kind === '$') return null;
-  const words = wordsOf();
-  const isOr = is('∨') || words === 'Tor';
-  const isAnd = is('∧') || /^T(?:and|where|for|with|if)$/.test(words);
+const takeJoin = (): Join | null => {
+  if (is('$')) return null;
+  const { text } = token;
+  const isOr = /^or$/i.test(text);
   const isComma = is(',;');
-  if (!isOr && !isAnd && !isComma && words !== 'T') return null;
+  if (isOr || /^(?:and|where|for|with|if)$/i.test(text)) {
+    next();
+    return isOr ? 'or' : 'and';
+  }
+  if (!isComma && (!is('T') || text)) return null;
   next();
-  if (isOr || isAnd) return isOr ? 'or' : 'and';
   return takeJoin() ?? (isComma ? 'comma' : null);
-}
+};
 
-function readStatement(): Line {
+const readStatement = (): Line => {
   const from = start;
   const sentence = readSentence();
   if (sentence) return sentence;
-  if (is('B⦃') && startsBlock()) return readBlock();
-  if (is('(') && /[=<>≤≥≠≈∈∉]/.test(groupAhead().inner)) return readGroup(')');
-  if (is('⦃') && ahead(/⦃a(?:∈ℝ)?[|:]/y)) return readGroup('⦄');
+  if (
+    is('B')
+      ? token.text === 'cases'
+      : is('s') && peek(1).kind === 'B' && /^(?:cases|array|matrix|aligned)$/.test(peek(1).text)
+  ) {
+    return readBlock();
+  }
+  if (is('(') && /[=<∈]/.test(groupAhead().inner)) return readGroup(')');
+  if (is('s') && ahead(/sa(?:∈R)?[|:]/y)) return readGroup('z');
   // `S=\{2\}`: the set of solutions under the name that some give it.
-  if (is('a') && /^[SL]$/.test(token.text) && ahead(/a=[⦃∅]/y)) skip(2);
+  if (is('a') && /^[SL]$/.test(token.text) && (ahead(/a=s/y) || peek(2).text === 'empty')) skip(2);
   if (startsSet()) return readBareSet();
   const name = is('a') ? startsDefinition() : null;
-  const line = readRelations(name ? withFunctions([...functions, name], sum) : sum(), from);
+  if (name) introduce(name);
+  const line = readRelations(sum(), from);
   return name ? asDefinition(line) : line;
-}
+};
 
 /** `(x>1 and x<2) or ..`, a bracket that holds a relation; `\{x\in\R\mid x>2\}` says what its condition says. */
-function readGroup(close: ')' | '⦄'): Line {
+const readGroup = (close: ')' | 'z'): Line => {
   const from = start;
-  if (close === '⦄') while (!is('|:')) next();
+  if (close === 'z') while (!is('|:')) next();
   next();
-  const line = enclosed(close, readStatements, OUTSIDE, `missing-bracket ${close === ')' ? ')' : '\\}'}`);
-  return { ...line, span: span(from) };
-}
+  return { ...enclosed(close, readStatements), span: span(from) };
+};
 
 /** `f(x) = ..` introduces f; a chain is left as it is. */
-function asDefinition(line: Line): Line {
+const asDefinition = (line: Line): Line => {
   if (line.kind !== 'relation' || line.left.kind !== 'apply') return line;
   const params = line.left.args.map((arg) => (arg.kind === 'letter' ? arg.name : ''));
   return { kind: 'definition', name: line.left.name, params, value: line.right, span: line.span };
-}
+};
 
-function readRelations(left: Expr, from: number): Line {
-  if (is('∈∉') || (is('=') && left.kind === 'letter' && ahead(/=⦃[^B]/y))) {
-    const negated = next().kind === '∉';
+const readRelations = (left: Expr, from: number): Line => {
+  if (is('∈') || (left.kind === 'letter' && ahead(/=s[^B]/y))) {
+    const negated = next().text === '!';
     return { kind: 'membership', letter: left, set: readSet(), negated, span: span(from) };
   }
-  if (take('≔')) {
+  if (take('d')) {
     const value = sum();
-    if (left.kind !== 'letter') return fail('bad-relation =', left.span);
+    if (left.kind !== 'letter') fail('relation', left.span);
     return { kind: 'definition', name: left.name, params: [], value, span: span(from) };
   }
   const members = [left];
@@ -133,77 +117,67 @@ function readRelations(left: Expr, from: number): Line {
   if (!sign) return { kind: 'expression', expr: left, span: place };
   if (more) return { kind: 'chain', members, signs, span: place };
   return { kind: 'relation', left, sign, right: members[1]!, span: place };
-}
+};
 
 /** Signs and what follows each; the members are added to those given. */
-function readMembers(members: Expr[]): RelationSign[] {
+const readMembers = (members: Expr[]): RelationSign[] => {
   const signs: RelationSign[] = [];
   for (;;) {
     const isTyped = flip === 'unequal' && ahead(/!=/y);
-    const sign = isTyped ? '!=' : RELATIONS[kind];
-    if (!sign) return signs;
+    if (!isTyped && !is(RELATIONS)) return signs;
+    signs.push(isTyped ? '!=' : (token.text as RelationSign));
     skip(isTyped ? 2 : 1);
-    if (RELATIONS[kind]) fail('bad-relation number letter');
-    signs.push(sign);
+    if (is(RELATIONS)) fail('side');
     members.push(sum());
   }
-}
+};
 
-function readContinuation(): Line {
+const readContinuation = (): Line => {
   const from = start;
   flag('continues');
   const members: Expr[] = [];
   const signs = readMembers(members);
   return { kind: 'continuation', members, signs, span: span(from) };
-}
-
-function startsBlock(): boolean {
-  if (is('B')) return token.text === 'cases';
-  return ahead(/⦃B/y) !== '' && /^(?:cases|array|matrix|aligned)$/.test(peek(1).text);
-}
+};
 
 /** `\begin{cases} .. \end{cases}` or a left brace before an array: one statement a row. */
-function readBlock(): Line {
+const readBlock = (): Line => {
   const from = start;
-  const isBraced = take('⦃');
+  const isBraced = take('s');
   const environment = next().text;
-  const parts = inside(readRows);
-  const line = joinParts(parts, from);
+  const lines = inside(() => readRows(readRow));
+  const line = joinParts(
+    lines.map((row) => ({ line: row, join: 'comma' })),
+    from,
+  );
   readEnd(environment);
-  if (isBraced) take('›⦄');
+  if (isBraced) take('›z');
   return line;
-}
-
-function readRows(): Part[] {
-  const parts: Part[] = [];
-  do {
-    if (is('E') && parts.length > 0) break;
-    take('&');
-    parts.push({ line: readRow(), join: 'comma' });
-    take(',;');
-  } while (take('N'));
-  return parts;
-}
+};
 
 /** One row; alignment marks around its relation are layout only. */
-function readRow(): Line {
+const readRow = (): Line => {
+  take('&');
   const from = start;
   const left = sum();
   const isParted = take('&') || is(',T');
-  const relation = RELATIONS[kind];
+  const sign = token.text as RelationSign;
   // `x & x>0`: an expression for each case is no statement.
-  if (!relation && !is('∈∉')) fail(isParted ? 'piecewise' : 'bad-relation =');
-  if (!ahead(/.&/y)) return readRelations(left, from);
-  skip(2);
-  if (!relation) return fail('bad-relation =');
-  return { kind: 'relation', left, sign: relation, right: sum(), span: span(from) };
-}
+  if (!is('=<∈')) fail(isParted ? 'cases' : 'relation');
+  let line;
+  if (ahead(/[=<]&/y)) {
+    skip(2);
+    line = { kind: 'relation', left, sign, right: sum(), span: span(from) } as const;
+  } else line = readRelations(left, from);
+  take(',;');
+  return line;
+};
 
-function readBareSet(): Line {
+const readBareSet = (): Line => {
   const from = start;
   const isOther = is('([') && choose('interval');
   if (isOther && is('(')) return readRelations(sum(), from);
   const set = is('[') && !isOther ? readInterval() : readSet();
   if (set.kind === 'empty') return { kind: 'none', span: set.span };
   return { kind: 'membership', letter: null, set, negated: false, span: span(from) };
-}
+};

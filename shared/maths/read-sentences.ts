@@ -24,25 +24,24 @@ const ALWAYS =
   /^(?:(?:true )?(?:for )?(?:all|any|every)(?: real| values of| numbers?)*(?: ([a-z]))?|(?:is )?always true)$/i;
 
 /** "no solution", "all real x" and definitions, in a `\text` or as plain words; null where none begins here. */
-export function readSentence(): Line | null {
+export const readSentence = (): Line | null => {
   if (!is('T∀')) return null;
-  const { kind, text, start } = next();
-  const words = text.replace(/[\s,.:~]+|\\[,;: ]/g, ' ').trim();
-  const always = kind === '∀' ? [] : ALWAYS.exec(words);
+  const { text, start } = next();
+  const always = ALWAYS.exec(text);
   if (always) return readAlways(start, always[1]);
-  if (NONE.test(words)) return { kind: 'none', span: span(start) };
-  if (/^(let|put|set|define|where)$/i.test(words)) return readLet(start);
-  return fail('text', { start, end: lastEnd });
-}
+  if (NONE.test(text)) return { kind: 'none', span: span(start) };
+  if (!/^(?:let|put|set|define|where)$/i.test(text)) fail('text', { start, end: lastEnd });
+  return readLet(start);
+};
 
 /** The letter of "all real x", where one is written. */
-function readAlways(start: number, named?: string): Line {
+const readAlways = (start: number, named?: string): Line => {
   const letter = named ?? (is('a') ? readName() : null);
-  if (!named) takeAll(/∈ℝ/y);
+  if (!named) takeAll(/∈R/y);
   return { kind: 'always', letter, span: span(start) };
-}
+};
 
-function readLet(start: number): Line {
+const readLet = (start: number): Line => {
   const isFunction = peek(1).kind === '(';
   const name = readName();
   const params: string[] = [];
@@ -52,12 +51,12 @@ function readLet(start: number): Line {
     while (take(','));
     expect(')');
   }
-  expect('=≔', 'bad-relation =');
+  expect('=d', 'relation');
   return { kind: 'definition', name, params, value: sum(), span: span(start) };
-}
+};
 
 /** The name that `f(x) = ..` introduces; null where the line is an ordinary statement. */
-export function startsDefinition(): string | null {
+export const startsDefinition = (): string | null => {
   const { text } = token;
   const { length } = ahead(/a\(a(?:,a)*\)=/y);
   const param = peek(2).text;
@@ -66,4 +65,4 @@ export function startsDefinition(): string | null {
   if (!/^[xt]$/.test(param) || /^[abckmnxt]$/.test(text)) return null;
   const isUsed = tokens.slice(index + length).some((other) => other.kind === 'a' && other.text === param);
   return isUsed && !choose('definition') ? text : null;
-}
+};

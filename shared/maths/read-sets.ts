@@ -1,4 +1,4 @@
-import type { Expr, SetExpr } from './expression.ts';
+import type { Expr, SetExpr, Span } from './expression.ts';
 import { groupAhead } from './look-ahead.ts';
 import { readList } from './read-arguments.ts';
 import {
@@ -8,7 +8,7 @@ import {
   fail,
   inside,
   is,
-  kind,
+  negated,
   next,
   numberOf,
   OUTSIDE,
@@ -17,102 +17,95 @@ import {
   span,
   start,
   sum,
-  take,
   takeAll,
+  token,
 } from './reader.ts';
+import type { Token } from './tokens.ts';
 
-const NUMBER_SETS: Partial<Record<string, 'reals' | 'integers' | 'naturals' | 'rationals' | 'complex'>> = {
-  R: 'reals',
-  Z: 'integers',
-  N: 'naturals',
-  Q: 'rationals',
-  C: 'complex',
-  I: 'integers',
-};
+type Named = Extract<SetExpr, { readonly kind: 'reals' }>['kind'];
 
 /** Sets joined by union, intersection and "without"; two different joins need brackets. */
-export function readSet(): SetExpr {
+export const readSet = (): SetExpr => {
   const from = start;
   const parts = [readSimpleSet()];
   const [first] = parts;
-  const join = kind;
-  if (!is('∪∩∖')) return first!;
-  while ((join !== '∖' || parts.length < 2) && take(join)) parts.push(readSimpleSet());
-  if (is('∪∩∖')) fail('mixed-joins (');
+  const join = token.text;
+  while (is('U') && token.text === join && (join !== 'without' || !parts[1])) {
+    next();
+    parts.push(readSimpleSet());
+  }
+  if (is('U')) fail('joins');
+  if (!parts[1]) return first!;
   const place = span(from);
-  if (join === '∖') return { kind: 'without', from: first!, removed: parts[1]!, span: place };
-  return { kind: join === '∪' ? 'union' : 'intersection', parts, span: place };
-}
+  if (join === 'without') return { kind: join, from: first!, removed: parts[1], span: place };
+  return { kind: join === 'union' ? join : 'intersection', parts, span: place };
+};
 
-function readSimpleSet(): SetExpr {
+const readSimpleSet = (): SetExpr => {
   const from = start;
   if (is('([]')) return readBracketed();
-  if (is('ℝ')) return readNumberSet();
-  if (take('∅') || takeAll(/⦃⦄/y)) return { kind: 'empty', span: span(from) };
-  expect('⦃', 'bad-set \\{ ( [ \\R');
+  if (is('R')) return readNamedSet(next());
+  if (takeAll(/sz/y)) return { kind: 'empty', span: span(from) };
+  expect('s', 'set');
   const items = inside(readList);
-  expect('⦄', is('|') ? 'bad-set \\}' : 'missing-bracket \\}');
+  expect('z', is('|') ? 'finite' : 'z');
   return { kind: 'finite', items, span: span(from) };
-}
+};
 
 /** An interval, or a bracket around sets. */
-function readBracketed(): SetExpr {
+const readBracketed = (): SetExpr => {
   if (!is('(') || /[,;]/.test(groupAhead().inner)) return readInterval();
   next();
   return enclosed(')', readSet);
-}
+};
 
-function readNumberSet(): SetExpr {
-  const { text, start: from } = next();
-  const mark = text === 'R' ? ahead(/[_^](?:\{[+-]\}|[+-])/y) : '';
-  if (!mark) return { kind: NUMBER_SETS[text] ?? 'reals', span: span(from) };
-  const sign = peek(mark.length > 2 ? 2 : 1);
-  const zero = numberOf({ start: sign.start, end: sign.end }, 0n);
+/** A set with a name; `\R^+` and its like are intervals. */
+const readNamedSet = ({ text, start: from }: Token): SetExpr => {
+  const mark = text === 'reals' ? ahead(/[_^](?:\{[+-]\}|[+-])/y) : '';
+  if (!mark) return { kind: text as Named, span: span(from) };
+  const { start, end } = peek(mark[3] ? 2 : 1);
+  const zero = numberOf({ start, end }, 0n);
   skip(mark.length);
   const isPositive = mark.includes('+');
-  return {
-    kind: 'interval',
-    from: isPositive ? zero : null,
-    to: isPositive ? null : zero,
-    fromClosed: false,
-    toClosed: false,
-    span: span(from),
-  };
-}
+  return interval(isPositive ? zero : null, isPositive ? null : zero, false, false, span(from));
+};
+
+const interval = (
+  from: Expr | null,
+  to: Expr | null,
+  fromClosed: boolean,
+  toClosed: boolean,
+  place: Span,
+): SetExpr => ({ kind: 'interval', from, to, fromClosed, toClosed, span: place });
 
 /** `(a,b]`, `[a;b]` and `]a,b[`. */
-export function readInterval(): SetExpr {
+export const readInterval = (): SetExpr => {
   const open = next();
   const readEnds = () => {
     const left = sum();
-    expect(',;', 'bad-set ,');
+    expect(',;', 'interval');
     return [left, sum()] as const;
   };
   const [left, right] = inside(readEnds, { ...OUTSIDE, reversed: true });
-  const close = expect(')][', 'missing-bracket ) ]');
-  const from = isInfinite(left, 'minus') ? null : left;
-  const to = isInfinite(right, 'plus') ? null : right;
-  return {
-    kind: 'interval',
-    from,
-    to,
-    fromClosed: open.kind === '[' && from !== null,
-    toClosed: close.kind === ']' && to !== null,
-    span: span(open.start),
-  };
-}
+  const close = expect(')][');
+  const below = negated(left);
+  const from = below && isInfinite(below) ? null : left;
+  const to = isInfinite(right) ? null : right;
+  return interval(from, to, open.kind === '[' && !!from, close.kind === ']' && !!to, span(open.start));
+};
 
-function isInfinite(expr: Expr, sign: 'plus' | 'minus'): boolean {
-  if (expr.kind === 'constant') return expr.name === 'infinity' && sign === 'plus';
+/** Infinity, also with a plus before it. */
+const isInfinite = (expr: Expr): boolean => {
   const [term, more] = expr.kind === 'sum' ? expr.terms : [];
-  return !more && term?.sign === sign && isInfinite(term.expr, 'plus');
-}
+  if (term?.sign === 'plus' && !more) return isInfinite(term.expr);
+  return expr.kind === 'constant' && expr.name === 'infinity';
+};
 
-/** `[1,2)`, `(-1,3]`, `]a,b[` or a number set at the start of a line: a bare set. */
-export function startsSet(): boolean {
-  if (is('⦃∅ℝ]')) return true;
+/** `[1,2)`, `(-1,3]`, `]a,b[` or a named set at the start of a line: a bare set. */
+export const startsSet = (): boolean => {
+  if (is('sR]')) return true;
   if (!is('([')) return false;
   const { inner, end } = groupAhead();
   if (!/^[^,;]*[,;][^,;]*$/.test(inner)) return false;
-  return ahead(is('[') ? /[^\]$]|\][$∪∩∖]/y : /\]|[^$][$∪∩∖]/y, end) !== '';
-}
+  return ahead(is('[') ? /[^\]$]|\][$U]/y : /\]|[^$][$U]/y, end) !== '';
+};

@@ -26,7 +26,7 @@ useGrammar(readSum, {
   a: readLetter,
   e: readConstant,
   i: readConstant,
-  '∞': readConstant,
+  o: readConstant,
   '(': readBracket,
   '[': readBracket,
   '{': readBraces,
@@ -37,13 +37,12 @@ useGrammar(readSum, {
   O: readOverline,
   F: (token) => readDerivativeFraction(token.start) ?? readFraction(token),
   C: readBinomial,
-  '√': readRoot,
+  r: readRoot,
   B: readMatrix,
   f: readFunction,
   l: readLog,
   '∫': readIntegral,
   '∑': readSeries,
-  '∏': readSeries,
   L: readLimit,
 });
 
@@ -53,9 +52,9 @@ export const DEFAULT_READ_SETTINGS: ReadSettings = { numbers: 'real', decimal: '
  * Reads one line of TeX, or of plainly typed maths, as what it displays. Never throws, whatever the text: what cannot be
  * read is an error with its place. Where the line can be read in two ways, `alternatives` holds the others.
  */
-export function readLine(tex: string, settings: ReadSettings = DEFAULT_READ_SETTINGS): Reading {
+export const readLine = (tex: string, settings: ReadSettings = DEFAULT_READ_SETTINGS): Reading => {
   const line = attempt(tex, settings);
-  if (!line) return { ok: false, error: refusal };
+  if (!line) return { ok: false, refusal };
   const open = choices;
   if (!open[0]) return { ok: true, line, flags, alternatives: [] };
   let others: readonly Line[] | undefined;
@@ -68,10 +67,10 @@ export function readLine(tex: string, settings: ReadSettings = DEFAULT_READ_SETT
       return (others ??= readOthers(tex, settings, line, open));
     },
   };
-}
+};
 
 /** One reading with all decisions taken as usual but one; null where it was refused. */
-function attempt(tex: string, settings: ReadSettings, flip?: Choice): Line | null {
+const attempt = (tex: string, settings: ReadSettings, flip?: Choice): Line | null => {
   try {
     begin(tex, settings, flip);
     return readWholeLine();
@@ -79,21 +78,21 @@ function attempt(tex: string, settings: ReadSettings, flip?: Choice): Line | nul
     if (failure !== refusal) throw failure;
     return null;
   }
-}
+};
 
 /** The line read again with one decision taken the other way, for each decision that was open. */
-function readOthers(tex: string, settings: ReadSettings, line: Line, open: readonly Choice[]): readonly Line[] {
+const readOthers = (tex: string, settings: ReadSettings, line: Line, open: readonly Choice[]): readonly Line[] => {
   const others = new Map([[shapeOf(line), line]]);
   for (const choice of open) {
     const other = attempt(tex, settings, choice);
     if (other) others.set(shapeOf(other), other);
   }
   return [...others.values()].slice(1);
-}
+};
 
 /** The same text for lines that differ only in places and in brackets that change nothing. */
-function shapeOf(line: Line): string {
+const shapeOf = (line: Line): string => {
   return JSON.stringify(line, (key, value: unknown) => {
     if (key !== 'span' && key !== 'bracketed') return typeof value === 'bigint' ? `${value}` : value;
   });
-}
+};

@@ -1,6 +1,7 @@
 import type { ReadError, ReadErrorCode, Reading, ReadingFlag, ReadSettings } from './expression.ts';
 import { printLine } from './print.ts';
 import { DEFAULT_READ_SETTINGS, readLine } from './read.ts';
+import { explainRefusal } from './refusals.ts';
 import { lineInWords } from './words.ts';
 
 export interface ReadChoice {
@@ -23,7 +24,7 @@ export function readsAs(tex: string, settings: ReadSettings = DEFAULT_READ_SETTI
 
 /** The same for a reading that is there already, such as that of a line in its place behind others. */
 export function showReading(reading: Reading, decimal: ReadSettings['decimal']): ReadsAs {
-  if (!reading.ok) return { kind: 'error', error: reading.error };
+  if (!reading.ok) return { kind: 'error', error: explainRefusal(reading.refusal) };
   const { line, flags, alternatives } = reading;
   const words = lineInWords(line);
   const printed = printLine(line, decimal);

@@ -1,81 +1,85 @@
 /**
  * What a token is to the grammar: one character, so that the kinds of a line can be searched like text. A sign or a
  * bracket is its own kind, whichever way it was typed; the others are:
- * `0` number, `a` letter, `e` and `i` constants, `f` function, `l` logarithm, `L` limit, `F` fraction, `C` binomial,
- * `O` overline, `T` words, `B` and `E` begin and end of an environment, `N` new row, `H` empty box, `²` raised digits,
- * `⦃` and `⦄` braces of a set, `‹` and `›` a bracket left out with `\left.` and `\right.`, `ℝ` a set of numbers,
- * `≔` is defined as, `$` end of the line.
+ * `0` number, `a` letter, `e` and `i` constants, `o` infinity, `f` function, `l` logarithm, `L` limit, `F` fraction,
+ * `C` binomial, `r` root, `O` overline, `2` raised digits, `±` a double sign, `<` a relation other than `=`, `d` is
+ * defined as, `∈` in or not in, `U` a join of sets, `R` a named set, `s` and `z` the braces of a set, `V` or and and,
+ * `∑` sum or product, `T` words, `B` and `E` begin and end of an environment, `N` new row, `H` empty box, `‹` and `›` a
+ * bracket left out with `\left.` and `\right.`, `$` end of the line.
  */
 export type TokenKind = string;
 
 /**
- * One kind a line, then the commands and characters that mean it; `a@b`: a means b. The kinds that no token has: `~` a gap,
+ * One kind a line, with the text of its tokens after `@`, then the commands and characters that mean it; `a@b`: the text
+ * of a is b. Without an `@` the text is the name, and a sign names itself. The kinds that no token has: `~` a gap,
  * `S` without meaning, `A` an accent, `M` a letter style, `X` an adornment, `D` blackboard letters, `n` a negated sign,
  * `h` a space of some width.
  */
-const ROWS = String.raw`
-* cdot ast bullet · ⋅ ∗
-× times
-÷ div
-± pm
-∓ mp
-+
-- − –
-/ slash
+const ROWS = String.raw`*@dot * cdot ast bullet · ⋅ ∗
+*@times × times
+/@slash / slash
+/@divide ÷ div
++@plus +
+-@minus - − –
+±@plusminus ± pm
+±@minusplus ∓ mp
 ^ **
 _
 !
-= eq ==
-< lt
-> gt
-≤ le leq leqslant <= ⩽
-≥ ge geq geqslant >= ⩾
-≠ ne neq
-≈ approx thickapprox
+=@= = eq ==
+<@< < lt
+<@> > gt
+<@<= <= ≤ le leq leqslant ⩽
+<@>= >= ≥ ge geq geqslant ⩾
+<@!= ≠ ne neq \not=
+<@approx ≈ approx thickapprox
 ∈ in isin
-∉ notin
-∪ cup
-∩ cap
-∖ setminus smallsetminus backslash
-∅ varnothing emptyset
-ℝ R Z N Q C reals Reals integers naturals ℤ ℕ ℚ ℂ
-∨ or lor vee
-∧ and land wedge
-∀ forall
+∈@! ∉ notin \not\in
+U@union ∪ cup
+U@intersection ∩ cap
+U@without ∖ setminus smallsetminus backslash
+R@empty ∅ varnothing emptyset
+R@reals R reals Reals ℝ
+R@integers Z integers ℤ
+R@naturals N naturals ℕ
+R@rationals Q ℚ
+R@complex C ℂ
+V@or or ∨ lor vee
+V@and and ∧ land wedge
+∀@all ∀ forall
 → to rightarrow longrightarrow ->
 ⇒ implies Rightarrow Longrightarrow iff Leftrightarrow Longleftrightarrow therefore => ⇔ ∴
-∞ infty infin infinity
-e exponentialE@e
-i imaginaryI@i imaginaryJ@i
+o@infinity ∞ infty infin infinity
+e@e exponentialE
+i@i imaginaryI imaginaryJ
 ° degree circ
 ⊤ top intercal
 ' prime ′ ’
 | vert lvert rvert mid ∣
-⦃ lbrace \{
-⦄ rbrace \}
+s lbrace \{
+z rbrace \}
 {
 }
 [ lbrack
 ] rbrack
 ( lparen
 ) rparen
-⌊ lfloor
+⌊@floor ⌊ lfloor
 ⌋ rfloor
-⌈ lceil
+⌈@ceil ⌈ lceil
 ⌉ rceil
 ,
 ;
 .
 &
 : colon
-≔ := coloneq coloneqq
+d := ≔ coloneq coloneqq
 % \%
 F frac dfrac tfrac cfrac
 C binom dbinom tbinom
-√ sqrt
+r sqrt √@
 ∫ int
-∑ sum
-∏ prod
+∑ sum ∑@sum prod@product ∏@product
 L lim
 l log lg lb
 O overline bar
@@ -95,9 +99,11 @@ n not
 f sin cos tan cot sec csc arcsin arccos arctan arccot arcsec arccsc sinh cosh tanh coth sech csch arsinh arcosh artanh
 f ln exp gcd lcm min max arg det abs sign floor ceil conj Re@re Im@im sgn@sign cosec@csc tg@tan ctg@cot cotan@cot
 f asin@arcsin acos@arccos atan@arctan arcsinh@arsinh arccosh@arcosh arctanh@artanh asinh@arsinh acosh@arcosh atanh@artanh
-a αalpha βbeta γgamma δdelta epsilon εvarepsilon ζzeta ηeta θtheta vartheta ιiota κkappa λlambda μmu νnu ξxi πpi ρrho
-a σsigma varsigma τtau υupsilon phi φvarphi χchi ψpsi ωomega ΓGamma ΔDelta ΘTheta ΛLambda ΞXi ΠPi ΣSigma Upsilon ΦPhi
-a ΨPsi ΩOmega ell hbar ∂partial differentialD@d`;
+a epsilon vartheta phi ell hbar partial ∂@\partial differentialD@d`;
+
+/** The Greek letters in the order of their characters, by the commands that show them. */
+const GREEK =
+  'alpha beta gamma delta varepsilon zeta eta theta iota kappa lambda mu nu xi omicron pi rho varsigma sigma tau upsilon varphi chi psi omega';
 
 /** What a command or character is, and the text that its token carries. */
 export interface Entry {
@@ -106,46 +112,51 @@ export interface Entry {
 }
 
 const TABLE = new Map<string, Entry>();
-for (const row of ROWS.trim().split('\n')) {
-  const [kind = '', ...names] = row.split(' ');
-  for (const name of isLetter(kind) ? names : [kind, ...names]) addName(kind, name);
-}
+
+/** A name of letters is a command; a sign stands for itself. */
+const addName = (kind: TokenKind, name: string, text: string): unknown =>
+  TABLE.set(isLetter(name) ? `\\${name}` : name, { kind, text });
 
 /** Is the first character a letter of the alphabet? */
-function isLetter(text: string): boolean {
-  return /^[a-zA-Z]/.test(text);
+const isLetter = (text: string): boolean => /^[a-z]/i.test(text);
+
+for (const row of ROWS.split('\n')) {
+  const [head = '', ...names] = row.split(' ');
+  const [kind = '', shared] = head.split('@');
+  if (shared === undefined && !isLetter(kind)) names.push(kind);
+  for (const entry of names) {
+    const [name = '', text = shared ?? (kind === 'a' ? `\\${name}` : name)] = entry.split('@');
+    addName(kind, name, text);
+  }
 }
 
-function addName(kind: TokenKind, entry: string): void {
-  const [, char = '', name = '', meaning] = /^([^ -~]?)([^@]*)@?(.*)$/.exec(entry)!;
-  // `ℝ`, `R` and `reals` are all the set R.
-  const set = (name || char).normalize('NFKD').charAt(0).toUpperCase();
-  const text = meaning || (kind === 'a' ? `\\${name}` : kind === 'ℝ' ? set : name);
-  for (const key of [char, isLetter(name) ? `\\${name}` : name]) if (key) TABLE.set(key, { kind, text });
+for (const [place, small] of GREEK.split(' ').entries()) {
+  const char = String.fromCharCode(945 + place);
+  const capital = small.replace('var', '').replace(/^./, (first) => first.toUpperCase());
+  for (const name of [small, char]) addName('a', name, `\\${small}`);
+  for (const name of [capital, char.toUpperCase()]) addName('a', name, `\\${capital}`);
 }
 
 /** Looks up a command with its backslash, or a sign of one or two characters. */
-export function findEntry(name: string): Entry | undefined {
-  return TABLE.get(name);
-}
+export const findEntry = (name: string): Entry | undefined => TABLE.get(name);
 
 /** Functions, roots, or, and; pi and longer Greek letters; infinity. All else needs its backslash. */
-const WORD = /^(?:[fl√∨∧](?!lb$)|api$|a(?!hbar).{4}|∞infinity)/;
+const WORD = /^(?:[flrV](?!lb$)|api$|a(?!hbar).{4}|oinf.{5})/;
 
 /** Looks up what is a word without its backslash. */
-export function findWord(word: string): Entry | undefined {
+export const findWord = (word: string): Entry | undefined => {
   const entry = findEntry(`\\${word}`);
   return entry && WORD.test(entry.kind + word) ? entry : undefined;
-}
+};
 
 /** The function that a command or plain word names, if any. */
-export function functionOf(word: string): string | undefined {
+export const functionOf = (word: string): string | undefined => {
   const entry = findEntry(`\\${word}`);
   return entry?.kind === 'f' ? entry.text : undefined;
-}
+};
 
 /** Would these letters, printed side by side, be read as a word? */
-export function hidesWord(letters: string): boolean {
+export const hidesWord = (letters: string): boolean => {
   for (let from = 0; from < letters.length; from += 1) {
     for (let to = from + 2; to <= Math.min(letters.length, from + 8); to += 1) {
       const part = letters.slice(from, to);
@@ -153,4 +164,4 @@ export function hidesWord(letters: string): boolean {
     }
   }
   return false;
-}
+};

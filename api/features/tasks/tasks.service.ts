@@ -1,6 +1,7 @@
 import type { DataSource, EntityManager } from 'typeorm';
 import type { Reading, ReadSettings } from '../../../shared/maths/expression.ts';
 import { wordReadError } from '../../../shared/maths/reads-as.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 import type { FieldError } from '../../../shared/schemas/problem.ts';
 import type { TaskAnswer, TaskChange, TaskForm, TaskListItem } from '../../../shared/schemas/task.ts';
 import { notFound, ProblemError } from '../../http/problem-error.ts';
@@ -146,7 +147,7 @@ function refuseUnread(form: TaskForm, readLine: TasksDeps['readLine']): void {
   ];
   const errors = lines.flatMap(({ pointer, tex }): FieldError[] => {
     const reading = readLine(tex, settings);
-    if (!reading.ok) return [{ pointer, detail: wordReadError(reading.error) }];
+    if (!reading.ok) return [{ pointer, detail: wordReadError(explainRefusal(reading.refusal)) }];
     if (pointer.startsWith('/assumptions') && reading.line.kind === 'expression') {
       return [{ pointer, detail: 'An assumption says something, such as x > 0.' }];
     }

@@ -1,6 +1,7 @@
 import { useEffect, useRef, useState } from 'react';
 import { wordReadError } from '../../../shared/maths/reads-as.ts';
 import { lineInWords } from '../../../shared/maths/words.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 import type { LineFacts, SheetStore } from './sheet-store.ts';
 import { useSheetFacts } from './sheet-store.ts';
 
@@ -24,7 +25,7 @@ export function LineAnnouncer({ store }: { readonly store: SheetStore }) {
 
 export function announcement({ number, reading }: Pick<LineFacts, 'number' | 'reading'>): string {
   if (!reading) return '';
-  if (!reading.ok) return `line ${number} cannot be read yet: ${wordReadError(reading.error)}`;
+  if (!reading.ok) return `line ${number} cannot be read yet: ${wordReadError(explainRefusal(reading.refusal))}`;
   const question = reading.alternatives.length > 0 ? '. It can be read in two ways: please choose' : '';
   return `line ${number} reads as ${lineInWords(reading.line)}${question}`;
 }

@@ -3,6 +3,7 @@ import type { Node as Block, Schema } from '@tiptap/pm/model';
 import { linesFromPaste } from '../../../shared/maths/plain-input.ts';
 import { printLine } from '../../../shared/maths/print.ts';
 import { readLine } from '../../../shared/maths/read.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 import { insertBlocks, makeStep } from './sheet-commands.ts';
 import { run } from './sheet-keys.ts';
 
@@ -22,7 +23,7 @@ function toTex(line: string): string {
 export function blocksFromPaste(text: string, schema: Schema): Block[] {
   return linesFromPaste(text).map((line) => {
     const reading = readLine(line);
-    const isWords = !reading.ok && reading.error.code === 'text';
+    const isWords = !reading.ok && explainRefusal(reading.refusal).code === 'text';
     return isWords
       ? (schema.nodes['paragraph']?.create(null, schema.text(line)) ?? makeStep(schema, { tex: toTex(line) }))
       : makeStep(schema, { tex: toTex(line) });

@@ -132,7 +132,7 @@ function WrittenLine({ tex, facts }: { readonly tex: string; readonly facts: Lin
   if (tex.trim() === '') return <span className="sheet-empty">nothing yet</span>;
   const reading = facts?.reading;
   if (!reading || reading.ok) return <Maths tex={tex} display />;
-  const { start, end } = reading.error.span;
+  const { start, end } = reading.refusal.span;
   if (start < end) return <Maths tex={tex} display spans={[{ start, end, as: 'bad' }]} />;
   // What is missing has no width: a gap stands for it.
   const shown = `${tex.slice(0, start)}{\\phantom{x}}${tex.slice(start)}`;

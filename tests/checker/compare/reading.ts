@@ -7,7 +7,7 @@ import type { CheckContext } from '../../../api/checker/context.ts';
 
 export function line(tex: string, numbers: 'real' | 'complex' = 'real'): Line {
   const reading = readLine(tex, { numbers, decimal: 'point', functions: [] });
-  if (!reading.ok) throw new Error(`${tex}: ${reading.error.code}`);
+  if (!reading.ok) throw new Error(`${tex}: ${reading.refusal.complaint}`);
   return reading.line;
 }
 

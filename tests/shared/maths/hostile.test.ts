@@ -5,6 +5,7 @@ import { readLine } from '../../../shared/maths/read.ts';
 import { readsAs, wordReadError } from '../../../shared/maths/reads-as.ts';
 import { READ_LIMITS } from '../../../shared/maths/reader.ts';
 import { sameLine } from '../../../shared/maths/same.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 import { markSpans, selectableParts } from '../../../shared/maths/terms.ts';
 
 const PIECES =
@@ -17,8 +18,8 @@ const soup = fc.array(fc.constantFrom(...PIECES), { maxLength: 60 }).map((pieces
 function complaint(tex: string): string | null {
   const reading = readLine(tex);
   if (!reading.ok) {
-    const { span, found } = reading.error;
-    if (!wordReadError(reading.error).endsWith('.')) return 'not worded';
+    const { span, found } = explainRefusal(reading.refusal);
+    if (!wordReadError(explainRefusal(reading.refusal)).endsWith('.')) return 'not worded';
     return tex.slice(span.start, span.end).startsWith(found) ? null : 'misplaced error';
   }
   const parts = selectableParts(tex).map(({ span }) => ({ span, className: 'part' }));
@@ -111,7 +112,7 @@ describe('hostile input', () => {
   it('is refused beyond the limits', () => {
     const code = (tex: string) => {
       const reading = readLine(tex);
-      return reading.ok ? 'read' : reading.error.code;
+      return reading.ok ? 'read' : explainRefusal(reading.refusal).code;
     };
     expect(code('x'.repeat(4001))).toBe('too-long');
     expect(code(`${'('.repeat(59)}x${')'.repeat(59)}`)).toBe('read');

@@ -62,7 +62,8 @@ describe('random tokens', () => {
       if (reading.ok) {
         read += 1;
         wrong.push(...strays(tex, reading.line));
-      } else if (!isWithin(reading.error.span, { start: 0, end: tex.length })) wrong.push(`refused elsewhere: ${tex}`);
+      } else if (!isWithin(reading.refusal.span, { start: 0, end: tex.length }))
+        wrong.push(`refused elsewhere: ${tex}`);
     }
     expect(wrong).toEqual([]);
     expect(read).toBeGreaterThan(4_000);

@@ -1,6 +1,7 @@
 import type { Expr, Line, ReadSettings } from '../../../shared/maths/expression.ts';
 import { printLine } from '../../../shared/maths/print.ts';
 import { DEFAULT_READ_SETTINGS, readLine } from '../../../shared/maths/read.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 
 const SIGNS = { plus: '+', minus: '-', plusminus: '±', minusplus: '∓' } as const;
 
@@ -52,7 +53,7 @@ export function outlineOfLine(line: Line): string {
 export function outlineOfReading(tex: string, settings: Partial<ReadSettings> = {}): string {
   const reading = readLine(tex, { ...DEFAULT_READ_SETTINGS, ...settings });
   if (!reading.ok) {
-    const { code, span, expected } = reading.error;
+    const { code, span, expected } = explainRefusal(reading.refusal);
     return [`${code} ${span.start}-${span.end}`, ...expected].join(' ');
   }
   const flags = reading.flags.map((flag) => ` !${flag}`).join('');

@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { printExpr, printLine } from '../../../shared/maths/print.ts';
 import { DEFAULT_READ_SETTINGS, readLine } from '../../../shared/maths/read.ts';
 import { sameExpr, sameLine } from '../../../shared/maths/same.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 import { arbitraryExpr, arbitraryLine } from './arbitrary-line.ts';
 
 describe('printing', () => {
@@ -31,7 +32,7 @@ describe('printing', () => {
   it('puts brackets only where they are needed', () => {
     const shown = (tex: string) => {
       const reading = readLine(tex);
-      return reading.ok ? printLine(reading.line) : reading.error.code;
+      return reading.ok ? printLine(reading.line) : explainRefusal(reading.refusal).code;
     };
     expect(shown('((x))+(2)(y)')).toBe('x+2y');
     expect(shown('\\sin\\left(x\\right)+\\ln(2)')).toBe('\\sin x+\\ln 2');

@@ -3,6 +3,7 @@ import type { Line } from '../../../shared/maths/expression.ts';
 import { printLine } from '../../../shared/maths/print.ts';
 import { DEFAULT_READ_SETTINGS } from '../../../shared/maths/read.ts';
 import { readInPlace } from '../../../shared/maths/read-in-place.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 
 const { raw } = String;
 
@@ -12,7 +13,7 @@ function shownBehind(...lines: readonly string[]): string {
   let shown = '';
   for (const tex of lines) {
     const reading = readInPlace(tex, DEFAULT_READ_SETTINGS, before);
-    if (!reading.ok) return reading.error.code;
+    if (!reading.ok) return explainRefusal(reading.refusal).code;
     before.push(reading.line);
     shown = [
       printLine(reading.line),
@@ -41,6 +42,9 @@ describe('a line behind others', () => {
 
   it('has its errors in the places of what was written', () => {
     const reading = readInPlace(raw`x=0\quad x=`, DEFAULT_READ_SETTINGS, []);
-    expect(reading).toMatchObject({ ok: false, error: { code: 'missing-operand', span: { start: 11, end: 11 } } });
+    expect(!reading.ok && explainRefusal(reading.refusal)).toMatchObject({
+      code: 'missing-operand',
+      span: { start: 11, end: 11 },
+    });
   });
 });

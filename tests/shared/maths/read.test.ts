@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { readLine } from '../../../shared/maths/read.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 import caseLines from './case-lines.json' with { type: 'json' };
 import { outlineOfReading } from './outline.ts';
 import { READINGS, REFUSALS } from './reading-table.ts';
@@ -16,7 +17,7 @@ describe('reading a line', () => {
   it.each(caseLines)('reads the lines of: $source', ({ lines }) => {
     for (const tex of lines) {
       const reading = readLine(tex);
-      expect(reading.ok ? 'read' : `${tex}: ${reading.error.code}`).toBe('read');
+      expect(reading.ok ? 'read' : `${tex}: ${explainRefusal(reading.refusal).code}`).toBe('read');
     }
   });
 

@@ -4,12 +4,13 @@ import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printLine } from '../../../shared/maths/print.ts';
 import { readLine } from '../../../shared/maths/read.ts';
 import { countNodes, mapExpr, mapLine } from '../../../shared/maths/walk.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 
 const { raw } = String;
 
 function lineOf(tex: string): Line {
   const reading = readLine(tex);
-  if (!reading.ok) throw new Error(reading.error.code);
+  if (!reading.ok) throw new Error(explainRefusal(reading.refusal).code);
   return reading.line;
 }
 

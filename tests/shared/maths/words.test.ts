@@ -2,17 +2,18 @@ import { describe, expect, it } from 'vitest';
 import { readLine } from '../../../shared/maths/read.ts';
 import { readsAs, wordReadError } from '../../../shared/maths/reads-as.ts';
 import { lineInWords } from '../../../shared/maths/words.ts';
+import { explainRefusal } from '../../../shared/maths/refusals.ts';
 
 const { raw } = String;
 
 function words(tex: string): string {
   const reading = readLine(tex);
-  return reading.ok ? lineInWords(reading.line) : reading.error.code;
+  return reading.ok ? lineInWords(reading.line) : explainRefusal(reading.refusal).code;
 }
 
 function refusal(tex: string): string {
   const reading = readLine(tex);
-  return reading.ok ? '' : wordReadError(reading.error);
+  return reading.ok ? '' : wordReadError(explainRefusal(reading.refusal));
 }
 
 describe('a line in words', () => {
