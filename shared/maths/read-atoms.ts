@@ -26,13 +26,12 @@ import {
 } from './reader.ts';
 import type { Token } from './tokens.ts';
 
-/** `(..)`, the row of values `(1,2)`, and `[..]_a^b`. */
+/** `(..)`, the row of values `(1,2)`, `\{[..]..\}` and `[..]_a^b`. */
 export const readBracket = ({ kind: open, start }: Token): Expr => {
-  const isRound = open === '(';
-  const items = readItems(isRound ? ')' : ']');
+  const items = readItems(open === '(' ? ')' : open === '[' ? ']' : 'z');
   const [only, more] = items;
   if (more) return { kind: 'matrix', rows: [items], span: span(start) };
-  if (!isRound && ahead(/_|\^._/y)) return readEvaluation(only!, start);
+  if (open === '[' && ahead(/_|\^._/y)) return readEvaluation(only!, start);
   return { ...only!, bracketed: { start, end: lastEnd } };
 };
 

@@ -1,5 +1,4 @@
 import type { Expr } from './expression.ts';
-import { groupAhead } from './look-ahead.ts';
 import { readAtom } from './read-arguments.ts';
 import { readProduct } from './read-expression.ts';
 import { readPower } from './read-power.ts';
@@ -9,6 +8,7 @@ import {
   choose,
   expect,
   fail,
+  groupAhead,
   inside,
   is,
   lastEnd,

@@ -150,9 +150,8 @@ export interface Run {
 }
 
 export const startRun = (first: Expr): Run => {
-  const run: Run = { factors: [], joins: [] };
-  append(run, first);
-  return run;
+  if (first.kind !== 'product' || first.bracketed) return { factors: [first], joins: [] };
+  return { factors: [...first.factors], joins: [...first.joins] };
 };
 
 /** A product without brackets of its own goes on with its factors. */

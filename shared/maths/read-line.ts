@@ -1,16 +1,17 @@
 import type { Expr, Line, RelationSign } from './expression.ts';
-import { groupAhead } from './look-ahead.ts';
 import { readEnd, readRows } from './read-atoms.ts';
 import { joinParts, type Join, type Part } from './read-joins.ts';
 import { readInterval, readSet, startsSet } from './read-sets.ts';
 import { readSentence, startsDefinition } from './read-sentences.ts';
 import {
   ahead,
+  bracesAreBrackets,
   choose,
   enclosed,
   fail,
   flag,
   flip,
+  groupAhead,
   inside,
   introduce,
   is,
@@ -30,14 +31,17 @@ const RELATIONS = '=<';
 
 /** All that one line says. */
 export const readWholeLine = (): Line => {
-  // An arrow or "so" before a line says only that it follows.
-  while (is('⇒') || (is('T') && CONNECTIVE.test(token.text))) next();
+  // An arrow or "so" before a line says only that it follows; `\(` only that maths begins.
+  while (is('⇒p') || (is('T') && CONNECTIVE.test(token.text))) next();
   if (is('$')) fail('line');
   const line = is(RELATIONS) ? readContinuation() : readStatements();
-  takeAll(/\.(?=\$)/y);
+  takeAll(END_MARKS);
   if (!is('$')) fail(`end ${kind}`);
   return line;
 };
+
+/** Marks of the sentence that a line ends, inside and outside of `\)`. */
+const END_MARKS = /[.,;]?(?:q[.,;]?)?(?=\$)/y;
 
 const CONNECTIVE = /^(?:|so|hence|thus|therefore|then|i e|and so|that is)$/i;
 
@@ -50,7 +54,7 @@ export const readStatements = (): Line => {
 };
 
 const takeJoin = (): Join | null => {
-  if (is('$')) return null;
+  if (is('$') || ahead(END_MARKS)) return null;
   const { text } = token;
   const isOr = /^or$/i.test(text);
   const isComma = is(',;');
@@ -77,7 +81,8 @@ const readStatement = (): Line => {
   if (is('(') && /[=<∈]/.test(groupAhead().inner)) return readGroup(')');
   if (is('s') && ahead(/sa(?:∈R)?[|:]/y)) return readGroup('z');
   // `S=\{2\}`: the set of solutions under the name that some give it.
-  if (is('a') && /^[SL]$/.test(token.text) && (ahead(/a=s/y) || peek(2).text === 'empty')) skip(2);
+  if (is('a') && /^[SL]$/.test(token.text) && ((ahead(/a=s/y) && !bracesAreBrackets(2)) || peek(2).text === 'empty'))
+    skip(2);
   if (startsSet()) return readBareSet();
   const name = is('a') ? startsDefinition() : null;
   if (name) introduce(name);
@@ -101,7 +106,7 @@ const asDefinition = (line: Line): Line => {
 };
 
 const readRelations = (left: Expr, from: number): Line => {
-  if (is('∈') || (left.kind === 'letter' && ahead(/=s[^B]/y))) {
+  if (is('∈') || (left.kind === 'letter' && ahead(/=s[^B]/y) && !bracesAreBrackets(1))) {
     const negated = next().text === '!';
     return { kind: 'membership', letter: left, set: readSet(), negated, span: span(from) };
   }

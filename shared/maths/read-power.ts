@@ -1,9 +1,10 @@
 import type { Expr } from './expression.ts';
 import { namesIn } from './names-in.ts';
-import { readAtom, readExponent, readItems } from './read-arguments.ts';
+import { readAtom, readExponent, readItems, readSubscript } from './read-arguments.ts';
 import {
   ahead,
   atoms,
+  bracesAreBrackets,
   choose,
   context,
   fail,
@@ -26,7 +27,7 @@ import {
 export const readPower = (): Expr => {
   const from = start;
   const isGroup = kind === '{';
-  if (!atoms[kind] || (kind === '|' && token.side === 'r')) fail('operand');
+  if (!atoms[kind] || (kind === '|' && token.side === 'r') || (kind === 's' && !bracesAreBrackets())) fail('operand');
   let base = readAtom();
   let hasPower = false;
   while (is("^!°'2")) {
@@ -43,6 +44,8 @@ export const readPower = (): Expr => {
 };
 
 const readBehind = (base: Expr, from: number): Expr => {
+  const behind = peek(1).kind;
+  if (kind === '^' && !"°⊤'".includes(behind === '{' ? peek(2).kind : behind)) return readRaised(base, from);
   const mark = takeAll(/°|\^(?:\{[°⊤]\}|[°⊤])/y);
   if (mark) return { kind: 'call', name: mark.includes('⊤') ? 'transpose' : 'degrees', args: [base], span: span(from) };
   if (is('!')) return readFactorial(base, from);
@@ -61,6 +64,11 @@ const readRaised = (base: Expr, from: number): Expr => {
   const isTyped = is('2');
   if (!isTyped && peek(1).kind === '(') flag('power-digits');
   const exponent = readPowerSign();
+  // `x^2_1` is displayed as the square of x_1.
+  if (base.kind === 'letter' && is('_') && !base.name.includes('_')) {
+    const name = base.name + readSubscript();
+    return { kind: 'power', base: { ...base, name, span: span(from) }, exponent, span: span(from) };
+  }
   if (!isTyped && base.kind === 'letter' && functions.includes(base.name) && is('(')) {
     return readFunctionPower(base.name, exponent, from);
   }

@@ -1,11 +1,12 @@
 import type { Expr, SetExpr, Span } from './expression.ts';
-import { groupAhead } from './look-ahead.ts';
 import { readList } from './read-arguments.ts';
 import {
   ahead,
+  bracesAreBrackets,
   enclosed,
   expect,
   fail,
+  groupAhead,
   inside,
   is,
   negated,
@@ -103,7 +104,7 @@ const isInfinite = (expr: Expr): boolean => {
 
 /** `[1,2)`, `(-1,3]`, `]a,b[` or a named set at the start of a line: a bare set. */
 export const startsSet = (): boolean => {
-  if (is('sR]')) return true;
+  if (is('sR]')) return !bracesAreBrackets();
   if (!is('([')) return false;
   const { inner, end } = groupAhead();
   if (!/^[^,;]*[,;][^,;]*$/.test(inner)) return false;

@@ -29,6 +29,7 @@ useGrammar(readSum, {
   o: readConstant,
   '(': readBracket,
   '[': readBracket,
+  s: readBracket,
   '{': readBraces,
   '|': readBars,
   '‹': readOpenBracket,

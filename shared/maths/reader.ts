@@ -219,12 +219,36 @@ export const takeDifferential = (): void => {
 export const atDifferential = (): boolean =>
   token.text === 'd' && variable === null && ahead(/a[ai]/y) !== '' && (peek(1).text !== 'd' || peek(2).kind !== 'a');
 
+/** Do the braces of a set that open some tokens ahead hold square brackets, so that they are brackets too? */
+export const bracesAreBrackets = (from = 0): boolean => {
+  if (peek(from).kind !== 's') return false;
+  const { inner } = groupAhead(from);
+  return /\[\](?!_|\^.\}?_)/.test(inner) && !/[,;]/.test(inner);
+};
+
+/**
+ * The bracket that opens some tokens ahead: the kinds directly within it, nested brackets left empty, and where it ends.
+ * Where it is not closed, that is at the end of the line.
+ */
+export const groupAhead = (from = 0): { readonly inner: string; readonly end: number } => {
+  let depth = 0;
+  let inner = '';
+  for (let end = from; ; end += 1) {
+    const { kind } = peek(end);
+    if (')]}z⌋⌉'.includes(kind)) depth -= 1;
+    if (kind === '$' || (depth <= 0 && end > from)) return { inner, end };
+    if (depth === 1) inner += kind;
+    if ('([{s⌊⌈'.includes(kind)) depth += 1;
+  }
+};
+
 /** Can the token begin a factor, so that it multiplies what stands before it? */
 export const startsFactor = (): boolean => {
   const { side } = token;
   if (kind === '|') return side === 'l' || (side === '' && context.bars === 0 && !barIsScripted());
   if (kind === '[') return !context.reversed || side === 'l';
   if (kind === '{') return !ahead(/\{\}/y);
+  if (kind === 's') return bracesAreBrackets();
   if (kind === 'a') return context.dx !== 'ends' || !atDifferential();
   return atoms[kind] !== undefined;
 };

@@ -4,7 +4,7 @@
  * `0` number, `a` letter, `e` and `i` constants, `o` infinity, `f` function, `l` logarithm, `L` limit, `F` fraction,
  * `C` binomial, `r` root, `O` overline, `2` raised digits, `±` a double sign, `<` a relation other than `=`, `d` is
  * defined as, `∈` in or not in, `U` a join of sets, `R` a named set, `s` and `z` the braces of a set, `V` or and and,
- * `∑` sum or product, `T` words, `B` and `E` begin and end of an environment, `N` new row, `H` empty box, `‹` and `›` a
+ * `∑` sum or product, `p` and `q` what opens and closes maths in a text, `T` words, `B` and `E` begin and end of an environment, `N` new row, `H` empty box, `‹` and `›` a
  * bracket left out with `\left.` and `\right.`, `$` end of the line.
  */
 export type TokenKind = string;
@@ -13,7 +13,7 @@ export type TokenKind = string;
  * One kind a line, with the text of its tokens after `@`, then the commands and characters that mean it; `a@b`: the text
  * of a is b. Without an `@` the text is the name, and a sign names itself. The kinds that no token has: `~` a gap,
  * `S` without meaning, `A` an accent, `M` a letter style, `X` an adornment, `D` blackboard letters, `n` a negated sign,
- * `h` a space of some width.
+ * `h` a space of some width, `v` what stands between the parts of a fraction or binomial in one group.
  */
 const ROWS = String.raw`*@dot * cdot ast bullet · ⋅ ∗
 *@times × times
@@ -77,6 +77,10 @@ d := ≔ coloneq coloneqq
 % \%
 F frac dfrac tfrac cfrac
 C binom dbinom tbinom
+v@F over
+v@C choose
+p \( \[
+q \) \]
 r sqrt √@
 ∫ int
 ∑ sum ∑@sum prod@product ∏@product
@@ -98,6 +102,7 @@ h hspace mspace
 n not
 f sin cos tan cot sec csc arcsin arccos arctan arccot arcsec arccsc sinh cosh tanh coth sech csch arsinh arcosh artanh
 f ln exp gcd lcm min max arg det abs sign floor ceil conj Re@re Im@im sgn@sign cosec@csc tg@tan ctg@cot cotan@cot
+f arctg@arctan arcctg@arccot sh@sinh ch@cosh th@tanh cth@coth arsh@arsinh arch@arcosh arth@artanh
 f asin@arcsin acos@arccos atan@arctan arcsinh@arsinh arccosh@arcosh arctanh@artanh asinh@arsinh acosh@arcosh atanh@artanh
 a epsilon vartheta phi ell hbar partial ∂@\partial differentialD@d`;
 
@@ -140,8 +145,8 @@ for (const [place, small] of GREEK.split(' ').entries()) {
 /** Looks up a command with its backslash, or a sign of one or two characters. */
 export const findEntry = (name: string): Entry | undefined => TABLE.get(name);
 
-/** Functions, roots, or, and; pi and longer Greek letters; infinity. All else needs its backslash. */
-const WORD = /^(?:[flrV](?!lb$)|api$|a(?!hbar).{4}|oinf.{5})/;
+/** Functions (but for the shortest names), roots, or, and; pi and longer Greek letters; infinity. All else needs its backslash. */
+const WORD = /^(?:[flrV](?!lb$|(?:ar|c)?[sct]h$)|api$|a(?!hbar).{4}|oinf.{5})/;
 
 /** Looks up what is a word without its backslash. */
 export const findWord = (word: string): Entry | undefined => {

@@ -148,10 +148,10 @@ const OPTIONS: Partial<Record<TokenKind, RegExp>> = {
 };
 
 const readEntry = ({ kind, text }: Entry, name: string, start: number): void => {
-  if (!'hABDEHMNSTXn~'.includes(kind)) return push(kind, text, start);
+  if (!'hABDEHMNSTXnv~'.includes(kind)) return push(kind, text, start);
   const options = OPTIONS[kind];
   if (options) take(options);
-  const argument = 'NSX~'.includes(kind) ? '' : rawArgument().trim();
+  const argument = 'NSXv~'.includes(kind) ? '' : rawArgument().trim();
   switch (kind) {
     case 'S':
     case 'h':
@@ -161,6 +161,8 @@ const readEntry = ({ kind, text }: Entry, name: string, start: number): void => 
       return;
     case 'X':
       return passOver();
+    case 'v':
+      return splitGroup(text, start);
     case 'M':
       return readStyled(argument, name, start);
     case 'D':
@@ -184,6 +186,26 @@ const passOver = (): void => {
   if (source[at - 1] === '}') passedOver.push(at - 1);
   at = source[from] === '{' ? from + 1 : from;
 };
+
+/** `{n\over k}` becomes `\frac{n}{k}`, and so for binomials: the sign goes before the group that it parts in two. */
+const splitGroup = (sign: TokenKind, start: number): void => {
+  let open = tokens.length;
+  let depth = 0;
+  do {
+    open -= 1;
+    if (kinds[open] === '}') depth += 1;
+    if (kinds[open] === '{') depth -= 1;
+  } while (open >= 0 && depth >= 0);
+  const brace = tokens[open];
+  if (!brace || brace.text === SPLIT) refuse('known', start);
+  tokens.splice(open, 0, { ...brace, kind: sign, end: brace.start });
+  kinds = kinds.slice(0, open) + sign + kinds.slice(open);
+  push('}', '', start);
+  push('{', SPLIT, start);
+};
+
+/** The text of a brace that stands for an `\over`: a group is parted only once. */
+const SPLIT = 'over';
 
 /** `\left(`: the delimiter carries its side and the span of both. */
 const readSized = (found: string, start: number): void => {

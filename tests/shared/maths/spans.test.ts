@@ -6,12 +6,12 @@ import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
 import caseLines from './case-lines.json' with { type: 'json' };
 import { READINGS } from './reading-table.ts';
 
-/** The sine in \sin^2 x has no text of its own, nor have raised digits, the 1 of \int dx, the base of \lb and the zero of \R^+. */
+/** The sine in \sin^2 x and the x_1 in x^2_1 have no text of their own, nor have raised digits, the 1 of \int dx, the base of \lb and the zero of \R^+. */
 function hasOwnText(expr: Expr, parent: Expr | null, text: string): boolean {
   if (
     parent?.kind === 'power' &&
     parent.base === expr &&
-    (expr.kind === 'call' || expr.kind === 'log') &&
+    (expr.kind === 'call' || expr.kind === 'log' || expr.kind === 'letter') &&
     !expr.bracketed
   ) {
     return expr.span.start !== parent.span.start || expr.span.end !== parent.span.end;
