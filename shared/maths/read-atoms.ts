@@ -45,7 +45,7 @@ export const readOpenBracket = ({ start }: Token): Expr => {
 /** A braced group in the place of a factor: displayed without brackets, so it may not hide a sum within a product. */
 export const readBraces = ({ start }: Token): Expr => {
   const before = peek(-2).kind;
-  if (take('}')) return take('_') ? readChoose(start) : readPower();
+  if (take('}')) return take('_^') ? readChoose(start) : readPower();
   const expr = enclosed('}', sum, holding());
   const isLoose = (expr.kind === 'sum' && !expr.bracketed) || isDivided(expr);
   const around = before + kind;
@@ -56,7 +56,7 @@ export const readBraces = ({ start }: Token): Expr => {
 /** The kinds before and after a group that stands alone. */
 const ALONE = /^[${}()[\]sz,;&N=<≈∈VTBE]{2}$/;
 
-/** `{}_nC_r`: the number of ways to choose r of n. */
+/** `{}_nC_r` or `{}^nC_r`: the number of ways to choose r of n. */
 const readChoose = (start: number): Expr => {
   const top = readArgument();
   if (token.text !== 'C') fail('choose');

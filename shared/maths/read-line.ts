@@ -174,7 +174,7 @@ const readRow = (): Line => {
     skip(2);
     line = { kind: 'relation', left, sign, right: sum(), span: span(from) } as const;
   } else line = readRelations(left, from);
-  take(',;');
+  take(',;.');
   return line;
 };
 

@@ -66,7 +66,7 @@ const AT_END: Expectations = [
 const UNKNOWN: Expectations = [
   [/^\\mathbb(?![a-z])/, 'unknown-command', '\\R'],
   [/^\\not(?![a-z])/, 'unknown-command', '\\ne'],
-  [/^\\(?:vec|hat|tilde|mathbf|bm|boldsymbol)(?![a-z])/, 'unknown-command', 'letter'],
+  [/^\\(?:vec|overrightarrow|hat|tilde|mathbf|bm|boldsymbol)(?![a-z])/, 'unknown-command', 'letter'],
   [/^\\/, 'unknown-command'],
   [/^/, 'unknown-character'],
 ];

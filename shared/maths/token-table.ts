@@ -32,7 +32,7 @@ _
 <@<= <= ≤ le leq leqslant ⩽
 <@>= >= ≥ ge geq geqslant ⩾
 <@!= ≠ ne neq \not=
-<@approx ≈ approx thickapprox
+<@approx ≈ approx thickapprox simeq ≃ doteq fallingdotseq ≒
 ∈ in isin
 ∈@! ∉ notin \not\in
 U@union ∪ cup
@@ -92,13 +92,13 @@ E end
 N cr \\
 H placeholder
 T text mbox textrm textnormal
-A vec hat tilde mathbf bm boldsymbol
+A vec overrightarrow hat tilde mathbf bm boldsymbol
 M mathrm operatorname mathit mathsf textup rm
 X boxed fbox cancel bcancel xcancel underline
 D mathbb
-S $ \! displaystyle textstyle scriptstyle limits nolimits mathstrut strut nonumber
+S $ \! displaystyle textstyle scriptstyle limits nolimits mathstrut strut nonumber checkmark ✓
 ~ \, \: \; \> quad qquad thinspace enspace enskip medspace thickspace
-h hspace mspace
+h hspace mspace color
 n not
 f sin cos tan cot sec csc arcsin arccos arctan arccot arcsec arccsc sinh cosh tanh coth sech csch arsinh arcosh artanh
 f ln exp gcd lcm min max arg det abs sign floor ceil conj Re@re Im@im sgn@sign cosec@csc tg@tan ctg@cot cotan@cot

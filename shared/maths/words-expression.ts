@@ -56,7 +56,9 @@ function numberInWords(number: NumberExpr): string {
 
 function letterInWords(name: string): string {
   const [letter = '', sub = ''] = name.split('_');
-  const plain = letter.replace(/\\(vec|hat|tilde|mathbf|bm|boldsymbol)\{(.*)\}/, 'vector $2').replaceAll('\\', '');
+  const plain = letter
+    .replace(/\\(vec|overrightarrow|hat|tilde|mathbf|bm|boldsymbol)\{(.*)\}/, 'vector $2')
+    .replaceAll('\\', '');
   return sub ? `${plain} sub ${sub.replace(/[{}\\]/g, '')}` : plain;
 }
 

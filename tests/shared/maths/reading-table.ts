@@ -342,6 +342,11 @@ export const READINGS: readonly (readonly [tex: string, outline: string])[] = [
   [raw`2\{3[x-(x+1)]+1\}`, raw`(* 2 (+(* 3 (+x -(+x +1))) +1))`],
   [raw`\left\{2\left[x+1\right]-3\right\}^2=0`, raw`(relation (^ (+(* 2 (+x +1)) -3) 2) = 0)`],
   [raw`y=\{[x+1]x-2\}x`, raw`(relation y = (* (+(* (+x +1) x) -2) x))`],
+  [raw`{}^nC_r+{}^{5}C_{2}`, raw`(+(binomial n r) +(binomial 5 2))`],
+  [raw`\begin{cases}x+y=2,\\x-y=0.\end{cases}`, raw`(all [(relation (+x +y) = 2) (relation (+x -y) = 0)]) !comma-and`],
+  [raw`x\simeq1.41`, raw`(relation x approx 141/100:decimal)`],
+  [raw`\color{red}x=3\;\checkmark`, raw`(relation x = 3)`],
+  [raw`\overrightarrow{a}`, raw`\overrightarrow{a}`],
   [raw`\{x+1\}`, raw`(membership _ (finite [(+x +1)]) false)`],
 ];
 
