@@ -213,6 +213,8 @@ export interface LimitExpr extends Node {
 export interface MatrixExpr extends Node {
   readonly kind: 'matrix';
   readonly rows: readonly (readonly Expr[])[];
+  /** How many columns stand before a bar, in a matrix that stands for equations. */
+  readonly bar?: number;
 }
 
 export type RelationSign = '=' | '<' | '>' | '<=' | '>=' | '!=' | 'approx';

@@ -63,8 +63,12 @@ function print(expr: Expr, style: PrintStyle): string {
       return `${base(expr.operand, style, true)}!`;
     case 'binomial':
       return `\\binom{${print(expr.top, style)}}{${print(expr.bottom, style)}}`;
-    case 'matrix':
-      return `\\begin{pmatrix}${expr.rows.map((row) => row.map((cell) => print(cell, style)).join('&')).join('\\\\')}\\end{pmatrix}`;
+    case 'matrix': {
+      const rows = expr.rows.map((row) => row.map((cell) => print(cell, style)).join('&')).join('\\\\');
+      if (!expr.bar) return `\\begin{pmatrix}${rows}\\end{pmatrix}`;
+      const columns = `${'c'.repeat(expr.bar)}|${'c'.repeat((expr.rows[0]?.length ?? 0) - expr.bar)}`;
+      return `\\left(\\begin{array}{${columns}}${rows}\\end{array}\\right)`;
+    }
     default:
       return printCalculus(expr, style);
   }

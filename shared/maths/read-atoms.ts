@@ -24,7 +24,7 @@ import {
   take,
   token,
 } from './reader.ts';
-import type { Token } from './tokens.ts';
+import { source, type Token } from './tokens.ts';
 
 /** `(..)`, the row of values `(1,2)`, `\{[..]..\}` and `[..]_a^b`. */
 export const readBracket = ({ kind: open, start }: Token): Expr => {
@@ -119,7 +119,8 @@ export const readMatrix = (open: Token): Expr => {
   const width = rows[0]!.length;
   const place = span(start);
   if (rows.some((row) => row.length !== width)) fail(`rows ${width}`, place);
-  const matrix: Expr = { kind: 'matrix', rows, span: place };
+  const bar = /^\\begin\s*{array}\s*{([lcr]*)\|[lcr]+}/.exec(source.slice(start))?.[1]?.length;
+  const matrix: Expr = { kind: 'matrix', rows, ...(bar && { bar }), span: place };
   return text === 'vmatrix' ? { kind: 'call', name: 'det', args: [matrix], span: place } : matrix;
 };
 

@@ -2,6 +2,7 @@ import type { Expr } from '../../../shared/maths/expression.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import type { CheckSettings } from '../../../shared/schemas/verdict.ts';
+import { callOf, piExpr, rationalOf } from '../calculus/build.ts';
 import type { CheckContext } from '../context.ts';
 import { rational } from '../numbers/rational.ts';
 import { ballSign, magnitude } from '../numbers/ball.ts';
@@ -19,7 +20,7 @@ import {
 } from '../solving/gaussian-polynomial.ts';
 import { degreeIn } from '../solving/linear.ts';
 import { differenceGraph } from '../statements/solve.ts';
-import { isListOfValues, type Statement } from '../statements/statement.ts';
+import { isLetter, isListOfValues, type Statement } from '../statements/statement.ts';
 import { subKnown, toBall, isKnown, fromParts } from '../values/arithmetic.ts';
 import { evaluatePrepared, prepare } from '../values/evaluate.ts';
 import { valueTex } from '../values/value-tex.ts';
@@ -48,7 +49,7 @@ export function judgeComplexStep(question: Question, letters: readonly string[])
   if (same) return same;
   const [letter] = letters;
   if (letters.length !== 1 || letter === undefined) return undecided('not-covered');
-  const a = rootsOf(above, letter, context);
+  const a = rootsOf(above, letter, context) ?? rootsOfPower(above, letter);
   const b = a && rootsOf(below, letter, context);
   if (!a || !b) return undecided('not-covered');
   if (a.kind === 'polynomial' && b.kind === 'polynomial') return comparePolynomials(a.of, b.of, letter, question);
@@ -119,6 +120,25 @@ function solvedValues(statement: Statement, letter: string, context: CheckContex
   const root = powerExpr(inside, rational(1, 2));
   const divisor = productExpr([numberExpr(rational(2)), a]);
   return [sumExpr([minusExpr(b), root]), differenceExpr(minusExpr(b), root)].map((top) => quotientExpr(top, divisor));
+}
+
+const mostRoots = 24;
+
+/** All n roots of letter^n = constant, from the principal one on. */
+function rootsOfPower(statement: Statement, letter: string): Roots | null {
+  if (statement.kind !== 'compare' || statement.sign !== '=') return null;
+  const { left, right } = statement;
+  if (left.kind !== 'power' || !isLetter(left.base, letter) || lettersOf(right).length > 0) return null;
+  const degree = rationalOf(left.exponent);
+  if (!degree || degree.den !== 1n || degree.num < 2n || degree.num > mostRoots) return null;
+  const n = Number(degree.num);
+  const first = powerExpr(right, rational(1, n));
+  const i: Expr = { kind: 'constant', name: 'i', span: right.span };
+  const exprs = Array.from({ length: n }, (_, k) => {
+    const turn = productExpr([numberExpr(rational(2 * k, n)), piExpr, i]);
+    return k === 0 ? first : productExpr([first, callOf('exp', turn)]);
+  });
+  return { kind: 'values', exprs };
 }
 
 function comparePolynomials(

@@ -3,6 +3,7 @@ import type { Evidence } from '../../../shared/schemas/verdict.ts';
 import { compareWithCalculus, noEvidence } from '../calculus/judge.ts';
 import type { Comparison } from '../compare/comparison.ts';
 import type { CheckContext } from '../context.ts';
+import { judgeAugmented } from './augmented.ts';
 import { compareChoices } from './plus-minus.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
 
@@ -13,6 +14,8 @@ export interface ExpressionAnswer extends StepResult {
 
 /** Rules 1 and 8 on two expressions. */
 export function judgeExpressions(above: Expr, below: Expr, context: CheckContext): ExpressionAnswer {
+  const equations = judgeAugmented(above, below, context);
+  if (equations) return { ...equations, shrunk: [] };
   const { found: plain, notes, evidence } = compareWithCalculus(above, below, context);
   const isOpen = plain.kind === 'undecided' && plain.reason === 'not-covered';
   const found = (isOpen ? compareChoices(above, below, context, compareOne) : null) ?? plain;

@@ -54,6 +54,7 @@ const plainKinds: ReadonlySet<Expr['kind']> = new Set([
   'root',
   'call',
   'log',
+  'matrix',
 ]);
 
 /** Without anything that has letters of its own or stands for something else. */

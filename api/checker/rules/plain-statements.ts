@@ -95,21 +95,27 @@ const mostFactors = 12n;
 interface Smallest {
   readonly whole: Expr;
   readonly least: bigint;
+  /** How often all of them have the letter. */
+  readonly times: bigint;
 }
 
-function leastShift(expr: Expr, letter: string, context: CheckContext): bigint | null {
+function shiftsIn(expr: Expr, letter: string, context: CheckContext): { times: bigint; plus: bigint }[] {
   const own = expr.kind === 'factorial' ? shiftOf(expr.operand, letter, context) : null;
-  const all = childrenOf(expr).map((part) => leastShift(part, letter, context));
-  if (own?.times === 1n) all.push(own.plus);
-  return all.reduce((least, shift) => (least === null || (shift !== null && shift < least) ? shift : least), null);
+  return [...(own && own.times > 0n ? [own] : []), ...childrenOf(expr).flatMap((p) => shiftsIn(p, letter, context))];
+}
+
+/** The first whole number with times * n not below a bound. */
+function firstFrom(bound: bigint, times: bigint): bigint {
+  return -floor(rational(-bound, times));
 }
 
 /** The smallest factorial goes away as a factor; the letter is a whole number from where on everything has a value. */
 function withoutFactorials(statement: CompareStatement, letter: string, context: CheckContext): Statement | null {
   const whole: Expr = letterExpr(`${letter}_{!}`);
   const needs: Needs = { from: -(1n << 20n), doubtful: [] };
-  const shifts = [statement.left, statement.right].map((side) => leastShift(side, letter, context));
-  const smallest = { whole, least: shifts.reduce<bigint>((a, b) => (b !== null && b < a ? b : a), 1n << 20n) };
+  const shifts = [statement.left, statement.right].flatMap((side) => shiftsIn(side, letter, context));
+  const least = shifts.reduce((a, { plus }) => (plus < a ? plus : a), 1n << 20n);
+  const smallest = { whole, least, times: shifts[0]?.times ?? 1n };
   let isOpen = false;
   const write = (expr: Expr): Expr =>
     mapExpr(expr, (node) => {
@@ -144,18 +150,18 @@ function fromOn(letter: string, n: bigint): Statement {
   };
 }
 
-/** a where the expression is letter + a, and how often it has the letter; null for anything else. */
+/** times and plus where the expression is times * letter + plus, times from 0 to 3; null for anything else. */
 function shiftOf(expr: Expr, letter: string, context: CheckContext): { times: bigint; plus: bigint } | null {
   const fraction = toFraction(prepare(expr, context), letter);
   if (!fraction || fraction.den.length !== 1 || fraction.den[0] !== 1n || fraction.num.length > 2) return null;
   const [plus = 0n, times = 0n] = fraction.num;
-  return times === 0n || times === 1n ? { times, plus } : null;
+  return times >= 0n && times <= 3n ? { times, plus } : null;
 }
 
 function factorialOf(
   operand: Expr,
   letter: string,
-  { whole, least }: Smallest,
+  { whole, least, times }: Smallest,
   needs: Needs,
   context: CheckContext,
 ): Expr | null {
@@ -163,7 +169,8 @@ function factorialOf(
   if (!shift) return null;
   if (shift.times === 0n) return constantFactorial(shift.plus) ?? { kind: 'factorial', operand, span: operand.span };
   const more = shift.plus - least;
-  needs.from = max(needs.from, -shift.plus);
+  if (shift.times !== times) return null;
+  needs.from = max(needs.from, firstFrom(-shift.plus, times));
   return more > mostFactors ? null : productExpr([whole, ...fallingFrom(operand, more)]);
 }
 
@@ -185,7 +192,7 @@ function fallingFrom(top: Expr, count: bigint): Expr[] {
 function binomialOf(top: Expr, bottom: Expr, letter: string, needs: Needs, context: CheckContext): Expr | null {
   const [high, low] = [shiftOf(top, letter, context), shiftOf(bottom, letter, context)];
   if (high?.times === 0n && low?.times === 0n) return { kind: 'binomial', top, bottom, span: top.span };
-  if (!high || !low || high.times === 0n) return null;
+  if (!high || !low || high.times !== 1n || low.times > 1n) return null;
   const count = low.times === 0n ? low.plus : high.plus - low.plus;
   if (count < 0n || count > mostFactors) return null;
   needs.from = max(needs.from, count - high.plus);
@@ -213,7 +220,7 @@ function isHomogeneous(put: CompareStatement, alone: CompareStatement, whole: Ex
 function factorialIs({ left, sign, right }: CompareStatement, letter: string, context: CheckContext): Statement | null {
   const shift = left.kind === 'factorial' ? shiftOf(left.operand, letter, context) : null;
   const value = rationalOf(right);
-  if (sign !== '=' || !shift || shift.times === 0n || !value) return null;
+  if (sign !== '=' || !shift || shift.times !== 1n || !value) return null;
   const parts: Statement[] = [];
   let product = 1n;
   for (let n = 0n; product * value.den <= value.num; n += 1n, product *= n) {

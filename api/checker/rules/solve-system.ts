@@ -188,7 +188,8 @@ function fromOneLetter(
   const set = solveStatement(equation, envFor(letter, search.context));
   const rest = equations.filter((other) => other !== equation);
   // All but some numbers: at these a denominator of the equations is zero.
-  if (isFiniteSet(complement(set)) && !set.open) return eliminate(rest, values, search, depth + 1);
+  if (isWholeLine(set) || (isFiniteSet(complement(set)) && !set.open))
+    return eliminate(rest, values, search, depth + 1);
   if (!isFiniteSet(set) || set.open) throw new Unsettled('not-covered');
   return set.points.flatMap((point) => {
     const expr = toExpr(point);

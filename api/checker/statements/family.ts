@@ -13,10 +13,13 @@ import {
 import { Unsettled } from '../solving/unsettled.ts';
 import type { LineEnv, Window } from '../solving/line-env.ts';
 import type { Graph } from '../values/graph.ts';
-import type { SolveEnv } from './solve.ts';
 import { comparesOf, type Statement } from './statement.ts';
 
 const farthest = 300;
+
+interface FamilyEnv extends LineEnv {
+  readonly families: ReadonlySet<string>;
+}
 
 /**
  * What inequalities with an index are true for, inside the window: for some whole number, or where they only shut values
@@ -25,8 +28,8 @@ const farthest = 300;
 export function familySets<T extends Statement>(
   statement: T,
   index: string,
-  env: SolveEnv,
-  solve: (statement: T, env: SolveEnv) => RealSet,
+  env: FamilyEnv,
+  solve: (statement: T, env: FamilyEnv) => RealSet,
 ): RealSet {
   const { window } = env;
   if (!window) throw new Unsettled('not-covered');
