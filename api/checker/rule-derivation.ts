@@ -13,7 +13,7 @@ import { Unsettled } from './solving/unsettled.ts';
 import { judgeLine, passStep, planRoute, skipLine, startWalk, type Route, type WalkState } from './walk-derivation.ts';
 
 /** For each second look at a ruling: cases, lost brackets, candidates, the goal. */
-export const operationsPerLook = 30_000;
+export const operationsPerLook = 20_000;
 
 /** How a worker that is watched rules: without the steps that ran out of time before, telling where it is. */
 export interface Watch {

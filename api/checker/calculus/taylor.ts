@@ -35,7 +35,7 @@ export function taylorOf(
     const value = values[index];
     const head = value && isKnown(value) && isReal(value) ? toBall(value, bits).re : null;
     jets.push(head && jetOf(node, head, jets, { letter, order, bits }));
-    context.budget.spend(order >> 2);
+    context.budget.spend(1 + (order >> 1));
   }
   return jets[graph.root] ?? null;
 }
@@ -105,7 +105,8 @@ function convolved(
 ): Ball {
   let mid = 0n;
   let rad = 0n;
-  charge((k + 1 - first) * costOfStep(bits));
+  // Two products for the middle, and two for the radius.
+  charge(2 * (k + 1 - first) * costOfStep(bits));
   for (let j = first; j <= k; j += 1) {
     const [x, y] = [a[j] as Ball, b[k - j] as Ball];
     if (x.mid === 0n && x.rad === 0n) continue;

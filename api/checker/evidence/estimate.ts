@@ -1,5 +1,6 @@
 import type { Expr, FunctionName } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
+import { charge } from '../numbers/work.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { Definitions } from '../context.ts';
 import {
@@ -255,8 +256,11 @@ function seriesValue(expr: Extract<Expr, { kind: 'series' }>, at: Place): Comple
   const [low, high] = [estimate(expr.from, at).re, estimate(expr.to, at).re];
   if (!Number.isInteger(low) || !Number.isInteger(high) || high - low > mostTerms) return missing;
   let total = real(expr.operation === 'sum' ? 0 : 1);
+  const letters = new Map(at.letters);
   for (let k = low; k <= high; k += 1) {
-    const value = estimate(expr.body, moved(at, expr.index, real(k)));
+    // Sums within sums are looked at more often than the cost that was told before says.
+    charge(1);
+    const value = estimate(expr.body, { ...at, letters: letters.set(expr.index, real(k)) });
     total = expr.operation === 'sum' ? plus(total, value) : times(total, value);
   }
   return total;

@@ -43,7 +43,8 @@ export function magnitude(value: bigint): bigint {
 
 /** A multiplication of two balls of size about 1. */
 export function costOfStep(bits: number): number {
-  return 0.3 + (bits / 256) ** 1.6 / 4;
+  const size = bits / 256;
+  return 0.3 + (size * Math.sqrt(size)) / 4;
 }
 
 export function mulBalls(a: Ball, b: Ball, bits: number): Ball {

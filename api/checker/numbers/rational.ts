@@ -37,7 +37,7 @@ function shortened(a: bigint, b: bigint): [bigint, bigint] {
   let length = bitLength(x);
   while (y > middling) {
     const step = lehmerStep(x, y, length);
-    charge(1 + length / 3000);
+    charge(1.5 + length / 800);
     if (step === null) {
       [x, y] = [y, x % y];
       chargeProduct(length);

@@ -38,11 +38,14 @@ export class IntervalEvaluator {
   private readonly graph: Graph;
   private readonly order: readonly number[];
   private readonly values: (Interval | null)[];
+  /** The signs found since the values were, 2 where none was looked for. */
+  private readonly signs: Int8Array;
 
   constructor(graph: Graph) {
     this.graph = graph;
     this.order = [...reachable(graph)].sort((a, b) => a - b);
     this.values = graph.nodes.map((node) => (node.op === 'number' ? constantInterval(node.value) : null));
+    this.signs = new Int8Array(graph.nodes.length);
   }
 
   /** How many nodes are looked at for one value. */
@@ -64,10 +67,19 @@ export class IntervalEvaluator {
    */
   signInside(x: Interval): -1 | 0 | 1 {
     this.at(x);
+    this.signs.fill(2);
     return this.signOf(this.graph.root, x);
   }
 
   private signOf(index: number, x: Interval): -1 | 0 | 1 {
+    const known = this.signs[index] as -1 | 0 | 1 | 2;
+    if (known !== 2) return known;
+    const sign = this.findSign(index, x);
+    this.signs[index] = sign;
+    return sign;
+  }
+
+  private findSign(index: number, x: Interval): -1 | 0 | 1 {
     const value = this.values[index];
     if (!value) return 0;
     const plain = intervalSign(value);

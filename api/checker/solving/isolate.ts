@@ -1,6 +1,7 @@
 import { ballToNumber } from '../numbers/ball.ts';
 import { aroundDouble, pointInterval, type Interval } from '../numbers/interval.ts';
 import { isZero, rational, toNumber } from '../numbers/rational.ts';
+import { charge } from '../numbers/work.ts';
 import type { Graph, GraphBuilder } from '../values/graph.ts';
 import { deriveNode } from './derivative.ts';
 import { reachable, toDoubleFunction, type DoubleFunction } from './double-evaluator.ts';
@@ -97,13 +98,14 @@ export class Isolator {
   private signOn(k: number, x: Interval): -1 | 0 | 1 {
     if (!this.has(k)) return 0;
     const evaluator = this.evaluator(k);
-    this.env.context.budget.spend(1 + (evaluator.size >> 3));
+    charge(1 + evaluator.size / 3);
     return evaluator.signInside(x);
   }
 
   /** Null: no value there, or not known. */
   private signAt(k: number, point: RealNumber): SomeSign {
     const evaluator = this.evaluator(k);
+    charge(1 + evaluator.size / 3);
     const value = evaluator.at(hullOf(point));
     if (value && value.lo > 0) return 1;
     if (value && value.hi < 0) return -1;

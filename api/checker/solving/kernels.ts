@@ -43,6 +43,8 @@ class KernelSearch {
   private readonly solvePart: SolvePart;
   private readonly forms: Forms;
   private readonly node: (form: Form) => number | null;
+  /** Of nodes that are shared by many: whether the letter is in them. */
+  private readonly moving = new Map<number, boolean>();
   /** Whether the node is the function itself and not its numerator. */
   private readonly isWhole: boolean;
 
@@ -64,9 +66,13 @@ class KernelSearch {
   }
 
   private usesLetter(index: number): boolean {
+    const known = this.moving.get(index);
+    if (known !== undefined) return known;
     const node = this.builder.nodes[index];
-    if (node?.op === 'letter') return node.name === this.env.letter;
-    return (node?.args ?? []).some((arg) => this.usesLetter(arg));
+    const found =
+      node?.op === 'letter' ? node.name === this.env.letter : (node?.args ?? []).some((arg) => this.usesLetter(arg));
+    this.moving.set(index, found);
+    return found;
   }
 
   private atomUsesLetter(id: number): boolean {

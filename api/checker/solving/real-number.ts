@@ -1,6 +1,6 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { ballBetween, ballFromRational, ballToNumber, isApart, type Ball } from '../numbers/ball.ts';
-import { compare, toNumber, type Rational } from '../numbers/rational.ts';
+import { compare, rational, toNumber, type Rational } from '../numbers/rational.ts';
 import type { KnownValue } from '../values/value.ts';
 import { degree, derivePolynomial, gcdPolynomials, scaledValueAt, signAt, type Polynomial } from './polynomial.ts';
 import { isolateRealRoots, type RootInterval } from './real-roots.ts';
@@ -35,23 +35,26 @@ export function realRoots(polynomial: Polynomial): RealNumber[] {
   );
 }
 
-const refined = new WeakMap<RealNumber, { bits: number; ball: Ball }>();
+/** By the number of bits. */
+const refined = new WeakMap<RealNumber, Map<number, Ball>>();
 
 export function enclose(a: RealNumber, bits: number): Ball {
   if (a.kind === 'rational') return ballFromRational(a.value, bits);
-  const known = refined.get(a);
-  if (known?.bits === bits) return known.ball;
-  const ball = a.kind === 'algebraic' ? encloseRoot(a.polynomial, a.interval, bits) : a.enclose(bits);
-  refined.set(a, { bits, ball });
+  const balls = refined.get(a) ?? new Map<number, Ball>();
+  const known = balls.get(bits);
+  if (known) return known;
+  const ball = a.kind === 'algebraic' ? encloseRoot(a, bits) : a.enclose(bits);
+  refined.set(a, balls.set(bits, ball));
   return ball;
 }
 
 const startBits = 56;
 
 /** Bisection to 56 bits, then Newton's steps, whose last is confirmed by the signs on both sides. */
-function encloseRoot(p: Polynomial, interval: RootInterval, bits: number): Ball {
+function encloseRoot(root: Algebraic, bits: number): Ball {
+  const { polynomial: p, interval } = root;
   if (bits <= startBits) return bisectRoot(p, interval, bits);
-  const start = bisectRoot(p, interval, startBits);
+  const start = enclose(root, startBits);
   const slope = derivePolynomial(p);
   const den = 1n << BigInt(bits);
   let middle = start.mid << BigInt(bits - startBits);
@@ -186,16 +189,10 @@ function simplestBetween(low: bigint, high: bigint, bits: bigint): Rational {
       return { num, den };
     }
   }
-  return reduce(low + high, 2n << bits);
+  return rational(low + high, 2n << bits);
 }
 
 function smallestSize(high: bigint, den: bigint, bits: bigint): Rational {
   const num = -((-high * den) >> bits) - 1n;
-  return reduce(num, den);
-}
-
-function reduce(num: bigint, den: bigint): Rational {
-  let [a, b] = [num < 0n ? -num : num, den];
-  while (b !== 0n) [a, b] = [b, a % b];
-  return { num: num / a, den: den / a };
+  return rational(num, den);
 }

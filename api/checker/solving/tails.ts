@@ -105,6 +105,7 @@ class Expansion {
   private readonly letter: string;
   private readonly forms: Forms;
   private readonly known = new Map<number, readonly Term[] | null>();
+  private readonly moving = new Map<number, boolean>();
 
   constructor(graph: Graph, letter: string) {
     this.graph = graph;
@@ -159,16 +160,18 @@ class Expansion {
 
   /** What a node without the letter is worth. */
   private constant(index: number): Interval | null {
-    const form = this.forms.formOf(index);
-    const evaluator = new IntervalEvaluator({ nodes: this.graph.nodes, root: index });
-    if (form && this.usesLetter(index)) return null;
-    return form ? evaluator.at(pointInterval(0)) : null;
+    if (this.usesLetter(index) || !this.forms.formOf(index)) return null;
+    return new IntervalEvaluator({ nodes: this.graph.nodes, root: index }).at(pointInterval(0));
   }
 
   private usesLetter(index: number): boolean {
+    const known = this.moving.get(index);
+    if (known !== undefined) return known;
     const node = this.graph.nodes[index];
-    if (node?.op === 'letter') return node.name === this.letter;
-    return (node?.args ?? []).some((arg) => this.usesLetter(arg));
+    const found =
+      node?.op === 'letter' ? node.name === this.letter : (node?.args ?? []).some((arg) => this.usesLetter(arg));
+    this.moving.set(index, found);
+    return found;
   }
 
   private root(arg: number, degree: number): readonly Term[] | null {
