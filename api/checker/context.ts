@@ -69,7 +69,7 @@ export function createBudget(operations: number): Budget {
   };
 }
 
-export const operationsPerStep = 150_000;
+export const operationsPerStep = 180_000;
 
 const noDefinitions: Definitions = { letters: new Map(), functions: new Map() };
 

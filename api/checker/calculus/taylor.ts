@@ -11,7 +11,7 @@ import {
 } from '../numbers/ball.ts';
 import { expBall, sinCosBall } from '../numbers/elementary.ts';
 import * as Q from '../numbers/rational.ts';
-import { charge } from '../numbers/work.ts';
+import { charge, costOfProduct } from '../numbers/work.ts';
 import { isKnown, isReal, toBall } from '../values/arithmetic.ts';
 import { evaluateNodes } from '../values/evaluate.ts';
 import type { Graph, GraphNode } from '../values/graph.ts';
@@ -115,6 +115,9 @@ function convolved(
     if (x.rad !== 0n || y.rad !== 0n)
       rad += magnitude(weight) * (magnitude(x.mid) * y.rad + (magnitude(y.mid) + y.rad) * x.rad);
   }
+  // Far out numbers are much longer than those of size one.
+  const length = Q.bitLength(mid);
+  if (length > 3 * bits) charge(2 * (k + 1 - first) * costOfProduct(length));
   const shift = BigInt(bits);
   return { mid: (mid >> shift) / under, rad: (rad >> shift) / under + 3n };
 }

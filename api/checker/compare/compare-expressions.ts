@@ -41,7 +41,7 @@ function compareOrStop(above: Expr, below: Expr, context: CheckContext): Compari
 }
 
 function compareWithin(above: Expr, below: Expr, context: CheckContext): Comparison {
-  context.budget.spend(24);
+  context.budget.spend(50);
   const { builder, roots } = lowerAll([above, below], context);
   const [first, second] = roots;
   if (first === undefined || second === undefined) return { kind: 'undecided', reason: 'not-covered' };

@@ -192,7 +192,7 @@ function calculusValue(expr: CalculusExpr, at: Place): Complex {
 
 /** From values near the place, or far out, by the rule of Richardson; good to some ten digits where the limit is a plain one. */
 function limitValue(expr: Extract<Expr, { kind: 'limit' }>, at: Place): Complex {
-  const value = (x: number): Complex => estimate(expr.operand, moved(at, expr.variable, real(x)));
+  const value = moving(expr.operand, expr.variable, at);
   const [first] = expr.to.kind === 'sum' ? expr.to.terms : [];
   const far = expr.to.kind === 'constant' ? expr.to : first?.expr;
   if (far?.kind === 'constant' && far.name === 'infinity') {
@@ -252,22 +252,42 @@ function moved(at: Place, letter: string, value: Complex): Place {
   return { ...at, letters: new Map(at.letters).set(letter, value) };
 }
 
+/** The value as a function of one letter. */
+function moving(expr: Expr, letter: string, at: Place): (x: number) => Complex {
+  const letters = new Map(at.letters);
+  const place: Place = { ...at, letters };
+  return (x) => {
+    letters.set(letter, real(x));
+    return estimate(expr, place);
+  };
+}
+
 function seriesValue(expr: Extract<Expr, { kind: 'series' }>, at: Place): Complex {
   const [low, high] = [estimate(expr.from, at).re, estimate(expr.to, at).re];
   if (!Number.isInteger(low) || !Number.isInteger(high) || high - low > mostTerms) return missing;
   let total = real(expr.operation === 'sum' ? 0 : 1);
-  const letters = new Map(at.letters);
+  const term = moving(expr.body, expr.index, at);
   for (let k = low; k <= high; k += 1) {
     // Sums within sums are looked at more often than the cost that was told before says.
     charge(1);
-    const value = estimate(expr.body, { ...at, letters: letters.set(expr.index, real(k)) });
+    const value = term(k);
     total = expr.operation === 'sum' ? plus(total, value) : times(total, value);
   }
   return total;
 }
 
+const costs = new WeakMap<Expr, number>();
+
 /** The work of one estimate, in nodes: what stands under an integral or a sum is looked at many times. */
 export function estimateCost(expr: Expr): number {
+  const known = costs.get(expr);
+  if (known !== undefined) return known;
+  const cost = findCost(expr);
+  costs.set(expr, cost);
+  return cost;
+}
+
+function findCost(expr: Expr): number {
   const inside = childrenOf(expr).reduce((cost, part) => cost + estimateCost(part), 1);
   if (expr.kind === 'integral') return inside * gauss.length * panels;
   if (expr.kind === 'derivative' || expr.kind === 'limit') return inside * 6;
@@ -290,10 +310,11 @@ function integralValue(expr: Extract<Expr, { kind: 'integral' }>, at: Place): Co
   const [low, high] = [estimate(expr.from, at).re, estimate(expr.to, at).re];
   const half = (high - low) / (2 * panels);
   let total = real(0);
+  const height = moving(expr.integrand, expr.variable, at);
   for (let panel = 0; panel < panels; panel += 1) {
     const middle = low + half * (2 * panel + 1);
     for (const [node, weight] of gauss) {
-      const value = estimate(expr.integrand, moved(at, expr.variable, real(middle + half * node)));
+      const value = height(middle + half * node);
       total = plus(total, times(value, real(weight * half)));
     }
   }

@@ -91,7 +91,7 @@ function expReduced(x: bigint, bits: number): bigint {
   const halvings = 8 + (bits >> 6);
   const extra = halvings + 8;
   const scale = BigInt(bits + extra);
-  chargeSteps(bits, 1.5 * (halvings + bits / (halvings + 4)));
+  chargeSteps(bits, 1.2 * (halvings + bits / (halvings + 4)));
   const small = (x << BigInt(extra)) >> BigInt(halvings);
   let term = small;
   let total = small;
@@ -177,7 +177,7 @@ function sinCosReduced(x: bigint, bits: number): { sin: bigint; cos: bigint } {
   const halvings = 6 + (bits >> 7);
   const extra = halvings + 8;
   const scale = BigInt(bits + extra);
-  chargeSteps(bits, 2 * (halvings + bits / (halvings + 4)));
+  chargeSteps(bits, 2 * halvings + (1.4 * bits) / (halvings + 4));
   const small = (x << BigInt(extra)) >> BigInt(halvings);
   const square = (small * small) >> scale;
   let sin = small;

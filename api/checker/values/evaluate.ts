@@ -63,7 +63,7 @@ export function evaluateNodes(
     values.push(value);
   }
   // The arithmetic itself counts in numbers/; this is what it takes to get there.
-  context.budget.spend(nodes.length / 4);
+  context.budget.spend(nodes.length / 2);
   return values;
 }
 

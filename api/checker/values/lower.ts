@@ -29,7 +29,7 @@ export function lowerAll(exprs: readonly Expr[], context: CheckContext): { build
   context.budget.spend(12);
   const builder = createGraphBuilder(() => {
     pushed += 1;
-    if ((pushed & 63) === 0) context.budget.spend(32);
+    if ((pushed & 63) === 0) context.budget.spend(48);
   });
   const lowering: Lowering = { builder, context, bound: nothingBound, open: noNames, nesting: { depth: 0, visits: 0 } };
   return { builder, roots: exprs.map((expr) => lower(expr, lowering)) };
@@ -57,7 +57,7 @@ function lower(expr: Expr, at: Lowering): number {
   if (nesting.depth > maximumDepth || builder.nodes.length > maximumNodes) return opaque(at, 'limit');
   nesting.depth += 1;
   nesting.visits += 1;
-  if ((nesting.visits & 63) === 0) at.context.budget.spend(16);
+  if ((nesting.visits & 63) === 0) at.context.budget.spend(32);
   const index = lowerKind(expr, at, builder);
   nesting.depth -= 1;
   return index;

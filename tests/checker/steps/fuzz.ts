@@ -1,4 +1,4 @@
-import { performance } from 'node:perf_hooks';
+import { existsSync, readFileSync } from 'node:fs';
 import { workDone } from '../../../api/checker/numbers/work.ts';
 import { checkDerivation } from '../../../api/checker/rule-derivation.ts';
 import { warmUp } from '../../../api/checker/warm-up.ts';
@@ -9,12 +9,14 @@ import { inputOf } from './hostile-kinds.ts';
  * use: npx esbuild tests/checker/steps/fuzz.ts --bundle --platform=node --format=esm --packages=external
  * --outfile=fuzz.mjs && node fuzz.mjs COUNT SEED
  *
- * Times are the processor's: the machine may be doing other things. A step's time is its own ruling, or what explains
- * the faults, or all of the derivation by the number of its steps, whichever is most.
+ * Times are those of this thread on the processor: the machine may be doing other things. A step's time is its own
+ * ruling, or what explains the faults, or all of the derivation by the number of its steps, whichever is most.
  */
 
 const [count = 1000, first = 1] = process.argv.slice(2).map(Number);
 const shown = 150;
+const threadTimes = '/proc/thread-self/schedstat';
+const hasThreadTimes = existsSync(threadTimes);
 const outcomes = new Map<string, number>();
 const times: number[] = [];
 let over = 0;
@@ -62,26 +64,29 @@ function run(seed: number): void {
     );
 }
 
-/** The processor's time, no more than the wall's: what the process does beside its own thread is left out. */
 function startClock(): { readonly piece: () => { ms: number; work: number }; readonly all: () => number } {
   const start = reading();
   let last = start;
-  const since = (from: ReturnType<typeof reading>, to: ReturnType<typeof reading>): number =>
-    Math.min(to.cpu - from.cpu, to.wall - from.wall);
   return {
     piece: () => {
       const now = reading();
-      const found = { ms: since(last, now), work: now.work - last.work };
+      const found = { ms: now.ms - last.ms, work: now.work - last.work };
       last = now;
       return found;
     },
-    all: () => since(start, reading()),
+    all: () => reading().ms - start.ms,
   };
 }
 
-function reading(): { cpu: number; wall: number; work: number } {
+function reading(): { ms: number; work: number } {
+  return { ms: threadMs(), work: workDone() };
+}
+
+/** Of this thread where the system tells it, else of the process, with all that the engine does beside. */
+function threadMs(): number {
+  if (hasThreadTimes) return Number(readFileSync(threadTimes, 'utf8').split(' ')[0]) / 1e6;
   const { user, system } = process.cpuUsage();
-  return { cpu: (user + system) / 1000, wall: performance.now(), work: workDone() };
+  return (user + system) / 1000;
 }
 
 function report(done: number): void {
