@@ -2,6 +2,7 @@ import type { Expr } from '../../../shared/maths/expression.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import type { Rational } from '../numbers/rational.ts';
+import { charge } from '../numbers/work.ts';
 import { reduceFraction, toFraction } from '../solving/fraction.ts';
 import { dividePolynomials, type Polynomial } from '../solving/polynomial.ts';
 import { isolateRealRoots } from '../solving/real-roots.ts';
@@ -28,9 +29,12 @@ export function integrateRational(expr: Expr, letter: string, context: CheckCont
   if (num.length === 0) return numberOf(0);
   const parts = splitDenominator(den);
   if (!parts) return null;
-  const shapes = shapesOf(parts, num.length - den.length);
-  const coefs = solveParts(num, den, shapes);
-  if (!coefs) return null;
+  const { quotient, rest } = divided(num, den);
+  const proper = shapesOf(parts);
+  const found = proper.length > 0 ? solveParts(rest, den, proper) : [];
+  if (!found) return null;
+  const shapes = [...quotient.map((_, exponent): Shape => ({ kind: 'power', exponent })), ...proper];
+  const coefs = [...quotient, ...found];
   const x = letterOf(letter);
   return addExprs(
     ...shapes.flatMap((shape, k) =>
@@ -71,8 +75,23 @@ type Shape =
   | { readonly kind: 'root'; readonly at: Rational; readonly times: number }
   | { readonly kind: 'quadratic'; readonly of: readonly [Rational, Rational, Rational]; readonly top: 0 | 1 };
 
-function shapesOf({ roots, quadratic }: Parts, degree: number): Shape[] {
-  const powers = Array.from({ length: Math.max(0, degree + 1) }, (_, exponent): Shape => ({ kind: 'power', exponent }));
+/** The polynomial part and what is left of the numerator, lowest powers first. */
+function divided(num: Polynomial, den: Polynomial): { quotient: Rational[]; rest: Rational[] } {
+  const rest = num.map((coef) => Q.rational(coef));
+  const quotient: Rational[] = [];
+  for (let shift = num.length - den.length; shift >= 0; shift -= 1) {
+    const factor = Q.div(rest[shift + den.length - 1] as Rational, Q.rational(den[den.length - 1] as bigint));
+    charge(den.length);
+    quotient[shift] = factor;
+    den.forEach((coef, k) => {
+      rest[k + shift] = Q.sub(rest[k + shift] as Rational, Q.mul(factor, Q.rational(coef)));
+    });
+  }
+  return { quotient, rest: rest.slice(0, den.length - 1) };
+}
+
+/** Those of a proper fraction. */
+function shapesOf({ roots, quadratic }: Parts): Shape[] {
   const poles = roots.flatMap(({ at, times }) =>
     Array.from({ length: times }, (_, k): Shape => ({ kind: 'root', at, times: k + 1 })),
   );
@@ -82,7 +101,7 @@ function shapesOf({ roots, quadratic }: Parts, degree: number): Shape[] {
         { kind: 'quadratic', of: quadratic, top: 1 },
       ]
     : [];
-  return [...powers, ...poles, ...rest];
+  return [...poles, ...rest];
 }
 
 function shapeAt(shape: Shape, x: Rational): Rational | null {
@@ -101,19 +120,20 @@ function shapeAt(shape: Shape, x: Rational): Rational | null {
   }
 }
 
-function polynomialAt(p: Polynomial, x: Rational): Rational {
-  return p.reduceRight((total, coef) => Q.add(Q.mul(total, x), Q.rational(coef)), Q.zero);
+function valueAt(p: readonly Rational[], x: Rational): Rational {
+  return p.reduceRight((total, coef) => Q.add(Q.mul(total, x), coef), Q.zero);
 }
 
 /** The coefficients, from the values at as many points. */
-function solveParts(num: Polynomial, den: Polynomial, shapes: readonly Shape[]): Rational[] | null {
+function solveParts(num: readonly Rational[], den: Polynomial, shapes: readonly Shape[]): Rational[] | null {
   const rows: Rational[][] = [];
+  const below = den.map((coef) => Q.rational(coef));
   for (let k = 0; rows.length < shapes.length && k < 400; k += 1) {
     const x = Q.rational(k % 2 === 0 ? k / 2 : -(k + 1) / 2);
-    const bottom = polynomialAt(den, x);
+    const bottom = valueAt(below, x);
     const values = shapes.map((shape) => shapeAt(shape, x));
     if (Q.isZero(bottom) || values.includes(null)) continue;
-    rows.push([...(values as Rational[]), Q.div(polynomialAt(num, x), bottom)]);
+    rows.push([...(values as Rational[]), Q.div(valueAt(num, x), bottom)]);
   }
   return eliminate(rows, shapes.length);
 }
@@ -128,6 +148,7 @@ export function eliminate(rows: Rational[][], size: number): Rational[] | null {
     for (let k = 0; k < rows.length; k += 1) {
       const row = rows[k] as Rational[];
       if (k === column || Q.isZero(row[column] as Rational)) continue;
+      charge(row.length / 2);
       const times = Q.div(row[column] as Rational, lead[column] as Rational);
       rows[k] = row.map((value, j) => Q.sub(value, Q.mul(times, lead[j] as Rational)));
     }

@@ -35,7 +35,7 @@ export function taylorOf(
     const value = values[index];
     const head = value && isKnown(value) && isReal(value) ? toBall(value, bits).re : null;
     jets.push(head && jetOf(node, head, jets, { letter, order, bits }));
-    context.budget.spend(1 + (order >> 1));
+    context.budget.spend(1 + (order >> 2));
   }
   return jets[graph.root] ?? null;
 }
@@ -105,19 +105,22 @@ function convolved(
 ): Ball {
   let mid = 0n;
   let rad = 0n;
-  // Two products for the middle, and two for the radius.
-  charge(2 * (k + 1 - first) * costOfStep(bits));
+  let products = 0;
+  const isPlain = p === 0n && q === 1n;
   for (let j = first; j <= k; j += 1) {
     const [x, y] = [a[j] as Ball, b[k - j] as Ball];
-    if (x.mid === 0n && x.rad === 0n) continue;
-    const weight = p * BigInt(j) + q;
-    mid += weight * x.mid * y.mid;
-    if (x.rad !== 0n || y.rad !== 0n)
-      rad += magnitude(weight) * (magnitude(x.mid) * y.rad + (magnitude(y.mid) + y.rad) * x.rad);
+    if ((x.mid === 0n && x.rad === 0n) || (y.mid === 0n && y.rad === 0n)) continue;
+    const weight = isPlain ? 1n : p * BigInt(j) + q;
+    mid += isPlain ? x.mid * y.mid : weight * x.mid * y.mid;
+    products += 1;
+    if (x.rad === 0n && y.rad === 0n) continue;
+    const spread = magnitude(x.mid) * y.rad + (magnitude(y.mid) + y.rad) * x.rad;
+    rad += isPlain ? spread : magnitude(weight) * spread;
+    products += 1;
   }
   // Far out numbers are much longer than those of size one.
   const length = Q.bitLength(mid);
-  if (length > 3 * bits) charge(2 * (k + 1 - first) * costOfProduct(length));
+  charge(0.2 + 0.75 * products * (length > 3 * bits ? 0.3 + costOfProduct(length) : costOfStep(bits)));
   const shift = BigInt(bits);
   return { mid: (mid >> shift) / under, rad: (rad >> shift) / under + 3n };
 }

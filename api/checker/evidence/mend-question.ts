@@ -51,7 +51,7 @@ export interface Aim {
 
 /** The work of looking at some expressions; a number that is solved for is looked at some ten times over. */
 export function costOf(...exprs: readonly Expr[]): number {
-  return 4 + exprs.reduce((count, expr) => count + 2 * estimateCost(expr), 0);
+  return 4 + exprs.reduce((count, expr) => count + 3 * estimateCost(expr), 0);
 }
 
 export function outer(expr: Expr): Span {

@@ -1,7 +1,7 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr, sameLine } from '../../../shared/maths/same.ts';
-import { childrenOf, exprsOf } from '../../../shared/maths/walk.ts';
+import { childrenOf, countNodes, exprsOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { sum } from '../evidence/build.ts';
@@ -52,10 +52,12 @@ export function nameBetween(above: Expr, wholeBelow: Expr, worksOn: boolean, con
   if (mayBeEqual(above, values, places)) return null;
   const confirm = createConfirmer(below, context);
   const cost = costOf(above);
+  const walk = countNodes(above) >> 3;
   const order = inOrder(above, below, worksOn);
   // That all letters went is explained by much that only happens to come to the same.
   const isTelling = lettersOf(above).length === 0 || !isFixed(values);
   for (const slip of isTelling ? order : order.filter(({ rank }) => rank > tellingRank)) {
+    context.budget.spend(walk);
     for (const candidate of candidatesOf(slip, above, below, context)) {
       context.budget.spend(cost);
       if (candidate === below || (mayBeEqual(candidate, values, places) && confirm(candidate))) return slip;

@@ -98,14 +98,14 @@ export class Isolator {
   private signOn(k: number, x: Interval): -1 | 0 | 1 {
     if (!this.has(k)) return 0;
     const evaluator = this.evaluator(k);
-    charge(1 + evaluator.size / 3);
+    charge(1 + evaluator.size / 2);
     return evaluator.signInside(x);
   }
 
   /** Null: no value there, or not known. */
   private signAt(k: number, point: RealNumber): SomeSign {
     const evaluator = this.evaluator(k);
-    charge(1 + evaluator.size / 3);
+    charge(1 + evaluator.size / 2);
     const value = evaluator.at(hullOf(point));
     if (value && value.lo > 0) return 1;
     if (value && value.hi < 0) return -1;
@@ -176,6 +176,7 @@ export class Isolator {
 
   private zerosInBox(from: RealNumber, to: RealNumber): RealNumber[] | null {
     this.boxes += 1;
+    charge(4);
     if (this.boxes > mostBoxes) return null;
     const hull = { lo: hullOf(from).lo, hi: hullOf(to).hi };
     if (this.signOn(0, hull) !== 0) return [];

@@ -14,6 +14,7 @@ import {
   type Interval,
 } from '../numbers/interval.ts';
 import { add, one, rational, toNumber, zero, type Rational } from '../numbers/rational.ts';
+import { charge } from '../numbers/work.ts';
 import type { Graph, GraphNode } from '../values/graph.ts';
 import { IntervalEvaluator } from './interval-values.ts';
 
@@ -29,10 +30,23 @@ interface Term {
 const mostTerms = 60;
 const noRate: Pick<Term, 'rate' | 'rateForm'> = { rate: pointInterval(0), rateForm: new Map() };
 
+const expansions = new WeakMap<Graph, Map<string, readonly Term[] | null>>();
+
+/** Asked for again and again while the same function is looked at from other places. */
+function termsOf(graph: Graph, letter: string): readonly Term[] | null {
+  const known = expansions.get(graph) ?? new Map<string, readonly Term[] | null>();
+  const found = known.get(letter);
+  if (found !== undefined) return found;
+  charge(2 * graph.nodes.length);
+  const terms = new Expansion(graph, letter).terms();
+  expansions.set(graph, known.set(letter, terms));
+  return terms;
+}
+
 /** Whether a function has no zero from x on to one side, because one of its terms outgrows all others together. */
 export function hasNoZeroBeyond(graph: Graph, letter: string, x: number, side: 1 | -1): boolean {
   if (Math.abs(x) < 4 || Math.sign(x) !== side) return false;
-  const terms = new Expansion(graph, letter).terms();
+  const terms = termsOf(graph, letter);
   const seen: readonly (Term | null)[] = (side === 1 ? terms : terms?.map(mirrored)) ?? [null];
   return !seen.includes(null) && isDominated(seen as Term[], Math.abs(x));
 }
@@ -40,7 +54,7 @@ export function hasNoZeroBeyond(graph: Graph, letter: string, x: number, side: 1
 /** The same for all positive numbers up to x. */
 export function hasNoZeroDownToZero(graph: Graph, letter: string, x: number): boolean {
   if (!(x > 0 && x < 0.25)) return false;
-  const terms = new Expansion(graph, letter).terms();
+  const terms = termsOf(graph, letter);
   if (!terms || terms.some((term) => term.rateForm.size > 0)) return false;
   const inverted = terms.map((term) => ({
     ...term,
