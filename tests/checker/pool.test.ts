@@ -51,4 +51,23 @@ describe('the pool of checks', () => {
     expect(verdict.steps.map((step) => step.ruling)).toEqual(['holds', 'undecided', 'fails']);
     await broken.close();
   }, 30_000);
+
+  it('replaces a worker that goes over its memory, answers that derivation and the next one', async () => {
+    const told: string[] = [];
+    const hungry = createCheckPool({
+      threads: 1,
+      stepMs: 20_000,
+      derivationMs: 120_000,
+      memoryMb: 96,
+      workerUrl: new URL('./data/hungry.worker.ts', import.meta.url),
+      onEnded: ({ step, reason }) => told.push(`${step} ${reason}`),
+    });
+    const verdict = await hungry.check({ lines: ['x+x', '2x', '2x', 'x'], assume: [], settings: {} });
+    expect(told).toEqual(['2 memory']);
+    expect(verdict.steps.map((step) => step.ruling)).toEqual(['holds', 'undecided', 'fails']);
+    const next = await hungry.check({ lines: ['x^2=7x', 'x=7'], assume: [], settings: {} });
+    expect(next).toMatchObject({ outcome: 'faulty', firstFault: 1 });
+    expect(await hungry.healthy()).toBe(true);
+    await hungry.close();
+  }, 180_000);
 });
