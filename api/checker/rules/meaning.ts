@@ -34,12 +34,24 @@ function lastMember(line: Line): Expr | null {
   return line.kind === 'chain' ? (line.members[line.members.length - 1] ?? null) : null;
 }
 
-/** The letters that a statement depends on once definitions are put in, in order of appearance. */
-export function freeLetters(statement: Statement, context: CheckContext): string[] {
+/** What is known is asked for its letters at every step of a derivation. */
+const plainKnown = new WeakMap<Statement, readonly string[] | null>();
+
+/** The letters of a statement in which each stands for itself; null for another. */
+function plainLetters(statement: Statement): readonly string[] | null {
+  const known = plainKnown.get(statement);
+  if (known !== undefined) return known;
   const exprs = exprsOfStatement(statement);
-  if (context.definitions.letters.size === 0 && exprs.every(isPlain))
-    return [...new Set(exprs.flatMap((expr) => [...lettersOf(expr)]))];
-  const { builder } = lowerAll(exprs, context);
+  const found = exprs.every(isPlain) ? [...new Set(exprs.flatMap((expr) => lettersOf(expr)))] : null;
+  plainKnown.set(statement, found);
+  return found;
+}
+
+/** The letters that a statement depends on once definitions are put in, in order of appearance. */
+export function freeLetters(statement: Statement, context: CheckContext): readonly string[] {
+  const plain = context.definitions.letters.size === 0 ? plainLetters(statement) : null;
+  if (plain) return plain;
+  const { builder } = lowerAll(exprsOfStatement(statement), context);
   return [...new Set(builder.nodes.flatMap((node) => (node.op === 'letter' ? [node.name] : [])))];
 }
 

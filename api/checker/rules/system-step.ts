@@ -63,7 +63,7 @@ export function judgeSystemStep(question: StatementQuestion): SystemAnswer {
 
 /** `(3,1)` at the end of a system is a point, its letters by the alphabet; several points are joined by or. */
 function asPoint({ below, known, context }: StatementQuestion, isSwapped = false): Statement | null {
-  const letters = freeLetters({ kind: 'all', parts: known }, context).sort();
+  const letters = freeLetters({ kind: 'all', parts: known }, context).toSorted();
   if (letters.length !== 2) return null;
   if (isSwapped) letters.reverse();
   if (below.kind !== 'all' && below.kind !== 'any') return pointOf(below, letters);

@@ -1,11 +1,13 @@
 import type { Random } from '../../../api/checker/numbers/random.ts';
 import type { DerivationInput } from '../../../shared/schemas/verdict.ts';
 import { damaged, hostileInput, pick, small, type Maker } from './hostile-inputs.ts';
+import { stallingInput } from './stalling-kinds.ts';
 import { createRandom } from '../../../api/checker/numbers/random.ts';
 
-/** The input of a seed: from the first generator or from the kinds below. */
+/** The input of a seed: from the first generator, from the kinds below or from those that stall. */
 export function inputOf(seed: number): DerivationInput {
   const random = createRandom(seed);
+  if (seed % 3 === 2) return stallingInput(random);
   return seed % 2 === 0 ? hostileInput(random) : furtherInput(random);
 }
 
