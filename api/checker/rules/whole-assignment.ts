@@ -3,7 +3,7 @@ import { estimate, estimateCost, type Place } from '../evidence/estimate.ts';
 import { rational } from '../numbers/rational.ts';
 import type { Assignment } from '../solving/fraction.ts';
 import { comparesOf, type CompareStatement } from '../statements/statement.ts';
-import type { FormulaQuestion } from './formula.ts';
+import type { OneLetterQuestion } from './one-letter.ts';
 
 const mostTried = 400;
 
@@ -13,7 +13,7 @@ const mostTried = 400;
  * few hundred. Only where each of the two lines is one equation.
  */
 export function wholeAssignment(
-  { above, below, letter, context }: FormulaQuestion,
+  { above, below, letter, context }: Omit<OneLetterQuestion, 'given'>,
   names: readonly string[],
 ): Assignment | null {
   const [first, ...others] = comparesOf(above);
