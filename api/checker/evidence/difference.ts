@@ -1,12 +1,16 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { printExpr } from '../../../shared/maths/print.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { suggestForm } from '../suggest/suggest-form.ts';
 import { isZero, neg, sum, termsOf } from './build.ts';
+import { isNear, minus, over, real, sizeOf, times, type Complex } from './complex-double.ts';
+import { estimate } from './estimate.ts';
 import { expanded, spread, sumExpr } from './monomials.ts';
 import { overOneDenominator } from './one-denominator.ts';
+import { choosePlaces } from './places.ts';
 import { workOut } from './worked-out.ts';
 
 const mostTerms = 6;
@@ -22,7 +26,7 @@ export function shortDifference(above: Expr, below: Expr, context: CheckContext)
     workOut(above, below, context),
     ...termsOf(below).map((term) => (term.sign === 'minus' ? term.expr : neg(term.expr))),
   );
-  const forms = isRationalSum(whole) ? quotients(whole) : [plainDifference(whole)];
+  const forms = isRationalSum(whole) ? quotients(whole, context) : [plainDifference(whole)];
   const texts = forms
     .flatMap((form) => (form && !hasQuotientInside(form) ? [{ form, tex: printExpr(form) }] : []))
     .filter(({ tex }) => tex.length <= longest);
@@ -62,9 +66,28 @@ function isRational(expr: Expr): boolean {
   return isOperation && childrenOf(expr).every(isRational);
 }
 
-function quotients(whole: Expr): (Expr | null)[] {
+/** Whether numerator and denominator may have a factor in common: one of the first degree has its zero in both. */
+function mayCancel(joined: Expr, context: CheckContext): boolean {
+  if (joined.kind !== 'quotient') return true;
+  const [place] = choosePlaces([joined], 1, context);
+  const factors = joined.denominator.kind === 'product' ? joined.denominator.factors : [joined.denominator];
+  return factors.some((factor) => {
+    const base = factor.kind === 'power' ? factor.base : factor;
+    const [name] = lettersOf(base);
+    if (!name || !place) return false;
+    const at = (expr: Expr, x: Complex): Complex =>
+      estimate(expr, { ...place, letters: new Map(place.letters).set(name, x) });
+    const [f0, f1, f3] = [at(base, real(0)), at(base, real(1)), at(base, real(3))];
+    const slope = minus(f1, f0);
+    if (!isNear(minus(f3, f0), times(real(3), slope))) return true;
+    const value = at(joined.numerator, over(minus(real(0), f0), slope));
+    return sizeOf(value) < 1e-6;
+  });
+}
+
+function quotients(whole: Expr, context: CheckContext): (Expr | null)[] {
   const joined = overOneDenominator(whole);
   const terms = expanded(whole);
   const plain = terms && terms.length <= mostTerms ? sumExpr(terms) : null;
-  return [plain, joined, joined && suggestForm(joined, 'factor')];
+  return [plain, joined, joined && mayCancel(joined, context) ? suggestForm(joined, 'factor') : null];
 }

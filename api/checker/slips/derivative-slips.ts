@@ -2,7 +2,7 @@ import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { call, isZero, letter, neg, power, product, quotient, sum, termsOf, whole } from '../evidence/build.ts';
 import { derivativeOf, derive, lessOne } from '../evidence/derive.ts';
-import type { Rewrite } from './rewrite.ts';
+import { needing, type Rewrite } from './rewrite.ts';
 import { memory, slip, type Slip } from './slip.ts';
 
 /** What a wrong rule makes of the derivative of one part. */
@@ -42,9 +42,9 @@ function withSign(sign: string, expr: Expr): Expr {
 
 function onDerivatives(wrong: WrongDerivative): readonly Rewrite[] {
   return [
-    function* rewrite(part) {
+    needing('derivative', function* rewrite(part) {
       if (part.kind === 'derivative' && part.order === 1) yield* variants(part.operand, part.variable, wrong);
-    },
+    }),
   ];
 }
 

@@ -4,7 +4,7 @@ import { call, letter, neg, power, product, quotient, sum, whole } from '../evid
 import { derive, integrate, slopeOf } from '../evidence/derive.ts';
 import { substituteLetter } from '../evidence/substitute.ts';
 import { memory, slip, type Slip } from './slip.ts';
-import type { Rewrite } from './rewrite.ts';
+import { needing, type Rewrite } from './rewrite.ts';
 
 type Integral = Extract<Expr, { kind: 'integral' }>;
 type WrongIntegral = (integrand: Expr, by: string) => Iterable<Expr | null>;
@@ -39,13 +39,13 @@ function* variants(integrand: Expr, by: string, wrong: WrongIntegral): Generator
 /** Indefinite: without a constant, which is dropped on the other side as well. Definite: from the lower to the upper limit. */
 function onIntegrals(wrong: WrongIntegral): readonly Rewrite[] {
   return [
-    function* rewrite(part) {
+    needing('integral', function* rewrite(part) {
       if (part.kind !== 'integral') return;
       for (const found of variants(part.integrand, part.variable, wrong)) {
         if (!part.from || !part.to) yield found;
         else yield sum(at(found, part, part.to), neg(at(found, part, part.from)));
       }
-    },
+    }),
   ];
 }
 

@@ -4,7 +4,7 @@ import { neg, quotient, whole } from '../evidence/build.ts';
 import { derive } from '../evidence/derive.ts';
 import { estimate } from '../evidence/estimate.ts';
 import { substituteLetter } from '../evidence/substitute.ts';
-import type { Rewrite } from './rewrite.ts';
+import { needing, type Rewrite } from './rewrite.ts';
 import { memory, slip, type Slip } from './slip.ts';
 
 type Limit = Extract<Expr, { kind: 'limit' }>;
@@ -13,9 +13,9 @@ const nowhere = { letters: new Map(), functions: new Map() };
 
 function onLimits(wrong: (limit: Limit) => Iterable<Expr>): readonly Rewrite[] {
   return [
-    function* rewrite(part) {
+    needing('limit', function* rewrite(part) {
       if (part.kind === 'limit') yield* wrong(part);
-    },
+    }),
   ];
 }
 

@@ -158,12 +158,24 @@ const mostParts = 6;
 /** All orders where there are as many items as groups, else runs of neighbours, in either order for two groups. */
 function groupings<T>(items: readonly T[], count: number): (readonly T[])[][] {
   if (items.length < count || items.length > mostParts) return [];
-  if (items.length === count) return permutations(items).map((order) => order.map((item) => [item]));
+  if (items.length === count) {
+    return ordersOf(count).map((order) => order.map((k) => [items[k] as T]));
+  }
   if (count === 1) return [[items]];
   if (count > 2) return [];
   const cuts = items.slice(1).map((_, k) => [items.slice(0, k + 1), items.slice(k + 1)]);
   const singles = items.map((item, k) => [[item], items.filter((_, other) => other !== k)]);
   return [...cuts, ...cuts.map(([a, b]) => [b as readonly T[], a as readonly T[]]), ...singles.slice(1)];
+}
+
+const knownOrders = new Map<number, readonly (readonly number[])[]>();
+
+function ordersOf(count: number): readonly (readonly number[])[] {
+  const known = knownOrders.get(count);
+  if (known) return known;
+  const found = permutations(Array.from({ length: count }, (_, k) => k));
+  knownOrders.set(count, found);
+  return found;
 }
 
 export function permutations<T>(items: readonly T[]): T[][] {

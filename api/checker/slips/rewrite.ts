@@ -3,10 +3,20 @@ import { readLine } from '../../../shared/maths/read.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import { neg, product, sum } from '../evidence/build.ts';
 import { withChild } from '../evidence/only-difference.ts';
+import { bitOf, kindsWithin } from './kinds-within.ts';
 import { factorsOf, fill, matchExpr, matchFactors, matchTerms, type Bindings } from './match.ts';
 
 /** A wrong rule: what a part of a line becomes under it, in all the ways in which it applies there. */
-export type Rewrite = (part: Expr) => Iterable<Expr>;
+export interface Rewrite {
+  (part: Expr): Iterable<Expr>;
+  /** Kinds of which a part has some where the rule applies, as in kinds-within.ts; looked at before anything else. */
+  readonly needs?: number;
+}
+
+/** A rule that applies only to parts in which there is some of a kind. */
+export function needing(kind: Parameters<typeof bitOf>[0], rewrite: (part: Expr) => Iterable<Expr>): Rewrite {
+  return Object.assign(rewrite, { needs: bitOf(kind) });
+}
 
 /** A rule written as two pieces of TeX; letters stand for anything, k, m, n, p and q for numbers. */
 export function rule(from: string, to: string, accepts: (bound: Bindings) => boolean = () => true): Rewrite {
@@ -17,7 +27,8 @@ export function rule(from: string, to: string, accepts: (bound: Bindings) => boo
       if (accepts(bound)) yield rebuild(fill(result, bound));
     }
   }
-  return (part) => (mayMatch(pattern, part) ? instancesIn(part) : none);
+  const rewrite = (part: Expr): Iterable<Expr> => (mayMatch(pattern, part) ? instancesIn(part) : none);
+  return Object.assign(rewrite, { needs: kindsWithin(pattern) });
 }
 
 const none: readonly Expr[] = [];
@@ -83,21 +94,40 @@ function* amongFactors(pattern: readonly Expr[], part: Expr): Generator<Instance
   }
 }
 
+const knownTuples = new Map<number, readonly (readonly number[])[]>();
+
 /** Ordered choices of `size` different indices below `count`. */
-function tuples(count: number, size: number): number[][] {
-  if (size === 0) return [[]];
-  const shorter = tuples(count, size - 1);
-  return shorter.flatMap((picked) =>
-    Array.from({ length: count }, (_, k) => k)
-      .filter((k) => !picked.includes(k))
-      .map((k) => [...picked, k]),
-  );
+function tuples(count: number, size: number): readonly (readonly number[])[] {
+  const key = count * 16 + size;
+  const known = knownTuples.get(key);
+  if (known) return known;
+  const found: readonly (readonly number[])[] =
+    size === 0
+      ? [[]]
+      : tuples(count, size - 1).flatMap((picked) =>
+          Array.from({ length: count }, (_, k) => k)
+            .filter((k) => !picked.includes(k))
+            .map((k) => [...picked, k]),
+        );
+  knownTuples.set(key, found);
+  return found;
 }
 
 /** The whole expression under a rule used once, at any of its parts. */
-export function* everywhere(expr: Expr, rewrite: Rewrite): Generator<Expr> {
+export function everywhere(expr: Expr, rewrite: Rewrite): Iterable<Expr> {
+  const needs = rewrite.needs ?? 0;
+  return (kindsWithin(expr) & needs) === needs ? within(expr, rewrite, needs) : none;
+}
+
+/** No rule is one on a number or letter by itself. */
+function isLeaf({ kind }: Expr): boolean {
+  return kind === 'number' || kind === 'letter';
+}
+
+function* within(expr: Expr, rewrite: Rewrite, needs: number): Generator<Expr> {
   yield* rewrite(expr);
   for (const [place, part] of childrenOf(expr).entries()) {
-    for (const changed of everywhere(part, rewrite)) yield withChild(expr, place, changed);
+    if ((kindsWithin(part) & needs) !== needs || isLeaf(part)) continue;
+    for (const changed of within(part, rewrite, needs)) yield withChild(expr, place, changed);
   }
 }
