@@ -9,7 +9,7 @@ import { isZero, neg, sum, termsOf } from './build.ts';
 import { isNear, minus, over, real, sizeOf, times, type Complex } from './complex-double.ts';
 import { estimate } from './estimate.ts';
 import { expanded, spread, sumExpr } from './monomials.ts';
-import { overOneDenominator } from './one-denominator.ts';
+import { overCommonDenominator } from './one-denominator.ts';
 import { choosePlaces } from './places.ts';
 import { workOut } from './worked-out.ts';
 
@@ -67,8 +67,9 @@ function isRational(expr: Expr): boolean {
 }
 
 /** Whether numerator and denominator may have a factor in common: one of the first degree has its zero in both. */
-function mayCancel(joined: Expr, context: CheckContext): boolean {
-  if (joined.kind !== 'quotient') return true;
+function mayCancel(form: Expr, context: CheckContext): boolean {
+  const joined = form.kind === 'sum' && form.terms.length === 1 ? form.terms[0]?.expr : form;
+  if (joined?.kind !== 'quotient') return false;
   const [place] = choosePlaces([joined], 1, context);
   const factors = joined.denominator.kind === 'product' ? joined.denominator.factors : [joined.denominator];
   return factors.some((factor) => {
@@ -86,7 +87,7 @@ function mayCancel(joined: Expr, context: CheckContext): boolean {
 }
 
 function quotients(whole: Expr, context: CheckContext): (Expr | null)[] {
-  const joined = overOneDenominator(whole);
+  const joined = overCommonDenominator(whole);
   const terms = expanded(whole);
   const plain = terms && terms.length <= mostTerms ? sumExpr(terms) : null;
   return [plain, joined, joined && mayCancel(joined, context) ? suggestForm(joined, 'factor') : null];

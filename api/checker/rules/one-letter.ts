@@ -228,12 +228,33 @@ function judgeGain(question: OneLetterQuestion, solved: Solved, gained: RealSet)
 /** A fault is named by its values, or where they fill an interval by one of them, which is put into both lines. */
 function failWith(question: OneLetterQuestion, side: 'lost' | 'gained', values: RealSet, solved: Solved): StepResult {
   const [inside, simplest] = [samplePoint(values, false), samplePoint(values, true)];
-  try {
-    return failAt(simplest, question, side, values, solved);
-  } catch (cause) {
-    if (simplest === inside || !(cause instanceof Unsettled)) throw cause;
-    return failAt(inside, question, side, values, solved);
-  }
+  const found = ((): StepResult => {
+    try {
+      return failAt(simplest, question, side, values, solved);
+    } catch (cause) {
+      if (simplest === inside || !(cause instanceof Unsettled)) throw cause;
+      return failAt(inside, question, side, values, solved);
+    }
+  })();
+  const at = side === 'lost' && !isWhole(simplest) && found.evidence.gained ? wholeGain(question, solved) : null;
+  return at === null
+    ? found
+    : { ...found, evidence: { ...found.evidence, witness: { at, above: 'false', below: 'true' } } };
+}
+
+function isWhole(point: RealNumber): boolean {
+  return point.kind === 'rational' && point.value.den === 1n;
+}
+
+/** A whole number that the line below admits and the one above does not, as easier to put in than a value that was lost. */
+function wholeGain(question: OneLetterQuestion, solved: Solved): Record<string, string> | null {
+  const gained = difference(solved.below, solved.above);
+  const point = isEmptySet(gained) ? null : samplePoint(gained, true);
+  if (!point || !isWhole(point)) return null;
+  const [above, below] = [question.above, question.below].map((one) => truthAt(one, point, solved.env));
+  if (!above?.certain || above.isTrue || !below?.certain || !below.isTrue) return null;
+  const given = [...question.given].map(([name, value]) => [name, nameNumber(rationalNumber(value))] as const);
+  return Object.fromEntries([[question.letter, nameNumber(point, recognise)], ...given]);
 }
 
 function failAt(

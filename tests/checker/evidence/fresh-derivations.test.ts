@@ -1,11 +1,38 @@
 import { describe, expect, it } from 'vitest';
 import { SLIP_KINDS } from '../../../shared/schemas/finding.ts';
 import { checkDerivation } from '../../../api/checker/rule-derivation.ts';
-import { readFresh, runFresh, type FreshResult } from './read-fresh.ts';
+import { isFiniteNumber, isNear, real } from '../../../api/checker/evidence/complex-double.ts';
+import { estimate } from '../../../api/checker/evidence/estimate.ts';
+import { roughTruth } from '../../../api/checker/evidence/rough-truth.ts';
+import type { Line } from '../../../shared/maths/expression.ts';
+import { readLine } from '../../../shared/maths/read.ts';
+import { readFresh, runFresh, type FreshResult, type FreshRow } from './read-fresh.ts';
 
 function told({ row, evidence }: FreshResult): string {
   const { mended, mendedEnding, slip } = evidence;
   return `${row.lines.join(' // ')} => ${(mendedEnding ?? [mended?.line]).join(' // ')} (${slip?.id})`;
+}
+
+const wholePlaces = Array.from({ length: 11 }, (_, k) => k - 5);
+
+function linesOf({ lines }: FreshRow): string {
+  return lines.join(' // ');
+}
+
+function lineOf(tex: string, { settings }: FreshRow): Line | null {
+  const reading = readLine(tex, { numbers: settings.numbers, decimal: 'point', functions: [] });
+  return reading.ok ? reading.line : null;
+}
+
+/** Whether two lines in one letter differ in value or in truth at a whole number. */
+function areApart(above: Line, below: Line, name: string, x: number): boolean {
+  const place = { letters: new Map([[name, real(x)]]), definitions: { letters: new Map(), functions: new Map() } };
+  if (above.kind === 'expression' && below.kind === 'expression') {
+    const [a, b] = [estimate(above.expr, place), estimate(below.expr, place)];
+    return isFiniteNumber(a) && isFiniteNumber(b) && !isNear(a, b);
+  }
+  const [a, b] = [roughTruth(above, place), roughTruth(below, place)];
+  return a !== null && b !== null && a !== b;
 }
 
 describe.each(['./fresh-derivations.txt', './fresh-derivations-2.txt'])('%s', { timeout: 120_000 }, (file) => {
@@ -37,6 +64,20 @@ describe.each(['./fresh-derivations.txt', './fresh-derivations-2.txt'])('%s', { 
         expect(verdict.firstFault, rest.join(' // ')).toBeNull();
         expect(verdict.steps[fault - 1]?.ruling, rest.join(' // ')).toBe('holds');
       }
+    }
+  });
+
+  it('has witnesses in whole numbers where there are any from -5 to 5', () => {
+    for (const { row, evidence } of results) {
+      const [above, below] = [row.lines[row.fault - 1] ?? '', row.lines[row.fault] ?? ''].map((tex) =>
+        lineOf(tex, row),
+      );
+      const at = Object.entries(evidence.witness?.at ?? {});
+      if (!above || !below || at.length === 0 || at.every(([, value]) => /^-?\d+$/.test(value))) continue;
+      expect(
+        at.length === 1 && wholePlaces.some((x) => areApart(above, below, at[0]?.[0] ?? '', x)),
+        linesOf(row),
+      ).toBe(false);
     }
   });
 
