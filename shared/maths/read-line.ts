@@ -1,7 +1,7 @@
 import type { Expr, Line, RelationSign } from './expression.ts';
 import { readEnd, readRows } from './read-atoms.ts';
 import { joinParts, type Join, type Part } from './read-joins.ts';
-import { readInterval, readSet, startsSet } from './read-sets.ts';
+import { readSet, startsSet } from './read-sets.ts';
 import { readSentence, startsDefinition } from './read-sentences.ts';
 import {
   ahead,
@@ -182,7 +182,7 @@ const readBareSet = (): Line => {
   const from = start;
   const isOther = is('([') && choose('interval');
   if (isOther && is('(')) return readRelations(sum(), from);
-  const set = is('[') && !isOther ? readInterval() : readSet();
+  const set = readSet();
   if (set.kind === 'empty') return { kind: 'none', span: set.span };
   return { kind: 'membership', letter: null, set, negated: false, span: span(from) };
 };
