@@ -6,6 +6,7 @@ import { toFraction } from '../solving/fraction.ts';
 import { squareFreePart } from '../solving/polynomial.ts';
 import { isolateRealRoots } from '../solving/real-roots.ts';
 import { isKnown, isReal, toBall } from '../values/arithmetic.ts';
+import { signOf } from '../values/powers.ts';
 import { evaluate, evaluatePrepared, prepare, type Prepared } from '../values/evaluate.ts';
 import {
   addExprs,
@@ -19,6 +20,7 @@ import {
   rationalExpr,
   rationalOf,
 } from './build.ts';
+import { differentiate } from './differentiate.ts';
 import { infinitySign } from './limit.ts';
 import { linearIn, polynomialIn } from './integrand.ts';
 import { needsOf } from './needs.ts';
@@ -64,9 +66,38 @@ export function cutsAtZeros(expr: Expr, variable: string, from: Expr, to: Expr, 
   if (!a || !b || !Number.isFinite(a.value) || !Number.isFinite(b.value) || a.value === b.value) return null;
   const [low, high] = a.value < b.value ? [a, b] : [b, a];
   const zeros = rootsOf(expr, variable, low, high, context);
-  if (!zeros?.areAll) return null;
+  if (!zeros) return null;
+  if (!zeros.areAll && !areAllZeros(expr, variable, low.value, high.value, zeros.candidates, context)) return null;
   const cuts = between(low, high, zeros.candidates).map(({ expr: at }) => at);
   return a.value < b.value ? cuts : cuts.reverse();
+}
+
+/** Whether there are no other zeros: on small stretches the values keep their sign, or rise or fall through one of these. */
+function areAllZeros(
+  expr: Expr,
+  variable: string,
+  start: number,
+  end: number,
+  zeros: readonly Candidate[],
+  context: CheckContext,
+): boolean {
+  const value = prepare(expr, context);
+  const slope = prepare(differentiate(expr, variable, context), context);
+  let count = 0;
+  const signOn = (graph: Prepared, low: number, high: number): number | null => {
+    const ball = { kind: 'ball', re: ballAround(low, high), im: null } as const;
+    const worth = evaluatePrepared(graph, new Map([[variable, ball]]), bits, context);
+    return isKnown(worth) && isReal(worth) ? signOf(worth) : null;
+  };
+  const visit = (low: number, high: number, depth: number): boolean => {
+    if ((count += 1) > mostEvaluations) return false;
+    if (signOn(value, low, high)) return true;
+    const inside = zeros.filter((zero) => zero.value >= low && zero.value <= high);
+    if (inside.length > 0 && signOn(slope, low, high)) return true;
+    const middle = (low + high) / 2 + (high - low) / 64;
+    return depth < deepest && visit(low, middle, depth + 1) && visit(middle, high, depth + 1);
+  };
+  return visit(start, end, 0);
 }
 
 interface Position {

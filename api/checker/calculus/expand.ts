@@ -229,6 +229,8 @@ function expandBars(name: 'abs' | 'sign', a: Series, context: Expansion): Series
   if (context.numbers === 'complex') throw new Unsettled('not-covered');
   const [lead] = a.terms;
   if (!lead) throw new Unsettled('not-settled');
+  if (name === 'abs' && lettersOf(lead.coef).length > 0)
+    return scaleSeries(a, divExprs(callOf('abs', lead.coef), lead.coef), context);
   const known = signOfCoefficient(lead.coef, context);
   if (name === 'sign') return constantSeries(numberOf(known));
   return known < 0 ? negateSeries(a) : a;

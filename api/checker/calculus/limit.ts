@@ -1,9 +1,22 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
+import { lettersOf } from '../../../shared/maths/letters.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import * as Q from '../numbers/rational.ts';
 import { Unsettled } from '../solving/unsettled.ts';
-import { infinityExpr, negateExpr, noValueExpr, numberOf, zeroExpr } from './build.ts';
+import {
+  addExprs,
+  callOf,
+  infinityExpr,
+  mulExprs,
+  negateExpr,
+  noValueExpr,
+  numberOf,
+  oneExpr,
+  subExprs,
+  zeroExpr,
+} from './build.ts';
+import { hasFactorial, ratioOfTerms, withoutTowers } from './towers.ts';
 import { expand } from './expand.ts';
 import { byParity, turnsForEver } from './turns.ts';
 import {
@@ -87,9 +100,63 @@ export function limitFromSide(expr: Expr, variable: string, target: Target, cont
   } catch (cause) {
     if (!(cause instanceof Unsettled) || cause.reason === 'no-domain' || context.numbers === 'complex') throw cause;
     const inner = (part: Expr): LimitValue => sideLimit(part, variable, target, context);
+    const composed = composedLimit(expr, variable, inner, context);
+    if (composed) return composed;
     if (turnsForEver(expr, variable, inner, (a, b) => haveSameValue(a, b, context) === false)) return { kind: 'none' };
     throw cause;
   }
+}
+
+/** By the limits of the parts of a sum, a multiple or a logarithm; null where these do not say. */
+function composedLimit(
+  expr: Expr,
+  variable: string,
+  limit: (part: Expr) => LimitValue,
+  context: CheckContext,
+): LimitValue | null {
+  const inner = (part: Expr): LimitValue => {
+    try {
+      return limit(part);
+    } catch (cause) {
+      const found = cause instanceof Unsettled ? composedLimit(part, variable, limit, context) : null;
+      if (!found) throw cause;
+      return found;
+    }
+  };
+  if (expr.kind === 'sum') {
+    const parts = expr.terms.map(({ sign, expr: part }) => (sign === 'minus' ? negated(inner(part)) : inner(part)));
+    return expr.terms.every(({ sign }) => sign === 'plus' || sign === 'minus') ? sumOfLimits(parts) : null;
+  }
+  if (expr.kind === 'product') {
+    const moving = expr.factors.filter((factor) => lettersOf(factor).includes(variable));
+    const fixed = mulExprs(...expr.factors.filter((factor) => !moving.includes(factor)));
+    const [only] = moving;
+    if (moving.length !== 1 || !only || moving.length === expr.factors.length) return null;
+    const found = inner(only);
+    if (found.kind === 'finite') return { kind: 'finite', value: mulExprs(fixed, found.value) };
+    const sign = signOfCoefficient(fixed, context);
+    return found.kind === 'infinite' && sign !== 0 ? { kind: 'infinite', sign: (sign * found.sign) as 1 | -1 } : null;
+  }
+  const [argument] = expr.kind === 'call' && (expr.name === 'ln' || expr.name === 'abs') ? expr.args : [];
+  if (expr.kind !== 'call' || !argument) return null;
+  const found = inner(argument);
+  if (found.kind === 'infinite') return expr.name === 'abs' || found.sign > 0 ? { kind: 'infinite', sign: 1 } : null;
+  if (found.kind !== 'finite') return null;
+  if (expr.name === 'abs') return { kind: 'finite', value: callOf('abs', found.value) };
+  return signOfCoefficient(found.value, context) > 0 ? { kind: 'finite', value: callOf('ln', found.value) } : null;
+}
+
+function negated(limit: LimitValue): LimitValue {
+  if (limit.kind === 'finite') return { kind: 'finite', value: negateExpr(limit.value) };
+  return limit.kind === 'infinite' ? { kind: 'infinite', sign: limit.sign > 0 ? -1 : 1 } : limit;
+}
+
+function sumOfLimits(parts: readonly LimitValue[]): LimitValue | null {
+  if (parts.some(({ kind }) => kind === 'none')) return null;
+  const signs = new Set(parts.flatMap((part) => (part.kind === 'infinite' ? [part.sign] : [])));
+  if (signs.size > 1) return null;
+  if (signs.size === 1) return { kind: 'infinite', sign: signs.has(1) ? 1 : -1 };
+  return { kind: 'finite', value: addExprs(...parts.flatMap((part) => (part.kind === 'finite' ? [part.value] : []))) };
 }
 
 /** Null where it is not certain. */
@@ -114,7 +181,36 @@ const beyondAll: Target = { to: infinityExpr, side: 'right' };
 
 /** The limit of a sequence, or those of its even and of its odd terms. Throws Unsettled. */
 export function sequenceLimits(expr: Expr, index: string, context: CheckContext): readonly LimitValue[] {
-  return (byParity(expr, index, context) ?? [expr]).map((part) => sideLimit(part, index, beyondAll, context));
+  return (byParity(expr, index, context) ?? [expr]).map((part) => limitOfTerms(part, index, context));
+}
+
+/** Factorials and powers that cancel are left out; a sequence with factorials tends to 0 where its terms' ratio is below 1. */
+function limitOfTerms(expr: Expr, index: string, context: CheckContext): LimitValue {
+  const isSteep = hasFactorial(expr, index);
+  const plain = isSteep ? withoutTowers(expr, index, context) : null;
+  if (plain) return sideLimit(plain, index, beyondAll, context);
+  if (isSteep && lettersOf(expr).length === 1 && shrinks(expr, index, context))
+    return { kind: 'finite', value: zeroExpr };
+  try {
+    return sideLimit(expr, index, beyondAll, context);
+  } catch (cause) {
+    const simpler = cause instanceof Unsettled && !isSteep ? withoutTowers(expr, index, context) : null;
+    if (!simpler) throw cause;
+    return sideLimit(simpler, index, beyondAll, context);
+  }
+}
+
+function shrinks(expr: Expr, index: string, context: CheckContext): boolean {
+  const ratio = ratioOfTerms(expr, index, context);
+  try {
+    const found = ratio && sideLimit(ratio, index, beyondAll, context);
+    if (found?.kind !== 'finite') return false;
+    const room = subExprs(oneExpr, mulExprs(found.value, found.value));
+    return signOfCoefficient(room, context) > 0;
+  } catch (cause) {
+    if (cause instanceof Unsettled) return false;
+    throw cause;
+  }
 }
 
 /** The largest term of a sequence far out, in powers of 1/k. Throws Unsettled. */

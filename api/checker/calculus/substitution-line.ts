@@ -1,5 +1,6 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
+import { sameExpr } from '../../../shared/maths/same.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckContext, Definitions } from '../context.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
@@ -85,6 +86,44 @@ function integralOf(integrand: Expr, variable: string): Expr {
 
 function isOne(expr: Expr): boolean {
   return expr.kind === 'number' && expr.numerator === expr.denominator;
+}
+
+/**
+ * A line with an integral by a letter that nothing was said of, such as u, may go on by substitution: u is then the one part
+ * of the integrand above with which it does. Null where there is no such part, or several.
+ */
+export function inferredDefinition(
+  above: Expr,
+  below: Expr,
+  context: CheckContext,
+  follows: (within: CheckContext) => boolean,
+): Definitions | null {
+  const [name, ...more] = new Set(variablesIn(below).filter((letter) => isNew(letter, above, context)));
+  const [by, ...others] = new Set(variablesIn(above));
+  if (name === undefined || by === undefined || more.length + others.length > 0 || rateNamed(name)) return null;
+  const found: Definitions[] = [];
+  for (const part of partsWith(above, by)) {
+    const definitions = withDefinition(context.definitions, name, part);
+    if (follows({ ...context, definitions })) found.push(definitions);
+    if (found.length > 1) return null;
+  }
+  return found[0] ?? null;
+}
+
+const mostParts = 12;
+
+/** The different parts of the integrands that depend on the letter and are not that letter. */
+function partsWith(expr: Expr, letter: string): Expr[] {
+  const parts: Expr[] = [];
+  const visit = (node: Expr): void => {
+    if (!lettersOf(node).includes(letter) || node.kind === 'letter') return;
+    if (node.kind !== 'integral' && !parts.some((part) => sameExpr(part, node))) parts.push(node);
+    childrenOf(node).forEach(visit);
+  };
+  const integrals = (node: Expr): void =>
+    node.kind === 'integral' ? visit(node.integrand) : childrenOf(node).forEach(integrals);
+  integrals(expr);
+  return parts.slice(-mostParts);
 }
 
 /** What is said of a letter that was defined before: v = e^x after dv = e^x dx, u' = 2x after u = x^2. */

@@ -6,7 +6,13 @@ import { judgeWithRates } from '../calculus/implicit.ts';
 import { sidesOfSame } from '../calculus/orders.ts';
 import { rateNamed } from '../calculus/rates.ts';
 import { indefiniteVariables } from '../calculus/scope.ts';
-import { isOperatorValue, judgeSubstitution, withDefinition } from '../calculus/substitution-line.ts';
+import {
+  hasIntegral,
+  inferredDefinition,
+  isOperatorValue,
+  judgeSubstitution,
+  withDefinition,
+} from '../calculus/substitution-line.ts';
 import type { CheckContext, Definitions } from '../context.ts';
 import type { RealNumber } from '../solving/real-number.ts';
 import { isEmptySet, isWholeLine } from '../solving/real-set.ts';
@@ -21,6 +27,7 @@ import { judgeRunningEquals } from './running-equals.ts';
 import { judgeStatements } from './statement-step.ts';
 import { judgeAside } from './aside.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
+import { isSplit } from './split-number.ts';
 
 /** One step: the line, what it starts from, and what the derivation knows so far. */
 export interface StepQuestion {
@@ -77,6 +84,8 @@ export function judgeStep(question: StepQuestion): StepAnswer {
     if (from?.kind !== 'expression') return answer(undecided('change-of-kind'), meaning);
     if (from.exact) return judgeRounded(from.expr, from.exact, [meaning.expr], ['='], context);
     const found = judgeExpressions(from.expr, meaning.expr, context);
+    const substituted = found.ruling === 'undecided' ? judgeInferred(from.expr, meaning, context) : null;
+    if (substituted) return substituted;
     if (from.isUnsure && found.ruling === 'fails') return answer(undecided('change-of-kind'), meaning);
     return answer(found, meaning, { shrunk: found.shrunk });
   }
@@ -104,6 +113,18 @@ export function judgeStep(question: StepQuestion): StepAnswer {
   }
   if (from?.kind === 'statement') return judgeFromStatement(meaning, from.statement, question);
   return judgeAfterExpression(line, meaning, question);
+}
+
+/** An integral by a letter that nothing was said of: a substitution, where it is clear which. */
+function judgeInferred(
+  above: Expr,
+  meaning: Extract<Meaning, { kind: 'expression' }>,
+  context: CheckContext,
+): StepAnswer | null {
+  if (!hasIntegral(above) || !hasIntegral(meaning.expr)) return null;
+  const judged = (within: CheckContext): StepResult => judgeExpressions(above, meaning.expr, within);
+  const defines = inferredDefinition(above, meaning.expr, context, (within) => judged(within).ruling === 'holds');
+  return defines && answer(judged({ ...context, definitions: defines }), meaning, { defines });
 }
 
 /** An i that comes up in a task about real numbers may be a letter or the unit. */
@@ -168,19 +189,6 @@ function judgeWithHelpers(line: Line, question: StepQuestion): StepAnswer | null
   const context = { ...question.context, definitions: defined.defines };
   const found = judgeStep({ ...question, line: rest.length > 1 ? { ...line, parts: rest } : only, context });
   return { ...found, result: withNote(found.result, 'definition'), defines: found.defines ?? defined.defines };
-}
-
-/** z = x + yi, with two letters that were not met before, among complex numbers. */
-function isSplit(name: string, value: Expr, used: readonly string[], { numbers, definitions }: CheckContext): boolean {
-  const letters = lettersOf(value);
-  if (numbers !== 'complex' || !used.includes(name) || definitions.letters.has(name)) return false;
-  const isNew = letters.length === 2 && letters.every((letter) => !used.includes(letter));
-  const terms = value.kind === 'sum' ? value.terms.map((term) => term.expr) : [];
-  return isNew && terms.length === 2 && terms.some((term) => hasUnit(term)) && terms.some((term) => !hasUnit(term));
-}
-
-function hasUnit(expr: Expr): boolean {
-  return (expr.kind === 'constant' && expr.name === 'i') || childrenOf(expr).some(hasUnit);
 }
 
 /** A statement without letters: a true one is a remark (rule 6c), a false one is judged as what it claims. */
