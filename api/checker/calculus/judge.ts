@@ -10,6 +10,7 @@ import { hasIndexed } from './indexed-letters.ts';
 import { compareAntiderivatives, concernsConstants, type AntiderivativeRuling } from './judge-antiderivative.ts';
 import { worthOf, type Worth } from './judge-values.ts';
 import { compareOpenIntegrals, openIntegrals } from './open-integrals.ts';
+import { compareOpenSeries } from './open-series.ts';
 import { compareOrders } from './orders.ts';
 import { carriedOut } from './reduce.ts';
 import { boundsOfSeries } from './series-bounds.ts';
@@ -27,8 +28,11 @@ export function compareWithCalculus(above: Expr, below: Expr, context: CheckCont
   const quick = isCalculus ? null : compareQuickly(above, below, context);
   if (quick !== null) return plain(quick);
   const first = compareAsRead(above, below, context);
-  const orders = first.found.kind === 'undecided' ? compareOrders(above, below, context) : null;
-  if (orders) return plain(orders);
+  const other =
+    first.found.kind === 'undecided'
+      ? (compareOrders(above, below, context) ?? compareOpenSeries(above, below, context))
+      : null;
+  if (other) return plain(other);
   if (!calculus || calculus.ambiguous.size === 0 || first.found.kind === 'equal') return first;
   // The other reading: y depends on x. A fault has to be one under both.
   const moving = {

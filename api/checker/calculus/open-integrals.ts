@@ -20,6 +20,7 @@ import { encloseIntegral, quadratureBits } from './quadrature.ts';
 import { carriedOut, onlyLetter } from './reduce.ts';
 import { substitute } from './substitute.ts';
 import { Unsettled } from '../solving/unsettled.ts';
+import { compareByUpperEnd } from './upper-end.ts';
 
 type DefiniteExpr = Extract<Expr, { kind: 'integral' }> & { readonly from: Expr; readonly to: Expr };
 
@@ -54,7 +55,8 @@ export function compareOpenIntegrals(above: Expr, below: Expr, context: CheckCon
     if (found.kind === 'equal')
       return formalA.isCertain && formalB.isCertain ? found : { ...found, reached: 'sampled' };
   }
-  return compareEnclosures(a, b, context);
+  const enclosed = compareEnclosures(a, b, context);
+  return (enclosed.kind === 'undecided' ? compareByUpperEnd(above, below, context) : null) ?? enclosed;
 }
 
 /** Puts in the value of an integral whose antiderivative the other line shows. */
