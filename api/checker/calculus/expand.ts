@@ -25,6 +25,7 @@ import {
   constantSeries,
   expSeries,
   inverseSeries,
+  isOnlyBounded,
   lnSeries,
   mulSeries,
   negateSeries,
@@ -198,6 +199,7 @@ function rewritten(name: Extract<Expr, { kind: 'call' }>['name'], u: Expr): Expr
 
 /** A sine or cosine of what grows is bounded, and no more is known. */
 function expandCircular(name: 'sin' | 'cos', a: Series, context: Expansion): Series {
+  if (context.numbers === 'real' && isOnlyBounded(a, context)) return boundedSeries(unitScale);
   const { large, constant, small } = splitBySize(a, context);
   if (large.length > 0) {
     if (context.numbers === 'complex') throw new Unsettled('not-covered');
@@ -228,6 +230,7 @@ function factorial(k: number): bigint {
 function expandBars(name: 'abs' | 'sign', a: Series, context: Expansion): Series {
   if (context.numbers === 'complex') throw new Unsettled('not-covered');
   const [lead] = a.terms;
+  if (!lead && a.error && name === 'abs') return a;
   if (!lead) throw new Unsettled('not-settled');
   if (name === 'abs' && lettersOf(lead.coef).length > 0)
     return scaleSeries(a, divExprs(callOf('abs', lead.coef), lead.coef), context);
@@ -238,6 +241,7 @@ function expandBars(name: 'abs' | 'sign', a: Series, context: Expansion): Series
 
 /** arctan(c + d) = arctan c + arctan(d / (1 + c^2 + c d)); beyond all bounds it is pi/2 less that of the inverse. */
 function expandArctan(a: Series, context: Expansion): Series {
+  if (context.numbers === 'real' && isOnlyBounded(a, context)) return boundedSeries(unitScale);
   const { large, constant, small } = splitBySize(a, context);
   if (large[0]) {
     const known = signOfCoefficient(large[0].coef, context);

@@ -94,7 +94,8 @@ export function factorise(expr: Expr, letter: string): Factored {
         ? true
         : node.base.kind === 'letter' || (times.den === 1n && node.base.kind !== 'product'))
     ) {
-      if (node.base.kind === 'letter' && times.den !== 1n && value.num % 2n === 0n) return put(node, times);
+      // The square root of x^2 is |x|; its cube root is x^(2/3) for every real x.
+      if (node.base.kind === 'letter' && times.den % 2n === 0n && value.num % 2n === 0n) return put(node, times);
       return visit(node.base, Q.mul(value, times));
     }
     if (isFree(node.base, letter)) {

@@ -9,6 +9,7 @@ import { Unsettled } from '../solving/unsettled.ts';
 import { divExprs, oneExpr, zeroExpr } from './build.ts';
 import { differentiate } from './differentiate.ts';
 import { isFree, linearIn } from './integrand.ts';
+import { compareOpenSeries } from './open-series.ts';
 import { carriedOut } from './reduce.ts';
 import { indefiniteVariables } from './scope.ts';
 import { substitute } from './substitute.ts';
@@ -58,7 +59,8 @@ function compareDerivatives(above: Expr, below: Expr, context: CheckContext): An
   const [variable] = variables;
   if (variable === undefined || variables.length > 1) return { kind: 'undecided', reason: 'not-covered' };
   const [a, b] = [differentiate(above, variable, context, true), differentiate(below, variable, context, true)];
-  const found = compareExpressions(a, b, context);
+  const plain = compareExpressions(a, b, context);
+  const found = (plain.kind === 'undecided' ? compareOpenSeries(a, b, context) : null) ?? plain;
   if (found.kind === 'equal') return agreed(above, below, found, context);
   if (found.kind === 'different' && constantsIn(a, context).length > 0) {
     const absorbed = absorbs(above, below, variable, context);

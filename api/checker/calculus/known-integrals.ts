@@ -118,6 +118,7 @@ const table: readonly (readonly [string, string, string, string])[] = [
   ['\\frac{\\ln x}{1+x}', '0', '1', '-\\frac{\\pi^2}{12}'],
   ['\\frac{\\ln(1+x)}{x}', '0', '1', '\\frac{\\pi^2}{12}'],
   ['\\frac{\\ln(1-x)}{x}', '0', '1', '-\\frac{\\pi^2}{6}'],
+  ['\\frac{1-\\cos x}{x^2}', '0', '\\infty', '\\frac{\\pi}{2}'],
   ['\\ln(\\sin x)', '0', '\\frac{\\pi}{2}', '-\\frac{\\pi}{2}\\ln2'],
   ['\\ln(\\cos x)', '0', '\\frac{\\pi}{2}', '-\\frac{\\pi}{2}\\ln2'],
   ['\\ln(\\sin x)', '0', '\\pi', '-\\pi\\ln2'],

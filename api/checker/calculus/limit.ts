@@ -100,9 +100,18 @@ export function limitFromSide(expr: Expr, variable: string, target: Target, cont
   } catch (cause) {
     if (!(cause instanceof Unsettled) || cause.reason === 'no-domain' || context.numbers === 'complex') throw cause;
     const inner = (part: Expr): LimitValue => sideLimit(part, variable, target, context);
-    const composed = composedLimit(expr, variable, inner, context);
+    const composed = attempt(() => composedLimit(expr, variable, inner, context));
     if (composed) return composed;
     if (turnsForEver(expr, variable, inner, (a, b) => haveSameValue(a, b, context) === false)) return { kind: 'none' };
+    throw cause;
+  }
+}
+
+function attempt<Found>(find: () => Found): Found | null {
+  try {
+    return find();
+  } catch (cause) {
+    if (cause instanceof Unsettled) return null;
     throw cause;
   }
 }
@@ -115,13 +124,9 @@ function composedLimit(
   context: CheckContext,
 ): LimitValue | null {
   const inner = (part: Expr): LimitValue => {
-    try {
-      return limit(part);
-    } catch (cause) {
-      const found = cause instanceof Unsettled ? composedLimit(part, variable, limit, context) : null;
-      if (!found) throw cause;
-      return found;
-    }
+    const found = attempt(() => limit(part)) ?? composedLimit(part, variable, limit, context);
+    if (!found) throw new Unsettled('not-covered');
+    return found;
   };
   if (expr.kind === 'sum') {
     const parts = expr.terms.map(({ sign, expr: part }) => (sign === 'minus' ? negated(inner(part)) : inner(part)));
@@ -202,15 +207,12 @@ function limitOfTerms(expr: Expr, index: string, context: CheckContext): LimitVa
 
 function shrinks(expr: Expr, index: string, context: CheckContext): boolean {
   const ratio = ratioOfTerms(expr, index, context);
-  try {
+  const sign = attempt(() => {
     const found = ratio && sideLimit(ratio, index, beyondAll, context);
-    if (found?.kind !== 'finite') return false;
-    const room = subExprs(oneExpr, mulExprs(found.value, found.value));
-    return signOfCoefficient(room, context) > 0;
-  } catch (cause) {
-    if (cause instanceof Unsettled) return false;
-    throw cause;
-  }
+    if (found?.kind !== 'finite') return 0;
+    return signOfCoefficient(subExprs(oneExpr, mulExprs(found.value, found.value)), context);
+  });
+  return sign === 1;
 }
 
 /** The largest term of a sequence far out, in powers of 1/k. Throws Unsettled. */

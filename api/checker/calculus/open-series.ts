@@ -1,6 +1,5 @@
 import type { Expr, SeriesExpr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
-import { printExpr } from '../../../shared/maths/print.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
@@ -24,6 +23,7 @@ import { infinitySign } from './limit.ts';
 import { carriedOut } from './reduce.ts';
 import { convergesAbsolutely, hasRadius } from './sequence-tests.ts';
 import { substitute } from './substitute.ts';
+import { readableTex, termTex } from './term-tex.ts';
 
 const index = 'j_{0}';
 const mostTerms = 8;
@@ -123,7 +123,7 @@ function indexed(body: Expr, start: bigint): OpenSeries {
   const [step, first] = [linear?.slope, linear?.constant].map((part) => (part ? rationalOf(part) : null));
   if (!base || step?.den !== 1n || first?.den !== 1n || step.num < 1n) return { key: 'none', start, body, base: null };
   const shift = Q.floor(Q.div(first, step));
-  const key = `${printExpr(base)} ${step.num} ${first.num - shift * step.num}`;
+  const key = `${readableTex(base)} ${step.num} ${first.num - shift * step.num}`;
   return { ...moved({ key, start, body, base }, shift), key };
 }
 
@@ -242,8 +242,8 @@ function lowestDifference(a: Parts, b: Parts, context: CheckContext): Comparison
     const found = compareExpressions(left, right, context);
     if (found.kind === 'equal') continue;
     if (found.kind !== 'different') return null;
-    const power = powExprs(letterOf(letter), numberOf(k));
-    const tex = (coef: Expr): string => printExpr(k === 0 ? coef : mulExprs(coef, power));
+    const power = k === 0 ? numberOf(1) : powExprs(letterOf(letter), numberOf(k));
+    const tex = (coef: Expr): string => termTex(coef, power, context);
     return { kind: 'different', witness: { at: new Map(), atTex: {}, above: tex(left), below: tex(right) } };
   }
   return null;

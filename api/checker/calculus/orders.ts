@@ -1,7 +1,6 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
-import { printExpr } from '../../../shared/maths/print.ts';
 import { childrenOf, mapExpr } from '../../../shared/maths/walk.ts';
 import type { Comparison } from '../compare/comparison.ts';
 import type { CheckContext } from '../context.ts';
@@ -20,6 +19,7 @@ import {
 } from './build.ts';
 import { expand } from './expand.ts';
 import { factorise, linearIn } from './integrand.ts';
+import { termTex } from './term-tex.ts';
 import { infinitySign, seriesAt, stepsTried, type Target } from './limit.ts';
 import { addSeries, compareScales, negateSeries, type Expansion, type Scale, type Series } from './series-ring.ts';
 import * as Q from '../numbers/rational.ts';
@@ -125,7 +125,7 @@ function different(a: Series, b: Series, scale: Scale, letter: string, { to }: T
   const termOf = ({ terms }: Series): string => {
     const term = terms.find((one) => compareScales(one.scale, scale, context) === 0);
     const coef = term ? term.coef : zeroExpr;
-    return printExpr(mulExprs(coef, powExprs(step, rationalExpr(scale.p))));
+    return termTex(coef, Q.isZero(scale.p) ? rationalExpr(Q.one) : powExprs(step, rationalExpr(scale.p)), context);
   };
   return { kind: 'different', witness: { at: new Map(), atTex: {}, above: termOf(a), below: termOf(b) } };
 }

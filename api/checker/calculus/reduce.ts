@@ -2,6 +2,7 @@ import type { Expr } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { sameExpr } from '../../../shared/maths/same.ts';
 import { childrenOf, countNodes, mapExpr } from '../../../shared/maths/walk.ts';
+import { compareExpressions } from '../compare/compare-expressions.ts';
 import type { CheckContext } from '../context.ts';
 import { Unsettled } from '../solving/unsettled.ts';
 import { isKnown } from '../values/arithmetic.ts';
@@ -11,7 +12,10 @@ import { withoutBars } from './bars.ts';
 import { knownIntegral } from './known-integrals.ts';
 import { addExprs, infinityExpr, negateExpr, noValueExpr, subExprs, zeroExpr } from './build.ts';
 import { throughAntiderivative } from './definite.ts';
+import { splitAt } from './continuity.ts';
 import { bodyOf, differentiateTimes } from './differentiate.ts';
+import { isFree } from './integrand.ts';
+import { isEverywhere } from './needs.ts';
 import { infinitySign, limitExpr, limitOf, limitFromSide } from './limit.ts';
 import { rateExpr, rateNamed } from './rates.ts';
 import { closedSeries } from './series.ts';
@@ -99,9 +103,55 @@ function reduceIntegral(node: Extract<Expr, { kind: 'integral' }>, context: Chec
   if (primitive) return throughAntiderivative(primitive, { variable, from, to }, inner);
   const known = knownIntegral({ ...node, integrand }, inner);
   if (known) return known;
+  const turned = inOtherOrder({ ...node, integrand }, inner);
+  if (turned) return reduceCalculus(turned, context);
   const pieces = withoutBars({ ...node, integrand }, inner);
   const values = pieces?.map((piece) => reduceCalculus(piece, context));
   return values?.every((value) => value !== null) ? addExprs(...(values as Expr[])) : null;
+}
+
+/** An integral over a triangle, whose inner one is out of reach, in the other order (Fubini's theorem). */
+function inOtherOrder(node: Extract<Expr, { kind: 'integral' }>, context: CheckContext): Expr | null {
+  const { integrand: inside, variable, from, to } = node;
+  if (inside.kind !== 'integral' || !from || !to || !inside.from || !inside.to) return null;
+  if (![from, to].every((end) => isFree(end, variable) && isFree(end, inside.variable))) return null;
+  if (!isEverywhere(inside.integrand, variable)) return null;
+  if (!isEverywhere(inside.integrand, inside.variable) && !isBoundedBetween(inside, from, to, context)) return null;
+  const isOuter = (end: Expr): boolean => end.kind === 'letter' && end.name === variable;
+  const isSame = (a: Expr, b: Expr): boolean => compareExpressions(a, b, context).kind === 'equal';
+  const at: Expr = { kind: 'letter', name: inside.variable, span: node.span };
+  const swapped = (low: Expr, high: Expr): Expr => ({
+    ...inside,
+    from,
+    to,
+    integrand: { ...node, integrand: inside.integrand, from: low, to: high },
+  });
+  const found =
+    isOuter(inside.from) && isSame(inside.to, to)
+      ? swapped(from, at)
+      : isOuter(inside.to) && isSame(inside.from, from)
+        ? swapped(at, to)
+        : null;
+  return found?.kind === 'integral' && reduceCalculus(found.integrand, context) ? found : null;
+}
+
+/** Continuous between two numbers but for the ends, where it has limits. */
+function isBoundedBetween(
+  { integrand, variable }: Extract<Expr, { kind: 'integral' }>,
+  from: Expr,
+  to: Expr,
+  context: CheckContext,
+): boolean {
+  const cuts = lettersOf(integrand).every((name) => name === variable)
+    ? splitAt(integrand, variable, from, to, context)
+    : null;
+  if (cuts?.length !== 2) return false;
+  return cuts.every(
+    ({ at, isGap, isDescending }, k) =>
+      !isGap ||
+      limitFromSide(integrand, variable, { to: at, side: (k === 0) === isDescending ? 'left' : 'right' }, context)
+        .kind === 'finite',
+  );
 }
 
 function isKnownAt(expr: Expr, variable: string, at: Expr, context: CheckContext): boolean {

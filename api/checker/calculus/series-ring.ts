@@ -246,6 +246,7 @@ export function rationalPower(a: Series, r: Rational, context: Expansion): Serie
 }
 
 export function expSeries(a: Series, context: Expansion): Series {
+  if (isOnlyBounded(a, context)) return boundedSeries(unitScale);
   const split = splitBySize(a, context);
   let p = Q.zero;
   const growth: GrowthTerm[] = [];
@@ -281,6 +282,12 @@ export function lnSeries(a: Series, context: Expansion): Series {
   terms.push({ coef: rationalExpr(Q.negate(lead.scale.p)), scale: { growth: [], p: Q.zero, q: 1 } });
   const tail = composeSeries((k) => (k === 0 ? zeroExpr : numberOf(k % 2 === 1 ? 1 : -1, k)), rest, context);
   return addSeries(normalised(terms, null, context), tail, context);
+}
+
+/** Whether nothing more is known than that it stays within bounds. */
+export function isOnlyBounded({ terms, error }: Series, context: Expansion): boolean {
+  if (!error || compareScales(error, unitScale, context) !== 0) return false;
+  return terms.every(({ scale }) => compareScales(scale, unitScale, context) <= 0);
 }
 
 /** Growing terms, the constant and what tends to 0. */

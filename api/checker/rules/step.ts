@@ -124,7 +124,7 @@ function judgeInferred(
   if (!hasIntegral(above) || !hasIntegral(meaning.expr)) return null;
   const judged = (within: CheckContext): StepResult => judgeExpressions(above, meaning.expr, within);
   const defines = inferredDefinition(above, meaning.expr, context, (within) => judged(within).ruling === 'holds');
-  return defines && answer(judged({ ...context, definitions: defines }), meaning, { defines });
+  return defines && answer(withNote(judged({ ...context, definitions: defines }), 'definition'), meaning, { defines });
 }
 
 /** An i that comes up in a task about real numbers may be a letter or the unit. */
