@@ -17,7 +17,7 @@ import {
 import { bodyOf, differentiateTimes } from './differentiate.ts';
 import { expandExtreme, expandFactorial, expandFloor, expandIntegral } from './expand-pieces.ts';
 import { isFree } from './integrand.ts';
-import { isOrder } from './orders.ts';
+import { isOrder } from './order-symbol.ts';
 import {
   addSeries,
   boundedSeries,

@@ -18,6 +18,7 @@ import {
 } from './build.ts';
 import { hasFactorial, ratioOfTerms, withoutTowers } from './towers.ts';
 import { expand } from './expand.ts';
+import type { LimitValue } from './limit-value.ts';
 import { byParity, turnsForEver } from './turns.ts';
 import {
   compareScales,
@@ -30,10 +31,7 @@ import {
   type SeriesTerm,
 } from './series-ring.ts';
 
-export type LimitValue =
-  | { readonly kind: 'finite'; readonly value: Expr }
-  | { readonly kind: 'infinite'; readonly sign: 1 | -1 }
-  | { readonly kind: 'none' };
+export type { LimitValue };
 
 /** Where a letter goes: to a value from one side, or beyond all bounds. */
 export interface Target {

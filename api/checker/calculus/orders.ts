@@ -20,22 +20,10 @@ import {
 import { expand } from './expand.ts';
 import { factorise, linearIn } from './integrand.ts';
 import { termTex } from './term-tex.ts';
+import { isOrder, type OrderExpr } from './order-symbol.ts';
 import { infinitySign, seriesAt, stepsTried, type Target } from './limit.ts';
 import { addSeries, compareScales, negateSeries, type Expansion, type Scale, type Series } from './series-ring.ts';
 import * as Q from '../numbers/rational.ts';
-
-type OrderExpr = Extract<Expr, { kind: 'apply' }>;
-
-/** `O(x^3)` or `o(x^3)`, where the derivation has no function of that name. */
-export function isOrder(expr: Expr, { definitions }: CheckContext): expr is OrderExpr {
-  return (
-    expr.kind === 'apply' &&
-    (expr.name === 'O' || expr.name === 'o') &&
-    expr.primes === 0 &&
-    expr.args.length === 1 &&
-    !definitions.functions.has(expr.name)
-  );
-}
 
 /** The orders in an expression that no limit has done away with. */
 function ordersIn(expr: Expr, context: CheckContext): OrderExpr[] {

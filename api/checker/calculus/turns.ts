@@ -8,7 +8,7 @@ import { isKnown } from '../values/arithmetic.ts';
 import { evaluate } from '../values/evaluate.ts';
 import { divExprs, mulExprs, numberOf, piExpr, powExprs, rationalExpr, rationalOf } from './build.ts';
 import { isFree, linearIn } from './integrand.ts';
-import type { LimitValue } from './limit.ts';
+import type { LimitValue } from './limit-value.ts';
 
 type Limit = (expr: Expr) => LimitValue;
 
