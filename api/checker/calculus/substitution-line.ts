@@ -6,6 +6,7 @@ import type { CheckContext, Definitions } from '../context.ts';
 import { compareExpressions } from '../compare/compare-expressions.ts';
 import { fails, holds, undecided, type StepResult } from '../rules/step-result.ts';
 import { withoutDefinition } from './antiderivative.ts';
+import { callOf, numberOf, powExprs, rationalOf } from './build.ts';
 import { differentialsIn, judgeDifferentials, withoutDifferentials } from './differentials.ts';
 import { differentiate } from './differentiate.ts';
 import { solvedFor } from './inverse.ts';
@@ -117,13 +118,23 @@ function partsWith(expr: Expr, letter: string): Expr[] {
   const parts: Expr[] = [];
   const visit = (node: Expr): void => {
     if (!lettersOf(node).includes(letter) || node.kind === 'letter') return;
-    if (node.kind !== 'integral' && !parts.some((part) => sameExpr(part, node))) parts.push(node);
+    for (const part of node.kind === 'integral' ? [] : [node, ...halvesOf(node)])
+      if (!parts.some((known) => sameExpr(known, part))) parts.push(part);
     childrenOf(node).forEach(visit);
   };
   const integrals = (node: Expr): void =>
     node.kind === 'integral' ? visit(node.integrand) : childrenOf(node).forEach(integrals);
   integrals(expr);
   return parts.slice(-mostParts);
+}
+
+/** x^2 in x^4, and cos x in tan x. */
+function halvesOf(expr: Expr): Expr[] {
+  const [argument] = expr.kind === 'call' && (expr.name === 'tan' || expr.name === 'cot') ? expr.args : [];
+  if (expr.kind === 'call' && argument) return [callOf(expr.name === 'tan' ? 'cos' : 'sin', argument)];
+  const times = expr.kind === 'power' && expr.base.kind === 'letter' ? rationalOf(expr.exponent) : null;
+  if (expr.kind !== 'power' || times?.den !== 1n || times.num % 2n !== 0n || times.num < 4n) return [];
+  return [powExprs(expr.base, numberOf(times.num / 2n))];
 }
 
 /** What is said of a letter that was defined before: v = e^x after dv = e^x dx, u' = 2x after u = x^2. */
