@@ -2,6 +2,7 @@ import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { lettersOf } from '../../../shared/maths/letters.ts';
 import { childrenOf } from '../../../shared/maths/walk.ts';
 import type { CheckContext } from '../context.ts';
+import { charge } from '../numbers/work.ts';
 import { exprsOfStatement, toStatement, type Statement } from '../statements/statement.ts';
 import { lowerAll } from '../values/lower.ts';
 
@@ -71,5 +72,7 @@ const plainKinds: ReadonlySet<Expr['kind']> = new Set([
 
 /** Without anything that has letters of its own or stands for something else. */
 function isPlain(expr: Expr): boolean {
+  // What was put into each other many times is small as a graph and endless as a tree.
+  charge(0.4);
   return plainKinds.has(expr.kind) && childrenOf(expr).every(isPlain);
 }
