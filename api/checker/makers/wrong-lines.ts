@@ -1,7 +1,10 @@
 import type { Expr, Line } from '../../../shared/maths/expression.ts';
 import { sameLine } from '../../../shared/maths/same.ts';
-import { countNodes, exprsOf } from '../../../shared/maths/walk.ts';
+import { countNodes, exprsOf, mapExpr } from '../../../shared/maths/walk.ts';
 import { createBudget, createContext, type CheckContext } from '../context.ts';
+import { product, sum, whole } from '../evidence/build.ts';
+import { wholeValue } from '../evidence/monomials.ts';
+import { signedTerm } from '../slips/relations.ts';
 import { everywhere } from '../slips/rewrite.ts';
 import type { Slip } from '../slips/slip.ts';
 
@@ -59,5 +62,21 @@ function* wrongExpressions(slip: Slip, above: Expr, below: Expr, context: CheckC
 }
 
 function* rewritten(slip: Slip, expr: Expr): Generator<Expr> {
-  for (const rewrite of slip.rewrites ?? []) yield* everywhere(expr, rewrite);
+  for (const rewrite of slip.rewrites ?? []) {
+    for (const changed of everywhere(expr, rewrite)) yield mapExpr(changed, withNumbersAdded);
+  }
+}
+
+/** Numbers that a rule put side by side, as -48+3, are added at once, as an author would. */
+function withNumbersAdded(node: Expr): Expr {
+  if (node.kind === 'product' && node.factors.some(hasSignOrIsZero)) return product(...node.factors);
+  if (node.kind !== 'sum' || node.span.end > 0) return node;
+  const numbers = node.terms.map((term) => wholeValue(signedTerm(term)));
+  if (node.terms.length > 1 && numbers.every((value) => value !== null))
+    return whole(numbers.reduce((total, value) => total + (value ?? 0), 0));
+  return node.terms.some(({ expr }) => hasSignOrIsZero(expr)) ? sum(...node.terms.map(signedTerm)) : node;
+}
+
+function hasSignOrIsZero(expr: Expr): boolean {
+  return (wholeValue(expr) ?? 1) <= 0;
 }

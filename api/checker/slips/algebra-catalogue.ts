@@ -68,11 +68,13 @@ function squaredTermByTerm(sign: 'plus' | 'minus', wantsRoot: boolean): (above: 
     for (const { left, sign: equals, right } of bothWays(above)) {
       const [first, second, ...more] = right.kind === 'sum' ? right.terms : [];
       if (equals !== '=' || !first || !second || more.length > 0 || termsOf(left).length > 1) continue;
+      // Nobody squares without a root.
+      if (!wantsRoot && left.kind !== 'root') continue;
       const hasRoot = [first, second].some(({ expr }) => factorsOf(expr).some((factor) => factor.kind === 'root'));
       if (hasRoot !== wantsRoot || first.sign !== 'plus' || (second.sign === 'plus' && sign === 'minus' && !wantsRoot))
         continue;
       const [a, b] = [squareOf(first.expr), squareOf(second.expr)];
-      yield relation(power(left, whole(2)), '=', sum(a, sign === 'minus' ? neg(b) : b));
+      yield relation(squareOf(left), '=', sum(a, sign === 'minus' ? neg(b) : b));
     }
   };
 }
