@@ -1,2 +1,2 @@
 /** Goes up whenever the checker may rule on some derivation otherwise than before; kept with every verdict. */
-export const CHECKER_VERSION = '2';
+export const CHECKER_VERSION = '3';
