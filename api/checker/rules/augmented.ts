@@ -1,10 +1,9 @@
 import type { Expr } from '../../../shared/maths/expression.ts';
 import type { CheckContext } from '../context.ts';
-import { add, div, isZero, mul, sub, toTex, zero, type Rational } from '../numbers/rational.ts';
+import { add, isZero, mul, sub, toTex, zero, type Rational } from '../numbers/rational.ts';
 import { evaluatePrepared, prepare } from '../values/evaluate.ts';
+import { reduceRows, type Rows } from './linear-rows.ts';
 import { fails, holds, undecided, type StepResult } from './step-result.ts';
-
-type Rows = readonly (readonly Rational[])[];
 
 /**
  * Two matrices with a bar before the last column stand for systems of linear equations: a step keeps all solutions. Null
@@ -13,7 +12,7 @@ type Rows = readonly (readonly Rational[])[];
 export function judgeAugmented(above: Expr, below: Expr, context: CheckContext): StepResult | null {
   const [a, b] = [rowsOf(above, context), rowsOf(below, context)];
   if (!a || !b || a[0]?.length !== b[0]?.length) return null;
-  const [before, after] = [reduced(a), reduced(b)];
+  const [before, after] = [reduceRows(a), reduceRows(b)];
   if (before.every((row, k) => isSame(row, after[k])) && before.length === after.length) return holds('proved');
   const lost = solutionsOf(before).find((point) => !solves(b, point));
   if (lost) return failAt('lost', lost);
@@ -30,22 +29,6 @@ function rowsOf(expr: Expr, context: CheckContext): Rows | null {
     }),
   );
   return rows.flat().includes(null) ? null : (rows as Rational[][]);
-}
-
-/** The reduced echelon form without rows of zeros. */
-function reduced(rows: Rows): Rational[][] {
-  let rest = rows.map((row) => [...row]);
-  const done: Rational[][] = [];
-  for (let column = 0; column < (rows[0]?.length ?? 0); column += 1) {
-    const pivot = rest.find((row) => !isZero(row[column] as Rational));
-    if (!pivot) continue;
-    const own = pivot.map((value) => div(value, pivot[column] as Rational));
-    const clear = (row: Rational[]): Rational[] =>
-      row.map((value, k) => sub(value, mul(row[column] as Rational, own[k] as Rational)));
-    rest = rest.filter((row) => row !== pivot).map(clear);
-    done.splice(0, done.length, ...done.map(clear), own);
-  }
-  return done;
 }
 
 function isSame(a: readonly Rational[], b: readonly Rational[] | undefined): boolean {

@@ -5,7 +5,7 @@ import { rationalOf } from '../calculus/build.ts';
 import { createForms } from '../compare/normal-forms.ts';
 import type { CheckContext } from '../context.ts';
 import { constantOf } from '../numbers/form.ts';
-import { equals, pow, rational, type Rational } from '../numbers/rational.ts';
+import { equals, isZero, pow, rational, type Rational } from '../numbers/rational.ts';
 import { toFraction } from '../solving/fraction.ts';
 import { degreeIn } from '../solving/linear.ts';
 import type { RealNumber } from '../solving/real-number.ts';
@@ -18,6 +18,7 @@ import { differenceGraph, solveStatement, type SolveEnv } from '../statements/so
 import type { CompareStatement, Statement } from '../statements/statement.ts';
 import {
   differenceExpr,
+  letterExpr,
   minusExpr,
   numberExpr,
   powerExpr,
@@ -27,6 +28,7 @@ import {
   termsOf,
 } from './build-expr.ts';
 import { clearedEquation } from './derived-equations.ts';
+import { reduceRows, rowOf } from './linear-rows.ts';
 import { freeLetters } from './meaning.ts';
 
 /** Expressions in the place of letters. */
@@ -94,15 +96,32 @@ export function openLetters(statement: Statement, context: CheckContext, anchor:
 
 /** All that satisfies several equations together; throws Unsettled where elimination does not get there. */
 export function solveSystem(equations: readonly CompareStatement[], context: CheckContext): SystemSolution[] {
-  const found = eliminate(
-    equations.map(withoutPowers).map(withoutDenominators),
-    new Map(),
-    { context, anchor: null },
-    0,
-  );
+  const plain = equations.map(withoutPowers).map(withoutDenominators);
+  const found = eliminate(eliminateLinear(plain, context) ?? plain, new Map(), { context, anchor: null }, 0);
   const solutions = found.filter((solution) => isSolution(equations, solution, context));
   if (solutions.length > mostSolutions) throw new Unsettled('limit');
   return solutions;
+}
+
+/** Linear equations in reduced echelon form; null where they are few and short enough as they stand, or not all linear. */
+function eliminateLinear(equations: readonly CompareStatement[], context: CheckContext): CompareStatement[] | null {
+  const letters = [...new Set(equations.flatMap((equation) => freeLetters(equation, context)))];
+  if (letters.length < 3) return null;
+  const rows = equations.map((equation) => rowOf(equation, letters, context));
+  if (rows.includes(null)) return null;
+  context.budget.spend(10 * rows.length * rows.length * letters.length);
+  const terms = (row: readonly Rational[]): Expr[] =>
+    row.flatMap((value, k) => {
+      if (isZero(value)) return [];
+      const name = letters[k];
+      return [name === undefined ? numberExpr(value) : productExpr([numberExpr(value), letterExpr(name)])];
+    });
+  return reduceRows(rows as Rational[][]).map((row) => ({
+    kind: 'compare',
+    left: sumExpr(terms(row)),
+    sign: '=',
+    right: numberExpr(rational(0)),
+  }));
 }
 
 /** 2^{x+y}=8 is x+y=3. */

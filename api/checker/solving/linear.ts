@@ -20,22 +20,25 @@ import type { Assignment } from './fraction.ts';
 import { rationalNumber, type RealNumber } from './real-number.ts';
 import { addSurds, invertSurd, multiplySurds, negateSurd, surdToNumber, toSurd } from './surd.ts';
 
-/** The degree of a node in the letter as it is written; Infinity where it is no polynomial with constant coefficients. */
-export function degreeIn(graph: Graph, letter: string): number {
+/**
+ * The degree in a letter, or in several together, as it is written; Infinity where it is no polynomial with constant
+ * coefficients.
+ */
+export function degreeIn(graph: Graph, ...letters: readonly string[]): number {
   const degrees: number[] = [];
   for (let k = 0; k <= graph.root; k += 1) {
     const node = graph.nodes[k];
     if (!node) return Infinity;
     const of = (node.args as readonly number[]).map((arg) => degrees[arg] ?? Infinity);
-    degrees.push(degreeOf(node, of, letter));
+    degrees.push(degreeOf(node, of, letters));
   }
   return degrees[graph.root] ?? Infinity;
 }
 
-function degreeOf(node: Graph['nodes'][number], of: readonly number[], letter: string): number {
+function degreeOf(node: Graph['nodes'][number], of: readonly number[], letters: readonly string[]): number {
   switch (node.op) {
     case 'letter':
-      return node.name === letter ? 1 : 0;
+      return letters.includes(node.name) ? 1 : 0;
     case 'add':
     case 'negate':
       return Math.max(0, ...of);

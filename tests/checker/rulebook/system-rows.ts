@@ -97,6 +97,16 @@ export const furtherSystemRows: readonly Row[] = [
   ['6a', tex`\ln x+\ln y=0,\ x+y=2 ;; xy=1 ;; x=1,\ y=1`, null],
   ['6a', tex`x^2+y^2=10,\ y=3x ;; x^2+9x^2=10 ;; x=\pm 1 ;; (x,y)=(1,3)\text{ or }(x,y)=(-1,-3)`, null],
   ['6a', tex`x^2+y^2=10,\ y=3x ;; x^2+3x^2=10`, 1],
+  [
+    '6a',
+    tex`2a+b-c+3d-f=8,\ a-2b+3c+d+2f=20,\ 3a+b+c-d+f=9,\ -a+4b+2c+d-3f=2,\ a+b+c+d+f=15 ;; a=1,\ b=2,\ c=3,\ d=4,\ f=5`,
+    null,
+  ],
+  [
+    '6a',
+    tex`2a+b-c+3d-f=8,\ a-2b+3c+d+2f=20,\ 3a+b+c-d+f=9,\ -a+4b+2c+d-3f=2,\ a+b+c+d+f=15 ;; a=1,\ b=3,\ c=3,\ d=4,\ f=5`,
+    1,
+  ],
   ['2', tex`y=2x+3 ;; y=2(4)+3 ;; y=11`, 'undecided'],
   ['2', tex`y=x^2-4 ;; y=0 ;; x=\pm 2`, 'undecided'],
   ['2', tex`y=x^2-4x ;; x=3 ;; y=-3`, 'undecided'],
