@@ -36,6 +36,8 @@ export interface CheckPool {
 
 const watchMs = 20;
 const mostStretch = 8;
+/** What explains the faults of a derivation is tried once only, so that a slow machine gets longer for it than for a step. */
+const explainStretch = 2;
 
 /** A clock that goes with the wall's, but no faster than this process gets to work. */
 function createWorkClock(): () => number {
@@ -134,9 +136,10 @@ async function runOnce(piscina: Piscina, task: Omit<CheckTask, 'progress'>, limi
     const step = Atomics.load(at, 0);
     const now = limits.workMs();
     if (step !== seen) [seen, since, wallSince] = [step, now, performance.now()];
+    const stepMs = step === task.input.lines.length ? explainStretch * limits.stepMs : limits.stepMs;
     // Before its first step a task may only be waiting for a worker.
-    const isOver = now - since > limits.stepMs || (now > limits.deadline && now - since > limits.stepMs / 2);
-    const isStalled = performance.now() - wallSince > mostStretch * limits.stepMs;
+    const isOver = now - since > stepMs || (now > limits.deadline && now - since > stepMs / 2);
+    const isStalled = performance.now() - wallSince > mostStretch * stepMs;
     if (step >= 0 && (isOver || isStalled)) ending.abort();
   }, watchMs);
   try {
