@@ -23,7 +23,7 @@ const mostFaults = 3;
  * Operations for all that explains a fault, and for each kind of evidence; of larger lines than this only single terms
  * are looked at.
  */
-export const allowed = { fault: 100_000, slip: 40_000, mend: 80_000, ending: 50_000, difference: 20_000 } as const;
+export const allowed = { fault: 100_000, slip: 50_000, mend: 80_000, ending: 50_000, difference: 20_000 } as const;
 const mostNodes = 160;
 const largest = 900;
 

@@ -39,7 +39,13 @@ export function changesAgain(above: Changed, below: { readonly line: Line; reado
     if (edits.length > 1) found.push({ edits, cost: here + 0.05, touchesRight: false });
     if (found.length >= mostCarried) break;
   }
+  const together = found.flatMap(({ edits }) => edits).filter((edit, k, all) => !overlaps(edit, all.slice(0, k)));
+  if (together.length > 1) found.push({ edits: together, cost: cost + 0.05, touchesRight: false });
   return found;
+}
+
+function overlaps(edit: Edit, others: readonly Edit[]): boolean {
+  return others.some((other) => edit.start < other.end && other.start < edit.end);
 }
 
 /** Largest first. */

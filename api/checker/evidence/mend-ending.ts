@@ -9,6 +9,7 @@ import * as Q from '../numbers/rational.ts';
 import { listOf } from '../slips/may-follow.ts';
 import { neg, sum, termsOf } from './build.ts';
 import { changesAgain } from './carried-changes.ts';
+import { completedSquare } from './completed-square.ts';
 import type { Candidate, Edit } from './edits.ts';
 import { collect, expanded, monomialExpr, negated, spread, sumExpr } from './monomials.ts';
 import { knownLines } from './meaning-line.ts';
@@ -85,6 +86,7 @@ function carryLine(
   const { result } = judged;
   if (followsPlainly(judged, state)) return { ...own, edits: [] };
   const holds = (line: Line): boolean => followsPlainly(judgeLine(route, state, step, line, context), state);
+  const square = completedSquare(above.line, own.line);
   const found = mendLine({
     above: above.line,
     aboveTex: above.tex,
@@ -94,7 +96,7 @@ function carryLine(
     isLarge: false,
     solutions: null,
     known: knownLines(state),
-    carried: sameChanges,
+    carried: [...sameChanges, ...(square ? [square] : [])],
     lost: result.evidence.lost ?? [],
     gained: result.evidence.gained ?? [],
     settings: route.read.settings,

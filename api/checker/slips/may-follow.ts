@@ -17,13 +17,15 @@ export function mayFollow(below: Line, above: Line, context: CheckContext): (can
   }
   if (below.kind === 'relation' && below.sign === '=') {
     const wanted = places.map((place) => sides(below, place));
+    // A mistake made in listing values shows in values only.
     return (candidate) =>
-      candidate.kind !== 'relation' ||
-      (candidate.sign === '=' &&
-        isProportional(
-          places.map((place) => sides(candidate, place)),
-          wanted,
-        ));
+      candidate.kind !== 'relation'
+        ? listOf(candidate) === null
+        : candidate.sign === '=' &&
+          isProportional(
+            places.map((place) => sides(candidate, place)),
+            wanted,
+          );
   }
   const [name] = letters;
   if (letters.length !== 1 || name === undefined) return () => true;
