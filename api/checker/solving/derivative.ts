@@ -1,4 +1,5 @@
 import { div, one, rational, zero } from '../numbers/rational.ts';
+import { charge } from '../numbers/work.ts';
 import type { GraphBuilder, GraphNode } from '../values/graph.ts';
 
 /**
@@ -44,6 +45,8 @@ function slopeOf(builder: GraphBuilder, node: GraphNode, at: number, letter: str
     case 'negate':
       return builder.negate(a as number);
     case 'mul': {
+      // Each factor is differentiated beside all the others.
+      charge(node.args.length ** 2 / 2);
       const terms = (slopes as number[]).map((slope, k) =>
         times(builder, [slope, ...node.args.filter((_, j) => j !== k)]),
       );
