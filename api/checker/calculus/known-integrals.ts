@@ -108,7 +108,7 @@ function waves(factors: readonly Factor[], letter: string, halves: number, conte
   return mulExprs(numberOf(isSine ? sign : 1), side, sqrtExpr(divExprs(piExpr, mulExprs(numberOf(2), size))));
 }
 
-/** Integrand in x, ends, value: DLMF 25.5.1, 25.5.3, 25.12.2 and 4.10.7; the logarithms of sines are Euler's. */
+/** Integrand in x, ends, value: DLMF 25.5.1, 25.5.3, 25.12.2 and 4.10.7, numbers from memory; the logarithms of sines are Euler's. */
 const table: readonly (readonly [string, string, string, string])[] = [
   ['\\frac{x}{e^x-1}', '0', '\\infty', '\\frac{\\pi^2}{6}'],
   ['\\frac{x^3}{e^x-1}', '0', '\\infty', '\\frac{\\pi^4}{15}'],
